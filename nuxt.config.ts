@@ -1,0 +1,37 @@
+export default defineNuxtConfig({
+  compatibilityDate: '2026-05-01',
+  srcDir: '.',
+  devtools: { enabled: false },
+  telemetry: false,
+  modules: [
+    '@nuxt/eslint',
+    '@nuxtjs/tailwindcss',
+    '@pinia/nuxt',
+    'nuxt-auth-utils',
+  ],
+  components: [{ path: '~/components', pathPrefix: true }],
+  css: [
+    '@fontsource/ibm-plex-sans/latin-400.css',
+    '@fontsource/ibm-plex-sans/latin-500.css',
+    '@fontsource/ibm-plex-sans/latin-600.css',
+    '@fontsource/ibm-plex-sans/latin-400-italic.css',
+    '@fontsource/ibm-plex-mono/latin-400.css',
+    '@fontsource/ibm-plex-mono/latin-500.css',
+    '@fontsource/ibm-plex-mono/latin-600.css',
+  ],
+  tailwindcss: { cssPath: '~/assets/css/main.css', viewer: false },
+  eslint: { config: { stylistic: false } },
+  ignore: ['.data/**', '.data-*/**', '.bench/**', 'coverage/**', 'docs/**', 'bench/**', 'tests/**'],
+  typescript: {
+    strict: true,
+    tsConfig: { compilerOptions: { noUncheckedIndexedAccess: true } },
+    sharedTsConfig: { compilerOptions: { lib: ['ESNext'] } },
+  },
+  app: {
+    head: {
+      title: 'Espalier',
+      htmlAttrs: { lang: 'en' },
+      meta: [{ name: 'viewport', content: 'width=device-width, initial-scale=1' }],
+    },
+  },
+})

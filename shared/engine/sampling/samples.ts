@@ -1,0 +1,20 @@
+/**
+ * Samples of `width` spins, bit-packed: row r is bytes[r·stride … (r + 1)·stride − 1] with stride = ⌈width / 8⌉;
+ * spin c is bit (c mod 8) of byte ⌊c / 8⌋, 1 for up (+1), 0 for down (−1).
+ * counts[r] is how many reads gave row r.
+ */
+export interface Samples {
+  readonly width: number
+  readonly rows: number
+  readonly bytes: Uint8Array
+  readonly counts: Uint32Array
+}
+
+/** Bytes in one packed row. */
+export const strideOf = (width: number): number => (width + 7) >> 3
+
+/** Spin c of row r, +1 or −1. */
+export function spinOf(samples: Samples, r: number, c: number): 1 | -1 {
+  const byte = samples.bytes[r * strideOf(samples.width) + (c >> 3)]!
+  return (byte >> (c & 7)) & 1 ? 1 : -1
+}

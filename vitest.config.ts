@@ -1,0 +1,28 @@
+import { fileURLToPath } from 'node:url'
+import { defineConfig } from 'vitest/config'
+
+const root = fileURLToPath(new URL('.', import.meta.url))
+
+export default defineConfig({
+  resolve: { alias: { '~': root.replace(/\/$/, ''), '#shared': `${root}shared` } },
+  test: {
+    projects: [
+      {
+        extends: true,
+        test: { name: 'unit', environment: 'node', include: ['tests/unit/**/*.test.ts'] },
+      },
+      {
+        extends: true,
+        test: { name: 'reference', environment: 'node', include: ['tests/reference/**/*.test.ts'], testTimeout: 60_000 },
+      },
+      {
+        extends: true,
+        test: { name: 'server', environment: 'node', include: ['tests/server/**/*.test.ts'], testTimeout: 120_000, hookTimeout: 120_000, fileParallelism: false },
+      },
+      {
+        extends: true,
+        test: { name: 'browser', environment: 'node', include: ['tests/browser/**/*.test.ts'], testTimeout: 300_000, hookTimeout: 300_000, fileParallelism: false },
+      },
+    ],
+  },
+})
