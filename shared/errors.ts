@@ -1,5 +1,13 @@
 /** What kind of refusal an error is; the HTTP layer maps it to a status. */
-export type ErrorKind = 'unreadable' | 'not acceptable' | 'not found' | 'wrong state' | 'forbidden' | 'unauthenticated' | 'too large' | 'too many'
+export type ErrorKind =
+  | 'unreadable'
+  | 'not acceptable'
+  | 'not found'
+  | 'wrong state'
+  | 'forbidden'
+  | 'unauthenticated'
+  | 'too large'
+  | 'too many'
 
 /** One thing that was wrong, and where. */
 export interface Issue {
