@@ -1,0 +1,26 @@
+/** States of a job. A job never stays `running` without a living worker: see docs/decisions/jobs.md. */
+export type JobStatus = 'waiting' | 'running' | 'done' | 'failed' | 'cancelled'
+export type JobKind = 'embedding' | 'rehearsal'
+
+export interface JobLogLine {
+  at: string
+  message: string
+}
+
+export interface JobView {
+  id: string
+  kind: JobKind
+  status: JobStatus
+  /** 0 … 1 */
+  progress: number
+  /** One sentence on where the work stands. */
+  message: string
+  /** Kind-specific figures of the moment, for example overlap and longest chain. */
+  detail: Record<string, number | string | null>
+  /** How often the work was started. */
+  attempts: number
+  createdAt: string
+  startedAt: string | null
+  finishedAt: string | null
+  log: JobLogLine[]
+}

@@ -1,0 +1,143 @@
+import { z } from 'zod'
+import type { Person } from './common'
+import { nameSchema } from './common'
+
+const extent = z.number().int().min(1).max(1000)
+const gridExtent = z.number().int().min(1).max(100_000)
+
+export const familySchema = z.discriminatedUnion('kind', [
+  z
+    .object({
+      kind: z.literal('chimera'),
+      m: extent,
+      n: extent.optional(),
+      t: z.number().int().min(1).max(64).default(4),
+    })
+    .transform((family) => ({ ...family, n: family.n ?? family.m })),
+  z.object({ kind: z.literal('pegasus'), m: z.number().int().min(2).max(1000), trimmed: z.boolean().default(true) }),
+  z.object({ kind: z.literal('zephyr'), m: extent, t: z.number().int().min(1).max(64).default(4) }),
+  z.object({ kind: z.literal('king'), width: gridExtent, height: gridExtent }),
+  z.object({ kind: z.literal('square'), width: gridExtent, height: gridExtent }),
+])
+
+const rangeSchema = z
+  .tuple([z.number(), z.number()])
+  .refine(([low, high]) => low < 0 && high > 0, 'a range runs from a negative to a positive number')
+
+export const rangesSchema = z.object({
+  h: rangeSchema.default([-1, 1]),
+  J: rangeSchema.default([-1, 1]),
+  /** Bounds of the sum of all programmed J at one qubit; null where the machine has none. */
+  couplingSum: rangeSchema.nullable().default(null),
+})
+
+const microseconds = z.number().min(0).max(1e9)
+export const timingSchema = z
+  .object({
+    programmingMicroseconds: microseconds.default(10_000),
+    readoutMicroseconds: microseconds.default(100),
+    delayMicroseconds: microseconds.default(20),
+    annealMinMicroseconds: microseconds.default(1),
+    annealMaxMicroseconds: microseconds.default(2000),
+  })
+  .refine((timing) => timing.annealMinMicroseconds <= timing.annealMaxMicroseconds, {
+    path: ['annealMinMicroseconds'],
+    message: 'the shortest anneal is longer than the longest',
+  })
+
+export const controlErrorSchema = z.object({
+  h: z.number().min(0).max(10).default(0),
+  J: z.number().min(0).max(10).default(0),
+})
+
+const qubitNumber = z.number().int().min(0).max(10_000_000)
+export const defectsSchema = z.object({
+  qubits: z.array(qubitNumber).max(100_000).default([]),
+  couplers: z
+    .array(z.tuple([qubitNumber, qubitNumber]))
+    .max(1_000_000)
+    .default([]),
+})
+
+const sheetSchema = z.object({
+  defects: defectsSchema.prefault({}),
+  ranges: rangesSchema.prefault({}),
+  controlError: controlErrorSchema.prefault({}),
+  timing: timingSchema.prefault({}),
+  temperatureMillikelvin: z.number().positive().max(1e6).nullable().default(null),
+  remark: z.string().trim().max(2000).default(''),
+})
+export type MachineSheet = z.infer<typeof sheetSchema>
+
+export const createMachineSchema = sheetSchema.extend({
+  name: nameSchema,
+  note: z.string().trim().max(2000).default(''),
+  family: familySchema,
+})
+export type CreateMachine = z.infer<typeof createMachineSchema>
+
+/** A new calibration states only what changed; the rest is taken over from the one before. */
+export const calibrateSchema = z.object({
+  defects: defectsSchema.optional(),
+  ranges: rangesSchema.optional(),
+  controlError: controlErrorSchema.optional(),
+  timing: timingSchema.optional(),
+  temperatureMillikelvin: z.number().positive().max(1e6).nullable().optional(),
+  remark: z.string().trim().max(2000).default(''),
+})
+export type Calibrate = z.infer<typeof calibrateSchema>
+
+export const calibrationQuerySchema = z.object({ calibration: z.coerce.number().int().min(1).optional() })
+export const graphQuerySchema = calibrationQuerySchema.extend({
+  format: z.enum(['json', 'csv', 'mtx']).default('json'),
+})
+
+export interface MachineItem {
+  id: string
+  name: string
+  family: string
+  calibration: number
+  qubits: number
+  qubitsMade: number
+  couplers: number
+  couplersMade: number
+  embeddings: number
+  changedAt: string
+}
+
+export interface CalibrationItem {
+  number: number
+  missingQubits: number
+  missingCouplers: number
+  controlError: { h: number; J: number }
+  temperatureMillikelvin: number | null
+  remark: string
+  savedBy: Person
+  savedAt: string
+  /** Embeddings made at an earlier calibration that this one broke. */
+  broke: { id: string; number: number; problem: string }[]
+}
+
+export interface MachineView extends MachineItem {
+  note: string
+  familySizes: z.infer<typeof familySchema>
+  maxDegree: number
+  sheet: MachineSheet
+  calibrations: CalibrationItem[]
+}
+
+export interface CalibrationSaved {
+  calibration: number
+  qubits: number
+  couplers: number
+  invalidated: {
+    embeddings: { id: string; number: number; problem: string }[]
+    runSheets: { id: string; number: number }[]
+  }
+}
+
+export interface MachineGraph {
+  nodes: number[]
+  edges: [number, number][]
+  positions: [number, number][]
+}

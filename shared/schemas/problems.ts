@@ -1,0 +1,163 @@
+import { z } from 'zod'
+import type { Histogram, Person } from './common'
+import { nameSchema } from './common'
+
+export const formSchema = z.enum(['qubo', 'ising'])
+export const senseSchema = z.enum(['min', 'max'])
+export const conventionSchema = z.enum(['plus', 'minus'])
+export const problemFormatSchema = z.enum(['coefficients', 'dense-csv'])
+
+const flag = z.preprocess((value) => value === true || value === 'true' || value === '1' || value === 'on', z.boolean())
+
+/** The fields beside the `file` of a problem upload. */
+export const uploadProblemSchema = z.object({
+  name: nameSchema.optional(),
+  form: formSchema.optional(),
+  format: problemFormatSchema.optional(),
+  convention: conventionSchema.optional(),
+  sense: senseSchema.optional(),
+  /** Read and report without saving. */
+  dryRun: flag.default(false),
+  /** Save even though some lines could not be read; they are listed with the problem. */
+  skipRejected: flag.default(false),
+})
+export type UploadProblem = z.infer<typeof uploadProblemSchema>
+
+export const editProblemSchema = z.object({ name: nameSchema.optional(), note: z.string().trim().max(2000).optional() })
+
+export const coefficientsQuerySchema = z.object({
+  form: formSchema.optional(),
+  format: z.enum(['csv', 'dense']).default('csv'),
+})
+
+export const energyRequestSchema = z.object({
+  form: formSchema,
+  states: z.array(z.array(z.number())).max(10_000, 'at most 10,000 states at a time'),
+})
+
+export const termsQuerySchema = z.object({
+  part: z.enum(['linear', 'interactions']),
+  start: z.coerce.number().int().min(0).default(0),
+  limit: z.coerce.number().int().min(1).max(500).default(100),
+})
+
+export interface RejectedLine {
+  line: number
+  text: string
+  reason: string
+}
+
+/** What the reader understood of a file. Coefficients are in the sense and convention of the file. */
+export interface ReadingView {
+  format: z.infer<typeof problemFormatSchema>
+  formatTitle: string
+  form: z.infer<typeof formSchema>
+  formSource: 'given' | 'file' | 'default'
+  convention: z.infer<typeof conventionSchema>
+  sense: z.infer<typeof senseSchema>
+  triangle: string
+  entriesRead: number
+  duplicatesSummed: number
+  zerosDropped: number
+  firstRows: [string, string, number][]
+  rejected: RejectedLine[]
+  rejectedCount: number
+}
+
+export interface StructureView {
+  variables: number
+  interactions: number
+  /** Share of all pairs that interact, 0 … 1. */
+  density: number
+  degree: { min: number; mean: number; max: number }
+  degreeHistogram: { value: number; count: number }[]
+  linearHistogram: Histogram | null
+  interactionHistogram: Histogram | null
+  /** max |coefficient| / min nonzero |coefficient|, or null without coefficients. */
+  dynamicRange: number | null
+  components: number
+  isolated: number
+  treewidthUpperBound: number | null
+}
+
+/** Answer to an upload; with dryRun nothing was saved and `id` is null. */
+export interface UploadedProblem {
+  id: string | null
+  number: number | null
+  name: string
+  form: z.infer<typeof formSchema>
+  variables: number
+  interactions: number
+  offset: number
+  sense: z.infer<typeof senseSchema>
+  warnings: string[]
+  reading: ReadingView
+  structure: StructureView
+}
+
+export interface ProblemItem {
+  id: string
+  number: number
+  name: string
+  form: z.infer<typeof formSchema>
+  sense: z.infer<typeof senseSchema>
+  variables: number
+  interactions: number
+  density: number
+  /** The newest embedding, if there is one. */
+  embedding: { id: string; number: number; status: string; machine: string; longestChain: number | null } | null
+  /** The newest run sheet, if there is one. */
+  runSheet: { id: string; number: number; state: string } | null
+  /** Best decoded energy of any samples so far, in the problem's own sense. */
+  best: number | null
+  changedAt: string
+}
+
+export interface EmbeddingOfProblem {
+  id: string
+  number: number
+  status: string
+  machine: string
+  calibration: number
+  method: string
+  seed: number
+  longestChain: number | null
+  qubitsUsed: number | null
+  seconds: number | null
+  createdAt: string
+  runSheets: { id: string; number: number; state: string }[]
+}
+
+export interface ProblemView extends Omit<ProblemItem, 'embedding' | 'runSheet'> {
+  note: string
+  offset: number
+  /** SHA-256 over form, labels, coefficients and offset, hex. */
+  fingerprint: string
+  source: { fileName: string; bytes: number; sha256: string }
+  reading: ReadingView
+  structure: StructureView
+  embeddings: EmbeddingOfProblem[]
+  createdBy: Person
+  createdAt: string
+}
+
+/** One row of the double ledger of both forms; values in the problem's own sense. */
+export interface LinearTerm {
+  label: string
+  qubo: number
+  ising: number
+}
+export interface InteractionTerm {
+  a: string
+  b: string
+  qubo: number
+  ising: number
+}
+export interface TermsView {
+  part: 'linear' | 'interactions'
+  start: number
+  total: number
+  linear: LinearTerm[]
+  interactions: InteractionTerm[]
+  offset: { qubo: number; ising: number }
+}

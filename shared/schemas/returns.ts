@@ -1,0 +1,100 @@
+import { z } from 'zod'
+import type { Histogram, Person, Proportion } from './common'
+
+export const decodeSchema = z.enum(['majority', 'discard', 'descent'])
+export type Decoding = z.infer<typeof decodeSchema>
+export const returnQuerySchema = z.object({ decode: decodeSchema.default('majority') })
+export const solutionsQuerySchema = z.object({
+  decode: decodeSchema.default('majority'),
+  format: z.enum(['json', 'csv']).default('json'),
+  limit: z.coerce.number().int().min(1).max(100_000).default(100),
+})
+export const uploadReturnSchema = z.object({
+  format: z.enum(['csv']).default('csv'),
+  machineTimeSeconds: z.coerce.number().positive().max(1e6).optional(),
+})
+
+export interface ChainBreaks extends Proportion {
+  variable: number
+  label: string
+  length: number
+  strength: number
+  cutBound: number
+}
+
+/** A coupler inside a chain whose two qubits disagreed. */
+export interface CouplerBreaks extends Proportion {
+  a: number
+  b: number
+  label: string
+}
+
+export interface DecodingRow {
+  decoding: Decoding
+  title: string
+  readsKept: number
+  /** Chain reads settled by a seeded coin. */
+  ties: number
+  best: number | null
+  bestCount: number
+  median: number | null
+  mean: number | null
+}
+
+export interface EnergySeries {
+  title: string
+  returnId: string
+  reads: number
+  counts: number[]
+}
+
+export interface SolutionRow {
+  energy: number
+  count: number
+  /** Variables that differ from the best solution. */
+  distance: number
+  /** 0/1 for a QUBO, −1/+1 for an Ising problem, by label. */
+  assignment: Record<string, number>
+}
+
+export interface ReturnView {
+  id: string
+  number: number
+  source: 'rehearsal' | 'upload'
+  status: 'running' | 'ready' | 'failed' | 'cancelled'
+  jobId: string | null
+  reason: string | null
+  runSheet: { id: string; number: number; name: string; state: string }
+  problem: { id: string; number: number; name: string; variables: number; form: 'qubo' | 'ising'; sense: 'min' | 'max' }
+  embedding: { id: string; number: number }
+  machine: { id: string; name: string; calibration: number }
+  /** How the samples came to be: sweeps, temperature and seed of a rehearsal, or the uploaded file. */
+  made: Record<string, string | number | boolean | null>
+  seconds: number | null
+  version: string
+  reads: number
+  decode: Decoding
+  breaks: {
+    chains: ChainBreaks[]
+    couplers: CouplerBreaks[]
+    readsWithBreak: Proportion
+    chainReads: Proportion
+    /** perRead[k] reads had exactly k broken chains. */
+    perRead: number[]
+  } | null
+  decodings: DecodingRow[]
+  energies: {
+    best: number
+    bestCount: number
+    mean: number
+    median: number
+    start: number
+    width: number
+    series: EnergySeries[]
+  } | null
+  best: SolutionRow | null
+  solutions: SolutionRow[]
+  physicalEnergies: Histogram | null
+  createdBy: Person
+  createdAt: string
+}

@@ -1,0 +1,171 @@
+import { z } from 'zod'
+import type { Histogram, Person } from './common'
+import { idSchema, nameSchema, seedSchema } from './common'
+
+const positive = z.number().positive().max(1e9)
+
+export const strengthSchema = z.object({
+  /**
+   * fixed: value × max |J|; rms: value × J_rms × √(mean degree); choi: Choi’s bound; cut: cut bound × value;
+   * manual: value for all chains, perChain for named ones. Strengths are in the units of the Ising form.
+   */
+  rule: z.enum(['fixed', 'rms', 'choi', 'cut', 'manual']),
+  value: positive.optional(),
+  perChain: z.record(z.string(), positive).optional(),
+})
+export type Strength = z.infer<typeof strengthSchema>
+
+const settings = {
+  strength: strengthSchema.default({ rule: 'rms' }),
+  fieldSplit: z.enum(['even', 'external coupling']).default('even'),
+  interactionCouplers: z.enum(['all', 'one']).default('all'),
+  chainCouplers: z.enum(['all', 'spanning tree']).default('all'),
+  gauges: z.number().int().min(1).max(1000).default(1),
+  reads: z.number().int().min(1).max(100_000).default(1000),
+  annealMicroseconds: z.number().positive().max(1e6).default(20),
+  seed: seedSchema.default(1),
+}
+export const runSheetSettingsSchema = z.object(settings)
+export type RunSheetSettings = z.infer<typeof runSheetSettingsSchema>
+
+export const createRunSheetSchema = z.object({ embeddingId: idSchema, name: nameSchema.optional(), ...settings })
+
+export const editRunSheetSchema = z.object({
+  name: nameSchema.optional(),
+  strength: strengthSchema.optional(),
+  fieldSplit: settings.fieldSplit.unwrap().optional(),
+  interactionCouplers: settings.interactionCouplers.unwrap().optional(),
+  chainCouplers: settings.chainCouplers.unwrap().optional(),
+  gauges: settings.gauges.unwrap().optional(),
+  reads: settings.reads.unwrap().optional(),
+  annealMicroseconds: settings.annealMicroseconds.unwrap().optional(),
+  seed: seedSchema.optional(),
+})
+export type EditRunSheet = z.infer<typeof editRunSheetSchema>
+
+export const remarkSchema = z.object({ remark: z.string().trim().max(2000).default('') })
+export const sendBackSchema = z.object({ remark: z.string().trim().min(1, 'say what should change').max(2000) })
+
+export const rehearseSchema = z.object({
+  reads: z.number().int().min(1).max(100_000).default(1000),
+  sweeps: z.number().int().min(1).max(1_000_000).default(1000),
+  /** Final temperature in units of the programmed values; default: the machine’s own, or 0.05 without one. */
+  temperature: z.number().positive().max(100).optional(),
+  /** Redraw every programmed value with the machine’s control error. */
+  controlError: z.boolean().default(false),
+  seed: seedSchema.default(1),
+})
+export type Rehearse = z.infer<typeof rehearseSchema>
+
+export const programmedQuerySchema = z.object({ format: z.enum(['json', 'csv', 'mtx']).default('json') })
+
+export type RunSheetState = 'draft' | 'in review' | 'approved' | 'sent back' | 'issued' | 'returned' | 'closed'
+
+export interface CheckView {
+  verdict: 'passed' | 'caution' | 'refused'
+  what: string
+  figure: string
+}
+
+/** One strength rule worked out on this embedding, for comparing rules side by side. */
+export interface RuleView {
+  rule: Strength['rule']
+  title: string
+  /** How k follows, in words and figures. */
+  from: string
+  /** Smallest and largest k over the chains, in units of the Ising form. */
+  k: { min: number; max: number }
+  scale: number
+  /** Share of programmed couplings below 2σ_J; null when σ_J is zero. */
+  couplingsUnderTwoSigma: number | null
+  chainsBelowCutBound: number
+  selected: boolean
+}
+
+export interface ChainRow {
+  variable: number
+  label: string
+  qubits: number
+  /** Couplers to other chains in use. */
+  couplers: number
+  strength: number
+  cutBound: number
+  /** False where the bound is a safe upper bound, for chains with cycles. */
+  cutBoundExact: boolean
+}
+
+export interface MachineTimePart {
+  part: string
+  reckoning: string
+  milliseconds: number
+}
+
+export interface ReturnOfRunSheet {
+  id: string
+  number: number
+  source: 'rehearsal' | 'upload'
+  status: 'running' | 'ready' | 'failed' | 'cancelled'
+  jobId: string | null
+  reads: number
+  readsWithBreak: number | null
+  best: number | null
+  createdAt: string
+}
+
+export interface RemarkView {
+  at: string
+  by: Person | null
+  what: string
+  text: string
+}
+
+export interface RunSheetItem {
+  id: string
+  number: number
+  name: string
+  state: RunSheetState
+  problem: { id: string; number: number; name: string }
+  embedding: { id: string; number: number }
+  machine: { id: string; name: string }
+  reads: number
+  machineTimeMilliseconds: number
+  changedAt: string
+}
+
+export interface RunSheetView extends RunSheetItem {
+  settings: RunSheetSettings
+  calibration: number
+  sense: 'min' | 'max'
+  fingerprints: { problem: string; embedding: string; programmed: string }
+  maxAbsJ: number
+  rules: RuleView[]
+  chains: ChainRow[]
+  scale: number
+  limitedBy: string
+  precision: {
+    sigmaH: number
+    sigmaJ: number
+    fieldsUnderTwoSigma: number | null
+    couplingsUnderTwoSigma: number | null
+    /** One standard deviation, in units of the problem. */
+    energyNoise: number
+    fieldSizes: Histogram
+    couplingSizes: Histogram
+  }
+  machineTime: { parts: MachineTimePart[]; totalMilliseconds: number }
+  checks: CheckView[]
+  returns: ReturnOfRunSheet[]
+  remarks: RemarkView[]
+  preparedBy: Person
+  reviewedBy: Person | null
+  createdAt: string
+}
+
+export interface ProgrammedView {
+  h: Record<string, number>
+  J: [number, number, number][]
+  scale: number
+  chainStrength: Record<string, number>
+  /** scale · E_logical = E_physical + offset on every unbroken state. */
+  offset: number
+}

@@ -1,0 +1,42 @@
+import { z } from 'zod'
+import type { Role } from './common'
+
+export const emailSchema = z
+  .string()
+  .trim()
+  .toLowerCase()
+  .max(254)
+  .pipe(z.email('write an e-mail address such as name@example.org'))
+
+export const signInSchema = z.object({ email: emailSchema, password: z.string().min(1, 'give the password').max(200) })
+
+/** First account of a new installation; the code is printed on the server's console. */
+export const setupSchema = z.object({
+  code: z.string().trim().min(1, 'copy the code from the server’s console').max(40),
+  workspace: z.string().trim().min(1, 'give the workspace a name').max(80),
+  name: z.string().trim().min(1, 'give your name').max(80),
+  email: emailSchema,
+  password: z.string().min(10, 'a password has at least 10 characters').max(200),
+})
+
+export interface SessionView {
+  person: { id: string; name: string; email: string }
+  workspace: { id: string; name: string }
+  roles: Role[]
+  counts: { problems: number; machines: number; runSheets: number; people: number }
+}
+
+/** What the sign-in page needs to know before anyone is signed in. */
+export interface EntranceView {
+  setupNeeded: boolean
+  demo: boolean
+  workspace: string | null
+}
+
+export interface MemberView {
+  id: string
+  name: string
+  email: string
+  roles: Role[]
+  since: string
+}
