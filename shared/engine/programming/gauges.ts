@@ -1,0 +1,54 @@
+import { createRandom } from '../random'
+import { strideOf } from '../sampling/samples'
+import type { Samples } from '../sampling/samples'
+import type { Programmed } from './programme'
+
+/** +1 or −1 for each position of the programmed problem. */
+export type Gauge = Int8Array
+
+/** `qubit`: every qubit has its own sign. `chain`: one sign per chain, so that chain couplings keep theirs. */
+export type GaugeKind = 'qubit' | 'chain'
+
+/**
+ * A random spin reversal. Gauge `number` of a seed does not depend on how many are drawn.
+ * Where the coupling range is asymmetric, a `qubit` gauge turns strong chain couplings positive and may leave the range:
+ * check with `excessesOf`, or draw `chain` gauges.
+ */
+export function drawGauge(programmed: Programmed, seed: number, number: number, kind: GaugeKind = 'qubit'): Gauge {
+  const random = createRandom(seed, number)
+  const drawn = kind === 'chain' ? programmed.chainStrength.length : programmed.qubits.length
+  const signs = Int8Array.from({ length: drawn }, () => (random.uint32() & 0x80000000 ? 1 : -1))
+  return kind === 'chain' ? Int8Array.from(programmed.chainOf, (i) => signs[i]!) : signs
+}
+
+/**
+ * The problem after the spin reversal: h → t·h, J → t·t·J (docs/formulas.md, From embedding to programmed values). Offset
+ * and scale stay: state t·s of it has the energy that state s had.
+ * @throws RangeError for a gauge of another length
+ */
+export function applyGauge(programmed: Programmed, gauge: Gauge): Programmed {
+  if (gauge.length !== programmed.h.length)
+    throw new RangeError(`${gauge.length} signs for ${programmed.h.length} qubits`)
+  const { ends } = programmed
+  return {
+    ...programmed,
+    h: programmed.h.map((field, p) => field * gauge[p]! + 0),
+    J: programmed.J.map((J, c) => J * gauge[ends[2 * c]!]! * gauge[ends[2 * c + 1]!]! + 0),
+  }
+}
+
+/**
+ * Samples read under a gauge, turned back to t·s.
+ * @throws RangeError for a gauge of another length
+ */
+export function undoGauge(samples: Samples, gauge: Gauge): Samples {
+  if (gauge.length !== samples.width)
+    throw new RangeError(`${gauge.length} signs for samples of width ${samples.width}`)
+  const stride = strideOf(samples.width)
+  const reversed = new Uint8Array(stride)
+  gauge.forEach((sign, p) => {
+    if (sign < 0) reversed[p >> 3]! |= 1 << (p & 7)
+  })
+  const bytes = samples.bytes.map((byte, k) => byte ^ reversed[k % stride]!)
+  return { ...samples, bytes }
+}
