@@ -22,6 +22,8 @@ export default defineNuxtConfig({
   tailwindcss: { cssPath: '~/assets/css/main.css', viewer: false },
   eslint: { config: { stylistic: false } },
   ignore: ['.data/**', '.data-*/**', '.bench/**', 'coverage/**', 'docs/**', 'bench/**', 'tests/**'],
+  runtimeConfig: { session: { cookie: { secure: true } } },
+  nitro: { esbuild: { options: { target: 'es2022' } } },
   typescript: {
     strict: true,
     tsConfig: { compilerOptions: { noUncheckedIndexedAccess: true } },

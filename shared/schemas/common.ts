@@ -32,11 +32,11 @@ export interface Proportion {
   high: number
 }
 
-/** Counts of values in equal bins: bin b covers [start + b·width, start + (b + 1)·width). */
-export interface Histogram {
-  start: number
-  width: number
-  counts: number[]
+/** Values v with from ≤ v < to (the last bin includes `to`); from = to when the bin holds one value only. */
+export interface HistogramBin {
+  readonly from: number
+  readonly to: number
+  readonly count: number
 }
 
 /** Who did something, as shown on a page. */

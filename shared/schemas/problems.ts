@@ -1,5 +1,5 @@
 import { z } from 'zod'
-import type { Histogram, Person } from './common'
+import type { HistogramBin, Person } from './common'
 import { nameSchema } from './common'
 
 export const formSchema = z.enum(['qubo', 'ising'])
@@ -71,8 +71,8 @@ export interface StructureView {
   density: number
   degree: { min: number; mean: number; max: number }
   degreeHistogram: { value: number; count: number }[]
-  linearHistogram: Histogram | null
-  interactionHistogram: Histogram | null
+  linearHistogram: HistogramBin[]
+  interactionHistogram: HistogramBin[]
   /** max |coefficient| / min nonzero |coefficient|, or null without coefficients. */
   dynamicRange: number | null
   components: number

@@ -1,5 +1,5 @@
 import { z } from 'zod'
-import type { Histogram, Person, Proportion } from './common'
+import type { HistogramBin, Person, Proportion } from './common'
 
 export const decodeSchema = z.enum(['majority', 'discard', 'descent'])
 export type Decoding = z.infer<typeof decodeSchema>
@@ -94,7 +94,7 @@ export interface ReturnView {
   } | null
   best: SolutionRow | null
   solutions: SolutionRow[]
-  physicalEnergies: Histogram | null
+  physicalEnergies: HistogramBin[]
   createdBy: Person
   createdAt: string
 }

@@ -1,5 +1,5 @@
 import { z } from 'zod'
-import type { Histogram, Person } from './common'
+import type { HistogramBin, Person } from './common'
 import { idSchema, nameSchema, seedSchema } from './common'
 
 const positive = z.number().positive().max(1e9)
@@ -149,8 +149,8 @@ export interface RunSheetView extends RunSheetItem {
     couplingsUnderTwoSigma: number | null
     /** One standard deviation, in units of the problem. */
     energyNoise: number
-    fieldSizes: Histogram
-    couplingSizes: Histogram
+    fieldSizes: HistogramBin[]
+    couplingSizes: HistogramBin[]
   }
   machineTime: { parts: MachineTimePart[]; totalMilliseconds: number }
   checks: CheckView[]

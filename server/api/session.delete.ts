@@ -1,0 +1,5 @@
+/** Signs out. */
+export default definePublicRoute(async (event) => {
+  await clearUserSession(event)
+  return { ok: true }
+})

@@ -1,0 +1,22 @@
+import type { Database, Db } from './database/client'
+import type { BlobStore } from './database/repositories/blobs'
+import type { Queue } from './jobs/queue'
+import type { Compute } from './workers/compute'
+
+/** What every use case is given. Made once per process by `startApp`; services never see an HTTP event. */
+export interface App {
+  readonly database: Database
+  readonly db: Db
+  readonly blobs: BlobStore
+  readonly compute: Compute
+  readonly queue: Queue
+  readonly now: () => Date
+  readonly version: string
+  readonly demo: boolean
+}
+
+/** Who asks, in which workspace: the outcome of the role check. */
+export interface Actor {
+  readonly userId: string
+  readonly workspaceId: string
+}

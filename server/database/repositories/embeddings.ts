@@ -1,0 +1,47 @@
+import { and, desc, eq, inArray } from 'drizzle-orm'
+import type { Db } from '../client'
+import { embeddings, machines, problems } from '../schema'
+
+export type EmbeddingRow = typeof embeddings.$inferSelect
+
+export async function insertEmbedding(db: Db, row: typeof embeddings.$inferInsert): Promise<void> {
+  await db.insert(embeddings).values(row)
+}
+
+export async function findEmbedding(db: Db, workspaceId: string, id: string): Promise<EmbeddingRow | undefined> {
+  return (
+    await db
+      .select()
+      .from(embeddings)
+      .where(and(eq(embeddings.workspaceId, workspaceId), eq(embeddings.id, id)))
+  )[0]
+}
+
+/** An embedding by its id alone, for jobs, which are not asked for by anyone. */
+export async function findEmbeddingOfJob(db: Db, id: string): Promise<EmbeddingRow | undefined> {
+  return (await db.select().from(embeddings).where(eq(embeddings.id, id)))[0]
+}
+
+export async function updateEmbedding(db: Db, id: string, set: Partial<typeof embeddings.$inferInsert>): Promise<void> {
+  await db.update(embeddings).set(set).where(eq(embeddings.id, id))
+}
+
+/** Embeddings of several problems with the machine's name, newest first. */
+export async function embeddingsOfProblems(db: Db, problemIds: readonly string[]) {
+  if (problemIds.length === 0) return []
+  return db
+    .select({ embedding: embeddings, machine: machines.name })
+    .from(embeddings)
+    .innerJoin(machines, eq(machines.id, embeddings.machineId))
+    .where(inArray(embeddings.problemId, [...problemIds]))
+    .orderBy(desc(embeddings.createdAt))
+}
+
+/** Found embeddings on a machine with their problem's name. */
+export async function foundEmbeddingsOn(db: Db, machineId: string) {
+  return db
+    .select({ embedding: embeddings, problem: problems.name })
+    .from(embeddings)
+    .innerJoin(problems, eq(problems.id, embeddings.problemId))
+    .where(and(eq(embeddings.machineId, machineId), eq(embeddings.status, 'found')))
+}

@@ -1,0 +1,16 @@
+import type { Page } from '../../../shared/schemas/common'
+
+/** Cursors are the running position in a list ordered newest first, made opaque. */
+export const cursorOf = (position: number): string => Buffer.from(String(position)).toString('base64url')
+
+/** The position that a cursor stands for; 0 without one or when it is not one of ours. */
+export function positionOf(cursor: string | undefined): number {
+  const position = Number(Buffer.from(cursor ?? '', 'base64url').toString())
+  return Number.isSafeInteger(position) && position > 0 ? position : 0
+}
+
+/** Makes a page from `limit + 1` rows fetched. */
+export function pageOf<T>(rows: T[], limit: number, position: number): Page<T> {
+  const more = rows.length > limit
+  return { items: rows.slice(0, limit), nextCursor: more ? cursorOf(position + limit) : null }
+}

@@ -1,0 +1,105 @@
+import { and, asc, count, eq } from 'drizzle-orm'
+import type { Role } from '../../../shared/schemas/common'
+import type { Db } from '../client'
+import { installation, machines, memberships, problems, runSheets, users, workspaces } from '../schema'
+
+export type UserRow = typeof users.$inferSelect
+
+export async function anyUser(db: Db): Promise<boolean> {
+  return (await db.select({ id: users.id }).from(users).limit(1)).length > 0
+}
+
+export async function findUserByEmail(db: Db, email: string): Promise<UserRow | undefined> {
+  return (await db.select().from(users).where(eq(users.email, email)))[0]
+}
+
+export async function findUser(db: Db, id: string): Promise<UserRow | undefined> {
+  return (await db.select().from(users).where(eq(users.id, id)))[0]
+}
+
+export async function insertUser(db: Db, user: UserRow): Promise<void> {
+  await db.insert(users).values(user)
+}
+
+export async function insertWorkspace(db: Db, workspace: { id: string; name: string; createdAt: Date }): Promise<void> {
+  await db.insert(workspaces).values(workspace)
+}
+
+export async function findWorkspace(db: Db, id: string) {
+  return (await db.select().from(workspaces).where(eq(workspaces.id, id)))[0]
+}
+
+/** The only workspace's name, for the sign-in page; null when there are several or none. */
+export async function onlyWorkspaceName(db: Db): Promise<string | null> {
+  const rows = await db.select({ name: workspaces.name }).from(workspaces).limit(2)
+  return rows.length === 1 ? rows[0]!.name : null
+}
+
+export async function insertMembership(
+  db: Db,
+  membership: { workspaceId: string; userId: string; roles: Role[]; createdAt: Date },
+): Promise<void> {
+  await db.insert(memberships).values(membership)
+}
+
+export async function findRoles(db: Db, workspaceId: string, userId: string): Promise<Role[] | undefined> {
+  const rows = await db
+    .select({ roles: memberships.roles })
+    .from(memberships)
+    .where(and(eq(memberships.workspaceId, workspaceId), eq(memberships.userId, userId)))
+  return rows[0]?.roles
+}
+
+/** The workspace that a person joined first. */
+export async function firstWorkspaceOf(db: Db, userId: string): Promise<string | undefined> {
+  const rows = await db
+    .select({ id: memberships.workspaceId })
+    .from(memberships)
+    .where(eq(memberships.userId, userId))
+    .orderBy(asc(memberships.createdAt))
+    .limit(1)
+  return rows[0]?.id
+}
+
+export async function listMembers(db: Db, workspaceId: string) {
+  return db
+    .select({
+      id: users.id,
+      name: users.name,
+      email: users.email,
+      roles: memberships.roles,
+      since: memberships.createdAt,
+    })
+    .from(memberships)
+    .innerJoin(users, eq(users.id, memberships.userId))
+    .where(eq(memberships.workspaceId, workspaceId))
+    .orderBy(asc(users.name))
+}
+
+/** How many of each there are, for the rail. */
+export async function countThings(db: Db, workspaceId: string) {
+  const counted = async (query: Promise<{ n: number }[]>): Promise<number> => (await query)[0]!.n
+  return {
+    problems: await counted(db.select({ n: count() }).from(problems).where(eq(problems.workspaceId, workspaceId))),
+    machines: await counted(db.select({ n: count() }).from(machines).where(eq(machines.workspaceId, workspaceId))),
+    runSheets: await counted(db.select({ n: count() }).from(runSheets).where(eq(runSheets.workspaceId, workspaceId))),
+    people: await counted(db.select({ n: count() }).from(memberships).where(eq(memberships.workspaceId, workspaceId))),
+  }
+}
+
+export async function readFact(db: Db, key: string): Promise<string | undefined> {
+  return (await db.select().from(installation).where(eq(installation.key, key)))[0]?.value
+}
+
+/** Keeps the first value written for a key, whoever writes it, and answers it. */
+export async function keepFact(db: Db, key: string, value: string): Promise<string> {
+  await db.insert(installation).values({ key, value }).onConflictDoNothing()
+  return (await readFact(db, key))!
+}
+
+/** Removes a fact; false when another had already done so. */
+export async function takeFact(db: Db, key: string): Promise<boolean> {
+  return (
+    (await db.delete(installation).where(eq(installation.key, key)).returning({ key: installation.key })).length === 1
+  )
+}

@@ -1,0 +1,122 @@
+import { and, asc, desc, eq, inArray, ne } from 'drizzle-orm'
+import type { Db } from '../client'
+import { embeddings, machines, problems, returns, runSheetRemarks, runSheets, users } from '../schema'
+
+export type RunSheetRow = typeof runSheets.$inferSelect
+export type ReturnRow = typeof returns.$inferSelect
+
+export async function insertRunSheet(db: Db, row: typeof runSheets.$inferInsert): Promise<void> {
+  await db.insert(runSheets).values(row)
+}
+
+export async function findRunSheet(db: Db, workspaceId: string, id: string): Promise<RunSheetRow | undefined> {
+  return (
+    await db
+      .select()
+      .from(runSheets)
+      .where(and(eq(runSheets.workspaceId, workspaceId), eq(runSheets.id, id)))
+  )[0]
+}
+
+export async function listRunSheets(db: Db, workspaceId: string, limit: number, offset: number) {
+  return db
+    .select({
+      sheet: runSheets,
+      embedding: { id: embeddings.id, number: embeddings.number },
+      problem: { id: problems.id, number: problems.number, name: problems.name },
+      machine: { id: machines.id, name: machines.name },
+    })
+    .from(runSheets)
+    .innerJoin(embeddings, eq(embeddings.id, runSheets.embeddingId))
+    .innerJoin(problems, eq(problems.id, embeddings.problemId))
+    .innerJoin(machines, eq(machines.id, embeddings.machineId))
+    .where(eq(runSheets.workspaceId, workspaceId))
+    .orderBy(desc(runSheets.changedAt), desc(runSheets.number))
+    .limit(limit)
+    .offset(offset)
+}
+
+export async function runSheetsOfEmbeddings(db: Db, embeddingIds: readonly string[]): Promise<RunSheetRow[]> {
+  if (embeddingIds.length === 0) return []
+  return db
+    .select()
+    .from(runSheets)
+    .where(inArray(runSheets.embeddingId, [...embeddingIds]))
+    .orderBy(desc(runSheets.createdAt))
+}
+
+/** Changes a run sheet only while it is in one of the states given; false when it no longer is. */
+export async function updateRunSheet(
+  db: Db,
+  id: string,
+  states: readonly RunSheetRow['state'][],
+  set: Partial<typeof runSheets.$inferInsert>,
+): Promise<boolean> {
+  const rows = await db
+    .update(runSheets)
+    .set(set)
+    .where(and(eq(runSheets.id, id), inArray(runSheets.state, [...states])))
+    .returning({ id: runSheets.id })
+  return rows.length === 1
+}
+
+export async function deleteRunSheet(db: Db, id: string): Promise<string[]> {
+  const samples = await db.select({ id: returns.samplesBlobId }).from(returns).where(eq(returns.runSheetId, id))
+  await db.delete(runSheets).where(eq(runSheets.id, id))
+  return samples.flatMap((row) => (row.id ? [row.id] : []))
+}
+
+export async function insertRemark(db: Db, row: typeof runSheetRemarks.$inferInsert): Promise<void> {
+  await db.insert(runSheetRemarks).values(row)
+}
+
+export async function listRemarks(db: Db, runSheetId: string) {
+  return db
+    .select({ remark: runSheetRemarks, by: { id: users.id, name: users.name } })
+    .from(runSheetRemarks)
+    .leftJoin(users, eq(users.id, runSheetRemarks.by))
+    .where(eq(runSheetRemarks.runSheetId, runSheetId))
+    .orderBy(asc(runSheetRemarks.createdAt))
+}
+
+export async function insertReturn(db: Db, row: typeof returns.$inferInsert): Promise<void> {
+  await db.insert(returns).values(row)
+}
+
+export async function findReturn(db: Db, workspaceId: string, id: string): Promise<ReturnRow | undefined> {
+  return (
+    await db
+      .select()
+      .from(returns)
+      .where(and(eq(returns.workspaceId, workspaceId), eq(returns.id, id)))
+  )[0]
+}
+
+/** A return by its id alone, for jobs. */
+export async function findReturnOfJob(db: Db, id: string): Promise<ReturnRow | undefined> {
+  return (await db.select().from(returns).where(eq(returns.id, id)))[0]
+}
+
+export async function updateReturn(db: Db, id: string, set: Partial<typeof returns.$inferInsert>): Promise<void> {
+  await db.update(returns).set(set).where(eq(returns.id, id))
+}
+
+/** Returns of several run sheets, newest first. */
+export async function returnsOfRunSheets(db: Db, runSheetIds: readonly string[]): Promise<ReturnRow[]> {
+  if (runSheetIds.length === 0) return []
+  return db
+    .select()
+    .from(returns)
+    .where(inArray(returns.runSheetId, [...runSheetIds]))
+    .orderBy(desc(returns.createdAt))
+}
+
+/** Another ready return of the same run sheet to compare with: the newest of the other source, else the newest other one. */
+export async function returnToCompare(db: Db, row: ReturnRow): Promise<ReturnRow | undefined> {
+  const others = await db
+    .select()
+    .from(returns)
+    .where(and(eq(returns.runSheetId, row.runSheetId), ne(returns.id, row.id), eq(returns.status, 'ready')))
+    .orderBy(desc(returns.createdAt))
+  return others.find((other) => other.source !== row.source) ?? others[0]
+}

@@ -1,0 +1,3 @@
+export * from './blobs'
+export * from './people'
+export * from './work'

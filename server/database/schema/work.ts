@@ -1,0 +1,226 @@
+import {
+  boolean,
+  doublePrecision,
+  index,
+  integer,
+  jsonb,
+  pgTable,
+  primaryKey,
+  text,
+  uniqueIndex,
+} from 'drizzle-orm/pg-core'
+import type { EmbeddingStats, EmbeddingStatus, UnmetView } from '../../../shared/schemas/embeddings'
+import type { MachineSheet } from '../../../shared/schemas/machines'
+import type { ReadingView, StructureView } from '../../../shared/schemas/problems'
+import type { RunSheetSettings, RunSheetState } from '../../../shared/schemas/run-sheets'
+import type { Family } from '../../../shared/engine/machine/fabric'
+import { blobs } from './blobs'
+import { createdAt, id, moment } from './columns'
+import { users, workspaces } from './people'
+
+const workspaceId = () =>
+  text()
+    .notNull()
+    .references(() => workspaces.id, { onDelete: 'cascade' })
+const createdBy = () =>
+  text()
+    .notNull()
+    .references(() => users.id)
+
+/** Running numbers: problems and run sheets per workspace, embeddings per problem, returns per run sheet. */
+export const counters = pgTable(
+  'counters',
+  { scope: text().notNull(), kind: text().notNull(), value: integer().notNull() },
+  (table) => [primaryKey({ columns: [table.scope, table.kind] })],
+)
+
+export const problems = pgTable(
+  'problems',
+  {
+    id: id(),
+    workspaceId: workspaceId(),
+    number: integer().notNull(),
+    name: text().notNull(),
+    note: text().notNull().default(''),
+    form: text().$type<'qubo' | 'ising'>().notNull(),
+    /** The sense of the file; coefficients are stored for minimisation. */
+    sense: text().$type<'min' | 'max'>().notNull(),
+    variables: integer().notNull(),
+    interactions: integer().notNull(),
+    /** Packed arrays: labels, linear, rows, cols, values, offset; in `form`, to be minimised. */
+    dataBlobId: text()
+      .notNull()
+      .references(() => blobs.id),
+    fingerprint: text().notNull(),
+    source: jsonb().$type<{ fileName: string; bytes: number; sha256: string }>().notNull(),
+    reading: jsonb().$type<ReadingView>().notNull(),
+    structure: jsonb().$type<StructureView>().notNull(),
+    createdBy: createdBy(),
+    createdAt: createdAt(),
+    changedAt: moment().notNull(),
+  },
+  (table) => [uniqueIndex().on(table.workspaceId, table.number)],
+)
+
+export const machines = pgTable(
+  'machines',
+  {
+    id: id(),
+    workspaceId: workspaceId(),
+    name: text().notNull(),
+    note: text().notNull().default(''),
+    family: jsonb().$type<Family>().notNull(),
+    calibration: integer().notNull(),
+    createdBy: createdBy(),
+    createdAt: createdAt(),
+    changedAt: moment().notNull(),
+  },
+  (table) => [uniqueIndex().on(table.workspaceId, table.name)],
+)
+
+/** Never edited: every saved change of a machine's sheet is a new row. */
+export const calibrations = pgTable(
+  'calibrations',
+  {
+    machineId: text()
+      .notNull()
+      .references(() => machines.id, { onDelete: 'cascade' }),
+    number: integer().notNull(),
+    sheet: jsonb().$type<MachineSheet>().notNull(),
+    qubits: integer().notNull(),
+    couplers: integer().notNull(),
+    createdBy: createdBy(),
+    createdAt: createdAt(),
+  },
+  (table) => [primaryKey({ columns: [table.machineId, table.number] })],
+)
+
+export const embeddings = pgTable(
+  'embeddings',
+  {
+    id: id(),
+    workspaceId: workspaceId(),
+    problemId: text()
+      .notNull()
+      .references(() => problems.id, { onDelete: 'cascade' }),
+    machineId: text()
+      .notNull()
+      .references(() => machines.id),
+    calibration: integer().notNull(),
+    number: integer().notNull(),
+    status: text().$type<EmbeddingStatus>().notNull(),
+    method: text().notNull(),
+    seed: doublePrecision().notNull(),
+    tries: integer().notNull(),
+    timeLimitSeconds: doublePrecision().notNull(),
+    /** Packed arrays: offsets and dense qubit indices. */
+    chainsBlobId: text().references(() => blobs.id),
+    stats: jsonb().$type<EmbeddingStats>(),
+    unmet: jsonb().$type<UnmetView>(),
+    reason: text(),
+    fingerprint: text(),
+    seconds: doublePrecision(),
+    version: text().notNull(),
+    createdBy: createdBy(),
+    createdAt: createdAt(),
+  },
+  (table) => [
+    uniqueIndex().on(table.problemId, table.number),
+    index().on(table.workspaceId),
+    index().on(table.machineId),
+  ],
+)
+
+export const runSheets = pgTable(
+  'run_sheets',
+  {
+    id: id(),
+    workspaceId: workspaceId(),
+    embeddingId: text()
+      .notNull()
+      .references(() => embeddings.id, { onDelete: 'cascade' }),
+    number: integer().notNull(),
+    name: text().notNull(),
+    state: text().$type<RunSheetState>().notNull(),
+    settings: jsonb().$type<RunSheetSettings>().notNull(),
+    /** SHA-256 of settings and programmed values; set at approval, frozen from then on. */
+    fingerprint: text(),
+    machineTimeMilliseconds: doublePrecision().notNull(),
+    preparedBy: createdBy(),
+    reviewedBy: text().references(() => users.id),
+    createdAt: createdAt(),
+    changedAt: moment().notNull(),
+  },
+  (table) => [uniqueIndex().on(table.workspaceId, table.number), index().on(table.embeddingId)],
+)
+
+/** Hand-overs and remarks of a run sheet; only ever added to. */
+export const runSheetRemarks = pgTable(
+  'run_sheet_remarks',
+  {
+    id: id(),
+    runSheetId: text()
+      .notNull()
+      .references(() => runSheets.id, { onDelete: 'cascade' }),
+    by: text().references(() => users.id),
+    what: text().notNull(),
+    text: text().notNull(),
+    createdAt: createdAt(),
+  },
+  (table) => [index().on(table.runSheetId, table.createdAt)],
+)
+
+export const returns = pgTable(
+  'returns',
+  {
+    id: id(),
+    workspaceId: workspaceId(),
+    runSheetId: text()
+      .notNull()
+      .references(() => runSheets.id, { onDelete: 'cascade' }),
+    number: integer().notNull(),
+    source: text().$type<'rehearsal' | 'upload'>().notNull(),
+    status: text().$type<'running' | 'ready' | 'failed' | 'cancelled'>().notNull(),
+    /** What made the samples: settings of a rehearsal or the uploaded file. */
+    made: jsonb().$type<Record<string, string | number | boolean | null>>().notNull(),
+    /** The run sheet's settings when the samples were made: a draft may change afterwards. */
+    settings: jsonb().$type<RunSheetSettings>().notNull(),
+    samplesBlobId: text().references(() => blobs.id),
+    reads: integer().notNull(),
+    readsWithBreak: integer(),
+    /** Best majority-decoded energy in the problem's own sense. */
+    best: doublePrecision(),
+    reason: text(),
+    seconds: doublePrecision(),
+    version: text().notNull(),
+    createdBy: createdBy(),
+    createdAt: createdAt(),
+  },
+  (table) => [uniqueIndex().on(table.runSheetId, table.number)],
+)
+
+export const jobs = pgTable(
+  'jobs',
+  {
+    id: id(),
+    workspaceId: workspaceId(),
+    kind: text().$type<'embedding' | 'rehearsal'>().notNull(),
+    /** The embedding or return that the job fills. */
+    subjectId: text().notNull(),
+    status: text().$type<'waiting' | 'running' | 'done' | 'failed' | 'cancelled'>().notNull(),
+    progress: doublePrecision().notNull(),
+    message: text().notNull(),
+    detail: jsonb().$type<Record<string, number | string | null>>().notNull(),
+    log: jsonb().$type<{ at: string; message: string }[]>().notNull(),
+    attempts: integer().notNull(),
+    cancelRequested: boolean().notNull(),
+    /** The process that runs it; its heartbeat tells whether that process still lives. */
+    worker: text(),
+    heartbeatAt: moment(),
+    createdBy: createdBy(),
+    createdAt: createdAt(),
+    startedAt: moment(),
+    finishedAt: moment(),
+  },
+  (table) => [index().on(table.status), index().on(table.subjectId)],
+)

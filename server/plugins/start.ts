@@ -1,0 +1,63 @@
+import { randomBytes } from 'node:crypto'
+import { existsSync, mkdirSync, readFileSync, writeFileSync } from 'node:fs'
+import { availableParallelism } from 'node:os'
+import { dirname, join } from 'node:path'
+import { seedDemo } from '../services/demo'
+import { setupCode } from '../services/people'
+import type { StartedApp } from '../start'
+import { dataFolderOf, startApp } from '../start'
+
+const MINIMUM_PASSWORD_LENGTH = 32
+
+/**
+ * Sessions are sealed with NUXT_SESSION_PASSWORD. Only the demo may make its own, kept in the data folder so that a
+ * restart signs nobody out.
+ */
+function prepareSessions(demo: boolean, dataFolder: string): void {
+  if (demo || process.env.ALLOW_PLAIN_HTTP === 'true') process.env.NUXT_SESSION_COOKIE_SECURE ??= 'false'
+  if (process.env.NUXT_SESSION_PASSWORD) {
+    if (process.env.NUXT_SESSION_PASSWORD.length >= MINIMUM_PASSWORD_LENGTH) return
+    stop(`NUXT_SESSION_PASSWORD has fewer than ${MINIMUM_PASSWORD_LENGTH} characters. Sessions would not be safe.`)
+  }
+  if (!demo)
+    stop(
+      'NUXT_SESSION_PASSWORD is not set. Give a random text of at least 32 characters, for example from: openssl rand -base64 32',
+    )
+  mkdirSync(dataFolder, { recursive: true })
+  const file = join(dataFolder, 'session-password')
+  if (!existsSync(file)) writeFileSync(file, randomBytes(32).toString('hex'), { mode: 0o600 })
+  process.env.NUXT_SESSION_PASSWORD = readFileSync(file, 'utf8').trim()
+}
+
+function stop(message: string): never {
+  console.error(message)
+  process.exit(1)
+}
+
+/** Opens everything, then either seeds the demo or prints the code for the first account. */
+async function boot(): Promise<StartedApp> {
+  const demo = process.env.DEMO === 'true'
+  const dataFolder = dataFolderOf(process.env)
+  prepareSessions(demo, dataFolder)
+  const started = await startApp({
+    databaseUrl: process.env.DATABASE_URL || undefined,
+    dataFolder,
+    demo,
+    workersFolder: () => useRuntimeConfig().workersFolder || join(dirname(process.argv[1]!), 'workers'),
+    concurrency: process.env.JOBS === undefined ? availableParallelism() : Number(process.env.JOBS),
+  })
+  if (demo) await seedDemo(started.app, PASSWORDS)
+  const code = await setupCode(started.app)
+  if (code)
+    console.log(
+      `\nNo account exists yet. Open /setup and create the owner's account with this one-time code: ${code}\n`,
+    )
+  return started
+}
+
+export default defineNitroPlugin((nitro) => {
+  const started = boot()
+  setApp(started.then(({ app }) => app))
+  started.catch((error: Error) => stop(`Espalier could not start: ${error.message}`))
+  nitro.hooks.hook('close', async () => (await started).close())
+})

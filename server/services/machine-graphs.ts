@@ -1,0 +1,56 @@
+import { applyDefects } from '../../shared/engine/machine/defects'
+import { buildFabric } from '../../shared/engine/machine/build-fabric'
+import type { Fabric, Family, WorkingGraph } from '../../shared/engine/machine/fabric'
+import { indexById } from '../../shared/engine/machine/index-of'
+import { DomainError } from '../../shared/errors'
+import type { MachineSheet } from '../../shared/schemas/machines'
+import type { Actor, App } from '../app'
+import type { CalibrationRow, MachineRow } from '../database/repositories/machines'
+import { findCalibration, findMachine } from '../database/repositories/machines'
+import { Recent } from './recent'
+
+const fabrics = new Recent<Fabric>(6)
+/** Calibrations never change, so what was worked out from one can be kept. */
+const workings = new Recent<WorkingGraph>(8)
+
+/** The fabric of a family; building one takes up to a second for the largest, so the last few are kept. */
+export const fabricOf = (family: Family): Fabric => fabrics.get(JSON.stringify(family), () => buildFabric(family))
+
+/** A machine as it worked at one calibration. */
+export interface CalibratedMachine extends WorkingGraph {
+  machine: MachineRow
+  calibration: CalibrationRow
+  sheet: MachineSheet
+  fabric: Fabric
+  /** Dense index of a published qubit number, −1 when the family has none. */
+  indexOf: (id: number) => number
+}
+
+/** A machine of the workspace. @throws DomainError not found, also for another workspace's */
+export async function machineRow(app: App, actor: Pick<Actor, 'workspaceId'>, id: string): Promise<MachineRow> {
+  const row = await findMachine(app.db, actor.workspaceId, id)
+  if (!row) throw new DomainError('not found', 'machine.unknown', 'There is no such machine in this workspace.')
+  return row
+}
+
+/** A machine at a calibration; without a number, at the one in force. */
+export async function calibratedMachine(
+  app: App,
+  actor: Pick<Actor, 'workspaceId'>,
+  machineId: string,
+  number?: number,
+): Promise<CalibratedMachine> {
+  const machine = await machineRow(app, actor, machineId)
+  const calibration = await findCalibration(app.db, machineId, number ?? machine.calibration)
+  if (!calibration)
+    throw new DomainError(
+      'not found',
+      'calibration.unknown',
+      `${machine.name} has no calibration ${number}; the one in force is ${machine.calibration}.`,
+    )
+  const fabric = fabricOf(machine.family)
+  const working = workings.get(`${machineId} ${calibration.number}`, () =>
+    applyDefects(fabric, calibration.sheet.defects),
+  )
+  return { machine, calibration, sheet: calibration.sheet, fabric, indexOf: indexById(fabric), ...working }
+}

@@ -1,0 +1,277 @@
+import { randomUUID } from 'node:crypto'
+import type { z } from 'zod'
+import { verifyEmbedding } from '../../shared/engine/embedding/verify'
+import { degreeOf, sizeOf } from '../../shared/engine/graph/graph'
+import { applyDefects, defectIssues, normaliseDefects } from '../../shared/engine/machine/defects'
+import type { Fabric, WorkingGraph } from '../../shared/engine/machine/fabric'
+import { couplerCount, familyName, familyProblems, qubitCount } from '../../shared/engine/machine/family'
+import { couplerPlace } from '../../shared/engine/machine/layout'
+import { interactionGraph } from '../../shared/engine/problem/interaction-graph'
+import { DomainError } from '../../shared/errors'
+import { packArrays } from '../../shared/packed-arrays'
+import type { Page, PageQuery } from '../../shared/schemas/common'
+import type {
+  Calibrate,
+  CalibrationItem,
+  CalibrationSaved,
+  CreateMachine,
+  graphQuerySchema,
+  MachineGraph,
+  MachineItem,
+  MachineSheet,
+  MachineView,
+} from '../../shared/schemas/machines'
+import type { Actor, App } from '../app'
+import type { Db } from '../database/client'
+import { findEmbeddingOfJob, foundEmbeddingsOn } from '../database/repositories/embeddings'
+import type { MachineRow } from '../database/repositories/machines'
+import {
+  advanceCalibration,
+  countEmbeddingsOn,
+  insertCalibration,
+  insertMachine,
+  listCalibrations,
+  listMachines,
+  machineNameTaken,
+} from '../database/repositories/machines'
+import { pageOf, positionOf } from '../database/repositories/pages'
+import { findProblem } from '../database/repositories/problems'
+import { runSheetsOfEmbeddings } from '../database/repositories/run-sheets'
+import { unpackChains } from './chains'
+import { calibratedMachine, fabricOf } from './machine-graphs'
+import { problemData } from './problems'
+
+/** Checks a defect list against the family and brings it into order. @throws DomainError naming each unknown part */
+function checkedSheet(fabric: Fabric, sheet: MachineSheet): MachineSheet {
+  const issues = defectIssues(fabric, sheet.defects)
+  if (issues.length > 0)
+    throw new DomainError(
+      'not acceptable',
+      'machine.defects',
+      `${issues.length} of the defects do not fit ${familyName(fabric.family)}: ${issues[0]!.message}.`,
+      issues.slice(0, 100).map(({ path, message }) => ({ path: `defects.${path}`, message })),
+    )
+  const { qubits, couplers } = normaliseDefects(fabric, sheet.defects)
+  return { ...sheet, defects: { qubits: [...qubits], couplers: couplers.map(([a, b]) => [a, b]) } }
+}
+
+const workingQubits = (working: WorkingGraph): number => working.usable.reduce((sum, one) => sum + one, 0)
+
+async function saveCalibration(
+  app: App,
+  tx: Db,
+  actor: Actor,
+  machineId: string,
+  number: number,
+  sheet: MachineSheet,
+  working: WorkingGraph,
+) {
+  const figures = { qubits: workingQubits(working), couplers: sizeOf(working.graph) }
+  await insertCalibration(tx, { machineId, number, sheet, ...figures, createdBy: actor.userId, createdAt: app.now() })
+  return figures
+}
+
+/** Adds a machine with its first calibration. */
+export async function createMachine(app: App, actor: Actor, input: CreateMachine) {
+  const { name, note, family, ...given } = input
+  const problems = familyProblems(family)
+  if (problems.length > 0)
+    throw new DomainError(
+      'not acceptable',
+      'machine.family',
+      problems.join('; '),
+      problems.map((message) => ({ path: 'family', message })),
+    )
+  const fabric = fabricOf(family)
+  const sheet = checkedSheet(fabric, given)
+  const working = applyDefects(fabric, sheet.defects)
+  const id = randomUUID()
+  const now = app.now()
+  return app.db.transaction(async (tx) => {
+    if (await machineNameTaken(tx, actor.workspaceId, name))
+      throw new DomainError(
+        'not acceptable',
+        'machine.name',
+        `There is a machine called ${name} already. Choose another name.`,
+        [{ path: 'name', message: 'taken' }],
+      )
+    await insertMachine(tx, {
+      id,
+      workspaceId: actor.workspaceId,
+      name,
+      note,
+      family,
+      calibration: 1,
+      createdBy: actor.userId,
+      createdAt: now,
+      changedAt: now,
+    })
+    const figures = await saveCalibration(app, tx, actor, id, 1, sheet, working)
+    return { id, ...figures, calibration: 1 }
+  })
+}
+
+/** Saves a changed sheet as the next calibration, and answers which embeddings and run sheets it breaks. */
+export async function calibrateMachine(
+  app: App,
+  actor: Actor,
+  id: string,
+  change: Calibrate,
+): Promise<CalibrationSaved> {
+  const before = await calibratedMachine(app, actor, id)
+  const given = Object.fromEntries(Object.entries(change).filter(([, value]) => value !== undefined))
+  const sheet = checkedSheet(before.fabric, { ...before.sheet, ...given })
+  const working = applyDefects(before.fabric, sheet.defects)
+  const number = before.machine.calibration + 1
+  const figures = await app.db.transaction(async (tx) => {
+    if (!(await advanceCalibration(tx, id, number - 1, app.now())))
+      throw new DomainError(
+        'wrong state',
+        'calibration.raced',
+        'Somebody saved another calibration meanwhile. Reload the page and apply your change to it.',
+      )
+    return saveCalibration(app, tx, actor, id, number, sheet, working)
+  })
+  const broken = await brokenEmbeddings(app, before.machine, working, number)
+  const sheets = await runSheetsOfEmbeddings(
+    app.db,
+    broken.map(({ id: embeddingId }) => embeddingId),
+  )
+  const open = sheets.filter(({ state }) => state !== 'returned' && state !== 'closed')
+  return {
+    calibration: number,
+    ...figures,
+    invalidated: { embeddings: broken, runSheets: open.map((row) => ({ id: row.id, number: row.number })) },
+  }
+}
+
+/** Embeddings made before calibration `number` that no longer hold on its working graph. */
+async function brokenEmbeddings(app: App, machine: MachineRow, working: WorkingGraph, number: number) {
+  const broken: CalibrationSaved['invalidated']['embeddings'] = []
+  for (const { embedding, problem } of await foundEmbeddingsOn(app.db, machine.id)) {
+    if (embedding.calibration >= number) continue
+    if (!(await holdsOn(app, machine, embedding.id, working)))
+      broken.push({ id: embedding.id, number: embedding.number, problem })
+  }
+  return broken
+}
+
+async function holdsOn(app: App, machine: MachineRow, embeddingId: string, working: WorkingGraph): Promise<boolean> {
+  const embedding = await findEmbeddingOfJob(app.db, embeddingId)
+  const problem = embedding && (await findProblem(app.db, machine.workspaceId, embedding.problemId))
+  if (!embedding?.chainsBlobId || !problem) return false
+  const graph = interactionGraph((await problemData(app, problem)).problem)
+  const chains = unpackChains(await app.blobs.read(embedding.chainsBlobId))
+  return verifyEmbedding(graph, working.graph, working.usable, chains).length === 0
+}
+
+function itemOf(machine: MachineRow, figures: { qubits: number; couplers: number }, embeddings: number): MachineItem {
+  return {
+    id: machine.id,
+    name: machine.name,
+    family: familyName(machine.family),
+    calibration: machine.calibration,
+    qubits: figures.qubits,
+    qubitsMade: qubitCount(machine.family),
+    couplers: figures.couplers,
+    couplersMade: couplerCount(machine.family),
+    embeddings,
+    changedAt: machine.changedAt.toISOString(),
+  }
+}
+
+export async function machinesOf(app: App, actor: Actor, query: PageQuery): Promise<Page<MachineItem>> {
+  const position = positionOf(query.cursor)
+  const rows = await listMachines(app.db, actor.workspaceId, query.limit + 1, position)
+  const items: MachineItem[] = []
+  for (const row of rows) items.push(itemOf(row.machine, row, await countEmbeddingsOn(app.db, row.machine.id)))
+  return pageOf(items, query.limit, position)
+}
+
+export async function machineView(app: App, actor: Actor, id: string): Promise<MachineView> {
+  const { machine, calibration, sheet, graph, fabric } = await calibratedMachine(app, actor, id)
+  const calibrations = await calibrationItems(app, machine, fabric)
+  let maxDegree = 0
+  for (let v = 0; v < graph.order; v++) maxDegree = Math.max(maxDegree, degreeOf(graph, v))
+  return {
+    ...itemOf(machine, calibration, await countEmbeddingsOn(app.db, id)),
+    note: machine.note,
+    familySizes: machine.family,
+    maxDegree,
+    sheet,
+    calibrations,
+  }
+}
+
+/** Every calibration, newest first, with the embeddings of its predecessor that it broke. */
+async function calibrationItems(app: App, machine: MachineRow, fabric: Fabric): Promise<CalibrationItem[]> {
+  const rows = await listCalibrations(app.db, machine.id)
+  const found = await foundEmbeddingsOn(app.db, machine.id)
+  const items: CalibrationItem[] = []
+  for (const { calibration, savedBy } of rows) {
+    const working = applyDefects(fabric, calibration.sheet.defects)
+    const broke: CalibrationItem['broke'] = []
+    for (const { embedding, problem } of found)
+      if (embedding.calibration === calibration.number - 1 && !(await holdsOn(app, machine, embedding.id, working)))
+        broke.push({ id: embedding.id, number: embedding.number, problem })
+    items.push({
+      number: calibration.number,
+      missingQubits: qubitCount(machine.family) - calibration.qubits,
+      missingCouplers: couplerCount(machine.family) - calibration.couplers,
+      controlError: calibration.sheet.controlError,
+      temperatureMillikelvin: calibration.sheet.temperatureMillikelvin,
+      remark: calibration.sheet.remark,
+      savedBy,
+      savedAt: calibration.createdAt.toISOString(),
+      broke,
+    })
+  }
+  return items
+}
+
+/** The working graph at a calibration: qubits and couplers by published number, and a point to draw each qubit at. */
+export async function machineGraph(app: App, actor: Actor, id: string, calibration?: number): Promise<MachineGraph> {
+  const { graph, usable, fabric } = await calibratedMachine(app, actor, id, calibration)
+  const { ids, segments } = fabric
+  const working = Array.from(usable.keys()).filter((q) => usable[q])
+  return {
+    nodes: working.map((q) => ids[q]!),
+    edges: Array.from({ length: sizeOf(graph) }, (_, k): [number, number] => [
+      ids[graph.ends[2 * k]!]!,
+      ids[graph.ends[2 * k + 1]!]!,
+    ]),
+    positions: working.map((q): [number, number] => [
+      (segments[4 * q]! + segments[4 * q + 2]!) / 2,
+      (segments[4 * q + 1]! + segments[4 * q + 3]!) / 2,
+    ]),
+  }
+}
+
+/** The working graph as a file: an edge list, or a Matrix Market symmetric pattern over numbers from 1. */
+export async function machineGraphFile(
+  app: App,
+  actor: Actor,
+  id: string,
+  { calibration, format }: z.infer<typeof graphQuerySchema>,
+) {
+  const { graph, fabric, machine } = await calibratedMachine(app, actor, id, calibration)
+  const { ids } = fabric
+  const pairs = Array.from(
+    { length: sizeOf(graph) },
+    (_, k) => [ids[graph.ends[2 * k]!]!, ids[graph.ends[2 * k + 1]!]!] as const,
+  )
+  if (format === 'csv')
+    return { fileName: `${machine.name}.csv`, text: `a,b\n${pairs.map(([a, b]) => `${a},${b}\n`).join('')}` }
+  const side = ids[ids.length - 1]! + 1
+  const head = `%%MatrixMarket matrix coordinate pattern symmetric\n% row and column = qubit number + 1\n${side} ${side} ${pairs.length}\n`
+  return { fileName: `${machine.name}.mtx`, text: head + pairs.map(([a, b]) => `${b + 1} ${a + 1}\n`).join('') }
+}
+
+/** What the lattice view draws, as packed arrays: numbers, segments, working qubits, couplers and where they attach. */
+export async function latticeOf(app: App, actor: Actor, id: string, calibration?: number): Promise<Uint8Array> {
+  const { graph, usable, fabric } = await calibratedMachine(app, actor, id, calibration)
+  const places = new Float32Array(4 * sizeOf(graph))
+  const drawing = { graph, segments: fabric.segments }
+  for (let k = 0; k < sizeOf(graph); k++) couplerPlace(drawing, k, places.subarray(4 * k, 4 * k + 4))
+  return packArrays({ ids: fabric.ids, segments: fabric.segments, usable, ends: graph.ends, places })
+}

@@ -1,0 +1,239 @@
+import type { z } from 'zod'
+import { energyOf } from '../../shared/engine/problem/energy'
+import { convertForm } from '../../shared/engine/problem/convert'
+import { writeProblem } from '../../shared/engine/formats'
+import { DomainError } from '../../shared/errors'
+import type { Page, PageQuery } from '../../shared/schemas/common'
+import type {
+  coefficientsQuerySchema,
+  editProblemSchema,
+  energyRequestSchema,
+  ProblemItem,
+  ProblemView,
+  TermsView,
+  termsQuerySchema,
+} from '../../shared/schemas/problems'
+import type { Actor, App } from '../app'
+import { embeddingsOfProblems } from '../database/repositories/embeddings'
+import { pageOf, positionOf } from '../database/repositories/pages'
+import type { ProblemRow } from '../database/repositories/problems'
+import { deleteProblem, findProblem, listProblems, personOf, updateProblem } from '../database/repositories/problems'
+import { returnsOfRunSheets, runSheetsOfEmbeddings } from '../database/repositories/run-sheets'
+import type { ProblemData } from './problem-data'
+import { unpackProblem } from './problem-data'
+import { signed, signOf } from './sense'
+
+/** A problem of the workspace. @throws DomainError not found, also for another workspace's */
+export async function problemRow(app: App, actor: Actor, id: string): Promise<ProblemRow> {
+  const row = await findProblem(app.db, actor.workspaceId, id)
+  if (!row) throw new DomainError('not found', 'problem.unknown', 'There is no such problem in this workspace.')
+  return row
+}
+
+export async function problemData(app: App, row: ProblemRow): Promise<ProblemData> {
+  return unpackProblem(await app.blobs.read(row.dataBlobId))
+}
+
+/** Problems, newest change first, each with its newest embedding and run sheet. */
+export async function problemsOf(app: App, actor: Actor, query: PageQuery): Promise<Page<ProblemItem>> {
+  const position = positionOf(query.cursor)
+  const rows = await listProblems(app.db, actor.workspaceId, query.limit + 1, position)
+  const context = await contextOf(
+    app,
+    rows.map((row) => row.id),
+  )
+  return pageOf(
+    rows.map((row) => itemOf(row, context)),
+    query.limit,
+    position,
+  )
+}
+
+type Context = Awaited<ReturnType<typeof contextOf>>
+
+/** What was built on several problems, fetched together. */
+async function contextOf(app: App, problemIds: string[]) {
+  const embeddings = await embeddingsOfProblems(app.db, problemIds)
+  const sheets = await runSheetsOfEmbeddings(
+    app.db,
+    embeddings.map(({ embedding }) => embedding.id),
+  )
+  const returned = await returnsOfRunSheets(
+    app.db,
+    sheets.map((sheet) => sheet.id),
+  )
+  return { embeddings, sheets, returned }
+}
+
+function itemOf(row: ProblemRow, { embeddings, sheets, returned }: Context): ProblemItem {
+  const own = embeddings.filter(({ embedding }) => embedding.problemId === row.id)
+  const newest = own[0]
+  const ownSheets = sheets.filter((sheet) => own.some(({ embedding }) => embedding.id === sheet.embeddingId))
+  const sheet = ownSheets[0]
+  const sign = signOf(row.sense)
+  const energies = returned
+    .filter((entry) => entry.best !== null && ownSheets.some(({ id }) => id === entry.runSheetId))
+    .map((entry) => sign * entry.best!)
+  return {
+    id: row.id,
+    number: row.number,
+    name: row.name,
+    form: row.form,
+    sense: row.sense,
+    variables: row.variables,
+    interactions: row.interactions,
+    density: row.structure.density,
+    embedding: newest
+      ? {
+          id: newest.embedding.id,
+          number: newest.embedding.number,
+          status: newest.embedding.status,
+          machine: newest.machine,
+          longestChain: newest.embedding.stats?.chainLength.max ?? null,
+        }
+      : null,
+    runSheet: sheet ? { id: sheet.id, number: sheet.number, state: sheet.state } : null,
+    best: energies.length > 0 ? signed(sign, Math.min(...energies)) : null,
+    changedAt: row.changedAt.toISOString(),
+  }
+}
+
+export async function problemView(app: App, actor: Actor, id: string): Promise<ProblemView> {
+  const row = await problemRow(app, actor, id)
+  const context = await contextOf(app, [id])
+  const { embedding: _embedding, runSheet: _runSheet, ...item } = itemOf(row, context)
+  const { problem } = await problemData(app, row)
+  return {
+    ...item,
+    note: row.note,
+    offset: signed(signOf(row.sense), problem.offset),
+    fingerprint: row.fingerprint,
+    source: row.source,
+    reading: row.reading,
+    structure: row.structure,
+    embeddings: context.embeddings.map(({ embedding, machine }) => ({
+      id: embedding.id,
+      number: embedding.number,
+      status: embedding.status,
+      machine,
+      calibration: embedding.calibration,
+      method: embedding.method,
+      seed: embedding.seed,
+      longestChain: embedding.stats?.chainLength.max ?? null,
+      qubitsUsed: embedding.stats?.qubitsUsed ?? null,
+      seconds: embedding.seconds,
+      createdAt: embedding.createdAt.toISOString(),
+      runSheets: context.sheets
+        .filter((sheet) => sheet.embeddingId === embedding.id)
+        .map(({ id, number, state }) => ({ id, number, state })),
+    })),
+    createdBy: await personOf(app.db, row.createdBy),
+    createdAt: row.createdAt.toISOString(),
+  }
+}
+
+export async function editProblem(
+  app: App,
+  actor: Actor,
+  id: string,
+  edit: z.infer<typeof editProblemSchema>,
+): Promise<void> {
+  await problemRow(app, actor, id)
+  await updateProblem(app.db, id, { ...edit, changedAt: app.now() })
+}
+
+/** Deletes a problem with its embeddings, run sheets and samples. */
+export async function removeProblem(app: App, actor: Actor, id: string): Promise<void> {
+  const row = await problemRow(app, actor, id)
+  await app.db.transaction(async (tx) => app.blobs.remove(tx, await deleteProblem(tx, row)))
+}
+
+/** Rows of both forms side by side, in the problem's own sense. */
+export async function termsOf(
+  app: App,
+  actor: Actor,
+  id: string,
+  query: z.infer<typeof termsQuerySchema>,
+): Promise<TermsView> {
+  const row = await problemRow(app, actor, id)
+  const { form, labels, problem } = await problemData(app, row)
+  const qubo = convertForm(problem, form, 'qubo')
+  const ising = convertForm(problem, form, 'ising')
+  const sign = signOf(row.sense)
+  const { part, start, limit } = query
+  const total = part === 'linear' ? problem.n : problem.values.length
+  const indices = Array.from({ length: Math.max(0, Math.min(limit, total - start)) }, (_, k) => start + k)
+  return {
+    part,
+    start,
+    total,
+    linear:
+      part === 'linear'
+        ? indices.map((i) => ({
+            label: labels[i]!,
+            qubo: signed(sign, qubo.linear[i]!),
+            ising: signed(sign, ising.linear[i]!),
+          }))
+        : [],
+    interactions:
+      part === 'interactions'
+        ? indices.map((k) => ({
+            a: labels[problem.rows[k]!]!,
+            b: labels[problem.cols[k]!]!,
+            qubo: signed(sign, qubo.values[k]!),
+            ising: signed(sign, ising.values[k]!),
+          }))
+        : [],
+    offset: { qubo: signed(sign, qubo.offset), ising: signed(sign, ising.offset) },
+  }
+}
+
+/** The problem as a file, in either form; the offset, the sense and the labels travel in it. */
+export async function coefficientsOf(
+  app: App,
+  actor: Actor,
+  id: string,
+  query: z.infer<typeof coefficientsQuerySchema>,
+): Promise<{ fileName: string; text: string }> {
+  const row = await problemRow(app, actor, id)
+  const data = await problemData(app, row)
+  const form = query.form ?? row.form
+  const problem = convertForm(data.problem, data.form, form)
+  const text = writeProblem(query.format === 'dense' ? 'dense-csv' : 'coefficients', {
+    form,
+    labels: data.labels,
+    problem,
+    sense: row.sense,
+  })
+  return { fileName: `P-${row.number}-${form}.csv`, text }
+}
+
+/** Energies of states in either alphabet, offset included, in the problem's own sense. */
+export async function energiesOf(
+  app: App,
+  actor: Actor,
+  id: string,
+  request: z.infer<typeof energyRequestSchema>,
+): Promise<number[]> {
+  const row = await problemRow(app, actor, id)
+  const data = await problemData(app, row)
+  const problem = convertForm(data.problem, data.form, request.form)
+  const allowed = request.form === 'qubo' ? [0, 1] : [-1, 1]
+  const sign = signOf(row.sense)
+  return request.states.map((state, k) => {
+    if (state.length !== problem.n)
+      throw new DomainError(
+        'not acceptable',
+        'energy.length',
+        `State ${k} has ${state.length} values; the problem has ${problem.n} variables.`,
+      )
+    const bad = state.findIndex((value) => !allowed.includes(value))
+    if (bad >= 0)
+      throw new DomainError(
+        'not acceptable',
+        'energy.value',
+        `State ${k} has the value ${state[bad]} at place ${bad}; a ${request.form} state holds ${allowed.join(' and ')}.`,
+      )
+    return signed(sign, energyOf(problem, state))
+  })
+}

@@ -1,0 +1,59 @@
+import { join } from 'node:path'
+import type { App } from './app'
+import { migrate, openDatabase } from './database/client'
+import { createBlobStore } from './database/repositories/blobs'
+import { startQueue } from './jobs/queue'
+import { startRunner } from './jobs/runner'
+import { createCompute } from './workers/compute'
+import { VERSION } from './version'
+
+export interface StartOptions {
+  databaseUrl?: string
+  dataFolder: string
+  demo: boolean
+  /** Answers the folder of the bundled worker threads. */
+  workersFolder: () => string
+  /** Jobs run at the same time in this process; 0 leaves them to other processes. */
+  concurrency: number
+}
+
+export interface StartedApp {
+  app: App
+  /** Stops taking work, hands running jobs back, closes the threads and the database, in this order. */
+  close(): Promise<void>
+}
+
+const UNADOPTED_KEPT_MS = 60 * 60 * 1000
+const SWEEP_MS = 30 * 60 * 1000
+
+/** Opens the database, applies migrations, and starts the queue and the job runner. */
+export async function startApp(options: StartOptions): Promise<StartedApp> {
+  const database = await openDatabase(options)
+  await migrate(database)
+  const now = (): Date => new Date()
+  const blobs = createBlobStore(database, now)
+  const sweep = (): Promise<void> => blobs.sweep(new Date(Date.now() - UNADOPTED_KEPT_MS))
+  await sweep()
+  const timer = setInterval(
+    () => void sweep().catch((error: Error) => console.error(`sweep: ${error.message}`)),
+    SWEEP_MS,
+  )
+  timer.unref()
+  const compute = createCompute(options.workersFolder)
+  const queue = await startQueue(database)
+  const app: App = { database, db: database.db, blobs, compute, queue, now, version: VERSION, demo: options.demo }
+  const runner = options.concurrency > 0 ? await startRunner(app, options.concurrency) : undefined
+  return {
+    app,
+    async close() {
+      clearInterval(timer)
+      if (runner) await runner.stop()
+      else await queue.stop()
+      await compute.close()
+      await database.close()
+    },
+  }
+}
+
+/** The folder that holds the database and the demo's session password. */
+export const dataFolderOf = (env: NodeJS.ProcessEnv): string => env.DATA_DIR || join(process.cwd(), '.data')

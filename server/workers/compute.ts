@@ -1,0 +1,64 @@
+import { Piscina } from 'piscina'
+import { availableParallelism } from 'node:os'
+import { join } from 'node:path'
+import { MessageChannel } from 'node:worker_threads'
+import type { TaskInput, TaskName, TaskOutput, TaskProgress } from './tasks'
+
+export interface RunOptions<N extends TaskName> {
+  /** Asks the task to stop early; it then answers what it has. */
+  signal?: AbortSignal
+  onProgress?: (progress: TaskProgress<N>) => void
+}
+
+/** Runs engine work off the main thread. */
+export interface Compute {
+  /** How many tasks run at the same time. */
+  readonly threads: number
+  run<N extends TaskName>(name: N, input: TaskInput<N>, options?: RunOptions<N>): Promise<TaskOutput<N>>
+  close(): Promise<void>
+}
+
+/** What a thread receives: see thread.ts. */
+export interface ThreadMessage {
+  name: TaskName
+  input: unknown
+  port: MessagePort
+  /** One int32; 1 asks the task to stop. */
+  cancel: SharedArrayBuffer
+}
+
+/**
+ * A pool of worker threads over the bundled thread entry.
+ * @param workersFolder answers the folder that holds thread.mjs; asked at first use, when the final paths are known
+ */
+export function createCompute(workersFolder: () => string, threads = availableParallelism()): Compute {
+  let pool: Piscina | undefined
+  const open = (): Piscina =>
+    (pool ??= new Piscina({
+      filename: join(workersFolder(), 'thread.mjs'),
+      minThreads: 1,
+      maxThreads: threads,
+      idleTimeout: 60_000,
+    }))
+  return {
+    threads,
+    async run(name, input, options = {}) {
+      const cancel = new SharedArrayBuffer(4)
+      const stop = (): void => void Atomics.store(new Int32Array(cancel), 0, 1)
+      if (options.signal?.aborted) stop()
+      options.signal?.addEventListener('abort', stop)
+      const { port1, port2 } = new MessageChannel()
+      port1.on('message', (progress) => options.onProgress?.(progress))
+      try {
+        return await open().run({ name, input, port: port2, cancel }, { transferList: [port2] })
+      } finally {
+        options.signal?.removeEventListener('abort', stop)
+        port1.close()
+      }
+    },
+    async close() {
+      await pool?.destroy()
+      pool = undefined
+    },
+  }
+}
