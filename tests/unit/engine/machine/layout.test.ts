@@ -1,4 +1,5 @@
 import { describe, expect, it } from 'vitest'
+import { graphFromEdges } from '../../../../shared/engine/graph/build'
 import { buildFabric } from '../../../../shared/engine/machine/build-fabric'
 import type { Fabric } from '../../../../shared/engine/machine/fabric'
 import { bounds, couplerKind, couplerPlace, orientationOf } from '../../../../shared/engine/machine/layout'
@@ -36,6 +37,19 @@ describe('couplerPlace', () => {
       }
     },
   )
+
+  it('finds the facing ends whichever qubit comes first along the line', () => {
+    const graph = graphFromEdges(2, [0, 1])
+    const [left, right] = [
+      [0, 5, 2, 5],
+      [3, 5, 6, 5],
+    ] as const
+    const place = (...qubits: (readonly number[])[]): number[] => [
+      ...couplerPlace({ graph, segments: Float32Array.from(qubits.flat()) }, 0, new Float32Array(4)),
+    ]
+    expect(place(left, right)).toEqual([2, 5, 3, 5])
+    expect(place(right, left)).toEqual([3, 5, 2, 5])
+  })
 
   it('returns the array it was given', () => {
     const out = new Float32Array(4)
