@@ -40,6 +40,10 @@ export interface UnmetView {
   overlappedQubits: number[]
   /** Variables whose chains overlap, by label. */
   variables: string[]
+  /** Interactions without a coupler between their chains. */
+  unmetInteractions: number
+  /** The best state reached, by label: chains that still share qubits. */
+  partialChains: Record<string, number[]>
 }
 
 export interface EmbeddingView {

@@ -49,7 +49,7 @@ export const sendBackSchema = z.object({ remark: z.string().trim().min(1, 'say w
 export const rehearseSchema = z.object({
   reads: z.number().int().min(1).max(100_000).default(1000),
   sweeps: z.number().int().min(1).max(1_000_000).default(1000),
-  /** Final temperature in units of the programmed values; default: the machine’s own, or 0.05 without one. */
+  /** Final temperature in units of the programmed values; default 0.1. */
   temperature: z.number().positive().max(100).optional(),
   /** Redraw every programmed value with the machine’s control error. */
   controlError: z.boolean().default(false),

@@ -2,7 +2,7 @@
 export const MIGRATIONS = [
   {
     "tag": "0000_foundation",
-    "folderMillis": 1796119509073,
+    "folderMillis": 1796120513561,
     "hash": "dfc4b90213808b2a9131d45d42b17ff1c810c481f4e38950ebacd10994f7d492",
     "bps": true,
     "sql": [

@@ -103,3 +103,19 @@ export async function takeFact(db: Db, key: string): Promise<boolean> {
     (await db.delete(installation).where(eq(installation.key, key)).returning({ key: installation.key })).length === 1
   )
 }
+
+export async function setFact(db: Db, key: string, value: string): Promise<void> {
+  await db.insert(installation).values({ key, value }).onConflictDoUpdate({ target: installation.key, set: { value } })
+}
+
+/** Removes a workspace with everything in it, and the accounts that belong nowhere else. */
+export async function removeWorkspace(db: Db, id: string): Promise<void> {
+  await db.transaction(async (tx) => {
+    const members = await tx.select({ id: memberships.userId }).from(memberships).where(eq(memberships.workspaceId, id))
+    // Embeddings refer to machines without cascade, so that a machine in use cannot vanish: problems go first.
+    await tx.delete(problems).where(eq(problems.workspaceId, id))
+    await tx.delete(workspaces).where(eq(workspaces.id, id))
+    for (const { id: userId } of members)
+      if (!(await firstWorkspaceOf(tx, userId))) await tx.delete(users).where(eq(users.id, userId))
+  })
+}

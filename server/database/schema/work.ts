@@ -116,7 +116,7 @@ export const embeddings = pgTable(
     /** Packed arrays: offsets and dense qubit indices. */
     chainsBlobId: text().references(() => blobs.id),
     stats: jsonb().$type<EmbeddingStats>(),
-    unmet: jsonb().$type<UnmetView>(),
+    unmet: jsonb().$type<Omit<UnmetView, 'partialChains'>>(),
     reason: text(),
     fingerprint: text(),
     seconds: doublePrecision(),

@@ -13,15 +13,17 @@ export interface RehearseInput {
   error: { sigmaH: number; sigmaJ: number; seed: number } | null
   sweeps: number
   temperature: number
+  /** Number of the first of these reads within the run: each read has a random stream of its own. */
+  firstRead: number
   reads: number
   seed: number
 }
 
 /** Anneals one share of a rehearsal's reads, with its gauge applied before and undone after. */
 export function rehearse(input: RehearseInput, control: Control<AnnealProgress>): Samples {
-  const { programmed, gauge, error, sweeps, temperature, reads, seed } = input
+  const { programmed, gauge, error, sweeps, temperature, firstRead, reads, seed } = input
   const signs = gauge ? drawGauge(programmed, gauge.seed, gauge.number) : null
   const model = physicalModel(signs ? applyGauge(programmed, signs) : programmed, error)
-  const samples = anneal(model, { reads, sweeps, temperature, seed }, control)
+  const samples = anneal(model, { firstRead, reads, sweeps, temperature, seed }, control)
   return signs ? undoGauge(samples, signs) : samples
 }

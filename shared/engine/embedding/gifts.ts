@@ -2,12 +2,20 @@ import { layChainTree } from './chain-tree'
 import { countCouplers, inspectContacts, NO_CONTACT, soleContact } from './contacts'
 import type { SearchState } from './state'
 
-/** Lays the tree from a qubit that is no leaf, if the chain has one, so that every leaf can be followed upwards. */
-function layTreeFromInside(state: SearchState, variable: number): number {
-  const { chains, visit, treeDegree } = state
+/**
+ * Lays the tree from the middle of a longest path of an arbitrary tree, so that leaves lie far from the root on all
+ * sides and every leaf but that of a chain of two can be followed upwards.
+ */
+function layTreeFromMiddle(state: SearchState, variable: number): number {
+  const { chains, visit, up } = state
   const any = chains.qubit[chains.chainHead[variable]!]!
-  const count = layChainTree(state, variable, any)
-  return count > 2 && treeDegree[any] === 1 ? layChainTree(state, variable, visit[1]!) : count
+  const end = visit[layChainTree(state, variable, any) - 1]!
+  const otherEnd = visit[layChainTree(state, variable, end) - 1]!
+  let depth = 0
+  for (let q = otherEnd; q !== end; q = up[q]!) depth++
+  let middle = otherEnd
+  for (let step = depth >> 1; step > 0; step--) middle = up[middle]!
+  return layChainTree(state, variable, middle)
 }
 
 /** Number of qubits from the leaf upwards that serve no partner but `receiver`, up to a branch. */
@@ -40,6 +48,9 @@ function giveFromLeaf(state: SearchState, variable: number, leaf: number, balanc
   const share = runLength(state, leaf, receiver) >> 1
   let q = leaf
   for (let given = 0; given < share; given++) {
+    // A gift can make this qubit the last contact to a partner that the two of them touched.
+    const sole = soleContact(state, q)
+    if (sole !== receiver && sole !== NO_CONTACT) return
     if (balanced && chains.length[receiver]! + 1 >= chains.length[variable]!) return
     give(state, variable, q, receiver)
     q = up[q]!
@@ -56,7 +67,7 @@ export function giveOuterHalves(state: SearchState, variable: number, balanced: 
   const { chains, visit, treeDegree } = state
   if (chains.length[variable]! < 2) return
   inspectContacts(state, variable)
-  const count = layTreeFromInside(state, variable)
+  const count = layTreeFromMiddle(state, variable)
   for (let i = count - 1; i > 0; i--) {
     const q = visit[i]!
     if (treeDegree[q] === 1 && chains.owns(variable, q)) giveFromLeaf(state, variable, q, balanced)

@@ -8,7 +8,7 @@ import type { SearchState } from './state'
 
 const DEFAULTS = {
   /** Factor on a qubit's weight for each chain that has it, in the first pass. */
-  penalty: 3,
+  penalty: 2,
   /** Growth of that factor from pass to pass. */
   penaltyGrowth: 1.07,
   /** Added to a qubit's history after a pass for each chain beyond the first. */
@@ -16,8 +16,6 @@ const DEFAULTS = {
   /** Every so many passes all variables are rerouted, else the conflicted and some of the rest. */
   fullPassEvery: 5,
   shareOfRest: 0.5,
-  /** Share of overlap on used qubits from which hardly more than the conflicted variables are rerouted. */
-  nearlyDone: 0.02,
   /** Passes without less overlap before a try is given up. */
   patience: 40,
   /** Largest random part of a weight; small enough to decide between equal ways only. */
@@ -46,13 +44,6 @@ function place(state: SearchState, rerouter: Rerouter, random: Random, watch: Wa
     if (seed >= 0) state.chains.add(v, seed)
   }
   return false
-}
-
-/** Chance that a variable without conflict is rerouted in this pass. */
-function shareOfRest(state: SearchState, pass: number, variables: number): number {
-  const { overlap, qubitsUsed } = state.chains
-  if (overlap < DEFAULTS.nearlyDone * qubitsUsed) return Math.min(DEFAULTS.shareOfRest, (4 * overlap) / variables)
-  return pass % DEFAULTS.fullPassEvery === 0 ? 1 : DEFAULTS.shareOfRest
 }
 
 /** How a negotiation ended, and how many passes it took. */
@@ -88,7 +79,7 @@ export function negotiate(state: SearchState, rerouter: Rerouter, random: Random
     refreshWeights(state, random)
     state.setPenalty((penalty *= DEFAULTS.penaltyGrowth))
     watch.report(chains.overlap, 0.8 * (1 - best / Math.max(1, firstOverlap, best)))
-    const share = shareOfRest(state, pass, variables.length)
+    const share = pass % DEFAULTS.fullPassEvery === 0 ? 1 : DEFAULTS.shareOfRest
     shuffle(variables, variables.length, random)
     for (const v of variables) {
       if (watch.shouldStop(chains.overlap)) return { valid: false, passes: pass }

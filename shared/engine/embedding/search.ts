@@ -11,6 +11,7 @@ import type { SearchProgress } from './progress'
 import { Rerouter } from './reroute'
 import { qualityOf, shorten } from './shorten'
 import { SearchState } from './state'
+import { verifyEmbedding } from './verify'
 
 export type { SearchPhase, SearchProgress } from './progress'
 
@@ -106,7 +107,10 @@ function keepPartial(state: SearchState, best: Best, tryNumber: number): void {
 function keepEmbedding(state: SearchState, best: Best, tryNumber: number, watch: Watch): void {
   const { longest, total } = qualityOf(state)
   if (best.embedding && (best.longest < longest || (best.longest === longest && best.total <= total))) return
-  best.embedding = snapshot(state)
+  const embedding = snapshot(state)
+  const [violation] = verifyEmbedding(state.problem, state.machine, state.usable, embedding)
+  if (violation) throw new Error(`the search made an invalid embedding: ${violation.message}`)
+  best.embedding = embedding
   best.partial = null
   best.longest = watch.longestChain = longest
   best.total = watch.qubitsUsed = total

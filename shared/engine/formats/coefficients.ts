@@ -56,16 +56,14 @@ class ListReader {
     }
     const value = parseNumber(valueText)
     if (Number.isNaN(value)) return numberFault(valueText)
-    const fault = this.labelFaultOf(row) ?? this.labelFaultOf(col)
+    const knownRow = this.table.indexOf(row)
+    const knownCol = this.table.indexOf(col)
+    const fault = (knownRow === undefined && labelFault(row)) || (knownCol === undefined && labelFault(col))
     if (fault) return fault
-    this.rows.push(this.table.indexOf(row) ?? this.table.add(row, line))
-    this.cols.push(this.table.indexOf(col) ?? this.table.add(col, line))
+    this.rows.push(knownRow ?? this.table.add(row, line))
+    this.cols.push(knownCol ?? this.table.indexOf(col) ?? this.table.add(col, line))
     this.values.push(value)
     return null
-  }
-
-  private labelFaultOf(label: string): string | null {
-    return this.table.indexOf(label) === undefined ? labelFault(label) : null
   }
 }
 

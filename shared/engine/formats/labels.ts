@@ -38,11 +38,15 @@ function isExactInteger(label: string): boolean {
   return true
 }
 
+const PLAIN = /^[!-~]+$/
+
 /** Two labels with the same key are taken for the same name written twice. */
 function clashKey(label: string): string {
   const trimmed = label.trim()
   const isNumber = trimmed.length <= DEFAULTS.maxExactDigits && isDecimal(trimmed)
   if (isNumber) return `number ${Number(trimmed) + 0}`
+  // Most labels need no normalisation, and files may hold very many.
+  if (PLAIN.test(trimmed)) return `text ${trimmed.toLowerCase()}`
   return `text ${trimmed.replace(/\s+/g, ' ').normalize('NFC').toLowerCase().normalize('NFC')}`
 }
 

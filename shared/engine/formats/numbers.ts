@@ -6,6 +6,11 @@ const LIMITS = {
   least: 1e-150,
 }
 
+const POINT = 0x2e
+/** Turns `E` into `e`, and no other character of a number into it. */
+const LOWER_CASE = 0x20
+const LETTER_E = 0x65
+
 const isDigit = (code: number): boolean => code >= 0x30 && code <= 0x39
 const isSign = (code: number): boolean => code === 0x2b || code === 0x2d
 
@@ -21,13 +26,13 @@ export function isDecimal(text: string): boolean {
   const begin = isSign(text.charCodeAt(0)) ? 1 : 0
   let p = skipDigits(text, begin)
   let digits = p - begin
-  if (text[p] === '.') {
+  if (text.charCodeAt(p) === POINT) {
     const fraction = skipDigits(text, p + 1)
     digits += fraction - p - 1
     p = fraction
   }
   if (digits === 0) return false
-  if (text[p] === 'e' || text[p] === 'E') {
+  if ((text.charCodeAt(p) | LOWER_CASE) === LETTER_E) {
     const exponent = isSign(text.charCodeAt(p + 1)) ? p + 2 : p + 1
     p = skipDigits(text, exponent)
     if (p === exponent) return false

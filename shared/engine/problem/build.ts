@@ -54,22 +54,19 @@ export function buildProblem(n: number, terms: Terms, offset: number): BuiltProb
   checkTerms(n, terms)
   if (!Number.isFinite(offset)) throw new RangeError(`the offset ${offset} is not finite`)
   const count = terms.values.length
-  const low = new Uint32Array(count)
-  const high = new Uint32Array(count)
+  // Copies in typed arrays: the passes below are several times faster on them than on what the caller brings.
+  const low = Uint32Array.from(terms.rows)
+  const high = Uint32Array.from(terms.cols)
+  const order = new Uint32Array(count)
   for (let k = 0; k < count; k++) {
-    low[k] = Math.min(terms.rows[k]!, terms.cols[k]!)
-    high[k] = Math.max(terms.rows[k]!, terms.cols[k]!)
+    order[k] = k
+    if (low[k]! <= high[k]!) continue
+    const row = low[k]!
+    low[k] = high[k]!
+    high[k] = row
   }
-  const order = sortedBy(
-    sortedBy(
-      Uint32Array.from({ length: count }, (_, k) => k),
-      high,
-      n,
-    ),
-    low,
-    n,
-  )
-  return mergeRuns(n, low, high, terms.values, order, offset)
+  const sorted = sortedBy(sortedBy(order, high, n), low, n)
+  return mergeRuns(n, low, high, Float64Array.from(terms.values), sorted, offset)
 }
 
 /** Sums each run of equal pairs in sorted order. */
@@ -77,7 +74,7 @@ function mergeRuns(
   n: number,
   low: Uint32Array,
   high: Uint32Array,
-  values: ArrayLike<number>,
+  values: Float64Array,
   order: Uint32Array,
   offset: number,
 ): BuiltProblem {
@@ -93,9 +90,13 @@ function mergeRuns(
   for (let p = 0; p < count; distinct++) {
     const row = low[order[p]!]!
     const col = high[order[p]!]!
-    sum.reset()
-    while (p < count && low[order[p]!] === row && high[order[p]!] === col) sum.add(values[order[p++]!]!)
-    const value = sum.value()
+    let value = values[order[p++]!]! + 0
+    if (p < count && low[order[p]!] === row && high[order[p]!] === col) {
+      sum.reset()
+      sum.add(value)
+      while (p < count && low[order[p]!] === row && high[order[p]!] === col) sum.add(values[order[p++]!]!)
+      value = sum.value()
+    }
     if (!Number.isFinite(value)) throw new RangeError(`the terms of ${row} and ${col} sum beyond the range of doubles`)
     if (row === col) linear[row] = value
     else if (value === 0) zerosDropped++

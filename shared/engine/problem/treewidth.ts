@@ -10,7 +10,7 @@ const DEFAULTS = {
   /** Above this many vertices no bound is computed. */
   maxOrder: 2048,
   /** Words of bit rows that may be read before giving up: a few tenths of a second. */
-  maxWork: 60_000_000,
+  maxWork: 30_000_000,
 }
 
 function bitCount(word: number): number {

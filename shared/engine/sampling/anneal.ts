@@ -99,10 +99,10 @@ export function annealReads(model: SamplerModel, options: AnnealOptions, firstRe
  */
 export function anneal(
   model: SamplerModel,
-  options: AnnealOptions & { readonly reads: number },
+  options: AnnealOptions & { readonly reads: number; readonly firstRead?: number },
   control: Pick<Control<AnnealProgress>, 'cancelled' | 'report'>,
 ): Samples {
   if (!(Number.isInteger(options.reads) && options.reads >= 0))
     throw new RangeError(`reads must be a whole number from 0, not ${options.reads}`)
-  return annealRange(model, options, 0, options.reads, control)
+  return annealRange(model, options, options.firstRead ?? 0, options.reads, control)
 }

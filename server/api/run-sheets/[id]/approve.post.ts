@@ -1,0 +1,7 @@
+import { remarkSchema } from '../../../../shared/schemas/run-sheets'
+import { handOver } from '../../../services/review'
+
+/** `{remark?}` → `{state}`; 409 from a wrong state. */
+export default defineRoute(['reviewer'], async (event, { app, ...actor }) =>
+  handOver(app, actor, partOf(event, 'id'), 'approve', (await bodyOf(event, remarkSchema)).remark),
+)

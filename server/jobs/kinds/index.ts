@@ -1,0 +1,7 @@
+import type { JobKind } from '../../../shared/schemas/jobs'
+import type { JobKindHandler } from '../runner'
+import { embeddingJob } from './embedding'
+import { rehearsalJob } from './rehearsal'
+
+/** Every kind of background work. */
+export const JOB_KINDS: Record<JobKind, JobKindHandler> = { embedding: embeddingJob, rehearsal: rehearsalJob }

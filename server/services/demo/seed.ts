@@ -1,0 +1,210 @@
+import { writeSamplesCsv } from '../../../shared/engine/readout/samples-csv'
+import { createRandom } from '../../../shared/engine/random'
+import type { Role } from '../../../shared/schemas/common'
+import type { Family } from '../../../shared/engine/machine/fabric'
+import { createMachineSchema } from '../../../shared/schemas/machines'
+import { uploadProblemSchema } from '../../../shared/schemas/problems'
+import { createRunSheetSchema } from '../../../shared/schemas/run-sheets'
+import type { Actor, App } from '../../app'
+import { anyUser, keepFact, readFact, removeWorkspace, setFact } from '../../database/repositories/people'
+import { findJob } from '../../database/repositories/jobs'
+import { startEmbedding } from '../embeddings'
+import { fabricOf } from '../machine-graphs'
+import { calibrateMachine, createMachine } from '../machines'
+import type { Passwords } from '../people'
+import { createAccount, createWorkspace } from '../people'
+import { uploadProblem } from '../problem-upload'
+import { editProblem } from '../problems'
+import { programmeBench, requireProgrammed } from '../programming'
+import { uploadReturn } from '../returns'
+import { handOver } from '../review'
+import { benchOf, createRunSheet, runSheetRow } from '../run-sheets'
+import type { DemoFile } from './problems'
+import { DEMO_FILES } from './problems'
+
+const PASSWORD = 'brackwater-demo'
+const FACT = 'demo workspace'
+
+const ACCOUNTS: { email: string; name: string; roles: Role[] }[] = [
+  { email: 'owner@brackwater.example', name: 'Rhona Skerry', roles: ['owner'] },
+  { email: 'developer@brackwater.example', name: 'Ida Fenn', roles: ['developer'] },
+  { email: 'steward@brackwater.example', name: 'Per Lind', roles: ['steward'] },
+  { email: 'reviewer@brackwater.example', name: 'Maud Okafor', roles: ['reviewer'] },
+  { email: 'reader@brackwater.example', name: 'Tomas Reyl', roles: ['reader'] },
+]
+
+type Cast = Record<'owner' | 'developer' | 'steward' | 'reviewer' | 'reader', Actor>
+
+/**
+ * Fills an empty database with the invented ferry operator. Interrupted seeding is begun again at the next start; a
+ * database that holds anything else is left alone.
+ */
+export async function seedDemo(app: App, passwords: Passwords): Promise<void> {
+  const earlier = await readFact(app.db, FACT)
+  if (earlier === 'seeded') return
+  if (earlier) await removeWorkspace(app.db, earlier)
+  else if (await anyUser(app.db)) return
+  const cast = await seedPeople(app, passwords)
+  await seedWork(app, cast)
+  await setFact(app.db, FACT, 'seeded')
+}
+
+async function seedPeople(app: App, passwords: Passwords): Promise<Cast> {
+  const passwordHash = await passwords.hash(PASSWORD)
+  return app.db.transaction(async (tx) => {
+    const workspaceId = await createWorkspace(app, tx, 'Brackwater Ferries')
+    await keepFact(tx, FACT, workspaceId)
+    const cast: Partial<Cast> = {}
+    for (const account of ACCOUNTS) {
+      const userId = await createAccount(app, tx, { ...account, passwordHash, workspaceId })
+      cast[account.email.split('@')[0] as keyof Cast] = { userId, workspaceId }
+    }
+    return cast as Cast
+  })
+}
+
+/** About one qubit in fifty and a few couplers missing, drawn once. */
+function demoDefects(family: Family, seed: number): { qubits: number[]; couplers: [number, number][] } {
+  const { ids, graph } = fabricOf(family)
+  const random = createRandom(seed)
+  const qubits = [...new Set(Array.from({ length: Math.round(ids.length / 50) }, () => ids[random.below(ids.length)]!))]
+  const couplers = Array.from({ length: 6 }, (): [number, number] => {
+    const edge = random.below(graph.ends.length / 2)
+    return [ids[graph.ends[2 * edge]!]!, ids[graph.ends[2 * edge + 1]!]!]
+  })
+  return { qubits, couplers }
+}
+
+async function seedMachines(app: App, steward: Actor): Promise<{ alder: string; juniper: string }> {
+  const ranges = { h: [-4, 4], J: [-2, 1], couplingSum: [-18, 15] }
+  const timing = {
+    programmingMicroseconds: 14_200,
+    readoutMicroseconds: 123,
+    delayMicroseconds: 21,
+    annealMinMicroseconds: 0.5,
+    annealMaxMicroseconds: 2000,
+  }
+  const create = (name: string, note: string, family: Family, seed: number) =>
+    createMachine(
+      app,
+      steward,
+      createMachineSchema.parse({
+        name,
+        note,
+        family,
+        defects: demoDefects(family, seed),
+        ranges,
+        timing,
+        controlError: { h: 0.021, J: 0.015 },
+        temperatureMillikelvin: 13.1,
+      }),
+    )
+  const note = 'Machine of the laboratory at Holm Point, bought by the second. Figures are what the steward entered.'
+  const alder = await create('Alder', note, { kind: 'pegasus', m: 6, trimmed: true }, 11)
+  await calibrateMachine(app, steward, alder.id, {
+    controlError: { h: 0.02, J: 0.015 },
+    remark: 'The laboratory swapped an amplifier on the left edge.',
+  })
+  const juniper = await create('Juniper', note, { kind: 'zephyr', m: 4, t: 4 }, 12)
+  return { alder: alder.id, juniper: juniper.id }
+}
+
+async function seedProblem(app: App, developer: Actor, file: DemoFile): Promise<string> {
+  const { id } = await uploadProblem(
+    app,
+    developer,
+    { name: file.fileName, bytes: Buffer.from(file.text) },
+    uploadProblemSchema.parse({ name: file.name }),
+  )
+  await editProblem(app, developer, id!, { note: file.note })
+  return id!
+}
+
+/** Runs a search through the queue, as a person would, and waits for it. */
+async function seedEmbedding(
+  app: App,
+  developer: Actor,
+  problemId: string,
+  machineId: string,
+  seed: number,
+): Promise<string> {
+  const { id, jobId } = await startEmbedding(app, developer, {
+    problemId,
+    machineId,
+    method: 'auto',
+    seed,
+    tries: 4,
+    timeLimitSeconds: 20,
+  })
+  for (;;) {
+    const job = await findJob(app.db, jobId)
+    if (job?.status === 'done') return id
+    if (!job || job.status === 'failed' || job.status === 'cancelled')
+      throw new Error(`the demo's embedding ended as ${job?.status}: ${job?.message}`)
+    await new Promise((resolve) => setTimeout(resolve, 100))
+  }
+}
+
+/** Samples as a machine with control error would give them, held by chains that are too weak. */
+async function seedReturn(app: App, developer: Actor, runSheetId: string): Promise<void> {
+  const sheet = await runSheetRow(app, developer, runSheetId)
+  const bench = await benchOf(app, developer, sheet)
+  const programmed = requireProgrammed(programmeBench(bench, sheet.settings))
+  const { h: sigmaH, J: sigmaJ } = bench.machine.sheet.controlError
+  const samples = await app.compute.run('rehearse', {
+    programmed,
+    gauge: null,
+    error: { sigmaH, sigmaJ, seed: 9 },
+    sweeps: 64,
+    temperature: 0.08,
+    firstRead: 0,
+    reads: sheet.settings.reads,
+    seed: 4,
+  })
+  const csv = writeSamplesCsv(
+    samples,
+    Array.from(programmed.qubits, (q) => bench.machine.fabric.ids[q]!),
+  )
+  await uploadReturn(
+    app,
+    developer,
+    runSheetId,
+    { name: 'holm-point-0412.csv', bytes: Buffer.from(csv) },
+    { format: 'csv', machineTimeSeconds: 0.32 },
+  )
+}
+
+async function seedWork(app: App, { developer, steward, reviewer }: Cast): Promise<void> {
+  const { alder, juniper } = await seedMachines(app, steward)
+  const berths = await seedProblem(app, developer, DEMO_FILES.berths)
+  const channels = await seedProblem(app, developer, DEMO_FILES.channels)
+  const crews = await seedProblem(app, developer, DEMO_FILES.crews)
+  const onAlder = await seedEmbedding(app, developer, channels, alder, 7)
+  await seedEmbedding(app, developer, berths, alder, 3)
+  const onJuniper = await seedEmbedding(app, developer, crews, juniper, 5)
+
+  const weak = createRunSheetSchema.parse({
+    embeddingId: onAlder,
+    name: 'Deck radio channels, first run',
+    strength: { rule: 'fixed', value: 0.7 },
+    reads: 1000,
+    annealMicroseconds: 72,
+  })
+  const returned = await createRunSheet(app, developer, weak)
+  await handOver(app, developer, returned.id, 'submit', 'First run on calibration 2.')
+  await handOver(app, reviewer, returned.id, 'approve', 'Within December’s time. Go ahead.')
+  await handOver(app, developer, returned.id, 'issue', '')
+  await seedReturn(app, developer, returned.id)
+
+  const waiting = await createRunSheet(
+    app,
+    developer,
+    createRunSheetSchema.parse({
+      embeddingId: onJuniper,
+      name: 'Two crews, first run',
+      strength: { rule: 'rms' },
+      reads: 400,
+    }),
+  )
+  await handOver(app, developer, waiting.id, 'submit', 'The crew office would like the split by Friday.')
+}

@@ -1,0 +1,34 @@
+import { DomainError } from '../../shared/errors'
+import type { JobView } from '../../shared/schemas/jobs'
+import type { Actor, App } from '../app'
+import { cancelWaitingJob, findJob, jobView, requestCancel } from '../database/repositories/jobs'
+import type { JobKindHandler } from '../jobs/runner'
+
+async function jobRow(app: App, actor: Actor, id: string) {
+  const row = await findJob(app.db, id)
+  if (!row || row.workspaceId !== actor.workspaceId)
+    throw new DomainError('not found', 'job.unknown', 'There is no such job in this workspace.')
+  return row
+}
+
+export async function jobOf(app: App, actor: Actor, id: string): Promise<JobView> {
+  return jobView(await jobRow(app, actor, id))
+}
+
+/** Asks a running job to stop and keep its best, or ends one that waits. Cancelling one that is over changes nothing. */
+export async function cancelJob(
+  app: App,
+  actor: Actor,
+  id: string,
+  kinds: Record<string, JobKindHandler>,
+): Promise<JobView> {
+  const row = await jobRow(app, actor, id)
+  const reason = 'cancelled before it started'
+  const ended = await app.db.transaction(async (tx) => {
+    if (!(await cancelWaitingJob(tx, id, app.now()))) return false
+    await kinds[row.kind]!.abandon(tx, row, 'cancelled', reason)
+    return true
+  })
+  if (!ended) await requestCancel(app.db, id)
+  return jobOf(app, actor, id)
+}

@@ -1,0 +1,288 @@
+import { chainLengths } from '../../shared/engine/readout/breaks'
+import { histogram as energyHistogram } from '../../shared/engine/readout/energies'
+import { wilson } from '../../shared/engine/readout/intervals'
+import { writeSamplesCsv } from '../../shared/engine/readout/samples-csv'
+import { histogram } from '../../shared/engine/problem/histogram'
+import type { Programmed } from '../../shared/engine/programming/programme'
+import { DomainError } from '../../shared/errors'
+import type { Proportion } from '../../shared/schemas/common'
+import type {
+  ChainBreaks,
+  CouplerBreaks,
+  Decoding,
+  DecodingRow,
+  EnergySeries,
+  ReturnView,
+  SolutionRow,
+} from '../../shared/schemas/returns'
+import type { Actor, App } from '../app'
+import { findJobOfSubject } from '../database/repositories/jobs'
+import { personOf } from '../database/repositories/problems'
+import type { ReturnRow } from '../database/repositories/run-sheets'
+import { returnToCompare } from '../database/repositories/run-sheets'
+import type { DecodedSummary, Summary } from '../workers/tasks/summarise'
+import type { Bench, Programming } from './programming'
+import { programmeBench, requireProgrammed } from './programming'
+import { returnRow } from './returns'
+import { benchOf, runSheetRow } from './run-sheets'
+import { readsIn, unpackSamples } from './samples-data'
+import { signed, signOf } from './sense'
+
+const METHODS: readonly Decoding[] = ['majority', 'discard', 'descent']
+const TITLES: Record<Decoding, string> = {
+  majority: 'Majority',
+  discard: 'Discard broken reads',
+  descent: 'Energy-descent repair',
+}
+const SHOWN_SOLUTIONS = 20
+const ENERGY_BINS = 36
+const PHYSICAL_BINS = 24
+
+const proportion = (count: number, total: number): Proportion => ({
+  count,
+  total,
+  rate: total > 0 ? count / total : 0,
+  ...wilsonOf(count, total),
+})
+const wilsonOf = (count: number, total: number) => {
+  if (total === 0) return { low: 0, high: 1 }
+  const { low, high } = wilson(count, total)
+  return { low, high }
+}
+
+interface Loaded {
+  bench: Bench
+  programming: Programming
+  programmed: Programmed
+  summary: Summary
+}
+
+async function load(app: App, actor: Actor, row: ReturnRow, methods: Decoding[], solutions: number): Promise<Loaded> {
+  const bench = await benchOf(app, actor, await runSheetRow(app, actor, row.runSheetId))
+  const programming = programmeBench(bench, row.settings)
+  const programmed = requireProgrammed(programming)
+  const samples = unpackSamples(await app.blobs.read(row.samplesBlobId!))
+  const summary = await app.compute.run('summarise', {
+    samples,
+    programmed,
+    ising: bench.ising,
+    seed: row.settings.seed,
+    methods,
+    solutions,
+  })
+  return { bench, programming, programmed, summary }
+}
+
+/** What the samples say, decoded one way, with the other ways beside it. */
+export async function returnView(app: App, actor: Actor, id: string, decode: Decoding): Promise<ReturnView> {
+  const row = await returnRow(app, actor, id)
+  const sheet = await runSheetRow(app, actor, row.runSheetId)
+  const bench = await benchOf(app, actor, sheet)
+  const { problem, machine } = bench
+  const job = await findJobOfSubject(app.db, id)
+  const base: Omit<ReturnView, 'breaks' | 'decodings' | 'energies' | 'best' | 'solutions' | 'physicalEnergies'> = {
+    id,
+    number: row.number,
+    source: row.source,
+    status: row.status,
+    jobId: job?.id ?? null,
+    reason: row.reason,
+    runSheet: { id: sheet.id, number: sheet.number, name: sheet.name, state: sheet.state },
+    problem: {
+      id: problem.id,
+      number: problem.number,
+      name: problem.name,
+      variables: problem.variables,
+      form: problem.form,
+      sense: problem.sense,
+    },
+    embedding: { id: bench.row.id, number: bench.row.number },
+    machine: { id: machine.machine.id, name: machine.machine.name, calibration: machine.calibration.number },
+    made: row.made,
+    seconds: row.seconds,
+    version: row.version,
+    reads: row.reads,
+    decode,
+    createdBy: await personOf(app.db, row.createdBy),
+    createdAt: row.createdAt.toISOString(),
+  }
+  if (row.status !== 'ready')
+    return { ...base, breaks: null, decodings: [], energies: null, best: null, solutions: [], physicalEnergies: [] }
+  const loaded = await load(app, actor, row, [...METHODS], SHOWN_SOLUTIONS)
+  const shown = loaded.summary.decoded.find(({ method }) => method === decode)!
+  const solutions = solutionRows(bench, shown)
+  return {
+    ...base,
+    breaks: breaksView(loaded),
+    decodings: loaded.summary.decoded.map((decoded) => decodingRow(bench, decoded)),
+    energies: await energiesView(app, actor, row, bench, shown),
+    best: solutions[0] ?? null,
+    solutions,
+    physicalEnergies: histogram(loaded.summary.physical, PHYSICAL_BINS),
+  }
+}
+
+function breaksView({ bench, programming, programmed, summary }: Loaded): ReturnView['breaks'] {
+  const { breaks } = summary
+  const ids = bench.machine.fabric.ids
+  const lengths = chainLengths(programmed)
+  const chains: ChainBreaks[] = bench.labels.map((label, i) => ({
+    variable: i,
+    label,
+    length: lengths[i]!,
+    strength: programmed.chainStrength[i]!,
+    cutBound: programming.bounds.bound[i]!,
+    ...proportion(breaks.perChain.breaks[i]!, breaks.reads),
+  }))
+  const couplers: CouplerBreaks[] = []
+  programmed.isChainCoupler.forEach((inside, c) => {
+    if (!inside || breaks.perCoupler[c] === 0) return
+    const [a, b] = [programmed.ends[2 * c]!, programmed.ends[2 * c + 1]!]
+    couplers.push({
+      a: ids[programmed.qubits[a]!]!,
+      b: ids[programmed.qubits[b]!]!,
+      label: bench.labels[programmed.chainOf[a]!]!,
+      ...proportion(breaks.perCoupler[c]!, breaks.reads),
+    })
+  })
+  const chainBreaks = chains.reduce((sum, { count }) => sum + count, 0)
+  return {
+    chains,
+    couplers: couplers.sort((x, y) => y.rate - x.rate),
+    readsWithBreak: proportion(breaks.readsWithBreak, breaks.reads),
+    chainReads: proportion(chainBreaks, breaks.chainReads),
+    perRead: breaks.perRead.histogram,
+  }
+}
+
+/** Mean and median of energies weighted by reads; null without reads. */
+function centre({
+  energies,
+  counts,
+}: Pick<DecodedSummary, 'energies' | 'counts'>): { mean: number; median: number } | null {
+  const total = readsIn({ counts })
+  if (total === 0) return null
+  const order = Array.from(energies.keys()).sort((a, b) => energies[a]! - energies[b]!)
+  let below = 0
+  let median = energies[order[0]!]!
+  for (const row of order) {
+    median = energies[row]!
+    below += counts[row]!
+    if (2 * below >= total) break
+  }
+  return { mean: energies.reduce((sum, energy, row) => sum + energy * counts[row]!, 0) / total, median }
+}
+
+function decodingRow({ problem }: Bench, decoded: DecodedSummary): DecodingRow {
+  const sign = signOf(problem.sense)
+  const middle = centre(decoded)
+  const best = decoded.energies.reduce((least, energy) => Math.min(least, energy), Infinity)
+  const bestCount = decoded.counts.reduce((sum, count, row) => sum + (decoded.energies[row] === best ? count : 0), 0)
+  return {
+    decoding: decoded.method,
+    title: TITLES[decoded.method],
+    readsKept: readsIn(decoded),
+    ties: decoded.ties,
+    best: middle ? signed(sign, best) : null,
+    bestCount,
+    median: middle ? signed(sign, middle.median) : null,
+    mean: middle ? signed(sign, middle.mean) : null,
+  }
+}
+
+const nameOf = (row: ReturnRow): string =>
+  row.source === 'rehearsal' ? `Rehearsal ${row.number}` : `Samples ${row.number}`
+
+/** Energies of this return and of the one it is best compared with, on the same bins. */
+async function energiesView(
+  app: App,
+  actor: Actor,
+  row: ReturnRow,
+  bench: Bench,
+  shown: DecodedSummary,
+): Promise<ReturnView['energies']> {
+  const middle = centre(shown)
+  if (!middle) return null
+  const sign = signOf(bench.problem.sense)
+  const all: { row: ReturnRow; energies: Float64Array; counts: Uint32Array }[] = [
+    { row, energies: shown.energies, counts: shown.counts },
+  ]
+  const other = await returnToCompare(app.db, row)
+  if (other) {
+    const { summary } = await load(app, actor, other, [shown.method], 0)
+    all.push({ row: other, energies: summary.decoded[0]!.energies, counts: summary.decoded[0]!.counts })
+  }
+  const values = Float64Array.from(
+    all.flatMap(({ energies }) => Array.from(energies, (energy) => signed(sign, energy))),
+  )
+  // The first histogram fixes bins that hold every value; each series is then counted into them.
+  const { start, step, counts } = energyHistogram(values, new Uint32Array(values.length).fill(1), ENERGY_BINS)
+  const series: EnergySeries[] = all.map((entry) => {
+    const bins = new Array<number>(counts.length).fill(0)
+    entry.energies.forEach(
+      (energy, k) =>
+        (bins[Math.min(bins.length - 1, Math.floor(signed(sign, energy) / step) - Math.floor(start / step))]! +=
+          entry.counts[k]!),
+    )
+    return { title: nameOf(entry.row), returnId: entry.row.id, reads: readsIn(entry), counts: bins }
+  })
+  const { best, bestCount, mean, median } = decodingRow(bench, shown)
+  return { best: best!, bestCount, mean: mean!, median: median!, start, width: step, series }
+}
+
+function solutionRows({ labels, problem }: Bench, { solutions }: DecodedSummary): SolutionRow[] {
+  const sign = signOf(problem.sense)
+  return solutions.map(({ energy, count, distance, spins }) => ({
+    energy: signed(sign, energy),
+    count,
+    distance,
+    assignment: Object.fromEntries(
+      labels.map((label, i) => [label, problem.form === 'qubo' ? (spins[i]! + 1) / 2 : spins[i]!]),
+    ),
+  }))
+}
+
+/** The best distinct decoded assignments. */
+export async function solutionsOf(
+  app: App,
+  actor: Actor,
+  id: string,
+  decode: Decoding,
+  limit: number,
+): Promise<SolutionRow[]> {
+  const row = await readyRow(app, actor, id)
+  const { bench, summary } = await load(app, actor, row, [decode], limit)
+  return solutionRows(bench, summary.decoded[0]!)
+}
+
+/** The raw samples as CSV: a header of qubit numbers, one line a row, with counts. */
+export async function samplesFile(app: App, actor: Actor, id: string): Promise<{ fileName: string; text: string }> {
+  const row = await readyRow(app, actor, id)
+  const sheet = await runSheetRow(app, actor, row.runSheetId)
+  const bench = await benchOf(app, actor, sheet)
+  const { qubits } = requireProgrammed(programmeBench(bench, row.settings))
+  const samples = unpackSamples(await app.blobs.read(row.samplesBlobId!))
+  const ids = Array.from(qubits, (q) => bench.machine.fabric.ids[q]!)
+  return { fileName: `RS-${sheet.number}-${row.source}-${row.number}.csv`, text: writeSamplesCsv(samples, ids) }
+}
+
+async function readyRow(app: App, actor: Actor, id: string): Promise<ReturnRow> {
+  const row = await returnRow(app, actor, id)
+  if (row.status === 'ready') return row
+  throw new DomainError(
+    'wrong state',
+    'return.not-ready',
+    `These samples are ${row.status}${row.reason ? `: ${row.reason}` : ''}.`,
+  )
+}
+
+/** One line per assignment: energy, count, distance, then a column for each variable. */
+export function solutionsCsv(rows: readonly SolutionRow[]): string {
+  const labels = Object.keys(rows[0]?.assignment ?? {})
+  const cell = (text: string): string => (/[",\n]/.test(text) ? `"${text.replaceAll('"', '""')}"` : text)
+  const head = ['energy', 'count', 'distance', ...labels.map(cell)].join(',')
+  const lines = rows.map(({ energy, count, distance, assignment }) =>
+    [energy, count, distance, ...labels.map((label) => assignment[label])].join(','),
+  )
+  return [head, ...lines, ''].join('\n')
+}

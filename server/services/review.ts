@@ -1,0 +1,74 @@
+import { randomUUID } from 'node:crypto'
+import { DomainError } from '../../shared/errors'
+import type { RunSheetState } from '../../shared/schemas/run-sheets'
+import type { Actor, App } from '../app'
+import type { RunSheetRow } from '../database/repositories/run-sheets'
+import { insertRemark, updateRunSheet } from '../database/repositories/run-sheets'
+import { fingerprintOf, programmeBench, requireProgrammed } from './programming'
+import { benchOf, runSheetRow, runSheetView } from './run-sheets'
+
+interface HandOver {
+  from: readonly RunSheetState[]
+  to: RunSheetState
+  what: string
+}
+
+const HAND_OVERS = {
+  submit: { from: ['draft', 'sent back'], to: 'in review', what: 'submitted for review' },
+  approve: { from: ['in review'], to: 'approved', what: 'approved' },
+  sendBack: { from: ['in review'], to: 'sent back', what: 'sent back' },
+  issue: { from: ['approved'], to: 'issued', what: 'issued' },
+} satisfies Record<string, HandOver>
+
+/** Moves a run sheet on; approval freezes and fingerprints what is programmed. */
+export async function handOver(
+  app: App,
+  actor: Actor,
+  id: string,
+  step: keyof typeof HAND_OVERS,
+  remark: string,
+): Promise<{ state: RunSheetState }> {
+  const { from, to, what }: HandOver = HAND_OVERS[step]
+  const row = await runSheetRow(app, actor, id)
+  const wrongState = new DomainError(
+    'wrong state',
+    'run-sheet.state',
+    `RS-${row.number} is ${row.state}; it can be ${what} only from ${from.join(' or ')}.`,
+  )
+  if (!from.includes(row.state)) throw wrongState
+  if (step === 'approve' && row.preparedBy === actor.userId)
+    throw new DomainError(
+      'forbidden',
+      'run-sheet.own',
+      'Nobody approves a run sheet of their own. Ask another reviewer.',
+    )
+  const change: Partial<RunSheetRow> = { state: to, changedAt: app.now() }
+  if (step === 'submit') await refuseBroken(app, actor, row)
+  if (step === 'approve')
+    change.fingerprint = fingerprintOf(requireProgrammed(programmeBench(await benchOf(app, actor, row), row.settings)))
+  if (step === 'approve' || step === 'sendBack') change.reviewedBy = actor.userId
+  await app.db.transaction(async (tx) => {
+    if (!(await updateRunSheet(tx, id, from, change))) throw wrongState
+    await insertRemark(tx, {
+      id: randomUUID(),
+      runSheetId: id,
+      by: actor.userId,
+      what,
+      text: remark,
+      createdAt: app.now(),
+    })
+  })
+  return { state: to }
+}
+
+async function refuseBroken(app: App, actor: Actor, row: RunSheetRow): Promise<void> {
+  const { checks } = await runSheetView(app, actor, row.id)
+  const refused = checks.filter(({ verdict }) => verdict === 'refused')
+  if (refused.length > 0)
+    throw new DomainError(
+      'not acceptable',
+      'run-sheet.checks',
+      `${refused[0]!.what}. Mend this before submitting.`,
+      refused.map(({ what }) => ({ message: what })),
+    )
+}

@@ -1,0 +1,326 @@
+import { randomUUID } from 'node:crypto'
+import type { z } from 'zod'
+import { verifyEmbedding } from '../../shared/engine/embedding/verify'
+import { interactionGraph } from '../../shared/engine/problem/interaction-graph'
+import type { Programmed } from '../../shared/engine/programming/programme'
+import { machineTimeEstimate } from '../../shared/engine/programming/machine-time'
+import { referenceSize } from '../../shared/engine/programming/strength'
+import { DomainError } from '../../shared/errors'
+import type { Page, PageQuery, Role } from '../../shared/schemas/common'
+import type {
+  ChainRow,
+  CheckView,
+  createRunSheetSchema,
+  EditRunSheet,
+  MachineTimePart,
+  ProgrammedView,
+  RunSheetItem,
+  RunSheetSettings,
+  RunSheetState,
+  RunSheetView,
+} from '../../shared/schemas/run-sheets'
+import type { Actor, App } from '../app'
+import { nextNumber } from '../database/repositories/counters'
+import { jobsOfSubjects } from '../database/repositories/jobs'
+import { pageOf, positionOf } from '../database/repositories/pages'
+import { personOf } from '../database/repositories/problems'
+import type { RunSheetRow } from '../database/repositories/run-sheets'
+import {
+  deleteRunSheet,
+  findRunSheet,
+  insertRemark,
+  insertRunSheet,
+  listRemarks,
+  listRunSheets,
+  returnsOfRunSheets,
+  updateRunSheet,
+} from '../database/repositories/run-sheets'
+import { embeddingRow } from './embeddings'
+import type { Bench, Programming } from './programming'
+import { calibratedMachine } from './machine-graphs'
+import {
+  chainsBelowBound,
+  compareRules,
+  fingerprintOf,
+  loadBench,
+  precisionOf,
+  programmeBench,
+  requireProgrammed,
+} from './programming'
+import { couplerCountsOf } from './chain-couplers'
+
+/** States in which the settings may change. */
+const EDITABLE: readonly RunSheetState[] = ['draft', 'sent back']
+
+/** A run sheet of the workspace. @throws DomainError not found, also for another workspace's */
+export async function runSheetRow(app: App, actor: Actor, id: string): Promise<RunSheetRow> {
+  const row = await findRunSheet(app.db, actor.workspaceId, id)
+  if (!row) throw new DomainError('not found', 'run-sheet.unknown', 'There is no such run sheet in this workspace.')
+  return row
+}
+
+/** The run sheet's embedding and everything under it, loaded. */
+export async function benchOf(app: App, actor: Actor, row: RunSheetRow): Promise<Bench> {
+  return loadBench(app, await embeddingRow(app, actor, row.embeddingId))
+}
+
+function estimate(bench: Bench, { gauges, reads, annealMicroseconds }: RunSheetSettings) {
+  const { programmingMicroseconds, readoutMicroseconds, delayMicroseconds } = bench.machine.sheet.timing
+  return machineTimeEstimate({
+    gauges,
+    reads,
+    annealMicroseconds,
+    timing: { programMicroseconds: programmingMicroseconds, readoutMicroseconds, delayMicroseconds },
+  })
+}
+
+export async function createRunSheet(
+  app: App,
+  actor: Actor,
+  input: z.infer<typeof createRunSheetSchema>,
+): Promise<{ id: string; number: number }> {
+  const { embeddingId, name, ...settings } = input
+  const bench = await loadBench(app, await embeddingRow(app, actor, embeddingId))
+  requireProgrammed(programmeBench(bench, settings))
+  const id = randomUUID()
+  const now = app.now()
+  const number = await app.db.transaction(async (tx) => {
+    const number = await nextNumber(tx, actor.workspaceId, 'run sheet')
+    await insertRunSheet(tx, {
+      id,
+      workspaceId: actor.workspaceId,
+      embeddingId,
+      number,
+      name: name ?? bench.problem.name,
+      state: 'draft',
+      settings,
+      machineTimeMilliseconds: estimate(bench, settings).totalMicroseconds / 1000,
+      preparedBy: actor.userId,
+      createdAt: now,
+      changedAt: now,
+    })
+    return number
+  })
+  return { id, number }
+}
+
+/** Changes a draft; from submission on the settings stand still. */
+export async function editRunSheet(app: App, actor: Actor, id: string, edit: EditRunSheet): Promise<void> {
+  const row = await runSheetRow(app, actor, id)
+  if (!EDITABLE.includes(row.state)) throw frozen(row)
+  const { name, ...changes } = edit
+  const given = Object.fromEntries(Object.entries(changes).filter(([, value]) => value !== undefined))
+  const settings: RunSheetSettings = { ...row.settings, ...given }
+  const bench = await benchOf(app, actor, row)
+  requireProgrammed(programmeBench(bench, settings))
+  const saved = await updateRunSheet(app.db, id, EDITABLE, {
+    ...(name ? { name } : {}),
+    settings,
+    machineTimeMilliseconds: estimate(bench, settings).totalMicroseconds / 1000,
+    changedAt: app.now(),
+  })
+  if (!saved) throw frozen(row)
+}
+
+const frozen = (row: RunSheetRow): DomainError =>
+  new DomainError(
+    'wrong state',
+    'run-sheet.frozen',
+    `RS-${row.number} is ${row.state}; its settings no longer change. Ask the reviewer to send it back, or prepare a new one.`,
+  )
+
+export async function removeRunSheet(app: App, actor: Actor, id: string): Promise<void> {
+  const row = await runSheetRow(app, actor, id)
+  if (!EDITABLE.includes(row.state))
+    throw new DomainError(
+      'wrong state',
+      'run-sheet.kept',
+      `RS-${row.number} is ${row.state} and is kept. Only drafts can be deleted.`,
+    )
+  await app.db.transaction(async (tx) => app.blobs.remove(tx, await deleteRunSheet(tx, id)))
+}
+
+export async function runSheetsOf(app: App, actor: Actor, query: PageQuery): Promise<Page<RunSheetItem>> {
+  const position = positionOf(query.cursor)
+  const rows = await listRunSheets(app.db, actor.workspaceId, query.limit + 1, position)
+  return pageOf(
+    rows.map(({ sheet, ...context }) => itemOf(sheet, context)),
+    query.limit,
+    position,
+  )
+}
+
+const itemOf = (
+  sheet: RunSheetRow,
+  context: Pick<RunSheetItem, 'embedding' | 'machine' | 'problem'>,
+): RunSheetItem => ({
+  id: sheet.id,
+  number: sheet.number,
+  name: sheet.name,
+  state: sheet.state,
+  ...context,
+  reads: sheet.settings.reads,
+  machineTimeMilliseconds: sheet.machineTimeMilliseconds,
+  changedAt: sheet.changedAt.toISOString(),
+})
+
+export async function runSheetView(app: App, actor: Actor, id: string): Promise<RunSheetView> {
+  const row = await runSheetRow(app, actor, id)
+  const bench = await benchOf(app, actor, row)
+  const programming = programmeBench(bench, row.settings)
+  const programmed = requireProgrammed(programming)
+  const { problem, machine } = bench
+  const precision = precisionOf(bench, programmed)
+  const time = machineTimeView(bench, row.settings)
+  return {
+    ...itemOf(row, {
+      problem: { id: problem.id, number: problem.number, name: problem.name },
+      embedding: { id: bench.row.id, number: bench.row.number },
+      machine: { id: machine.machine.id, name: machine.machine.name },
+    }),
+    settings: row.settings,
+    calibration: machine.calibration.number,
+    sense: problem.sense,
+    fingerprints: {
+      problem: problem.fingerprint,
+      embedding: bench.row.fingerprint ?? '',
+      programmed: row.fingerprint ?? fingerprintOf(programmed),
+    },
+    maxAbsJ: referenceSize(bench.ising),
+    rules: compareRules(bench, row.settings, programming.bounds),
+    chains: chainRows(bench, programming),
+    scale: programmed.scale,
+    limitedBy: programmed.limitedBy,
+    precision,
+    machineTime: time,
+    checks: await checksOf(app, bench, row.settings, programming, programmed, precision),
+    returns: await returnViews(app, id),
+    remarks: (await listRemarks(app.db, id)).map(({ remark, by }) => ({
+      at: remark.createdAt.toISOString(),
+      by,
+      what: remark.what,
+      text: remark.text,
+    })),
+    preparedBy: await personOf(app.db, row.preparedBy),
+    reviewedBy: row.reviewedBy ? await personOf(app.db, row.reviewedBy) : null,
+    createdAt: row.createdAt.toISOString(),
+  }
+}
+
+function chainRows(bench: Bench, { strengths, bounds }: Programming): ChainRow[] {
+  const couplers = couplerCountsOf(bench)
+  return bench.labels.map((label, i) => ({
+    variable: i,
+    label,
+    qubits: bench.embedding.offsets[i + 1]! - bench.embedding.offsets[i]!,
+    couplers: couplers[i]!,
+    strength: strengths[i]!,
+    cutBound: bounds.bound[i]!,
+    cutBoundExact: bounds.exact[i] === 1,
+  }))
+}
+
+function machineTimeView(bench: Bench, settings: RunSheetSettings): RunSheetView['machineTime'] {
+  const { gauges, reads, annealMicroseconds } = settings
+  const { programmingMicroseconds, readoutMicroseconds, delayMicroseconds } = bench.machine.sheet.timing
+  const time = estimate(bench, settings)
+  const parts: MachineTimePart[] = [
+    {
+      part: 'Programming',
+      reckoning: `${gauges} × ${programmingMicroseconds / 1000} ms`,
+      milliseconds: time.programmingMicroseconds / 1000,
+    },
+    { part: 'Anneal', reckoning: `${reads} × ${annealMicroseconds} µs`, milliseconds: time.annealMicroseconds / 1000 },
+    {
+      part: 'Read-out and delay',
+      reckoning: `${reads} × (${readoutMicroseconds} + ${delayMicroseconds}) µs`,
+      milliseconds: (time.readoutMicroseconds + time.delayMicroseconds) / 1000,
+    },
+  ]
+  return { parts, totalMilliseconds: time.totalMicroseconds / 1000 }
+}
+
+const percent = (share: number): string => `${Math.round(share * 100)} %`
+
+async function checksOf(
+  app: App,
+  bench: Bench,
+  settings: RunSheetSettings,
+  { strengths, bounds }: Programming,
+  programmed: Programmed,
+  precision: RunSheetView['precision'],
+): Promise<CheckView[]> {
+  const { machine, calibration, sheet } = bench.machine
+  const current = await calibratedMachine(app, bench.row, machine.id)
+  const violations = verifyEmbedding(interactionGraph(bench.ising), current.graph, current.usable, bench.embedding)
+  const { annealMinMicroseconds: least, annealMaxMicroseconds: most } = sheet.timing
+  const annealFits = settings.annealMicroseconds >= least && settings.annealMicroseconds <= most
+  const below = chainsBelowBound(bench, strengths, bounds)
+  const drowned = precision.couplingsUnderTwoSigma
+  const checks: (CheckView | null)[] = [
+    {
+      verdict: 'passed',
+      what: `Every programmed value fits ${machine.name}’s ranges`,
+      figure:
+        programmed.limitedBy === 'nothing'
+          ? 'scale 1'
+          : `scale ${Number(programmed.scale.toPrecision(3))}, limited by ${programmed.limitedBy}`,
+    },
+    violations.length === 0
+      ? {
+          verdict: 'passed',
+          what: `The embedding holds at calibration ${current.calibration.number}`,
+          figure:
+            calibration.number === current.calibration.number ? 'the one in force' : `made at ${calibration.number}`,
+        }
+      : {
+          verdict: 'refused',
+          what: `Calibration ${current.calibration.number} broke the embedding`,
+          figure: `${violations.length} broken rules`,
+        },
+    {
+      verdict: annealFits ? 'passed' : 'refused',
+      what: annealFits
+        ? 'The anneal time is within the machine’s limits'
+        : `${settings.annealMicroseconds} µs is outside the machine’s limits`,
+      figure: `${least} to ${most} µs`,
+    },
+    below > 0
+      ? {
+          verdict: 'caution',
+          what: `k is below the cut bound on ${below} chains`,
+          figure: 'sufficient, not necessary: rehearse',
+        }
+      : { verdict: 'passed', what: 'k is above the cut bound on every chain', figure: 'ground states unbroken' },
+    drowned === null
+      ? null
+      : {
+          verdict: drowned > 0 ? 'caution' : 'passed',
+          what:
+            drowned > 0
+              ? `${percent(drowned)} of the programmed couplings are under 2σ`
+              : 'Every programmed coupling is above 2σ',
+          figure: `σ_J ${precision.sigmaJ}`,
+        },
+  ]
+  return checks.filter((check) => check !== null)
+}
+
+async function returnViews(app: App, runSheetId: string): Promise<RunSheetView['returns']> {
+  const rows = await returnsOfRunSheets(app.db, [runSheetId])
+  const jobIds = await jobsOfSubjects(
+    app.db,
+    rows.map((row) => row.id),
+  )
+  return rows.map((row) => ({
+    id: row.id,
+    number: row.number,
+    source: row.source,
+    status: row.status,
+    jobId: jobIds.get(row.id) ?? null,
+    reads: row.reads,
+    readsWithBreak: row.readsWithBreak,
+    best: row.best,
+    createdAt: row.createdAt.toISOString(),
+  }))
+}

@@ -1,0 +1,58 @@
+import busboy from '@fastify/busboy'
+import type { H3Event } from 'h3'
+import { getHeader } from 'h3'
+import { DomainError } from '../../shared/errors'
+
+export interface Upload {
+  fields: Record<string, string>
+  file: { name: string; bytes: Uint8Array } | null
+}
+
+const MAX_FIELDS = 40
+const MAX_FIELD_BYTES = 10_000
+const mebibytes = (bytes: number): string => `${Math.round(bytes / 2 ** 20)} MiB`
+
+const tooLarge = (limit: number): DomainError =>
+  new DomainError('too large', 'upload.size', `The file is larger than the ${mebibytes(limit)} that are taken here.`)
+
+/** Reads a multipart form with at most one file, streaming, and gives up as soon as it grows past the limit. */
+export async function readUpload(event: H3Event, limitBytes: number): Promise<Upload> {
+  const type = getHeader(event, 'content-type') ?? ''
+  if (!type.startsWith('multipart/form-data'))
+    throw new DomainError('unreadable', 'upload.type', 'Send the file as multipart/form-data with a part named “file”.')
+  // Parts around the file are small; a declared length beyond the limit is refused before anything is read.
+  if (Number(getHeader(event, 'content-length') ?? 0) > limitBytes + 2 ** 20) throw tooLarge(limitBytes)
+  const request = event.node.req
+  const upload: Upload = { fields: {}, file: null }
+  return new Promise<Upload>((resolve, reject) => {
+    const fail = (error: DomainError): void => {
+      request.unpipe(parser)
+      request.resume()
+      reject(error)
+    }
+    const parser = busboy({
+      headers: { ...request.headers, 'content-type': type },
+      limits: { fileSize: limitBytes, files: 1, fields: MAX_FIELDS, fieldSize: MAX_FIELD_BYTES },
+    })
+    parser.on('field', (name, value) => (upload.fields[name] = value))
+    parser.on('file', (part, stream, fileName) => {
+      const chunks: Buffer[] = []
+      stream.on('data', (chunk: Buffer) => chunks.push(chunk))
+      stream.on('limit', () => fail(tooLarge(limitBytes)))
+      stream.on('end', () => {
+        if (part === 'file') upload.file = { name: fileName || 'file', bytes: Buffer.concat(chunks) }
+      })
+    })
+    parser.on('error', () =>
+      fail(new DomainError('unreadable', 'upload.form', 'The upload is not a valid multipart form.')),
+    )
+    parser.on('finish', () => resolve(upload))
+    request.pipe(parser)
+  })
+}
+
+/** The file of an upload. @throws DomainError when the form has none */
+export function requireFile({ file }: Upload): { name: string; bytes: Uint8Array } {
+  if (file) return file
+  throw new DomainError('unreadable', 'upload.file', 'The form has no file. Send it as the part named “file”.')
+}
