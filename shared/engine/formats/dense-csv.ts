@@ -11,7 +11,7 @@ import { assembleReading } from './assemble'
 import { writeDirectives } from './directives'
 import type { ProblemDocument, ProblemFormat, ProblemReading, ReadingIssue, ReadOptions } from './format'
 import { checkLabels, labelClashes, labelFault, quoteLabel } from './labels'
-import type { MatrixShape } from './matrix-shape'
+import { LABEL_CORNER, type MatrixShape } from './matrix-shape'
 import { cellsOf, gatherRows, shapeOf, type Table, type TableRow } from './matrix-table'
 import { formatNumber, isDecimal, numberFault, parseNumber } from './numbers'
 
@@ -118,7 +118,7 @@ function write({ form, labels, problem, sense }: ProblemDocument): string {
   const { n, linear, rows, cols, values, offset } = negateProblem(problem, { coefficients: isMax, offset: isMax })
   const quoted = labels.map(quoteLabel)
   const lines = writeDirectives({ layout: 'matrix', form, sense, offset })
-  lines.push(['', ...quoted].join(','))
+  lines.push([LABEL_CORNER, ...quoted].join(','))
   let k = 0
   for (let i = 0; i < n; i++) {
     const cells = new Array<string>(n).fill('0')
@@ -129,8 +129,8 @@ function write({ form, labels, problem, sense }: ProblemDocument): string {
   return `${lines.join('\n')}\n`
 }
 
-/** How sure the shapes of rows make it: three columns look more like a coefficient list, except under a blank corner. */
-const CONFIDENCE = { blankCorner: 0.9, regular: 0.7, threeColumns: 0.5, oneRow: 0.3, words: 0.1 }
+/** How sure the shapes of rows make it: three columns look more like a coefficient list, except under a corner. */
+const CONFIDENCE = { corner: 0.9, regular: 0.7, threeColumns: 0.5, oneRow: 0.3 }
 
 /** The share of rows of one width that hold numbers behind their first cell, weighed by what else they could be. */
 function sniff(head: string): number {
@@ -139,12 +139,13 @@ function sniff(head: string): number {
   if (layout) return layout === 'matrix' ? 1 : 0
   const [first, second, ...others] = table.rows.map((row) => cellsOf(table, row))
   if (first === undefined) return 0
-  if (second === undefined) return first.every(isDecimal) ? CONFIDENCE.oneRow : CONFIDENCE.words
+  if (second === undefined) return first.every(isDecimal) ? CONFIDENCE.oneRow : 0
   const width = second.length
   const body = [second, ...others]
   const regular = body.filter((cells) => cells.length === width && cells.slice(1).every(isDecimal))
+  const hasCorner = first[0] === '' || first[0]!.toLowerCase() === LABEL_CORNER
   const wide = width === 3 ? CONFIDENCE.threeColumns : CONFIDENCE.regular
-  return (regular.length / body.length) * (first[0] === '' ? CONFIDENCE.blankCorner : wide)
+  return (regular.length / body.length) * (hasCorner ? CONFIDENCE.corner : wide)
 }
 
 export const denseCsv: ProblemFormat = {

@@ -7,16 +7,23 @@ export interface MatrixShape {
   readonly hasLabelColumn: boolean
 }
 
-/** Numbers can name rows or columns only if they are integers in ascending order. */
-function couldBeLabels(cells: readonly string[]): boolean {
-  if (!cells.every(isDecimal)) return true
-  return cells.every((cell, k) => /^\d+$/.test(cell) && (k === 0 || Number(cell) > Number(cells[k - 1])))
+/** The corner that says beyond doubt that labels follow, even if they look like coefficients. */
+export const LABEL_CORNER = 'variable'
+
+const holdsWord = (cells: readonly string[]): boolean => !cells.every(isDecimal)
+
+/** Whether a first row that begins with no number names the columns, rather than being a row with a faulty cell. */
+function namesColumns(first: readonly string[], firstColumn: readonly string[]): boolean {
+  const [corner, ...names] = first
+  if (corner!.toLowerCase() === LABEL_CORNER || holdsWord(names)) return true
+  return corner === '' && names.every((name, k) => /^\d+$/.test(name) && name === firstColumn[k])
 }
 
 /**
  * Decides from the counts where the labels are: rows × cells is n × n, (n + 1) × n with a header row, n × (n + 1) with
- * a label column, (n + 1) × (n + 1) with both, where the header row may lack its corner. A square table is taken to
- * have labels only if its corner is blank or no number. Null when it is none of these.
+ * a label column, (n + 1) × (n + 1) with both, where the header row may lack its corner. Rows and columns of numbers
+ * alone are never taken for labels, unless the corner is `variable`, or is blank and both hold the same whole numbers:
+ * a table with a row too many is a mistake to be told, not guessed at. Null when it is none of these.
  * @param first cells of the first row
  * @param firstColumn first cell of each row after the first
  * @param rows number of rows
@@ -28,15 +35,15 @@ export function matrixShape(
   rows: number,
   width: number,
 ): MatrixShape | null {
-  const corner = first[0]!
   if (rows === width) {
-    const named = corner === '' || (!isDecimal(corner) && couldBeLabels(first.slice(1)))
-    const hasBoth = rows > 1 && (named || first.length === width - 1)
+    const hasCorner = first.length === width
+    const named = hasCorner ? !isDecimal(first[0]!) && namesColumns(first, firstColumn) : holdsWord(first)
+    const hasBoth = rows > 1 && named
     return { n: hasBoth ? rows - 1 : rows, hasHeader: hasBoth, hasLabelColumn: hasBoth }
   }
-  if (rows === width + 1 && first.length === width && couldBeLabels(first))
+  if (rows === width + 1 && first.length === width && holdsWord(first))
     return { n: width, hasHeader: true, hasLabelColumn: false }
-  if (width === rows + 1 && couldBeLabels([corner, ...firstColumn]))
+  if (width === rows + 1 && holdsWord([first[0]!, ...firstColumn]))
     return { n: rows, hasHeader: false, hasLabelColumn: true }
   return null
 }
