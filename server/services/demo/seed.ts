@@ -186,7 +186,7 @@ async function seedWork(app: App, { developer, steward, reviewer }: Cast): Promi
   const weak = createRunSheetSchema.parse({
     embeddingId: onAlder,
     name: 'Deck radio channels, first run',
-    strength: { rule: 'fixed', value: 0.7 },
+    strength: { rule: 'fixed', value: 1.25 },
     reads: 1000,
     annealMicroseconds: 72,
   })

@@ -1,0 +1,53 @@
+import type { FetchError } from 'ofetch'
+import type { Issue } from '#shared/errors'
+
+/** What went wrong with a request, ready to be shown: what, where, what to do. */
+export interface ApiFailure {
+  status: number
+  code: string
+  message: string
+  issues: Issue[]
+}
+
+const OFFLINE: ApiFailure = {
+  status: 0,
+  code: 'network',
+  message: 'The server did not answer. Check the connection and try again; nothing you typed is lost.',
+  issues: [],
+}
+
+/** Reads the server's error object out of whatever a request threw. */
+export function failureOf(error: unknown): ApiFailure {
+  const { statusCode, data } = (error ?? {}) as Partial<FetchError<{ data?: Partial<ApiFailure>; message?: string }>>
+  if (!statusCode) return OFFLINE
+  const detail = data?.data
+  return {
+    status: statusCode,
+    code: detail?.code ?? 'unknown',
+    message:
+      detail?.message ?? 'The server could not do this. Try again; if it happens again, tell the workspace owner.',
+    issues: detail?.issues ?? [],
+  }
+}
+
+type Body = Record<string, unknown> | FormData
+type Method = 'POST' | 'PATCH' | 'DELETE'
+
+/** The outcome of an action: a value or a failure, never an exception. */
+export type Outcome<T> = { ok: true; value: T } | { ok: false; failure: ApiFailure }
+
+/** Sends changes to the server. */
+export function useApi() {
+  const send = async <T>(method: Method, url: string, body?: Body): Promise<Outcome<T>> => {
+    try {
+      return { ok: true, value: await $fetch<T>(url, { method, body }) }
+    } catch (error) {
+      return { ok: false, failure: failureOf(error) }
+    }
+  }
+  return {
+    post: <T>(url: string, body: Body = {}) => send<T>('POST', url, body),
+    patch: <T>(url: string, body: Body) => send<T>('PATCH', url, body),
+    remove: <T = unknown>(url: string) => send<T>('DELETE', url),
+  }
+}

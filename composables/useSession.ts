@@ -1,0 +1,37 @@
+import type { EntranceView, SessionView } from '#shared/schemas/session'
+import type { Role } from '#shared/schemas/common'
+
+/** Who is signed in; shared by the layout and the pages, loaded once and refreshed on demand. */
+export function useSession() {
+  const session = useState<SessionView | null>('session', () => null)
+  const fetcher = useRequestFetch()
+  const { fetch: refreshCookie } = useUserSession()
+  const api = useApi()
+
+  const load = async (): Promise<void> => {
+    session.value = await fetcher<SessionView>('/api/session').catch(() => null)
+  }
+  const may = (...roles: Role[]): boolean => session.value?.roles.some((role) => roles.includes(role)) ?? false
+
+  const enter = async (url: string, body: Record<string, unknown>) => {
+    const outcome = await api.post(url, body)
+    if (outcome.ok) await Promise.all([load(), refreshCookie()])
+    return outcome
+  }
+  return {
+    session,
+    load,
+    may,
+    signIn: (email: string, password: string) => enter('/api/session', { email, password }),
+    setUp: (body: Record<string, unknown>) => enter('/api/setup', body),
+    async signOut() {
+      await api.remove('/api/session')
+      session.value = null
+      await refreshCookie()
+      await navigateTo('/sign-in')
+    },
+  }
+}
+
+/** What the sign-in page needs before anyone is signed in. */
+export const useEntrance = () => useResource<EntranceView>('/api/entrance')

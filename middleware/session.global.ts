@@ -1,0 +1,9 @@
+const OPEN = ['/sign-in', '/setup']
+
+/** Sends visitors without a session to the sign-in page, and back to where they wanted to go afterwards. */
+export default defineNuxtRouteMiddleware(async (to) => {
+  if (OPEN.includes(to.path)) return
+  const { session, load } = useSession()
+  if (!session.value) await load()
+  if (!session.value) return navigateTo({ path: '/sign-in', query: to.path === '/' ? {} : { next: to.fullPath } })
+})
