@@ -71,3 +71,28 @@ export function physicalModel(programmed: Programmed, error: ModelError | null =
     J: programmed.J.map((J) => J + error.sigmaJ * random.normal()),
   })
 }
+
+/** The same model with its spins renumbered: new spin k is old spin order[k]. */
+export function renumbered(model: SamplerModel, order: Uint32Array): SamplerModel {
+  const { n, h, offsets, targets, weights } = model
+  const placeOf = new Uint32Array(n)
+  order.forEach((old, k) => (placeOf[old] = k))
+  const moved = {
+    n,
+    h: Float64Array.from(order, (old) => h[old]!),
+    offsets: new Uint32Array(n + 1),
+    targets: new Uint32Array(targets.length),
+    weights: new Float64Array(weights.length),
+  }
+  for (let k = 0; k < n; k++) {
+    const from = offsets[order[k]!]!
+    const degree = offsets[order[k]! + 1]! - from
+    const start = moved.offsets[k]!
+    for (let p = 0; p < degree; p++) {
+      moved.targets[start + p] = placeOf[targets[from + p]!]!
+      moved.weights[start + p] = weights[from + p]!
+    }
+    moved.offsets[k + 1] = start + degree
+  }
+  return moved
+}
