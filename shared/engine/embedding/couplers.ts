@@ -55,5 +55,5 @@ export function chainCouplers(embedding: Embedding, machine: Graph): CouplerGrou
  * two chains. Couplers between chains that do not interact are in no group.
  */
 export function interactionCouplers(embedding: Embedding, problem: Graph, machine: Graph): CouplerGroups {
-  return groupEdges(embedding, machine, sizeOf(problem), (a, b) => (a === b ? -1 : edgeBetween(problem, a, b)))
+  return groupEdges(embedding, machine, sizeOf(problem), (a, b) => edgeBetween(problem, a, b))
 }

@@ -127,8 +127,8 @@ function checkInteractions(
 
 /**
  * Checks an embedding against the definition (domain rules of a minor embedding), rule by rule, and names every broken
- * one. Shares no code with the search, so that it can vouch for it. Couplers of qubits that are not usable do not
- * count. An empty list means that the embedding is valid.
+ * one. Shares no code with the search, so that it can vouch for it. Qubits that are not usable bring no
+ * connection. An empty list means that the embedding is valid.
  * @param chains one list of qubits per variable, or a packed embedding; absent chains at the end count as empty
  * @param usable 1 for each machine qubit that works; length machine.order
  * @throws RangeError when there are more chains than variables
@@ -147,7 +147,6 @@ export function verifyEmbedding(
   for (let k = 0; k < machine.ends.length; k += 2) {
     const a = machine.ends[k]!
     const b = machine.ends[k + 1]!
-    if (usable[a] === 0 || usable[b] === 0) continue
     pairs[a]!.add(b)
     pairs[b]!.add(a)
   }
