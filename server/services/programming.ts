@@ -194,6 +194,7 @@ export function compareRules(bench: Bench, settings: RunSheetSettings, bounds: C
       rule,
       title: TITLES[rule],
       from: fromOf(rule, value, bench.ising),
+      value: value ?? null,
       k: { min: summary.least, max: summary.greatest },
       scale: programmed?.scale ?? 0,
       couplingsUnderTwoSigma: programmed

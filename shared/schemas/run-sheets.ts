@@ -73,6 +73,8 @@ export interface RuleView {
   title: string
   /** How k follows, in words and figures. */
   from: string
+  /** What the rule is multiplied by, or the k as entered; null when every chain has its own. */
+  value: number | null
   /** Smallest and largest k over the chains, in units of the Ising form. */
   k: { min: number; max: number }
   scale: number
