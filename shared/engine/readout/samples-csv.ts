@@ -84,6 +84,7 @@ function readPlainRow(row: Row, header: Header, sink: Sink): boolean {
   sink.bytes.fill(0, base, base + strideOf(header.width))
   for (let column = 0; column < target.length; column++) {
     const place = target[column]!
+    if (header.separator === '') while (text.charCodeAt(at) === SPACE) at++
     const code = text.charCodeAt(at)
     if (place < 0) {
       const from = at
@@ -235,6 +236,12 @@ export function readSamplesCsv(text: string, options: { readonly qubitIds: reado
   }
 }
 
+/** The text of every byte of eight spins, lowest bit first. */
+const spinTexts = (): string[] =>
+  Array.from({ length: 256 }, (_, byte) =>
+    Array.from({ length: 8 }, (_unused, bit) => ((byte >> bit) & 1 ? '1,' : '-1,')).join(''),
+  )
+
 /**
  * Writes samples as `readSamplesCsv` reads them: comma-separated ±1 with a header of qubit numbers and a last column
  * `count`.
@@ -244,10 +251,12 @@ export function writeSamplesCsv(samples: Samples, qubitIds: readonly number[]): 
   const { width, rows, bytes, counts } = samples
   if (qubitIds.length !== width) throw new RangeError(`${qubitIds.length} qubit numbers for samples of width ${width}`)
   const stride = strideOf(width)
+  const texts = spinTexts()
   const lines = [[...qubitIds, 'count'].join(',')]
   for (let r = 0; r < rows; r++) {
     let line = ''
-    for (let c = 0; c < width; c++) line += (bytes[r * stride + (c >> 3)]! >> (c & 7)) & 1 ? '1,' : '-1,'
+    for (let k = 0; k < width >> 3; k++) line += texts[bytes[r * stride + k]!]!
+    for (let c = width & ~7; c < width; c++) line += (bytes[r * stride + (c >> 3)]! >> (c & 7)) & 1 ? '1,' : '-1,'
     lines.push(line + counts[r]!)
   }
   return lines.join('\n') + '\n'
