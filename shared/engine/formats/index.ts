@@ -7,11 +7,10 @@ const DEFAULTS = { headLength: 65_536 }
 /** Every text format for problems; where two seem equally likely the earlier one is taken. */
 export const FORMATS: readonly ProblemFormat[] = [coefficients, denseCsv]
 
-/** The beginning of a text, cut after a whole line if it has one. */
+/** The beginning of a text, up to the end of a line. */
 function headOf(text: string): string {
-  if (text.length <= DEFAULTS.headLength) return text
-  const head = text.slice(0, DEFAULTS.headLength)
-  return head.slice(0, head.lastIndexOf('\n') + 1) || head
+  const end = text.indexOf('\n', DEFAULTS.headLength)
+  return end < 0 ? text : text.slice(0, end)
 }
 
 /** The format that the text most looks like; the coefficient list when it looks like none. */

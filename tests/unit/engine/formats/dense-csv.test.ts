@@ -52,6 +52,7 @@ describe('reading a dense matrix', () => {
       ['a', 'b c', 2],
       ['b c', 'b c', 3],
     ])
+    expect(read('\t0\t1\n0\t1\t2\n1\t0\t3\n')).toMatchObject({ labels: ['0', '1'], issues: [] })
     expect(read('1;2\n0;3').problem!.values[0]).toBe(2)
     expect(read('a,1,2\nb,0,3').labels).toEqual(['a', 'b'])
     expect(read('p q\n1 2\n0 3').labels).toEqual(['p', 'q'])

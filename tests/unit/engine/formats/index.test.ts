@@ -27,6 +27,7 @@ describe('detectFormat', () => {
     [',a,b\na,1,2\nb,3,4\n', 'dense-csv'],
     ['1,2\n3,4\n', 'dense-csv'],
     ['7\n', 'dense-csv'],
+    [`${'0.5e0 '.repeat(20_000)}\n`, 'dense-csv'],
     [`${'1 '.repeat(50_000)}\n1\n`, 'dense-csv'],
   ])('%#', (text, id) => expect(detectFormat(text).id).toBe(id))
 })

@@ -24,6 +24,7 @@ describe('matrixShape', () => {
     ['Variable 0.5 1/0.5 1 2/1 3 4', 2, true, true],
     ['name a 1/a 1 2/1 3 4', 2, true, true],
     ['_ 0.5/0.5 4', 2, false, false],
+    ['_ 7 5/7 1 2/6 3 4', 3, false, false],
     ['_ a/a 5', 1, true, true],
     ['x 2 2/2 1 2/2 3 4', 3, false, false],
   ])('%s', (text, n, hasHeader, hasLabelColumn) => {

@@ -26,6 +26,20 @@ describe('histogram', () => {
       expect(to - from).toBeCloseTo((bins[23]!.to - bins[0]!.from) / 24, 9)
     })
   })
+
+  it('puts values on an edge and just below it on its two sides, in spite of rounding', () => {
+    const random = createRandom(13)
+    for (let trial = 0; trial < 200; trial++) {
+      const least = 1 + random.float()
+      const greatest = 40 + 10 * random.float()
+      const within = Array.from({ length: 40 }, (_, k) => 3 + k / 64)
+      const edges = histogram([least, greatest, ...within], 24).map((bin) => bin.from)
+      const justBelow = edges.slice(1).map((edge) => edge * (1 - 2 ** -53))
+      const bins = histogram([...edges, ...justBelow, greatest], 24)
+      expect(bins.map((bin) => bin.from)).toEqual(edges)
+      expect(bins.map((bin) => bin.count)).toEqual(new Array<number>(24).fill(2))
+    }
+  })
 })
 
 describe('countDistinct', () => {

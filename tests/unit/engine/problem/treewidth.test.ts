@@ -1,5 +1,6 @@
 import { describe, expect, it } from 'vitest'
 import { graphFromEdges } from '../../../../shared/engine/graph/build'
+import { sizeOf } from '../../../../shared/engine/graph/graph'
 import { treewidthUpperBound } from '../../../../shared/engine/problem/treewidth'
 import { createRandom, type Random } from '../../../../shared/engine/random'
 
@@ -113,6 +114,8 @@ describe('treewidthUpperBound', () => {
     expect(bound(2049, [0, 1])).toBeNull()
     const graph = graphFromEdges(40, randomEdges(createRandom(1), 40, 0.5))
     expect(treewidthUpperBound(graph, { maxOrder: 40, maxWork: 100 })).toBeNull()
+    // Enough for the first counts (two words for each end of an edge), not for what follows.
+    expect(treewidthUpperBound(graph, { maxOrder: 40, maxWork: 4 * sizeOf(graph) })).toBeNull()
     expect(treewidthUpperBound(graph, { maxOrder: 39, maxWork: 1e9 })).toBeNull()
     expect(treewidthUpperBound(graph, { maxOrder: 40, maxWork: 1e9 })).not.toBeNull()
   })
