@@ -88,7 +88,7 @@ function emptinessIssues(reader: ListReader): ReadingIssue[] {
   return [{ line: first.line, message: `no line could be read; line ${first.line}: ${first.reason}` }]
 }
 
-/** Reads a coefficient list; see the head of this file. About two million entries a second. */
+/** Reads a coefficient list; see the head of this file. A million lines take a few seconds. */
 function read(text: string, options: ReadOptions): ProblemReading {
   const reader = new ListReader(text)
   forEachLine(text, reader.readLine)
