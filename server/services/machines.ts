@@ -28,6 +28,7 @@ import type { MachineRow } from '../database/repositories/machines'
 import {
   advanceCalibration,
   countEmbeddingsOn,
+  findCalibration,
   insertCalibration,
   insertMachine,
   listCalibrations,
@@ -199,6 +200,7 @@ export async function machineView(app: App, actor: Actor, id: string): Promise<M
     familySizes: machine.family,
     maxDegree,
     sheet,
+    previousSheet: (await findCalibration(app.db, id, machine.calibration - 1))?.sheet ?? null,
     calibrations,
   }
 }
@@ -269,9 +271,10 @@ export async function machineGraphFile(
 
 /** What the lattice view draws, as packed arrays: numbers, segments, working qubits, couplers and where they attach. */
 export async function latticeOf(app: App, actor: Actor, id: string, calibration?: number): Promise<Uint8Array> {
-  const { graph, usable, fabric } = await calibratedMachine(app, actor, id, calibration)
+  const { graph, usable, fabric, sheet, indexOf } = await calibratedMachine(app, actor, id, calibration)
+  const missingCouplers = Uint32Array.from(sheet.defects.couplers.flat(), indexOf)
   const places = new Float32Array(4 * sizeOf(graph))
   const drawing = { graph, segments: fabric.segments }
   for (let k = 0; k < sizeOf(graph); k++) couplerPlace(drawing, k, places.subarray(4 * k, 4 * k + 4))
-  return packArrays({ ids: fabric.ids, segments: fabric.segments, usable, ends: graph.ends, places })
+  return packArrays({ ids: fabric.ids, segments: fabric.segments, usable, ends: graph.ends, places, missingCouplers })
 }

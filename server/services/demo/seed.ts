@@ -1,6 +1,6 @@
 import { writeSamplesCsv } from '../../../shared/engine/readout/samples-csv'
+import { DEMO_ACCOUNTS, DEMO_PASSWORD } from '../../../shared/demo-accounts'
 import { createRandom } from '../../../shared/engine/random'
-import type { Role } from '../../../shared/schemas/common'
 import type { Family } from '../../../shared/engine/machine/fabric'
 import { createMachineSchema } from '../../../shared/schemas/machines'
 import { uploadProblemSchema } from '../../../shared/schemas/problems'
@@ -22,16 +22,7 @@ import { benchOf, createRunSheet, runSheetRow } from '../run-sheets'
 import type { DemoFile } from './problems'
 import { DEMO_FILES } from './problems'
 
-const PASSWORD = 'brackwater-demo'
 const FACT = 'demo workspace'
-
-const ACCOUNTS: { email: string; name: string; roles: Role[] }[] = [
-  { email: 'owner@brackwater.example', name: 'Rhona Skerry', roles: ['owner'] },
-  { email: 'developer@brackwater.example', name: 'Ida Fenn', roles: ['developer'] },
-  { email: 'steward@brackwater.example', name: 'Per Lind', roles: ['steward'] },
-  { email: 'reviewer@brackwater.example', name: 'Maud Okafor', roles: ['reviewer'] },
-  { email: 'reader@brackwater.example', name: 'Tomas Reyl', roles: ['reader'] },
-]
 
 type Cast = Record<'owner' | 'developer' | 'steward' | 'reviewer' | 'reader', Actor>
 
@@ -50,12 +41,12 @@ export async function seedDemo(app: App, passwords: Passwords): Promise<void> {
 }
 
 async function seedPeople(app: App, passwords: Passwords): Promise<Cast> {
-  const passwordHash = await passwords.hash(PASSWORD)
+  const passwordHash = await passwords.hash(DEMO_PASSWORD)
   return app.db.transaction(async (tx) => {
     const workspaceId = await createWorkspace(app, tx, 'Brackwater Ferries')
     await keepFact(tx, FACT, workspaceId)
     const cast: Partial<Cast> = {}
-    for (const account of ACCOUNTS) {
+    for (const account of DEMO_ACCOUNTS) {
       const userId = await createAccount(app, tx, { ...account, passwordHash, workspaceId })
       cast[account.email.split('@')[0] as keyof Cast] = { userId, workspaceId }
     }

@@ -19,10 +19,13 @@ export interface RehearseInput {
   seed: number
 }
 
-/** Anneals one share of a rehearsal's reads, with its gauge applied before and undone after. */
+/**
+ * Anneals one share of a rehearsal's reads, with its gauge applied before and undone after. One sign a chain: chain
+ * couplings keep theirs, so an asymmetric range that allows strong chains is not left.
+ */
 export function rehearse(input: RehearseInput, control: Control<AnnealProgress>): Samples {
   const { programmed, gauge, error, sweeps, temperature, firstRead, reads, seed } = input
-  const signs = gauge ? drawGauge(programmed, gauge.seed, gauge.number) : null
+  const signs = gauge ? drawGauge(programmed, gauge.seed, gauge.number, 'chain') : null
   const model = physicalModel(signs ? applyGauge(programmed, signs) : programmed, error)
   const samples = anneal(model, { firstRead, reads, sweeps, temperature, seed }, control)
   return signs ? undoGauge(samples, signs) : samples
