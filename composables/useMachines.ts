@@ -14,6 +14,7 @@ export interface LatticeArrays {
   usable: Uint8Array
   ends: Uint32Array
   places: Float32Array
+  missingCouplers: Uint32Array
 }
 
 /** The machine's geometry at a calibration, loaded in the browser only. */

@@ -123,6 +123,8 @@ export interface MachineView extends MachineItem {
   familySizes: z.infer<typeof familySchema>
   maxDegree: number
   sheet: MachineSheet
+  /** The sheet of the calibration before, to tell what changed; null at the first. */
+  previousSheet: MachineSheet | null
   calibrations: CalibrationItem[]
 }
 
