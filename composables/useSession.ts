@@ -26,9 +26,8 @@ export function useSession() {
     setUp: (body: Record<string, unknown>) => enter('/api/setup', body),
     async signOut() {
       await api.remove('/api/session')
-      session.value = null
-      await refreshCookie()
-      await navigateTo('/sign-in')
+      // A whole new page, so that nothing of this person stays in memory.
+      await navigateTo('/sign-in', { external: true })
     },
   }
 }

@@ -1,6 +1,4 @@
-import type { Ref } from 'vue'
-
-export type RailKey = 'problems' | 'machines' | 'runSheets'
+import type { ComputedRef, Ref } from 'vue'
 
 /** Machine time of the month, in seconds, as the foot of the rail shows it. */
 export interface MachineTime {
@@ -18,29 +16,31 @@ export interface RailLink {
 }
 
 export interface Shell {
-  workspaceName: Ref<string>
-  personName: Ref<string>
-  roles: Ref<string[]>
+  workspaceName: ComputedRef<string>
+  personName: ComputedRef<string>
+  roles: ComputedRef<string[]>
   /** Shown at the end of a rail link; a missing count shows nothing. */
-  counts: Ref<Record<string, number | null | undefined>>
+  counts: ComputedRef<Record<string, number | null | undefined>>
   machineTime: Ref<MachineTime | null>
-  links: Ref<RailLink[]>
+  links: ComputedRef<RailLink[]>
 }
 
 const LINKS: RailLink[] = [
   { key: 'problems', label: 'Problems', to: '/' },
   { key: 'machines', label: 'Machines', to: '/machines' },
   { key: 'runSheets', label: 'Run sheets', to: '/run-sheets' },
+  { key: 'people', label: 'People', to: '/people' },
 ]
 
-/** What the frame around every page shows: filled once by the application, read by the layouts. */
+/** What the frame around every page shows, taken from whoever is signed in. */
 export function useShell(): Shell {
-  const workspaceName = useState('shell:workspace', () => '')
-  const personName = useState('shell:person', () => '')
-  const roles = useState<string[]>('shell:roles', () => [])
-  const counts = useState<Record<string, number | null | undefined>>('shell:counts', () => ({}))
-  const machineTime = useState<MachineTime | null>('shell:machine-time', () => null)
-  const links = useState<RailLink[]>('shell:links', () => LINKS)
-
-  return { workspaceName, personName, roles, counts, machineTime, links }
+  const { session } = useSession()
+  return {
+    workspaceName: computed(() => session.value?.workspace.name ?? ''),
+    personName: computed(() => session.value?.person.name ?? ''),
+    roles: computed(() => session.value?.roles ?? []),
+    counts: computed(() => ({ ...session.value?.counts })),
+    machineTime: useState<MachineTime | null>('shell:machine-time', () => null),
+    links: computed(() => (session.value ? LINKS : [])),
+  }
 }
