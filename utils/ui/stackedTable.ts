@@ -4,18 +4,19 @@
  */
 export function describeStackedTable(table: HTMLTableElement): void {
   table.setAttribute('role', 'table')
-  for (const group of [table.tHead, ...table.tBodies, table.tFoot]) group?.setAttribute('role', 'rowgroup')
-  const headings = [...(table.tHead?.rows[0]?.cells ?? [])].map((cell) => cell.textContent?.trim() ?? '')
-  for (const row of table.rows) describeRow(row, headings)
+  for (const group of table.querySelectorAll('thead, tbody, tfoot')) group.setAttribute('role', 'rowgroup')
+  const headings = [...(table.querySelector('thead tr')?.children ?? [])].map((cell) => cell.textContent?.trim() ?? '')
+  for (const row of table.querySelectorAll('tr')) describeRow(row, headings)
 }
 
-function describeRow(row: HTMLTableRowElement, headings: string[]): void {
+function describeRow(row: HTMLElement, headings: string[]): void {
   row.setAttribute('role', 'row')
-  const labelled = row.cells.length === headings.length
-  for (const [index, cell] of [...row.cells].entries()) {
+  const cells = [...row.children] as HTMLElement[]
+  for (const [index, cell] of cells.entries()) {
     const isHeading = cell.tagName === 'TH'
-    cell.setAttribute('role', isHeading ? (cell.scope === 'row' ? 'rowheader' : 'columnheader') : 'cell')
+    const headingRole = cell.getAttribute('scope') === 'row' ? 'rowheader' : 'columnheader'
+    cell.setAttribute('role', isHeading ? headingRole : 'cell')
     const label = headings[index]
-    if (labelled && !isHeading && label && !cell.dataset.label) cell.dataset.label = label
+    if (cells.length === headings.length && !isHeading && label && !cell.dataset.label) cell.dataset.label = label
   }
 }

@@ -1,4 +1,4 @@
-import { describe, expect, it } from 'vitest'
+import { afterAll, beforeAll, describe, expect, it } from 'vitest'
 import { NO_VALUE, THIN_SPACE } from '../../../utils/format'
 import {
   formatDateTime,
@@ -54,6 +54,16 @@ describe('durations', () => {
 
 describe('dates', () => {
   const instant = '2026-12-03T14:20:59Z'
+  const zone = process.env.TZ
+
+  // Far from UTC, so that local time would show.
+  beforeAll(() => {
+    process.env.TZ = 'Pacific/Auckland'
+  })
+  afterAll(() => {
+    if (zone === undefined) delete process.env.TZ
+    else process.env.TZ = zone
+  })
 
   it('writes UTC whatever the zone of the machine', () => {
     expect(formatDateTime(instant)).toBe('3 Dec, 14:20')

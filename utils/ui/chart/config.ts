@@ -112,7 +112,7 @@ function axisOptions(
       maxTicksLimit: across ? 11 : (context: { chart: { height: number } }) => (context.chart.height > TALL ? 7 : 5),
       includeBounds: false,
       maxRotation: 0,
-      autoSkipPadding: 12,
+      autoSkipPadding: across ? 12 : 4,
       precision: axis.categories ? 0 : undefined,
       callback: (value: string | number) => axis.categories?.[Number(value)] ?? formatNumber(Number(value)),
     },
