@@ -22,8 +22,9 @@ export function useRunSheetActions() {
       api.post<{ state: string }>(`/api/run-sheets/${id}/${step}`, { remark }),
     rehearse: (id: string, input: Partial<Rehearse>) =>
       api.post<{ returnId: string; jobId: string }>(`/api/run-sheets/${id}/rehearsals`, input),
-    upload: (id: string, file: File) => {
+    upload: (id: string, file: File, machineTimeSeconds: number | null = null) => {
       const body = new FormData()
+      if (machineTimeSeconds !== null) body.append('machineTimeSeconds', String(machineTimeSeconds))
       body.append('file', file, file.name)
       return api.post<{ id: string; reads: number }>(`/api/run-sheets/${id}/returns`, body)
     },

@@ -1,0 +1,41 @@
+import type { ReturnView } from '#shared/schemas/returns'
+import type { Fact } from '../ui/parts'
+import { formatCount, formatNumber, formatPercent, formatPercentInterval } from '../format'
+import { formatDuration } from '../formatTime'
+
+const PERCENT = { significant: 3 }
+
+/** The strip under the title of a set of samples. */
+export function returnFacts(samples: ReturnView): Fact[] {
+  const { breaks, energies, made, reads, source, seconds } = samples
+  const shown = samples.decodings.find(({ decoding }) => decoding === samples.decode)
+  const facts: Fact[] = [
+    {
+      label: samples.problem.sense === 'min' ? 'Best energy' : 'Best value',
+      value: formatNumber(energies?.best),
+      note: energies ? `in ${formatCount(energies.bestCount, 'read')}` : undefined,
+    },
+    { label: 'Reads', value: formatNumber(reads) },
+  ]
+  if (breaks)
+    facts.push(
+      {
+        label: 'Reads with a break',
+        value: formatPercent(breaks.readsWithBreak.rate, PERCENT),
+        note: formatPercentInterval(breaks.readsWithBreak.low, breaks.readsWithBreak.high, PERCENT),
+      },
+      { label: 'Chain reads broken', value: formatPercent(breaks.chainReads.rate, PERCENT) },
+    )
+  if (shown && samples.decode !== 'discard') facts.push({ label: 'Ties', value: formatNumber(shown.ties) })
+  if (source === 'rehearsal')
+    facts.push({ label: 'Made by', value: 'rehearsal', word: true, note: `${formatDuration(seconds)} of computing` })
+  else
+    facts.push({
+      label: 'Made by',
+      value: 'upload',
+      word: true,
+      note:
+        typeof made.machineTimeSeconds === 'number' ? `${formatDuration(made.machineTimeSeconds)} on the machine` : '',
+    })
+  return facts
+}

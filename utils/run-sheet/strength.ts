@@ -1,0 +1,37 @@
+import type { Strength } from '#shared/schemas/run-sheets'
+import { formatSignificant } from '../format'
+
+const DIGITS = 4
+/** Closer than this, two strengths are the same number on the page. */
+const SAME = 1e-9
+
+/** One strength, or the range over the chains: `12`, `4.594 to 16.01`. */
+export function strengthText({ min, max }: { min: number; max: number }): string {
+  if (Math.abs(max - min) <= SAME * Math.abs(max)) return formatSignificant(max, DIGITS)
+  return `${formatSignificant(min, DIGITS)} to ${formatSignificant(max, DIGITS)}`
+}
+
+/** What the value of a strength rule means, for the field beside the rules. */
+export const STRENGTH_FIELDS: Record<Strength['rule'], { label: string; unit: string; hint: string }> = {
+  fixed: { label: 'Multiple', unit: '× max |J|', hint: 'k = multiple × the largest |J| of the Ising form.' },
+  rms: {
+    label: 'κ',
+    unit: '× J_rms √degree',
+    hint: 'Neighbours pull on a chain at random: their sum grows with the root of the degree.',
+  },
+  choi: {
+    label: 'Margin',
+    unit: '× Choi’s bound',
+    hint: 'Above 1 every chain is held in the ground state: sufficient, not necessary.',
+  },
+  cut: {
+    label: 'Margin',
+    unit: '× cut bound',
+    hint: 'Above 1 no break survives single flips of either side: sufficient, not necessary.',
+  },
+  manual: {
+    label: 'k of every chain',
+    unit: 'in units of J',
+    hint: 'Chains named below keep a strength of their own.',
+  },
+}
