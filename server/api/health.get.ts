@@ -1,13 +1,8 @@
-import { isAlive } from '../database/client'
+import { health } from '../services/health'
 
-/** `{status, database, queue, version}`; 503 when the database does not answer. */
+/** `{status, database, queue, version}`; 503 when one of them does not answer. */
 export default definePublicRoute(async (event, app) => {
-  const database = await isAlive(app.db)
-  if (!database) setResponseStatus(event, 503)
-  return {
-    status: database ? 'ok' : 'failing',
-    database: database ? 'ok' : 'failing',
-    queue: app.queue.running() ? 'ok' : 'stopped',
-    version: app.version,
-  }
+  const view = await health(app)
+  if (view.status !== 'ok') setResponseStatus(event, 503)
+  return view
 })

@@ -178,6 +178,7 @@ export async function termsOf(
     interactions:
       part === 'interactions'
         ? indices.map((k) => ({
+            places: [problem.rows[k]! + 1, problem.cols[k]! + 1],
             a: labels[problem.rows[k]!]!,
             b: labels[problem.cols[k]!]!,
             qubo: signed(sign, qubo.values[k]!),

@@ -1,19 +1,14 @@
 import { randomUUID } from 'node:crypto'
 import type { z } from 'zod'
-import { verifyEmbedding } from '../../shared/engine/embedding/verify'
-import { interactionGraph } from '../../shared/engine/problem/interaction-graph'
-import type { Programmed } from '../../shared/engine/programming/programme'
 import { machineTimeEstimate } from '../../shared/engine/programming/machine-time'
 import { referenceSize } from '../../shared/engine/programming/strength'
 import { DomainError } from '../../shared/errors'
-import type { Page, PageQuery, Role } from '../../shared/schemas/common'
+import type { Page, PageQuery } from '../../shared/schemas/common'
 import type {
   ChainRow,
-  CheckView,
   createRunSheetSchema,
   EditRunSheet,
   MachineTimePart,
-  ProgrammedView,
   RunSheetItem,
   RunSheetSettings,
   RunSheetState,
@@ -28,7 +23,6 @@ import type { RunSheetRow } from '../database/repositories/run-sheets'
 import {
   deleteRunSheet,
   findRunSheet,
-  insertRemark,
   insertRunSheet,
   listRemarks,
   listRunSheets,
@@ -37,16 +31,8 @@ import {
 } from '../database/repositories/run-sheets'
 import { embeddingRow } from './embeddings'
 import type { Bench, Programming } from './programming'
-import { calibratedMachine } from './machine-graphs'
-import {
-  chainsBelowBound,
-  compareRules,
-  fingerprintOf,
-  loadBench,
-  precisionOf,
-  programmeBench,
-  requireProgrammed,
-} from './programming'
+import { checksOf } from './run-sheet-checks'
+import { compareRules, fingerprintOf, loadBench, precisionOf, programmeBench, requireProgrammed } from './programming'
 import { couplerCountsOf } from './chain-couplers'
 
 /** States in which the settings may change. */
@@ -238,72 +224,6 @@ function machineTimeView(bench: Bench, settings: RunSheetSettings): RunSheetView
     },
   ]
   return { parts, totalMilliseconds: time.totalMicroseconds / 1000 }
-}
-
-const percent = (share: number): string => `${Math.round(share * 100)} %`
-
-async function checksOf(
-  app: App,
-  bench: Bench,
-  settings: RunSheetSettings,
-  { strengths, bounds }: Programming,
-  programmed: Programmed,
-  precision: RunSheetView['precision'],
-): Promise<CheckView[]> {
-  const { machine, calibration, sheet } = bench.machine
-  const current = await calibratedMachine(app, bench.row, machine.id)
-  const violations = verifyEmbedding(interactionGraph(bench.ising), current.graph, current.usable, bench.embedding)
-  const { annealMinMicroseconds: least, annealMaxMicroseconds: most } = sheet.timing
-  const annealFits = settings.annealMicroseconds >= least && settings.annealMicroseconds <= most
-  const below = chainsBelowBound(bench, strengths, bounds)
-  const drowned = precision.couplingsUnderTwoSigma
-  const checks: (CheckView | null)[] = [
-    {
-      verdict: 'passed',
-      what: `Every programmed value fits ${machine.name}’s ranges`,
-      figure:
-        programmed.limitedBy === 'nothing'
-          ? 'scale 1'
-          : `scale ${Number(programmed.scale.toPrecision(3))}, limited by ${programmed.limitedBy}`,
-    },
-    violations.length === 0
-      ? {
-          verdict: 'passed',
-          what: `The embedding holds at calibration ${current.calibration.number}`,
-          figure:
-            calibration.number === current.calibration.number ? 'the one in force' : `made at ${calibration.number}`,
-        }
-      : {
-          verdict: 'refused',
-          what: `Calibration ${current.calibration.number} broke the embedding`,
-          figure: `${violations.length} broken rules`,
-        },
-    {
-      verdict: annealFits ? 'passed' : 'refused',
-      what: annealFits
-        ? 'The anneal time is within the machine’s limits'
-        : `${settings.annealMicroseconds} µs is outside the machine’s limits`,
-      figure: `${least} to ${most} µs`,
-    },
-    below > 0
-      ? {
-          verdict: 'caution',
-          what: `k is below the cut bound on ${below} chains`,
-          figure: 'sufficient, not necessary: rehearse',
-        }
-      : { verdict: 'passed', what: 'k is above the cut bound on every chain', figure: 'ground states unbroken' },
-    drowned === null
-      ? null
-      : {
-          verdict: drowned > 0 ? 'caution' : 'passed',
-          what:
-            drowned > 0
-              ? `${percent(drowned)} of the programmed couplings are under 2σ`
-              : 'Every programmed coupling is above 2σ',
-          figure: `σ_J ${precision.sigmaJ}`,
-        },
-  ]
-  return checks.filter((check) => check !== null)
 }
 
 async function returnViews(app: App, runSheetId: string): Promise<RunSheetView['returns']> {

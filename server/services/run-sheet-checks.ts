@@ -1,0 +1,74 @@
+import { verifyEmbedding } from '../../shared/engine/embedding/verify'
+import { interactionGraph } from '../../shared/engine/problem/interaction-graph'
+import type { Programmed } from '../../shared/engine/programming/programme'
+import type { CheckView, RunSheetSettings, RunSheetView } from '../../shared/schemas/run-sheets'
+import type { App } from '../app'
+import { calibratedMachine } from './machine-graphs'
+import type { Bench, Programming } from './programming'
+import { chainsBelowBound } from './programming'
+
+const percent = (share: number): string => `${Math.round(share * 100)} %`
+
+/** What a reviewer looks at first: each check passed, with a caution, or refused. */
+export async function checksOf(
+  app: App,
+  bench: Bench,
+  settings: RunSheetSettings,
+  programming: Programming,
+  programmed: Programmed,
+  precision: RunSheetView['precision'],
+): Promise<CheckView[]> {
+  return [
+    rangesCheck(bench, programmed),
+    await embeddingCheck(app, bench),
+    annealCheck(bench, settings),
+    strengthCheck(bench, programming),
+    ...precisionCheck(precision),
+  ]
+}
+
+function rangesCheck({ machine }: Bench, { limitedBy, scale }: Programmed): CheckView {
+  const figure = limitedBy === 'nothing' ? 'scale 1' : `scale ${Number(scale.toPrecision(3))}, limited by ${limitedBy}`
+  return { verdict: 'passed', what: `Every programmed value fits ${machine.machine.name}’s ranges`, figure }
+}
+
+async function embeddingCheck(app: App, { machine, row, ising, embedding }: Bench): Promise<CheckView> {
+  const current = await calibratedMachine(app, row, machine.machine.id)
+  const violations = verifyEmbedding(interactionGraph(ising), current.graph, current.usable, embedding)
+  const { number } = current.calibration
+  if (violations.length > 0)
+    return {
+      verdict: 'refused',
+      what: `Calibration ${number} broke the embedding`,
+      figure: `${violations.length} broken rules`,
+    }
+  const figure = machine.calibration.number === number ? 'the one in force' : `made at ${machine.calibration.number}`
+  return { verdict: 'passed', what: `The embedding holds at calibration ${number}`, figure }
+}
+
+function annealCheck({ machine }: Bench, { annealMicroseconds }: RunSheetSettings): CheckView {
+  const { annealMinMicroseconds: least, annealMaxMicroseconds: most } = machine.sheet.timing
+  const figure = `${least} to ${most} µs`
+  return annealMicroseconds >= least && annealMicroseconds <= most
+    ? { verdict: 'passed', what: 'The anneal time is within the machine’s limits', figure }
+    : { verdict: 'refused', what: `${annealMicroseconds} µs is outside the machine’s limits`, figure }
+}
+
+function strengthCheck(bench: Bench, { strengths, bounds }: Programming): CheckView {
+  const below = chainsBelowBound(bench, strengths, bounds)
+  return below > 0
+    ? {
+        verdict: 'caution',
+        what: `k is below the cut bound on ${below} chains`,
+        figure: 'sufficient, not necessary: rehearse',
+      }
+    : { verdict: 'passed', what: 'k is above the cut bound on every chain', figure: 'ground states unbroken' }
+}
+
+function precisionCheck({ couplingsUnderTwoSigma: share, sigmaJ }: RunSheetView['precision']): CheckView[] {
+  if (share === null) return []
+  const figure = `σ_J ${sigmaJ}`
+  return share > 0
+    ? [{ verdict: 'caution', what: `${percent(share)} of the programmed couplings are under 2σ`, figure }]
+    : [{ verdict: 'passed', what: 'Every programmed coupling is above 2σ', figure }]
+}
