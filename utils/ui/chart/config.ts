@@ -1,19 +1,16 @@
-import type { ChartConfiguration, ChartDataset, ChartOptions, ChartType, ScaleOptions, TooltipItem } from 'chart.js'
+import type { ChartConfiguration, ChartDataset, ChartOptions, ChartType, TooltipItem } from 'chart.js'
 import type { Palette } from '../../../assets/css/tokens'
 import { formatInterval, formatNumber } from '../../format'
+import { axisOptions } from './axes'
 import { DASHES, overlayPlugin, ruleHeadroom } from './overlays'
 import { RATE_COLUMNS, ratesPlugin } from './rates'
 import { kindOf, toneOf } from './series'
-import { logTicks, wholeTicks } from './ticks'
 import type { ChartAxis, ChartInput, ChartPoint, ChartSeries } from './types'
 
 const SANS = '"IBM Plex Sans", sans-serif'
 const MONO = '"IBM Plex Mono", monospace'
-const AXIS_FONT = { family: MONO, size: 12 }
 /** Bars stand apart by one pixel, as ruled columns do. */
 const BAR_GAP = 1
-/** From this height a chart has room for more gridlines. */
-const TALL = 180
 
 function smallestStep(points: readonly ChartPoint[]): number {
   const xs = points.map((point) => point.x).sort((a, b) => a - b)
@@ -76,57 +73,6 @@ function lineDataset(input: ChartInput, index: number, palette: Palette): ChartD
     tension: 0,
     order: 1,
   }
-}
-
-function axisOptions(
-  axis: ChartAxis,
-  palette: Palette,
-  role: 'across' | 'up',
-  values: readonly number[] = [],
-): ScaleOptions<'linear' | 'logarithmic'> {
-  const across = role === 'across'
-  return {
-    type: axis.scale === 'log' ? 'logarithmic' : 'linear',
-    offset: false,
-    min: axis.min,
-    max: axis.max,
-    suggestedMin: values.length ? Math.min(...values) : undefined,
-    suggestedMax: values.length ? Math.max(...values) : undefined,
-    afterBuildTicks: (scale: { min: number; max: number; ticks: { value: number }[] }) => {
-      const ticks = axis.scale === 'log' ? logTicks(scale.min, scale.max) : across ? wholeTicks(values) : undefined
-      if (ticks) scale.ticks = ticks.map((value) => ({ value }))
-    },
-    border: { display: across, color: palette.ink, width: 1 },
-    grid: {
-      display: true,
-      offset: false,
-      drawOnChartArea: !across,
-      drawTicks: across,
-      tickLength: across ? 5 : 0,
-      color: across ? palette.ink : palette.hair,
-    },
-    ticks: {
-      color: palette.ink2,
-      font: AXIS_FONT,
-      padding: across ? 2 : 8,
-      maxTicksLimit: across ? 11 : (context: { chart: { height: number } }) => (context.chart.height > TALL ? 7 : 5),
-      includeBounds: false,
-      maxRotation: 0,
-      autoSkipPadding: across ? 12 : 4,
-      precision: axis.categories ? 0 : undefined,
-      callback: (value: string | number) => axis.categories?.[Number(value)] ?? formatNumber(Number(value)),
-    },
-    title: across
-      ? {
-          display: true,
-          text: axis.label,
-          align: 'end',
-          color: palette.ink2,
-          font: { family: SANS, size: 12, weight: 'normal' },
-          padding: { top: 2 },
-        }
-      : { display: false },
-  } as ScaleOptions<'linear' | 'logarithmic'>
 }
 
 function tooltipOptions(input: ChartInput, palette: Palette) {

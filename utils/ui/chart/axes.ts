@@ -1,0 +1,62 @@
+import type { ScaleOptions } from 'chart.js'
+import type { Palette } from '../../../assets/css/tokens'
+import { formatNumber } from '../../format'
+import { logTicks, wholeTicks } from './ticks'
+import type { ChartAxis } from './types'
+
+const SANS = '"IBM Plex Sans", sans-serif'
+const AXIS_FONT = { family: '"IBM Plex Mono", monospace', size: 12 }
+/** From this height a chart has room for more gridlines. */
+const TALL = 180
+
+/** Options of one axis: across it has an ink baseline, ticks and its name; up it has hairline gridlines only. */
+export function axisOptions(
+  axis: ChartAxis,
+  palette: Palette,
+  role: 'across' | 'up',
+  values: readonly number[] = [],
+): ScaleOptions<'linear' | 'logarithmic'> {
+  const across = role === 'across'
+  return {
+    type: axis.scale === 'log' ? 'logarithmic' : 'linear',
+    offset: false,
+    min: axis.min,
+    max: axis.max,
+    suggestedMin: values.length ? Math.min(...values) : undefined,
+    suggestedMax: values.length ? Math.max(...values) : undefined,
+    afterBuildTicks: (scale: { min: number; max: number; ticks: { value: number }[] }) => {
+      const ticks = axis.scale === 'log' ? logTicks(scale.min, scale.max) : across ? wholeTicks(values) : undefined
+      if (ticks) scale.ticks = ticks.map((value) => ({ value }))
+    },
+    border: { display: across, color: palette.ink, width: 1 },
+    grid: {
+      display: true,
+      offset: false,
+      drawOnChartArea: !across,
+      drawTicks: across,
+      tickLength: across ? 5 : 0,
+      color: across ? palette.ink : palette.hair,
+    },
+    ticks: {
+      color: palette.ink2,
+      font: AXIS_FONT,
+      padding: across ? 2 : 8,
+      maxTicksLimit: across ? 11 : (context: { chart: { height: number } }) => (context.chart.height > TALL ? 7 : 5),
+      includeBounds: false,
+      maxRotation: 0,
+      autoSkipPadding: across ? 12 : 4,
+      precision: axis.categories ? 0 : undefined,
+      callback: (value: string | number) => axis.categories?.[Number(value)] ?? formatNumber(Number(value)),
+    },
+    title: across
+      ? {
+          display: true,
+          text: axis.label,
+          align: 'end',
+          color: palette.ink2,
+          font: { family: SANS, size: 12, weight: 'normal' },
+          padding: { top: 2 },
+        }
+      : { display: false },
+  } as ScaleOptions<'linear' | 'logarithmic'>
+}
