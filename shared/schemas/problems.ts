@@ -1,6 +1,8 @@
 import { z } from 'zod'
 import type { HistogramBin, Person } from './common'
 import { nameSchema } from './common'
+import type { EmbeddingStatus } from './embeddings'
+import type { RunSheetState } from './run-sheets'
 
 export const formSchema = z.enum(['qubo', 'ising'])
 export const senseSchema = z.enum(['min', 'max'])
@@ -105,9 +107,15 @@ export interface ProblemItem {
   interactions: number
   density: number
   /** The newest embedding, if there is one. */
-  embedding: { id: string; number: number; status: string; machine: string; longestChain: number | null } | null
+  embedding: {
+    id: string
+    number: number
+    status: EmbeddingStatus
+    machine: string
+    longestChain: number | null
+  } | null
   /** The newest run sheet, if there is one. */
-  runSheet: { id: string; number: number; state: string } | null
+  runSheet: { id: string; number: number; state: RunSheetState } | null
   /** Best decoded energy of any samples so far, in the problem's own sense. */
   best: number | null
   changedAt: string
@@ -116,7 +124,7 @@ export interface ProblemItem {
 export interface EmbeddingOfProblem {
   id: string
   number: number
-  status: string
+  status: EmbeddingStatus
   machine: string
   calibration: number
   method: string
@@ -125,7 +133,7 @@ export interface EmbeddingOfProblem {
   qubitsUsed: number | null
   seconds: number | null
   createdAt: string
-  runSheets: { id: string; number: number; state: string }[]
+  runSheets: { id: string; number: number; state: RunSheetState }[]
 }
 
 export interface ProblemView extends Omit<ProblemItem, 'embedding' | 'runSheet'> {
@@ -148,6 +156,8 @@ export interface LinearTerm {
   ising: number
 }
 export interface InteractionTerm {
+  /** Places of a and b among the variables, from 1. */
+  places: [number, number]
   a: string
   b: string
   qubo: number

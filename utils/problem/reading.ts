@@ -1,0 +1,81 @@
+import type { ReadingView, StructureView, UploadedProblem } from '#shared/schemas/problems'
+import type { Fact } from '../ui/parts'
+import { formatNumber, formatPercent, formatSignificant } from '../format'
+
+export const FORM_NAMES = { qubo: 'QUBO', ising: 'Ising' } as const
+
+const HOW_KNOWN: Record<ReadingView['formSource'], string> = {
+  given: 'as chosen',
+  file: 'as the file says',
+  default: 'assumed',
+}
+const TRIANGLES: Record<string, string> = {
+  upper: 'upper',
+  lower: 'lower',
+  both: 'both, summed',
+  symmetric: 'both, symmetric',
+  'diagonal only': 'diagonal only',
+}
+const ENERGIES = { plus: 'E = Σ h s + Σ J s s', minus: 'E = −Σ h s − Σ J s s' } as const
+
+export const senseWord = (sense: 'min' | 'max'): string => (sense === 'min' ? 'minimise' : 'maximise')
+
+/** What the reader took the file for. */
+export function readingFacts({ reading, variables, interactions, offset }: UploadedProblem): Fact[] {
+  const energy = reading.form === 'ising' ? ENERGIES[reading.convention] : undefined
+  return [
+    { label: 'Format', value: reading.formatTitle, word: true },
+    { label: 'Form', value: FORM_NAMES[reading.form], word: true, note: HOW_KNOWN[reading.formSource] },
+    { label: 'Triangle', value: TRIANGLES[reading.triangle] ?? reading.triangle, word: true },
+    { label: 'Convention', value: reading.convention, word: true, note: energy },
+    { label: 'Sense', value: senseWord(reading.sense), word: true },
+    { label: 'Variables', value: formatNumber(variables) },
+    { label: 'Interactions', value: formatNumber(interactions) },
+    { label: 'Offset', value: formatNumber(offset) },
+  ]
+}
+
+/** What the lines came to. */
+export function countingFacts(reading: ReadingView): Fact[] {
+  return [
+    { label: 'Entries read', value: formatNumber(reading.entriesRead) },
+    { label: 'Duplicates summed', value: formatNumber(reading.duplicatesSummed) },
+    { label: 'Zeros dropped', value: formatNumber(reading.zerosDropped) },
+    { label: 'Lines rejected', value: formatNumber(reading.rejectedCount) },
+  ]
+}
+
+/** What the problem looks like as a graph. */
+export function structureFacts(structure: StructureView): Fact[] {
+  const { degree, treewidthUpperBound } = structure
+  return [
+    { label: 'Density', value: formatPercent(structure.density) },
+    { label: 'Highest degree', value: formatNumber(degree.max), note: `mean ${formatSignificant(degree.mean)}` },
+    { label: 'Dynamic range', value: formatSignificant(structure.dynamicRange, 4) },
+    { label: 'Components', value: formatNumber(structure.components) },
+    { label: 'Isolated', value: formatNumber(structure.isolated) },
+    {
+      label: 'Treewidth',
+      value: treewidthUpperBound === null ? 'not sought' : `≤ ${formatNumber(treewidthUpperBound)}`,
+      word: treewidthUpperBound === null,
+    },
+  ]
+}
+
+const plural = (count: number, one: string, many = `${one}s`): string =>
+  `${formatNumber(count)} ${count === 1 ? one : many}`
+
+/** One sentence about what was read: "coefficient list, upper triangle, QUBO. 3 duplicate entries summed." */
+export function readingSentence(reading: ReadingView): string {
+  const { formatTitle, triangle, form, duplicatesSummed, zerosDropped, entriesRead } = reading
+  const shape = triangle === 'diagonal only' ? triangle : `${TRIANGLES[triangle] ?? triangle} triangle`
+  return [
+    `${formatTitle}, ${shape}, ${FORM_NAMES[form]}.`,
+    `${plural(entriesRead, 'entry', 'entries')} read.`,
+    duplicatesSummed > 0 && `${plural(duplicatesSummed, 'duplicate entry', 'duplicate entries')} summed.`,
+    zerosDropped > 0 &&
+      `${plural(zerosDropped, 'pair')} came to zero and ${zerosDropped === 1 ? 'was' : 'were'} dropped.`,
+  ]
+    .filter(Boolean)
+    .join(' ')
+}
