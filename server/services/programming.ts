@@ -160,10 +160,10 @@ function couplingsUnderTwoSigma({ J, isChainCoupler }: Programmed, sigmaJ: numbe
 const figure = (value: number): string => String(Number(value.toPrecision(4)))
 
 function fromOf(rule: Strength['rule'], value: number | undefined, ising: Problem): string {
-  if (rule === 'fixed') return `${figure(value!)} × max |J| ${figure(referenceSize(ising))}`
-  if (rule === 'rms') return `κ ${figure(value!)} × J_rms √degree ${figure(rmsSize(ising))}`
+  if (rule === 'fixed') return `${figure(value!)} × ${figure(referenceSize(ising))}, the largest |J|`
+  if (rule === 'rms') return `κ ${figure(value!)} × ${figure(rmsSize(ising))}, r.m.s. of J × √degree`
   if (rule === 'manual') return value === undefined ? 'as entered, per chain' : 'as entered'
-  return `per chain × ${figure(value!)}`
+  return `${figure(value!)} × the bound of each chain`
 }
 
 const TITLES: Record<Strength['rule'], string> = {

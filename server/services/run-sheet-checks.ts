@@ -40,7 +40,7 @@ async function embeddingCheck(app: App, { machine, row, ising, embedding }: Benc
     return {
       verdict: 'refused',
       what: `Calibration ${number} broke the embedding`,
-      figure: `${violations.length} broken rules`,
+      figure: violations.length === 1 ? '1 broken rule' : `${violations.length} broken rules`,
     }
   const figure = machine.calibration.number === number ? 'the one in force' : `made at ${machine.calibration.number}`
   return { verdict: 'passed', what: `The embedding holds at calibration ${number}`, figure }
@@ -59,7 +59,7 @@ function strengthCheck(bench: Bench, { strengths, bounds }: Programming): CheckV
   return below > 0
     ? {
         verdict: 'caution',
-        what: `k is below the cut bound on ${below} chains`,
+        what: `k is below the cut bound on ${below === 1 ? '1 chain' : `${below} chains`}`,
         figure: 'sufficient, not necessary: rehearse',
       }
     : { verdict: 'passed', what: 'k is above the cut bound on every chain', figure: 'ground states unbroken' }
@@ -67,7 +67,7 @@ function strengthCheck(bench: Bench, { strengths, bounds }: Programming): CheckV
 
 function precisionCheck({ couplingsUnderTwoSigma: share, sigmaJ }: RunSheetView['precision']): CheckView[] {
   if (share === null) return []
-  const figure = `σ_J ${sigmaJ}`
+  const figure = `σ of J ${sigmaJ}`
   return share > 0
     ? [{ verdict: 'caution', what: `${percent(share)} of the programmed couplings are under 2σ`, figure }]
     : [{ verdict: 'passed', what: 'Every programmed coupling is above 2σ', figure }]

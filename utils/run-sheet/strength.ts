@@ -16,7 +16,7 @@ export const STRENGTH_FIELDS: Record<Strength['rule'], { label: string; unit: st
   fixed: { label: 'Multiple', unit: '× max |J|', hint: 'k = multiple × the largest |J| of the Ising form.' },
   rms: {
     label: 'κ',
-    unit: '× J_rms √degree',
+    unit: '× r.m.s. √degree',
     hint: 'Neighbours pull on a chain at random: their sum grows with the root of the degree.',
   },
   choi: {
