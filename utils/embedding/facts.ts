@@ -1,0 +1,61 @@
+import type { EmbeddingView } from '#shared/schemas/embeddings'
+import type { Fact } from '../ui/parts'
+import type { ChainFindings } from './layers'
+import { formatNumber, formatPercent } from '../format'
+import { formatDuration } from '../formatTime'
+
+const METHODS: Record<string, string> = { search: 'rerouting', imported: 'imported' }
+
+function methodFact({ method, seed, seconds }: EmbeddingView): Fact {
+  const how = method === 'imported' ? 'by hand or from a file' : `seed ${seed}, ${formatDuration(seconds)}`
+  return { label: 'Method', value: METHODS[method] ?? method, note: how }
+}
+
+function foundFacts(embedding: EmbeddingView): Fact[] {
+  const { stats, machine, problem } = embedding
+  if (!stats) return []
+  return [
+    { label: 'Longest chain', value: formatNumber(stats.chainLength.max), unit: 'qubits' },
+    { label: 'Qubits used', value: formatNumber(stats.qubitsUsed), note: `of ${formatNumber(machine.qubits)}` },
+    { label: 'Mean length', value: formatNumber(stats.chainLength.mean, { decimals: 2 }) },
+    { label: 'Chain couplers', value: formatNumber(stats.chainCouplers) },
+    {
+      label: 'Interaction couplers',
+      value: formatNumber(stats.interactionCouplers),
+      note: `for ${formatNumber(problem.interactions)}`,
+    },
+    methodFact(embedding),
+  ]
+}
+
+function searchFacts(embedding: EmbeddingView): Fact[] {
+  const { problem, machine, tries, timeLimitSeconds, seed, seconds, unmet } = embedding
+  const facts: Fact[] = [
+    { label: 'Variables', value: formatNumber(problem.variables) },
+    { label: 'Interactions', value: formatNumber(problem.interactions) },
+    { label: 'Working qubits', value: formatNumber(machine.qubits), note: machine.family },
+    { label: 'Search', value: formatNumber(tries), note: `tries, seed ${seed}` },
+    { label: 'Time limit', value: formatNumber(timeLimitSeconds), unit: 's' },
+  ]
+  if (seconds !== null) facts.push({ label: 'Time taken', value: formatDuration(seconds) })
+  if (unmet) facts.push({ label: 'Overlap left', value: formatNumber(unmet.overlap), note: 'too many uses' })
+  return facts
+}
+
+function breaksFact({ samples }: ChainFindings): Fact[] {
+  const broken = samples?.breaks?.chainReads
+  if (!broken) return []
+  return [
+    {
+      label: 'Chains broken',
+      value: formatPercent(broken.rate, { significant: 2 }),
+      note: `of ${formatNumber(broken.total)} chain reads`,
+    },
+  ]
+}
+
+/** The strip under the title of an embedding. */
+export function embeddingFacts(embedding: EmbeddingView, findings: ChainFindings | null): Fact[] {
+  if (embedding.status !== 'found') return searchFacts(embedding)
+  return [...foundFacts(embedding), ...(findings ? breaksFact(findings) : [])]
+}

@@ -1,0 +1,35 @@
+import type { Family } from '#shared/engine/machine/fabric'
+import type { MachineView } from '#shared/schemas/machines'
+import type { Fact } from '../ui/parts'
+import { formatNumber } from '../format'
+import { familyTextOf } from './family'
+
+/** `±4` for a range that is even about nought, else `−2 to 1`. */
+export const rangeText = ([low, high]: readonly [number, number]): string =>
+  low === -high ? `±${formatNumber(high)}` : `${formatNumber(low)} to ${formatNumber(high)}`
+
+/** `Pegasus, trimmed`. */
+export function familyTitle(family: Family): string {
+  const { title } = familyTextOf(family.kind)
+  if (family.kind !== 'pegasus') return title
+  return `${title}, ${family.trimmed ? 'trimmed' : 'untrimmed'}`
+}
+
+/** The strip under the title of a machine. */
+export function machineFacts(machine: MachineView): Fact[] {
+  const { ranges, temperatureMillikelvin } = machine.sheet
+  return [
+    { label: 'Graph', value: machine.family, note: familyTitle(machine.familySizes) },
+    { label: 'Qubits', value: formatNumber(machine.qubits), note: `of ${formatNumber(machine.qubitsMade)}` },
+    { label: 'Couplers', value: formatNumber(machine.couplers), note: `of ${formatNumber(machine.couplersMade)}` },
+    { label: 'Highest degree', value: formatNumber(machine.maxDegree) },
+    { label: 'h', value: rangeText(ranges.h) },
+    { label: 'J', value: rangeText(ranges.J) },
+    ranges.couplingSum
+      ? { label: 'Coupling sum', value: rangeText(ranges.couplingSum), note: 'per qubit' }
+      : { label: 'Coupling sum', value: 'not limited', word: true },
+    temperatureMillikelvin === null
+      ? { label: 'Temperature', value: 'not measured', word: true }
+      : { label: 'Temperature', value: formatNumber(temperatureMillikelvin, { significant: 4 }), unit: 'mK' },
+  ]
+}
