@@ -1,4 +1,4 @@
-import type { ReadingView, StructureView, UploadedProblem } from '#shared/schemas/problems'
+import type { ProblemView, ReadingView, StructureView, UploadedProblem } from '#shared/schemas/problems'
 import type { Fact } from '../ui/parts'
 import { formatNumber, formatPercent, formatSignificant } from '../format'
 
@@ -78,4 +78,20 @@ export function readingSentence(reading: ReadingView): string {
   ]
     .filter(Boolean)
     .join(' ')
+}
+
+/** The strip of a saved problem. */
+export function problemFacts({ structure, best, sense }: ProblemView): Fact[] {
+  return [
+    { label: 'Variables', value: formatNumber(structure.variables) },
+    { label: 'Interactions', value: formatNumber(structure.interactions) },
+    ...structureFacts(structure).filter(({ label, value }) => label !== 'Isolated' || value !== '0'),
+    best === null
+      ? { label: 'Best energy', value: 'no samples yet', word: true }
+      : {
+          label: 'Best energy',
+          value: formatNumber(best),
+          note: `${sense === 'min' ? 'lowest' : 'highest'} decoded so far`,
+        },
+  ]
 }
