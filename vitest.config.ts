@@ -1,4 +1,5 @@
 import { fileURLToPath } from 'node:url'
+import vue from '@vitejs/plugin-vue'
 import { defineConfig } from 'vitest/config'
 
 const root = fileURLToPath(new URL('.', import.meta.url))
@@ -9,6 +10,7 @@ export default defineConfig({
     projects: [
       {
         extends: true,
+        plugins: [vue()],
         test: { name: 'unit', environment: 'node', include: ['tests/unit/**/*.test.ts'] },
       },
       {

@@ -1,10 +1,19 @@
 import type { ApiFailure } from './useApi'
 
-/** Loads one thing from the server, during rendering on the server too; `failure` says what went wrong. */
-export async function useResource<T>(url: MaybeRefOrGetter<string>) {
-  const fetcher = useRequestFetch()
+/** One thing loaded from the server. */
+export interface Resource<T> {
+  data: Ref<T | undefined>
+  /** What went wrong, while there is nothing newer. */
+  failure: ComputedRef<ApiFailure | null>
+  status: Ref<'idle' | 'pending' | 'success' | 'error'>
+  refresh: () => Promise<void>
+}
+
+/** Loads one thing from the server, during rendering on the server too. */
+export async function useResource<T>(url: MaybeRefOrGetter<string>): Promise<Resource<T>> {
+  const fetcher = useRequestFetch() as (url: string) => Promise<T>
   const address = computed(() => toValue(url))
-  const { data, error, refresh, status } = await useAsyncData<T>(address, () => fetcher<T>(address.value))
+  const { data, error, refresh, status } = await useAsyncData(address, () => fetcher(address.value))
   const failure = computed<ApiFailure | null>(() => (error.value ? failureOf(error.value) : null))
-  return { data, failure, refresh, status }
+  return { data: data as Ref<T | undefined>, failure, status, refresh: () => refresh() }
 }

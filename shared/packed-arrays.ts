@@ -63,6 +63,7 @@ export function unpackArrays(bytes: Uint8Array): Unpacked {
   for (const { name, kind, length } of header.entries) {
     const Kind = KINDS[kind]
     if (!Kind) throw new RangeError(`packed array ${name} is of unknown kind ${kind}`)
+    if (at + length * Kind.BYTES_PER_ELEMENT > own.byteLength) throw new RangeError(`packed array ${name} is cut short`)
     arrays[name] = new Kind(own.buffer as ArrayBuffer, own.byteOffset + at, length)
     at = align(at + length * Kind.BYTES_PER_ELEMENT)
   }

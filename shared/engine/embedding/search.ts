@@ -13,7 +13,7 @@ import { qualityOf, shorten } from './shorten'
 import { SearchState } from './state'
 import { verifyEmbedding } from './verify'
 
-export type { SearchPhase, SearchProgress } from './progress'
+export type { SearchProgress } from './progress'
 
 export interface SearchOptions {
   /** Any non-negative safe integer. */

@@ -3,9 +3,7 @@ import type { Layout, LayoutInput } from './layout'
 import { excessesOf, fittingScale } from './ranges'
 import type { Excess, RangeName, Ranges, Values } from './ranges'
 
-export type { ChainCouplers, InteractionCouplers } from './couplers'
-export type { FieldSplit } from './layout'
-export type { Excess, Range, RangeName, Ranges } from './ranges'
+export type { Excess, RangeName, Ranges } from './ranges'
 
 export interface ProgrammeInput extends LayoutInput {
   /** Chain strength k_i of every variable, in logical units; `perChain` of `chainStrengths`. */
