@@ -74,27 +74,36 @@ async function openServer(url: string): Promise<Database> {
   }
 }
 
+const LOCK_TRIES = 20
+const LOCK_WAIT_MS = 250
+
+function listen(name: string): Promise<Server> {
+  const server = createServer()
+  return new Promise((resolve, reject) => {
+    server.once('error', reject)
+    server.listen(name, () => resolve(server.unref()))
+  })
+}
+
 /**
  * Two processes on one folder would corrupt it silently, so the folder's hash is held as an abstract socket name: the
- * kernel frees it even when the process is killed.
+ * kernel frees it even when the process is killed. A predecessor that is just stopping is waited for.
  */
 async function lockFolder(folder: string): Promise<Server> {
-  const name = createHash('sha256').update(realpathSync(folder)).digest('hex').slice(0, 32)
-  const server = createServer()
-  await new Promise<void>((resolve, reject) => {
-    server.once('error', (error: NodeJS.ErrnoException) =>
-      reject(
-        error.code === 'EADDRINUSE'
-          ? new Error(
-              `${folder} is in use by another process. Stop that one first, choose another DATA_DIR, or use a PostgreSQL server through DATABASE_URL.`,
-            )
-          : error,
-      ),
-    )
-    server.listen(process.platform === 'linux' ? `\0espalier-${name}` : join('/tmp', `espalier-${name}.sock`), resolve)
-  })
-  server.unref()
-  return server
+  const hash = createHash('sha256').update(realpathSync(folder)).digest('hex').slice(0, 32)
+  const name = process.platform === 'linux' ? `\0espalier-${hash}` : join('/tmp', `espalier-${hash}.sock`)
+  for (let tries = LOCK_TRIES; ; tries--) {
+    try {
+      return await listen(name)
+    } catch (error) {
+      if ((error as NodeJS.ErrnoException).code !== 'EADDRINUSE') throw error
+      if (tries === 0)
+        throw new Error(
+          `${folder} is in use by another process. Stop that one first, choose another DATA_DIR, or use a PostgreSQL server through DATABASE_URL.`,
+        )
+      await new Promise((resolve) => setTimeout(resolve, LOCK_WAIT_MS))
+    }
+  }
 }
 
 async function openEmbedded(folder: string): Promise<Database> {
