@@ -45,11 +45,8 @@ export function readChainsText(text: string): ChainsReading {
   return { ok: true, chains: read, variables: Object.keys(read).length, qubits }
 }
 
-/** Chains as JSON, one variable a line, in the given order of labels. */
-export function writeChainsText(
-  chains: Readonly<Record<string, readonly number[]>>,
-  labels: readonly string[],
-): string {
-  const lines = labels.map((label) => `  ${JSON.stringify(label)}: [${(chains[label] ?? []).join(', ')}]`)
+/** Chains as JSON, one variable a line. */
+export function writeChainsText(chains: Readonly<Record<string, readonly number[]>>): string {
+  const lines = Object.entries(chains).map(([label, chain]) => `  ${JSON.stringify(label)}: [${chain.join(', ')}]`)
   return `{\n${lines.join(',\n')}\n}\n`
 }

@@ -4,7 +4,7 @@ import { readChainsText, writeChainsText } from '../../../../utils/embedding/cha
 describe('readChainsText', () => {
   it('reads what it wrote', () => {
     const chains = { '10': [3, 4], '2': [], 'a"b': [7] }
-    expect(readChainsText(writeChainsText(chains, ['a"b', '2', '10']))).toEqual({
+    expect(readChainsText(writeChainsText(chains))).toEqual({
       ok: true,
       chains,
       variables: 3,
