@@ -46,7 +46,7 @@ export function draftOf(sheet: RunSheetView): RunSheetDraft {
 
 const COMPLAINTS: Record<DraftField, string> = {
   name: 'Give a name of at most 120 characters.',
-  strength: 'Give a strength above 0.',
+  strength: 'Give a number above 0 and at most 1 000 000 000.',
   fieldSplit: 'Choose one of the two.',
   interactionCouplers: 'Choose one of the two.',
   chainCouplers: 'Choose one of the two.',
