@@ -65,10 +65,16 @@ export function structureFacts(structure: StructureView): Fact[] {
 const plural = (count: number, one: string, many = `${one}s`): string =>
   `${formatNumber(count)} ${count === 1 ? one : many}`
 
+const SHAPES: Record<string, string> = {
+  upper: 'upper triangle',
+  lower: 'lower triangle',
+  both: 'both triangles summed',
+}
+
 /** One sentence about what was read: "coefficient list, upper triangle, QUBO. 3 duplicate entries summed." */
 export function readingSentence(reading: ReadingView): string {
   const { formatTitle, triangle, form, duplicatesSummed, zerosDropped, entriesRead } = reading
-  const shape = triangle === 'diagonal only' ? triangle : `${TRIANGLES[triangle] ?? triangle} triangle`
+  const shape = SHAPES[triangle] ?? triangle
   return [
     `${formatTitle}, ${shape}, ${FORM_NAMES[form]}.`,
     `${plural(entriesRead, 'entry', 'entries')} read.`,

@@ -45,7 +45,7 @@ export function axisOptions(
       includeBounds: false,
       maxRotation: 0,
       autoSkipPadding: across ? 12 : 4,
-      precision: axis.categories ? 0 : undefined,
+      precision: axis.categories || axis.whole ? 0 : undefined,
       callback: (value: string | number) => axis.categories?.[Number(value)] ?? formatNumber(Number(value)),
     },
     title: across

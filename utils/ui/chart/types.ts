@@ -10,6 +10,8 @@ export interface ChartAxis {
   scale?: 'linear' | 'log'
   min?: number
   max?: number
+  /** Counts: no ticks between whole numbers. */
+  whole?: boolean
   /** Names in place of the numbers 0, 1, 2, … */
   categories?: string[]
 }

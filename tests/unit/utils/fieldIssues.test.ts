@@ -1,5 +1,5 @@
 import { describe, expect, it } from 'vitest'
-import { fieldIssues } from '../../../../utils/team/fieldIssues'
+import { fieldIssues } from '../../../utils/fieldIssues'
 
 describe('fieldIssues', () => {
   it('gives each field its first issue as a sentence and keeps the rest', () => {
