@@ -49,7 +49,7 @@ function checkedSheet(fabric: Fabric, sheet: MachineSheet): MachineSheet {
     throw new DomainError(
       'not acceptable',
       'machine.defects',
-      `${issues.length} of the defects do not fit ${familyName(fabric.family)}: ${issues[0]!.message}.`,
+      `${issues.length} of the defects ${issues.length === 1 ? 'does' : 'do'} not fit ${familyName(fabric.family)}: ${issues[0]!.message}.`,
       issues.slice(0, 100).map(({ path, message }) => ({ path: `defects.${path}`, message })),
     )
   const { qubits, couplers } = normaliseDefects(fabric, sheet.defects)

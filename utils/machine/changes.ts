@@ -1,6 +1,6 @@
 import type { MachineSheet } from '#shared/schemas/machines'
 import { formatNumber } from '../format'
-import { rangeText } from './facts'
+import { rangeText, sigmaText } from './facts'
 
 /** What one calibration changed against the one before. */
 export interface SheetChanges {
@@ -26,8 +26,8 @@ function figuresOf({ ranges, controlError, timing, temperatureMillikelvin }: Mac
     ['h', rangeText(ranges.h), ''],
     ['J', rangeText(ranges.J), ''],
     ['Coupling sum', ranges.couplingSum ? rangeText(ranges.couplingSum) : 'not limited', ''],
-    ['σ of h', formatNumber(controlError.h), ''],
-    ['σ of J', formatNumber(controlError.J), ''],
+    ['σ of h', sigmaText(controlError.h), ''],
+    ['σ of J', sigmaText(controlError.J), ''],
     ['Programming', formatNumber(timing.programmingMicroseconds), 'µs'],
     ['Read-out', formatNumber(timing.readoutMicroseconds), 'µs'],
     ['Delay', formatNumber(timing.delayMicroseconds), 'µs'],

@@ -8,6 +8,10 @@ import { familyTextOf } from './family'
 export const rangeText = ([low, high]: readonly [number, number]): string =>
   low === -high ? `±${formatNumber(high)}` : `${formatNumber(low)} to ${formatNumber(high)}`
 
+/** A control error to three places, `0.020`; smaller ones to their digits. */
+export const sigmaText = (sigma: number): string =>
+  sigma === 0 || sigma < 0.001 ? formatNumber(sigma) : formatNumber(sigma, { decimals: 3 })
+
 /** `Pegasus, trimmed`. */
 export function familyTitle(family: Family): string {
   const { title } = familyTextOf(family.kind)

@@ -26,7 +26,7 @@ describe('sheetChanges', () => {
     expect(changes.couplersBack).toEqual(['7–8'])
     expect(changes.figures).toEqual([
       { label: 'h', from: '±1', to: '−2 to 1', unit: '' },
-      { label: 'σ of h', from: '0.021', to: '0.02', unit: '' },
+      { label: 'σ of h', from: '0.021', to: '0.020', unit: '' },
       { label: 'Temperature', from: 'not measured', to: '13.1', unit: 'mK' },
     ])
   })
