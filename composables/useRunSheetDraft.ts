@@ -3,7 +3,16 @@ import type { ApiFailure } from './useApi'
 import type { DraftField, RunSheetDraft } from '~/utils/run-sheet/draft'
 import { DRAFT_FIELDS, draftOf, readField } from '~/utils/run-sheet/draft'
 
-const WAIT_MS = 600
+type Complaints = Partial<Record<DraftField, string>>
+
+const without = (complaints: Complaints, fields: readonly string[]): Complaints =>
+  Object.fromEntries(Object.entries(complaints).filter(([field]) => !fields.includes(field)))
+
+/** The server's refusal, at the fields that it names. */
+function complaintsOf({ message, issues }: ApiFailure): Complaints {
+  const named = issues.map(({ path }) => path?.split('.')[0])
+  return Object.fromEntries(DRAFT_FIELDS.filter((field) => named.includes(field)).map((field) => [field, message]))
+}
 
 /**
  * The settings of a run sheet as they are typed: saved a moment after each change, kept as typed when refused.
@@ -12,92 +21,61 @@ const WAIT_MS = 600
 export function useRunSheetDraft(sheet: Ref<RunSheetView | undefined>) {
   const { edit } = useRunSheetActions()
   const draft = ref<RunSheetDraft | null>(sheet.value ? draftOf(sheet.value) : null)
-  const errors = ref<Partial<Record<DraftField, string>>>({})
+  const errors = ref<Complaints>({})
   const failure = shallowRef<ApiFailure | null>(null)
-  const status = ref<'saved' | 'waiting' | 'saving' | 'refused'>('saved')
-  let pending: EditRunSheet = {}
-  let timer: ReturnType<typeof setTimeout> | undefined
-  let saving: Promise<void> | null = null
+  const isSending = ref(false)
 
-  const isKept = (field: DraftField): boolean => field in pending || errors.value[field] !== undefined
+  async function send(change: EditRunSheet): Promise<boolean> {
+    isSending.value = true
+    const outcome = await edit(sheet.value!.id, change)
+    isSending.value = false
+    failure.value = outcome.ok ? null : outcome.failure
+    errors.value = outcome.ok
+      ? without(errors.value, Object.keys(change))
+      : { ...errors.value, ...complaintsOf(outcome.failure) }
+    if (outcome.ok) sheet.value = outcome.value
+    return outcome.ok
+  }
+  const saving = useLateSaving<EditRunSheet>(send)
+
+  const status = computed(() => {
+    if (failure.value || Object.keys(errors.value).length > 0) return 'refused'
+    if (isSending.value) return 'saving'
+    return saving.isEmpty.value ? 'saved' : 'waiting'
+  })
 
   /** Takes over what the server holds, except where something typed waits or was refused. */
   function follow(): void {
     if (!sheet.value) return
-    const held = draftOf(sheet.value)
-    const kept = Object.fromEntries(DRAFT_FIELDS.filter(isKept).map((field) => [field, draft.value?.[field]]))
-    draft.value = { ...held, ...kept }
+    const kept = DRAFT_FIELDS.filter((field) => saving.holds(field) || errors.value[field])
+    draft.value = { ...draftOf(sheet.value), ...Object.fromEntries(kept.map((field) => [field, draft.value?.[field]])) }
   }
   watch(sheet, follow)
-
-  function settle(): void {
-    const complaints = Object.values(errors.value).some(Boolean)
-    status.value = complaints || failure.value ? 'refused' : Object.keys(pending).length > 0 ? 'waiting' : 'saved'
-  }
 
   function set<F extends DraftField>(field: F, value: RunSheetDraft[F]): void {
     if (!draft.value) return
     draft.value = { ...draft.value, [field]: value }
-    const read = readField(field, draft.value)
-    const { [field]: _old, ...others } = errors.value
-    if ('complaint' in read) {
-      errors.value = { ...others, [field]: read.complaint }
-      const { [field]: _dropped, ...rest } = pending
-      pending = rest
-    } else {
-      errors.value = others
-      pending = { ...pending, ...read.change }
-    }
     failure.value = null
-    settle()
-    clearTimeout(timer)
-    timer = setTimeout(() => void flush(), WAIT_MS)
-  }
-
-  async function send(id: string, change: EditRunSheet): Promise<void> {
-    status.value = 'saving'
-    const outcome = await edit(id, change)
-    if (outcome.ok) {
-      errors.value = Object.fromEntries(Object.entries(errors.value).filter(([field]) => !(field in change)))
-      sheet.value = outcome.value
-      return
-    }
-    failure.value = outcome.failure
-    pending = { ...change, ...pending }
-    const places = outcome.failure.issues.map(({ path }) => path?.split('.')[0])
-    for (const field of DRAFT_FIELDS)
-      if (places.includes(field)) errors.value = { ...errors.value, [field]: outcome.failure.message }
-  }
-
-  async function sendAll(): Promise<void> {
-    while (sheet.value && Object.keys(pending).length > 0 && !failure.value) {
-      const change = pending
-      pending = {}
-      await send(sheet.value.id, change)
-    }
-    settle()
+    errors.value = without(errors.value, [field])
+    const read = readField(field, draft.value)
+    if ('change' in read) return saving.add(read.change)
+    errors.value = { ...errors.value, [field]: read.complaint }
+    saving.drop(field)
   }
 
   /** Saves what waits; true when everything typed is saved. */
   async function flush(): Promise<boolean> {
-    clearTimeout(timer)
-    saving ??= sendAll().finally(() => {
-      saving = null
-    })
-    await saving
+    await saving.flush()
     return status.value === 'saved'
   }
 
   /** Drops what was typed and shows what the server holds. */
   function drop(): void {
-    clearTimeout(timer)
-    pending = {}
+    saving.clear()
     errors.value = {}
     failure.value = null
     follow()
-    settle()
   }
 
-  onBeforeUnmount(() => void flush())
   return { draft, errors, failure, status, set, flush, drop }
 }
