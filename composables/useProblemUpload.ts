@@ -1,5 +1,6 @@
 import type { UploadedProblem } from '#shared/schemas/problems'
 import type { ApiFailure } from './useApi'
+import type { ProblemUpload } from './useProblems'
 
 /** Time without typing after which the text is read again. */
 const PAUSE_MILLISECONDS = 400
@@ -11,6 +12,15 @@ async function textOf(file: File | null): Promise<string | null> {
   if (!file || file.size > SHOWN_BYTES) return null
   const text = await file.text()
   return /[\0\uFFFD]/.test(text) ? null : text
+}
+
+type Draft = ReturnType<typeof useProblemDraft>
+
+/** The file with what was chosen about it; empty fields are left to the file. */
+function uploadOf({ name, options, skipRejected }: Draft, file: File): ProblemUpload {
+  const { format, form, convention, sense } = options
+  const given = { format: format ?? '', form: form ?? '', convention: convention ?? '', sense: sense ?? '' }
+  return { file, name: name.trim(), ...given, skipRejected }
 }
 
 /** Reads the draft as soon as it changes, without saving it, and saves it when told to. */
@@ -28,18 +38,12 @@ export function useProblemUpload() {
     if (draft.file) return draft.file
     return draft.text.trim() === '' ? null : new File([draft.text], draft.textName, { type: 'text/plain' })
   })
-  const upload = (file: File) => {
-    const { format, form, convention, sense } = draft.options
-    const given = { format: format ?? '', form: form ?? '', convention: convention ?? '', sense: sense ?? '' }
-    return { file, name: draft.name.trim(), ...given, skipRejected: draft.skipRejected }
-  }
-
   let turn = 0
   let timer: ReturnType<typeof setTimeout> | undefined
   async function read(): Promise<void> {
     const mine = ++turn
     const file = source.value
-    const outcome = file && (await preview({ ...upload(file), name: '' }))
+    const outcome = file && (await preview({ ...uploadOf(draft, file), name: '' }))
     // A newer text may have been sent meanwhile: only the last answer counts.
     if (mine !== turn) return
     reading.value = outcome?.ok ? outcome.value : null
@@ -63,7 +67,7 @@ export function useProblemUpload() {
   async function commit(): Promise<UploadedProblem | null> {
     if (!source.value) return null
     isSaving.value = true
-    const outcome = await save(upload(source.value))
+    const outcome = await save(uploadOf(draft, source.value))
     isSaving.value = false
     saveFailure.value = outcome.ok ? null : outcome.failure
     return outcome.ok ? outcome.value : null
