@@ -2,7 +2,7 @@ import type { EmbeddingView } from '#shared/schemas/embeddings'
 import type { Fact } from '../ui/parts'
 import type { ChainFindings } from './layers'
 import { formatNumber, formatPercent } from '../format'
-import { formatDuration } from '../formatTime'
+import { formatDuration, splitDuration } from '../formatTime'
 
 const METHODS: Record<string, string> = { search: 'rerouting', imported: 'imported' }
 
@@ -37,7 +37,7 @@ function searchFacts(embedding: EmbeddingView): Fact[] {
     { label: 'Search', value: formatNumber(tries), note: `tries, seed ${seed}` },
     { label: 'Time limit', value: formatNumber(timeLimitSeconds), unit: 's' },
   ]
-  if (seconds !== null) facts.push({ label: 'Time taken', value: formatDuration(seconds) })
+  if (seconds !== null) facts.push({ label: 'Time taken', ...splitDuration(seconds) })
   if (unmet) facts.push({ label: 'Overlap left', value: formatNumber(unmet.overlap), note: 'too many uses' })
   return facts
 }

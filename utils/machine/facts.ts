@@ -13,8 +13,10 @@ export const sigmaText = (sigma: number): string =>
   sigma === 0 || sigma < 0.001 ? formatNumber(sigma) : formatNumber(sigma, { decimals: 3 })
 
 /** `Pegasus, trimmed`. */
-export function familyTitle(family: Family): string {
+export function familyTitle(family: Family): string | undefined {
   const { title } = familyTextOf(family.kind)
+  // The names of boards say all of it: `square grid 20×30`.
+  if (family.kind === 'king' || family.kind === 'square') return undefined
   if (family.kind !== 'pegasus') return title
   return `${title}, ${family.trimmed ? 'trimmed' : 'untrimmed'}`
 }
