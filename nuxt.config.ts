@@ -21,6 +21,17 @@ export default defineNuxtConfig({
   eslint: { config: { stylistic: false } },
   ignore: ['.data/**', '.data-*/**', '.bench/**', 'coverage/**', 'docs/**', 'bench/**', 'tests/**'],
   runtimeConfig: { session: { cookie: { secure: true } } },
+  routeRules: {
+    '/**': {
+      headers: {
+        'x-content-type-options': 'nosniff',
+        'x-frame-options': 'DENY',
+        'referrer-policy': 'same-origin',
+        'cross-origin-opener-policy': 'same-origin',
+      },
+    },
+    '/api/**': { headers: { 'cache-control': 'no-store' } },
+  },
   nitro: { esbuild: { options: { target: 'es2022' } } },
   typescript: {
     strict: true,

@@ -23,7 +23,8 @@ import type {
 } from '../../shared/schemas/machines'
 import type { Actor, App } from '../app'
 import type { Db } from '../database/client'
-import { findEmbeddingOfJob, foundEmbeddingsOn } from '../database/repositories/embeddings'
+import type { EmbeddingRow } from '../database/repositories/embeddings'
+import { foundEmbeddingsOn } from '../database/repositories/embeddings'
 import type { MachineRow } from '../database/repositories/machines'
 import {
   advanceCalibration,
@@ -151,16 +152,14 @@ async function brokenEmbeddings(app: App, machine: MachineRow, working: WorkingG
   const broken: CalibrationSaved['invalidated']['embeddings'] = []
   for (const { embedding, problem } of await foundEmbeddingsOn(app.db, machine.id)) {
     if (embedding.calibration >= number) continue
-    if (!(await holdsOn(app, machine, embedding.id, working)))
-      broken.push({ id: embedding.id, number: embedding.number, problem })
+    if (!(await holdsOn(app, embedding, working))) broken.push({ id: embedding.id, number: embedding.number, problem })
   }
   return broken
 }
 
-async function holdsOn(app: App, machine: MachineRow, embeddingId: string, working: WorkingGraph): Promise<boolean> {
-  const embedding = await findEmbeddingOfJob(app.db, embeddingId)
-  const problem = embedding && (await findProblem(app.db, machine.workspaceId, embedding.problemId))
-  if (!embedding?.chainsBlobId || !problem) return false
+async function holdsOn(app: App, embedding: EmbeddingRow, working: WorkingGraph): Promise<boolean> {
+  const problem = await findProblem(app.db, embedding.workspaceId, embedding.problemId)
+  if (!embedding.chainsBlobId || !problem) return false
   const graph = interactionGraph((await problemData(app, problem)).problem)
   const chains = unpackChains(await app.blobs.read(embedding.chainsBlobId))
   return verifyEmbedding(graph, working.graph, working.usable, chains).length === 0
@@ -214,7 +213,7 @@ async function calibrationItems(app: App, machine: MachineRow, fabric: Fabric): 
     const working = applyDefects(fabric, calibration.sheet.defects)
     const broke: CalibrationItem['broke'] = []
     for (const { embedding, problem } of found)
-      if (embedding.calibration === calibration.number - 1 && !(await holdsOn(app, machine, embedding.id, working)))
+      if (embedding.calibration === calibration.number - 1 && !(await holdsOn(app, embedding, working)))
         broke.push({ id: embedding.id, number: embedding.number, problem })
     items.push({
       number: calibration.number,

@@ -414,6 +414,11 @@ describe('hostile input', () => {
     expect((await developer.get<{ items: unknown[] }>('/api/problems?limit=200')).body.items).toHaveLength(before)
   })
 
+  it('that is too large is refused before it is taken in', async () => {
+    const { status } = await developer.upload('/api/problems', new Uint8Array(66 * 2 ** 20), 'large.csv')
+    expect(status).toBe(413)
+  })
+
   it('that is not text, not a form or not JSON is unreadable', async () => {
     expect((await developer.upload('/api/problems', Uint8Array.of(0xff, 0xfe, 0x00, 0xc0), 'bytes.bin')).status).toBe(
       400,
