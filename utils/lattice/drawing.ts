@@ -69,6 +69,7 @@ export function createDrawing(container: HTMLElement, { bounds, tokens, scene, e
   }
   measure()
   sigma.on('resize', measure)
+  holdBackSlowFrames(sigma)
   sigma.on('afterRender', () => events.onFrame(view()))
   sigma.on('clickStage', ({ event }) => events.onClick(event.x, event.y))
   sigma.on('clickNode', ({ event }) => events.onClick(event.x, event.y))
@@ -89,6 +90,29 @@ export function createDrawing(container: HTMLElement, { bounds, tokens, scene, e
     refresh: () => void sigma.refresh(),
     kill: () => sigma.kill(),
   }
+}
+
+/**
+ * Lets one frame at most wait in the graphics queue. Without it a slow renderer falls behind the pointer by as many
+ * frames as were asked for; a fast one has always finished and is not held up.
+ */
+function holdBackSlowFrames(sigma: Pick<Sigma, 'on' | 'getWebGLContext'>): void {
+  const gl = sigma.getWebGLContext()
+  const pixel = new Uint8Array(4)
+  let last: WebGLSync | null = null
+  sigma.on('beforeRender', () => {
+    if (!last) return
+    if (gl.getSyncParameter(last, gl.SYNC_STATUS) !== gl.SIGNALED) {
+      gl.bindFramebuffer(gl.FRAMEBUFFER, null)
+      gl.readPixels(0, 0, 1, 1, gl.RGBA, gl.UNSIGNED_BYTE, pixel)
+    }
+    gl.deleteSync(last)
+    last = null
+  })
+  sigma.on('afterRender', () => {
+    last = gl.fenceSync(gl.SYNC_GPU_COMMANDS_COMPLETE, 0)
+    gl.flush()
+  })
 }
 
 const SETTINGS = {

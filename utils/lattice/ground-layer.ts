@@ -30,7 +30,8 @@ function isUsedUp(painted: View, view: View, margin: { x: number; y: number }): 
 }
 
 export function createGroundLayer(canvas: HTMLCanvasElement): GroundLayer {
-  const ctx = canvas.getContext('2d')
+  // Painted by the processor: it is quicker at thousands of hairlines than an emulated graphics card, and seldom asked.
+  const ctx = canvas.getContext('2d', { willReadFrequently: true })
   let ground: Ground | null = null
   let painted: View | null = null
   let latest: View | null = null

@@ -32,8 +32,9 @@ function prepareCanvas(context: CanvasRenderingContext2D, width: number, height:
 
 /** @param inset width of the ruler's margin, left and top */
 export function createTagLayer(canvas: HTMLCanvasElement, ruler: HTMLCanvasElement, inset: number): TagLayer {
-  const ctx = canvas.getContext('2d')!
-  const rulerCtx = ruler.getContext('2d')!
+  // By the processor, as the ground: see ground-layer.
+  const ctx = canvas.getContext('2d', { willReadFrequently: true })!
+  const rulerCtx = ruler.getContext('2d', { willReadFrequently: true })!
   let size = { width: 0, height: 0 }
   let theme: { tokens: Tokens; limits: Box; coverage: Coverage | null } | null = null
   let input: TagInput | null = null
