@@ -1,6 +1,5 @@
 import { randomUUID } from 'node:crypto'
 import type { App } from '../app'
-import type { Db } from '../database/client'
 import type { JobRow } from '../database/repositories/jobs'
 import {
   beatJob,
@@ -25,28 +24,8 @@ const OVERDUE_MS = 2_000
 /** A job whose worker died this often is not tried again: it may be what kills it. */
 const MAX_ATTEMPTS = 2
 
-/** What a job kind is given while it runs. */
-export interface JobContext {
-  readonly job: JobRow
-  /** Aborted when the person cancels or the process stops. */
-  readonly signal: AbortSignal
-  report(progress: number, message: string, detail?: JobView['detail']): void
-  log(message: string): void
-}
-
-/** How a job ended; `save` stores its result in the transaction that ends the job. */
-export interface JobOutcome {
-  status: 'done' | 'cancelled'
-  message: string
-  save(tx: Db): Promise<void>
-}
-
-/** One kind of background work. */
-export interface JobKindHandler {
-  run(app: App, context: JobContext): Promise<JobOutcome>
-  /** Settles the subject of a job that failed, or was cancelled before it started. */
-  abandon(tx: Db, job: JobRow, status: 'failed' | 'cancelled', reason: string): Promise<void>
-}
+/** Why the work of a job is aborted when the process stops: the job is handed back, whatever its work answers. */
+const STOPPING = 'stopping'
 
 /** Takes jobs from the queue, keeps their heartbeat, ends them, and picks up after dead workers. */
 export interface Runner {
@@ -67,7 +46,7 @@ export async function startRunner(app: App, concurrency: number): Promise<Runner
     const job = stopping ? undefined : await claimJob(app.db, jobId, worker, app.now())
     if (!job) return
     const controller = new AbortController()
-    const finished = execute(app, job, worker, controller, () => stopping)
+    const finished = execute(app, job, worker, controller)
     running.set(jobId, { controller, finished })
     await finished.finally(() => running.delete(jobId))
   }
@@ -82,7 +61,7 @@ export async function startRunner(app: App, concurrency: number): Promise<Runner
       stopping = true
       clearInterval(timer)
       await app.queue.stop()
-      for (const { controller } of running.values()) controller.abort()
+      for (const { controller } of running.values()) controller.abort(STOPPING)
       await Promise.allSettled([...running.values()].map(({ finished }) => finished))
     },
   }
@@ -91,13 +70,7 @@ export async function startRunner(app: App, concurrency: number): Promise<Runner
 const report = (error: unknown): void =>
   console.error(`jobs: ${error instanceof Error ? error.message : String(error)}`)
 
-async function execute(
-  app: App,
-  job: JobRow,
-  worker: string,
-  controller: AbortController,
-  stopping: () => boolean,
-): Promise<void> {
+async function execute(app: App, job: JobRow, worker: string, controller: AbortController): Promise<void> {
   const log: JobLogLine[] = [...job.log]
   const note = (message: string): void => void log.push({ at: app.now().toISOString(), message })
   const heart = startHeartbeat(app, job.id, worker, controller)
@@ -107,8 +80,7 @@ async function execute(
     const context = { job, signal: controller.signal, report: heart.set, log: note }
     const outcome = await kind.run(app, context)
     await heart.stop()
-    if (stopping() && controller.signal.aborted && outcome.status === 'cancelled')
-      return await handBackJob(app.db, job.id, worker)
+    if (controller.signal.reason === STOPPING) return await handBackJob(app.db, job.id, worker)
     note(outcome.message)
     await app.db.transaction(async (tx) => {
       if (!(await finishJob(tx, job.id, worker, { ...outcome, log }, app.now())))
@@ -117,7 +89,7 @@ async function execute(
     })
   } catch (error) {
     await heart.stop()
-    if (stopping()) return await handBackJob(app.db, job.id, worker).catch(report)
+    if (controller.signal.reason === STOPPING) return await handBackJob(app.db, job.id, worker).catch(report)
     const message = error instanceof Error ? error.message : String(error)
     note(message)
     await app.db

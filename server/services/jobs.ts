@@ -2,7 +2,7 @@ import { DomainError } from '../../shared/errors'
 import type { JobView } from '../../shared/schemas/jobs'
 import type { Actor, App } from '../app'
 import { cancelWaitingJob, findJob, jobView, requestCancel } from '../database/repositories/jobs'
-import type { JobKindHandler } from '../jobs/runner'
+import type { JobKindHandler } from '../jobs/kind'
 
 async function jobRow(app: App, actor: Actor, id: string) {
   const row = await findJob(app.db, id)

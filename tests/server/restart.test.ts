@@ -126,8 +126,10 @@ it('hands a running job back at an orderly stop, without counting the attempt', 
     'the start of the job',
   )
   await server.stop('SIGTERM')
+  const stopped = Date.now()
   server = await startServer(env)
   developer = await Client.signedIn(server.url, 'developer')
   const job = await developer.finished(started.jobId, 60)
   expect(job).toMatchObject({ status: 'done', attempts: 1 })
+  expect(Date.parse(job.startedAt)).toBeGreaterThan(stopped)
 })

@@ -57,8 +57,8 @@ export class Client {
   async finished(
     jobId: string,
     seconds = 60,
-  ): Promise<{ status: string; message: string; attempts: number; progress: number }> {
-    type Job = { status: string; message: string; attempts: number; progress: number }
+  ): Promise<{ status: string; message: string; attempts: number; progress: number; startedAt: string }> {
+    type Job = { status: string; message: string; attempts: number; progress: number; startedAt: string }
     return until(
       async () => {
         const { body } = await this.get<Job>(`/api/jobs/${jobId}`)

@@ -9,7 +9,7 @@ import { statsView } from '../../services/embeddings'
 import { calibratedMachine } from '../../services/machine-graphs'
 import { problemData } from '../../services/problems'
 import type { App } from '../../app'
-import type { JobContext, JobKindHandler, JobOutcome } from '../runner'
+import type { JobContext, JobKindHandler, JobOutcome } from '../kind'
 
 const SHOWN = 50
 

@@ -1,5 +1,5 @@
 import type { JobKind } from '../../../shared/schemas/jobs'
-import type { JobKindHandler } from '../runner'
+import type { JobKindHandler } from '../kind'
 import { embeddingJob } from './embedding'
 import { rehearsalJob } from './rehearsal'
 

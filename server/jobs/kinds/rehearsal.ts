@@ -9,7 +9,7 @@ import { loadBench, programmeBench, requireProgrammed } from '../../services/pro
 import type { RehearsalSettings } from '../../services/rehearsals'
 import { figuresOf, runSheetOfReturn } from '../../services/returns'
 import { packSamples, readsIn } from '../../services/samples-data'
-import type { JobContext, JobKindHandler } from '../runner'
+import type { JobContext, JobKindHandler } from '../kind'
 
 /** Blocks per thread: small enough to show progress and share the load, large enough to be worth a message. */
 const BLOCKS_PER_THREAD = 4
