@@ -92,11 +92,16 @@ export function createDrawing(container: HTMLElement, { bounds, tokens, scene, e
   }
 }
 
+interface FrameSource {
+  getWebGLContext(): WebGL2RenderingContext
+  on(event: 'beforeRender' | 'afterRender', listener: () => void): unknown
+}
+
 /**
  * Lets one frame at most wait in the graphics queue. Without it a slow renderer falls behind the pointer by as many
  * frames as were asked for; a fast one has always finished and is not held up.
  */
-function holdBackSlowFrames(sigma: Pick<Sigma, 'on' | 'getWebGLContext'>): void {
+function holdBackSlowFrames(sigma: FrameSource): void {
   const gl = sigma.getWebGLContext()
   const pixel = new Uint8Array(4)
   let last: WebGLSync | null = null
