@@ -65,7 +65,7 @@ export function libraryFacts(total: number, items: readonly ProblemItem[], sheet
   const inState = (state: RunSheetItem['state']) => sheets.filter((sheet) => sheet.state === state)
   return [
     { label: 'Problems', value: total },
-    { label: 'Without an embedding', value: items.filter(({ embedding }) => embedding?.status !== 'found').length },
+    { label: 'Not embedded yet', value: items.filter(({ embedding }) => !embedding).length },
     { label: 'With a run sheet', value: items.filter(({ runSheet }) => runSheet).length },
     sheetFact('Waiting for a reviewer', inState('in review')),
     sheetFact('Approved, not issued', inState('approved')),

@@ -66,7 +66,7 @@ describe('filterProblems', () => {
 })
 
 describe('libraryFacts', () => {
-  it('counts an embedding only when it was found, and names the first run sheet of a state', () => {
+  it('counts what was never embedded, and names the first run sheet of a state', () => {
     const sheets = [
       { number: 9, state: 'in review' },
       { number: 8, state: 'in review' },
@@ -74,7 +74,7 @@ describe('libraryFacts', () => {
     ] as RunSheetItem[]
     expect(libraryFacts(7, all, sheets)).toEqual([
       { label: 'Problems', value: 7 },
-      { label: 'Without an embedding', value: 2 },
+      { label: 'Not embedded yet', value: 1 },
       { label: 'With a run sheet', value: 1 },
       { label: 'Waiting for a reviewer', value: 2, note: 'RS-9 and more' },
       { label: 'Approved, not issued', value: 0, note: undefined },
