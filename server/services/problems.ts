@@ -67,7 +67,8 @@ async function contextOf(app: App, problemIds: string[]) {
 
 function itemOf(row: ProblemRow, { embeddings, sheets, returned }: Context): ProblemItem {
   const own = embeddings.filter(({ embedding }) => embedding.problemId === row.id)
-  const newest = own[0]
+  // A later search that found nothing does not hide an embedding that holds.
+  const newest = own.find(({ embedding }) => embedding.status === 'found') ?? own[0]
   const ownSheets = sheets.filter((sheet) => own.some(({ embedding }) => embedding.id === sheet.embeddingId))
   const sheet = ownSheets[0]
   const sign = signOf(row.sense)

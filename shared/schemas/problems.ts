@@ -106,7 +106,7 @@ export interface ProblemItem {
   variables: number
   interactions: number
   density: number
-  /** The newest embedding, if there is one. */
+  /** The newest embedding found, else the newest of all. */
   embedding: {
     id: string
     number: number

@@ -69,9 +69,9 @@ describe('readSamplesCsv', () => {
   })
 
   it.each([
-    ['a short row', '1,1', /2 values in a row of 3/],
-    ['a long row', '1,1,1,1', /4 values in a row of 3/],
-    ['a last separator', '1,1,1,', /4 values/],
+    ['a short row', '1,1', /the row has 2 of 3 values/],
+    ['a long row', '1,1,1,1', /the row has 4 of 3 values/],
+    ['a last separator', '1,1,1,', /the row has 4 of 3 values/],
     ['2', '1,2,1', /"2" for qubit 7/],
     ['-2', '1,-2,1', /"-2" for qubit 7/],
     ['a word', '1,up,1', /"up" for qubit 7/],
