@@ -13,7 +13,9 @@ const SHARED: BuildOptions = {
   // These find their own files at run time; Nitro copies them beside the server because the web process imports them too.
   external: ['piscina', '@electric-sql/pglite', 'pg-native'],
   // The PostgreSQL driver is CommonJS and asks for Node's modules through require.
-  banner: { js: `import { createRequire as __createRequire } from 'node:module'; const require = __createRequire(import.meta.url);` },
+  banner: {
+    js: `import { createRequire as __createRequire } from 'node:module'; const require = __createRequire(import.meta.url);`,
+  },
 }
 
 /**
@@ -31,7 +33,11 @@ export default defineNuxtModule({
       nitro.hooks.hook('compiled', async () => {
         const folder = nitro.options.output.serverDir
         await build({ ...SHARED, entryPoints: thread, outdir: join(folder, 'workers') })
-        await build({ ...SHARED, entryPoints: { worker: join(nuxt.options.rootDir, 'server/worker-process.ts') }, outdir: folder })
+        await build({
+          ...SHARED,
+          entryPoints: { worker: join(nuxt.options.rootDir, 'server/worker-process.ts') },
+          outdir: folder,
+        })
       })
     })
     nuxt.hook('build:before', async () => {

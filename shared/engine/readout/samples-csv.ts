@@ -131,7 +131,8 @@ function readExtras(tokens: readonly string[], header: Header, sink: Sink): stri
 function readCarefully(row: string, header: Header, sink: Sink, line: number): void {
   const tokens = tokensOf(row, header.separator)
   const { target } = header
-  if (tokens.length !== target.length) return reject(sink, line, `the row has ${tokens.length} of ${target.length} values`)
+  if (tokens.length !== target.length)
+    return reject(sink, line, `the row has ${tokens.length} of ${target.length} values`)
   const problem = readExtras(tokens, header, sink)
   if (problem) return reject(sink, line, problem)
   const base = sink.rows * strideOf(header.width)
