@@ -1,22 +1,17 @@
 import { randomUUID } from 'node:crypto'
-import type { z } from 'zod'
 import { verifyEmbedding } from '../../shared/engine/embedding/verify'
 import { degreeOf, sizeOf } from '../../shared/engine/graph/graph'
 import { applyDefects, defectIssues, normaliseDefects } from '../../shared/engine/machine/defects'
 import type { Fabric, WorkingGraph } from '../../shared/engine/machine/fabric'
 import { couplerCount, familyName, familyProblems, qubitCount } from '../../shared/engine/machine/family'
-import { couplerPlace } from '../../shared/engine/machine/layout'
 import { interactionGraph } from '../../shared/engine/problem/interaction-graph'
 import { DomainError } from '../../shared/errors'
-import { packArrays } from '../../shared/packed-arrays'
 import type { Page, PageQuery } from '../../shared/schemas/common'
 import type {
   Calibrate,
   CalibrationItem,
   CalibrationSaved,
   CreateMachine,
-  graphQuerySchema,
-  MachineGraph,
   MachineItem,
   MachineSheet,
   MachineView,
@@ -40,6 +35,7 @@ import { pageOf, positionOf } from '../database/repositories/pages'
 import { findProblem } from '../database/repositories/problems'
 import { runSheetsOfEmbeddings } from '../database/repositories/run-sheets'
 import { unpackChains } from './chains'
+import type { CalibratedMachine } from './machine-graphs'
 import { calibratedMachine, fabricOf } from './machine-graphs'
 import { problemData } from './problems'
 
@@ -59,17 +55,17 @@ function checkedSheet(fabric: Fabric, sheet: MachineSheet): MachineSheet {
 
 const workingQubits = (working: WorkingGraph): number => working.usable.reduce((sum, one) => sum + one, 0)
 
-async function saveCalibration(
-  app: App,
-  tx: Db,
-  actor: Actor,
-  machineId: string,
-  number: number,
-  sheet: MachineSheet,
-  working: WorkingGraph,
-) {
+interface NewCalibration {
+  machineId: string
+  number: number
+  sheet: MachineSheet
+  working: WorkingGraph
+  broke: CalibrationSaved['invalidated']['embeddings']
+}
+
+async function saveCalibration(app: App, tx: Db, actor: Actor, { working, ...calibration }: NewCalibration) {
   const figures = { qubits: workingQubits(working), couplers: sizeOf(working.graph) }
-  await insertCalibration(tx, { machineId, number, sheet, ...figures, createdBy: actor.userId, createdAt: app.now() })
+  await insertCalibration(tx, { ...calibration, ...figures, createdBy: actor.userId, createdAt: app.now() })
   return figures
 }
 
@@ -108,7 +104,7 @@ export async function createMachine(app: App, actor: Actor, input: CreateMachine
       createdAt: now,
       changedAt: now,
     })
-    const figures = await saveCalibration(app, tx, actor, id, 1, sheet, working)
+    const figures = await saveCalibration(app, tx, actor, { machineId: id, number: 1, sheet, working, broke: [] })
     return { id, ...figures, calibration: 1 }
   })
 }
@@ -125,6 +121,7 @@ export async function calibrateMachine(
   const sheet = checkedSheet(before.fabric, { ...before.sheet, ...given })
   const working = applyDefects(before.fabric, sheet.defects)
   const number = before.machine.calibration + 1
+  const broke = await embeddingsBroken(app, before, working)
   const figures = await app.db.transaction(async (tx) => {
     if (!(await advanceCalibration(tx, id, number - 1, app.now())))
       throw new DomainError(
@@ -132,28 +129,26 @@ export async function calibrateMachine(
         'calibration.raced',
         'Somebody saved another calibration meanwhile. Reload the page and apply your change to it.',
       )
-    return saveCalibration(app, tx, actor, id, number, sheet, working)
+    return saveCalibration(app, tx, actor, { machineId: id, number, sheet, working, broke })
   })
-  const broken = await brokenEmbeddings(app, before.machine, working, number)
   const sheets = await runSheetsOfEmbeddings(
     app.db,
-    broken.map(({ id: embeddingId }) => embeddingId),
+    broke.map(({ id: embeddingId }) => embeddingId),
   )
   const open = sheets.filter(({ state }) => state !== 'returned' && state !== 'closed')
   return {
     calibration: number,
     ...figures,
-    invalidated: { embeddings: broken, runSheets: open.map((row) => ({ id: row.id, number: row.number })) },
+    invalidated: { embeddings: broke, runSheets: open.map((row) => ({ id: row.id, number: row.number })) },
   }
 }
 
-/** Embeddings made before calibration `number` that no longer hold on its working graph. */
-async function brokenEmbeddings(app: App, machine: MachineRow, working: WorkingGraph, number: number) {
+/** Embeddings that hold on the machine as it was and no longer on the changed one. */
+async function embeddingsBroken(app: App, before: CalibratedMachine, working: WorkingGraph) {
   const broken: CalibrationSaved['invalidated']['embeddings'] = []
-  for (const { embedding, problem } of await foundEmbeddingsOn(app.db, machine.id)) {
-    if (embedding.calibration >= number) continue
-    if (!(await holdsOn(app, embedding, working))) broken.push({ id: embedding.id, number: embedding.number, problem })
-  }
+  for (const { embedding, problem } of await foundEmbeddingsOn(app.db, before.machine.id))
+    if ((await holdsOn(app, embedding, before)) && !(await holdsOn(app, embedding, working)))
+      broken.push({ id: embedding.id, number: embedding.number, problem })
   return broken
 }
 
@@ -189,8 +184,8 @@ export async function machinesOf(app: App, actor: Actor, query: PageQuery): Prom
 }
 
 export async function machineView(app: App, actor: Actor, id: string): Promise<MachineView> {
-  const { machine, calibration, sheet, graph, fabric } = await calibratedMachine(app, actor, id)
-  const calibrations = await calibrationItems(app, machine, fabric)
+  const { machine, calibration, sheet, graph } = await calibratedMachine(app, actor, id)
+  const calibrations = await calibrationItems(app, machine)
   let maxDegree = 0
   for (let v = 0; v < graph.order; v++) maxDegree = Math.max(maxDegree, degreeOf(graph, v))
   return {
@@ -204,76 +199,17 @@ export async function machineView(app: App, actor: Actor, id: string): Promise<M
   }
 }
 
-/** Every calibration, newest first, with the embeddings of its predecessor that it broke. */
-async function calibrationItems(app: App, machine: MachineRow, fabric: Fabric): Promise<CalibrationItem[]> {
-  const rows = await listCalibrations(app.db, machine.id)
-  const found = await foundEmbeddingsOn(app.db, machine.id)
-  const items: CalibrationItem[] = []
-  for (const { calibration, savedBy } of rows) {
-    const working = applyDefects(fabric, calibration.sheet.defects)
-    const broke: CalibrationItem['broke'] = []
-    for (const { embedding, problem } of found)
-      if (embedding.calibration === calibration.number - 1 && !(await holdsOn(app, embedding, working)))
-        broke.push({ id: embedding.id, number: embedding.number, problem })
-    items.push({
-      number: calibration.number,
-      missingQubits: qubitCount(machine.family) - calibration.qubits,
-      missingCouplers: couplerCount(machine.family) - calibration.couplers,
-      controlError: calibration.sheet.controlError,
-      temperatureMillikelvin: calibration.sheet.temperatureMillikelvin,
-      remark: calibration.sheet.remark,
-      savedBy,
-      savedAt: calibration.createdAt.toISOString(),
-      broke,
-    })
-  }
-  return items
-}
-
-/** The working graph at a calibration: qubits and couplers by published number, and a point to draw each qubit at. */
-export async function machineGraph(app: App, actor: Actor, id: string, calibration?: number): Promise<MachineGraph> {
-  const { graph, usable, fabric } = await calibratedMachine(app, actor, id, calibration)
-  const { ids, segments } = fabric
-  const working = Array.from(usable.keys()).filter((q) => usable[q])
-  return {
-    nodes: working.map((q) => ids[q]!),
-    edges: Array.from({ length: sizeOf(graph) }, (_, k): [number, number] => [
-      ids[graph.ends[2 * k]!]!,
-      ids[graph.ends[2 * k + 1]!]!,
-    ]),
-    positions: working.map((q): [number, number] => [
-      (segments[4 * q]! + segments[4 * q + 2]!) / 2,
-      (segments[4 * q + 1]! + segments[4 * q + 3]!) / 2,
-    ]),
-  }
-}
-
-/** The working graph as a file: an edge list, or a Matrix Market symmetric pattern over numbers from 1. */
-export async function machineGraphFile(
-  app: App,
-  actor: Actor,
-  id: string,
-  { calibration, format }: z.infer<typeof graphQuerySchema>,
-) {
-  const { graph, fabric, machine } = await calibratedMachine(app, actor, id, calibration)
-  const { ids } = fabric
-  const pairs = Array.from(
-    { length: sizeOf(graph) },
-    (_, k) => [ids[graph.ends[2 * k]!]!, ids[graph.ends[2 * k + 1]!]!] as const,
-  )
-  if (format === 'csv')
-    return { fileName: `${machine.name}.csv`, text: `a,b\n${pairs.map(([a, b]) => `${a},${b}\n`).join('')}` }
-  const side = ids[ids.length - 1]! + 1
-  const head = `%%MatrixMarket matrix coordinate pattern symmetric\n% row and column = qubit number + 1\n${side} ${side} ${pairs.length}\n`
-  return { fileName: `${machine.name}.mtx`, text: head + pairs.map(([a, b]) => `${b + 1} ${a + 1}\n`).join('') }
-}
-
-/** What the lattice view draws, as packed arrays: numbers, segments, working qubits, couplers and where they attach. */
-export async function latticeOf(app: App, actor: Actor, id: string, calibration?: number): Promise<Uint8Array> {
-  const { graph, usable, fabric, sheet, indexOf } = await calibratedMachine(app, actor, id, calibration)
-  const missingCouplers = Uint32Array.from(sheet.defects.couplers.flat(), indexOf)
-  const places = new Float32Array(4 * sizeOf(graph))
-  const drawing = { graph, segments: fabric.segments }
-  for (let k = 0; k < sizeOf(graph); k++) couplerPlace(drawing, k, places.subarray(4 * k, 4 * k + 4))
-  return packArrays({ ids: fabric.ids, segments: fabric.segments, usable, ends: graph.ends, places, missingCouplers })
+/** Every calibration, newest first, with the embeddings that it broke. */
+async function calibrationItems(app: App, machine: MachineRow): Promise<CalibrationItem[]> {
+  return (await listCalibrations(app.db, machine.id)).map(({ calibration, savedBy }) => ({
+    number: calibration.number,
+    missingQubits: qubitCount(machine.family) - calibration.qubits,
+    missingCouplers: couplerCount(machine.family) - calibration.couplers,
+    controlError: calibration.sheet.controlError,
+    temperatureMillikelvin: calibration.sheet.temperatureMillikelvin,
+    remark: calibration.sheet.remark,
+    savedBy,
+    savedAt: calibration.createdAt.toISOString(),
+    broke: calibration.broke,
+  }))
 }

@@ -253,6 +253,42 @@ describe('an embedding', () => {
   })
 })
 
+describe('a new calibration', () => {
+  it('names the embeddings that it breaks', async () => {
+    const used = Object.values(chains).flat()[0]!
+    const { defects } = (
+      await steward.get<{ sheet: { defects: { qubits: number[]; couplers: [number, number][] } } }>(
+        `/api/machines/${machineId}`,
+      )
+    ).body.sheet
+    type Saved = { calibration: number; invalidated: { embeddings: { id: string }[] } }
+    const { status, body } = await steward.post<Saved>(`/api/machines/${machineId}/calibrations`, {
+      defects: { ...defects, qubits: [...defects.qubits, used] },
+      remark: 'a qubit went',
+    })
+    expect(status).toBe(201)
+    expect(body.calibration).toBe(2)
+    expect(body.invalidated.embeddings.map(({ id }) => id)).toContain(embeddingId)
+    const { body: embedding } = await developer.get<{ holdsAtCurrentCalibration: boolean }>(
+      `/api/embeddings/${embeddingId}`,
+    )
+    expect(embedding.holdsAtCurrentCalibration).toBe(false)
+    const back = await steward.post<Saved>(`/api/machines/${machineId}/calibrations`, {
+      defects,
+      remark: 'it came back',
+    })
+    expect(back.body.invalidated.embeddings).toEqual([])
+    const { body: machine } = await steward.get<{ calibrations: { number: number; broke: unknown[] }[] }>(
+      `/api/machines/${machineId}`,
+    )
+    expect(machine.calibrations.map(({ number, broke }) => [number, broke.length > 0])).toEqual([
+      [3, false],
+      [2, true],
+      [1, false],
+    ])
+  })
+})
+
 /** Contracts each chain in a copy of the machine, edge by edge, and looks for every interaction. */
 function expectMinor(machine: MachineGraph, embedded: Record<string, number[]>): void {
   const graph = new Graph({ type: 'undirected' })

@@ -45,6 +45,7 @@ CREATE TABLE "calibrations" (
 	"sheet" jsonb NOT NULL,
 	"qubits" integer NOT NULL,
 	"couplers" integer NOT NULL,
+	"broke" jsonb NOT NULL,
 	"created_by" text NOT NULL,
 	"created_at" timestamp with time zone NOT NULL,
 	CONSTRAINT "calibrations_machine_id_number_pk" PRIMARY KEY("machine_id","number")

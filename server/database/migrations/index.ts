@@ -2,8 +2,8 @@
 export const MIGRATIONS = [
   {
     "tag": "0000_foundation",
-    "folderMillis": 1796120513561,
-    "hash": "dfc4b90213808b2a9131d45d42b17ff1c810c481f4e38950ebacd10994f7d492",
+    "folderMillis": 1796125081957,
+    "hash": "2e38b7dc717b6a7419b9fed04d9d27e8641132fdb37adfb40c0afcee764f0dd3",
     "bps": true,
     "sql": [
       "CREATE TABLE \"blob_chunks\" (\n\t\"blob_id\" text NOT NULL,\n\t\"part\" integer NOT NULL,\n\t\"data\" \"bytea\" NOT NULL,\n\tCONSTRAINT \"blob_chunks_blob_id_part_pk\" PRIMARY KEY(\"blob_id\",\"part\")\n);\n",
@@ -12,7 +12,7 @@ export const MIGRATIONS = [
       "\nCREATE TABLE \"memberships\" (\n\t\"workspace_id\" text NOT NULL,\n\t\"user_id\" text NOT NULL,\n\t\"roles\" text[] NOT NULL,\n\t\"created_at\" timestamp with time zone NOT NULL,\n\tCONSTRAINT \"memberships_workspace_id_user_id_pk\" PRIMARY KEY(\"workspace_id\",\"user_id\")\n);\n",
       "\nCREATE TABLE \"users\" (\n\t\"id\" text PRIMARY KEY NOT NULL,\n\t\"email\" text NOT NULL,\n\t\"name\" text NOT NULL,\n\t\"password_hash\" text NOT NULL,\n\t\"created_at\" timestamp with time zone NOT NULL\n);\n",
       "\nCREATE TABLE \"workspaces\" (\n\t\"id\" text PRIMARY KEY NOT NULL,\n\t\"name\" text NOT NULL,\n\t\"created_at\" timestamp with time zone NOT NULL\n);\n",
-      "\nCREATE TABLE \"calibrations\" (\n\t\"machine_id\" text NOT NULL,\n\t\"number\" integer NOT NULL,\n\t\"sheet\" jsonb NOT NULL,\n\t\"qubits\" integer NOT NULL,\n\t\"couplers\" integer NOT NULL,\n\t\"created_by\" text NOT NULL,\n\t\"created_at\" timestamp with time zone NOT NULL,\n\tCONSTRAINT \"calibrations_machine_id_number_pk\" PRIMARY KEY(\"machine_id\",\"number\")\n);\n",
+      "\nCREATE TABLE \"calibrations\" (\n\t\"machine_id\" text NOT NULL,\n\t\"number\" integer NOT NULL,\n\t\"sheet\" jsonb NOT NULL,\n\t\"qubits\" integer NOT NULL,\n\t\"couplers\" integer NOT NULL,\n\t\"broke\" jsonb NOT NULL,\n\t\"created_by\" text NOT NULL,\n\t\"created_at\" timestamp with time zone NOT NULL,\n\tCONSTRAINT \"calibrations_machine_id_number_pk\" PRIMARY KEY(\"machine_id\",\"number\")\n);\n",
       "\nCREATE TABLE \"counters\" (\n\t\"scope\" text NOT NULL,\n\t\"kind\" text NOT NULL,\n\t\"value\" integer NOT NULL,\n\tCONSTRAINT \"counters_scope_kind_pk\" PRIMARY KEY(\"scope\",\"kind\")\n);\n",
       "\nCREATE TABLE \"embeddings\" (\n\t\"id\" text PRIMARY KEY NOT NULL,\n\t\"workspace_id\" text NOT NULL,\n\t\"problem_id\" text NOT NULL,\n\t\"machine_id\" text NOT NULL,\n\t\"calibration\" integer NOT NULL,\n\t\"number\" integer NOT NULL,\n\t\"status\" text NOT NULL,\n\t\"method\" text NOT NULL,\n\t\"seed\" double precision NOT NULL,\n\t\"tries\" integer NOT NULL,\n\t\"time_limit_seconds\" double precision NOT NULL,\n\t\"chains_blob_id\" text,\n\t\"stats\" jsonb,\n\t\"unmet\" jsonb,\n\t\"reason\" text,\n\t\"fingerprint\" text,\n\t\"seconds\" double precision,\n\t\"version\" text NOT NULL,\n\t\"created_by\" text NOT NULL,\n\t\"created_at\" timestamp with time zone NOT NULL\n);\n",
       "\nCREATE TABLE \"jobs\" (\n\t\"id\" text PRIMARY KEY NOT NULL,\n\t\"workspace_id\" text NOT NULL,\n\t\"kind\" text NOT NULL,\n\t\"subject_id\" text NOT NULL,\n\t\"status\" text NOT NULL,\n\t\"progress\" double precision NOT NULL,\n\t\"message\" text NOT NULL,\n\t\"detail\" jsonb NOT NULL,\n\t\"log\" jsonb NOT NULL,\n\t\"attempts\" integer NOT NULL,\n\t\"cancel_requested\" boolean NOT NULL,\n\t\"worker\" text,\n\t\"heartbeat_at\" timestamp with time zone,\n\t\"created_by\" text NOT NULL,\n\t\"created_at\" timestamp with time zone NOT NULL,\n\t\"started_at\" timestamp with time zone,\n\t\"finished_at\" timestamp with time zone\n);\n",

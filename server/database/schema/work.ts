@@ -10,7 +10,7 @@ import {
   uniqueIndex,
 } from 'drizzle-orm/pg-core'
 import type { EmbeddingStats, EmbeddingStatus, UnmetView } from '../../../shared/schemas/embeddings'
-import type { MachineSheet } from '../../../shared/schemas/machines'
+import type { CalibrationSaved, MachineSheet } from '../../../shared/schemas/machines'
 import type { ReadingView, StructureView } from '../../../shared/schemas/problems'
 import type { RunSheetSettings, RunSheetState } from '../../../shared/schemas/run-sheets'
 import type { Family } from '../../../shared/engine/machine/fabric'
@@ -89,6 +89,8 @@ export const calibrations = pgTable(
     sheet: jsonb().$type<MachineSheet>().notNull(),
     qubits: integer().notNull(),
     couplers: integer().notNull(),
+    /** Embeddings that stood before and no longer hold at this calibration. */
+    broke: jsonb().$type<CalibrationSaved['invalidated']['embeddings']>().notNull(),
     createdBy: createdBy(),
     createdAt: createdAt(),
   },

@@ -1,5 +1,5 @@
 import { graphQuerySchema } from '../../../../shared/schemas/machines'
-import { machineGraph, machineGraphFile } from '../../../services/machines'
+import { machineGraph, machineGraphFile } from '../../../services/machine-files'
 
 /** The working graph: `?calibration=&format=json|csv|mtx`; json is `{nodes, edges, positions}`. */
 export default defineRoute('member', async (event, { app, ...actor }) => {

@@ -1,5 +1,5 @@
 import { calibrationQuerySchema } from '../../../../shared/schemas/machines'
-import { latticeOf } from '../../../services/machines'
+import { latticeOf } from '../../../services/machine-files'
 
 /** What the lattice view draws, as packed arrays (shared/packed-arrays.ts): ids, segments, usable, ends, places, missingCouplers. */
 export default defineRoute('member', async (event, { app, ...actor }) => {
