@@ -38,9 +38,14 @@ const REPORTED = ['returned', 'closed']
 
 /**
  * What one run sheet on the embedding says about its chains: strengths, programmed values and the newest samples. At
- * first the newest sheet with returned samples, else the newest; `choose` takes another.
+ * first the newest sheet with returned samples, else the newest; `choose` takes another. Samples asked for by their id
+ * come before both.
  */
-export function useChainFindings(embedding: MaybeRefOrGetter<EmbeddingView | null | undefined>) {
+export function useChainFindings(
+  embedding: MaybeRefOrGetter<EmbeddingView | null | undefined>,
+  askedReturn: string | null,
+) {
+  const asked = shallowRef<ReturnView | null>(null)
   const findings = shallowRef<ChainFindings | null>(null)
   const chosen = ref<string | null>(null)
   const sheets = computed(() => [...(toValue(embedding)?.runSheets ?? [])].sort((a, b) => b.number - a.number))
@@ -55,10 +60,16 @@ export function useChainFindings(embedding: MaybeRefOrGetter<EmbeddingView | nul
       $fetch<ProgrammedView>(`/api/run-sheets/${id}/programmed`).catch(() => null),
     ])
     const ready = runSheet?.returns.filter(({ status }) => status === 'ready').sort((a, b) => b.number - a.number)[0]
-    const samples = ready ? await $fetch<ReturnView>(`/api/returns/${ready.id}`).catch(() => null) : null
+    const newest = ready ? `/api/returns/${ready.id}` : null
+    const samples =
+      asked.value?.runSheet.id === id ? asked.value : newest && (await $fetch<ReturnView>(newest).catch(() => null))
     if (sheetId.value === id) findings.value = runSheet ? markRaw({ runSheet, samples, programmed }) : null
   }
-  onMounted(() => watch(sheetId, load, { immediate: true }))
+  onMounted(async () => {
+    if (askedReturn) asked.value = await $fetch<ReturnView>(`/api/returns/${askedReturn}`).catch(() => null)
+    if (asked.value) chosen.value = asked.value.runSheet.id
+    watch(sheetId, load, { immediate: true })
+  })
   const choose = (id: string): void => void (chosen.value = id)
   return { findings, sheets, sheetId, choose }
 }

@@ -29,13 +29,6 @@ export const alongAxis = (axis: Axis, px: number, py: number): number =>
 export const acrossAxis = (axis: Axis, px: number, py: number): number =>
   Math.abs((py - axis.y) * axis.dx - (px - axis.x) * axis.dy)
 
-export function middleOf(segments: Float32Array, qubit: number): [number, number] {
-  return [
-    (segments[4 * qubit]! + segments[4 * qubit + 2]!) / 2,
-    (segments[4 * qubit + 1]! + segments[4 * qubit + 3]!) / 2,
-  ]
-}
-
 /** Squared distance from a point to the segment between two others. */
 export function squaredDistanceToSegment(
   px: number,
