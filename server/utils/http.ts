@@ -1,8 +1,9 @@
 import type { H3Event } from 'h3'
-import { createError, getQuery, getRouterParam, readBody } from 'h3'
+import { createError, getHeader, getQuery, getRouterParam, readBody } from 'h3'
 import type { z } from 'zod'
 import type { ErrorKind, Issue } from '../../shared/errors'
 import { DomainError } from '../../shared/errors'
+import { idSchema } from '../../shared/schemas/common'
 
 const STATUS: Record<ErrorKind, number> = {
   unreadable: 400,
@@ -51,10 +52,29 @@ export function parse<T extends z.ZodType>(schema: T, input: unknown, what: stri
   )
 }
 
+const BODY_LIMIT_BYTES = 16 * 2 ** 20
+
+/** A body is read into memory whole, so its length has to be stated and within the limit before it is read. */
+function requireModestBody(event: H3Event): void {
+  if (getHeader(event, 'transfer-encoding'))
+    throw new DomainError('unreadable', 'request.length', 'State the length of the request body (Content-Length).')
+  if (Number(getHeader(event, 'content-length') ?? 0) > BODY_LIMIT_BYTES)
+    throw new DomainError(
+      'too large',
+      'request.size',
+      `The request body is larger than the ${BODY_LIMIT_BYTES / 2 ** 20} MiB that are taken here.`,
+    )
+}
+
 /** The JSON body of a request, validated. */
 export async function bodyOf<T extends z.ZodType>(event: H3Event, schema: T): Promise<z.infer<T>> {
+  requireModestBody(event)
   const body: unknown = await readBody(event).catch(() => {
-    throw new DomainError('unreadable', 'request.json', 'The request body is not valid JSON.')
+    throw new DomainError(
+      'unreadable',
+      'request.json',
+      'The request body is not valid JSON, or it has a key such as __proto__.',
+    )
   })
   return parse(schema, body ?? {}, 'The request was understood but cannot be accepted')
 }
@@ -64,9 +84,10 @@ export function queryOf<T extends z.ZodType>(event: H3Event, schema: T): z.infer
   return parse(schema, getQuery(event), 'The address has a part that cannot be accepted')
 }
 
-/** A named part of the route, for example `id`. */
+/** A named part of the route that is an id. */
 export function partOf(event: H3Event, name: string): string {
   const value = getRouterParam(event, name)
-  if (!value) throw new DomainError('not found', 'request.route', 'There is nothing at this address.')
-  return value
+  if (!idSchema.safeParse(value).success)
+    throw new DomainError('not found', 'request.route', 'There is nothing at this address.')
+  return value!
 }

@@ -10,10 +10,32 @@ export interface Upload {
 
 const MAX_FIELDS = 40
 const MAX_FIELD_BYTES = 10_000
+const MAX_FILE_NAME = 200
 const mebibytes = (bytes: number): string => `${Math.round(bytes / 2 ** 20)} MiB`
 
 const tooLarge = (limit: number): DomainError =>
   new DomainError('too large', 'upload.size', `The file is larger than the ${mebibytes(limit)} that are taken here.`)
+
+const malformed = (): DomainError =>
+  new DomainError('unreadable', 'upload.form', 'The upload is not a valid multipart form.')
+
+/** A file's name as it is kept: without control characters, and of modest length. */
+const keptName = (fileName: string | undefined): string =>
+  (fileName ?? '')
+    .replace(/[\p{Cc}\p{Cs}]/gu, '')
+    .slice(0, MAX_FILE_NAME)
+    .toWellFormed() || 'file'
+
+function parserOf(event: H3Event, type: string, limitBytes: number) {
+  try {
+    return busboy({
+      headers: { ...event.node.req.headers, 'content-type': type },
+      limits: { fileSize: limitBytes, files: 1, fields: MAX_FIELDS, fieldSize: MAX_FIELD_BYTES },
+    })
+  } catch {
+    throw malformed()
+  }
+}
 
 /** Reads a multipart form with at most one file, streaming, and gives up as soon as it grows past the limit. */
 export async function readUpload(event: H3Event, limitBytes: number): Promise<Upload> {
@@ -23,6 +45,7 @@ export async function readUpload(event: H3Event, limitBytes: number): Promise<Up
   // Parts around the file are small; a declared length beyond the limit is refused before anything is read.
   if (Number(getHeader(event, 'content-length') ?? 0) > limitBytes + 2 ** 20) throw tooLarge(limitBytes)
   const request = event.node.req
+  const parser = parserOf(event, type, limitBytes)
   const upload: Upload = { fields: {}, file: null }
   return new Promise<Upload>((resolve, reject) => {
     const fail = (error: DomainError): void => {
@@ -30,22 +53,25 @@ export async function readUpload(event: H3Event, limitBytes: number): Promise<Up
       request.resume()
       reject(error)
     }
-    const parser = busboy({
-      headers: { ...request.headers, 'content-type': type },
-      limits: { fileSize: limitBytes, files: 1, fields: MAX_FIELDS, fieldSize: MAX_FIELD_BYTES },
-    })
     parser.on('field', (name, value) => (upload.fields[name] = value))
     parser.on('file', (part, stream, fileName) => {
       const chunks: Buffer[] = []
       stream.on('data', (chunk: Buffer) => chunks.push(chunk))
       stream.on('limit', () => fail(tooLarge(limitBytes)))
       stream.on('end', () => {
-        if (part === 'file') upload.file = { name: fileName || 'file', bytes: Buffer.concat(chunks) }
+        if (part === 'file') upload.file = { name: keptName(fileName), bytes: Buffer.concat(chunks) }
       })
     })
-    parser.on('error', () =>
-      fail(new DomainError('unreadable', 'upload.form', 'The upload is not a valid multipart form.')),
+    parser.on('filesLimit', () =>
+      fail(
+        new DomainError(
+          'unreadable',
+          'upload.files',
+          'The form has several files. Send one, as the part named “file”.',
+        ),
+      ),
     )
+    parser.on('error', () => fail(malformed()))
     parser.on('finish', () => resolve(upload))
     request.pipe(parser)
   })

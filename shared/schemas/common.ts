@@ -5,8 +5,22 @@ export const ROLES = ['owner', 'developer', 'steward', 'reviewer', 'reader'] as 
 export const roleSchema = z.enum(ROLES)
 export type Role = z.infer<typeof roleSchema>
 
-export const idSchema = z.string().min(1).max(64)
-export const nameSchema = z.string().trim().min(1, 'give a name').max(120, 'a name has at most 120 characters')
+export const idSchema = z.string().regex(/^[\w-]{1,64}$/, 'this is not an id')
+
+/** The database stores neither U+0000 nor half of a surrogate pair. */
+const isStorable = (text: string): boolean => !/\0|\p{Cs}/u.test(text)
+
+/** Free text of at most `length` characters, without white space around it. */
+export const textSchema = (length: number) =>
+  z.string().trim().max(length, `at most ${length} characters`).refine(isStorable, 'a character cannot be stored')
+export const nameSchema = textSchema(120).min(1, 'give a name')
+
+/** Calibrations are counted in the database's 32-bit integers. */
+export const calibrationNumberSchema = z
+  .number()
+  .int()
+  .min(1)
+  .max(2 ** 31 - 1)
 
 /** Seeds stay exactly representable on both sides of JSON. */
 export const seedSchema = z.number().int().min(0).max(Number.MAX_SAFE_INTEGER)

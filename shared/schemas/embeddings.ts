@@ -1,11 +1,11 @@
 import { z } from 'zod'
 import type { Person } from './common'
-import { idSchema, seedSchema } from './common'
+import { calibrationNumberSchema, idSchema, seedSchema } from './common'
 
 export const createEmbeddingSchema = z.object({
   problemId: idSchema,
   machineId: idSchema,
-  calibration: z.number().int().min(1).optional(),
+  calibration: calibrationNumberSchema.optional(),
   method: z.enum(['auto', 'search']).default('auto'),
   seed: seedSchema.default(1),
   tries: z.number().int().min(1).max(1000).default(8),
@@ -16,7 +16,7 @@ export type CreateEmbedding = z.infer<typeof createEmbeddingSchema>
 export const importEmbeddingSchema = z.object({
   problemId: idSchema,
   machineId: idSchema,
-  calibration: z.number().int().min(1).optional(),
+  calibration: calibrationNumberSchema.optional(),
   chains: z.record(z.string(), z.array(z.number().int().min(0)).max(100_000)),
 })
 export type ImportEmbedding = z.infer<typeof importEmbeddingSchema>

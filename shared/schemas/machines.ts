@@ -1,6 +1,6 @@
 import { z } from 'zod'
 import type { Person } from './common'
-import { nameSchema } from './common'
+import { calibrationNumberSchema, nameSchema, textSchema } from './common'
 
 const extent = z.number().int().min(1).max(1000)
 const gridExtent = z.number().int().min(1).max(100_000)
@@ -65,13 +65,13 @@ const sheetSchema = z.object({
   controlError: controlErrorSchema.prefault({}),
   timing: timingSchema.prefault({}),
   temperatureMillikelvin: z.number().positive().max(1e6).nullable().default(null),
-  remark: z.string().trim().max(2000).default(''),
+  remark: textSchema(2000).default(''),
 })
 export type MachineSheet = z.infer<typeof sheetSchema>
 
 export const createMachineSchema = sheetSchema.extend({
   name: nameSchema,
-  note: z.string().trim().max(2000).default(''),
+  note: textSchema(2000).default(''),
   family: familySchema,
 })
 export type CreateMachine = z.infer<typeof createMachineSchema>
@@ -83,11 +83,13 @@ export const calibrateSchema = z.object({
   controlError: controlErrorSchema.optional(),
   timing: timingSchema.optional(),
   temperatureMillikelvin: z.number().positive().max(1e6).nullable().optional(),
-  remark: z.string().trim().max(2000).default(''),
+  remark: textSchema(2000).default(''),
 })
 export type Calibrate = z.infer<typeof calibrateSchema>
 
-export const calibrationQuerySchema = z.object({ calibration: z.coerce.number().int().min(1).optional() })
+export const calibrationQuerySchema = z.object({
+  calibration: z.coerce.number().pipe(calibrationNumberSchema).optional(),
+})
 export const graphQuerySchema = calibrationQuerySchema.extend({
   format: z.enum(['json', 'csv', 'mtx']).default('json'),
 })

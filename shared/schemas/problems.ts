@@ -1,6 +1,6 @@
 import { z } from 'zod'
 import type { HistogramBin, Person } from './common'
-import { nameSchema } from './common'
+import { nameSchema, textSchema } from './common'
 import type { EmbeddingStatus } from './embeddings'
 import type { RunSheetState } from './run-sheets'
 
@@ -25,7 +25,7 @@ export const uploadProblemSchema = z.object({
 })
 export type UploadProblem = z.infer<typeof uploadProblemSchema>
 
-export const editProblemSchema = z.object({ name: nameSchema.optional(), note: z.string().trim().max(2000).optional() })
+export const editProblemSchema = z.object({ name: nameSchema.optional(), note: textSchema(2000).optional() })
 
 export const coefficientsQuerySchema = z.object({
   form: formSchema.optional(),

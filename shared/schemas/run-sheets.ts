@@ -1,6 +1,6 @@
 import { z } from 'zod'
 import type { HistogramBin, Person } from './common'
-import { idSchema, nameSchema, seedSchema } from './common'
+import { idSchema, nameSchema, seedSchema, textSchema } from './common'
 
 const positive = z.number().positive().max(1e9)
 
@@ -43,8 +43,8 @@ export const editRunSheetSchema = z.object({
 })
 export type EditRunSheet = z.infer<typeof editRunSheetSchema>
 
-export const remarkSchema = z.object({ remark: z.string().trim().max(2000).default('') })
-export const sendBackSchema = z.object({ remark: z.string().trim().min(1, 'say what should change').max(2000) })
+export const remarkSchema = z.object({ remark: textSchema(2000).default('') })
+export const sendBackSchema = z.object({ remark: textSchema(2000).min(1, 'say what should change') })
 
 export const rehearseSchema = z.object({
   reads: z.number().int().min(1).max(100_000).default(1000),

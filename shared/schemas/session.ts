@@ -1,5 +1,6 @@
 import { z } from 'zod'
 import type { Role } from './common'
+import { textSchema } from './common'
 
 export const emailSchema = z
   .string()
@@ -13,8 +14,8 @@ export const signInSchema = z.object({ email: emailSchema, password: z.string().
 /** First account of a new installation; the code is printed on the server's console. */
 export const setupSchema = z.object({
   code: z.string().trim().min(1, 'copy the code from the server’s console').max(40),
-  workspace: z.string().trim().min(1, 'give the workspace a name').max(80),
-  name: z.string().trim().min(1, 'give your name').max(80),
+  workspace: textSchema(80).min(1, 'give the workspace a name'),
+  name: textSchema(80).min(1, 'give your name'),
   email: emailSchema,
   password: z.string().min(10, 'a password has at least 10 characters').max(200),
 })

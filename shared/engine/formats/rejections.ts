@@ -2,6 +2,9 @@ import type { RejectedLine } from './format'
 
 const DEFAULTS = { kept: 100, textLength: 200 }
 
+/** Databases store neither U+0000 nor the half of a character that a cut may leave. */
+const storable = (text: string): string => text.replace(/\0|\p{Cs}/gu, '\uFFFD')
+
 /** Collects rejected lines: the first 100 with their text, all of them counted. */
 export class Rejections {
   readonly lines: RejectedLine[] = []
@@ -10,7 +13,8 @@ export class Rejections {
   add(text: string, start: number, end: number, line: number, reason: string): void {
     this.count++
     if (this.lines.length >= DEFAULTS.kept) return
-    const shown = text.slice(start, Math.min(end, start + DEFAULTS.textLength))
-    this.lines.push({ line, text: end - start > DEFAULTS.textLength ? `${shown}…` : shown, reason })
+    const cut = end - start > DEFAULTS.textLength
+    const shown = text.slice(start, cut ? start + DEFAULTS.textLength : end)
+    this.lines.push({ line, text: storable(cut ? `${shown}…` : shown), reason: storable(reason) })
   }
 }
