@@ -60,9 +60,8 @@ export function useChainFindings(
       $fetch<ProgrammedView>(`/api/run-sheets/${id}/programmed`).catch(() => null),
     ])
     const ready = runSheet?.returns.filter(({ status }) => status === 'ready').sort((a, b) => b.number - a.number)[0]
-    const newest = ready ? `/api/returns/${ready.id}` : null
-    const samples =
-      asked.value?.runSheet.id === id ? asked.value : newest && (await $fetch<ReturnView>(newest).catch(() => null))
+    const shown = asked.value?.runSheet.id === id ? asked.value : null
+    const samples = shown ?? (ready ? await $fetch<ReturnView>(`/api/returns/${ready.id}`).catch(() => null) : null)
     if (sheetId.value === id) findings.value = runSheet ? markRaw({ runSheet, samples, programmed }) : null
   }
   onMounted(async () => {
