@@ -71,11 +71,14 @@ export function layoutInput({ ising, embedding, machine }: Bench, settings: RunS
   return { ising, embedding, machine: machine.graph, fieldSplit, chainCouplers, interactionCouplers }
 }
 
-function ruleOf(strength: Strength, labels: readonly string[]): StrengthRule {
+/** The engine's rule for a strength as entered. @throws DomainError for variables that are unknown or have no strength */
+export function ruleOf(strength: Strength, labels: readonly string[]): StrengthRule {
   const { rule, value, perChain } = strength
-  if (rule === 'fixed' || rule === 'rms') return { rule, value: value ?? RULE_DEFAULTS[rule] }
-  if (rule === 'choi' || rule === 'cut') return { rule, value: value ?? RULE_DEFAULTS[rule] }
-  const unknown = Object.keys(perChain ?? {}).filter((label) => !labels.includes(label))
+  if (rule !== 'manual') return { rule, value: value ?? RULE_DEFAULTS[rule] }
+  const known = new Set(labels)
+  const unknown = Object.keys(perChain ?? {}).filter((label) => !known.has(label))
+  // A label may be the name of something that every object has, such as constructor.
+  const given = labels.map((label) => (perChain && Object.hasOwn(perChain, label) ? perChain[label]! : null))
   if (unknown.length > 0)
     throw new DomainError(
       'not acceptable',
@@ -83,18 +86,14 @@ function ruleOf(strength: Strength, labels: readonly string[]): StrengthRule {
       `The problem has no variable ${unknown.slice(0, 5).join(', ')}.`,
       [{ path: 'strength.perChain', message: 'unknown variable' }],
     )
-  if (value === undefined && labels.some((label) => perChain?.[label] === undefined))
+  if (value === undefined && given.includes(null))
     throw new DomainError(
       'not acceptable',
       'strength.value',
       'A manual strength needs a value, or one for every variable.',
       [{ path: 'strength.value', message: 'missing' }],
     )
-  return {
-    rule,
-    value: value ?? 0,
-    perChain: labels.map((label) => (perChain && Object.hasOwn(perChain, label) ? perChain[label]! : null)),
-  }
+  return { rule, value: value ?? 0, perChain: given }
 }
 
 function strengthsOf(strength: Strength, bench: Bench, input: LayoutInput) {

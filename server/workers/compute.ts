@@ -12,7 +12,7 @@ export interface RunOptions<N extends TaskName> {
 
 /** Runs engine work off the main thread. */
 export interface Compute {
-  /** How many tasks run at the same time. */
+  /** How many tasks of background jobs run at the same time. */
   readonly threads: number
   run<N extends TaskName>(name: N, input: TaskInput<N>, options?: RunOptions<N>): Promise<TaskOutput<N>>
   close(): Promise<void>
@@ -27,19 +27,22 @@ export interface ThreadMessage {
   cancel: SharedArrayBuffer
 }
 
+/** Tasks of background jobs. They may hold a thread for an hour, so what a person waits for has threads of its own. */
+const LONG: ReadonlySet<TaskName> = new Set<TaskName>(['search', 'rehearse'])
+
 /**
- * A pool of worker threads over the bundled thread entry.
+ * Two pools of worker threads over the bundled thread entry, each opened at its first use: long tasks, and the others.
  * @param workersFolder answers the folder that holds thread.mjs; asked at first use, when the final paths are known
  */
 export function createCompute(workersFolder: () => string, threads = availableParallelism()): Compute {
-  let pool: Piscina | undefined
-  const open = (): Piscina =>
-    (pool ??= new Piscina({
-      filename: join(workersFolder(), 'thread.mjs'),
-      minThreads: 1,
-      maxThreads: threads,
-      idleTimeout: 60_000,
-    }))
+  const pools = new Map<boolean, Piscina>()
+  const poolFor = (name: TaskName): Piscina => {
+    const long = LONG.has(name)
+    const filename = join(workersFolder(), 'thread.mjs')
+    const pool = pools.get(long) ?? new Piscina({ filename, minThreads: 1, maxThreads: threads, idleTimeout: 60_000 })
+    pools.set(long, pool)
+    return pool
+  }
   return {
     threads,
     async run(name, input, options = {}) {
@@ -50,15 +53,15 @@ export function createCompute(workersFolder: () => string, threads = availablePa
       const { port1, port2 } = new MessageChannel()
       port1.on('message', (progress) => options.onProgress?.(progress))
       try {
-        return await open().run({ name, input, port: port2, cancel }, { transferList: [port2] })
+        return await poolFor(name).run({ name, input, port: port2, cancel }, { transferList: [port2] })
       } finally {
         options.signal?.removeEventListener('abort', stop)
         port1.close()
       }
     },
     async close() {
-      await pool?.destroy()
-      pool = undefined
+      await Promise.all([...pools.values()].map((pool) => pool.destroy()))
+      pools.clear()
     },
   }
 }
