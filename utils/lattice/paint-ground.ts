@@ -22,6 +22,9 @@ export const GROUND_DEFAULTS = {
   dotsFrom: 2.2,
 }
 
+/** Without chains the machine itself is the figure and is drawn more firmly. */
+const isBare = (used: Uint8Array): boolean => !used.includes(1)
+
 /** Paints the part of the ground that falls on a canvas of the given size in pixels. */
 export function paintGround(ctx: CanvasRenderingContext2D, ground: Ground, view: View, width: number, height: number) {
   ctx.clearRect(0, 0, width, height)
@@ -41,7 +44,7 @@ function paintSegments(
   ctx.beginPath()
   for (let q = 0; q < data.usable.length; q++)
     if (data.usable[q] && !used[q]) traceSegment(ctx, data.segments, q, view, width, height)
-  ctx.strokeStyle = tokens.hair
+  ctx.strokeStyle = isBare(used) ? tokens.rule : tokens.hair
   ctx.lineWidth = Math.min(1.2, Math.max(0.5, view.scale / 6))
   ctx.stroke()
   ctx.lineWidth = Math.max(0.7, SCENE_DEFAULTS.tailWidth * bandWidth(view.scale))
@@ -112,7 +115,8 @@ function paintDots(
   height: number,
 ) {
   if (scale < GROUND_DEFAULTS.dotsFrom) return
-  const radius = Math.min(2, Math.max(0.7, 0.14 * scale))
+  const bare = isBare(used)
+  const radius = Math.min(2, Math.max(bare ? 1.1 : 0.7, 0.14 * scale))
   ctx.beginPath()
   for (let q = 0; q < data.usable.length; q++) {
     if (!data.usable[q] || used[q]) continue
@@ -122,7 +126,7 @@ function paintDots(
     ctx.moveTo(px + radius, py)
     ctx.arc(px, py, radius, 0, 2 * Math.PI)
   }
-  ctx.globalAlpha = Math.min(0.85, 0.35 + scale / 26)
+  ctx.globalAlpha = bare ? 0.9 : Math.min(0.85, 0.35 + scale / 26)
   ctx.fillStyle = tokens.edge
   ctx.fill()
   ctx.globalAlpha = 1
