@@ -1,7 +1,9 @@
 import { DomainError } from '../../shared/errors'
 import type { JobView } from '../../shared/schemas/jobs'
 import type { Actor, App } from '../app'
-import { cancelWaitingJob, findJob, jobView, requestCancel } from '../database/repositories/jobs'
+import type { Db } from '../database/client'
+import type { Deleted } from '../database/repositories/jobs'
+import { cancelJobsOf, cancelWaitingJob, findJob, jobView, requestCancel } from '../database/repositories/jobs'
 import type { JobKindHandler } from '../jobs/kind'
 
 async function jobRow(app: App, actor: Actor, id: string) {
@@ -31,4 +33,10 @@ export async function cancelJob(
   })
   if (!ended) await requestCancel(app.db, id)
   return jobOf(app, actor, id)
+}
+
+/** Clears away what a deletion left, in its transaction: blobs, and jobs still at work on what is gone. */
+export async function clearAway(app: App, tx: Db, { blobIds, subjectIds }: Deleted): Promise<void> {
+  await cancelJobsOf(tx, subjectIds, app.now())
+  await app.blobs.remove(tx, blobIds)
 }

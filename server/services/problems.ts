@@ -19,6 +19,7 @@ import { pageOf, positionOf } from '../database/repositories/pages'
 import type { ProblemRow } from '../database/repositories/problems'
 import { deleteProblem, findProblem, listProblems, personOf, updateProblem } from '../database/repositories/problems'
 import { returnsOfRunSheets, runSheetsOfEmbeddings } from '../database/repositories/run-sheets'
+import { clearAway } from './jobs'
 import type { ProblemData } from './problem-data'
 import { unpackProblem } from './problem-data'
 import { signed, signOf } from './sense'
@@ -146,7 +147,7 @@ export async function editProblem(
 /** Deletes a problem with its embeddings, run sheets and samples. */
 export async function removeProblem(app: App, actor: Actor, id: string): Promise<void> {
   const row = await problemRow(app, actor, id)
-  await app.db.transaction(async (tx) => app.blobs.remove(tx, await deleteProblem(tx, row)))
+  await app.db.transaction(async (tx) => clearAway(app, tx, await deleteProblem(tx, row)))
 }
 
 /** Rows of both forms side by side, in the problem's own sense. */

@@ -30,6 +30,7 @@ import {
   updateRunSheet,
 } from '../database/repositories/run-sheets'
 import { embeddingRow } from './embeddings'
+import { clearAway } from './jobs'
 import type { Bench, Programming } from './programming'
 import { checksOf } from './run-sheet-checks'
 import { compareRules, fingerprintOf, loadBench, precisionOf, programmeBench, requireProgrammed } from './programming'
@@ -123,7 +124,7 @@ export async function removeRunSheet(app: App, actor: Actor, id: string): Promis
       'run-sheet.kept',
       `RS-${row.number} is ${row.state} and is kept. Only drafts can be deleted.`,
     )
-  await app.db.transaction(async (tx) => app.blobs.remove(tx, await deleteRunSheet(tx, id)))
+  await app.db.transaction(async (tx) => clearAway(app, tx, await deleteRunSheet(tx, id)))
 }
 
 export async function runSheetsOf(app: App, actor: Actor, query: PageQuery): Promise<Page<RunSheetItem>> {

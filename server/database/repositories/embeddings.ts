@@ -22,8 +22,14 @@ export async function findEmbeddingOfJob(db: Db, id: string): Promise<EmbeddingR
   return (await db.select().from(embeddings).where(eq(embeddings.id, id)))[0]
 }
 
-export async function updateEmbedding(db: Db, id: string, set: Partial<typeof embeddings.$inferInsert>): Promise<void> {
-  await db.update(embeddings).set(set).where(eq(embeddings.id, id))
+/** False when the embedding was deleted meanwhile. */
+export async function updateEmbedding(
+  db: Db,
+  id: string,
+  set: Partial<typeof embeddings.$inferInsert>,
+): Promise<boolean> {
+  const rows = await db.update(embeddings).set(set).where(eq(embeddings.id, id)).returning({ id: embeddings.id })
+  return rows.length === 1
 }
 
 /** Embeddings of several problems with the machine's name, newest first. */

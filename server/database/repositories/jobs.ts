@@ -128,6 +128,29 @@ export async function requestCancel(db: Db, id: string): Promise<void> {
   await db.update(jobs).set({ cancelRequested: true }).where(eq(jobs.id, id))
 }
 
+/** What a deletion leaves to be cleared away. */
+export interface Deleted {
+  /** Blobs that nothing refers to any more. */
+  blobIds: string[]
+  /** Embeddings and returns that are gone; jobs may still be at work on them. */
+  subjectIds: string[]
+}
+
+/** Ends the jobs of subjects that were deleted: those that wait at once, those that run at their next heartbeat. */
+export async function cancelJobsOf(db: Db, subjectIds: readonly string[], at: Date): Promise<void> {
+  if (subjectIds.length === 0) return
+  const concerned = inArray(jobs.subjectId, [...subjectIds])
+  const message = 'cancelled: what it worked on was deleted'
+  await db
+    .update(jobs)
+    .set({ status: 'cancelled', cancelRequested: true, message, finishedAt: at })
+    .where(and(concerned, eq(jobs.status, 'waiting')))
+  await db
+    .update(jobs)
+    .set({ cancelRequested: true })
+    .where(and(concerned, eq(jobs.status, 'running')))
+}
+
 /** Gives a running job back to the queue without counting the attempt, as at an orderly shutdown. */
 export async function handBackJob(db: Db, id: string, worker: string): Promise<void> {
   await db

@@ -1,5 +1,6 @@
 import { and, desc, eq } from 'drizzle-orm'
 import type { Db } from '../client'
+import type { Deleted } from './jobs'
 import { embeddings, problems, returns, runSheets, users } from '../schema'
 
 export type ProblemRow = typeof problems.$inferSelect
@@ -35,20 +36,24 @@ export async function updateProblem(
   await db.update(problems).set(set).where(eq(problems.id, id))
 }
 
-/** Deletes a problem with everything built on it; answers the blobs that nothing refers to any more. */
-export async function deleteProblem(db: Db, row: ProblemRow): Promise<string[]> {
+/** Deletes a problem with everything built on it. */
+export async function deleteProblem(db: Db, row: ProblemRow): Promise<Deleted> {
   const chains = await db
-    .select({ id: embeddings.chainsBlobId })
+    .select({ id: embeddings.id, blobId: embeddings.chainsBlobId })
     .from(embeddings)
     .where(eq(embeddings.problemId, row.id))
   const samples = await db
-    .select({ id: returns.samplesBlobId })
+    .select({ id: returns.id, blobId: returns.samplesBlobId })
     .from(returns)
     .innerJoin(runSheets, eq(runSheets.id, returns.runSheetId))
     .innerJoin(embeddings, eq(embeddings.id, runSheets.embeddingId))
     .where(eq(embeddings.problemId, row.id))
   await db.delete(problems).where(eq(problems.id, row.id))
-  return [row.dataBlobId, ...[...chains, ...samples].flatMap(({ id }) => (id ? [id] : []))]
+  const built = [...chains, ...samples]
+  return {
+    blobIds: [row.dataBlobId, ...built.flatMap(({ blobId }) => blobId ?? [])],
+    subjectIds: built.map(({ id }) => id),
+  }
 }
 
 /** A person's name as shown beside what they did. */

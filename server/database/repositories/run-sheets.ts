@@ -1,5 +1,6 @@
 import { and, asc, desc, eq, inArray, ne } from 'drizzle-orm'
 import type { Db } from '../client'
+import type { Deleted } from './jobs'
 import { embeddings, machines, problems, returns, runSheetRemarks, runSheets, users } from '../schema'
 
 export type RunSheetRow = typeof runSheets.$inferSelect
@@ -60,10 +61,14 @@ export async function updateRunSheet(
   return rows.length === 1
 }
 
-export async function deleteRunSheet(db: Db, id: string): Promise<string[]> {
-  const samples = await db.select({ id: returns.samplesBlobId }).from(returns).where(eq(returns.runSheetId, id))
+/** Deletes a run sheet with its returns. */
+export async function deleteRunSheet(db: Db, id: string): Promise<Deleted> {
+  const rows = await db
+    .select({ id: returns.id, blobId: returns.samplesBlobId })
+    .from(returns)
+    .where(eq(returns.runSheetId, id))
   await db.delete(runSheets).where(eq(runSheets.id, id))
-  return samples.flatMap((row) => (row.id ? [row.id] : []))
+  return { blobIds: rows.flatMap(({ blobId }) => blobId ?? []), subjectIds: rows.map((row) => row.id) }
 }
 
 export async function insertRemark(db: Db, row: typeof runSheetRemarks.$inferInsert): Promise<void> {
@@ -97,8 +102,10 @@ export async function findReturnOfJob(db: Db, id: string): Promise<ReturnRow | u
   return (await db.select().from(returns).where(eq(returns.id, id)))[0]
 }
 
-export async function updateReturn(db: Db, id: string, set: Partial<typeof returns.$inferInsert>): Promise<void> {
-  await db.update(returns).set(set).where(eq(returns.id, id))
+/** False when the return was deleted meanwhile. */
+export async function updateReturn(db: Db, id: string, set: Partial<typeof returns.$inferInsert>): Promise<boolean> {
+  const rows = await db.update(returns).set(set).where(eq(returns.id, id)).returning({ id: returns.id })
+  return rows.length === 1
 }
 
 /** Returns of several run sheets, newest first. */

@@ -12,6 +12,8 @@ import type { App } from '../../app'
 import type { JobContext, JobKindHandler, JobOutcome } from '../kind'
 
 const SHOWN = 50
+/** Thrown while saving, it also takes back the adoption of what was written. */
+const DELETED = 'the embedding or its problem was deleted meanwhile'
 
 interface Inputs {
   row: EmbeddingRow
@@ -24,7 +26,7 @@ export const embeddingJob: JobKindHandler = {
   async run(app, context) {
     const row = await findEmbeddingOfJob(app.db, context.job.subjectId)
     const problem = row && (await findProblem(app.db, row.workspaceId, row.problemId))
-    if (!row || !problem) throw new Error('the embedding or its problem was deleted meanwhile')
+    if (!row || !problem) throw new Error(DELETED)
     const { labels, problem: coefficients } = await problemData(app, problem)
     const machine = await calibratedMachine(app, row, row.machineId, row.calibration)
     const { seed, tries, timeLimitSeconds } = row
@@ -74,7 +76,7 @@ async function found(
     message: `found: longest chain ${stats!.chainLength.max}, ${stats!.qubitsUsed} qubits, try ${result.tryNumber} of ${result.tries}${early}`,
     async save(tx) {
       await app.blobs.adopt(tx, chainsBlobId)
-      await updateEmbedding(tx, row.id, {
+      const kept = await updateEmbedding(tx, row.id, {
         status: 'found',
         chainsBlobId,
         fingerprint,
@@ -83,6 +85,7 @@ async function found(
         unmet: null,
         reason: null,
       })
+      if (!kept) throw new Error(DELETED)
     },
   }
 }
@@ -103,13 +106,14 @@ async function notFound(app: App, inputs: Inputs, result: SearchResult, context:
     message: reason,
     async save(tx) {
       if (chainsBlobId) await app.blobs.adopt(tx, chainsBlobId)
-      await updateEmbedding(tx, row.id, {
+      const kept = await updateEmbedding(tx, row.id, {
         status: cancelled ? 'cancelled' : 'none found',
         chainsBlobId,
         unmet,
         reason,
         seconds: result.seconds,
       })
+      if (!kept) throw new Error(DELETED)
     },
   }
 }

@@ -13,6 +13,8 @@ import type { JobContext, JobKindHandler } from '../kind'
 
 /** Blocks per thread: small enough to show progress and share the load, large enough to be worth a message. */
 const BLOCKS_PER_THREAD = 4
+/** Thrown while saving, it also takes back the adoption of what was written. */
+const DELETED = 'the run sheet or its embedding was deleted meanwhile'
 
 /** Anneals the programmed problem over the worker threads and stores the samples. */
 export const rehearsalJob: JobKindHandler = {
@@ -20,7 +22,7 @@ export const rehearsalJob: JobKindHandler = {
     const row = await findReturnOfJob(app.db, context.job.subjectId)
     const sheet = row && (await runSheetOfReturn(app, row))
     const embedding = sheet && (await findEmbeddingOfJob(app.db, sheet.embeddingId))
-    if (!row || !embedding) throw new Error('the run sheet or its embedding was deleted meanwhile')
+    if (!row || !embedding) throw new Error(DELETED)
     const started = performance.now()
     const bench = await loadBench(app, embedding)
     const programmed = requireProgrammed(programmeBench(bench, row.settings))
@@ -45,7 +47,7 @@ export const rehearsalJob: JobKindHandler = {
       message: cancelled ? `cancelled; ${reads} reads were complete and are kept` : `${reads} reads`,
       async save(tx) {
         if (samplesBlobId) await app.blobs.adopt(tx, samplesBlobId)
-        await updateReturn(tx, row.id, {
+        const kept = await updateReturn(tx, row.id, {
           status,
           samplesBlobId,
           reads,
@@ -53,6 +55,7 @@ export const rehearsalJob: JobKindHandler = {
           ...figures,
           reason: cancelled ? `Cancelled after ${reads} reads.` : null,
         })
+        if (!kept) throw new Error(DELETED)
       },
     }
   },
