@@ -2,6 +2,7 @@ import { randomBytes } from 'node:crypto'
 import { existsSync, mkdirSync, readFileSync, writeFileSync } from 'node:fs'
 import { availableParallelism } from 'node:os'
 import { dirname, join } from 'node:path'
+import { DEMO_ACCOUNTS, DEMO_PASSWORD } from '../../shared/demo-accounts'
 import { seedDemo } from '../services/demo/seed'
 import { setupCode } from '../services/people'
 import type { StartedApp } from '../start'
@@ -34,6 +35,16 @@ function stop(message: string): never {
   process.exit(1)
 }
 
+/** Says where to go, once everything is open and, in the demo, filled. */
+function announce(demo: boolean): void {
+  const { NITRO_HOST, HOST, NITRO_PORT, PORT } = process.env
+  const host = NITRO_HOST || HOST || 'localhost'
+  console.log(`\nEspalier is ready: http://${host === '0.0.0.0' ? 'localhost' : host}:${NITRO_PORT || PORT || 3000}`)
+  if (!demo) return
+  console.log(`Demo accounts, password ${DEMO_PASSWORD}:`)
+  for (const { email, roles } of DEMO_ACCOUNTS) console.log(`  ${email.padEnd(32)}${roles.join(', ')}`)
+}
+
 /** Opens everything, then either seeds the demo or prints the code for the first account. */
 async function boot(): Promise<StartedApp> {
   const demo = process.env.DEMO === 'true'
@@ -48,6 +59,7 @@ async function boot(): Promise<StartedApp> {
   })
   if (demo) await seedDemo(started.app, PASSWORDS)
   const code = await setupCode(started.app)
+  announce(demo)
   if (code)
     console.log(
       `\nNo account exists yet. Open /setup and create the owner's account with this one-time code: ${code}\n`,

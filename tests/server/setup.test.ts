@@ -12,6 +12,7 @@ afterEach(() => server?.stop())
 it('lets the first visitor create the owner with the code on the console, once', async () => {
   server = await startServer({ ...SESSION, DATA_DIR: temporaryFolder() })
   const code = await until(() => /one-time code: (\S+)/.exec(server!.output())?.[1], 10, 'the code')
+  expect(server.output()).toContain(`Espalier is ready: ${server.url}`)
   const visitor = new Client(server.url)
   expect((await visitor.get('/api/entrance')).body).toEqual({ setupNeeded: true, demo: false, workspace: null })
   const person = { workspace: 'Test works', name: 'Ann', email: 'Ann@Example.org', password: 'long enough a password' }
