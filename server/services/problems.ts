@@ -1,7 +1,5 @@
 import type { z } from 'zod'
-import { energyOf } from '../../shared/engine/problem/energy'
 import { convertForm } from '../../shared/engine/problem/convert'
-import { writeProblem } from '../../shared/engine/formats'
 import { DomainError } from '../../shared/errors'
 import type { Page, PageQuery } from '../../shared/schemas/common'
 import type {
@@ -191,52 +189,69 @@ export async function termsOf(
   }
 }
 
+const MAX_DENSE_VARIABLES = 5000
+
 /** The problem as a file, in either form; the offset, the sense and the labels travel in it. */
 export async function coefficientsOf(
   app: App,
   actor: Actor,
   id: string,
   query: z.infer<typeof coefficientsQuerySchema>,
-): Promise<{ fileName: string; text: string }> {
+): Promise<{ fileName: string; bytes: Uint8Array }> {
   const row = await problemRow(app, actor, id)
-  const data = await problemData(app, row)
+  if (query.format === 'dense' && row.variables > MAX_DENSE_VARIABLES)
+    throw new DomainError(
+      'not acceptable',
+      'coefficients.dense',
+      `A dense matrix has at most ${MAX_DENSE_VARIABLES} variables, this problem has ${row.variables}. Take the coefficient list.`,
+    )
   const form = query.form ?? row.form
-  const problem = convertForm(data.problem, data.form, form)
-  const text = writeProblem(query.format === 'dense' ? 'dense-csv' : 'coefficients', {
+  const { bytes } = await app.compute.run('writeProblemFile', {
+    stored: await problemData(app, row),
     form,
-    labels: data.labels,
-    problem,
+    format: query.format === 'dense' ? 'dense-csv' : 'coefficients',
     sense: row.sense,
   })
-  return { fileName: `P-${row.number}-${form}.csv`, text }
+  return { fileName: `P-${row.number}-${form}.csv`, bytes }
 }
 
+/** Terms summed in one request: some seconds of a thread. */
+const MAX_TERMS = 1e9
+
+type EnergyRequest = z.infer<typeof energyRequestSchema>
+
 /** Energies of states in either alphabet, offset included, in the problem's own sense. */
-export async function energiesOf(
-  app: App,
-  actor: Actor,
-  id: string,
-  request: z.infer<typeof energyRequestSchema>,
-): Promise<number[]> {
+export async function energiesOf(app: App, actor: Actor, id: string, request: EnergyRequest): Promise<number[]> {
   const row = await problemRow(app, actor, id)
-  const data = await problemData(app, row)
-  const problem = convertForm(data.problem, data.form, request.form)
-  const allowed = request.form === 'qubo' ? [0, 1] : [-1, 1]
+  const most = Math.max(1, Math.floor(MAX_TERMS / (row.variables + row.interactions)))
+  if (request.states.length > most)
+    throw new DomainError('too large', 'energy.states', `Send at most ${most} states of this problem at a time.`)
+  const states = packStates(request, row.variables)
+  const { form: from, problem } = await problemData(app, row)
+  const energies = await app.compute.run('energies', { problem, from, form: request.form, states })
   const sign = signOf(row.sense)
-  return request.states.map((state, k) => {
-    if (state.length !== problem.n)
+  return Array.from(energies, (energy) => signed(sign, energy))
+}
+
+/** The states one after the other. @throws DomainError naming the first state and place that do not fit */
+export function packStates({ form, states }: EnergyRequest, variables: number): Int8Array {
+  const [low, high] = form === 'qubo' ? [0, 1] : [-1, 1]
+  const packed = new Int8Array(states.length * variables)
+  states.forEach((state, k) => {
+    if (state.length !== variables)
       throw new DomainError(
         'not acceptable',
         'energy.length',
-        `State ${k} has ${state.length} values; the problem has ${problem.n} variables.`,
+        `State ${k} has ${state.length} values; the problem has ${variables} variables.`,
       )
-    const bad = state.findIndex((value) => !allowed.includes(value))
+    const bad = state.findIndex((value) => value !== low && value !== high)
     if (bad >= 0)
       throw new DomainError(
         'not acceptable',
         'energy.value',
-        `State ${k} has the value ${state[bad]} at place ${bad}; a ${request.form} state holds ${allowed.join(' and ')}.`,
+        `State ${k} has the value ${state[bad]} at place ${bad}; a ${form} state holds ${low} and ${high}.`,
       )
-    return signed(sign, energyOf(problem, state))
+    packed.set(state, k * variables)
   })
+  return packed
 }

@@ -39,7 +39,7 @@ export async function programmedFile(
       fileName: `RS-${row.number}-programmed.csv`,
       text: `# ${note}\n# equal numbers: field h; otherwise coupling J\na,b,value\n${entries.map((entry) => `${entry.join(',')}\n`).join('')}`,
     }
-  const side = Math.max(0, ...fields.map(([number]) => number)) + 1
+  const side = fields.reduce((most, [number]) => Math.max(most, number), 0) + 1
   const lines = entries.map(([a, b, value]) => `${Math.max(a, b) + 1} ${Math.min(a, b) + 1} ${value}\n`)
   return {
     fileName: `RS-${row.number}-programmed.mtx`,

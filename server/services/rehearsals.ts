@@ -1,6 +1,8 @@
 import { randomUUID } from 'node:crypto'
 import type { z } from 'zod'
 import { ANNEAL_DEFAULTS } from '../../shared/engine/sampling/anneal'
+import { strideOf } from '../../shared/engine/sampling/samples'
+import { DomainError } from '../../shared/errors'
 import type { rehearseSchema } from '../../shared/schemas/run-sheets'
 import type { Actor, App } from '../app'
 import { nextNumber } from '../database/repositories/counters'
@@ -19,6 +21,19 @@ export interface RehearsalSettings extends Record<string, string | number | bool
   seed: number
 }
 
+/** What the samples of one rehearsal may take, a bit a qubit and read: as much as an upload of samples. */
+const MAX_SAMPLE_BYTES = 256 * 2 ** 20
+
+/** @throws DomainError when the samples would be more than memory should hold */
+export function requireRoom(reads: number, qubits: number): void {
+  const most = Math.floor(MAX_SAMPLE_BYTES / strideOf(qubits))
+  if (reads <= most) return
+  const message = `at most ${most} reads of ${qubits} qubits can be kept`
+  throw new DomainError('not acceptable', 'rehearsal.size', `This rehearsal is too large: ${message}.`, [
+    { path: 'reads', message },
+  ])
+}
+
 /** Queues a rehearsal of the run sheet as it stands now. */
 export async function startRehearsal(
   app: App,
@@ -27,7 +42,8 @@ export async function startRehearsal(
   input: z.infer<typeof rehearseSchema>,
 ): Promise<{ returnId: string; jobId: string }> {
   const sheet = await runSheetRow(app, actor, runSheetId)
-  requireProgrammed(programmeBench(await benchOf(app, actor, sheet), sheet.settings))
+  const { qubits } = requireProgrammed(programmeBench(await benchOf(app, actor, sheet), sheet.settings))
+  requireRoom(input.reads, qubits.length)
   const made: RehearsalSettings = { ...input, temperature: input.temperature ?? ANNEAL_DEFAULTS.temperature }
   const returnId = randomUUID()
   const jobId = randomUUID()

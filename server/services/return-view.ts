@@ -1,7 +1,6 @@
 import { chainLengths } from '../../shared/engine/readout/breaks'
-import { histogram as energyHistogram } from '../../shared/engine/readout/energies'
+import { histogram as energyHistogram, weightsInBins } from '../../shared/engine/readout/energies'
 import { wilson } from '../../shared/engine/readout/intervals'
-import { writeSamplesCsv } from '../../shared/engine/readout/samples-csv'
 import { histogram } from '../../shared/engine/problem/histogram'
 import type { Programmed } from '../../shared/engine/programming/programme'
 import { DomainError } from '../../shared/errors'
@@ -37,6 +36,10 @@ const TITLES: Record<Decoding, string> = {
 const SHOWN_SOLUTIONS = 20
 const ENERGY_BINS = 36
 const PHYSICAL_BINS = 24
+/** Values by label in one answer of solutions: each takes some tens of bytes on the way out. */
+const MAX_VALUES = 4_000_000
+/** Cells of a samples file: three characters each, below the longest text there can be. */
+const MAX_CELLS = 150_000_000
 
 const proportion = (count: number, total: number): Proportion => ({
   count,
@@ -217,15 +220,16 @@ async function energiesView(
   )
   // The first histogram fixes bins that hold every value; each series is then counted into them.
   const { start, step, counts } = energyHistogram(values, new Uint32Array(values.length).fill(1), ENERGY_BINS)
-  const series: EnergySeries[] = all.map((entry) => {
-    const bins = new Array<number>(counts.length).fill(0)
-    entry.energies.forEach(
-      (energy, k) =>
-        (bins[Math.min(bins.length - 1, Math.floor(signed(sign, energy) / step) - Math.floor(start / step))]! +=
-          entry.counts[k]!),
-    )
-    return { title: nameOf(entry.row), returnId: entry.row.id, reads: readsIn(entry), counts: bins }
-  })
+  const series: EnergySeries[] = all.map((entry) => ({
+    title: nameOf(entry.row),
+    returnId: entry.row.id,
+    reads: readsIn(entry),
+    counts: weightsInBins(
+      entry.energies.map((energy) => signed(sign, energy)),
+      entry.counts,
+      { start, step, bins: counts.length },
+    ),
+  }))
   const { best, bestCount, mean, median } = decodingRow(bench, shown)
   return { best: best!, bestCount, mean: mean!, median: median!, start, width: step, series }
 }
@@ -252,18 +256,34 @@ export async function solutionsOf(
 ): Promise<SolutionRow[]> {
   const row = await readyRow(app, actor, id)
   const { bench, summary } = await load(app, actor, row, [decode], limit)
-  return solutionRows(bench, summary.decoded[0]!)
+  const most = Math.max(1, Math.floor(MAX_VALUES / bench.ising.n))
+  const shown = summary.decoded[0]!
+  if (shown.solutions.length > most)
+    throw new DomainError('too large', 'solutions.size', `Ask for at most ${most} solutions of this problem (limit).`)
+  return solutionRows(bench, shown)
 }
 
 /** The raw samples as CSV: a header of qubit numbers, one line a row, with counts. */
-export async function samplesFile(app: App, actor: Actor, id: string): Promise<{ fileName: string; text: string }> {
+export async function samplesFile(
+  app: App,
+  actor: Actor,
+  id: string,
+): Promise<{ fileName: string; bytes: Uint8Array }> {
   const row = await readyRow(app, actor, id)
   const sheet = await runSheetRow(app, actor, row.runSheetId)
   const bench = await benchOf(app, actor, sheet)
   const { qubits } = requireProgrammed(programmeBench(bench, row.settings))
   const samples = unpackSamples(await app.blobs.read(row.samplesBlobId!))
-  const ids = Array.from(qubits, (q) => bench.machine.fabric.ids[q]!)
-  return { fileName: `RS-${sheet.number}-${row.source}-${row.number}.csv`, text: writeSamplesCsv(samples, ids) }
+  const { rows, width } = samples
+  if (rows * (width + 1) > MAX_CELLS)
+    throw new DomainError(
+      'too large',
+      'samples.size',
+      `${rows} rows of ${width} qubits are too much for one CSV file. Rehearse with fewer reads to take the samples out.`,
+    )
+  const qubitIds = Array.from(qubits, (q) => bench.machine.fabric.ids[q]!)
+  const { bytes } = await app.compute.run('writeSamplesFile', { samples, qubitIds })
+  return { fileName: `RS-${sheet.number}-${row.source}-${row.number}.csv`, bytes }
 }
 
 async function readyRow(app: App, actor: Actor, id: string): Promise<ReturnRow> {

@@ -31,18 +31,20 @@ interface Given {
   programmed: Programmed
   ising: Problem
   sense: 'min' | 'max'
+  /** Of the coins that settle ties: the run sheet's, as wherever the samples are shown. */
+  seed: number
 }
 
 /** The figures kept with a return for lists: reads with a break, and the best majority-decoded energy. */
 export async function figuresOf(
   app: App,
-  { samples, programmed, ising, sense }: Given,
+  { samples, programmed, ising, sense, seed }: Given,
 ): Promise<{ readsWithBreak: number; best: number }> {
   const summary = await app.compute.run('summarise', {
     samples,
     programmed,
     ising,
-    seed: 0,
+    seed,
     methods: ['majority'],
     solutions: 1,
   })
@@ -80,10 +82,13 @@ export async function uploadReturn(
       reading.issues,
     )
   const samplesBlobId = await app.blobs.write(packSamples(samples))
-  const figures = await figuresOf(app, { samples, programmed, ising: bench.ising, sense: bench.problem.sense })
+  const { ising, problem } = bench
+  const given = { samples, programmed, ising, sense: problem.sense, seed: sheet.settings.seed }
+  const figures = await figuresOf(app, given)
   const id = randomUUID()
   const now = app.now()
   const sha256 = createHash('sha256').update(file.bytes).digest('hex')
+  const machineTimeSeconds = options.machineTimeSeconds ?? null
   await app.db.transaction(async (tx) => {
     await app.blobs.adopt(tx, samplesBlobId)
     await insertReturn(tx, {
@@ -93,12 +98,7 @@ export async function uploadReturn(
       number: await nextNumber(tx, runSheetId, 'return'),
       source: 'upload',
       status: 'ready',
-      made: {
-        file: file.name,
-        sha256,
-        values: reading.valueSet,
-        machineTimeSeconds: options.machineTimeSeconds ?? null,
-      },
+      made: { file: file.name, sha256, values: reading.valueSet, machineTimeSeconds },
       settings: sheet.settings,
       samplesBlobId,
       reads: readsIn(samples),

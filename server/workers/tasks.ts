@@ -1,12 +1,24 @@
 import type { Control } from '../../shared/engine/control'
+import { energies } from './tasks/energies'
 import { search } from './tasks/search'
 import { readProblemFile } from './tasks/read-problem'
 import { readSamplesFile } from './tasks/read-samples'
 import { rehearse } from './tasks/rehearse'
 import { summarise } from './tasks/summarise'
+import { writeProblemFile } from './tasks/write-problem'
+import { writeSamplesFile } from './tasks/write-samples'
 
 /** Everything a worker thread can do: structured-cloneable input, control, structured-cloneable output. */
-export const TASKS = { readProblemFile, readSamplesFile, rehearse, search, summarise }
+export const TASKS = {
+  energies,
+  readProblemFile,
+  readSamplesFile,
+  rehearse,
+  search,
+  summarise,
+  writeProblemFile,
+  writeSamplesFile,
+}
 
 type Tasks = typeof TASKS
 export type TaskName = keyof Tasks

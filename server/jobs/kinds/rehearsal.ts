@@ -39,8 +39,8 @@ export const rehearsalJob: JobKindHandler = {
     const cancelled = context.signal.aborted
     const reads = readsIn(samples)
     const samplesBlobId = reads > 0 ? await app.blobs.write(packSamples(samples)) : null
-    const figures =
-      reads > 0 ? await figuresOf(app, { samples, programmed, ising: bench.ising, sense: bench.problem.sense }) : {}
+    const given = { samples, programmed, ising: bench.ising, sense: bench.problem.sense, seed: row.settings.seed }
+    const figures = reads > 0 ? await figuresOf(app, given) : {}
     const status = reads > 0 ? 'ready' : 'cancelled'
     return {
       status: cancelled ? 'cancelled' : 'done',

@@ -103,6 +103,21 @@ function niceStep(width: number): number {
 }
 
 /**
+ * Weight of values in each of `bins` bins of width `step` from `start`, a multiple of the step but for rounding.
+ * Every value must lie in one of them.
+ */
+export function weightsInBins(
+  values: ArrayLike<number>,
+  counts: ArrayLike<number>,
+  { start, step, bins }: { start: number; step: number; bins: number },
+): number[] {
+  const firstBin = Math.round(start / step)
+  const weights = new Array<number>(bins).fill(0)
+  for (let k = 0; k < values.length; k++) weights[Math.floor(values[k]! / step) - firstBin]! += counts[k]!
+  return weights
+}
+
+/**
  * Weighted histogram with readable bin edges, at most about `bins` bins (one more where the first edge lies below the
  * values). All values equal: one bin of width 1, or of a readable width that still tells such large values apart.
  * @throws RangeError for bins < 1, a value that is not finite or counts of another length
@@ -122,7 +137,7 @@ export function histogram(values: ArrayLike<number>, counts: ArrayLike<number>, 
   const finest = 4 * Number.EPSILON * Math.max(Math.abs(least), Math.abs(greatest))
   const step = greatest > least ? niceStep(Math.max((greatest - least) / bins, finest)) : niceStep(Math.max(1, finest))
   const firstBin = Math.floor(least / step)
-  const weights = new Array<number>(Math.floor(greatest / step) - firstBin + 1).fill(0)
-  for (let k = 0; k < values.length; k++) weights[Math.floor(values[k]! / step) - firstBin]! += counts[k]!
-  return { start: firstBin * step, step, counts: weights }
+  const start = firstBin * step
+  const filled = Math.floor(greatest / step) - firstBin + 1
+  return { start, step, counts: weightsInBins(values, counts, { start, step, bins: filled }) }
 }

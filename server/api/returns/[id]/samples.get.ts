@@ -2,6 +2,6 @@ import { samplesFile } from '../../../services/return-view'
 
 /** The raw samples as CSV, as they can be uploaded again. */
 export default defineRoute('member', async (event, { app, ...actor }) => {
-  const { fileName, text } = await samplesFile(app, actor, partOf(event, 'id'))
-  return sendFile(event, fileName, 'text/csv', text)
+  const { fileName, bytes } = await samplesFile(app, actor, partOf(event, 'id'))
+  return sendFile(event, fileName, 'text/csv', bytes)
 })

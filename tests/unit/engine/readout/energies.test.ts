@@ -5,6 +5,7 @@ import {
   histogram,
   logicalEnergies,
   physicalEnergies,
+  weightsInBins,
 } from '../../../../shared/engine/readout/energies'
 import { createRandom } from '../../../../shared/engine/random'
 import { packRows } from '../../../../shared/engine/sampling/merge'
@@ -79,6 +80,14 @@ describe('histogram', () => {
     expect(histogram([], [], 10)).toEqual({ start: 0, step: 1, counts: [] })
     expect(histogram([1e20], [2], 4).counts.reduce((a, b) => a + b)).toBe(2)
     expect(histogram([-2, -1, 0, 1, 2], [1, 1, 1, 1, 1], 5)).toEqual({ start: -2, step: 1, counts: [1, 1, 1, 1, 1] })
+  })
+
+  it('counts other values into the same bins where the first edge is rounded', () => {
+    const values = [-0.25, -0.05, 0.05]
+    const { start, step, counts } = histogram(values, [1, 1, 1], 3)
+    expect([start, step]).toEqual([-0.30000000000000004, 0.1])
+    expect(counts).toEqual([1, 0, 1, 1])
+    expect(weightsInBins([-0.25, 0.05], [2, 3], { start, step, bins: counts.length })).toEqual([2, 0, 0, 3])
   })
 
   it('throws for what it cannot bin', () => {
