@@ -43,7 +43,8 @@ export async function handOver(
       'Nobody approves a run sheet of their own. Ask another reviewer.',
     )
   const change: Partial<RunSheetRow> = { state: to, changedAt: app.now() }
-  if (step === 'submit') await refuseBroken(app, actor, row)
+  // A calibration saved since the submission may have broken the embedding.
+  if (step === 'submit' || step === 'approve') await refuseBroken(app, actor, row, step)
   if (step === 'approve')
     change.fingerprint = fingerprintOf(requireProgrammed(programmeBench(await benchOf(app, actor, row), row.settings)))
   if (step === 'approve' || step === 'sendBack') change.reviewedBy = actor.userId
@@ -61,14 +62,16 @@ export async function handOver(
   return { state: to }
 }
 
-async function refuseBroken(app: App, actor: Actor, row: RunSheetRow): Promise<void> {
+async function refuseBroken(app: App, actor: Actor, row: RunSheetRow, step: 'submit' | 'approve'): Promise<void> {
   const { checks } = await runSheetView(app, actor, row.id)
   const refused = checks.filter(({ verdict }) => verdict === 'refused')
   if (refused.length > 0)
     throw new DomainError(
       'not acceptable',
       'run-sheet.checks',
-      `${refused[0]!.what}. Mend this before submitting.`,
+      step === 'submit'
+        ? `${refused[0]!.what}. Mend this before submitting.`
+        : `${refused[0]!.what}. Send the run sheet back to have this mended.`,
       refused.map(({ what }) => ({ message: what })),
     )
 }

@@ -1,5 +1,6 @@
 import { verifyEmbedding } from '../../shared/engine/embedding/verify'
 import { interactionGraph } from '../../shared/engine/problem/interaction-graph'
+import { gaugesOutsideRanges } from '../../shared/engine/programming/gauges'
 import type { Programmed } from '../../shared/engine/programming/programme'
 import type { CheckView, RunSheetSettings, RunSheetView } from '../../shared/schemas/run-sheets'
 import type { App } from '../app'
@@ -20,6 +21,7 @@ export async function checksOf(
 ): Promise<CheckView[]> {
   return [
     rangesCheck(bench, programmed),
+    ...gaugeCheck(bench, settings, programmed),
     await embeddingCheck(app, bench),
     annealCheck(bench, settings),
     strengthCheck(bench, programming),
@@ -30,6 +32,13 @@ export async function checksOf(
 function rangesCheck({ machine }: Bench, { limitedBy, scale }: Programmed): CheckView {
   const figure = limitedBy === 'nothing' ? 'scale 1' : `scale ${Number(scale.toPrecision(3))}, limited by ${limitedBy}`
   return { verdict: 'passed', what: `Every programmed value fits ${machine.machine.name}’s ranges`, figure }
+}
+
+function gaugeCheck({ machine }: Bench, { gauges, seed }: RunSheetSettings, programmed: Programmed): CheckView[] {
+  const outside = gauges > 1 ? gaugesOutsideRanges(programmed, machine.sheet.ranges, seed, gauges) : 0
+  if (outside === 0) return []
+  const what = `${outside} of the ${gauges} gauges turn a value out of ${machine.machine.name}’s ranges`
+  return [{ verdict: 'caution', what, figure: 'asymmetric ranges: fewer gauges, or another seed' }]
 }
 
 async function embeddingCheck(app: App, { machine, row, ising, embedding }: Bench): Promise<CheckView> {

@@ -21,7 +21,7 @@ export interface RehearseInput {
 
 /**
  * Anneals one share of a rehearsal's reads, with its gauge applied before and undone after. One sign a chain: chain
- * couplings keep theirs, so an asymmetric range that allows strong chains is not left.
+ * couplings keep theirs, so strong chains stay within an asymmetric range; the run sheet's checks look at the others.
  */
 export function rehearse(input: RehearseInput, control: Control<AnnealProgress>): Samples {
   const { programmed, gauge, error, sweeps, temperature, firstRead, reads, seed } = input

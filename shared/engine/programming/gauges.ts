@@ -2,6 +2,8 @@ import { createRandom } from '../random'
 import { strideOf } from '../sampling/samples'
 import type { Samples } from '../sampling/samples'
 import type { Programmed } from './programme'
+import { excessesOf } from './ranges'
+import type { Ranges } from './ranges'
 
 /** +1 or −1 for each position of the programmed problem. */
 export type Gauge = Int8Array
@@ -51,4 +53,20 @@ export function undoGauge(samples: Samples, gauge: Gauge): Samples {
   })
   const bytes = samples.bytes.map((byte, k) => byte ^ reversed[k % stride]!)
   return { ...samples, bytes }
+}
+
+/**
+ * How many of the first `gauges` gauges of a seed, drawn a sign a chain, turn some field, interaction coupling or
+ * coupling sum out of an asymmetric range.
+ * @throws RangeError for a range that does not hold 0
+ */
+export function gaugesOutsideRanges(programmed: Programmed, ranges: Ranges, seed: number, gauges: number): number {
+  const isMirrored = ([least, greatest]: readonly [number, number]): boolean => least === -greatest
+  if (isMirrored(ranges.h) && isMirrored(ranges.J) && !ranges.couplingSum) return 0
+  let outside = 0
+  for (let number = 0; number < gauges; number++) {
+    const turned = applyGauge(programmed, drawGauge(programmed, seed, number, 'chain'))
+    if (excessesOf(turned, ranges).length > 0) outside++
+  }
+  return outside
 }

@@ -17,7 +17,15 @@ export default defineRoute('member', async (event, { app, ...actor }) => {
     sent = text
     if (OVER.has(job.status)) await stream.close()
   }
-  const looking = setInterval(() => void look().catch(() => stream.close()), LOOK_MS)
+  let busy = false
+  const looking = setInterval(() => {
+    // A slow look, or a reader that does not take what is sent, must not pile up further looks.
+    if (busy) return
+    busy = true
+    void look()
+      .catch(() => stream.close())
+      .finally(() => (busy = false))
+  }, LOOK_MS)
   const pinging = setInterval(() => void stream.push({ event: 'ping', data: '' }), PING_MS)
   stream.onClosed(() => {
     clearInterval(looking)

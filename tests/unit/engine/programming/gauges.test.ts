@@ -1,5 +1,5 @@
 import { describe, expect, it } from 'vitest'
-import { applyGauge, drawGauge, undoGauge } from '../../../../shared/engine/programming/gauges'
+import { applyGauge, drawGauge, gaugesOutsideRanges, undoGauge } from '../../../../shared/engine/programming/gauges'
 import { programme } from '../../../../shared/engine/programming/programme'
 import { packRows } from '../../../../shared/engine/sampling/merge'
 import { spinOf } from '../../../../shared/engine/sampling/samples'
@@ -55,5 +55,29 @@ describe('gauges', () => {
   it('must have one sign a qubit', () => {
     expect(() => applyGauge(programmed, new Int8Array(1))).toThrow(RangeError)
     expect(() => undoGauge(packRows(2, [1, 1]), new Int8Array(1))).toThrow(RangeError)
+  })
+})
+
+describe('gauges on asymmetric ranges', () => {
+  const mirrored = { h: [-100, 100], J: [-100, 100], couplingSum: null } as const
+
+  it('are counted where they leave a range, as turning by hand does', () => {
+    // The range just holds the field of greatest size, and not its opposite.
+    const [least, greatest] = [Math.min(...programmed.h), Math.max(...programmed.h)]
+    const h = greatest > -least ? ([least, 100] as const) : ([-100, greatest] as const)
+    const ranges = { ...mirrored, h }
+    let expected = 0
+    for (let number = 0; number < 20; number++) {
+      const gauge = drawGauge(programmed, 3, number, 'chain')
+      if (programmed.h.some((field, p) => field * gauge[p]! < h[0] || field * gauge[p]! > h[1])) expected++
+    }
+    expect(expected).toBeGreaterThan(0)
+    expect(expected).toBeLessThan(20)
+    expect(gaugesOutsideRanges(programmed, ranges, 3, 20)).toBe(expected)
+  })
+
+  it('leave no mirrored range, and none wide enough', () => {
+    expect(gaugesOutsideRanges(programmed, mirrored, 3, 20)).toBe(0)
+    expect(gaugesOutsideRanges(programmed, { ...mirrored, couplingSum: [-1000, 999] }, 3, 20)).toBe(0)
   })
 })
