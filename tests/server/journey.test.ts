@@ -450,6 +450,19 @@ describe('hostile input', () => {
     expect((await developer.get<{ items: unknown[] }>('/api/problems?limit=200')).body.items).toHaveLength(before)
   })
 
+  it('with text that cannot be stored is refused, or kept without it', async () => {
+    expect((await developer.call('PATCH', `/api/problems/${problemId}`, { note: 'a\u0000b' })).status).toBe(422)
+    expect((await developer.call('PATCH', `/api/problems/${problemId}`, { note: '\ud83d' })).status).toBe(422)
+    const cut = `a b 1\n${'x'.repeat(199)}😀 tail\n`
+    expect((await developer.upload('/api/problems', cut, 'cut.txt', { skipRejected: 'true' })).status).toBe(201)
+  })
+
+  it('in an address finds nothing, and fails nothing', async () => {
+    for (const kind of ['problems', 'machines', 'embeddings', 'run-sheets', 'returns', 'jobs'])
+      expect((await developer.get(`/api/${kind}/%00`)).status).toBe(404)
+    expect((await developer.get(`/api/machines/${machineId}/graph?calibration=2147483648`)).status).toBe(422)
+  })
+
   it('that is too large is refused before it is taken in', async () => {
     const { status } = await developer.upload('/api/problems', new Uint8Array(66 * 2 ** 20), 'large.csv')
     expect(status).toBe(413)
