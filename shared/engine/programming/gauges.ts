@@ -1,4 +1,4 @@
-import { createRandom } from '../random'
+import { createRandom, STREAMS } from '../random'
 import { strideOf } from '../sampling/samples'
 import type { Samples } from '../sampling/samples'
 import type { Programmed } from './programme'
@@ -17,7 +17,7 @@ export type GaugeKind = 'qubit' | 'chain'
  * check with `excessesOf`, or draw `chain` gauges.
  */
 export function drawGauge(programmed: Programmed, seed: number, number: number, kind: GaugeKind = 'qubit'): Gauge {
-  const random = createRandom(seed, number)
+  const random = createRandom(seed, STREAMS.gauges + number)
   const drawn = kind === 'chain' ? programmed.chainStrength.length : programmed.qubits.length
   const signs = Int8Array.from({ length: drawn }, () => (random.uint32() & 0x80000000 ? 1 : -1))
   return kind === 'chain' ? Int8Array.from(programmed.chainOf, (i) => signs[i]!) : signs

@@ -1,6 +1,6 @@
 import type { Problem } from '../problem/problem'
 import type { Programmed } from '../programming/programme'
-import { createRandom } from '../random'
+import { createRandom, STREAMS } from '../random'
 import type { Random } from '../random'
 import type { SamplerModel } from '../sampling/physical-model'
 import { spinOf, strideOf } from '../sampling/samples'
@@ -112,7 +112,7 @@ export function decode(input: DecodeInput): Decoded {
   let ties = 0
   kept.forEach((r, row) => {
     writeChainSums(samples, r, programmed.chainOf, sums)
-    ties += settle(sums, spins, () => createRandom(seed, r)) * counts[row]!
+    ties += settle(sums, spins, () => createRandom(seed, STREAMS.coins + r)) * counts[row]!
     if (model) descend(model, spins, fields, DEFAULTS.leastGain * largest)
     for (let i = 0; i < ising.n; i++) if (spins[i]! > 0) bytes[row * stride + (i >> 3)]! |= 1 << (i & 7)
   })

@@ -1,5 +1,5 @@
 import type { Control } from '../control'
-import { createRandom } from '../random'
+import { createRandom, STREAMS } from '../random'
 import { createWalker, startWalker, sweep } from './metropolis'
 import type { Walker } from './metropolis'
 import { renumbered } from './physical-model'
@@ -53,16 +53,13 @@ export function annealSchedule(model: SamplerModel, options: AnnealOptions): Flo
   )
 }
 
-/** The stream of a seed that draws the order of visits; reads have the streams below. */
-const ORDER_STREAM = 2 ** 32 - 1
-
 /**
  * A shuffled order in which the spins are visited, one per seed (Fisher & Yates 1938). Metropolis sweeps that follow a chain
  * from end to end push its domain walls along instead of letting them wander, since flips that cost nothing are always
  * taken: a chain in the order of its qubits forgets its start some thirty times slower than in a shuffled order (measured at T = 2|J|).
  */
 function shuffledOrder(n: number, seed: number): Uint32Array {
-  const random = createRandom(seed, ORDER_STREAM)
+  const random = createRandom(seed, STREAMS.order)
   const order = Uint32Array.from({ length: n }, (_, i) => i)
   for (let k = n - 1; k > 0; k--) {
     const other = random.below(k + 1)

@@ -1,4 +1,4 @@
-import { createRandom } from '../random'
+import { createRandom, STREAMS } from '../random'
 import type { SamplerModel } from './physical-model'
 
 /*
@@ -31,7 +31,7 @@ export function createWalker(n: number): Walker {
 
 /** Starts read number `read`: its own random stream, independent random spins. */
 export function startWalker(walker: Walker, model: SamplerModel, seed: number, read: number): void {
-  const random = createRandom(seed, read)
+  const random = createRandom(seed, STREAMS.reads + read)
   const { spins, fields, state } = walker
   for (let i = 0; i < model.n; i++) spins[i] = random.uint32() & 0x80000000 ? 1 : -1
   for (let k = 0; k < 4; k++) state[k] = random.uint32()

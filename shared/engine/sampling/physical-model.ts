@@ -1,5 +1,5 @@
 import type { Programmed } from '../programming/programme'
-import { createRandom } from '../random'
+import { createRandom, STREAMS } from '../random'
 
 /**
  * An Ising model laid out for sampling: E(s) = Σ h_i s_i + Σ J_ij s_i s_j. Neighbours of spin i are
@@ -64,7 +64,7 @@ export function physicalModel(programmed: Programmed, error: ModelError | null =
   if (!error) return samplerModel(programmed)
   if (!(error.sigmaH >= 0 && error.sigmaJ >= 0))
     throw new RangeError(`control error must not be negative: ${error.sigmaH}, ${error.sigmaJ}`)
-  const random = createRandom(error.seed)
+  const random = createRandom(error.seed, STREAMS.controlError)
   return samplerModel({
     h: programmed.h.map((field) => field + error.sigmaH * random.normal()),
     ends: programmed.ends,
