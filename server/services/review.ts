@@ -30,12 +30,12 @@ export async function handOver(
 ): Promise<{ state: RunSheetState }> {
   const { from, to, what }: HandOver = HAND_OVERS[step]
   const row = await runSheetRow(app, actor, id)
-  const wrongState = new DomainError(
-    'wrong state',
-    'run-sheet.state',
-    `RS-${row.number} is ${row.state}; it can be ${what} only from ${from.join(' or ')}.`,
-  )
-  if (!from.includes(row.state)) throw wrongState
+  if (!from.includes(row.state))
+    throw new DomainError(
+      'wrong state',
+      'run-sheet.state',
+      `RS-${row.number} is ${row.state}; it can be ${what} only from ${from.join(' or ')}.`,
+    )
   if (step === 'approve' && row.preparedBy === actor.userId)
     throw new DomainError(
       'forbidden',
@@ -49,7 +49,12 @@ export async function handOver(
     change.fingerprint = fingerprintOf(requireProgrammed(programmeBench(await benchOf(app, actor, row), row.settings)))
   if (step === 'approve' || step === 'sendBack') change.reviewedBy = actor.userId
   await app.db.transaction(async (tx) => {
-    if (!(await updateRunSheet(tx, id, from, change))) throw wrongState
+    if (!(await updateRunSheet(tx, id, from, change, row.changedAt)))
+      throw new DomainError(
+        'wrong state',
+        'run-sheet.changed',
+        `RS-${row.number} was changed meanwhile. Look at it as it stands now, then decide again.`,
+      )
     await insertRemark(tx, {
       id: randomUUID(),
       runSheetId: id,

@@ -46,17 +46,22 @@ export async function runSheetsOfEmbeddings(db: Db, embeddingIds: readonly strin
     .orderBy(desc(runSheets.createdAt))
 }
 
-/** Changes a run sheet only while it is in one of the states given; false when it no longer is. */
+/**
+ * Changes a run sheet only while it is in one of the states given and, where `seen` is given, unchanged since then; false
+ * when it no longer is.
+ */
 export async function updateRunSheet(
   db: Db,
   id: string,
   states: readonly RunSheetRow['state'][],
   set: Partial<typeof runSheets.$inferInsert>,
+  seen?: Date,
 ): Promise<boolean> {
+  const unchanged = seen ? eq(runSheets.changedAt, seen) : undefined
   const rows = await db
     .update(runSheets)
     .set(set)
-    .where(and(eq(runSheets.id, id), inArray(runSheets.state, [...states])))
+    .where(and(eq(runSheets.id, id), inArray(runSheets.state, [...states]), unchanged))
     .returning({ id: runSheets.id })
   return rows.length === 1
 }
