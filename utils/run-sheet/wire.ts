@@ -40,7 +40,8 @@ export function runSheetWire(sheet: RunSheetView): WireStage[] {
 /** The same stages, seen from a set of samples. */
 export function returnWire(samples: ReturnView): WireStage[] {
   const { problem, embedding, runSheet } = samples
-  const strengths = samples.breaks?.chains.map(({ strength }) => strength) ?? []
+  const joined = samples.breaks?.chains.filter(({ length }) => length > 1) ?? []
+  const strengths = joined.map(({ strength }) => strength)
   const k = { min: Math.min(...strengths), max: Math.max(...strengths) }
   const sheetPath = `/run-sheets/${runSheet.id}`
   return [
