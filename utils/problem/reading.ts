@@ -97,7 +97,7 @@ export function problemFacts({ structure, best, sense }: ProblemView): Fact[] {
       : {
           label: 'Best energy',
           value: formatNumber(best),
-          note: `${sense === 'min' ? 'lowest' : 'highest'} decoded so far`,
+          note: `${sense === 'min' ? 'lowest' : 'highest'} by majority so far`,
         },
   ]
 }

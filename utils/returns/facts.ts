@@ -4,6 +4,11 @@ import { formatCount, formatNumber, formatPercent, formatPercentInterval } from 
 import { formatDuration } from '../formatTime'
 
 const PERCENT = { significant: 3 }
+const DECODED: Record<ReturnView['decode'], string> = {
+  majority: ' by majority',
+  discard: ' without a break',
+  descent: ' after repair',
+}
 
 /** The strip under the title of a set of samples. */
 export function returnFacts(samples: ReturnView): Fact[] {
@@ -13,7 +18,7 @@ export function returnFacts(samples: ReturnView): Fact[] {
     {
       label: samples.problem.sense === 'min' ? 'Best energy' : 'Best value',
       value: formatNumber(energies?.best),
-      note: energies ? `in ${formatCount(energies.bestCount, 'read')}` : undefined,
+      note: energies ? `in ${formatCount(energies.bestCount, 'read')}${DECODED[samples.decode]}` : undefined,
     },
     { label: 'Reads', value: formatNumber(reads) },
   ]

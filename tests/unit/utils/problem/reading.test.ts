@@ -67,7 +67,10 @@ describe('structureFacts and problemFacts', () => {
   it('shows isolated variables only when there are some, and the best energy in its sense', () => {
     const problem = { structure, best: 24, sense: 'max' } as ProblemView
     expect(valueOf(problemFacts(problem), 'Isolated')).toBeUndefined()
-    expect(valueOf(problemFacts(problem), 'Best energy')).toMatchObject({ value: '24', note: 'highest decoded so far' })
+    expect(valueOf(problemFacts(problem), 'Best energy')).toMatchObject({
+      value: '24',
+      note: 'highest by majority so far',
+    })
     expect(valueOf(problemFacts({ ...problem, best: null }), 'Best energy')!.value).toBe('no samples yet')
   })
 })
