@@ -37,13 +37,21 @@ type Method = 'POST' | 'PATCH' | 'DELETE'
 export type Outcome<T> = { ok: true; value: T } | { ok: false; failure: ApiFailure }
 
 /** $fetch without its inference over every route, which exceeds the checker's depth. */
-const request = $fetch as <T>(url: string, options: { method: Method; body?: Body }) => Promise<T>
+const request = $fetch as <T>(url: string, options: { method: Method; body?: Body; keepalive?: boolean }) => Promise<T>
+
+/** A change sent while the page is being left goes on only with `keepalive`, which browsers allow for small bodies. */
+const KEEPALIVE_CHARACTERS = 16_000
+const isSmall = (body: Body | undefined): boolean =>
+  !(body instanceof FormData) && JSON.stringify(body ?? {}).length < KEEPALIVE_CHARACTERS
 
 /** Sends changes to the server. */
 export function useApi() {
   const send = async <T>(method: Method, url: string, body?: Body): Promise<Outcome<T>> => {
     try {
-      return { ok: true, value: await request<T>(url, { method, body }) }
+      return {
+        ok: true,
+        value: await request<T>(url, { method, body, keepalive: method === 'PATCH' && isSmall(body) }),
+      }
     } catch (error) {
       return { ok: false, failure: failureOf(error) }
     }

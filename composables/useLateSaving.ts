@@ -52,6 +52,12 @@ export function useLateSaving<Change extends object>(send: (change: Partial<Chan
     pending.value = {}
   }
 
-  onBeforeUnmount(() => void flush())
+  const leave = (): void => void flush()
+  // Reloading or closing within the moment of waiting must not lose the change.
+  onMounted(() => window.addEventListener('pagehide', leave))
+  onBeforeUnmount(() => {
+    window.removeEventListener('pagehide', leave)
+    leave()
+  })
   return { isEmpty, holds, add, drop, clear, flush }
 }

@@ -11,7 +11,6 @@ import { problemData } from '../../services/problems'
 import type { App } from '../../app'
 import type { JobContext, JobKindHandler, JobOutcome } from '../kind'
 
-const SHOWN = 50
 /** Thrown while saving, it also takes back the adoption of what was written. */
 const DELETED = 'the embedding or its problem was deleted meanwhile'
 
@@ -123,15 +122,15 @@ function unmetOf({ labels, ids }: Inputs, partial: PartialEmbedding, why: string
   const shared = new Set(partial.overlappedQubits)
   const variables = labels.filter((_, i) => chainOf(partial.chains, i).some((q) => shared.has(q)))
   const parts = [
-    partial.overlap > 0 ? `${partial.overlap} too many uses of ${shared.size} qubits` : '',
+    partial.overlap > 0 ? `${shared.size} ${shared.size === 1 ? 'qubit' : 'qubits'} wanted by more than one chain` : '',
     partial.unmet > 0 ? `${partial.unmet} interactions without a coupler` : '',
     partial.unplaced > 0 ? `${partial.unplaced} variables without a qubit` : '',
   ].filter(Boolean)
   return {
     message: `${why}. The closest state has ${parts.join(', ') || 'no conflicts'}. More tries, a longer limit or a larger machine may help.`,
     overlap: partial.overlap,
-    overlappedQubits: partial.overlappedQubits.slice(0, SHOWN).map((q) => ids[q]!),
-    variables: variables.slice(0, SHOWN),
+    overlappedQubits: partial.overlappedQubits.map((q) => ids[q]!),
+    variables,
     unmetInteractions: partial.unmet,
   }
 }
