@@ -67,7 +67,14 @@ async function boot(): Promise<StartedApp> {
   return started
 }
 
+/** Without this the process would stay, serving nothing, when another program has the port. */
+function stopWhenPortIsTaken(error: NodeJS.ErrnoException & { port?: number }): void {
+  if (error.code === 'EADDRINUSE' && error.port)
+    stop(`Port ${error.port} is in use by another program. Stop that one, or choose another port with PORT.`)
+}
+
 export default defineNitroPlugin((nitro) => {
+  process.on('uncaughtException', stopWhenPortIsTaken)
   const started = boot()
   setApp(started.then(({ app }) => app))
   started.catch((error: Error) => stop(`Espalier could not start: ${error.message}`))

@@ -36,6 +36,15 @@ it('does not start without a session password outside the demo', async () => {
   expect(started.output()).toMatch(/NUXT_SESSION_PASSWORD is not set/)
 })
 
+it('does not stay without a port', async () => {
+  server = await startServer({ DEMO: 'true', DATA_DIR: temporaryFolder() })
+  const PORT = new URL(server.url).port
+  const second = startProcess(SERVER_ENTRY, { DEMO: 'true', DATA_DIR: temporaryFolder(), HOST: '127.0.0.1', PORT })
+  await until(() => second.child.exitCode !== null, 30, 'the refusal')
+  expect(second.child.exitCode).toBe(1)
+  expect(second.output()).toContain(`Port ${PORT} is in use by another program`)
+})
+
 it('does not start a second process on the same data folder', async () => {
   const DATA_DIR = temporaryFolder()
   server = await startServer({ DEMO: 'true', DATA_DIR })
