@@ -1,3 +1,6 @@
+import { darkHues, lightHues } from '~/assets/css/tokens'
+import type { HueName } from '~/assets/css/tokens'
+
 /**
  * The hues of chains. Eight hues, each with a light and a dark shade, and three inlays within a hue. They name a chain,
  * never a value; the label settles which chain it is.
@@ -8,16 +11,11 @@ export interface Hue {
   readonly dark: string
 }
 
-export const HUES: readonly Hue[] = [
-  { name: 'mulberry', light: '#974E66', dark: '#9E4F7E' },
-  { name: 'indigo', light: '#332F7E', dark: '#8CAFFE' },
-  { name: 'cornflower', light: '#5C8CDA', dark: '#B7DDFD' },
-  { name: 'aubergine', light: '#5A2C3C', dark: '#C8787F' },
-  { name: 'lichen', light: '#91921F', dark: '#F0D777' },
-  { name: 'rose', light: '#CA6789', dark: '#F09DA3' },
-  { name: 'moss', light: '#4C5A09', dark: '#617209' },
-  { name: 'iris', light: '#4C62B3', dark: '#6A81CE' },
-]
+export const HUES: readonly Hue[] = (Object.keys(lightHues) as HueName[]).map((name) => ({
+  name,
+  light: lightHues[name],
+  dark: darkHues[name],
+}))
 
 export const INLAYS = ['plain', 'line', 'dots'] as const
 export type Inlay = (typeof INLAYS)[number]
