@@ -8,6 +8,7 @@
 import { verifyEmbedding } from '../../shared/engine/embedding/verify'
 import { embeddingStats } from '../../shared/engine/embedding/stats'
 import { findEmbedding } from '../../shared/engine/embedding/search'
+import { taskOf } from '../../tests/fixtures/graphs'
 import { INSTANCES } from './instances'
 import type { Instance } from './instances'
 
@@ -39,7 +40,7 @@ function measure({ name, make }: Instance, seeds: number): Row {
     const { problem, machine, usable } = make(seed)
     const control = { now: () => performance.now() / 1000, cancelled: () => false, report: () => {} }
     const options = { seed, tries: 1, timeLimitSeconds: TIME_LIMIT_SECONDS }
-    const result = findEmbedding(problem, machine, usable, options, control)
+    const result = findEmbedding(taskOf(problem, machine, usable), options, control)
     seconds.push(result.seconds)
     if (!result.embedding) continue
     const [violation] = verifyEmbedding(problem, machine, usable, result.embedding)

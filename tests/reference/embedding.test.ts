@@ -15,6 +15,7 @@ import {
   kingGraph,
   randomGraph,
   regularGraph,
+  taskOf,
   usableExcept,
 } from '../fixtures/graphs'
 
@@ -110,7 +111,7 @@ const INSTANCES = (['king', 'chimera'] as const).flatMap((family) =>
 describe.each(INSTANCES)(
   'embedding on $name against contraction in graphology',
   ({ problem, machine, usable, seed }) => {
-    const { embedding } = findEmbedding(problem, machine, usable, { seed, tries: 3 }, control)
+    const { embedding } = findEmbedding(taskOf(problem, machine, usable), { seed, tries: 3 }, control)
     const found = Array.from({ length: problem.order }, (_, i) => [...chainOf(embedding!, i)])
 
     it('is a minor', () => {
@@ -141,7 +142,7 @@ describe('published constructions bound what has to be found', () => {
     ['K_30 in Pegasus P(6)', completeGraph(30), buildFabric({ kind: 'pegasus', m: 6, trimmed: true }).graph],
   ])('%s', (_, problem, machine) => {
     const usable = new Uint8Array(machine.order).fill(1)
-    const { embedding } = findEmbedding(problem, machine, usable, { seed: 1, tries: 3 }, control)
+    const { embedding } = findEmbedding(taskOf(problem, machine, usable), { seed: 1, tries: 3 }, control)
     const chains = Array.from({ length: problem.order }, (_, i) => [...chainOf(embedding!, i)])
     expect(isMinorByContraction(problem, machine, usable, chains)).toBe(true)
   })
@@ -155,7 +156,7 @@ describe('published constructions bound what has to be found', () => {
     ] as const) {
       const usable = new Uint8Array(machine.order).fill(1)
       expect(provedInfeasible(problem, machine, usable)).toBeNull()
-      expect(findEmbedding(problem, machine, usable, { tries: 3 }, control).status).toBe('none found')
+      expect(findEmbedding(taskOf(problem, machine, usable), { tries: 3 }, control).status).toBe('none found')
     }
   })
 })

@@ -1,5 +1,7 @@
 import { chainOf } from '../../../shared/engine/embedding/embedding'
-import type { PartialEmbedding, SearchProgress, SearchResult } from '../../../shared/engine/embedding/search'
+import type { PartialEmbedding } from '../../../shared/engine/embedding/method'
+import type { SearchProgress } from '../../../shared/engine/embedding/progress'
+import type { SearchResult } from '../../../shared/engine/embedding/search'
 import { interactionGraph } from '../../../shared/engine/problem/interaction-graph'
 import type { EmbeddingRow } from '../../database/repositories/embeddings'
 import { findEmbeddingOfJob, updateEmbedding } from '../../database/repositories/embeddings'
@@ -32,14 +34,22 @@ export const embeddingJob: JobKindHandler = {
     const output = await app.compute.run(
       'search',
       {
-        problem: interactionGraph(coefficients),
-        machine: machine.graph,
-        usable: machine.usable,
+        task: {
+          problem: interactionGraph(coefficients),
+          machine: machine.graph,
+          usable: machine.usable,
+          segments: machine.fabric.segments,
+          family: machine.fabric.family,
+          start: null,
+        },
         options: { seed, tries, timeLimitSeconds },
       },
       {
         signal: context.signal,
-        onProgress: (progress) => context.report(progress.fraction, progressMessage(progress), { ...progress }),
+        onProgress: (progress) =>
+          context.report((progress.tryNumber - 1 + progress.fraction) / tries, progressMessage(progress, tries), {
+            ...progress,
+          }),
       },
     )
     const [violation] = output.violations
@@ -55,7 +65,10 @@ export const embeddingJob: JobKindHandler = {
   },
 }
 
-function progressMessage({ phase, tryNumber, tries, overlap, longestChain, qubitsUsed }: SearchProgress): string {
+function progressMessage(
+  { phase, tryNumber, overlap, longestChain, qubitsUsed }: SearchProgress,
+  tries: number,
+): string {
   const best =
     longestChain === null ? 'none valid yet' : `best so far: longest chain ${longestChain}, ${qubitsUsed} qubits`
   return `Try ${tryNumber} of ${tries}, ${phase}, overlap ${overlap}; ${best}`
@@ -123,7 +136,7 @@ function unmetOf({ labels, ids }: Inputs, partial: PartialEmbedding, why: string
   const variables = labels.filter((_, i) => chainOf(partial.chains, i).some((q) => shared.has(q)))
   const parts = [
     partial.overlap > 0 ? `${shared.size} ${shared.size === 1 ? 'qubit' : 'qubits'} wanted by more than one chain` : '',
-    partial.unmet > 0 ? `${partial.unmet} interactions without a coupler` : '',
+    partial.unmet.length > 0 ? `${partial.unmet.length} interactions without a coupler` : '',
     partial.unplaced > 0 ? `${partial.unplaced} variables without a qubit` : '',
   ].filter(Boolean)
   return {
@@ -131,6 +144,6 @@ function unmetOf({ labels, ids }: Inputs, partial: PartialEmbedding, why: string
     overlap: partial.overlap,
     overlappedQubits: partial.overlappedQubits.map((q) => ids[q]!),
     variables,
-    unmetInteractions: partial.unmet,
+    unmetInteractions: partial.unmet.length,
   }
 }

@@ -1,17 +1,16 @@
 import type { Control } from '../../../shared/engine/control'
-import type { SearchOptions, SearchProgress, SearchResult } from '../../../shared/engine/embedding/search'
+import type { SearchProgress } from '../../../shared/engine/embedding/progress'
+import type { SearchOptions, SearchResult } from '../../../shared/engine/embedding/search'
 import { findEmbedding } from '../../../shared/engine/embedding/search'
 import type { EmbeddingStats } from '../../../shared/engine/embedding/stats'
 import { embeddingStats } from '../../../shared/engine/embedding/stats'
+import type { EmbeddingTask } from '../../../shared/engine/embedding/task'
 import type { Violation } from '../../../shared/engine/embedding/verify'
 import { verifyEmbedding } from '../../../shared/engine/embedding/verify'
-import type { Graph } from '../../../shared/engine/graph/graph'
 
 export interface SearchInput {
-  problem: Graph
-  machine: Graph
-  usable: Uint8Array
-  options: SearchOptions
+  task: EmbeddingTask
+  options: Partial<SearchOptions>
 }
 
 export interface SearchOutput {
@@ -22,12 +21,10 @@ export interface SearchOutput {
 }
 
 /** Searches for an embedding and has it verified before anything is saved. */
-export function search(
-  { problem, machine, usable, options }: SearchInput,
-  control: Control<SearchProgress>,
-): SearchOutput {
-  const result = findEmbedding(problem, machine, usable, options, control)
+export function search({ task, options }: SearchInput, control: Control<SearchProgress>): SearchOutput {
+  const result = findEmbedding(task, options, control)
   const { embedding } = result
+  const { problem, machine, usable } = task
   return {
     result,
     violations: embedding ? verifyEmbedding(problem, machine, usable, embedding) : [],

@@ -51,15 +51,15 @@ export function soleContact(state: SearchState, qubit: number): number {
   return sole
 }
 
-/** Number of interactions without a coupler between the two chains. */
-export function countUnmet(state: SearchState): number {
+/** Interactions without a coupler between the two chains, as edge numbers of the problem graph, ascending. */
+export function unmetEdges(state: SearchState): number[] {
   const { problem, contacts } = state
-  let unmet = 0
+  const unmet: number[] = []
   for (let v = 0; v < problem.order; v++) {
     inspectContacts(state, v)
     for (let p = problem.offsets[v]!; p < problem.offsets[v + 1]!; p++) {
       const u = problem.targets[p]!
-      if (u > v && contacts[u] === 0) unmet++
+      if (u > v && contacts[u] === 0) unmet.push(problem.edgeIds[p]!)
     }
   }
   return unmet

@@ -1,6 +1,6 @@
 import { degreeOf } from '../graph/graph'
 import type { Random } from '../random'
-import { countUnmet } from './contacts'
+import { unmetEdges } from './contacts'
 import type { Watch } from './progress'
 import type { Rerouter } from './reroute'
 import { placingOrder, Seeder, shuffle } from './seeding'
@@ -71,7 +71,7 @@ export function negotiate(state: SearchState, rerouter: Rerouter, random: Random
   let pass = 1
   let penalty = DEFAULTS.penalty
   for (; ; pass++) {
-    if (chains.overlap === 0 && countUnmet(state) === 0) return { valid: true, passes: pass }
+    if (chains.overlap === 0 && unmetEdges(state).length === 0) return { valid: true, passes: pass }
     sinceBest = chains.overlap < best ? 0 : sinceBest + 1
     best = Math.min(best, chains.overlap)
     if (sinceBest >= DEFAULTS.patience) return { valid: false, passes: pass }

@@ -11,8 +11,8 @@ const DEFAULTS = {
   idlePasses: 4,
 }
 
-/** Longest chain and total of qubits: what embeddings are compared by, in this order. */
-export function qualityOf(state: SearchState): { longest: number; total: number } {
+/** Longest chain and total of qubits, now. */
+function sizesOf(state: SearchState): { longest: number; total: number } {
   const { length } = state.chains
   let longest = 0
   let total = 0
@@ -35,14 +35,14 @@ export function shorten(state: SearchState, rerouter: Rerouter, random: Random, 
   state.history.fill(0)
   let passes = 0
   for (let idle = 0; idle < DEFAULTS.idlePasses; passes++) {
-    const before = qualityOf(state)
+    const before = sizesOf(state)
     refreshWeights(state, random)
     shuffle(variables, variables.length, random)
     for (const v of variables) {
       if (watch.shouldStop(chains.overlap)) return passes
       if (chains.length[v]! > 1) rerouter.shorten(v)
     }
-    const after = qualityOf(state)
+    const after = sizesOf(state)
     idle = after.total < before.total || after.longest < before.longest ? 0 : idle + 1
     watch.report(chains.overlap, 0.9)
   }

@@ -1,0 +1,37 @@
+import { chainCount } from './embedding'
+import type { Embedding } from './embedding'
+
+/** What embeddings are compared by first; the other decides between equals. */
+export type Objective = 'longest chain' | 'total qubits'
+
+/** Stop as soon as an embedding is at least this good; null where nothing is asked. */
+export interface Target {
+  readonly longestChain: number | null
+  readonly totalQubits: number | null
+}
+
+export interface Quality {
+  readonly longest: number
+  readonly total: number
+}
+
+/** Longest chain and total of qubits. */
+export function qualityOf(embedding: Embedding): Quality {
+  const { offsets } = embedding
+  let longest = 0
+  for (let i = 0; i < chainCount(embedding); i++) longest = Math.max(longest, offsets[i + 1]! - offsets[i]!)
+  return { longest, total: embedding.qubits.length }
+}
+
+/** Below 0 when `a` is better, above 0 when `b` is, 0 when they are alike. */
+export function compareQuality(a: Quality, b: Quality, objective: Objective): number {
+  const longest = a.longest - b.longest
+  const total = a.total - b.total
+  return objective === 'longest chain' ? longest || total : total || longest
+}
+
+/** Whether something is asked and all of it is reached. */
+export function reaches({ longest, total }: Quality, { longestChain, totalQubits }: Target): boolean {
+  if (longestChain === null && totalQubits === null) return false
+  return longest <= (longestChain ?? Infinity) && total <= (totalQubits ?? Infinity)
+}
