@@ -1,3 +1,5 @@
+import type { TracePoint } from './embeddings'
+
 /** States of a job. A job never stays `running` without a living worker: see docs/decisions/jobs.md. */
 export type JobStatus = 'waiting' | 'running' | 'done' | 'failed' | 'cancelled'
 export type JobKind = 'embedding' | 'rehearsal'
@@ -15,8 +17,8 @@ export interface JobView {
   progress: number
   /** One sentence on where the work stands. */
   message: string
-  /** Kind-specific figures of the moment, for example overlap and longest chain. */
-  detail: Record<string, number | string | null>
+  /** Kind-specific figures of the moment: `EmbeddingProgress` (embeddings.ts), or the reads of a rehearsal. */
+  detail: Record<string, number | string | null | readonly TracePoint[]>
   /** How often the work was started. */
   attempts: number
   createdAt: string

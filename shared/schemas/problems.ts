@@ -1,7 +1,7 @@
 import { z } from 'zod'
 import type { HistogramBin, Person } from './common'
 import { nameSchema, textSchema } from './common'
-import type { EmbeddingStatus } from './embeddings'
+import type { EmbeddingMethod, EmbeddingStats, EmbeddingStatus, MethodUsed, Objective } from './embeddings'
 import type { RunSheetState } from './run-sheets'
 
 export const formSchema = z.enum(['qubo', 'ising'])
@@ -125,10 +125,16 @@ export interface EmbeddingOfProblem {
   id: string
   number: number
   status: EmbeddingStatus
+  machineId: string
   machine: string
   calibration: number
-  method: string
+  method: EmbeddingMethod
+  methodUsed: MethodUsed | null
   seed: number
+  objective: Objective
+  /** The one to go on with among the problem's embeddings on that machine. */
+  chosen: boolean
+  stats: EmbeddingStats | null
   longestChain: number | null
   qubitsUsed: number | null
   seconds: number | null
