@@ -15,6 +15,8 @@ export interface StartOptions {
   workersFolder: () => string
   /** Jobs run at the same time in this process; 0 leaves them to other processes. */
   concurrency: number
+  /** Worker threads for background jobs; as many as there are cores where nothing is said. */
+  threads?: number
 }
 
 export interface StartedApp {
@@ -39,7 +41,7 @@ export async function startApp(options: StartOptions): Promise<StartedApp> {
     SWEEP_MS,
   )
   timer.unref()
-  const compute = createCompute(options.workersFolder)
+  const compute = createCompute(options.workersFolder, options.threads)
   const queue = await startQueue(database)
   const app: App = { database, db: database.db, blobs, compute, queue, now, version: VERSION, demo: options.demo }
   const runner = options.concurrency > 0 ? await startRunner(app, options.concurrency) : undefined

@@ -1,6 +1,6 @@
 import { randomUUID } from 'node:crypto'
 import type { App } from '../app'
-import type { JobRow } from '../database/repositories/jobs'
+import type { Beat, JobRow } from '../database/repositories/jobs'
 import {
   beatJob,
   claimJob,
@@ -103,7 +103,7 @@ async function execute(app: App, job: JobRow, worker: string, controller: AbortC
 
 /** Writes progress and heartbeat at a steady pace, and carries a cancel request to the work. */
 function startHeartbeat(app: App, jobId: string, worker: string, controller: AbortController) {
-  let latest: { progress: number; message: string; detail?: JobView['detail'] } | undefined
+  let latest: Beat | undefined
   let writing: Promise<void> = Promise.resolve()
   const beat = async (): Promise<void> => {
     const cancelRequested = await beatJob(app.db, jobId, worker, latest ?? {}, app.now())
@@ -120,6 +120,8 @@ function startHeartbeat(app: App, jobId: string, worker: string, controller: Abo
     async stop() {
       clearInterval(timer)
       await writing
+      // What was reported since the last beat would be lost: work shorter than one would show no progress at all.
+      if (latest) await beatJob(app.db, jobId, worker, latest, app.now()).catch(report)
     },
   }
 }

@@ -4,7 +4,7 @@ import { DomainError } from '../../shared/errors'
 import { packArrays } from '../../shared/packed-arrays'
 import type { Actor, App } from '../app'
 import { unpackChains } from './chains'
-import { embeddingRow } from './embeddings'
+import { embeddingRow } from './embedding-subject'
 import { calibratedMachine } from './machine-graphs'
 import { problemData, problemRow } from './problems'
 

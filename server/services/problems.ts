@@ -17,13 +17,14 @@ import { pageOf, positionOf } from '../database/repositories/pages'
 import type { ProblemRow } from '../database/repositories/problems'
 import { deleteProblem, findProblem, listProblems, personOf, updateProblem } from '../database/repositories/problems'
 import { returnsOfRunSheets, runSheetsOfEmbeddings } from '../database/repositories/run-sheets'
+import { statsView } from './embedding-stats'
 import { clearAway } from './jobs'
 import type { ProblemData } from './problem-data'
 import { unpackProblem } from './problem-data'
 import { signed, signOf } from './sense'
 
 /** A problem of the workspace. @throws DomainError not found, also for another workspace's */
-export async function problemRow(app: App, actor: Actor, id: string): Promise<ProblemRow> {
+export async function problemRow(app: App, actor: Pick<Actor, 'workspaceId'>, id: string): Promise<ProblemRow> {
   const row = await findProblem(app.db, actor.workspaceId, id)
   if (!row) throw new DomainError('not found', 'problem.unknown', 'There is no such problem in this workspace.')
   return row
@@ -66,8 +67,9 @@ async function contextOf(app: App, problemIds: string[]) {
 
 function itemOf(row: ProblemRow, { embeddings, sheets, returned }: Context): ProblemItem {
   const own = embeddings.filter(({ embedding }) => embedding.problemId === row.id)
-  // A later search that found nothing does not hide an embedding that holds.
-  const newest = own.find(({ embedding }) => embedding.status === 'found') ?? own[0]
+  // A later search that found nothing does not hide an embedding that was found.
+  const shown =
+    own.find(({ embedding }) => embedding.chosen) ?? own.find(({ embedding }) => embedding.status === 'found') ?? own[0]
   const ownSheets = sheets.filter((sheet) => own.some(({ embedding }) => embedding.id === sheet.embeddingId))
   const sheet = ownSheets[0]
   const sign = signOf(row.sense)
@@ -83,13 +85,13 @@ function itemOf(row: ProblemRow, { embeddings, sheets, returned }: Context): Pro
     variables: row.variables,
     interactions: row.interactions,
     density: row.structure.density,
-    embedding: newest
+    embedding: shown
       ? {
-          id: newest.embedding.id,
-          number: newest.embedding.number,
-          status: newest.embedding.status,
-          machine: newest.machine,
-          longestChain: newest.embedding.stats?.chainLength.max ?? null,
+          id: shown.embedding.id,
+          number: shown.embedding.number,
+          status: shown.embedding.status,
+          machine: shown.machine,
+          longestChain: shown.embedding.stats?.chainLength.max ?? null,
         }
       : null,
     runSheet: sheet ? { id: sheet.id, number: sheet.number, state: sheet.state } : null,
@@ -111,14 +113,19 @@ export async function problemView(app: App, actor: Actor, id: string): Promise<P
     source: row.source,
     reading: row.reading,
     structure: row.structure,
-    embeddings: context.embeddings.map(({ embedding, machine }) => ({
+    embeddings: context.embeddings.map(({ embedding, machine, qubits }) => ({
       id: embedding.id,
       number: embedding.number,
       status: embedding.status,
+      machineId: embedding.machineId,
       machine,
       calibration: embedding.calibration,
       method: embedding.method,
+      methodUsed: embedding.methodUsed,
       seed: embedding.seed,
+      objective: embedding.objective,
+      chosen: embedding.chosen,
+      stats: statsView(embedding.stats, qubits),
       longestChain: embedding.stats?.chainLength.max ?? null,
       qubitsUsed: embedding.stats?.qubitsUsed ?? null,
       seconds: embedding.seconds,

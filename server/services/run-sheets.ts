@@ -29,7 +29,7 @@ import {
   returnsOfRunSheets,
   updateRunSheet,
 } from '../database/repositories/run-sheets'
-import { embeddingRow } from './embeddings'
+import { embeddingRow } from './embedding-subject'
 import { clearAway } from './jobs'
 import type { Bench, Programming } from './programming'
 import { checksOf } from './run-sheet-checks'

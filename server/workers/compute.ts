@@ -28,7 +28,7 @@ export interface ThreadMessage {
 }
 
 /** Tasks of background jobs. They may hold a thread for an hour, so what a person waits for has threads of its own. */
-const LONG: ReadonlySet<TaskName> = new Set<TaskName>(['search', 'rehearse'])
+const LONG: ReadonlySet<TaskName> = new Set<TaskName>(['runTry', 'rehearse'])
 
 /**
  * Two pools of worker threads over the bundled thread entry, each opened at its first use: long tasks, and the others.

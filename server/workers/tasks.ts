@@ -1,20 +1,26 @@
 import type { Control } from '../../shared/engine/control'
+import { checkEmbedding } from './tasks/check-embedding'
 import { energies } from './tasks/energies'
-import { search } from './tasks/search'
+import { planSearch } from './tasks/plan-search'
+import { proveInfeasible } from './tasks/prove-infeasible'
 import { readProblemFile } from './tasks/read-problem'
 import { readSamplesFile } from './tasks/read-samples'
 import { rehearse } from './tasks/rehearse'
+import { runTry } from './tasks/run-try'
 import { summarise } from './tasks/summarise'
 import { writeProblemFile } from './tasks/write-problem'
 import { writeSamplesFile } from './tasks/write-samples'
 
 /** Everything a worker thread can do: structured-cloneable input, control, structured-cloneable output. */
 export const TASKS = {
+  checkEmbedding,
   energies,
+  planSearch,
+  proveInfeasible,
   readProblemFile,
   readSamplesFile,
   rehearse,
-  search,
+  runTry,
   summarise,
   writeProblemFile,
   writeSamplesFile,

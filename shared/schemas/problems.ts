@@ -106,7 +106,7 @@ export interface ProblemItem {
   variables: number
   interactions: number
   density: number
-  /** The newest embedding found, else the newest of all. */
+  /** The newest embedding that is chosen, else the newest found, else the newest of all. */
   embedding: {
     id: string
     number: number

@@ -1,5 +1,5 @@
 import { importEmbeddingSchema } from '../../../shared/schemas/embeddings'
-import { importEmbedding } from '../../services/embeddings'
+import { importEmbedding } from '../../services/embedding-import'
 
 /** Saves chains given by variable label: 201 `{id}`, or 422 naming each broken rule. */
 export default defineRoute(['developer', 'owner'], async (event, { app, ...actor }) => {

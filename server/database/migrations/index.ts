@@ -63,5 +63,26 @@ export const MIGRATIONS = [
       "\nCREATE INDEX \"run_sheets_embedding_id_index\" ON \"run_sheets\" USING btree (\"embedding_id\");",
       "\nALTER TABLE \"blob_chunks\" ALTER COLUMN \"data\" SET STORAGE EXTERNAL;\n"
     ]
+  },
+  {
+    "tag": "0001_embedding_methods",
+    "folderMillis": 1796130726600,
+    "hash": "dfca309ca48ea63e6583461764925595f1eac52fcdfc3dd6d86755bb398b00a9",
+    "bps": true,
+    "sql": [
+      "ALTER TABLE \"embeddings\" ADD COLUMN \"objective\" text DEFAULT 'longest chain' NOT NULL;",
+      "\nALTER TABLE \"embeddings\" ADD COLUMN \"target\" jsonb DEFAULT '{\"longestChain\":null,\"totalQubits\":null}'::jsonb NOT NULL;",
+      "\nALTER TABLE \"embeddings\" ADD COLUMN \"start_id\" text;",
+      "\nALTER TABLE \"embeddings\" ADD COLUMN \"frozen\" jsonb DEFAULT '[]'::jsonb NOT NULL;",
+      "\nALTER TABLE \"embeddings\" ADD COLUMN \"changed_chains\" integer;",
+      "\nALTER TABLE \"embeddings\" ADD COLUMN \"method_used\" text;",
+      "\nALTER TABLE \"embeddings\" ADD COLUMN \"try_number\" integer;",
+      "\nALTER TABLE \"embeddings\" ADD COLUMN \"first_seconds\" double precision;",
+      "\nALTER TABLE \"embeddings\" ADD COLUMN \"chosen\" boolean DEFAULT false NOT NULL;",
+      "\nALTER TABLE \"embeddings\" ADD CONSTRAINT \"embeddings_start_id_embeddings_id_fk\" FOREIGN KEY (\"start_id\") REFERENCES \"public\".\"embeddings\"(\"id\") ON DELETE set null ON UPDATE no action;",
+      "\nCREATE UNIQUE INDEX \"embeddings_problem_id_machine_id_index\" ON \"embeddings\" USING btree (\"problem_id\",\"machine_id\") WHERE chosen;",
+      "\nCREATE INDEX \"embeddings_start_id_index\" ON \"embeddings\" USING btree (\"start_id\");",
+      "\nUPDATE \"embeddings\" SET \"method_used\" = \"method\" WHERE \"status\" = 'found';\n"
+    ]
   }
 ]

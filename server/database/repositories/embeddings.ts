@@ -1,6 +1,6 @@
 import { and, desc, eq, inArray } from 'drizzle-orm'
 import type { Db } from '../client'
-import { embeddings, machines, problems } from '../schema'
+import { calibrations, embeddings, machines, problems } from '../schema'
 
 export type EmbeddingRow = typeof embeddings.$inferSelect
 
@@ -32,13 +32,40 @@ export async function updateEmbedding(
   return rows.length === 1
 }
 
-/** Embeddings of several problems with the machine's name, newest first. */
+/** Sets or takes away the mark of the one to go on with; setting it takes it from any other of the same pair. */
+export async function markChosen(tx: Db, { id, problemId, machineId }: EmbeddingRow, chosen: boolean): Promise<void> {
+  // One after the other: two people choosing at once must not leave two marks.
+  await tx.select({ id: problems.id }).from(problems).where(eq(problems.id, problemId)).for('update')
+  if (chosen)
+    await tx
+      .update(embeddings)
+      .set({ chosen: false })
+      .where(and(eq(embeddings.problemId, problemId), eq(embeddings.machineId, machineId), embeddings.chosen))
+  await tx.update(embeddings).set({ chosen }).where(eq(embeddings.id, id))
+}
+
+/** An embedding's number with its problem's, for those that were begun from it. */
+export async function findNumbers(db: Db, id: string) {
+  return (
+    await db
+      .select({ id: embeddings.id, number: embeddings.number, problem: { id: problems.id, number: problems.number } })
+      .from(embeddings)
+      .innerJoin(problems, eq(problems.id, embeddings.problemId))
+      .where(eq(embeddings.id, id))
+  )[0]
+}
+
+/** Embeddings of several problems with the machine's name and its working qubits then, newest first. */
 export async function embeddingsOfProblems(db: Db, problemIds: readonly string[]) {
   if (problemIds.length === 0) return []
   return db
-    .select({ embedding: embeddings, machine: machines.name })
+    .select({ embedding: embeddings, machine: machines.name, qubits: calibrations.qubits })
     .from(embeddings)
     .innerJoin(machines, eq(machines.id, embeddings.machineId))
+    .innerJoin(
+      calibrations,
+      and(eq(calibrations.machineId, embeddings.machineId), eq(calibrations.number, embeddings.calibration)),
+    )
     .where(inArray(embeddings.problemId, [...problemIds]))
     .orderBy(desc(embeddings.createdAt))
 }

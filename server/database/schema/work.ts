@@ -1,3 +1,5 @@
+import { sql } from 'drizzle-orm'
+import type { AnyPgColumn } from 'drizzle-orm/pg-core'
 import {
   boolean,
   doublePrecision,
@@ -9,7 +11,16 @@ import {
   text,
   uniqueIndex,
 } from 'drizzle-orm/pg-core'
-import type { EmbeddingStats, EmbeddingStatus, UnmetView } from '../../../shared/schemas/embeddings'
+import type {
+  EmbeddingMethod,
+  EmbeddingStats,
+  EmbeddingStatus,
+  MethodUsed,
+  Objective,
+  TargetView,
+  UnmetView,
+} from '../../../shared/schemas/embeddings'
+import type { JobKind, JobStatus, JobView } from '../../../shared/schemas/jobs'
 import type { CalibrationSaved, MachineSheet } from '../../../shared/schemas/machines'
 import type { ReadingView, StructureView } from '../../../shared/schemas/problems'
 import type { RunSheetSettings, RunSheetState } from '../../../shared/schemas/run-sheets'
@@ -111,25 +122,45 @@ export const embeddings = pgTable(
     calibration: integer().notNull(),
     number: integer().notNull(),
     status: text().$type<EmbeddingStatus>().notNull(),
-    method: text().notNull(),
+    /** As asked for: what is done to the start where there is one. */
+    method: text().$type<EmbeddingMethod>().notNull(),
     seed: doublePrecision().notNull(),
     tries: integer().notNull(),
     timeLimitSeconds: doublePrecision().notNull(),
+    objective: text().$type<Objective>().notNull().default('longest chain'),
+    target: jsonb().$type<TargetView>().notNull().default({ longestChain: null, totalQubits: null }),
+    /** The embedding to begin from. */
+    startId: text().references((): AnyPgColumn => embeddings.id, { onDelete: 'set null' }),
+    /** Labels of the variables whose chains had to stay as they are in the start. */
+    frozen: jsonb().$type<string[]>().notNull().default([]),
+    /** Chains that differ from the start's. */
+    changedChains: integer(),
+    /** Method and number of the try that gave the embedding. */
+    methodUsed: text().$type<MethodUsed>(),
+    tryNumber: integer(),
     /** Packed arrays: offsets and dense qubit indices. */
     chainsBlobId: text().references(() => blobs.id),
-    stats: jsonb().$type<EmbeddingStats>(),
-    unmet: jsonb().$type<Omit<UnmetView, 'partialChains'>>(),
+    stats: jsonb().$type<Omit<EmbeddingStats, 'unusedShare'>>(),
+    /** `advice` is absent from embeddings of before there was any. */
+    unmet: jsonb().$type<Omit<UnmetView, 'partialChains' | 'advice'> & Partial<Pick<UnmetView, 'advice'>>>(),
     reason: text(),
     fingerprint: text(),
     seconds: doublePrecision(),
+    firstSeconds: doublePrecision(),
+    /** The one to go on with; at most one of a problem on a machine. */
+    chosen: boolean().notNull().default(false),
     version: text().notNull(),
     createdBy: createdBy(),
     createdAt: createdAt(),
   },
   (table) => [
     uniqueIndex().on(table.problemId, table.number),
+    uniqueIndex()
+      .on(table.problemId, table.machineId)
+      .where(sql`chosen`),
     index().on(table.workspaceId),
     index().on(table.machineId),
+    index().on(table.startId),
   ],
 )
 
@@ -206,13 +237,13 @@ export const jobs = pgTable(
   {
     id: id(),
     workspaceId: workspaceId(),
-    kind: text().$type<'embedding' | 'rehearsal'>().notNull(),
+    kind: text().$type<JobKind>().notNull(),
     /** The embedding or return that the job fills. */
     subjectId: text().notNull(),
-    status: text().$type<'waiting' | 'running' | 'done' | 'failed' | 'cancelled'>().notNull(),
+    status: text().$type<JobStatus>().notNull(),
     progress: doublePrecision().notNull(),
     message: text().notNull(),
-    detail: jsonb().$type<Record<string, number | string | null>>().notNull(),
+    detail: jsonb().$type<JobView['detail']>().notNull(),
     log: jsonb().$type<{ at: string; message: string }[]>().notNull(),
     attempts: integer().notNull(),
     cancelRequested: boolean().notNull(),

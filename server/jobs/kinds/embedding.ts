@@ -1,99 +1,128 @@
-import { chainOf } from '../../../shared/engine/embedding/embedding'
-import type { PartialEmbedding } from '../../../shared/engine/embedding/method'
-import type { SearchProgress } from '../../../shared/engine/embedding/progress'
-import type { SearchResult } from '../../../shared/engine/embedding/search'
-import { interactionGraph } from '../../../shared/engine/problem/interaction-graph'
+import type { SearchOptions, SearchResult } from '../../../shared/engine/embedding/search'
+import { outcomeOf } from '../../../shared/engine/embedding/search'
+import type { EmbeddingTask, Start } from '../../../shared/engine/embedding/task'
+import type { App } from '../../app'
 import type { EmbeddingRow } from '../../database/repositories/embeddings'
 import { findEmbeddingOfJob, updateEmbedding } from '../../database/repositories/embeddings'
-import { findProblem } from '../../database/repositories/problems'
-import { packEmbedding } from '../../services/chains'
-import { statsView } from '../../services/embeddings'
-import { calibratedMachine } from '../../services/machine-graphs'
-import { problemData } from '../../services/problems'
-import type { App } from '../../app'
+import { changedChains, packEmbedding } from '../../services/chains'
+import { storedStats } from '../../services/embedding-stats'
+import type { Subject } from '../../services/embedding-subject'
+import { carriedChains, frozenMask, subjectOf, taskOf } from '../../services/embedding-subject'
+import { shareArrays } from '../../workers/shared-arrays'
+import { newSearchClock, secondsOn } from '../../workers/search-clock'
 import type { JobContext, JobKindHandler, JobOutcome } from '../kind'
+import { SearchMonitor } from '../search/search-monitor'
+import { spreadTries } from '../search/spread-tries'
+import { unmetOf } from '../search/unmet'
 
 /** Thrown while saving, it also takes back the adoption of what was written. */
 const DELETED = 'the embedding or its problem was deleted meanwhile'
 
-interface Inputs {
+interface Search {
   row: EmbeddingRow
-  labels: string[]
-  ids: Uint32Array
+  subject: Subject
+  task: EmbeddingTask
+  options: SearchOptions
 }
 
-/** Searches for an embedding in a worker thread and stores what was found, or how far it came. */
+/** Makes an embedding on the worker threads and stores what was found, or how far it came. */
 export const embeddingJob: JobKindHandler = {
   async run(app, context) {
     const row = await findEmbeddingOfJob(app.db, context.job.subjectId)
-    const problem = row && (await findProblem(app.db, row.workspaceId, row.problemId))
-    if (!row || !problem) throw new Error(DELETED)
-    const { labels, problem: coefficients } = await problemData(app, problem)
-    const machine = await calibratedMachine(app, row, row.machineId, row.calibration)
-    const { seed, tries, timeLimitSeconds } = row
-    const output = await app.compute.run(
-      'search',
-      {
-        task: {
-          problem: interactionGraph(coefficients),
-          machine: machine.graph,
-          usable: machine.usable,
-          segments: machine.fabric.segments,
-          family: machine.fabric.family,
-          start: null,
-        },
-        options: { seed, tries, timeLimitSeconds },
-      },
-      {
-        signal: context.signal,
-        onProgress: (progress) =>
-          context.report((progress.tryNumber - 1 + progress.fraction) / tries, progressMessage(progress, tries), {
-            ...progress,
-          }),
-      },
-    )
-    const [violation] = output.violations
-    if (violation)
-      throw new Error(`the checker refused the embedding (${violation.message}); please report this with seed ${seed}`)
-    const inputs = { row, labels, ids: machine.fabric.ids }
-    return output.stats
-      ? found(app, inputs, output.result, statsView(output.stats))
-      : notFound(app, inputs, output.result, context)
+    if (!row) throw new Error(DELETED)
+    const subject = await subjectOf(app, row, row)
+    const task = taskOf(subject, await startOfRow(app, row, subject))
+    const search = { row, subject, task, options: optionsOf(row) }
+    const result = await runTries(app, context, search)
+    return result.embedding ? found(app, context, search, result) : notFound(app, context, search, result)
   },
   async abandon(tx, job, status, reason) {
     await updateEmbedding(tx, job.subjectId, { status, reason })
   },
 }
 
-function progressMessage(
-  { phase, tryNumber, overlap, longestChain, qubitsUsed }: SearchProgress,
-  tries: number,
-): string {
-  const best =
-    longestChain === null ? 'none valid yet' : `best so far: longest chain ${longestChain}, ${qubitsUsed} qubits`
-  return `Try ${tryNumber} of ${tries}, ${phase}, overlap ${overlap}; ${best}`
+async function startOfRow(app: App, row: EmbeddingRow, subject: Subject): Promise<Start | null> {
+  if (row.method !== 'repair' && row.method !== 'shorten') return null
+  const earlier = row.startId ? await findEmbeddingOfJob(app.db, row.startId) : undefined
+  if (!earlier) throw new Error('the embedding to begin from was deleted meanwhile')
+  return { chains: await carriedChains(app, subject, earlier), frozen: frozenMask(subject.labels, row.frozen) }
 }
 
+function optionsOf({ method, seed, tries, timeLimitSeconds, objective, target }: EmbeddingRow): SearchOptions {
+  if (method === 'imported') throw new Error('an imported embedding is not searched for')
+  return { method, seed, tries, timeLimitSeconds, objective, target }
+}
+
+/** Plans the tries, runs as many at once as there are threads, and puts their results together. */
+async function runTries(app: App, context: JobContext, search: Search): Promise<SearchResult> {
+  const { options } = search
+  const { signal } = context
+  const task = shareArrays(search.task)
+  const plan = await app.compute.run('planSearch', { task, options })
+  const clock = newSearchClock()
+  const monitor = new SearchMonitor(plan.length, options.objective, options.timeLimitSeconds)
+  const results = await spreadTries({
+    plan,
+    threads: app.compute.threads,
+    signal,
+    run: async (planned, endTry) => {
+      monitor.began(planned)
+      const result = await app.compute.run(
+        'runTry',
+        { task, planned, settings: options, clock },
+        {
+          signal: endTry,
+          onProgress: (progress) => {
+            const detail = monitor.report(progress, secondsOn(clock))
+            context.report(monitor.fraction, monitor.message(detail), { ...detail })
+          },
+        },
+      )
+      monitor.ended(planned, result?.quality ?? null)
+      return result
+    },
+  })
+  return outcomeOf(results, plan.length, options, secondsOn(clock))
+}
+
+/** Checks the embedding once more with the separate checker before it is saved. */
 async function found(
   app: App,
-  { row }: Inputs,
+  { signal }: JobContext,
+  { row, subject, task, options }: Search,
   result: SearchResult,
-  stats: EmbeddingRow['stats'],
 ): Promise<JobOutcome> {
-  const { bytes, fingerprint } = packEmbedding(result.embedding!)
+  const embedding = result.embedding!
+  const { violations, stats } = await app.compute.run('checkEmbedding', {
+    task,
+    embedding,
+    labels: subject.labels,
+    ids: subject.machine.fabric.ids,
+  })
+  if (!stats)
+    throw new Error(
+      `the checker refused the embedding (${violations[0]!.message}); please report this with seed ${options.seed}`,
+    )
+  const { bytes, fingerprint } = packEmbedding(embedding)
   const chainsBlobId = await app.blobs.write(bytes)
-  const early = result.stoppedEarly ? ', stopped early with the best so far' : ''
+  const early = !result.stoppedEarly
+    ? ''
+    : `, stopped early ${signal.aborted ? 'when it was cancelled' : 'at the time limit'} with the best so far`
   return {
     status: 'done',
-    message: `found: longest chain ${stats!.chainLength.max}, ${stats!.qubitsUsed} qubits, try ${result.tryNumber} of ${result.tries}${early}`,
+    message: `found: longest chain ${stats.chainLength.max}, ${stats.qubitsUsed} qubits, by ${result.method} in try ${result.tryNumber} of ${result.tries}${early}`,
     async save(tx) {
       await app.blobs.adopt(tx, chainsBlobId)
       const kept = await updateEmbedding(tx, row.id, {
         status: 'found',
+        methodUsed: result.method,
+        tryNumber: result.tryNumber,
         chainsBlobId,
         fingerprint,
-        stats,
+        stats: storedStats(stats),
         seconds: result.seconds,
+        firstSeconds: result.firstSeconds,
+        changedChains: task.start ? changedChains(task.start.chains, embedding) : null,
         unmet: null,
         reason: null,
       })
@@ -102,17 +131,18 @@ async function found(
   }
 }
 
-async function notFound(app: App, inputs: Inputs, result: SearchResult, context: JobContext): Promise<JobOutcome> {
-  const { row } = inputs
-  const cancelled = context.signal.aborted
+async function notFound(app: App, { signal }: JobContext, search: Search, result: SearchResult): Promise<JobOutcome> {
+  const { row, subject } = search
+  const cancelled = signal.aborted
   const why = cancelled
     ? 'Cancelled'
     : result.status === 'timed out'
       ? `None found in the time limit of ${row.timeLimitSeconds} s`
-      : `None found in ${result.tries} tries`
-  const unmet = result.partial ? unmetOf(inputs, result.partial, why) : null
+      : `None found in ${result.tries} ${result.tries === 1 ? 'try' : 'tries'}`
+  const { partial } = result
+  const unmet = partial ? unmetOf(subject, partial, why) : null
   const reason = unmet?.message ?? `${why}.`
-  const chainsBlobId = result.partial ? await app.blobs.write(packEmbedding(result.partial.chains).bytes) : null
+  const chainsBlobId = partial ? await app.blobs.write(packEmbedding(partial.chains).bytes) : null
   return {
     status: cancelled ? 'cancelled' : 'done',
     message: reason,
@@ -127,23 +157,5 @@ async function notFound(app: App, inputs: Inputs, result: SearchResult, context:
       })
       if (!kept) throw new Error(DELETED)
     },
-  }
-}
-
-/** What stood in the way: the shared qubits of the best state, and whose chains share them. */
-function unmetOf({ labels, ids }: Inputs, partial: PartialEmbedding, why: string) {
-  const shared = new Set(partial.overlappedQubits)
-  const variables = labels.filter((_, i) => chainOf(partial.chains, i).some((q) => shared.has(q)))
-  const parts = [
-    partial.overlap > 0 ? `${shared.size} ${shared.size === 1 ? 'qubit' : 'qubits'} wanted by more than one chain` : '',
-    partial.unmet.length > 0 ? `${partial.unmet.length} interactions without a coupler` : '',
-    partial.unplaced > 0 ? `${partial.unplaced} variables without a qubit` : '',
-  ].filter(Boolean)
-  return {
-    message: `${why}. The closest state has ${parts.join(', ') || 'no conflicts'}. More tries, a longer limit or a larger machine may help.`,
-    overlap: partial.overlap,
-    overlappedQubits: partial.overlappedQubits.map((q) => ids[q]!),
-    variables,
-    unmetInteractions: partial.unmet.length,
   }
 }

@@ -2,6 +2,7 @@ import { writeSamplesCsv } from '../../../shared/engine/readout/samples-csv'
 import { DEMO_ACCOUNTS, DEMO_PASSWORD } from '../../../shared/demo-accounts'
 import { createRandom } from '../../../shared/engine/random'
 import type { Family } from '../../../shared/engine/machine/fabric'
+import { createEmbeddingSchema } from '../../../shared/schemas/embeddings'
 import { createMachineSchema } from '../../../shared/schemas/machines'
 import { uploadProblemSchema } from '../../../shared/schemas/problems'
 import { createRunSheetSchema } from '../../../shared/schemas/run-sheets'
@@ -119,14 +120,8 @@ async function seedEmbedding(
   machineId: string,
   seed: number,
 ): Promise<string> {
-  const { id, jobId } = await startEmbedding(app, developer, {
-    problemId,
-    machineId,
-    method: 'auto',
-    seed,
-    tries: 4,
-    timeLimitSeconds: 20,
-  })
+  const search = createEmbeddingSchema.parse({ problemId, machineId, seed, tries: 4, timeLimitSeconds: 20 })
+  const { id, jobId } = await startEmbedding(app, developer, search)
   for (;;) {
     const job = await findJob(app.db, jobId)
     if (job?.status === 'done') return id

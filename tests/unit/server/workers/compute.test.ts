@@ -5,11 +5,11 @@ import { afterEach, expect, test } from 'vitest'
 import type { Compute } from '../../../../server/workers/compute'
 import { createCompute } from '../../../../server/workers/compute'
 
-/** Stands in for the bundled entry: searches and rehearsals last until they are cancelled, everything else is at once. */
+/** Stands in for the bundled entry: tries and rehearsals last until they are cancelled, everything else is at once. */
 const THREAD = `
 export default function run({ name, input, port, cancel }) {
   const flag = new Int32Array(cancel)
-  if (name === 'search' || name === 'rehearse') while (Atomics.load(flag, 0) === 0) Atomics.wait(flag, 0, 0, 20)
+  if (name === 'runTry' || name === 'rehearse') while (Atomics.load(flag, 0) === 0) Atomics.wait(flag, 0, 0, 20)
   port.close()
   return { name, input }
 }`
@@ -23,11 +23,11 @@ async function start(threads: number): Promise<Compute> {
   return (compute = createCompute(() => folder, threads))
 }
 
-test('what a person waits for does not queue behind the searches and rehearsals that fill the threads', async () => {
+test('what a person waits for does not queue behind the tries and rehearsals that fill the threads', async () => {
   const { run } = await start(1)
   const cancel = new AbortController()
   const long = [
-    run('search', {} as never, { signal: cancel.signal }),
+    run('runTry', {} as never, { signal: cancel.signal }),
     run('rehearse', {} as never, { signal: cancel.signal }),
   ]
   expect(await run('summarise', { seed: 7 } as never)).toEqual({ name: 'summarise', input: { seed: 7 } })
@@ -37,5 +37,5 @@ test('what a person waits for does not queue behind the searches and rehearsals 
 
 test('a task that is cancelled before it starts is told so', async () => {
   const { run } = await start(1)
-  expect(await run('search', {} as never, { signal: AbortSignal.abort() })).toMatchObject({ name: 'search' })
+  expect(await run('runTry', {} as never, { signal: AbortSignal.abort() })).toMatchObject({ name: 'runTry' })
 })

@@ -1,0 +1,87 @@
+import type { Embedding } from '../../shared/engine/embedding/embedding'
+import type { EmbeddingTask, Start } from '../../shared/engine/embedding/task'
+import { chainOf, packChains } from '../../shared/engine/embedding/embedding'
+import type { Graph } from '../../shared/engine/graph/graph'
+import { interactionGraph } from '../../shared/engine/problem/interaction-graph'
+import { DomainError } from '../../shared/errors'
+import type { Actor, App } from '../app'
+import type { EmbeddingRow } from '../database/repositories/embeddings'
+import { findEmbedding } from '../database/repositories/embeddings'
+import type { ProblemRow } from '../database/repositories/problems'
+import { findProblem } from '../database/repositories/problems'
+import { unpackChains } from './chains'
+import type { CalibratedMachine } from './machine-graphs'
+import { calibratedMachine } from './machine-graphs'
+import { problemData, problemRow } from './problems'
+
+/** An embedding of the workspace. @throws DomainError not found, also for another workspace's */
+export async function embeddingRow(app: App, actor: Actor, id: string): Promise<EmbeddingRow> {
+  const row = await findEmbedding(app.db, actor.workspaceId, id)
+  if (!row) throw new DomainError('not found', 'embedding.unknown', 'There is no such embedding in this workspace.')
+  return row
+}
+
+/** A problem that is to be embedded, or is, and the machine at one calibration. */
+export interface Subject {
+  problem: ProblemRow
+  labels: string[]
+  graph: Graph
+  machine: CalibratedMachine
+}
+
+/** @throws DomainError not found, also for things of another workspace */
+export async function subjectOf(
+  app: App,
+  actor: Pick<Actor, 'workspaceId'>,
+  ids: { problemId: string; machineId: string; calibration?: number },
+): Promise<Subject> {
+  const problem = await problemRow(app, actor, ids.problemId)
+  const { labels, problem: coefficients } = await problemData(app, problem)
+  const machine = await calibratedMachine(app, actor, ids.machineId, ids.calibration)
+  return { problem, labels, graph: interactionGraph(coefficients), machine }
+}
+
+/** What the engine is given. */
+export const taskOf = ({ graph, machine }: Subject, start: Start | null): EmbeddingTask => ({
+  problem: graph,
+  machine: machine.graph,
+  usable: machine.usable,
+  segments: machine.fabric.segments,
+  family: machine.fabric.family,
+  start,
+})
+
+/**
+ * The chains of an earlier embedding on the same machine, for the variables of the subject by label: empty for those that
+ * the earlier problem did not have. Qubits keep their dense indices, which are the fabric's at every calibration.
+ */
+export async function carriedChains(app: App, subject: Subject, earlier: EmbeddingRow): Promise<Embedding> {
+  const chains = unpackChains(await app.blobs.read(earlier.chainsBlobId!))
+  if (earlier.problemId === subject.problem.id) return chains
+  const problem = await findProblem(app.db, earlier.workspaceId, earlier.problemId)
+  const { labels } = await problemData(app, problem!)
+  const places = new Map(labels.map((label, i) => [label, i]))
+  return packChains(
+    subject.labels.map((label) => {
+      const place = places.get(label)
+      return place === undefined ? [] : chainOf(chains, place)
+    }),
+  )
+}
+
+/** Marks the variables that are named. */
+export function frozenMask(labels: readonly string[], frozen: readonly string[]): Uint8Array {
+  const named = new Set(frozen)
+  return Uint8Array.from(labels, (label) => (named.has(label) ? 1 : 0))
+}
+
+/** What a new embedding of the subject is stored with, however it is made. */
+export const identityOf = (app: App, actor: Actor, { problem, machine }: Subject) => ({
+  workspaceId: actor.workspaceId,
+  problemId: problem.id,
+  machineId: machine.machine.id,
+  calibration: machine.calibration.number,
+  version: app.version,
+  createdBy: actor.userId,
+  createdAt: app.now(),
+})
