@@ -1,8 +1,11 @@
 import type { CreateEmbedding, EmbeddingView } from '#shared/schemas/embeddings'
 import type { MachineSheet } from '#shared/schemas/machines'
+import type { Page } from '#shared/schemas/common'
+import type { EmbeddingOfProblem, ProblemItem, ProblemView } from '#shared/schemas/problems'
 import type { ReturnView } from '#shared/schemas/returns'
 import type { ProgrammedView, RunSheetView } from '#shared/schemas/run-sheets'
 import type { ChainFindings, EmbeddingChains } from '~/utils/embedding/layers'
+import type { StartSettings } from '~/utils/embedding/search'
 import { unpackArrays } from '#shared/packed-arrays'
 
 export const useEmbedding = (id: MaybeRefOrGetter<string>) =>
@@ -32,6 +35,39 @@ export function useEmbeddingChains(embedding: MaybeRefOrGetter<EmbeddingView | n
   }
   onMounted(() => watch(found, load, { immediate: true }))
   return { chains, failed, load }
+}
+
+/**
+ * The embeddings of the same problem, and the problems that chains may be carried over to, loaded in the browser once
+ * the embedding is found. `siblings` is null until it is there.
+ */
+export function useSiblings(embedding: MaybeRefOrGetter<EmbeddingView | null | undefined>) {
+  const siblings = shallowRef<readonly EmbeddingOfProblem[] | null>(null)
+  const problems = shallowRef<readonly ProblemItem[]>([])
+  const problemId = computed(() => {
+    const view = toValue(embedding)
+    return view?.status === 'found' ? view.problem.id : null
+  })
+  const load = async (): Promise<void> => {
+    const id = problemId.value
+    const problem = id ? await $fetch<ProblemView>(`/api/problems/${id}`).catch(() => null) : null
+    if (id === problemId.value) siblings.value = problem?.embeddings ?? null
+  }
+  const loadProblems = async (): Promise<void> => {
+    const page = await $fetch<Page<ProblemItem>>('/api/problems?limit=200').catch(() => null)
+    problems.value = page?.items ?? []
+  }
+  onMounted(() =>
+    watch(
+      problemId,
+      async (id) => {
+        await load()
+        if (id) await loadProblems()
+      },
+      { immediate: true },
+    ),
+  )
+  return { siblings, problems, load }
 }
 
 const REPORTED = ['returned', 'closed']
@@ -73,11 +109,20 @@ export function useChainFindings(
   return { findings, sheets, sheetId, choose }
 }
 
+type NewEmbedding = Partial<CreateEmbedding> & Pick<CreateEmbedding, 'problemId' | 'machineId'>
+
 export function useEmbeddingActions() {
   const api = useApi()
+  const start = (input: NewEmbedding) => api.post<{ id: string; jobId: string }>('/api/embeddings', input)
   return {
-    start: (input: Partial<CreateEmbedding> & Pick<CreateEmbedding, 'problemId' | 'machineId'>) =>
-      api.post<{ id: string; jobId: string }>('/api/embeddings', input),
+    start,
+    /** A new embedding made from one that is there, at the calibration in force. */
+    startFrom: ({ id, machine, objective }: EmbeddingView, seed: number, settings: StartSettings) => {
+      const { problemId, work, frozen, timeLimitSeconds } = settings
+      const from = { embeddingId: id, work, frozen }
+      return start({ problemId, machineId: machine.id, seed, objective, timeLimitSeconds, start: from })
+    },
+    choose: (id: string, chosen: boolean) => api.patch<EmbeddingView>(`/api/embeddings/${id}`, { chosen }),
     importChains: (input: { problemId: string; machineId: string; chains: Record<string, number[]> }) =>
       api.post<{ id: string }>('/api/embeddings/import', input),
   }

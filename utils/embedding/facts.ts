@@ -1,14 +1,20 @@
 import type { EmbeddingView } from '#shared/schemas/embeddings'
 import type { Fact } from '../ui/parts'
 import type { ChainFindings } from './layers'
-import { formatNumber, formatPercent } from '../format'
+import { methodName } from './methods'
+import { formatCount, formatNumber, formatPercent } from '../format'
 import { formatDuration, splitDuration } from '../formatTime'
 
-const METHODS: Record<string, string> = { search: 'rerouting', imported: 'imported' }
-
-function methodFact({ method, seed, seconds }: EmbeddingView): Fact {
-  const how = method === 'imported' ? 'by hand or from a file' : `seed ${seed}, ${formatDuration(seconds)}`
-  return { label: 'Method', value: METHODS[method] ?? method, note: how }
+function methodFact(embedding: EmbeddingView): Fact {
+  const { method, tryNumber, tries, seed, seconds } = embedding
+  if (method === 'imported') return { label: 'Method', value: 'imported', note: 'by hand or from a file' }
+  const place = tries > 1 && tryNumber !== null ? `try ${formatNumber(tryNumber)} of ${formatNumber(tries)}, ` : ''
+  return {
+    label: 'Method',
+    value: methodName(embedding),
+    word: true,
+    note: `${place}seed ${seed}, ${formatDuration(seconds)}`,
+  }
 }
 
 function foundFacts(embedding: EmbeddingView): Fact[] {
@@ -16,8 +22,12 @@ function foundFacts(embedding: EmbeddingView): Fact[] {
   if (!stats) return []
   return [
     { label: 'Longest chain', value: formatNumber(stats.chainLength.max), unit: 'qubits' },
-    { label: 'Qubits used', value: formatNumber(stats.qubitsUsed), note: `of ${formatNumber(machine.qubits)}` },
     { label: 'Mean length', value: formatNumber(stats.chainLength.mean, { decimals: 2 }) },
+    {
+      label: 'Qubits used',
+      value: formatNumber(stats.qubitsUsed),
+      note: `of ${formatNumber(machine.qubits)}, ${formatPercent(stats.unusedShare)} left free`,
+    },
     { label: 'Chain couplers', value: formatNumber(stats.chainCouplers) },
     {
       label: 'Interaction couplers',
@@ -34,7 +44,12 @@ function searchFacts(embedding: EmbeddingView): Fact[] {
     { label: 'Variables', value: formatNumber(problem.variables) },
     { label: 'Interactions', value: formatNumber(problem.interactions) },
     { label: 'Working qubits', value: formatNumber(machine.qubits), note: machine.family },
-    { label: 'Search', value: formatNumber(tries), note: `tries, seed ${seed}` },
+    {
+      label: 'Method',
+      value: methodName(embedding),
+      word: true,
+      note: `${formatCount(tries, 'try', 'tries')}, seed ${seed}`,
+    },
     { label: 'Time limit', value: formatNumber(timeLimitSeconds), unit: 's' },
   ]
   if (seconds !== null) facts.push({ label: 'Time taken', ...splitDuration(seconds) })
