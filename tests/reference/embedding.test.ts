@@ -155,7 +155,7 @@ describe('published constructions bound what has to be found', () => {
       [completeGraph(4), chimeraGraph(1, 6, 2)],
     ] as const) {
       const usable = new Uint8Array(machine.order).fill(1)
-      expect(provedInfeasible(problem, machine, usable)).toBeNull()
+      expect(provedInfeasible(taskOf(problem, machine, usable))).toBeNull()
       expect(findEmbedding(taskOf(problem, machine, usable), { tries: 3 }, control).status).toBe('none found')
     }
   })

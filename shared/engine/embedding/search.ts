@@ -130,7 +130,7 @@ export function findEmbedding(
   const began = control.now()
   const seconds = (): number => control.now() - began
   const results: TryResult[] = []
-  const feasible = !provedInfeasible(task.problem, task.machine, task.usable)
+  const feasible = !provedInfeasible(task)
   const plan = feasible ? planTries(task, settings) : []
   for (const planned of plan) {
     const left = settings.timeLimitSeconds - seconds()
