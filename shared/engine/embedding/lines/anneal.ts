@@ -1,0 +1,83 @@
+import type { Watch } from '../progress'
+import type { Assignment } from './assignment'
+import type { Coin } from './coin'
+import { makeMove } from './moves'
+
+/** What an anneal changes from its beginning to its end. */
+export interface Schedule {
+  /** Number of moves. */
+  readonly moves: number
+  /** Share of the moves over which the figures below go from their first value to their last. */
+  readonly ramp: number
+  /** Temperature, geometric. */
+  readonly hottest: number
+  readonly coldest: number
+  /** Energy of one pair of intervals on a qubit, linear. */
+  readonly firstPairWeight: number
+  readonly lastPairWeight: number
+  /** Energy of a qubit. */
+  readonly lengthWeight: number
+  /** Largest distance of a line from where it was, in lines, linear. */
+  readonly firstRadius: number
+  readonly lastRadius: number
+}
+
+/** Energy of an interaction without a coupler; it is counted once for each of its two ends. */
+const UNMET_WEIGHT = 8
+
+/** Moves between two looks at the watch: a few milliseconds. */
+const MOVES_PER_LOOK = 1024
+
+/** Every variable on a random line of either side, every interaction served by a random one of its two. */
+export function scatter(assignment: Assignment, coin: Coin): void {
+  const { problem, crossings } = assignment
+  for (let part = 0; part < 2 * problem.order; part++) {
+    assignment.begin()
+    assignment.move(part, coin.below(crossings.counts[part & 1]!))
+  }
+  for (let k = 0; k < problem.ends.length / 2; k++) {
+    assignment.begin()
+    if (coin.below(2) === 0) assignment.flip(k)
+  }
+}
+
+/**
+ * Simulated annealing (Kirkpatrick, Gelatt & Vecchi, Science 220, 1983) of line intervals. `onValid` is called once, in
+ * the first state without overuse and unmet interactions. Returns false when it was stopped.
+ * @param share of the try's work that is done when it begins, and when it ends; 0 … 1
+ */
+export function anneal(
+  assignment: Assignment,
+  coin: Coin,
+  schedule: Schedule,
+  watch: Watch,
+  share: readonly [number, number],
+  onValid: (() => void) | null,
+): boolean {
+  const { moves, ramp, hottest, coldest, firstPairWeight, lastPairWeight, lengthWeight } = schedule
+  const { firstRadius, lastRadius } = schedule
+  let awaited = onValid
+  for (let done = 0; done < moves; done += MOVES_PER_LOOK) {
+    if (watch.shouldStop(assignment.pairs)) return false
+    const way = Math.min(1, done / (moves * ramp))
+    const temperature = hottest * (coldest / hottest) ** way
+    const pairWeight = firstPairWeight + (lastPairWeight - firstPairWeight) * way
+    const radius = Math.round(firstRadius + (lastRadius - firstRadius) * way)
+    for (let i = Math.min(MOVES_PER_LOOK, moves - done); i > 0; i--) {
+      const { length, pairs, missing } = assignment
+      assignment.begin()
+      makeMove(assignment, coin, radius)
+      const rise =
+        lengthWeight * (assignment.length - length) +
+        pairWeight * (assignment.pairs - pairs) +
+        (UNMET_WEIGHT / 2) * (assignment.missing - missing)
+      if (rise > 0 && Math.exp(-rise / temperature) < coin.float()) assignment.undo()
+      else if (awaited && assignment.pairs === 0 && assignment.missing === 0) {
+        awaited()
+        awaited = null
+      }
+    }
+    watch.report(assignment.pairs, share[0] + ((share[1] - share[0]) * done) / moves)
+  }
+  return true
+}
