@@ -35,9 +35,9 @@ interface Migratable {
 }
 
 /** Applies the migrations that the database does not have yet. */
-export async function migrate(database: Database): Promise<void> {
+export async function migrate(database: Database, migrations = MIGRATIONS): Promise<void> {
   const handle = database.db as unknown as Migratable
-  await database.exclusively(() => handle.dialect.migrate(MIGRATIONS, handle.session, 'migrations'))
+  await database.exclusively(() => handle.dialect.migrate(migrations, handle.session, 'migrations'))
 }
 
 /** Opens the PostgreSQL server at `databaseUrl`, or the embedded database in `dataFolder`. */

@@ -107,7 +107,7 @@ export async function embeddingView(app: App, actor: Actor, id: string): Promise
     chains: found ? named : {},
     stats: stats && { ...stats, lengthHistogram: lengthHistogram(chains) },
     valid: found,
-    unmet: row.unmet ? { ...row.unmet, advice: row.unmet.advice ?? [], partialChains: found ? {} : named } : null,
+    unmet: row.unmet ? { ...row.unmet, partialChains: found ? {} : named } : null,
     createdBy: await personOf(app.db, row.createdBy),
     createdAt: row.createdAt.toISOString(),
     runSheets: sheets.map((sheet) => ({ id: sheet.id, number: sheet.number, state: sheet.state })),

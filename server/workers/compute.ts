@@ -2,11 +2,14 @@ import { Piscina } from 'piscina'
 import { availableParallelism } from 'node:os'
 import { join } from 'node:path'
 import { MessageChannel } from 'node:worker_threads'
+import { FLAGS } from './flags'
 import type { TaskInput, TaskName, TaskOutput, TaskProgress } from './tasks'
 
 export interface RunOptions<N extends TaskName> {
   /** Asks the task to stop early; it then answers what it has. */
   signal?: AbortSignal
+  /** The answer when the signal comes before a thread took the task. Without it the task is run even then. */
+  unbegun?: TaskOutput<N>
   onProgress?: (progress: TaskProgress<N>) => void
 }
 
@@ -23,7 +26,7 @@ export interface ThreadMessage {
   name: TaskName
   input: unknown
   port: MessagePort
-  /** One int32; 1 asks the task to stop. */
+  /** See flags.ts. */
   cancel: SharedArrayBuffer
 }
 
@@ -46,14 +49,22 @@ export function createCompute(workersFolder: () => string, threads = availablePa
   return {
     threads,
     async run(name, input, options = {}) {
-      const cancel = new SharedArrayBuffer(4)
-      const stop = (): void => void Atomics.store(new Int32Array(cancel), 0, 1)
+      const flags = new Int32Array(new SharedArrayBuffer(8))
+      const withdrawal = new AbortController()
+      const stop = (): void => {
+        Atomics.store(flags, FLAGS.stop, 1)
+        if ('unbegun' in options && Atomics.load(flags, FLAGS.begun) === 0) withdrawal.abort()
+      }
       if (options.signal?.aborted) stop()
       options.signal?.addEventListener('abort', stop)
       const { port1, port2 } = new MessageChannel()
       port1.on('message', (progress) => options.onProgress?.(progress))
       try {
-        return await poolFor(name).run({ name, input, port: port2, cancel }, { transferList: [port2] })
+        const message: ThreadMessage = { name, input, port: port2, cancel: flags.buffer }
+        return await poolFor(name).run(message, { transferList: [port2], signal: withdrawal.signal })
+      } catch (error) {
+        if (withdrawal.signal.aborted) return options.unbegun!
+        throw error
       } finally {
         options.signal?.removeEventListener('abort', stop)
         port1.close()

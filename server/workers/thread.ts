@@ -1,18 +1,20 @@
 import { move, transferableSymbol, valueSymbol } from 'piscina'
 import type { Control } from '../../shared/engine/control'
 import type { ThreadMessage } from './compute'
+import { FLAGS } from './flags'
 import { TASKS } from './tasks'
 
 const REPORT_EVERY_SECONDS = 0.1
 
 /** Entry of a worker thread: message → engine → result, with the buffers moved back rather than copied. */
 export default function run({ name, input, port, cancel }: ThreadMessage): unknown {
-  const flag = new Int32Array(cancel)
+  const flags = new Int32Array(cancel)
+  Atomics.store(flags, FLAGS.begun, 1)
   const now = (): number => performance.now() / 1000
   let lastReport = -Infinity
   const control: Control<unknown> = {
     now,
-    cancelled: () => Atomics.load(flag, 0) === 1,
+    cancelled: () => Atomics.load(flags, FLAGS.stop) === 1,
     report: (progress) => {
       if (now() - lastReport < REPORT_EVERY_SECONDS) return
       lastReport = now()

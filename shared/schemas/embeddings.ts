@@ -115,6 +115,8 @@ export interface AdviceView {
 /** Why there is no embedding: what stood in the way when the search ended. */
 export interface UnmetView {
   message: string
+  /** Whether a bound proves that there is none: no search will find one. */
+  proved: boolean
   /** Qubits wanted by more than one chain, surplus uses counted. */
   overlap: number
   overlappedQubits: number[]

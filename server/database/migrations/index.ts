@@ -67,7 +67,7 @@ export const MIGRATIONS = [
   {
     "tag": "0001_embedding_methods",
     "folderMillis": 1796130726600,
-    "hash": "dfca309ca48ea63e6583461764925595f1eac52fcdfc3dd6d86755bb398b00a9",
+    "hash": "1daa0a629d8cd3c8b9fa7d6f048b1efe69c2ef2c8aed1aa5622b3628f8acebec",
     "bps": true,
     "sql": [
       "ALTER TABLE \"embeddings\" ADD COLUMN \"objective\" text DEFAULT 'longest chain' NOT NULL;",
@@ -82,7 +82,8 @@ export const MIGRATIONS = [
       "\nALTER TABLE \"embeddings\" ADD CONSTRAINT \"embeddings_start_id_embeddings_id_fk\" FOREIGN KEY (\"start_id\") REFERENCES \"public\".\"embeddings\"(\"id\") ON DELETE set null ON UPDATE no action;",
       "\nCREATE UNIQUE INDEX \"embeddings_problem_id_machine_id_index\" ON \"embeddings\" USING btree (\"problem_id\",\"machine_id\") WHERE chosen;",
       "\nCREATE INDEX \"embeddings_start_id_index\" ON \"embeddings\" USING btree (\"start_id\");",
-      "\nUPDATE \"embeddings\" SET \"method_used\" = \"method\" WHERE \"status\" = 'found';\n"
+      "\nUPDATE \"embeddings\" SET \"method_used\" = \"method\" WHERE \"status\" = 'found';",
+      "\nUPDATE \"embeddings\" SET \"unmet\" = \"unmet\" || '{\"proved\":false,\"advice\":[]}'::jsonb WHERE \"unmet\" IS NOT NULL;\n"
     ]
   }
 ]

@@ -141,8 +141,7 @@ export const embeddings = pgTable(
     /** Packed arrays: offsets and dense qubit indices. */
     chainsBlobId: text().references(() => blobs.id),
     stats: jsonb().$type<Omit<EmbeddingStats, 'unusedShare'>>(),
-    /** `advice` is absent from embeddings of before there was any. */
-    unmet: jsonb().$type<Omit<UnmetView, 'partialChains' | 'advice'> & Partial<Pick<UnmetView, 'advice'>>>(),
+    unmet: jsonb().$type<Omit<UnmetView, 'partialChains'>>(),
     reason: text(),
     fingerprint: text(),
     seconds: doublePrecision(),

@@ -13,6 +13,7 @@ import { newSearchClock, secondsOn } from '../../workers/search-clock'
 import type { JobContext, JobKindHandler, JobOutcome } from '../kind'
 import { SearchMonitor } from '../search/search-monitor'
 import { spreadTries } from '../search/spread-tries'
+import type { Ending } from '../search/unmet'
 import { unmetOf } from '../search/unmet'
 
 /** Thrown while saving, it also takes back the adoption of what was written. */
@@ -72,6 +73,7 @@ async function runTries(app: App, context: JobContext, search: Search): Promise<
         { task, planned, settings: options, clock },
         {
           signal: endTry,
+          unbegun: null,
           onProgress: (progress) => {
             const detail = monitor.report(progress, secondsOn(clock))
             context.report(monitor.fraction, monitor.message(detail), { ...detail })
@@ -131,17 +133,25 @@ async function found(
   }
 }
 
+/** Why there is none; by a proof where a longer look finds one. */
+async function endingOf(app: App, signal: AbortSignal, { row, task }: Search, result: SearchResult): Promise<Ending> {
+  if (signal.aborted) return { words: 'Cancelled', proved: false }
+  const proof = await app.compute.run('proveInfeasible', { task, thorough: true })
+  if (proof) return { words: `There is no embedding. ${proof.message.replace(/\.$/, '')}`, proved: true }
+  const within =
+    result.status === 'timed out'
+      ? `the time limit of ${row.timeLimitSeconds} s`
+      : `${result.tries} ${result.tries === 1 ? 'try' : 'tries'}`
+  return { words: `None found in ${within}`, proved: false }
+}
+
 async function notFound(app: App, { signal }: JobContext, search: Search, result: SearchResult): Promise<JobOutcome> {
   const { row, subject } = search
+  const ending = await endingOf(app, signal, search, result)
   const cancelled = signal.aborted
-  const why = cancelled
-    ? 'Cancelled'
-    : result.status === 'timed out'
-      ? `None found in the time limit of ${row.timeLimitSeconds} s`
-      : `None found in ${result.tries} ${result.tries === 1 ? 'try' : 'tries'}`
   const { partial } = result
-  const unmet = partial ? unmetOf(subject, partial, why) : null
-  const reason = unmet?.message ?? `${why}.`
+  const unmet = partial ? unmetOf(subject, partial, ending) : null
+  const reason = unmet?.message ?? `${ending.words}.`
   const chainsBlobId = partial ? await app.blobs.write(packEmbedding(partial.chains).bytes) : null
   return {
     status: cancelled ? 'cancelled' : 'done',
