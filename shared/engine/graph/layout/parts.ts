@@ -1,4 +1,4 @@
-import { graphFromSortedEdges } from '../build'
+import { graphFromEdges } from '../build'
 import type { Graph } from '../graph'
 
 /** A connected part of a graph as a graph of its own; vertex i of it is `vertices[i]` of the whole. */
@@ -7,7 +7,10 @@ export interface Part {
   readonly vertices: Int32Array
 }
 
-/** Vertices of each connected part of what `kept` marks, ascending within a part. */
+/**
+ * Vertices of each connected part of what `kept` marks, breadth first: neighbours then lie near each other in memory,
+ * whatever the numbering of the whole.
+ */
 function partLists({ order, offsets, targets }: Graph, kept: Uint8Array): Int32Array[] {
   const left = kept.slice()
   const queue = new Int32Array(order)
@@ -26,12 +29,12 @@ function partLists({ order, offsets, targets }: Graph, kept: Uint8Array): Int32A
         queue[count++] = w
       }
     }
-    lists.push(queue.slice(0, count).sort())
+    lists.push(queue.slice(0, count))
   }
   return lists
 }
 
-/** The graph on ascending `vertices` that are joined to no others but those that `kept` leaves out. */
+/** The graph on `vertices`, which are joined to no others but those that `kept` leaves out. */
 function partGraph({ offsets, targets }: Graph, vertices: Int32Array, kept: Uint8Array, indexOf: Int32Array): Graph {
   const ends: number[] = []
   vertices.forEach((v, i) => (indexOf[v] = i))
@@ -39,7 +42,7 @@ function partGraph({ offsets, targets }: Graph, vertices: Int32Array, kept: Uint
     for (let p = offsets[v]!; p < offsets[v + 1]!; p++)
       if (targets[p]! > v && kept[targets[p]!] !== 0) ends.push(i, indexOf[targets[p]!]!)
   })
-  return graphFromSortedEdges(vertices.length, Uint32Array.from(ends))
+  return graphFromEdges(vertices.length, ends)
 }
 
 /**

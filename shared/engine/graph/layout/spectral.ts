@@ -11,7 +11,7 @@ export interface SpectralOptions {
   readonly degreeByRoot: number
 }
 
-export const SPECTRAL_DEFAULTS: SpectralOptions = { rounds: 4, degreeBase: 60, degreeByRoot: 2 }
+export const SPECTRAL_DEFAULTS: SpectralOptions = { rounds: 2, degreeBase: 60, degreeByRoot: 2 }
 
 /** Vectors that are iterated together, interleaved: entry k of vertex v is block[4v + k]. The kernels are unrolled. */
 const WIDTH = 4
@@ -148,10 +148,10 @@ function startBlock({ x, y }: Layout): Float64Array {
  * Approximate eigenvectors of a connected graph's unnormalised Laplacian with the smallest eigenvalues above 0,
  * ascending, each of length 1: Chebyshev-filtered subspace iteration (Zhou, Saad, Tiago & Chelikowsky, Self-consistent
  * field calculations using Chebyshev-filtered subspace iteration, J. Comput. Phys. 219:172, 2006) from a drawing of the
- * graph. O(edges·√n). Returns `null` for graphs of fewer than WIDTH + 2 vertices.
+ * graph. O(edges·√vertices) a round. None for graphs of fewer than six vertices.
  */
-export function spectralAxes(graph: Graph, start: Layout, options = SPECTRAL_DEFAULTS): Float64Array[] | null {
-  if (graph.order < WIDTH + 2) return null
+export function lowestModes(graph: Graph, start: Layout, options = SPECTRAL_DEFAULTS): Float64Array[] {
+  if (graph.order < WIDTH + 2) return []
   const bound = eigenvalueBound(graph)
   const degree = Math.round(options.degreeBase + options.degreeByRoot * Math.sqrt(graph.order))
   let block: Float64Array = startBlock(start)
@@ -166,4 +166,13 @@ export function spectralAxes(graph: Graph, start: Layout, options = SPECTRAL_DEF
     values = rayleighRitz(graph, block, spare)
   }
   return Array.from({ length: WIDTH }, (_, k) => block.filter((_, at) => at % WIDTH === k))
+}
+
+/**
+ * Drawings of a connected graph by its lowest modes: the first against the second, and against the third and fourth,
+ * one of which runs across where the graph is much longer than wide. None for graphs of fewer than six vertices.
+ */
+export function spectralLayouts(graph: Graph, start: Layout, options = SPECTRAL_DEFAULTS): Layout[] {
+  const [x, ...others] = lowestModes(graph, start, options)
+  return x ? others.map((y) => ({ x, y })) : []
 }

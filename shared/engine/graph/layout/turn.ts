@@ -1,21 +1,47 @@
+import { sizeOf } from '../graph'
 import type { Graph } from '../graph'
 import { equalisedSites, rankingOf } from './sites'
-import type { Layout, Sites } from './sites'
+import type { Layout, Ranking, Sites } from './sites'
 
 export const TURN_DEFAULTS = {
   /** Angles that are tried over a quarter turn. */
   angles: 24,
   /** Halvings of the angle's step around the best of them. */
-  halvings: 12,
+  halvings: 8,
 } as const
 
-/** A drawing turned by the angle of least wirelength, and the sites that it then takes. */
-export interface Turned {
+/** A drawing and the sites that it takes by rank equalisation. */
+export interface Equalised {
   readonly layout: Layout
   readonly sites: Sites
   readonly length: number
 }
 
+export const shorter = (a: Equalised, b: Equalised): Equalised => (b.length < a.length ? b : a)
+
+/** Equalises drawings of one graph on one grid. */
+export class Equaliser {
+  private readonly ranking: Ranking
+
+  constructor(
+    readonly graph: Graph,
+    readonly columns: number,
+    readonly rows: number,
+  ) {
+    this.ranking = rankingOf(graph.order)
+  }
+
+  equalise(layout: Layout): Equalised {
+    return { layout, ...equalisedSites(this.graph, layout.x, layout.y, this.columns, this.rows, this.ranking) }
+  }
+
+  /** Whether all edges have length 1, so that nothing can be better. */
+  isPerfect({ length }: Equalised): boolean {
+    return length === sizeOf(this.graph)
+  }
+}
+
+/** The drawing turned about the origin, in radians. */
 function turned({ x, y }: Layout, angle: number): Layout {
   const [cosine, sine] = [Math.cos(angle), Math.sin(angle)]
   return {
@@ -25,30 +51,41 @@ function turned({ x, y }: Layout, angle: number): Layout {
 }
 
 /**
- * Turns a drawing so that its wirelength after rank equalisation on columns × rows sites is least: the best of some
- * angles over a quarter turn, refined by halving steps.
+ * The two angles that make the turned axes statistically most independent, from the fourth moment of x + iy (Comon,
+ * Independent component analysis, a new concept?, Signal Processing 36:287, 1994). A square grid's two lowest modes,
+ * which have one eigenvalue and hence any direction, are so turned to its rows and columns.
  */
-export function bestTurn(graph: Graph, layout: Layout, columns: number, rows: number, options = TURN_DEFAULTS): Turned {
-  const ranking = rankingOf(graph.order)
-  const at = (angle: number): Turned => {
-    const drawing = turned(layout, angle)
-    return { layout: drawing, ...equalisedSites(graph, drawing.x, drawing.y, columns, rows, ranking) }
+function independentAngles({ x, y }: Layout): [number, number] {
+  let [real, imaginary] = [0, 0]
+  for (let v = 0; v < x.length; v++) {
+    const [a, b] = [x[v]!, y[v]!]
+    real += a ** 4 - 6 * a * a * b * b + b ** 4
+    imaginary += 4 * a * b * (a * a - b * b)
   }
-  let step = Math.PI / 2 / options.angles
-  let angle = 0
-  let best = at(angle)
-  const consider = (candidate: number): void => {
-    const result = at(candidate)
-    if (result.length >= best.length) return
-    best = result
-    angle = candidate
+  const phase = Math.atan2(imaginary, real)
+  return [(Math.PI - phase) / 4, -phase / 4]
+}
+
+/** The drawing at the best of some angles over a quarter turn; the first that is perfect ends the search. */
+export function bestTurn(equaliser: Equaliser, layout: Layout, { angles } = TURN_DEFAULTS): Equalised {
+  let best = equaliser.equalise(layout)
+  const regular = Array.from({ length: angles - 1 }, (_, k) => ((k + 1) * Math.PI) / 2 / angles)
+  for (const angle of [...independentAngles(layout), ...regular]) {
+    if (equaliser.isPerfect(best)) break
+    best = shorter(best, equaliser.equalise(turned(layout, angle)))
   }
-  for (let k = 1; k < options.angles; k++) consider(k * step)
-  for (let k = 0; k < options.halvings; k++) {
+  return best
+}
+
+/** Turns the drawing to and fro by smaller and smaller angles as long as that makes it better. */
+export function refineTurn(equaliser: Equaliser, start: Equalised, { angles, halvings } = TURN_DEFAULTS): Equalised {
+  let best = start
+  let step = Math.PI / 2 / angles
+  for (let k = 0; k < halvings && !equaliser.isPerfect(best); k++) {
     step /= 2
-    const centre = angle
-    consider(centre - step)
-    consider(centre + step)
+    const { layout } = best
+    best = shorter(best, equaliser.equalise(turned(layout, step)))
+    best = shorter(best, equaliser.equalise(turned(layout, -step)))
   }
   return best
 }
