@@ -1,8 +1,8 @@
-import { graphFromEdges } from '../graph/build'
+import { graphFromSortedEdges } from '../graph/build'
 import type { Graph } from '../graph/graph'
 import type { Problem } from './problem'
 
-/** The graph whose vertices are the variables and whose edge k is interaction k. */
+/** The graph whose vertices are the variables and whose edge k is interaction k. Linear: a problem's pairs are sorted. */
 export function interactionGraph(problem: Problem): Graph {
   const { rows, cols } = problem
   const ends = new Uint32Array(2 * rows.length)
@@ -10,5 +10,5 @@ export function interactionGraph(problem: Problem): Graph {
     ends[2 * k] = rows[k]!
     ends[2 * k + 1] = cols[k]!
   }
-  return graphFromEdges(problem.n, ends)
+  return graphFromSortedEdges(problem.n, ends)
 }
