@@ -179,6 +179,31 @@ describe('the chosen embedding', () => {
   })
 })
 
+it('tells what stood in the way where none was found', async () => {
+  // A cycle of nine on a 3 × 3 grid would visit every qubit once; a grid with an odd number of qubits has no such cycle.
+  const problemId = await test.problem(Array.from({ length: 9 }, (_, i) => `v${i} v${(i + 1) % 9} 1`).join('\n'))
+  const machineId = await test.machine({ kind: 'square', width: 3, height: 3 })
+  const { job, view } = await embedded({ problemId, machineId, tries: 3, timeLimitSeconds: 60 })
+  expect(job).toMatchObject({ status: 'done', message: expect.stringMatching(/^None found in 3 tries\. The closest/) })
+  expect(view).toMatchObject({
+    status: 'none found',
+    valid: false,
+    chains: {},
+    stats: null,
+    methodUsed: null,
+    tryNumber: null,
+    reason: job.message,
+    unmet: { proved: false, message: job.message },
+  })
+  const { overlap, overlappedQubits, variables, unmetInteractions, partialChains } = view.unmet!
+  const uses = Object.values(partialChains).flat()
+  expect(overlap).toBe(uses.length - new Set(uses).size)
+  const shared = overlappedQubits.filter((qubit) => uses.filter((use) => use === qubit).length > 1)
+  expect(shared).toEqual(overlappedQubits)
+  expect(variables.every((label) => partialChains[label]!.some((qubit) => shared.includes(qubit)))).toBe(true)
+  expect(overlap + unmetInteractions).toBeGreaterThan(0)
+})
+
 it('lists embeddings with how they were made and what they use', async () => {
   const { problemId, machineId } = await triangle()
   const { view } = await embedded({ problemId, machineId, seed: 5, tries: 2, objective: 'total qubits' })

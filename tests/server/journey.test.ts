@@ -238,6 +238,36 @@ describe('an embedding', () => {
     expect(bad.body.data.issues.length).toBeGreaterThan(1)
   })
 
+  it('can be chosen, which takes the mark from the one before', async () => {
+    type View = { id: string; chosen: boolean }
+    const list = async () => (await developer.get<{ embeddings: View[] }>(`/api/problems/${problemId}`)).body.embeddings
+    const other = (await list()).find(({ id }) => id !== embeddingId)!.id
+    expect((await developer.call('PATCH', `/api/embeddings/${other}`, { chosen: true })).status).toBe(200)
+    const { status, body } = await developer.call<View>('PATCH', `/api/embeddings/${embeddingId}`, { chosen: true })
+    expect(status).toBe(200)
+    expect(body).toMatchObject({ id: embeddingId, chosen: true })
+    expect((await list()).filter(({ chosen }) => chosen).map(({ id }) => id)).toEqual([embeddingId])
+    expect((await steward.call('PATCH', `/api/embeddings/${other}`, { chosen: true })).status).toBe(403)
+    expect((await developer.call('PATCH', `/api/embeddings/${other}`, {})).status).toBe(422)
+  })
+
+  it.each([
+    ['a method beside an embedding to begin from', { method: 'lines', start: { work: 'repair' } }, 'method', /leave/],
+    ['an unknown method', { method: 'magic' }, 'method', /./],
+    ['a target below 1', { target: { longestChain: 0 } }, 'target.longestChain', /./],
+    ['a target of another name', { target: { chain: 3 } }, 'target', /chain/],
+    ['an unknown work', { start: { work: 'improve' } }, 'start.work', /./],
+    ['an unknown variable to keep', { start: { work: 'shorten', frozen: ['q'] } }, 'start.frozen.0', /no variable q/],
+  ])('asked for with %s is refused with the field', async (_what, fields, path, message) => {
+    const start = 'start' in fields ? { start: { embeddingId, ...fields.start } } : {}
+    const { status, body } = await developer.post<{ data: { issues: { path: string; message: string }[] } }>(
+      '/api/embeddings',
+      { problemId, machineId, ...fields, ...start },
+    )
+    expect(status).toBe(422)
+    expect(body.data.issues[0]).toMatchObject({ path, message: expect.stringMatching(message) })
+  })
+
   it('of a problem larger than the machine is refused with by how much', async () => {
     const tiny = await steward.post<{ id: string }>('/api/machines', {
       name: 'Tiny',
