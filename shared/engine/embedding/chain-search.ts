@@ -1,49 +1,54 @@
-import { unmetEdges } from './contacts'
-import { packChains } from './embedding'
-import type { Embedding } from './embedding'
+import { Router } from './chains/router'
+import { negotiate } from './chains/negotiate'
+import { Seeds } from './chains/seeds'
+import { shortenChains } from './chains/shorten'
+import { ChainState } from './chains/state'
+import { packState, partialOf, placeIsolated } from './chains/outcome'
+import { degreeOf } from '../graph/graph'
 import type { Attempt, PartialEmbedding } from './method'
-import { negotiate } from './negotiate'
-import { Rerouter } from './reroute'
-import { shorten } from './shorten'
-import { SearchState } from './state'
+import { positionsOf } from './positions'
 import type { EmbeddingTask } from './task'
 
-/** Gives each variable without interactions a free usable qubit, as long as there are any. */
-function placeIsolated(state: SearchState): void {
-  const { chains, usable } = state
-  let q = 0
-  for (let v = 0; v < state.problem.order; v++) {
-    if (chains.length[v]! > 0) continue
-    while (q < usable.length && (usable[q] === 0 || chains.use[q]! > 0)) q++
-    if (q === usable.length) return
-    chains.add(v, q)
+/** How each round of a try goes about it: more of the machine and more work on the placement each time. */
+const ROUNDS = [
+  { effort: 1, slack: 1 },
+  { effort: 2, slack: 1.5 },
+  { effort: 4, slack: Infinity },
+] as const
+
+/** Partners that a tree is grown from. */
+const STARTS = 3
+
+/**
+ * One try of placing variables on the machine's plane, routing their chains under negotiated congestion, and shortening
+ * them (sources at the parts). Begins anew a few times, with more room and effort, before it gives up.
+ */
+export function searchChains(
+  task: EmbeddingTask,
+  { random, watch, offer, objective }: Attempt,
+): PartialEmbedding | null {
+  const { problem, machine, usable } = task
+  const state = new ChainState(problem, machine, usable)
+  const router = new Router(state, random, STARTS)
+  const seeds = new Seeds(problem, machine, usable, positionsOf(task))
+  const variables = Int32Array.from({ length: problem.order }, (_, v) => v).filter((v) => degreeOf(problem, v) > 0)
+  let closest: PartialEmbedding | null = null
+  for (const { effort, slack } of ROUNDS) {
+    state.clear()
+    watch.phase = 'placing'
+    seeds.sow(state, random, effort, slack, () => watch.shouldStop(state.overlap))
+    watch.phase = 'rerouting'
+    const valid = negotiate(state, router, variables, random, watch)
+    if (valid && placeIsolated(state, usable)) {
+      const give = (): void => offer(packState(state))
+      give()
+      shortenChains(state, router, variables, objective, random, watch, give)
+      return null
+    }
+    placeIsolated(state, usable)
+    const partial = partialOf(state, problem)
+    if (!closest || partial.overlap + partial.unmet.length < closest.overlap + closest.unmet.length) closest = partial
+    if (watch.shouldStop(state.overlap)) break
   }
-}
-
-function snapshot(state: SearchState): Embedding {
-  const { chains, saved, problem } = state
-  return packChains(Array.from({ length: problem.order }, (_, v) => saved.slice(0, chains.copyChain(v, saved))))
-}
-
-/** The state as it is, overlaps and all. */
-function partialOf(state: SearchState): PartialEmbedding {
-  const { overlap, use, length } = state.chains
-  const overlappedQubits: number[] = []
-  use.forEach((chains, q) => chains > 1 && overlappedQubits.push(q))
-  const unplaced = length.reduce((count, qubits) => count + (qubits === 0 ? 1 : 0), 0)
-  return { chains: snapshot(state), overlap, overlappedQubits, unmet: unmetEdges(state), unplaced }
-}
-
-/** One try of placing, rerouting and shortening chains one at a time (sources at the parts). */
-export function searchChains({ problem, machine, usable }: EmbeddingTask, attempt: Attempt): PartialEmbedding | null {
-  const { random, watch, offer } = attempt
-  const state = new SearchState(problem, machine, usable)
-  const rerouter = new Rerouter(state, random)
-  const { valid } = negotiate(state, rerouter, random, watch)
-  placeIsolated(state)
-  if (!valid || state.chains.length.some((qubits) => qubits === 0)) return partialOf(state)
-  offer(snapshot(state))
-  shorten(state, rerouter, random, watch)
-  offer(snapshot(state))
-  return null
+  return closest
 }

@@ -1,5 +1,6 @@
 import type { Random } from '../random'
 import type { Embedding } from './embedding'
+import type { Objective } from './objective'
 import type { Watch } from './progress'
 import type { EmbeddingTask } from './task'
 
@@ -27,6 +28,8 @@ export interface PartialEmbedding {
 /** What one try of a method is given besides the task. */
 export interface Attempt {
   readonly random: Random
+  /** What the best is chosen by. */
+  readonly objective: Objective
   /** Asks for the end, and takes progress; to be asked at least every few milliseconds. */
   readonly watch: Watch
   /** Takes a valid embedding as soon as there is one, and each that may be better; keeps the best. */

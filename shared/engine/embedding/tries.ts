@@ -65,7 +65,7 @@ export function runTry(
     watch.best = quality
     if (reaches(quality, target)) watch.stopped ??= 'target reached'
   }
-  const partial = RUNNERS[method]!(task, { random: createRandom(seed, tryNumber), watch, offer })
+  const partial = RUNNERS[method]!(task, { random: createRandom(seed, tryNumber), objective, watch, offer })
   return {
     tryNumber,
     method,

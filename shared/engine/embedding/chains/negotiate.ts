@@ -1,0 +1,114 @@
+import type { Random } from '../../random'
+import type { Watch } from '../progress'
+import { markTouches } from './grow'
+import type { Router } from './router'
+import { COST_UNIT } from './state'
+import type { ChainState } from './state'
+
+export const NEGOTIATION = {
+  /** Factor on a qubit's cost for each chain that has it, in the first pass, and its growth from pass to pass. */
+  penalty: 3,
+  penaltyGrowth: 1.07,
+  penaltyMost: 10,
+  /** Added to a qubit's history after a pass for each chain beyond the first. */
+  historyStep: 0.5,
+  /** Every so many passes all variables are rerouted, else the conflicted and some of the rest. */
+  fullPassEvery: 5,
+  shareOfRest: 0.5,
+  /** Share of used qubits that are overused below which of the rest only 4·overuse are rerouted. */
+  quietOveruse: 0.02,
+  quietShare: 8,
+  /** Passes without less overlap before a try is given up. */
+  patience: 40,
+  /** Largest random part of a cost, in 64ths; decides between equal ways only. */
+  tieBreak: 4,
+}
+
+/** Variables between two looks at the clock. */
+const VARIABLES_PER_LOOK = 16
+
+/** Shuffles in place (Fisher & Yates). */
+export function shuffle(items: Int32Array, random: Random): void {
+  for (let i = items.length - 1; i > 0; i--) {
+    const j = random.below(i + 1)
+    const moved = items[i]!
+    items[i] = items[j]!
+    items[j] = moved
+  }
+}
+
+/** Costs for the coming pass: history, and fresh tie-breaks. */
+export function refreshCosts(state: ChainState, random: Random, penalty: number): void {
+  const { base, history } = state
+  for (let q = 0; q < base.length; q++)
+    base[q] = Math.floor(COST_UNIT * (1 + history[q]!)) + random.below(NEGOTIATION.tieBreak)
+  state.setPenalty(penalty)
+}
+
+function rememberOveruse({ use, history }: ChainState): void {
+  for (let q = 0; q < use.length; q++) if (use[q]! > 1) history[q]! += NEGOTIATION.historyStep * (use[q]! - 1)
+}
+
+/** Numbers of the variable's partners whose chains do not touch its own. */
+export function unmetPartners(state: ChainState, variable: number): number[] {
+  const { touch, touchedAt, words, partnerOffsets } = state
+  const partners = partnerOffsets[variable + 1]! - partnerOffsets[variable]!
+  markTouches(state, variable)
+  const seen = state.missing.fill(0)
+  for (let record = state.head[variable]!; record >= 0; record = state.recordNext[record]!) {
+    const q = state.recordQubit[record]!
+    if (touchedAt[q] === state.touchNow) for (let w = 0; w < words; w++) seen[w]! |= touch[q * words + w]!
+  }
+  const unmet: number[] = []
+  for (let k = 0; k < partners; k++) if ((seen[k >>> 5]! & (1 << (k & 31))) === 0) unmet.push(k)
+  return unmet
+}
+
+/** Whether each partner of the variable touches its chain. */
+export const isMet = (state: ChainState, variable: number): boolean => unmetPartners(state, variable).length === 0
+
+/**
+ * Reroutes the given variables one at a time until no qubit has two chains: costs grow with present overuse (Cai,
+ * Macready & Roy, arXiv:1406.2741, 2014) and with past overuse (negotiated congestion, McMurchie & Ebeling, FPGA
+ * 1995). Each of them has a chain already, a single qubit will do. Gives up after a number of passes without less overlap.
+ */
+export function negotiate(
+  state: ChainState,
+  router: Router,
+  variables: Int32Array,
+  random: Random,
+  watch: Watch,
+): boolean {
+  const { history } = state
+  history.fill(0)
+  let penalty = NEGOTIATION.penalty
+  let best = Infinity
+  let reroutes = 0
+  let bestAt = 0
+  for (let pass = 0; ; pass++) {
+    if (pass > 0) {
+      if (state.overlap === 0 && variables.every((v) => isMet(state, v))) return true
+      if (state.overlap < best) {
+        best = state.overlap
+        bestAt = reroutes
+      }
+      if (reroutes - bestAt >= NEGOTIATION.patience * variables.length) return false
+      rememberOveruse(state)
+      penalty = Math.min(NEGOTIATION.penaltyMost, penalty * NEGOTIATION.penaltyGrowth)
+      watch.report(state.overlap, 0.5 * (1 - best / state.qubitsUsed))
+    }
+    refreshCosts(state, random, penalty)
+    const quiet = pass > 0 && state.overlap < NEGOTIATION.quietOveruse * state.qubitsUsed
+    const rest = pass % NEGOTIATION.fullPassEvery === 0 ? 1 : NEGOTIATION.shareOfRest
+    const share = quiet ? (NEGOTIATION.quietShare * state.overlap) / variables.length : rest
+    shuffle(variables, random)
+    for (let i = 0; i < variables.length; i++) {
+      const v = variables[i]!
+      if (i % VARIABLES_PER_LOOK === 0 && watch.shouldStop(state.overlap)) return false
+      if (random.float() < share || state.isConflicted(v)) {
+        router.reroute(v)
+        reroutes++
+      }
+    }
+  }
+}
