@@ -1,0 +1,138 @@
+import type { Crossings } from './crossings'
+import { cornerTemplate } from './corner-template'
+import { fillPairing } from './fill'
+import type { Fitter } from './fitter'
+import { PairAnnealer } from './pair-annealing'
+import { pairCosts } from './pair-costs'
+import { extentOf, rankWindows } from './windows'
+import type { Extent, MatchedWindow } from './windows'
+
+const DEFAULTS = {
+  /** Windows looked at of each size, and factor from one size to the next. */
+  windowsPerSize: 100,
+  growth: 1.04,
+  /** Windows of the smallest size that suffices which are all fitted. */
+  fittedWindows: 8,
+  /** A window is annealed when it holds this share of the chains as it is. */
+  promising: 0.74,
+  /** Windows annealed once there is a solution, each a step smaller or larger. */
+  refinements: 6,
+  /** Moves of an annealing a chain, and its temperatures in unmet pairs. */
+  movesPerChain: 600,
+  hot: 2,
+  cold: 0.12,
+  /** Chains beyond the runs that are grown through what the others leave free. */
+  mostExtra: 3,
+  /** Annealings of the largest window before giving up. */
+  lastTries: 8,
+}
+
+/** Sizes from n lines on, in growing steps, up to the whole machine with what qubits stand out. */
+function sizesFrom(n: number, { size }: Extent): number[] {
+  const sizes: number[] = []
+  for (let s = Math.max(1, n); s < size; s = Math.max(s + 1, Math.round(s * DEFAULTS.growth))) sizes.push(s)
+  sizes.push(size)
+  return sizes
+}
+
+/** Fits the problem's core below the diagonals of the machine's windows. */
+export class CornerFitter {
+  private readonly n: number
+  private readonly extent: Extent
+  private readonly sizes: readonly number[]
+  private readonly ranked = new Map<number, MatchedWindow[]>()
+
+  constructor(
+    private readonly fitter: Fitter,
+    private readonly crossings: Crossings,
+  ) {
+    this.n = fitter.core.order
+    this.extent = extentOf(crossings)
+    this.sizes = sizesFrom(this.n, this.extent)
+  }
+
+  private rank(step: number): MatchedWindow[] {
+    const known = this.ranked.get(step)
+    if (known) return known
+    const windows = rankWindows(
+      this.crossings,
+      this.extent,
+      this.sizes[step]!,
+      DEFAULTS.windowsPerSize,
+      this.fitter.attempt.random,
+    )
+    this.ranked.set(step, windows)
+    return windows
+  }
+
+  private held(step: number): number {
+    return this.rank(step)[0]!.pairing.verticals.length
+  }
+
+  private fitsAsItIs(step: number): boolean {
+    let fitted = false
+    for (const { window, pairing } of this.rank(step).slice(0, DEFAULTS.fittedWindows)) {
+      if (this.fitter.attempt.watch.shouldStop(0)) break
+      if (pairing.verticals.length < this.n) break
+      fitted = this.fitter.fit(cornerTemplate(window, pairing)) || fitted
+    }
+    return fitted
+  }
+
+  /** Anneals the best window of one size with all but `extra` chains in it. */
+  private anneal(step: number, extra: number, place: number): boolean {
+    const { random, watch } = this.fitter.attempt
+    const { window, pairing } = this.rank(step)[place % this.rank(step).length]!
+    const slots = this.n - extra
+    const filled = fillPairing(window, pairing, slots)
+    if (!filled) return false
+    watch.phase = 'fitting the template'
+    const annealer = new PairAnnealer(pairCosts(window), filled, random)
+    const { movesPerChain, hot, cold } = DEFAULTS
+    if (!annealer.run({ moves: movesPerChain * slots, hot, cold }, watch)) return false
+    return this.fitter.fit(cornerTemplate(window, annealer.pairing()))
+  }
+
+  /** First size, as a step, whose best window holds so many chains as it is; the last one when none does. */
+  private firstHolding(chains: number): number {
+    for (let step = 0; step < this.sizes.length; step++) {
+      if (this.fitter.attempt.watch.shouldStop(0) || this.held(step) >= chains) return step
+    }
+    return this.sizes.length - 1
+  }
+
+  /** Goes down from a size that worked for as long as smaller ones do. */
+  private refine(from: number): void {
+    let step = from - 1
+    for (let tries = 0; tries < DEFAULTS.refinements && step >= 0; tries++) {
+      if (this.fitter.attempt.watch.shouldStop(0)) return
+      if (!this.anneal(step, 0, tries)) return
+      step--
+    }
+  }
+
+  private firstAnnealed(): boolean {
+    const { watch } = this.fitter.attempt
+    const last = this.sizes.length - 1
+    for (let step = this.firstHolding(DEFAULTS.promising * this.n); step < last; step++) {
+      if (watch.shouldStop(0)) return false
+      if (!this.anneal(step, 0, 0)) continue
+      this.refine(step)
+      return true
+    }
+    for (let tries = 0; tries < DEFAULTS.lastTries; tries++) {
+      if (watch.shouldStop(0)) return false
+      if (this.anneal(last, tries % (DEFAULTS.mostExtra + 1), tries)) return true
+    }
+    return false
+  }
+
+  /** Offers what can be found; returns whether anything was valid. */
+  run(): boolean {
+    if (this.n === 0) return false
+    const step = this.firstHolding(this.n)
+    const whole = this.held(step) >= this.n && this.fitsAsItIs(step)
+    if (whole && this.sizes[step]! <= this.n * DEFAULTS.growth ** 2) return true
+    return this.firstAnnealed() || whole
+  }
+}
