@@ -1,4 +1,5 @@
 import type { Control } from '../../shared/engine/control'
+import { advise } from './tasks/advise'
 import { checkEmbedding } from './tasks/check-embedding'
 import { energies } from './tasks/energies'
 import { planSearch } from './tasks/plan-search'
@@ -13,6 +14,7 @@ import { writeSamplesFile } from './tasks/write-samples'
 
 /** Everything a worker thread can do: structured-cloneable input, control, structured-cloneable output. */
 export const TASKS = {
+  advise,
   checkEmbedding,
   energies,
   planSearch,

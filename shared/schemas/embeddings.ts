@@ -1,4 +1,5 @@
 import { z } from 'zod'
+import type { AdviceKind } from '../engine/embedding/advice'
 import type { Person } from './common'
 import { calibrationNumberSchema, idSchema, seedSchema } from './common'
 
@@ -104,7 +105,7 @@ export interface StartView {
 
 /** Something to do about what stood in the way, the most promising first. */
 export interface AdviceView {
-  kind: string
+  kind: AdviceKind
   message: string
   /** Labels of the variables concerned. */
   variables: string[]
@@ -124,6 +125,8 @@ export interface UnmetView {
   variables: string[]
   /** Interactions without a coupler between their chains. */
   unmetInteractions: number
+  /** An estimate from the closest state; null for searches of before there was one. */
+  neededQubits: number | null
   advice: AdviceView[]
   /** The best state reached, by label: chains that still share qubits. */
   partialChains: Record<string, number[]>

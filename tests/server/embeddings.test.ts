@@ -202,6 +202,13 @@ it('tells what stood in the way where none was found', async () => {
   expect(shared).toEqual(overlappedQubits)
   expect(variables.every((label) => partialChains[label]!.some((qubit) => shared.includes(qubit)))).toBe(true)
   expect(overlap + unmetInteractions).toBeGreaterThan(0)
+  expect(view.unmet!.neededQubits).toBeGreaterThanOrEqual(9)
+  const { advice } = view.unmet!
+  expect(advice.length).toBeGreaterThan(1)
+  const named = advice.flatMap((item) => [...item.variables, ...item.interactions.flat()])
+  expect(named.every((label) => label in partialChains)).toBe(true)
+  for (const [a, b] of advice.flatMap((item) => item.interactions))
+    expect([1, 8]).toContain(Math.abs(Number(a.slice(1)) - Number(b.slice(1))))
 })
 
 it('lists embeddings with how they were made and what they use', async () => {

@@ -40,7 +40,7 @@ it('bring a database of the first release up to date without losing anything', a
       id: 'none',
       method: 'search',
       method_used: null,
-      unmet: { message: 'None.', overlap: 2, proved: false, advice: [] },
+      unmet: { message: 'None.', overlap: 2, proved: false, neededQubits: null, advice: [] },
       ...defaults,
     },
   ])

@@ -11,4 +11,4 @@ ALTER TABLE "embeddings" ADD CONSTRAINT "embeddings_start_id_embeddings_id_fk" F
 CREATE UNIQUE INDEX "embeddings_problem_id_machine_id_index" ON "embeddings" USING btree ("problem_id","machine_id") WHERE chosen;--> statement-breakpoint
 CREATE INDEX "embeddings_start_id_index" ON "embeddings" USING btree ("start_id");--> statement-breakpoint
 UPDATE "embeddings" SET "method_used" = "method" WHERE "status" = 'found';--> statement-breakpoint
-UPDATE "embeddings" SET "unmet" = "unmet" || '{"proved":false,"advice":[]}'::jsonb WHERE "unmet" IS NOT NULL;
+UPDATE "embeddings" SET "unmet" = "unmet" || '{"proved":false,"neededQubits":null,"advice":[]}'::jsonb WHERE "unmet" IS NOT NULL;

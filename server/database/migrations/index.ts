@@ -67,7 +67,7 @@ export const MIGRATIONS = [
   {
     "tag": "0001_embedding_methods",
     "folderMillis": 1796130726600,
-    "hash": "1daa0a629d8cd3c8b9fa7d6f048b1efe69c2ef2c8aed1aa5622b3628f8acebec",
+    "hash": "16d6bccee42f73fbf7d97350460b90028ef7f08eccba16dfe8b88c2fa91331da",
     "bps": true,
     "sql": [
       "ALTER TABLE \"embeddings\" ADD COLUMN \"objective\" text DEFAULT 'longest chain' NOT NULL;",
@@ -83,7 +83,7 @@ export const MIGRATIONS = [
       "\nCREATE UNIQUE INDEX \"embeddings_problem_id_machine_id_index\" ON \"embeddings\" USING btree (\"problem_id\",\"machine_id\") WHERE chosen;",
       "\nCREATE INDEX \"embeddings_start_id_index\" ON \"embeddings\" USING btree (\"start_id\");",
       "\nUPDATE \"embeddings\" SET \"method_used\" = \"method\" WHERE \"status\" = 'found';",
-      "\nUPDATE \"embeddings\" SET \"unmet\" = \"unmet\" || '{\"proved\":false,\"advice\":[]}'::jsonb WHERE \"unmet\" IS NOT NULL;\n"
+      "\nUPDATE \"embeddings\" SET \"unmet\" = \"unmet\" || '{\"proved\":false,\"neededQubits\":null,\"advice\":[]}'::jsonb WHERE \"unmet\" IS NOT NULL;\n"
     ]
   }
 ]

@@ -146,11 +146,11 @@ async function endingOf(app: App, signal: AbortSignal, { row, task }: Search, re
 }
 
 async function notFound(app: App, { signal }: JobContext, search: Search, result: SearchResult): Promise<JobOutcome> {
-  const { row, subject } = search
+  const { row, subject, task } = search
   const ending = await endingOf(app, signal, search, result)
   const cancelled = signal.aborted
   const { partial } = result
-  const unmet = partial ? unmetOf(subject, partial, ending) : null
+  const unmet = partial ? unmetOf(subject, partial, await app.compute.run('advise', { task, partial }), ending) : null
   const reason = unmet?.message ?? `${ending.words}.`
   const chainsBlobId = partial ? await app.blobs.write(packEmbedding(partial.chains).bytes) : null
   return {

@@ -1,5 +1,7 @@
+import type { EmbeddingAdvice } from '../../../shared/engine/embedding/advice'
 import { chainOf } from '../../../shared/engine/embedding/embedding'
 import type { PartialEmbedding } from '../../../shared/engine/embedding/method'
+import type { AdviceView } from '../../../shared/schemas/embeddings'
 import type { EmbeddingRow } from '../../database/repositories/embeddings'
 import type { Subject } from '../../services/embedding-subject'
 
@@ -24,18 +26,35 @@ function lacksOf({ overlappedQubits, unmet, unplaced }: PartialEmbedding): strin
   return parts.filter(Boolean).join(', ') || 'no conflicts'
 }
 
-/** What stood in the way: the shared qubits of the closest state, and whose chains share them. */
-export function unmetOf({ labels, machine }: Subject, partial: PartialEmbedding, ending: Ending): StoredUnmet {
-  const { ids } = machine.fabric
+/** What may help, by label; what no search can do is left out where that is proved. */
+function adviceView({ items }: EmbeddingAdvice, { labels, graph }: Subject, { proved }: Ending): AdviceView[] {
+  return items
+    .filter(({ kind }) => !proved || kind !== 'another try')
+    .map(({ kind, message, variables, interactions }) => ({
+      kind,
+      message,
+      variables: variables.map((v) => labels[v]!),
+      interactions: interactions.map((k) => [labels[graph.ends[2 * k]!]!, labels[graph.ends[2 * k + 1]!]!]),
+    }))
+}
+
+/** What stood in the way: the shared qubits of the closest state, whose chains share them, and what may help. */
+export function unmetOf(
+  subject: Subject,
+  partial: PartialEmbedding,
+  advice: EmbeddingAdvice,
+  ending: Ending,
+): StoredUnmet {
+  const { labels, machine } = subject
   const shared = new Set(partial.overlappedQubits)
-  const hope = ending.proved ? '' : ' More tries, a longer limit or a larger machine may help.'
   return {
-    message: `${ending.words}. The closest state has ${lacksOf(partial)}.${hope}`,
+    message: `${ending.words}. The closest state has ${lacksOf(partial)}.`,
     proved: ending.proved,
     overlap: partial.overlap,
-    overlappedQubits: partial.overlappedQubits.map((q) => ids[q]!),
+    overlappedQubits: partial.overlappedQubits.map((q) => machine.fabric.ids[q]!),
     variables: labels.filter((_, i) => chainOf(partial.chains, i).some((q) => shared.has(q))),
     unmetInteractions: partial.unmet.length,
-    advice: [],
+    neededQubits: advice.room.needed,
+    advice: adviceView(advice, subject, ending),
   }
 }
