@@ -42,7 +42,7 @@ export class Equaliser {
 }
 
 /** The drawing turned about the origin, in radians. */
-function turned({ x, y }: Layout, angle: number): Layout {
+export function turned({ x, y }: Layout, angle: number): Layout {
   const [cosine, sine] = [Math.cos(angle), Math.sin(angle)]
   return {
     x: x.map((value, v) => cosine * value - sine * y[v]!),
