@@ -149,6 +149,78 @@ describe('an embedding to begin from', () => {
   })
 })
 
+/** How many variables have another chain than before. */
+const countChanged = (before: Record<string, number[]>, after: Record<string, number[]>): number =>
+  Object.entries(after).filter(([label, chain]) => String(chain) !== String(before[label] ?? '')).length
+
+describe('repair', () => {
+  it('mends what a newer calibration broke, keeps what must stay and tells what it changed', async () => {
+    const { app, actor } = test
+    const problemId = await test.problem(complete(6))
+    const machineId = await test.machine({ kind: 'chimera', m: 4 })
+    const { view: before } = await embedded({ problemId, machineId, tries: 2, timeLimitSeconds: 60 })
+    const [broken, kept] = Object.keys(before.chains)
+    const lost = before.chains[broken!]![0]!
+    await lose(machineId, [lost])
+    expect(await embeddingView(app, actor, before.id)).toMatchObject({ holdsAtCurrentCalibration: false })
+    const start = { embeddingId: before.id, work: 'repair', frozen: [kept] }
+    const { view } = await embedded({ problemId, machineId, tries: 3, timeLimitSeconds: 60, start })
+    expect(view).toMatchObject({
+      status: 'found',
+      calibration: 2,
+      holdsAtCurrentCalibration: true,
+      method: 'repair',
+      methodUsed: 'repair',
+      start: { id: before.id, number: before.number, problem: { id: problemId }, work: 'repair', frozen: [kept] },
+    })
+    expect(view.chains[kept!]).toEqual(before.chains[kept!])
+    expect(Object.values(view.chains).flat()).not.toContain(lost)
+    expect(view.start!.changed).toBe(countChanged(before.chains, view.chains))
+    expect(view.start!.changed).toBeGreaterThan(0)
+    expect(view.start!.changed).toBeLessThan(6)
+  })
+
+  it('carries chains over to a changed problem by label', async () => {
+    const { machineId, embeddingId } = await triangle()
+    const changed = await test.problem('d c 1\nc b 1\nb a 1\n')
+    const start = { embeddingId, work: 'repair', frozen: ['b', 'c'] }
+    const { view } = await embedded({ problemId: changed, machineId, timeLimitSeconds: 60, start })
+    expect(view).toMatchObject({ status: 'found', chains: CHAINS, start: { id: embeddingId, changed: 1 } })
+    expect(view.chains.d).toHaveLength(1)
+    expect(view.start!.problem.id).not.toBe(changed)
+  })
+})
+
+describe('shortening', () => {
+  const LONG = { a: [0], b: [1, 2, 5], c: [3, 4] }
+
+  it('makes chains shorter but those that must stay', async () => {
+    const { problemId, machineId } = await triangle()
+    const { id: embeddingId } = await importEmbedding(test.app, test.actor, { problemId, machineId, chains: LONG })
+    const start = { embeddingId, work: 'shorten' }
+    const free = await embedded({ problemId, machineId, timeLimitSeconds: 60, start })
+    expect(free.view).toMatchObject({ status: 'found', methodUsed: 'shorten', stats: { qubitsUsed: 4 } })
+    const keeping = await embedded({
+      problemId,
+      machineId,
+      timeLimitSeconds: 60,
+      start: { ...start, frozen: ['b'] },
+    })
+    expect(keeping.view).toMatchObject({ status: 'found', chains: { b: LONG.b }, start: { frozen: ['b'] } })
+    expect(keeping.view.stats!.qubitsUsed).toBeLessThanOrEqual(6)
+  })
+
+  it('begins only from what holds', async () => {
+    const { problemId, machineId, embeddingId } = await triangle()
+    await lose(machineId, [4])
+    await expect(ask({ problemId, machineId, start: { embeddingId, work: 'shorten' } })).rejects.toMatchObject({
+      kind: 'not acceptable',
+      code: 'embedding.start-broken',
+      message: expect.stringMatching(/qubit 4.*Repair it first/),
+    })
+  })
+})
+
 describe('the chosen embedding', () => {
   const choose = (id: string, chosen = true) => chooseEmbedding(test.app, test.actor, id, chosen)
   const chosenOf = async (problemId: string) =>
