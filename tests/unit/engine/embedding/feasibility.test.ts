@@ -1,10 +1,21 @@
 import { describe, expect, it } from 'vitest'
-import { provedInfeasible } from '../../../../shared/engine/embedding/feasibility'
+import { AT_ONCE, provedInfeasible, THOROUGH } from '../../../../shared/engine/embedding/feasibility'
+import type { EmbeddingTask } from '../../../../shared/engine/embedding/task'
 import { graphFromEdges } from '../../../../shared/engine/graph/build'
+import type { Graph } from '../../../../shared/engine/graph/graph'
+import { buildFabric } from '../../../../shared/engine/machine/build-fabric'
+import { applyDefects } from '../../../../shared/engine/machine/defects'
+import type { Family } from '../../../../shared/engine/machine/fabric'
 import { createRandom } from '../../../../shared/engine/random'
-import { chimeraGraph, completeGraph, cycleGraph, gridGraph, kingGraph, taskOf } from '../../../fixtures/graphs'
+import { completeGraph, cycleGraph, gridGraph, regularGraph, taskOf, usableExcept } from '../../../fixtures/graphs'
+import { densestMinor, randomMinor } from '../../../fixtures/treewidth'
 
 const allOf = (order: number): Uint8Array => new Uint8Array(order).fill(1)
+
+function familyTask(problem: Graph, family: Family): EmbeddingTask {
+  const { graph, segments } = buildFabric(family)
+  return { ...taskOf(problem, graph), segments, family }
+}
 
 describe('provedInfeasible', () => {
   it('counts variables against usable qubits and says by how much', () => {
@@ -60,27 +71,104 @@ describe('provedInfeasible', () => {
     })
   })
 
-  it('never refuses a graph that was made by contracting parts of the machine', () => {
+  it('compares treewidths, and gives both numbers', () => {
+    const expander = regularGraph(220, 5, createRandom(2))
+    const refused = provedInfeasible(familyTask(expander, { kind: 'chimera', m: 5, n: 6, t: 4 }))
+    expect(refused).toMatchObject({ code: 'treewidth above the machine’s', available: 20 })
+    expect(refused!.needed).toBeGreaterThan(20)
+    expect(refused!.by).toBe(refused!.needed - 20)
+    expect(refused!.message).toContain(`at least ${refused!.needed}, the machine's at most 20: ${refused!.by} too much`)
+  })
+
+  it('names the clique that is too large', () => {
+    const clique = completeGraph(20)
+    const problem = graphFromEdges(40, [...clique.ends, ...Array.from({ length: 20 }, (_, i) => [i, 20 + i]).flat()])
+    const family: Family = { kind: 'chimera', m: 4, n: 9, t: 4 }
+    const proof = provedInfeasible(familyTask(problem, family))
+    expect(proof).toMatchObject({
+      code: 'clique larger than the machine can hold',
+      needed: 20,
+      available: 17,
+      by: 3,
+    })
+    expect(proof!.message).toContain('20 variables that all interact')
+    expect(provedInfeasible(familyTask(completeGraph(17), family))).toBeNull()
+  })
+
+  it('counts defects in: a machine that lost its lines holds less', () => {
+    const fabric = buildFabric({ kind: 'king', width: 12, height: 12 })
+    const defects = { qubits: Array.from({ length: 12 }, (_, x) => 12 * 6 + x), couplers: [] }
+    const { graph, usable } = applyDefects(fabric, defects)
+    const whole = familyTask(completeGraph(12), fabric.family)
+    expect(provedInfeasible(whole)).toBeNull()
+    expect(provedInfeasible({ ...whole, machine: graph, usable })).toMatchObject({ needed: 12, available: 8 })
+  })
+
+  it('knows that minors of a square grid are planar', () => {
+    const family: Family = { kind: 'square', width: 20, height: 20 }
+    expect(provedInfeasible(familyTask(completeGraph(4), family))).toBeNull()
+    expect(provedInfeasible(familyTask(completeGraph(5), family))).toMatchObject({
+      code: 'too many interactions for a planar machine',
+      needed: 10,
+      available: 9,
+      by: 1,
+    })
+    // Petersen: 15 interactions of 10 variables are not too many, but it contracts to K_5.
+    const petersen = graphFromEdges(
+      10,
+      Array.from({ length: 5 }, (_, i) => [i, (i + 1) % 5, i, i + 5, i + 5, ((i + 2) % 5) + 5]).flat(),
+    )
+    expect(provedInfeasible(familyTask(petersen, family))).toMatchObject({
+      code: 'too many interactions for a planar machine',
+    })
+    expect(provedInfeasible(familyTask(gridGraph(9, 9), family))).toBeNull()
+  })
+
+  it('finds more proofs with more work', () => {
+    const expander = regularGraph(600, 6, createRandom(3))
+    const task = familyTask(expander, { kind: 'chimera', m: 12, n: 12, t: 4 })
+    expect(provedInfeasible(task, { contractionWork: 0, routingWork: 1000, cliqueWork: 0 })).toBeNull()
+    expect(provedInfeasible(task, THOROUGH)).toMatchObject({ code: 'treewidth above the machine’s' })
+  })
+
+  it('never refuses a minor of the machine, made by contracting, deleting and renaming', () => {
     const random = createRandom(21)
-    const machines = [gridGraph(4, 4), kingGraph(4, 4), chimeraGraph(2, 2, 3), cycleGraph(10)]
-    for (let round = 0; round < 400; round++) {
-      const machine = machines[round % machines.length]!
-      const usable = Uint8Array.from({ length: machine.order }, () => (random.float() < 0.15 ? 0 : 1))
-      const label = Int32Array.from({ length: machine.order }, (_, q) => q)
-      for (let k = 0; k < machine.ends.length / 2; k++) {
-        const [a, b] = [machine.ends[2 * k]!, machine.ends[2 * k + 1]!]
-        if (!usable[a] || !usable[b] || random.float() < 0.75) continue
-        const [from, to] = [label[b]!, label[a]!]
-        label.forEach((name, q) => name === from && (label[q] = to))
+    const families: Family[] = [
+      { kind: 'square', width: 6, height: 6 },
+      { kind: 'king', width: 5, height: 6 },
+      { kind: 'chimera', m: 2, n: 3, t: 3 },
+      { kind: 'chimera', m: 3, n: 3, t: 2 },
+      { kind: 'pegasus', m: 2, trimmed: true },
+      { kind: 'zephyr', m: 1, t: 2 },
+    ]
+    const fabrics = families.map(buildFabric)
+    for (let round = 0; round < 2400; round++) {
+      const { graph, segments, family } = fabrics[round % fabrics.length]!
+      const usable = usableExcept(graph.order, 0.2 * random.float(), random)
+      const problem = randomMinor(graph, usable, random)
+      const known = round % 4 < 2
+      const task = { ...taskOf(problem, graph, usable), ...(known ? { segments, family } : {}) }
+      expect(provedInfeasible(task, round % 3 ? AT_ONCE : THOROUGH)).toBeNull()
+    }
+  })
+
+  it('never refuses the densest minors that contraction makes of larger machines', () => {
+    const random = createRandom(22)
+    const families: Family[] = [
+      { kind: 'chimera', m: 6, n: 6, t: 4 },
+      { kind: 'pegasus', m: 4, trimmed: true },
+      { kind: 'zephyr', m: 3, t: 4 },
+      { kind: 'king', width: 16, height: 16 },
+      { kind: 'square', width: 16, height: 16 },
+    ]
+    for (const family of families) {
+      const { graph, segments } = buildFabric(family)
+      for (let round = 0; round < 12; round++) {
+        const usable = usableExcept(graph.order, 0.05, random)
+        const problem = densestMinor(graph, usable, 0.1 + 0.8 * random.float())
+        for (const known of [family, null])
+          expect(provedInfeasible({ ...taskOf(problem, graph, usable), segments, family: known })).toBeNull()
       }
-      const names = [...new Set([...label].filter((_, q) => usable[q]))]
-      const ends: number[] = []
-      for (let k = 0; k < machine.ends.length / 2; k++) {
-        const [a, b] = [machine.ends[2 * k]!, machine.ends[2 * k + 1]!]
-        if (usable[a] && usable[b] && label[a] !== label[b])
-          ends.push(names.indexOf(label[a]!), names.indexOf(label[b]!))
-      }
-      expect(provedInfeasible(taskOf(graphFromEdges(names.length, ends), machine, usable))).toBeNull()
     }
   })
 
