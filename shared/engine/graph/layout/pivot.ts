@@ -3,12 +3,10 @@ import type { Graph } from '../graph'
 import type { Layout } from './sites'
 import { symmetricEigen } from './symmetric-eigen'
 
-export interface PivotOptions {
+export const PIVOT_DEFAULTS = {
   /** Vertices from which distances are measured. */
-  readonly pivots: number
-}
-
-export const PIVOT_DEFAULTS: PivotOptions = { pivots: 24 }
+  pivots: 24,
+} as const
 
 /** Breadth-first distances from `source` within its connected part; other entries stay as they were. */
 function distancesFrom(graph: Graph, source: number, distance: Float64Array, queue: Int32Array): void {
@@ -71,37 +69,32 @@ function dot(a: Float64Array, b: Float64Array): number {
   return sum
 }
 
+/** Column k of the square matrix `vectors` as weights of the distance columns, for every vertex. */
+function project(columns: readonly Float64Array[], vectors: Float64Array, k: number, axis: Float64Array): void {
+  columns.forEach((column, i) => {
+    const weight = vectors[i * columns.length + k]!
+    for (let v = 0; v < axis.length; v++) axis[v]! += weight * column[v]!
+  })
+}
+
 /**
- * The `axes` longest principal axes of the vertices' distances to the pivots, longest first; zero vectors where the
- * graph has fewer.
+ * Draws a connected graph so that distances in the plane follow those in the graph, by the two longest principal axes
+ * of the vertices' distances to some pivots; linear in the graph for each pivot (Brandes & Pich, Eigensolver methods for
+ * progressive multidimensional scaling of large data, GD 2006; Harel & Koren, Graph drawing by high-dimensional
+ * embedding, JGAA 2004). The middle is the origin; the unit is arbitrary, the same for both axes.
  * @throws RangeError when the graph is not connected
  */
-export function pivotAxes(graph: Graph, random: Random, axes: number, options = PIVOT_DEFAULTS): Float64Array[] {
-  const projected = Array.from({ length: axes }, () => new Float64Array(graph.order))
-  if (graph.order < 2) return projected
-  const columns = pivotDistances(graph, random, Math.min(options.pivots, graph.order))
+export function pivotLayout(graph: Graph, random: Random, { pivots }: { pivots: number } = PIVOT_DEFAULTS): Layout {
+  const layout = { x: new Float64Array(graph.order), y: new Float64Array(graph.order) }
+  if (graph.order < 2) return layout
+  const columns = pivotDistances(graph, random, Math.min(pivots, graph.order))
   doubleCentre(columns)
   const size = columns.length
   const products = new Float64Array(size * size)
   for (let i = 0; i < size; i++)
     for (let j = i; j < size; j++) products[i * size + j] = products[j * size + i] = dot(columns[i]!, columns[j]!)
   const { vectors } = symmetricEigen(products, size)
-  projected.slice(0, size).forEach((axis, k) => {
-    columns.forEach((column, i) => {
-      const weight = vectors[i * size + k]!
-      for (let v = 0; v < axis.length; v++) axis[v]! += weight * column[v]!
-    })
-  })
-  return projected
-}
-
-/**
- * Draws a connected graph so that distances in the plane follow those in the graph, in time linear in the graph for
- * each pivot (Brandes & Pich, Eigensolver methods for progressive multidimensional scaling of large data, GD 2006;
- * Harel & Koren, Graph drawing by high-dimensional embedding, JGAA 2004). Unit: one edge, squared along long axes.
- * @throws RangeError when the graph is not connected
- */
-export function pivotLayout(graph: Graph, random: Random, options = PIVOT_DEFAULTS): Layout {
-  const [x, y] = pivotAxes(graph, random, 2, options)
-  return { x: x!, y: y! }
+  project(columns, vectors, 0, layout.x)
+  if (size > 1) project(columns, vectors, 1, layout.y)
+  return layout
 }

@@ -31,7 +31,13 @@ export class Equaliser {
     this.ranking = rankingOf(graph.order)
   }
 
+  /** The drawing, or with x and y swapped where the grid is not square and that is shorter, on its sites. */
   equalise(layout: Layout): Equalised {
+    const upright = this.onSites(layout)
+    return this.columns === this.rows ? upright : shorter(upright, this.onSites({ x: layout.y, y: layout.x }))
+  }
+
+  private onSites(layout: Layout): Equalised {
     return { layout, ...equalisedSites(this.graph, layout.x, layout.y, this.columns, this.rows, this.ranking) }
   }
 
