@@ -1,4 +1,5 @@
 import { degreeOf } from '../../graph/graph'
+import type { Graph } from '../../graph/graph'
 import { chainOf } from '../embedding'
 import type { PartialEmbedding } from '../method'
 import type { EmbeddingTask } from '../task'
@@ -14,17 +15,30 @@ export interface InteractionRelief {
 
 const DEFAULTS = {
   /** Variables whose interactions are looked at, those with most conflicts. */
-  variables: 40,
-  /** Interactions of one of them that are looked at. */
-  interactions: 200,
+  variables: 30,
+  /** Interactions of one of them that are looked at, and unmet ones. */
+  interactions: 60,
 }
 
-/** Chains as they shrink while interactions are dropped; only those that were looked at are copied. */
+/** A chain as it shrinks. */
+interface ShrinkingChain {
+  /** Qubits left, each with the interacting variables that it touches. */
+  readonly touched: Map<number, Set<number>>
+  /** Qubits that touch each interacting variable. */
+  readonly contacts: Map<number, number>
+}
+
+function contactsOf(touched: ReadonlyMap<number, ReadonlySet<number>>): Map<number, number> {
+  const contacts = new Map<number, number>()
+  for (const others of touched.values()) for (const u of others) contacts.set(u, (contacts.get(u) ?? 0) + 1)
+  return contacts
+}
+
+/** The chains of a state while interactions are dropped; only those that were looked at are worked out. */
 class ShrinkingChains {
   private readonly uses: Uint32Array
   private readonly owners: ReturnType<typeof ownersOf>
-  private readonly chains = new Map<number, Map<number, Set<number>>>()
-  private readonly dropped = new Set<number>()
+  private readonly chains = new Map<number, ShrinkingChain>()
   private readonly unmet: Set<number>
 
   constructor(
@@ -36,31 +50,40 @@ class ShrinkingChains {
     this.unmet = new Set(partial.unmet)
   }
 
-  isDropped(edge: number): boolean {
-    return this.dropped.has(edge)
-  }
-
-  /** Conflicts that go when the interaction does; the chains stay as they are unless `drop` is set. */
-  relief(edge: number, drop: boolean): number {
+  /** Conflicts that would go with the interaction; the chains stay as they are. */
+  relief(edge: number): number {
     const { ends } = this.task.problem
     const [a, b] = [ends[2 * edge]!, ends[2 * edge + 1]!]
-    const given = [this.superfluous(a, b), this.superfluous(b, a)]
+    const given = [...this.superfluous(a, b), ...this.superfluous(b, a)]
     let conflicts = this.unmet.has(edge) ? 1 : 0
-    for (const qubits of given) for (const q of qubits) if (this.uses[q]!-- > 1) conflicts++
-    if (drop) {
-      this.dropped.add(edge)
-      given.forEach((qubits, i) => qubits.forEach((q) => this.chain(i === 0 ? a : b).delete(q)))
-      for (const others of this.chain(a).values()) others.delete(b)
-      for (const others of this.chain(b).values()) others.delete(a)
-    } else for (const qubits of given) for (const q of qubits) this.uses[q]!++
+    for (const q of given) if (this.uses[q]!-- > 1) conflicts++
+    for (const q of given) this.uses[q]!++
     return conflicts
   }
 
-  /** Qubits of the variable's chain, each with the interacting variables it touches. */
-  private chain(variable: number): Map<number, Set<number>> {
+  /** Cuts the chains of the interaction's variables back to what the others need. */
+  drop(edge: number): void {
+    const { ends } = this.task.problem
+    const [a, b] = [ends[2 * edge]!, ends[2 * edge + 1]!]
+    for (const [variable, other] of [
+      [a, b],
+      [b, a],
+    ] as const) {
+      const { touched } = this.chain(variable)
+      for (const q of this.superfluous(variable, other)) {
+        touched.delete(q)
+        this.uses[q]!--
+      }
+      for (const others of touched.values()) others.delete(other)
+      this.chains.set(variable, { touched, contacts: contactsOf(touched) })
+    }
+  }
+
+  private chain(variable: number): ShrinkingChain {
     let chain = this.chains.get(variable)
     if (!chain) {
-      chain = touchedBy(this.task, variable, chainOf(this.partial.chains, variable), this.owners)
+      const touched = touchedBy(this.task, variable, chainOf(this.partial.chains, variable), this.owners)
+      chain = { touched, contacts: contactsOf(touched) }
       this.chains.set(variable, chain)
     }
     return chain
@@ -68,19 +91,20 @@ class ShrinkingChains {
 
   /** Qubits that the chain could give up from its ends inwards if it need not touch `other`. */
   private superfluous(variable: number, other: number): number[] {
-    const left = new Map(this.chain(variable))
-    const contacts = new Map<number, number>()
-    for (const others of left.values()) for (const u of others) contacts.set(u, (contacts.get(u) ?? 0) + 1)
+    const chain = this.chain(variable)
+    const left = new Map(chain.touched)
+    const lost = new Map<number, number>()
     const waiting = [...left.keys()]
     const given: number[] = []
+    const isLast = (u: number): boolean => u !== other && chain.contacts.get(u)! - (lost.get(u) ?? 0) === 1
     for (let q = waiting.pop(); q !== undefined; q = waiting.pop()) {
       const others = left.get(q)
       if (!others || left.size === 1) continue
       const inside = this.besideIn(left, q)
-      if (inside.length > 1 || [...others].some((u) => u !== other && contacts.get(u) === 1)) continue
+      if (inside.length > 1 || [...others].some(isLast)) continue
       left.delete(q)
       given.push(q)
-      for (const u of others) contacts.set(u, contacts.get(u)! - 1)
+      for (const u of others) lost.set(u, (lost.get(u) ?? 0) + 1)
       waiting.push(...inside)
     }
     return given
@@ -103,6 +127,11 @@ function candidates(task: EmbeddingTask, partial: PartialEmbedding): number[] {
   return [...edges].sort((a, b) => a - b)
 }
 
+function shareVariable({ ends }: Graph, edge: number, other: number): boolean {
+  const [a, b] = [ends[2 * other]!, ends[2 * other + 1]!]
+  return [ends[2 * edge], ends[2 * edge + 1]].some((v) => v === a || v === b)
+}
+
 /**
  * The few interactions whose loss would take most conflicts out of the closest state, one after the other: each is
  * judged with those before it gone, and its two chains cut back to what their other interactions need. An estimate: a
@@ -111,19 +140,23 @@ function candidates(task: EmbeddingTask, partial: PartialEmbedding): number[] {
  */
 export function interactionsToDrop(task: EmbeddingTask, partial: PartialEmbedding, most: number): InteractionRelief[] {
   const chains = new ShrinkingChains(task, partial)
-  const edges = candidates(task, partial)
+  let waiting = candidates(task, partial).map((edge) => ({ edge, conflicts: chains.relief(edge) }))
   const ranked: InteractionRelief[] = []
   while (ranked.length < most) {
-    let best = -1
-    let conflicts = 0
-    for (const edge of edges) {
-      if (chains.isDropped(edge)) continue
-      const relief = chains.relief(edge, false)
-      if (relief > conflicts) [best, conflicts] = [edge, relief]
+    let best = { edge: -1, conflicts: 0 }
+    for (const candidate of waiting) if (candidate.conflicts > best.conflicts) best = candidate
+    if (best.edge < 0) break
+    // What was dropped meanwhile may have left less to relieve.
+    const conflicts = chains.relief(best.edge)
+    if (conflicts < best.conflicts) {
+      best.conflicts = conflicts
+      continue
     }
-    if (best < 0) break
-    chains.relief(best, true)
-    ranked.push({ edge: best, conflicts })
+    chains.drop(best.edge)
+    ranked.push({ edge: best.edge, conflicts })
+    waiting = waiting.filter((candidate) => candidate !== best)
+    for (const candidate of waiting)
+      if (shareVariable(task.problem, best.edge, candidate.edge)) candidate.conflicts = chains.relief(candidate.edge)
   }
   return ranked
 }
