@@ -45,7 +45,7 @@ export const COMPARE_COLUMNS: readonly CompareColumn[] = [
     label: 'Left free',
     better: 'more',
     of: ({ stats }) => stats.unusedShare,
-    text: ({ stats }) => formatPercent(stats.unusedShare),
+    text: ({ stats }) => formatPercent(stats.unusedShare, { decimals: 1 }),
   },
   {
     field: 'seconds',

@@ -34,6 +34,7 @@ export interface CourseChart {
   readonly title: string
   readonly unit: string
   readonly series: ChartSeries
+  readonly instead: string
 }
 
 const COURSES = [
@@ -42,15 +43,17 @@ const COURSES = [
   { key: 'qubitsUsed', title: 'Qubits used', unit: 'qubits' },
 ] as const
 
-/** Overlap, longest chain and qubits over seconds, without the moments that had no such figure. */
+/**
+ * Overlap, longest chain and qubits over seconds, without the moments that had no such figure. A course without points
+ * has nothing to draw; `instead` says why.
+ */
 export function courseCharts(trace: readonly TracePoint[]): CourseChart[] {
-  return COURSES.map(({ key, title, unit }) => ({
-    title,
-    unit,
-    series: {
-      name: title,
-      marker: 'none',
-      points: trace.flatMap((point) => (point[key] === null ? [] : [{ x: point.seconds, y: point[key] }])),
-    },
-  }))
+  const isValidThroughout = trace.length > 0 && trace.every(({ overlap }) => overlap === 0)
+  return COURSES.map(({ key, title, unit }) => {
+    const moments = key === 'overlap' && isValidThroughout ? [] : trace
+    const points = moments.flatMap((point) => (point[key] === null ? [] : [{ x: point.seconds, y: point[key] }]))
+    const waiting = trace.length > 0 ? 'No valid embedding yet.' : 'Nothing reported yet.'
+    const instead = isValidThroughout ? 'None: the chains are valid throughout.' : waiting
+    return { title, unit, instead, series: { name: title, marker: 'none', points } }
+  })
 }
