@@ -10,7 +10,7 @@ export { machineTreewidthBound } from './bounds/machine-treewidth'
 export type { MachineTreewidthBound } from './bounds/machine-treewidth'
 
 /** Proofs that are found within about a tenth of a second on machines of some thousand qubits. */
-export const AT_ONCE: Effort = { contractionWork: 2_000_000, routingWork: 3_000_000, cliqueWork: 200_000 }
+export const AT_ONCE: Effort = { contractionWork: 1_500_000, routingWork: 3_000_000, cliqueWork: 200_000 }
 
 /** Some seconds at most: for a search that found nothing. */
 export const THOROUGH: Effort = { contractionWork: 30_000_000, routingWork: 60_000_000, cliqueWork: 2_000_000 }

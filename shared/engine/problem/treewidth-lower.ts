@@ -20,7 +20,7 @@ export interface LowerBoundLimits {
 }
 
 /** A tenth of a second at most for a few thousand vertices. */
-const DEFAULTS: LowerBoundLimits = { enough: Infinity, contractionWork: 2_000_000, routingWork: 3_000_000 }
+const DEFAULTS: LowerBoundLimits = { enough: Infinity, contractionWork: 1_500_000, routingWork: 3_000_000 }
 
 /** Entries that contraction reads for each edge in any case; with less it would be cut short before it pays. */
 const LEAST_READS = 16

@@ -7,7 +7,7 @@ export type InfeasibilityCode =
   | 'more independent cycles than the machine has'
   | 'too many interactions for a planar machine'
   | 'clique larger than the machine can hold'
-  | 'treewidth above the machine’s'
+  | 'treewidth too large'
 
 /** A proof that no embedding exists: the bound that is broken, and by how much. */
 export interface Infeasibility {

@@ -1,3 +1,4 @@
+import type { Graph } from '../../graph/graph'
 import { sizeOf } from '../../graph/graph'
 import { keepEdges } from '../../graph/subgraph'
 import { treewidthUpperBound } from '../../problem/treewidth'
@@ -36,10 +37,16 @@ function directionsFor(segments: Float32Array): readonly SweepDirection[] {
     : ['downwards', 'upwards', 'rightwards', 'leftwards']
 }
 
-/** Partner lines are passed together; rows of points one by one. */
-function stripOf(segments: Float32Array): number {
-  for (let i = 0; i < segments.length; i += 4)
-    if (segments[i] !== segments[i + 2] || segments[i + 1] !== segments[i + 3]) return 2
+/** Lines passed together: two where couplers join parallel neighbours, which then are partners; otherwise one. */
+function stripOf({ ends }: Graph, segments: Float32Array): number {
+  const isVertical = (q: number): boolean => segments[4 * q] === segments[4 * q + 2]
+  const isPoint = (q: number): boolean => isVertical(q) && segments[4 * q + 1] === segments[4 * q + 3]
+  for (let k = 0; k < ends.length; k += 2) {
+    const [a, b] = [ends[k]!, ends[k + 1]!]
+    if (isPoint(a)) return 1
+    const across = isVertical(a) ? 0 : 1
+    if (isVertical(a) === isVertical(b) && segments[4 * a + across] !== segments[4 * b + across]) return 2
+  }
   return 1
 }
 
@@ -50,7 +57,7 @@ export function* machineTreewidthBounds({
   segments,
 }: MachineOfTask): Generator<MachineTreewidthBound> {
   if (segments) {
-    const strip = stripOf(segments)
+    const strip = stripOf(machine, segments)
     for (const order of directionsFor(segments))
       yield { width: eliminationWidth(machine, sweepOrder(segments, usable, order, strip)), order }
   }

@@ -26,7 +26,7 @@ function proofOf(problem: Graph, lower: number, width: number, cliqueWork: numbe
     return infeasibility('clique larger than the machine can hold', clique, width + 1, message)
   }
   const message = `The problem's treewidth is at least ${lower}, the machine's at most ${width}: ${lower - width} too much.`
-  return infeasibility('treewidth above the machine’s', lower, width, message)
+  return infeasibility('treewidth too large', lower, width, message)
 }
 
 /**

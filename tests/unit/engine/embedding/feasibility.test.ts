@@ -74,7 +74,7 @@ describe('provedInfeasible', () => {
   it('compares treewidths, and gives both numbers', () => {
     const expander = regularGraph(220, 5, createRandom(2))
     const refused = provedInfeasible(familyTask(expander, { kind: 'chimera', m: 5, n: 6, t: 4 }))
-    expect(refused).toMatchObject({ code: 'treewidth above the machine’s', available: 20 })
+    expect(refused).toMatchObject({ code: 'treewidth too large', available: 20 })
     expect(refused!.needed).toBeGreaterThan(20)
     expect(refused!.by).toBe(refused!.needed - 20)
     expect(refused!.message).toContain(`at least ${refused!.needed}, the machine's at most 20: ${refused!.by} too much`)
@@ -128,7 +128,7 @@ describe('provedInfeasible', () => {
     const expander = regularGraph(600, 6, createRandom(3))
     const task = familyTask(expander, { kind: 'chimera', m: 12, n: 12, t: 4 })
     expect(provedInfeasible(task, { contractionWork: 0, routingWork: 1000, cliqueWork: 0 })).toBeNull()
-    expect(provedInfeasible(task, THOROUGH)).toMatchObject({ code: 'treewidth above the machine’s' })
+    expect(provedInfeasible(task, THOROUGH)).toMatchObject({ code: 'treewidth too large' })
   })
 
   it('never refuses a minor of the machine, made by contracting, deleting and renaming', () => {

@@ -13,6 +13,7 @@ const FAMILIES: Family[] = [
   ...[1, 2, 3, 5, 9].map((m): Family => ({ kind: 'chimera', m, n: m, t: 4 })),
   { kind: 'chimera', m: 3, n: 8, t: 2 },
   { kind: 'chimera', m: 7, n: 2, t: 3 },
+  { kind: 'chimera', m: 24, n: 20, t: 1 },
   ...[3, 4, 5, 8, 16].flatMap((m): Family[] => [
     { kind: 'pegasus', m, trimmed: true },
     { kind: 'pegasus', m, trimmed: false },
