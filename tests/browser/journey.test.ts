@@ -108,6 +108,7 @@ describe('the whole job, by hand', () => {
   it('embeds it on the machine and verifies the chains', async () => {
     await page.getByRole('link', { name: 'New embedding' }).click()
     await page.getByRole('radio', { name: /Rowan/ }).click()
+    await page.getByText('More settings').click()
     await page.getByRole('textbox', { name: 'Tries' }).fill('1')
     await page.getByRole('button', { name: 'Look for an embedding' }).click()
     await page.getByText('Verified: chains connected').waitFor({ timeout: 60_000 })
