@@ -23,12 +23,10 @@ const STARTS = 3
  * One try of placing variables on the machine's plane, routing their chains under negotiated congestion, and shortening
  * them (sources at the parts). Begins anew a few times, with more room and effort, before it gives up.
  */
-export function searchChains(
-  task: EmbeddingTask,
-  { random, watch, offer, objective }: Attempt,
-): PartialEmbedding | null {
+export function searchChains(task: EmbeddingTask, attempt: Attempt): PartialEmbedding | null {
   const { problem, machine, usable } = task
-  const state = new ChainState(problem, machine, usable)
+  const { random, watch } = attempt
+  const state = new ChainState(problem, machine, usable, attempt.kernel)
   const router = new Router(state, random, STARTS)
   const seeds = new Seeds(problem, machine, usable, positionsOf(task))
   const variables = Int32Array.from({ length: problem.order }, (_, v) => v).filter((v) => degreeOf(problem, v) > 0)
@@ -40,9 +38,9 @@ export function searchChains(
     watch.phase = 'rerouting'
     const valid = negotiate(state, router, variables, random, watch)
     if (valid && placeIsolated(state, usable)) {
-      const give = (): void => offer(packState(state))
+      const give = (): void => attempt.offer(packState(state))
       give()
-      shortenChains(state, router, variables, objective, random, watch, give)
+      shortenChains(state, router, variables, attempt, give)
       return null
     }
     placeIsolated(state, usable)

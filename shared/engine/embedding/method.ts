@@ -1,4 +1,5 @@
 import type { Random } from '../random'
+import type { KernelChoice } from './chains/kernel'
 import type { Embedding } from './embedding'
 import type { Objective } from './objective'
 import type { Watch } from './progress'
@@ -30,6 +31,8 @@ export interface Attempt {
   readonly random: Random
   /** What the best is chosen by. */
   readonly objective: Objective
+  /** What grows chains; both give the same. */
+  readonly kernel: KernelChoice
   /** Asks for the end, and takes progress; to be asked at least every few milliseconds. */
   readonly watch: Watch
   /** Takes a valid embedding as soon as there is one, and each that may be better; keeps the best. */

@@ -1,12 +1,14 @@
 import type { Control } from '../control'
 import { createRandom } from '../random'
 import { searchChains } from './chain-search'
+import type { KernelChoice } from './chains/kernel'
 import type { Embedding } from './embedding'
 import type { Method, PartialEmbedding, Runner } from './method'
 import type { Objective, Quality, Target } from './objective'
 import { compareQuality, qualityOf, reaches } from './objective'
 import { Watch } from './progress'
 import type { SearchProgress, StopReason } from './progress'
+import { repairStart, shortenStart } from './rework'
 import type { EmbeddingTask } from './task'
 import { verifyEmbedding } from './verify'
 
@@ -17,6 +19,8 @@ export interface TrySettings {
   readonly target: Target
   /** Seconds on the given clock after which the try ends with the best so far. */
   readonly timeLimitSeconds: number
+  /** `assembly` unless said otherwise; embeddings are the same, only the time differs. */
+  readonly kernel?: KernelChoice
 }
 
 /** One try of a plan, independent of all others. */
@@ -40,6 +44,8 @@ export interface TryResult extends PlannedTry {
 
 const RUNNERS: Partial<Record<Method, Runner>> = {
   search: searchChains,
+  repair: repairStart,
+  shorten: shortenStart,
 }
 
 /**
@@ -49,7 +55,7 @@ const RUNNERS: Partial<Record<Method, Runner>> = {
 export function runTry(
   task: EmbeddingTask,
   { tryNumber, method }: PlannedTry,
-  { seed, objective, target, timeLimitSeconds }: TrySettings,
+  { seed, objective, target, timeLimitSeconds, kernel = 'assembly' }: TrySettings,
   control: Control<SearchProgress>,
 ): TryResult {
   const watch = new Watch(control, method, tryNumber, timeLimitSeconds)
@@ -65,7 +71,7 @@ export function runTry(
     watch.best = quality
     if (reaches(quality, target)) watch.stopped ??= 'target reached'
   }
-  const partial = RUNNERS[method]!(task, { random: createRandom(seed, tryNumber), objective, watch, offer })
+  const partial = RUNNERS[method]!(task, { random: createRandom(seed, tryNumber), objective, kernel, watch, offer })
   return {
     tryNumber,
     method,

@@ -1,3 +1,4 @@
+import { FAR } from './state'
 import type { ChainState } from './state'
 
 /** Packed heap keys hold the qubit below the distance: 2¹⁷ qubits at most. */
@@ -39,12 +40,12 @@ function removeLeast(heap: Float64Array, size: number): void {
 }
 
 /** Takes the stale keys out of the heap; what is left is at most one key a qubit. Returns their number. */
-function dropStale({ heap, distance }: ChainState, size: number): number {
+function dropStale({ heap, nodes }: ChainState, size: number): number {
   let kept = 0
   for (let i = 0; i < size; i++) {
     const key = heap[i]!
     const here = Math.floor(key / KEY)
-    if (distance[key - here * KEY] === here) push(heap, kept++, key)
+    if (nodes[2 * (key - here * KEY) + 1] === here) push(heap, kept++, key)
   }
   return kept
 }
@@ -110,6 +111,19 @@ function reach(state: ChainState, qubit: number): number {
   return reached
 }
 
+/** Whether the qubit touches a partner that is still missing. */
+function touchesMissing(state: ChainState, qubit: number): boolean {
+  const { touch, missing, words } = state
+  for (let w = 0; w < words; w++) if ((touch[qubit * words + w]! & missing[w]!) !== 0) return true
+  return false
+}
+
+/**
+ * Partners up to which the labels are made anew after each one reached: then none need be made that are farther than
+ * the nearest missing partner found so far, which saves more than it costs. Both ways give exact shortest paths.
+ */
+const FEW_PARTNERS = 6
+
 /**
  * Grows a tree of qubits for a variable without a chain, from the qubits beside the chain of its partner number
  * `start` to all its other placed partners, nearest first (the shortest-path heuristic for Steiner trees of Takahashi
@@ -122,23 +136,26 @@ function reach(state: ChainState, qubit: number): number {
  * `state.treeCost`
  */
 export function growTree(state: ChainState, variable: number, start: number, placed: number, ceiling: number): number {
-  const { offsets, targets, cost, distance, parent, labelled, heap, touchedAt, touchNow, tree } = state
+  const { offsets, targets, nodes, parent, labelled, heap, touchedAt, touchNow, tree } = state
   startMissing(state, variable, start)
+  const few = placed <= FEW_PARTNERS
   let missing = placed - 1
   let labels = 0
   let size = 0
   let treeSize = 0
   let treeCost = 0
-  const room = heap.length
+  // Labels from here on are of no use.
+  let bound = Math.min(ceiling, FAR)
   for (let record = state.head[state.partners[state.partnerOffsets[variable]! + start]!]!; record >= 0;) {
     const q = state.recordQubit[record]!
     for (let p = offsets[q]!; p < offsets[q + 1]!; p++) {
       const r = targets[p]!
-      if (distance[r]! !== Infinity || cost[r] === Infinity) continue
+      if (nodes[2 * r + 1]! !== FAR || nodes[2 * r]! >= bound) continue
       labelled[labels++] = r
-      distance[r] = cost[r]!
+      nodes[2 * r + 1] = nodes[2 * r]!
       parent[r] = -1
-      push(heap, size++, cost[r]! * KEY + r)
+      push(heap, size++, nodes[2 * r]! * KEY + r)
+      if (few && touchedAt[r] === touchNow && touchesMissing(state, r)) bound = nodes[2 * r]!
     }
     record = state.recordNext[record]!
   }
@@ -148,46 +165,50 @@ export function growTree(state: ChainState, variable: number, start: number, pla
     const here = Math.floor(key / KEY)
     const q = key - here * KEY
     removeLeast(heap, size--)
-    if (here !== distance[q]) continue
-    if (treeCost + here >= ceiling) break
+    if (here !== nodes[2 * q + 1]) continue
     if (here > 0 && (missing === 0 || touchedAt[q] === touchNow)) {
       const reached = missing === 0 ? 0 : reach(state, q)
       if (missing === 0 || reached > 0) {
         const first = treeSize
-        for (let r = q; r >= 0 && distance[r]! !== 0; r = parent[r]!) {
+        for (let r = q; r >= 0 && nodes[2 * r + 1]! !== 0; r = parent[r]!) {
           tree[treeSize++] = r
-          treeCost += cost[r]!
+          treeCost += nodes[2 * r]!
         }
         missing -= reached
         if (missing === 0) {
           complete = true
           break
         }
-        if (first === 0) {
-          // Labels that do not start in the tree would lead to a second, unconnected piece.
-          for (let i = 0; i < labels; i++) distance[labelled[i]!] = Infinity
-          labels = size = 0
+        bound = Math.min(ceiling - treeCost, FAR)
+        let from = first
+        if (first === 0 || few) {
+          // The first labels do not start in the tree: they would lead to a second, unconnected piece.
+          for (let i = 0; i < labels; i++) nodes[2 * labelled[i]! + 1] = FAR
+          labels = size = from = 0
           for (let i = 0; i < treeSize; i++) labelled[labels++] = tree[i]!
         }
-        for (let i = first; i < treeSize; i++) {
-          distance[tree[i]!] = 0
+        for (let i = from; i < treeSize; i++) {
+          nodes[2 * tree[i]! + 1] = 0
           push(heap, size++, tree[i]!)
         }
         continue
       }
     }
-    if (size + offsets[q + 1]! - offsets[q]! + treeSize > room) size = dropStale(state, size)
+    if (size + offsets[q + 1]! - offsets[q]! + treeSize > heap.length) size = dropStale(state, size)
     for (let p = offsets[q]!; p < offsets[q + 1]!; p++) {
       const r = targets[p]!
-      const there = here + cost[r]!
-      if (there >= distance[r]!) continue
-      if (distance[r] === Infinity) labelled[labels++] = r
-      distance[r] = there
+      const there = (here + nodes[2 * r]!) | 0
+      if (there >= bound) continue
+      const known = nodes[2 * r + 1]!
+      if (there >= known) continue
+      if (known === FAR) labelled[labels++] = r
+      nodes[2 * r + 1] = there
       parent[r] = q
       push(heap, size++, there * KEY + r)
+      if (few && touchedAt[r] === touchNow && touchesMissing(state, r)) bound = there
     }
   }
-  for (let i = 0; i < labels; i++) distance[labelled[i]!] = Infinity
+  for (let i = 0; i < labels; i++) nodes[2 * labelled[i]! + 1] = FAR
   state.treeCost = treeCost
   return complete ? treeSize : 0
 }

@@ -8,7 +8,7 @@ import type { ChainState } from './state'
 export const NEGOTIATION = {
   /** Factor on a qubit's cost for each chain that has it, in the first pass, and its growth from pass to pass. */
   penalty: 3,
-  penaltyGrowth: 1.07,
+  penaltyGrowth: 1.15,
   penaltyMost: 10,
   /** Added to a qubit's history after a pass for each chain beyond the first. */
   historyStep: 0.5,
@@ -39,10 +39,18 @@ export function shuffle(items: Int32Array, random: Random): void {
 
 /** Costs for the coming pass: history, and fresh tie-breaks. */
 export function refreshCosts(state: ChainState, random: Random, penalty: number): void {
-  const { base, history } = state
+  const { base, history, fenced } = state
   for (let q = 0; q < base.length; q++)
-    base[q] = Math.floor(COST_UNIT * (1 + history[q]!)) + random.below(NEGOTIATION.tieBreak)
+    base[q] = fenced[q] ? Infinity : Math.floor(COST_UNIT * (1 + history[q]!)) + random.below(NEGOTIATION.tieBreak)
   state.setPenalty(penalty)
+}
+
+/** Puts the qubits of all chains but the given ones' out of reach, from the next refresh of costs on. */
+export function fenceAllBut(state: ChainState, variables: Int32Array): void {
+  const { use, fenced, head, recordQubit, recordNext } = state
+  for (let q = 0; q < fenced.length; q++) fenced[q] = use[q]! > 0 ? 1 : 0
+  for (let i = 0; i < variables.length; i++)
+    for (let record = head[variables[i]!]!; record >= 0; record = recordNext[record]!) fenced[recordQubit[record]!] = 0
 }
 
 function rememberOveruse({ use, history }: ChainState): void {

@@ -1,7 +1,8 @@
 import type { Random } from '../../random'
-import { growTree, markTouches } from './grow'
+import { markTouches } from './grow'
 import { settleTree } from './settle'
 import type { Settling } from './settle'
+import { FAR } from './state'
 import type { ChainState } from './state'
 
 /** Reroutes one variable at a time. */
@@ -35,10 +36,10 @@ export class Router {
   private grow(variable: number, placed: number): number {
     const { state, starts } = this
     const count = this.drawStarts(variable, Math.min(this.mostStarts, starts.length))
-    let ceiling = Infinity
+    let ceiling = FAR
     let best = 0
     for (let i = 0; i < count; i++) {
-      const size = growTree(state, variable, starts[i]!, placed, ceiling)
+      const size = state.grow(variable, starts[i]!, placed, ceiling)
       if (size === 0) continue
       ceiling = state.treeCost
       best = size

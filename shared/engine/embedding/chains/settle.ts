@@ -135,6 +135,7 @@ function giveFromLeaf(state: ChainState, variable: number, leaf: number, left: n
   const partner = soleContact(state, leaf)
   if (partner < 0) return 0
   const receiver = partners[partnerOffsets[variable]! + partner]!
+  if (state.frozen[receiver]) return 0
   const share = runLength(state, leaf, partner) >> 1
   let q = leaf
   let given = 0

@@ -1,7 +1,7 @@
 import type { Random } from '../../random'
-import type { Objective } from '../objective'
+import type { Attempt } from '../method'
 import type { Watch } from '../progress'
-import { isMet, refreshCosts, shuffle } from './negotiate'
+import { fenceAllBut, isMet, refreshCosts, shuffle } from './negotiate'
 import type { Router } from './router'
 import type { ChainState } from './state'
 
@@ -37,6 +37,7 @@ function shortenStrictly(
   watch: Watch,
 ): boolean {
   state.history.fill(0)
+  state.fenced.fill(0)
   for (let idle = 0; idle < SHORTENING.idlePasses;) {
     const before = burden(state, variables, variables.length, 2)
     refreshCosts(state, random, Infinity)
@@ -124,15 +125,6 @@ class Ball {
     }
   }
 
-  /** Puts the qubits of all chains but the members' out of reach. */
-  fence(random: Random): void {
-    const { state, members } = this
-    for (let q = 0; q < state.qubits; q++) state.base[q] = state.use[q]! > 0 ? Infinity : 64 + random.below(4)
-    for (let i = 0; i < this.size; i++)
-      for (let record = state.head[members[i]!]!; record >= 0; record = state.recordNext[record]!)
-        state.base[state.recordQubit[record]!] = 64 + random.below(4)
-  }
-
   get order(): Int32Array {
     return this.members.subarray(0, this.size)
   }
@@ -140,7 +132,8 @@ class Ball {
 
 /** Renegotiates the members among themselves. Returns whether they are free of overlap and complete again. */
 function renegotiate(state: ChainState, router: Router, ball: Ball, random: Random): boolean {
-  ball.fence(random)
+  fenceAllBut(state, ball.order)
+  refreshCosts(state, random, SHORTENING.ballPenalty)
   let penalty = SHORTENING.ballPenalty
   for (let pass = 0; pass < SHORTENING.ballPasses; pass++) {
     state.setPenalty(penalty)
@@ -161,9 +154,7 @@ export function shortenChains(
   state: ChainState,
   router: Router,
   variables: Int32Array,
-  objective: Objective,
-  random: Random,
-  watch: Watch,
+  { objective, random, watch }: Pick<Attempt, 'objective' | 'random' | 'watch'>,
   offer: () => void,
 ): void {
   watch.phase = 'shortening'

@@ -1,9 +1,17 @@
 import type { Graph } from '../../graph/graph'
+import { growTree } from './grow'
+import { allocate } from './kernel'
+import type { Arrays, KernelChoice } from './kernel'
 
+/** Entries of the table that tells the kernel sizes and addresses. */
+const TABLE_LENGTH = 18
+
+/** Distance of a qubit without a label, and cost of one that is out of reach; two of them fit a signed integer. */
+export const FAR = 2 ** 30 - 1
 /** Fixed-point unit of a qubit's cost: small enough a grain for tie-breaks, large enough for exact sums in a double. */
 export const COST_UNIT = 64
-/** Largest cost of a qubit that is in reach; 2⁹ of them still fit a packed heap key. */
-const LARGEST_COST = 2 ** 26
+/** Largest cost of a qubit that is in reach; ways of up to 2¹¹ of them are told apart. */
+const LARGEST_COST = 2 ** 19
 /** Uses of a qubit from which a further chain costs the same. */
 const LARGEST_EXPONENT = 12
 /** Records for memberships beyond one a qubit, as a multiple of the qubits. */
@@ -53,12 +61,15 @@ export class ChainState {
 
   /** Cost before overuse, growing with history; cost now; and the factor for each number of chains on the qubit. */
   readonly base: Float64Array
-  readonly cost: Float64Array
+  readonly nodes: Int32Array
   readonly history: Float32Array
   private readonly factor = new Float64Array(LARGEST_EXPONENT + 1)
 
+  /** 1 for qubits that are out of reach whatever they cost, and for chains that take no gifts. */
+  readonly fenced: Uint8Array
+  readonly frozen: Uint8Array
+
   /** Shortest-path labels: distance (infinite unless in `labelled`) and parent, which also holds the tree. */
-  readonly distance: Float64Array
   readonly parent: Int32Array
   readonly labelled: Int32Array
   /** 4-ary heap of keys distance·2¹⁷ + qubit; stale keys are skipped when they come up. */
@@ -82,40 +93,100 @@ export class ChainState {
   readonly contacts: Int32Array
   readonly saved: Int32Array
 
-  constructor(problem: Graph, machine: Graph, usable: Uint8Array) {
+  /** Cost of the last tree grown, by the kernel. */
+  private readonly result: Int32Array
+  private readonly kernel: Arrays<string, string>['kernel']
+
+  constructor(problem: Graph, machine: Graph, usable: Uint8Array, kernel: KernelChoice) {
     const qubits = (this.qubits = machine.order)
     const variables = (this.variables = problem.order)
     const neighbours = usableNeighbours(machine, usable)
-    this.offsets = neighbours.offsets
-    this.targets = neighbours.targets
-    this.partnerOffsets = Int32Array.from(problem.offsets)
-    this.partners = Int32Array.from(problem.targets)
     let most = 1
     for (let v = 0; v < variables; v++) most = Math.max(most, problem.offsets[v + 1]! - problem.offsets[v]!)
-    this.words = (most + 31) >>> 5
+    const words = (this.words = (most + 31) >>> 5)
+    const records = (this.freeRecords = (1 + OVERLAP_ROOM) * qubits + variables)
+    const arrays = allocate(
+      kernel,
+      {
+        offsets: qubits + 1,
+        targets: neighbours.targets.length,
+        partnerOffsets: variables + 1,
+        partners: problem.targets.length,
+        head: variables,
+        recordQubit: records,
+        recordNext: records,
+        nodes: 2 * qubits,
+        parent: qubits,
+        labelled: qubits,
+        touch: qubits * words,
+        touchedAt: qubits,
+        missing: words,
+        tree: qubits,
+        result: 1,
+        table: TABLE_LENGTH,
+      },
+      { heap: neighbours.targets.length + 2 * qubits + 1 },
+    )
+    this.kernel = arrays.kernel
+    ;({
+      offsets: this.offsets,
+      targets: this.targets,
+      partnerOffsets: this.partnerOffsets,
+      partners: this.partners,
+      head: this.head,
+      recordQubit: this.recordQubit,
+      recordNext: this.recordNext,
+      nodes: this.nodes,
+      parent: this.parent,
+      labelled: this.labelled,
+      touch: this.touch,
+      touchedAt: this.touchedAt,
+      missing: this.missing,
+      tree: this.tree,
+      result: this.result,
+    } = arrays.ints)
+    ;({ heap: this.heap } = arrays.floats)
+    this.offsets.set(neighbours.offsets)
+    this.targets.set(neighbours.targets)
+    this.partnerOffsets.set(problem.offsets)
+    this.partners.set(problem.targets)
+    this.head.fill(-1)
+    for (let i = 0; i < records; i++) this.recordNext[i] = i + 1
+    for (let q = 0; q < qubits; q++) this.nodes.set([COST_UNIT, FAR], 2 * q)
     this.use = new Int32Array(qubits)
     this.length = new Int32Array(variables)
-    this.head = new Int32Array(variables).fill(-1)
-    this.freeRecords = (1 + OVERLAP_ROOM) * qubits + variables
-    this.recordQubit = new Int32Array(this.freeRecords)
-    this.recordNext = Int32Array.from({ length: this.freeRecords }, (_, i) => i + 1)
     this.base = new Float64Array(qubits).fill(COST_UNIT)
-    this.cost = new Float64Array(qubits).fill(COST_UNIT)
+    this.fenced = new Uint8Array(qubits)
+    this.frozen = new Uint8Array(variables)
     this.history = new Float32Array(qubits)
-    this.distance = new Float64Array(qubits).fill(Infinity)
-    this.parent = new Int32Array(qubits)
-    this.labelled = new Int32Array(qubits)
-    this.heap = new Float64Array(this.targets.length + 2 * qubits + 1)
-    this.touch = new Int32Array(qubits * this.words)
-    this.touchedAt = new Int32Array(qubits)
-    this.missing = new Int32Array(this.words)
-    this.tree = new Int32Array(qubits)
     this.bestTree = new Int32Array(qubits)
     this.bestParent = new Int32Array(qubits)
     this.treeAt = new Int32Array(qubits)
     this.treeDegree = new Int32Array(qubits)
     this.contacts = new Int32Array(most)
     this.saved = new Int32Array(qubits)
+    this.bind(arrays.ints.table)
+  }
+
+  /** Tells the kernel where its arrays are: the table that `bind` of kernels/growth.as reads. */
+  private bind(table: Int32Array): void {
+    if (!this.kernel) return
+    const { offsets, targets, partnerOffsets, partners, head, recordQubit, recordNext } = this
+    const { nodes, parent, labelled, heap, touch, touchedAt, missing, tree, result } = this
+    const growth = [
+      ...[offsets, targets, partnerOffsets, partners, head, recordQubit, recordNext, nodes],
+      ...[parent, labelled, heap, touch, touchedAt, missing, tree, result],
+    ]
+    table.set([this.words, heap.length, ...growth.map(({ byteOffset }) => byteOffset)])
+    this.kernel.bind(table.byteOffset)
+  }
+
+  /** `growTree` by the kernel where there is one. */
+  grow(variable: number, start: number, placed: number, ceiling: number): number {
+    if (!this.kernel) return growTree(this, variable, start, placed, ceiling)
+    const size = this.kernel.grow(variable, start, placed, ceiling, this.touchNow)
+    this.treeCost = this.result[0]!
+    return size
   }
 
   /** Forgets all chains. */
@@ -137,7 +208,7 @@ export class ChainState {
   setCost(qubit: number): void {
     const use = this.use[qubit]!
     const cost = this.base[qubit]! * this.factor[use < LARGEST_EXPONENT ? use : LARGEST_EXPONENT]!
-    this.cost[qubit] = cost === Infinity ? Infinity : Math.min(LARGEST_COST, Math.floor(cost))
+    this.nodes[2 * qubit] = cost === Infinity ? FAR : Math.min(LARGEST_COST, Math.floor(cost))
   }
 
   /** Adds a qubit that is not in the chain. There must be a free record. */
