@@ -8,11 +8,14 @@ import { extentOf, rankWindows } from './windows'
 import type { Extent, MatchedWindow } from './windows'
 
 const DEFAULTS = {
-  /** Windows looked at of each size, and factor from one size to the next. */
-  windowsPerSize: 100,
+  /** Windows looked at of each size: at most so many, and fewer where they hold more crossings than this in all. */
+  mostWindows: 100,
+  crossingsPerSize: 1e6,
+  /** Factor from one size to the next. */
   growth: 1.04,
-  /** Windows of the smallest size that suffices which are all fitted. */
+  /** Windows of the smallest size that suffices which are all fitted, for complete problems and for others. */
   fittedWindows: 8,
+  fittedWindowsOfOthers: 2,
   /** A window is annealed when it holds this share of the chains as it is. */
   promising: 0.74,
   /** Windows annealed once there is a solution, each a step smaller or larger. */
@@ -54,13 +57,9 @@ export class CornerFitter {
   private rank(step: number): MatchedWindow[] {
     const known = this.ranked.get(step)
     if (known) return known
-    const windows = rankWindows(
-      this.crossings,
-      this.extent,
-      this.sizes[step]!,
-      DEFAULTS.windowsPerSize,
-      this.fitter.attempt.random,
-    )
+    const size = this.sizes[step]!
+    const limit = Math.min(DEFAULTS.mostWindows, DEFAULTS.crossingsPerSize / (size * size))
+    const windows = rankWindows(this.crossings, this.extent, size, limit, this.fitter.attempt.random)
     this.ranked.set(step, windows)
     return windows
   }
@@ -71,7 +70,8 @@ export class CornerFitter {
 
   private fitsAsItIs(step: number): boolean {
     let fitted = false
-    for (const { window, pairing } of this.rank(step).slice(0, DEFAULTS.fittedWindows)) {
+    const count = this.fitter.isComplete ? DEFAULTS.fittedWindows : DEFAULTS.fittedWindowsOfOthers
+    for (const { window, pairing } of this.rank(step).slice(0, count)) {
       if (this.fitter.attempt.watch.shouldStop(0)) break
       if (pairing.verticals.length < this.n) break
       fitted = this.fitter.fit(cornerTemplate(window, pairing)) || fitted
@@ -93,12 +93,20 @@ export class CornerFitter {
     return this.fitter.fit(cornerTemplate(window, annealer.pairing()))
   }
 
-  /** First size, as a step, whose best window holds so many chains as it is; the last one when none does. */
+  /**
+   * First size, as a step, whose best window holds so many chains as it is; the last one when none does. Larger windows
+   * hold more, nearly always, so this halves the range.
+   */
   private firstHolding(chains: number): number {
-    for (let step = 0; step < this.sizes.length; step++) {
-      if (this.fitter.attempt.watch.shouldStop(0) || this.held(step) >= chains) return step
+    let low = 0
+    let high = this.sizes.length - 1
+    if (this.held(high) < chains) return high
+    while (low < high) {
+      const middle = (low + high) >> 1
+      if (this.held(middle) >= chains) high = middle
+      else low = middle + 1
     }
-    return this.sizes.length - 1
+    return low
   }
 
   /** Goes down from a size that worked for as long as smaller ones do. */

@@ -86,3 +86,16 @@ export function cutWindow(crossings: Crossings, { x, y, size, mirror }: WindowPl
 export function crosses({ crossings, verticals, horizontals }: CornerWindow, v: number, h: number): boolean {
   return crossings.alongVertical[verticals[v]! * crossings.horizontal.count + horizontals[h]!]! >= 0
 }
+
+/** The same window with its diagonal moved to where the corners of the given chains lie in the middle. */
+export function centreDiagonal(
+  window: CornerWindow,
+  pairing: { readonly verticals: Int32Array; readonly horizontals: Int32Array },
+): CornerWindow {
+  const offsets = Float32Array.from(
+    pairing.verticals,
+    (v, i) => window.t[pairing.horizontals[i]!]! - window.u[v]!,
+  ).sort()
+  const shift = offsets[offsets.length >> 1] ?? 0
+  return { ...window, t: window.t.map((t) => t - shift), reachT: window.reachT.map((reach) => reach - shift) }
+}

@@ -2,7 +2,9 @@ import { graphFromEdges } from '../../graph/build'
 import type { Graph } from '../../graph/graph'
 import { degreeOf } from '../../graph/graph'
 import { packChains } from '../embedding'
+import type { Embedding } from '../embedding'
 import type { Attempt } from '../method'
+import { compareQuality, qualityOf } from '../objective'
 import type { EmbeddingTask } from '../task'
 import { ChainSet, FREE } from './chain-set'
 import { Displacer } from './displace'
@@ -42,6 +44,8 @@ export class Fitter {
   /** The problem without isolated variables, which need no place in a template. */
   readonly core: Graph
   readonly isComplete: boolean
+  /** The best that was offered. */
+  best: Embedding | null = null
   private readonly variables: Int32Array
   private readonly set: ChainSet
   private readonly joiner: Joiner
@@ -74,7 +78,10 @@ export class Fitter {
       if (q === set.owner.length) return false
       chain.push(q++)
     }
-    this.attempt.offer(packChains(chains))
+    const made = packChains(chains)
+    const { objective, offer } = this.attempt
+    if (!this.best || compareQuality(qualityOf(made), qualityOf(this.best), objective) < 0) this.best = made
+    offer(made)
     return true
   }
 
@@ -99,8 +106,8 @@ export class Fitter {
   /** The same from a first choice of slots, −1 for variables without one. */
   fitFrom(template: Template, firstSlotOf: Int32Array): boolean {
     const { watch, random } = this.attempt
-    const annealer = new SlotAnnealer(this.core, template, firstSlotOf, random)
     watch.phase = 'fitting the template'
+    const annealer = new SlotAnnealer(this.core, template, firstSlotOf, random)
     if (!this.isComplete) annealer.run(watch)
     if (watch.shouldStop(0)) return false
     this.set.clear()

@@ -1,7 +1,7 @@
 import type { Random } from '../../random'
 import type { ChainSet } from './chain-set'
 import { FREE } from './chain-set'
-import { shuffle } from '../seeding'
+import { shuffle } from '../chains/negotiate'
 
 /** Joins chains that should touch by paths of free qubits; holds the scratch of its breadth-first search. */
 export class Joiner {
@@ -104,7 +104,7 @@ export class Joiner {
   joinAll(random: Random): number {
     const { set } = this
     const unmet = Int32Array.from(set.unmet())
-    shuffle(unmet, unmet.length, random)
+    shuffle(unmet, random)
     let failures = 0
     for (const k of unmet) if (!this.join(set.problem.ends[2 * k]!, set.problem.ends[2 * k + 1]!)) failures++
     return failures

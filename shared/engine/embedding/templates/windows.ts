@@ -1,7 +1,7 @@
 import type { Random } from '../../random'
 import type { CornerWindow, WindowPlace } from './corner-window'
-import { cutWindow } from './corner-window'
-import type { Crossings, RunSet } from './crossings'
+import { centreDiagonal, cutWindow } from './corner-window'
+import type { Crossings } from './crossings'
 import { matchInOrder } from './matching'
 import type { Pairing } from './matching'
 
@@ -12,27 +12,22 @@ export interface MatchedWindow {
   readonly pairing: Pairing
 }
 
-/** The part of the plane that lines stand in, and how many lines a qubit crosses at most. */
+/** The part of the plane that lines stand in. */
 export interface Extent {
   readonly left: number
   readonly top: number
-  /** Line spacings of the longer side. */
+  /** Lines of either orientation that there is room for, and the larger of the two. */
+  readonly width: number
+  readonly height: number
   readonly size: number
-  readonly span: number
-}
-
-function longestSpan({ offsets, from, to, count }: RunSet): number {
-  let span = 1
-  for (let r = 0; r < count; r++) span = Math.max(span, (to[r]! - from[r]!) / (offsets[r + 1]! - offsets[r]!))
-  return span
 }
 
 /** Measures the lines of a machine that has some of either orientation. */
 export function extentOf({ vertical, horizontal }: Crossings): Extent {
   const [left, right] = [vertical.across[0]!, vertical.across[vertical.count - 1]!]
   const [top, bottom] = [horizontal.across[0]!, horizontal.across[horizontal.count - 1]!]
-  const span = Math.ceil(Math.max(longestSpan(vertical), longestSpan(horizontal)))
-  return { left, top, size: Math.max(right - left, bottom - top) + 1, span }
+  const [width, height] = [right - left + 1, bottom - top + 1]
+  return { left, top, width, height, size: Math.max(width, height) }
 }
 
 /** Evenly spread whole numbers from `first` to `last`, `count` at most, in steps of at least 1. */
@@ -43,15 +38,12 @@ function spread(first: number, last: number, count: number): number[] {
   )
 }
 
-/** Places of a window of one size: an even grid that may stand out by most of a qubit, in random order, mirrored all ways. */
-function places({ left, top, size: all, span }: Extent, size: number, limit: number, random: Random): WindowPlace[] {
+/** Places of a window of one size: an even grid in random order, mirrored all ways. */
+function places({ left, top, size: all }: Extent, size: number, limit: number, random: Random): WindowPlace[] {
   const each = Math.max(1, Math.floor(Math.sqrt(limit / 4)))
-  const over = Math.min(span, Math.ceil(size / 4))
-  const first = -over
-  const last = Math.max(first, all - size + over)
   const list: WindowPlace[] = []
-  for (const x of spread(first, last, each))
-    for (const y of spread(first, last, each))
+  for (const x of spread(0, all - size, each))
+    for (const y of spread(0, all - size, each))
       for (let mirror = 0; mirror < 4; mirror++) list.push({ x: left + x, y: top + y, size, mirror })
   for (let i = list.length - 1; i > 0; i--) {
     const j = random.below(i + 1)
@@ -73,7 +65,8 @@ export function rankWindows(
 ): MatchedWindow[] {
   const matched = places(extent, size, limit, random).map((place): MatchedWindow => {
     const window = cutWindow(crossings, place)
-    return { place, window, pairing: matchInOrder(window) }
+    const pairing = matchInOrder(window)
+    return { place, window: centreDiagonal(window, pairing), pairing }
   })
   return matched.sort((a, b) => b.pairing.verticals.length - a.pairing.verticals.length)
 }
