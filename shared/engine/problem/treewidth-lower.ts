@@ -29,11 +29,26 @@ const LEAST_READS = 16
 const mostByDegrees = (graph: Graph): number =>
   Math.max(0, Math.min(graph.order - 1, Math.floor((Math.sqrt(8 * sizeOf(graph) + 1) - 1) / 2)))
 
+/** The largest d for which at least d + 1 vertices have d neighbours or more; no subgraph has a larger least degree. */
+function mostByDeleting(graph: Graph): number {
+  const withDegree = new Uint32Array(graph.order + 1)
+  for (let v = 0; v < graph.order; v++) withDegree[degreeOf(graph, v)]!++
+  let degree = graph.order
+  for (let count = 0; degree > 0; degree--) {
+    count += withDegree[degree]!
+    if (count > degree) break
+  }
+  return degree
+}
+
+const mayContract = (graph: Graph, contractionWork: number): boolean => LEAST_READS * sizeOf(graph) <= contractionWork
+
 /** An estimate of what `treewidthLowerBound` can reach at best; takes a few milliseconds. Not a bound on treewidth. */
-export const treewidthReach = (
-  graph: Graph,
-  { routingWork }: Pick<LowerBoundLimits, 'routingWork'> = DEFAULTS,
-): number => Math.max(mostByDegrees(graph), routingReach(graph, routingWork))
+export function treewidthReach(graph: Graph, limits: Partial<LowerBoundLimits> = {}): number {
+  const { contractionWork, routingWork } = { ...DEFAULTS, ...limits }
+  const byDegrees = mayContract(graph, contractionWork) ? mostByDegrees(graph) : mostByDeleting(graph)
+  return Math.max(byDegrees, routingReach(graph, { maxWork: routingWork, useless: byDegrees }))
+}
 
 /** The largest second smallest degree while vertices of least degree are deleted one by one; linear time. */
 function byDeleting(graph: Graph): number {
@@ -53,7 +68,7 @@ function byDeleting(graph: Graph): number {
 
 /** The largest second smallest degree while edges are contracted; the best until the work is spent, `bound` at least. */
 function byContracting(graph: Graph, bound: number, { enough, contractionWork }: LowerBoundLimits): number {
-  if (LEAST_READS * sizeOf(graph) > contractionWork) return bound
+  if (!mayContract(graph, contractionWork)) return bound
   const contraction = new Contraction(graph)
   let best = bound
   while (contraction.vertices > best + 1 && contraction.work < contractionWork && best <= enough) {

@@ -23,6 +23,9 @@ const DEFAULTS = {
   sample: 8,
 }
 
+/** A terminal's own paths make its term at least about 3k/2, so no more than about k/3 terms are ever needed. */
+const TERMINALS_A_TERM = 3
+
 /** Shortest-path trees over one graph; every tree adds its paths to the loads of the vertices they meet. */
 class PathLoads {
   readonly loads: Float64Array
@@ -149,20 +152,25 @@ function terminalsOf(graph: Graph, maxWork: number): Terminals {
   return { vertices, isTerminal, paths: new PathLoads(graph, isTerminal, part.length), partSize: part.length }
 }
 
+/** Most terminals that the work allows; there may be fewer vertices. */
+const affordable = (graph: Graph, maxWork: number): number =>
+  sizeOf(graph) === 0 ? 0 : Math.min(graph.order, Math.floor(maxWork / (2 * sizeOf(graph))))
+
 /** The bound that would come of it if all trees were like the first few and loads spread evenly, the best there is. */
 function reachOf({ vertices, paths, partSize }: Terminals): number {
   const count = vertices.length
   const sample = vertices.slice(0, DEFAULTS.sample)
-  // A terminal's term is at least 3k/2, so no more than k/3 terms are ever needed.
   if (count <= 3) return 0
   for (const v of sample) paths.routeFrom(v)
   const meanTerm = (count * (paths.total / sample.length - count / 2 + 1)) / partSize
-  return Math.min(count / 3, count ** 2 / 2 / meanTerm)
+  return Math.min(count / TERMINALS_A_TERM, count ** 2 / 2 / meanTerm)
 }
 
-/** An estimate of what `routingLowerBound` can reach at best, from a few of its trees. */
-export function routingReach(graph: Graph, maxWork = DEFAULTS.maxWork): number {
-  return sizeOf(graph) === 0 ? 0 : reachOf(terminalsOf(graph, maxWork))
+/** An estimate of what `routingLowerBound` can reach at best, from a few of its trees; 0 where that is of no use. */
+export function routingReach(graph: Graph, limits: Partial<RoutingLimits> = {}): number {
+  const { maxWork, useless } = { ...DEFAULTS, ...limits }
+  if (affordable(graph, maxWork) / TERMINALS_A_TERM <= useless) return 0
+  return reachOf(terminalsOf(graph, maxWork))
 }
 
 /**
@@ -171,7 +179,7 @@ export function routingReach(graph: Graph, maxWork = DEFAULTS.maxWork): number {
  */
 export function routingLowerBound(graph: Graph, limits: Partial<RoutingLimits> = {}): number {
   const { maxWork, useless } = { ...DEFAULTS, ...limits }
-  if (sizeOf(graph) === 0) return 0
+  if (affordable(graph, maxWork) / TERMINALS_A_TERM <= useless) return 0
   const terminals = terminalsOf(graph, maxWork)
   const { vertices, isTerminal, paths } = terminals
   const count = vertices.length

@@ -82,4 +82,15 @@ describe('treewidthLowerBound', () => {
     expect(treewidthLowerBound(graph, { enough: best })).toBeLessThanOrEqual(best)
     expect(treewidthReach(graph)).toBeGreaterThanOrEqual(best)
   })
+
+  it('estimates its reach from above, also where there is no work to be done', () => {
+    const random = createRandom(41)
+    for (let round = 0; round < 100; round++) {
+      const graph = randomGraph(4 + random.below(50), random.float(), random)
+      for (const work of [0, 2000, 1_000_000]) {
+        const limits = { contractionWork: work, routingWork: 0 }
+        expect(treewidthReach(graph, limits)).toBeGreaterThanOrEqual(treewidthLowerBound(graph, limits))
+      }
+    }
+  })
 })
