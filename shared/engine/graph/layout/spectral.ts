@@ -13,6 +13,12 @@ export interface SpectralOptions {
 
 export const SPECTRAL_DEFAULTS: SpectralOptions = { rounds: 2, degreeBase: 60, degreeByRoot: 2 }
 
+/**
+ * Most that a filter magnifies eigenvalue 0. Beyond it, what rounding leaves of the constant vector would outgrow the
+ * wanted ones, and those would run together.
+ */
+const LARGEST_GROWTH = 1e7
+
 /** Vectors that are iterated together, interleaved: entry k of vertex v is block[4v + k]. The kernels are unrolled. */
 const WIDTH = 4
 
@@ -62,16 +68,17 @@ function applyShifted(
 
 /**
  * Multiplies what `block` holds of eigenvectors in [cut, bound] down and of those below `cut` up, by a Chebyshev
- * polynomial scaled to 1 at eigenvalue 0. Returns the result; both arrays are overwritten.
+ * polynomial of at most the given degree, scaled to 1 at eigenvalue 0. Returns the result; both arrays are overwritten.
  */
 function filter(graph: Graph, block: Float64Array, spare: Float64Array, cut: number, bound: number, degree: number) {
   const half = (bound - cut) / 2
   const centre = (bound + cut) / 2
+  const steps = Math.min(degree, Math.ceil(Math.acosh(LARGEST_GROWTH) / Math.acosh(centre / half)))
   let sigma = -half / centre
   const tau = 2 / sigma
   let [previous, current] = [block, spare]
   applyShifted(graph, previous, current, centre, sigma / half, 0)
-  for (let k = 2; k <= degree; k++) {
+  for (let k = 2; k <= steps; k++) {
     const next = 1 / (tau - sigma)
     applyShifted(graph, current, previous, centre, (2 * next) / half, sigma * next)
     ;[previous, current] = [current, previous]

@@ -7,12 +7,17 @@ import { Equaliser, bestTurn, refineTurn, shorter } from './turn'
 import type { Equalised } from './turn'
 
 export const START_DEFAULTS = {
-  /** Below this share of a random placement's wirelength a graph counts as mesh-like, so that turning pays. */
+  /** Below this share of a random placement's wirelength a graph counts as mesh-like, so that turning pays … */
   meshShare: 0.25,
+  /** … and below this mean edge length, for on few sites a random placement is short too. */
+  meshEdge: 2.5,
 } as const
 
-/** Mean wirelength when vertices are strewn over the sites at random. */
-const strewnLength = (graph: Graph, columns: number, rows: number): number => (sizeOf(graph) * (columns + rows)) / 3
+/** Whether a wirelength is as short as only mesh-like graphs have it. */
+function isMeshLike(length: number, { graph, columns, rows }: Equaliser): boolean {
+  const strewnEdge = (columns + rows) / 3
+  return length <= sizeOf(graph) * Math.max(START_DEFAULTS.meshEdge, START_DEFAULTS.meshShare * strewnEdge)
+}
 
 /**
  * Draws a connected graph for placement on columns × rows sites: from distances to pivots, or from the lowest modes of
@@ -25,7 +30,7 @@ export function placementStart(graph: Graph, columns: number, rows: number, rand
   const [lowest, ...others] = spectralLayouts(graph, pivot.layout).map((layout) => equaliser.equalise(layout))
   if (!lowest || equaliser.isPerfect(pivot)) return pivot
   const best = others.reduce(shorter, shorter(pivot, lowest))
-  if (best.length > START_DEFAULTS.meshShare * strewnLength(graph, columns, rows)) return best
+  if (!isMeshLike(best.length, equaliser)) return best
   const turnedLowest = shorter(best, bestTurn(equaliser, lowest.layout))
   if (equaliser.isPerfect(turnedLowest)) return turnedLowest
   return refineTurn(equaliser, shorter(turnedLowest, bestTurn(equaliser, pivot.layout)))

@@ -19,6 +19,14 @@ describe('pivotLayout', () => {
     expect(between(corner, middle)).toBeLessThan(0.7 * between(corner, opposite))
   })
 
+  it('puts the middle at the origin', () => {
+    const { x, y } = pivotLayout(regularGraph(50, 3, createRandom(8)), createRandom(9))
+    for (const axis of [x, y]) {
+      const spread = Math.hypot(...axis)
+      expect(axis.reduce((sum, value) => sum + value, 0) / spread).toBeCloseTo(0, 9)
+    }
+  })
+
   it('is the same for the same random numbers', () => {
     const graph = regularGraph(60, 3, createRandom(6))
     expect(pivotLayout(graph, createRandom(7))).toEqual(pivotLayout(graph, createRandom(7)))
