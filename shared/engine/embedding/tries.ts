@@ -3,14 +3,19 @@ import { createRandom } from '../random'
 import { searchChains } from './chain-search'
 import type { KernelChoice } from './chains/kernel'
 import type { Embedding } from './embedding'
+import { assignLines } from './lines/assign-lines'
 import type { Method, PartialEmbedding, Runner } from './method'
 import type { Objective, Quality, Target } from './objective'
 import { compareQuality, qualityOf, reaches } from './objective'
+import type { PlannedTry } from './plan'
 import { Watch } from './progress'
 import type { SearchProgress, StopReason } from './progress'
+import { fitTemplate } from './templates/fit-template'
 import { repairStart, shortenStart } from './rework'
 import type { EmbeddingTask } from './task'
 import { verifyEmbedding } from './verify'
+
+export type { PlannedTry } from './plan'
 
 export interface TrySettings {
   /** Any non-negative safe integer. */
@@ -21,13 +26,6 @@ export interface TrySettings {
   readonly timeLimitSeconds: number
   /** `assembly` unless said otherwise; embeddings are the same, only the time differs. */
   readonly kernel?: KernelChoice
-}
-
-/** One try of a plan, independent of all others. */
-export interface PlannedTry {
-  /** From 1; also the number of the try's stream of random numbers. */
-  readonly tryNumber: number
-  readonly method: Method
 }
 
 export interface TryResult extends PlannedTry {
@@ -42,8 +40,10 @@ export interface TryResult extends PlannedTry {
   readonly firstSeconds: number | null
 }
 
-const RUNNERS: Partial<Record<Method, Runner>> = {
+const RUNNERS: Record<Method, Runner> = {
   search: searchChains,
+  lines: assignLines,
+  template: fitTemplate,
   repair: repairStart,
   shorten: shortenStart,
 }
@@ -71,7 +71,7 @@ export function runTry(
     watch.best = quality
     if (reaches(quality, target)) watch.stopped ??= 'target reached'
   }
-  const partial = RUNNERS[method]!(task, { random: createRandom(seed, tryNumber), objective, kernel, watch, offer })
+  const partial = RUNNERS[method](task, { random: createRandom(seed, tryNumber), objective, kernel, watch, offer })
   return {
     tryNumber,
     method,

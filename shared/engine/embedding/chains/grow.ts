@@ -175,6 +175,7 @@ export function growTree(state: ChainState, variable: number, start: number, pla
           treeCost += nodes[2 * r]!
         }
         missing -= reached
+        if (treeCost >= ceiling) break
         if (missing === 0) {
           complete = true
           break

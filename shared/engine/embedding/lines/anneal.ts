@@ -62,6 +62,8 @@ export function anneal(
     const way = Math.min(1, done / (moves * ramp))
     const temperature = hottest * (coldest / hottest) ** way
     const pairWeight = firstPairWeight + (lastPairWeight - firstPairWeight) * way
+    assignment.lengthWeight = lengthWeight
+    assignment.pairWeight = pairWeight
     const radius = Math.round(firstRadius + (lastRadius - firstRadius) * way)
     for (let i = Math.min(MOVES_PER_LOOK, moves - done); i > 0; i--) {
       const { length, pairs, missing } = assignment

@@ -1,9 +1,6 @@
-import { packChains } from '../embedding'
 import type { Attempt, PartialEmbedding, Runner } from '../method'
 import { sizeOf } from '../../graph/graph'
-import { Rerouter } from '../reroute'
-import { shorten } from '../shorten'
-import { SearchState } from '../state'
+import { shortenEmbedding } from '../rework'
 import type { EmbeddingTask } from '../task'
 import { anneal, scatter } from './anneal'
 import type { Schedule } from './anneal'
@@ -65,16 +62,6 @@ function mend(assignment: Assignment, task: EmbeddingTask, coin: Coin, { watch }
   return best
 }
 
-/** Shortens disjoint chains by strict rerouting and offers the outcome. */
-function offerShortened({ problem, machine, usable }: EmbeddingTask, { chains }: Mended, attempt: Attempt): void {
-  const { random, watch, offer } = attempt
-  const state = new SearchState(problem, machine, usable)
-  chains.owner.forEach((v, q) => v >= 0 && state.chains.add(v, q))
-  shorten(state, new Rerouter(state, random), random, watch)
-  const { saved } = state
-  offer(packChains(Array.from({ length: problem.order }, (_, v) => saved.slice(0, state.chains.copyChain(v, saved)))))
-}
-
 /**
  * One try of giving each variable a vertical and a horizontal line of a machine whose qubits are straight segments, for
  * problems that are dense but far from complete: anneal the lines until intervals no longer overlap, mend what is left,
@@ -89,7 +76,7 @@ export const assignLines: Runner = (task, attempt) => {
   const assignment = new Assignment(problem, crossings)
   const moves = DEFAULTS.movesPerEnd * (problem.order + sizeOf(problem))
   const lines = Math.max(...crossings.counts)
-  let best: Mended | null = null
+  let best = null as Mended | null
   const take = (mended: Mended): void => {
     if (isWhole(mended)) offer(mended.chains.toEmbedding())
     if (!best || lacks(mended) <= lacks(best)) best = mended
@@ -103,6 +90,6 @@ export const assignLines: Runner = (task, attempt) => {
   watch.phase = 'assigning lines'
   if (anneal(assignment, coin, qualitySchedule(moves), watch, [0.5, 0.8], null))
     take(mend(assignment, task, coin, attempt))
-  offerShortened(task, best, attempt)
+  shortenEmbedding(task, best.chains.toEmbedding(), new Uint8Array(problem.order), attempt)
   return null
 }

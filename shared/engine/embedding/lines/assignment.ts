@@ -5,6 +5,8 @@ import type { Crossings } from './crossings'
 /** Low end of an empty interval: larger than every place on a line. */
 const NOWHERE = 32767
 
+const MISSING_WEIGHT = 4
+
 /** Fields of a record of the undo log. */
 const RECORD = 5
 
@@ -23,6 +25,8 @@ export class Assignment {
   length = 0
   pairs = 0
   missing = 0
+  lengthWeight = 0.1
+  pairWeight = 1
   /** By part: its line (numbered within its side), and its interval of places, empty where low > high. */
   readonly line: Int32Array
   readonly low: Int32Array
@@ -104,9 +108,27 @@ export class Assignment {
   }
 
   /** Number of crossings that a part is needed at, without the corner. */
-  private needs(part: number): number {
+  needs(part: number): number {
     const v = part >> 1
     return part & 1 ? this.start[v + 1]! - this.middle[v]! : this.middle[v]! - this.start[v]!
+  }
+
+  /** Side of the part of the lower variable that interaction k needs; that of the higher one is the other side. */
+  sideOf(k: number): number {
+    return this.positionOf[2 * k]! < this.middle[this.problem.ends[2 * k]!]! ? 0 : 1
+  }
+
+  /** The edge at a position of the lists. */
+  edgeAt(position: number): number {
+    return this.half[position]! >> 1
+  }
+
+  isOverused(part: number): boolean {
+    const { use } = this
+    const base = this.base[part]!
+    const last = base + this.high[part]!
+    for (let slot = base + this.low[part]!; slot <= last; slot++) if (use[slot]! > 1) return true
+    return false
   }
 
   /** Opens a move: what follows can be undone until the next call. */
@@ -254,6 +276,65 @@ export class Assignment {
     }
     const other = part ^ 1
     if (from < to && this.needs(other) > 0) this.shift(other, place[row[other]! + old]!, place[row[other]! + line]!)
+  }
+
+  /**
+   * Takes a part off its line and returns that of the lines `from` … `to` − 1 of its side where it costs least, of
+   * equals the first from `from + turn` on.
+   */
+  private cheapest(part: number, from: number, to: number, turn: number): number {
+    const { counts, rows, slotOf, first, place, gaps } = this.crossings
+    const { line, start, middle, partner, use, lengthWeight, pairWeight } = this
+    const v = part >> 1
+    const side = part & 1
+    const begin = side ? middle[v]! : start[v]!
+    const end = side ? start[v + 1]! : middle[v]!
+    const corner = begin < end && this.needs(part ^ 1) > 0 ? line[part ^ 1]! : -1
+    let best = from
+    let least = Infinity
+    for (let i = from; i < to; i++) {
+      const candidate = i + turn < to ? i + turn : i + turn - to + from
+      const row = rows[side]! + candidate * counts[1 - side]!
+      let low = NOWHERE
+      let high = -1
+      let cost = 0
+      if (corner >= 0) {
+        const at = place[row + corner]!
+        if (at < 0) cost += MISSING_WEIGHT
+        else low = high = at
+      }
+      for (let position = begin; position < end; position++) {
+        const at = place[row + line[2 * partner[position]! + 1 - side]!]!
+        if (at < 0) cost += MISSING_WEIGHT
+        else {
+          if (at < low) low = at
+          if (at > high) high = at
+        }
+      }
+      if (low <= high) {
+        const base = slotOf[first[side]! + candidate]!
+        let pairs = gaps[base + high]! - gaps[base + low]!
+        for (let slot = base + low; slot <= base + high; slot++) pairs += use[slot]!
+        cost += pairs * pairWeight + (high - low + 1) * lengthWeight
+      }
+      if (cost < least) {
+        least = cost
+        best = candidate
+      }
+    }
+    return best
+  }
+
+  /** Puts a part on the cheapest of the lines that are like `line`. @param turn decides between equals, ≥ 0 */
+  settle(part: number, line: number, turn: number): void {
+    const { alikeFrom, alikeTo, first } = this.crossings
+    const from = alikeFrom[first[part & 1]! + line]!
+    const to = alikeTo[first[part & 1]! + line]!
+    this.remember(part)
+    this.stretch(part, NOWHERE, -1)
+    const best = this.cheapest(part, from, to, turn % (to - from))
+    if (best === this.line[part]) this.refresh(part)
+    else this.move(part, best)
   }
 
   /** Lets the other variable's vertical part serve interaction k. */

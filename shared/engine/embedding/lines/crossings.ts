@@ -21,6 +21,12 @@ export interface Crossings {
   /** Slot of place 0 of a line: slotOf[first[side] + line]. A slot is a place on a line; there is one for each qubit. */
   readonly slotOf: Int32Array
   readonly first: readonly [number, number]
+  /**
+   * Lines that cross each other line at the same qubit as line l does: alikeFrom[first[side] + l] …
+   * alikeTo[first[side] + l] − 1, numbered within the side. A part can change between them without any effect on others.
+   */
+  readonly alikeFrom: Int32Array
+  readonly alikeTo: Int32Array
   /** The qubit of a slot. */
   readonly qubits: Uint32Array
   /** 1 for each slot whose qubit does not work. */
@@ -57,6 +63,33 @@ function crossingPlaces(lines: Lines, machine: Graph, usable: Uint8Array): Int16
   return place
 }
 
+/** Whether two lines of a side are crossed at the same places of all lines that cross both. */
+function areAlike(place: Int16Array, row: number, stride: number, across: number, a: number, b: number): boolean {
+  for (let line = 0; line < across; line++) {
+    const atA = place[row + line * stride + a]!
+    const atB = place[row + line * stride + b]!
+    if (atA >= 0 && atB >= 0 && atA !== atB) return false
+  }
+  return true
+}
+
+/** Cuts the lines of each side into longest stretches of lines that are like the first of the stretch. */
+function alikeStretches(place: Int16Array, counts: readonly [number, number]): { from: Int32Array; to: Int32Array } {
+  const from = new Int32Array(counts[0] + counts[1])
+  const to = new Int32Array(counts[0] + counts[1])
+  for (const side of [0, 1] as const) {
+    const first = side * counts[0]
+    const [count, across] = [counts[side], counts[1 - side]!]
+    const otherRow = side === 0 ? counts[0] * counts[1] : 0
+    for (let begin = 0, end = 0; begin < count; begin = end) {
+      for (end = begin + 1; end < count && areAlike(place, otherRow, count, across, begin, end); ) end++
+      from.fill(begin, first + begin, first + end)
+      to.fill(end, first + begin, first + end)
+    }
+  }
+  return { from, to }
+}
+
 /**
  * Reads the lines and their crossings off the drawing of a working machine.
  * @param usable 1 for each qubit that works; length machine.order
@@ -68,12 +101,17 @@ export function crossingsOf(machine: Graph, usable: Uint8Array, segments: Float3
   if (!lines || lines.verticals === 0 || lines.verticals === lines.count) return null
   const { verticals, offsets, qubits } = lines
   const horizontals = lines.count - verticals
+  const counts = [verticals, horizontals] as const
+  const place = crossingPlaces(lines, machine, usable)
+  const { from, to } = alikeStretches(place, counts)
   return {
-    counts: [verticals, horizontals],
-    place: crossingPlaces(lines, machine, usable),
+    counts,
+    place,
     rows: [0, verticals * horizontals],
     slotOf: Int32Array.from(offsets.subarray(0, lines.count)),
     first: [0, verticals],
+    alikeFrom: from,
+    alikeTo: to,
     qubits,
     broken: Uint8Array.from(qubits, (q) => (usable[q] === 0 ? 1 : 0)),
     gaps: slotGaps(lines, machine, usable),

@@ -2,10 +2,13 @@ import type { Assignment } from './assignment'
 import type { Coin } from './coin'
 
 /** Shares of the kinds of move; the rest swaps both lines of two variables. */
-const SHARES = {
+export const SHARES = {
   flip: 0.4,
   move: 0.35,
   swap: 0.18,
+  near: 0.5,
+  focus: 0.5,
+  smart: 1,
 }
 
 /** How far from a neighbour's line a part is put that is to come near it. */
@@ -24,24 +27,48 @@ function swapLines(assignment: Assignment, a: number, b: number): void {
   assignment.move(b, line)
 }
 
+function settleNearPartner(assignment: Assignment, part: number, coin: Coin): void {
+  const { start, partner, line, crossings } = assignment
+  const v = part >> 1
+  const u = partner[start[v]! + coin.below(start[v + 1]! - start[v]!)]!
+  assignment.settle(
+    part,
+    lineNear(crossings.counts[part & 1]!, line[2 * u + (part & 1)]!, NEAR, coin),
+    coin.below(256),
+  )
+}
+
 /** Makes one random change. @param radius largest distance of a line from where it was, in lines */
 export function makeMove(assignment: Assignment, coin: Coin, radius: number): void {
-  const { problem, crossings, line, partner } = assignment
-  const { offsets, order } = problem
+  const { problem, crossings, line, start } = assignment
+  const { order, ends } = problem
   const kind = coin.float()
+  let part = coin.below(2 * order)
+  if (assignment.needs(part) === 0) part ^= 1
+  if (!assignment.isOverused(part) && coin.float() < SHARES.focus) {
+    part = coin.below(2 * order)
+    if (assignment.needs(part) === 0) part ^= 1
+  }
+  const v = part >> 1
+  const side = part & 1
   if (kind < SHARES.flip) {
-    assignment.flip(coin.below(problem.ends.length >> 1))
+    const [from, to] = side ? [assignment.middle[v]!, start[v + 1]!] : [start[v]!, assignment.middle[v]!]
+    if (from === to) return
+    const k = assignment.edgeAt(from + coin.below(to - from))
+    assignment.flip(k)
+    if (SHARES.smart) {
+      const s = assignment.sideOf(k)
+      const a = 2 * ends[2 * k]! + s
+      const b = 2 * ends[2 * k + 1]! + 1 - s
+      if (assignment.needs(a) === 1) settleNearPartner(assignment, a, coin)
+      if (assignment.needs(b) === 1) settleNearPartner(assignment, b, coin)
+    }
     return
   }
-  const v = coin.below(order)
-  const side = coin.below(2)
-  const part = 2 * v + side
   if (kind < SHARES.flip + SHARES.move) {
-    const degree = offsets[v + 1]! - offsets[v]!
-    if (coin.below(2) === 0 && degree > 0) {
-      const u = partner[offsets[v]! + coin.below(degree)]!
-      assignment.move(part, lineNear(crossings.counts[side]!, line[2 * u + side]!, NEAR, coin))
-    } else assignment.move(part, lineNear(crossings.counts[side]!, line[part]!, radius, coin))
+    if (coin.float() < SHARES.near) settleNearPartner(assignment, part, coin)
+    else
+      assignment.settle(part, lineNear(crossings.counts[side]!, line[part]!, radius, coin), coin.below(256))
     return
   }
   const u = coin.below(order)

@@ -1,4 +1,4 @@
-import type { Crossings } from './crossings'
+import type { Crossings, RunSet } from './crossings'
 import { cornerTemplate } from './corner-template'
 import { fillPairing } from './fill'
 import type { Fitter } from './fitter'
@@ -17,8 +17,10 @@ const DEFAULTS = {
   fittedWindows: 8,
   fittedWindowsOfOthers: 2,
   /** A window is annealed when it holds this share of the chains as it is. */
-  promising: 0.74,
-  /** Windows annealed once there is a solution, each a step smaller or larger. */
+  promising: 0.78,
+  /** Sizes gone up at a time when that fails. */
+  stepUp: 2,
+  /** Annealings once there is a solution. */
   refinements: 6,
   /** Moves of an annealing a chain, and its temperatures in unmet pairs. */
   movesPerChain: 600,
@@ -36,6 +38,13 @@ function sizesFrom(n: number, { size }: Extent): number[] {
   for (let s = Math.max(1, n); s < size; s = Math.max(s + 1, Math.round(s * DEFAULTS.growth))) sizes.push(s)
   sizes.push(size)
   return sizes
+}
+
+/** Lines that the runs lie on: chains beyond them would have to share one. */
+function lineCount({ across, count }: RunSet): number {
+  let lines = 0
+  for (let r = 0; r < count; r++) if (r === 0 || across[r] !== across[r - 1]) lines++
+  return lines
 }
 
 /** Fits the problem's core below the diagonals of the machine's windows. */
@@ -109,38 +118,54 @@ export class CornerFitter {
     return low
   }
 
-  /** Goes down from a size that worked for as long as smaller ones do. */
-  private refine(from: number): void {
-    let step = from - 1
-    for (let tries = 0; tries < DEFAULTS.refinements && step >= 0; tries++) {
+  /** Anneals again: in smaller windows for as long as they do, then in others of the size that did last. */
+  private refine(from: number, refinements: number): void {
+    let step = from
+    let smaller = from > 0
+    for (let tries = 1; tries <= refinements; tries++) {
       if (this.fitter.attempt.watch.shouldStop(0)) return
-      if (!this.anneal(step, 0, tries)) return
-      step--
+      const next = smaller ? step - 1 : step
+      const done = this.anneal(next, 0, smaller ? 0 : tries)
+      if (done) step = next
+      smaller = smaller && done && step > 0
     }
   }
 
-  private firstAnnealed(): boolean {
+  /** Anneals in the smallest window that looks promising, then in larger ones, until one does. */
+  private firstAnnealed(refinements: number): boolean {
     const { watch } = this.fitter.attempt
     const last = this.sizes.length - 1
-    for (let step = this.firstHolding(DEFAULTS.promising * this.n); step < last; step++) {
+    for (let step = this.firstHolding(DEFAULTS.promising * this.n); step < last; step += DEFAULTS.stepUp) {
       if (watch.shouldStop(0)) return false
       if (!this.anneal(step, 0, 0)) continue
-      this.refine(step)
+      this.refine(step, refinements)
       return true
     }
     for (let tries = 0; tries < DEFAULTS.lastTries; tries++) {
       if (watch.shouldStop(0)) return false
-      if (this.anneal(last, tries % (DEFAULTS.mostExtra + 1), tries)) return true
+      if (!this.anneal(last, tries % (DEFAULTS.mostExtra + 1), tries)) continue
+      this.refine(last, refinements)
+      return true
     }
     return false
   }
 
-  /** Offers what can be found; returns whether anything was valid. */
-  run(): boolean {
-    if (this.n === 0) return false
+  /** Chains that the best window of the whole machine holds as it is. */
+  heldByAll(): number {
+    return this.held(this.sizes.length - 1)
+  }
+
+  /**
+   * Offers what can be found; returns whether anything was valid.
+   * @param onlyFirst leave out what may improve it
+   */
+  run(onlyFirst = false): boolean {
+    const { vertical, horizontal } = this.crossings
+    const lines = Math.min(lineCount(vertical), lineCount(horizontal))
+    if (this.n === 0 || this.n > lines + DEFAULTS.mostExtra) return false
     const step = this.firstHolding(this.n)
     const whole = this.held(step) >= this.n && this.fitsAsItIs(step)
-    if (whole && this.sizes[step]! <= this.n * DEFAULTS.growth ** 2) return true
-    return this.firstAnnealed() || whole
+    if (whole && (onlyFirst || this.sizes[step]! <= this.n * DEFAULTS.growth ** 2)) return true
+    return this.firstAnnealed(onlyFirst ? 0 : DEFAULTS.refinements) || whole
   }
 }

@@ -18,6 +18,8 @@ import { thinChains } from './thin'
 const DEFAULTS = {
   /** A template that leaves more unmet interactions a variable than this is not worth mending. */
   mostUnmet: 4,
+  /** Nor one after whose mending more interactions a variable are blocked. */
+  mostBlocked: 0.15,
 }
 
 /** The problem without its isolated variables, and which variables those of the core are. */
@@ -126,7 +128,9 @@ export class Fitter {
     thinChains(set)
     for (let i = 0; i < core.order; i++) if (set.chains[i]!.length === 0) this.grower.grow(i, random)
     if (set.chains.some((chain) => chain.length === 0)) return false
-    if (joiner.joinAll(random) > 0 && this.displacer.run(random, watch) > 0) return false
+    const left = joiner.joinAll(random)
+    if (left > DEFAULTS.mostBlocked * core.order) return false
+    if (left > 0 && this.displacer.run(random, watch) > 0) return false
     thinChains(set)
     return true
   }
