@@ -65,7 +65,7 @@ describe('complete graphs on Chimera', () => {
   // C(m, m, t) has treewidth t·m (Klymko, Sullivan & Humble, Adiabatic quantum programming: minor embedding with hard
   // faults, Quantum Inf. Process. 13, 2014; Boothby, King & Roy, Fast clique minor generation in Chimera qubit
   // connectivity graphs, 15, 2016), so no more than K_{t·m + 1}.
-  it.each([1, 2, 4, 8, 16])('C(%i, %i, 4): K_{4m + 2} is impossible, K_{4m + 1} is not refused', (m) => {
+  it.each([1, 2, 4, 8, 16])('C(m, m, 4) with m = %i: K_{4m + 2} is impossible, K_{4m + 1} is not refused', (m) => {
     const family: Family = { kind: 'chimera', m, n: m, t: 4 }
     expect(machineTreewidthBound(familyTask(completeGraph(2), family)).width).toBe(4 * m)
     expect(provedInfeasible(familyTask(completeGraph(4 * m + 2), family))).not.toBeNull()
