@@ -1,6 +1,7 @@
 import { Piscina } from 'piscina'
 import { availableParallelism } from 'node:os'
 import { join } from 'node:path'
+import type { MessagePort } from 'node:worker_threads'
 import { MessageChannel } from 'node:worker_threads'
 import { FLAGS } from './flags'
 import type { TaskInput, TaskName, TaskOutput, TaskProgress } from './tasks'

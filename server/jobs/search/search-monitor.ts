@@ -1,7 +1,7 @@
 import type { Objective, Quality } from '../../../shared/engine/embedding/objective'
 import { compareQuality } from '../../../shared/engine/embedding/objective'
 import type { SearchProgress } from '../../../shared/engine/embedding/progress'
-import type { PlannedTry } from '../../../shared/engine/embedding/tries'
+import type { PlannedTry } from '../../../shared/engine/embedding/plan'
 import type { EmbeddingProgress } from '../../../shared/schemas/embeddings'
 import { Trace } from './trace'
 

@@ -1,4 +1,5 @@
-import type { PlannedTry, TryResult } from '../../../shared/engine/embedding/tries'
+import type { PlannedTry } from '../../../shared/engine/embedding/plan'
+import type { TryResult } from '../../../shared/engine/embedding/tries'
 
 export interface Spread {
   plan: readonly PlannedTry[]

@@ -1,9 +1,9 @@
 import type { Control } from '../../../shared/engine/control'
+import type { PlannedTry } from '../../../shared/engine/embedding/plan'
 import { planTries } from '../../../shared/engine/embedding/plan'
 import type { SearchOptions } from '../../../shared/engine/embedding/search'
 import { checkSearch } from '../../../shared/engine/embedding/search'
 import type { EmbeddingTask } from '../../../shared/engine/embedding/task'
-import type { PlannedTry } from '../../../shared/engine/embedding/tries'
 
 export interface PlanSearchInput {
   task: EmbeddingTask
