@@ -1,4 +1,4 @@
-/** Text for a live region: follows its source, but changes at most once in so many milliseconds. */
+/** Text for a live region: follows its source, but changes at most once in so many milliseconds; nothing is not said. */
 export function useCalmText(source: () => string, leastMilliseconds: number) {
   const text = ref('')
   let last = -Infinity
@@ -12,6 +12,7 @@ export function useCalmText(source: () => string, leastMilliseconds: number) {
     watch(
       source,
       () => {
+        if (source() === '') return
         timer ??= setTimeout(say, Math.max(0, last + leastMilliseconds - Date.now()))
       },
       { immediate: true },

@@ -53,7 +53,13 @@ function searchFacts(embedding: EmbeddingView): Fact[] {
     { label: 'Time limit', value: formatNumber(timeLimitSeconds), unit: 's' },
   ]
   if (seconds !== null) facts.push({ label: 'Time taken', ...splitDuration(seconds) })
-  if (unmet) facts.push({ label: 'Overlap left', value: formatNumber(unmet.overlap), note: 'too many uses' })
+  if (unmet?.overlap) facts.push({ label: 'Overlap left', value: formatNumber(unmet.overlap), note: 'too many uses' })
+  else if (unmet)
+    facts.push({
+      label: 'Left over',
+      value: formatNumber(unmet.unmetInteractions),
+      note: 'interactions without a coupler',
+    })
   return facts
 }
 
