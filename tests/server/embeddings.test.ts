@@ -38,7 +38,7 @@ it('tells the course of a search while it runs, and ends it at the common time l
   const { id, jobId } = await startEmbedding(
     app,
     actor,
-    request({ problemId, machineId, tries: 1000, timeLimitSeconds: 3, objective: 'total qubits' }),
+    request({ problemId, machineId, method: 'search', tries: 1000, timeLimitSeconds: 3, objective: 'total qubits' }),
   )
   const detail = await until(async () => {
     const { detail } = await jobOf(app, actor, jobId)
@@ -70,7 +70,7 @@ it('keeps the best of all tries when it is cancelled', async () => {
   const { id, jobId } = await startEmbedding(
     app,
     actor,
-    request({ problemId, machineId, tries: 1000, timeLimitSeconds: 300 }),
+    request({ problemId, machineId, method: 'search', tries: 1000, timeLimitSeconds: 300 }),
   )
   await until(async () => (await jobOf(app, actor, jobId)).detail.longestChain)
   await cancelJob(app, actor, jobId, JOB_KINDS)
@@ -108,7 +108,7 @@ describe('an embedding to begin from', () => {
     await expect(ask({ problemId: otherProblem, machineId, start })).rejects.toMatchObject({
       code: 'embedding.start-variables',
     })
-    const { id: unfinished } = await ask({ problemId, machineId, tries: 1000, timeLimitSeconds: 2 })
+    const { id: unfinished } = await ask({ problemId, machineId, method: 'search', tries: 1000, timeLimitSeconds: 2 })
     await expect(
       ask({ problemId, machineId, start: { embeddingId: unfinished, work: 'repair' } }),
     ).rejects.toMatchObject({ kind: 'wrong state', code: 'embedding.start-state' })
@@ -246,7 +246,7 @@ describe('the chosen embedding', () => {
 
   it('was found', async () => {
     const { problemId, machineId } = await triangle()
-    const { id } = await ask({ problemId, machineId, tries: 1000, timeLimitSeconds: 2 })
+    const { id } = await ask({ problemId, machineId, method: 'search', tries: 1000, timeLimitSeconds: 2 })
     await expect(choose(id)).rejects.toMatchObject({ kind: 'wrong state' })
   })
 })
@@ -313,7 +313,8 @@ it('gives the same embedding on one thread and on two, with a target as well', a
   }
   const onTwo = await outcome({})
   // With what the best of all tries has for a target some tries are ended and some never begun.
-  const target = { totalQubits: onTwo.stats!.qubitsUsed }
+  const { qubitsUsed, chainLength } = onTwo.stats!
+  const target = { longestChain: chainLength.max, totalQubits: qubitsUsed }
   const onTwoWithTarget = await outcome(target)
   expect(onTwoWithTarget.tryNumber).toBe(onTwo.tryNumber)
   test = await test.restarted(1)

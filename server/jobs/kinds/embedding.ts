@@ -1,6 +1,7 @@
 import type { SearchOptions, SearchResult } from '../../../shared/engine/embedding/search'
 import { outcomeOf } from '../../../shared/engine/embedding/search'
 import type { EmbeddingTask, Start } from '../../../shared/engine/embedding/task'
+import type { EmbeddingProgress } from '../../../shared/schemas/embeddings'
 import type { App } from '../../app'
 import type { EmbeddingRow } from '../../database/repositories/embeddings'
 import { findEmbeddingOfJob, updateEmbedding } from '../../database/repositories/embeddings'
@@ -62,6 +63,9 @@ async function runTries(app: App, context: JobContext, search: Search): Promise<
   const plan = await app.compute.run('planSearch', { task, options })
   const clock = newSearchClock()
   const monitor = new SearchMonitor(plan.length, options.objective, options.timeLimitSeconds)
+  const tell = (detail: EmbeddingProgress | null): void => {
+    if (detail) context.report(monitor.fraction, monitor.message(detail), { ...detail })
+  }
   const results = await spreadTries({
     plan,
     threads: app.compute.threads,
@@ -74,13 +78,10 @@ async function runTries(app: App, context: JobContext, search: Search): Promise<
         {
           signal: endTry,
           unbegun: null,
-          onProgress: (progress) => {
-            const detail = monitor.report(progress, secondsOn(clock))
-            context.report(monitor.fraction, monitor.message(detail), { ...detail })
-          },
+          onProgress: (progress) => tell(monitor.report(progress, secondsOn(clock))),
         },
       )
-      monitor.ended(planned, result?.quality ?? null)
+      tell(monitor.ended(planned, result?.quality ?? null, secondsOn(clock)))
       return result
     },
   })

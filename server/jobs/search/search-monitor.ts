@@ -11,6 +11,7 @@ export class SearchMonitor {
   private readonly atWork = new Map<number, SearchProgress | null>()
   private readonly trace = new Trace()
   private best: Quality | null = null
+  private last: SearchProgress | null = null
   private done = 0
   /** Share of the search that is done, 0 … 1, never falling. */
   fraction = 0
@@ -25,33 +26,43 @@ export class SearchMonitor {
     this.atWork.set(tryNumber, null)
   }
 
-  /** @param quality of the embedding that the try ended with */
-  ended({ tryNumber }: PlannedTry, quality: Quality | null): void {
+  /**
+   * @param quality of the embedding that the try ended with
+   * @param seconds since the search began
+   * @returns null as long as no try has reported
+   */
+  ended({ tryNumber }: PlannedTry, quality: Quality | null, seconds: number): EmbeddingProgress | null {
     this.atWork.delete(tryNumber)
     this.done++
     if (quality) this.takeBest(quality)
+    return this.last && this.progress(this.last, seconds)
   }
 
   /** @param seconds since the search began */
-  report(progress: SearchProgress, seconds: number): EmbeddingProgress {
-    const { method, tryNumber, phase, overlap, longestChain, qubitsUsed } = progress
-    if (this.atWork.has(tryNumber)) this.atWork.set(tryNumber, progress)
+  report(report: SearchProgress, seconds: number): EmbeddingProgress {
+    const { tryNumber, longestChain, qubitsUsed } = report
+    if (this.atWork.has(tryNumber)) this.atWork.set(tryNumber, report)
     if (longestChain !== null && qubitsUsed !== null) this.takeBest({ longest: longestChain, total: qubitsUsed })
-    const reports = [...this.atWork.values()].filter((report) => report !== null)
-    const inHand = reports.reduce((sum, { fraction }) => sum + fraction, this.done)
-    this.fraction = Math.min(1, Math.max(this.fraction, inHand / this.tries, seconds / this.timeLimitSeconds))
-    const figures = { longestChain: this.best?.longest ?? null, qubitsUsed: this.best?.total ?? null }
-    const leastOverlap = reports.reduce((least, report) => Math.min(least, report.overlap), overlap)
-    this.trace.add({ seconds, overlap: leastOverlap, ...figures })
-    const { tries } = this
-    const running = this.atWork.size
-    return { method, tryNumber, phase, overlap, tries, running, ...figures, seconds, trace: this.trace.all() }
+    this.last = report
+    return this.progress(report, seconds)
   }
 
   message({ running, phase, overlap, longestChain, qubitsUsed }: EmbeddingProgress): string {
     const best =
       longestChain === null ? 'none valid yet' : `best so far: longest chain ${longestChain}, ${qubitsUsed} qubits`
     return `${this.done} of ${this.tries} tries done, ${running} at work, ${phase}, overlap ${overlap}; ${best}`
+  }
+
+  private progress({ method, tryNumber, phase, overlap }: SearchProgress, seconds: number): EmbeddingProgress {
+    const { tries } = this
+    const reports = [...this.atWork.values()].filter((report) => report !== null)
+    const inHand = reports.reduce((sum, { fraction }) => sum + fraction, this.done)
+    this.fraction = Math.min(1, Math.max(this.fraction, inHand / tries, seconds / this.timeLimitSeconds))
+    const figures = { longestChain: this.best?.longest ?? null, qubitsUsed: this.best?.total ?? null }
+    const leastOverlap = reports.reduce((least, report) => Math.min(least, report.overlap), overlap)
+    this.trace.add({ seconds, overlap: leastOverlap, ...figures })
+    const running = this.atWork.size
+    return { method, tryNumber, phase, overlap, tries, running, ...figures, seconds, trace: this.trace.all() }
   }
 
   private takeBest(quality: Quality): void {
