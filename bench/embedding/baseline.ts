@@ -15,8 +15,9 @@ export interface BaselineResult {
   readonly chains: number[][] | null
   /** Seconds on the given clock to the first valid embedding. */
   readonly firstSeconds: number | null
+  /** Qubits of that first one; the passes that follow take many away. */
+  readonly firstQubits: number | null
   readonly seconds: number
-  readonly passes: number
 }
 
 const SETTINGS = {
@@ -310,12 +311,11 @@ export function baselineEmbedding(
   const rerouting = new Rerouting(problem, machine, usable, random, diameterOf(machine, usable))
   let best: number[][] | null = null
   let firstSeconds: number | null = null
-  let passes = 0
+  let firstQubits: number | null = null
   let [leastOverlap, idle] = [Infinity, 0]
 
   /** One pass; false when the time was up before its end. */
   const pass = (): boolean => {
-    passes++
     for (const v of shuffled(problem.order, random)) {
       if (seconds() >= timeLimitSeconds) return false
       if (!rerouting.reroute(v)) return false
@@ -328,6 +328,7 @@ export function baselineEmbedding(
     if (best && (total > totalOf(best) || (total === totalOf(best) && longest >= longestOf(best)))) return false
     best = chains.map((chain) => [...chain])
     firstSeconds ??= seconds()
+    firstQubits ??= total
     return true
   }
 
@@ -343,5 +344,5 @@ export function baselineEmbedding(
       idle = 0
     }
   }
-  return { chains: best, firstSeconds, seconds: seconds(), passes }
+  return { chains: best, firstSeconds, firstQubits, seconds: seconds() }
 }

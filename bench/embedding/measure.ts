@@ -13,6 +13,8 @@ export interface Run {
   readonly found: boolean
   readonly firstSeconds: number | null
   readonly seconds: number
+  /** Qubits of the first valid embedding; null for the engine, which does not tell. */
+  readonly firstQubits: number | null
   readonly qubits: number | null
   readonly longest: number | null
   readonly mean: number | null
@@ -39,7 +41,7 @@ const listsOf = (embedding: Embedding): Uint32Array[] =>
 function runOf(
   seed: number,
   chains: readonly ArrayLike<number>[] | null,
-  times: Pick<Run, 'firstSeconds' | 'seconds' | 'method'>,
+  times: Pick<Run, 'firstSeconds' | 'firstQubits' | 'seconds' | 'method'>,
   fault: string | null,
 ): Run {
   const valid = chains !== null && fault === null
@@ -71,9 +73,9 @@ export function runEngine(
     const { seconds, firstSeconds, method } = result
     const chains = result.embedding && listsOf(result.embedding)
     const fault = chains && faultOf(task.problem, task.machine, task.usable, chains)
-    return runOf(seed, chains, { seconds, firstSeconds, method }, fault)
+    return runOf(seed, chains, { seconds, firstSeconds, firstQubits: null, method }, fault)
   } catch (error) {
-    const times = { seconds: processorSeconds() - began, firstSeconds: null, method: null }
+    const times = { seconds: processorSeconds() - began, firstSeconds: null, firstQubits: null, method: null }
     return runOf(seed, null, times, error instanceof Error ? error.message : String(error))
   }
 }
@@ -82,7 +84,13 @@ export function runEngine(
 export function runBaseline({ make }: Row, seed: number, timeLimitSeconds: number): Run {
   const { problem, machine, usable } = make(seed)
   const limits = { timeLimitSeconds, now: processorSeconds }
-  const { chains, seconds, firstSeconds } = baselineEmbedding(problem, machine, usable, createRandom(seed), limits)
+  const { chains, seconds, firstSeconds, firstQubits } = baselineEmbedding(
+    problem,
+    machine,
+    usable,
+    createRandom(seed),
+    limits,
+  )
   const fault = chains && faultOf(problem, machine, usable, chains)
-  return runOf(seed, chains, { seconds, firstSeconds, method: null }, fault)
+  return runOf(seed, chains, { seconds, firstSeconds, firstQubits, method: null }, fault)
 }

@@ -19,11 +19,15 @@ import type { RowResult } from './summary'
 /** Seeds after which the baseline is left out of a row when none of them found anything. */
 const HOPELESS_SEEDS = 3
 
+/** Time limit of a row with --quick. */
+const QUICK_SECONDS = 5
+
 type Message =
   { readonly side: 'engine' | 'baseline'; readonly run: Run } | { readonly growth: number; readonly peak: number }
 
 const send = (message: Message): void => console.log(JSON.stringify(message))
-const limitOf = (row: Row, { seconds }: BenchOptions): number => seconds ?? row.timeLimitSeconds
+const limitOf = (row: Row, { seconds, quick }: BenchOptions): number =>
+  seconds ?? (quick ? Math.min(QUICK_SECONDS, row.timeLimitSeconds) : row.timeLimitSeconds)
 
 function measureTimes(row: Row, options: BenchOptions): void {
   const limit = limitOf(row, options)

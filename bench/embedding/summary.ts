@@ -7,6 +7,7 @@ export interface Side {
   readonly seeds: number
   readonly firstSeconds: number | null
   readonly seconds: number | null
+  readonly firstQubits: number | null
   readonly qubits: number | null
   readonly longest: number | null
   readonly mean: number | null
@@ -21,8 +22,10 @@ export interface RowResult {
   readonly bars: readonly (Bar & { readonly met: boolean })[]
   readonly engine: Side
   readonly baseline: Side | null
-  /** Median over the seeds that both found of engine's qubits / baseline's qubits. */
+  /** Median over the seeds that both found of engine's qubits / baseline's qubits, when both were done. */
   readonly ratio: number | null
+  /** The same against the baseline's first valid embedding, before its passes that shorten. */
+  readonly ratioToFirst: number | null
 }
 
 export function median(values: readonly number[]): number | null {
@@ -33,13 +36,14 @@ export function median(values: readonly number[]): number | null {
 
 export function sideOf(runs: readonly Run[]): Side {
   const found = runs.filter((run) => run.found)
-  const medianOf = (key: 'firstSeconds' | 'qubits' | 'longest' | 'mean'): number | null =>
-    median(found.map((run) => run[key] ?? 0))
+  const medianOf = (key: 'firstSeconds' | 'firstQubits' | 'qubits' | 'longest' | 'mean'): number | null =>
+    median(found.flatMap((run) => run[key] ?? []))
   return {
     found: found.length,
     seeds: runs.length,
     firstSeconds: medianOf('firstSeconds'),
     seconds: median(runs.map(({ seconds }) => seconds)),
+    firstQubits: medianOf('firstQubits'),
     qubits: medianOf('qubits'),
     longest: medianOf('longest'),
     mean: medianOf('mean'),
@@ -59,13 +63,17 @@ function isMet({ measure, limit }: Bar, engine: Side, ratio: number | null): boo
 export function resultOf(row: Row, engineRuns: readonly Run[], baselineRuns: readonly Run[] | null): RowResult {
   const engine = sideOf(engineRuns)
   const baseline = baselineRuns && sideOf(baselineRuns)
-  const shares = engineRuns.flatMap(({ seed, qubits }) => {
-    const other = baselineRuns?.find((run) => run.seed === seed)?.qubits
-    return qubits && other ? [qubits / other] : []
-  })
-  const ratio = median(shares)
+  const ratioTo = (key: 'qubits' | 'firstQubits'): number | null =>
+    median(
+      engineRuns.flatMap(({ seed, qubits }) => {
+        const other = baselineRuns?.find((run) => run.seed === seed)?.[key]
+        return qubits && other ? [qubits / other] : []
+      }),
+    )
+  const ratio = ratioTo('qubits')
   const bars = row.bars.map((bar) => ({ ...bar, met: isMet(bar, engine, ratio) }))
-  return { name: row.name, timeLimitSeconds: row.timeLimitSeconds, bars, engine, baseline, ratio }
+  const { name, timeLimitSeconds } = row
+  return { name, timeLimitSeconds, bars, engine, baseline, ratio, ratioToFirst: ratioTo('firstQubits') }
 }
 
 const shown = (value: number | null, digits: number): string => (value === null ? '–' : value.toFixed(digits))
@@ -92,9 +100,11 @@ const COLUMNS: readonly (readonly [title: string, cell: (result: RowResult) => s
   ['method', ({ engine }) => engine.methods.join(' ') || '–'],
   ['baseline found', ({ baseline }) => (baseline ? `${baseline.found}/${baseline.seeds}` : '–')],
   ['first s', ({ baseline }) => shown(baseline?.firstSeconds ?? null, 2)],
+  ['first qubits', ({ baseline }) => shown(baseline?.firstQubits ?? null, 0)],
   ['qubits', ({ baseline }) => shown(baseline?.qubits ?? null, 0)],
   ['longest', ({ baseline }) => shown(baseline?.longest ?? null, 1)],
   ['ratio', ({ ratio }) => shown(ratio, 2)],
+  ['ratio to first', ({ ratioToFirst }) => shown(ratioToFirst, 2)],
 ]
 
 /** One line of the measurement, for people who wait. */
