@@ -11,7 +11,12 @@ export default defineConfig({
       {
         extends: true,
         plugins: [vue()],
-        test: { name: 'unit', environment: 'node', include: ['tests/unit/**/*.test.ts'] },
+        test: {
+          name: 'unit',
+          environment: 'node',
+          include: ['tests/unit/**/*.test.ts'],
+          testTimeout: 30_000,
+        },
       },
       {
         extends: true,

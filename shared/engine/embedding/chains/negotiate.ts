@@ -78,7 +78,7 @@ export const isMet = (state: ChainState, variable: number): boolean => unmetPart
 /**
  * Reroutes the given variables one at a time until no qubit has two chains: costs grow with present overuse (Cai,
  * Macready & Roy, arXiv:1406.2741, 2014) and with past overuse (negotiated congestion, McMurchie & Ebeling, FPGA
- * 1995). Each of them has a chain already, a single qubit will do. Gives up after a number of passes without less overlap.
+ * 1995). Each of them has a chain already, a single qubit will do. Gives up after so many reroutes without less overlap.
  */
 export function negotiate(
   state: ChainState,
@@ -87,20 +87,23 @@ export function negotiate(
   random: Random,
   watch: Watch,
 ): boolean {
-  const { history } = state
-  history.fill(0)
+  const patience = NEGOTIATION.patience * variables.length
+  const unmet = new Uint8Array(state.variables)
   let penalty = NEGOTIATION.penalty
   let best = Infinity
-  let reroutes = 0
+  // A pass counts too, so that those in which nothing can be rerouted come to an end.
+  let spent = 0
   let bestAt = 0
+  state.history.fill(0)
   for (let pass = 0; ; pass++) {
     if (pass > 0) {
-      if (state.overlap === 0 && variables.every((v) => isMet(state, v))) return true
-      if (state.overlap < best) {
-        best = state.overlap
-        bestAt = reroutes
+      const lacking = state.overlap > 0 ? 0 : markUnmet(state, variables, unmet)
+      if (state.overlap + lacking === 0) return true
+      if (state.overlap + lacking < best) {
+        best = state.overlap + lacking
+        bestAt = spent
       }
-      if (reroutes - bestAt >= NEGOTIATION.patience * variables.length) return false
+      if (spent - bestAt >= patience) return false
       rememberOveruse(state)
       penalty = Math.min(NEGOTIATION.penaltyMost, penalty * NEGOTIATION.penaltyGrowth)
       watch.report(state.overlap, 0.5 * (1 - best / state.qubitsUsed))
@@ -110,13 +113,24 @@ export function negotiate(
     const rest = pass % NEGOTIATION.fullPassEvery === 0 ? 1 : NEGOTIATION.shareOfRest
     const share = quiet ? (NEGOTIATION.quietShare * state.overlap) / variables.length : rest
     shuffle(variables, random)
+    spent++
     for (let i = 0; i < variables.length; i++) {
       const v = variables[i]!
       if (i % VARIABLES_PER_LOOK === 0 && watch.shouldStop(state.overlap)) return false
-      if (random.float() < share || state.isConflicted(v)) {
+      if (random.float() < share || unmet[v] || state.isConflicted(v)) {
         router.reroute(v)
-        reroutes++
+        spent++
       }
     }
   }
+}
+
+/** Marks the variables that do not touch all their partners; returns how many. */
+function markUnmet(state: ChainState, variables: Int32Array, unmet: Uint8Array): number {
+  let count = 0
+  for (const v of variables) {
+    unmet[v] = isMet(state, v) ? 0 : 1
+    count += unmet[v]
+  }
+  return count
 }
