@@ -54,7 +54,6 @@ export type CreateEmbedding = z.infer<typeof createEmbeddingSchema>
 
 /** Marks an embedding as the one to go on with, or takes the mark away. */
 export const editEmbeddingSchema = z.object({ chosen: z.boolean() })
-export type EditEmbedding = z.infer<typeof editEmbeddingSchema>
 
 export const importEmbeddingSchema = z.object({
   problemId: idSchema,

@@ -1,5 +1,5 @@
 import { randomUUID } from 'node:crypto'
-import { mkdirSync, mkdtempSync } from 'node:fs'
+import { mkdirSync, mkdtempSync, rmSync } from 'node:fs'
 import { join } from 'node:path'
 import { fileURLToPath } from 'node:url'
 import { build } from 'esbuild'
@@ -35,6 +35,7 @@ async function bundleThread(): Promise<string> {
   const cache = fileURLToPath(new URL('../../node_modules/.cache', import.meta.url))
   mkdirSync(cache, { recursive: true })
   const outdir = mkdtempSync(join(cache, 'espalier-threads-'))
+  process.once('exit', () => rmSync(outdir, { recursive: true }))
   const entry = fileURLToPath(new URL('../../server/workers/thread.ts', import.meta.url))
   await build({
     entryPoints: { thread: entry },
