@@ -20,16 +20,18 @@ const DEFAULTS = {
   promising: 0.78,
   /** Sizes gone up at a time when that fails. */
   stepUp: 2,
-  /** Annealings once there is a solution. */
+  /** Annealings once there is a solution, for complete problems and for others. */
   refinements: 6,
+  refinementsOfOthers: 2,
   /** Moves of an annealing a chain, and its temperatures in unmet pairs. */
   movesPerChain: 600,
   hot: 2,
   cold: 0.12,
   /** Chains beyond the runs that are grown through what the others leave free. */
   mostExtra: 3,
-  /** Annealings of the largest window before giving up. */
-  lastTries: 8,
+  /** Annealings of the largest window before giving up, and when only a first solution is asked for. */
+  lastTries: 16,
+  lastTriesForFirst: 3,
 }
 
 /** Sizes from n lines on, in growing steps, up to the whole machine with what qubits stand out. */
@@ -132,16 +134,19 @@ export class CornerFitter {
   }
 
   /** Anneals in the smallest window that looks promising, then in larger ones, until one does. */
-  private firstAnnealed(refinements: number): boolean {
+  private firstAnnealed(onlyFirst: boolean): boolean {
     const { watch } = this.fitter.attempt
     const last = this.sizes.length - 1
+    const others = this.fitter.isComplete ? DEFAULTS.refinements : DEFAULTS.refinementsOfOthers
+    const refinements = onlyFirst ? 0 : others
+    const lastTries = onlyFirst ? DEFAULTS.lastTriesForFirst : DEFAULTS.lastTries
     for (let step = this.firstHolding(DEFAULTS.promising * this.n); step < last; step += DEFAULTS.stepUp) {
       if (watch.shouldStop(0)) return false
       if (!this.anneal(step, 0, 0)) continue
       this.refine(step, refinements)
       return true
     }
-    for (let tries = 0; tries < DEFAULTS.lastTries; tries++) {
+    for (let tries = 0; tries < lastTries; tries++) {
       if (watch.shouldStop(0)) return false
       if (!this.anneal(last, tries % (DEFAULTS.mostExtra + 1), tries)) continue
       this.refine(last, refinements)
@@ -166,6 +171,6 @@ export class CornerFitter {
     const step = this.firstHolding(this.n)
     const whole = this.held(step) >= this.n && this.fitsAsItIs(step)
     if (whole && (onlyFirst || this.sizes[step]! <= this.n * DEFAULTS.growth ** 2)) return true
-    return this.firstAnnealed(onlyFirst ? 0 : DEFAULTS.refinements) || whole
+    return this.firstAnnealed(onlyFirst) || whole
   }
 }

@@ -8,7 +8,7 @@ import { thinChains } from './thin'
 const DEFAULTS = {
   /** Ways tried through the qubits of other chains before giving up, and those in a row that change nothing. */
   tries: 240,
-  idle: 40,
+  idle: 16,
   /** Length that a qubit of another chain counts for on a path. */
   foreignLength: 3,
 }

@@ -34,7 +34,8 @@ function fitLines(fitter: Fitter): void {
 export function fitTemplate(task: EmbeddingTask, attempt: Attempt): PartialEmbedding | null {
   if (task.problem.order > DEFAULTS.mostVariables) return null
   const fitter = new Fitter(task, attempt)
-  if (task.family?.kind === 'king') fitNetwork(fitter, task.family)
+  if (fitter.core.order === 0) fitter.offer()
+  else if (task.family?.kind === 'king') fitNetwork(fitter, task.family)
   else fitLines(fitter)
   if (!fitter.best || sizeOf(task.problem) > DEFAULTS.mostShortened || attempt.watch.shouldStop(0)) return null
   const frozen = new Uint8Array(task.problem.order)

@@ -68,8 +68,8 @@ export class Fitter {
     this.grower = new ExtraGrower(this.set)
   }
 
-  /** Offers the chains, with a free qubit for each isolated variable; false when those do not suffice. */
-  private offer(): boolean {
+  /** Offers the chains there are, with a free qubit for each isolated variable; false when those do not suffice. */
+  offer(): boolean {
     const { set, variables, task } = this
     const chains: number[][] = Array.from({ length: task.problem.order }, () => [])
     variables.forEach((i, k) => (chains[i] = set.chains[k]!))

@@ -11,7 +11,7 @@ const DEFAULTS = {
   hot: 40,
   cold: 1,
   /** Moves a variable, cut down so that the work stays below `mostWork` steps. */
-  movesPerVariable: 4000,
+  movesPerVariable: 1000,
   mostWork: 3e7,
 }
 

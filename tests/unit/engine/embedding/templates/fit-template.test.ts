@@ -11,10 +11,10 @@ import type { MachineOnly } from './attempts'
 
 const SMALL: readonly Family[] = [
   { kind: 'chimera', m: 4, n: 5, t: 4 },
-  { kind: 'pegasus', m: 4, trimmed: true },
-  { kind: 'pegasus', m: 3, trimmed: false },
-  { kind: 'zephyr', m: 3, t: 4 },
-  { kind: 'zephyr', m: 4, t: 2 },
+  { kind: 'pegasus', m: 3, trimmed: true },
+  { kind: 'pegasus', m: 4, trimmed: false },
+  { kind: 'zephyr', m: 2, t: 4 },
+  { kind: 'zephyr', m: 3, t: 2 },
   { kind: 'king', width: 14, height: 12 },
 ]
 
@@ -43,18 +43,17 @@ describe('fitTemplate', () => {
   it.each(problems)('fits %s on every small machine, whole and with defects', (_, problem) => {
     for (const family of SMALL) {
       expect(offersOf(problem, machineOf(family)).length).toBeGreaterThan(0)
-      for (let seed = 1; seed <= 2; seed++) {
-        const offers = offersOf(problem, machineOf(family, 0.02, 0.01, seed), seed)
-        if (family.kind !== 'king') expect(offers.length).toBeGreaterThan(0)
-      }
+      const offers = offersOf(problem, machineOf(family, 0.02, 0.01))
+      // The network needs a whole part of the board.
+      if (family.kind !== 'king') expect(offers.length).toBeGreaterThan(0)
     }
   })
 
   it('offers only valid embeddings under heavy defects, whatever fits', () => {
     const random = createRandom(9)
-    for (let k = 0; k < 40; k++) {
+    for (let k = 0; k < 16; k++) {
       const family = SMALL[random.below(SMALL.length)]!
-      const n = 2 + random.below(14)
+      const n = 2 + random.below(11)
       const machine = machineOf(family, 0.3 * random.float(), 0.3 * random.float(), k)
       offersOf(randomGraph(n, random.float(), random), machine, k)
     }
