@@ -3,6 +3,7 @@ import { mkdirSync, mkdtempSync, rmSync } from 'node:fs'
 import { join } from 'node:path'
 import { fileURLToPath } from 'node:url'
 import { build } from 'esbuild'
+import { afterAll } from 'vitest'
 import type { Actor, App } from '../../server/app'
 import type { JobRow } from '../../server/database/repositories/jobs'
 import { findJob } from '../../server/database/repositories/jobs'
@@ -29,13 +30,16 @@ export interface TestApp extends StartedApp {
 }
 
 let bundled: Promise<string> | undefined
+// Registered before any hook of a test file, so it runs after them.
+afterAll(async () => {
+  if (bundled) rmSync(await bundled, { recursive: true })
+})
 
 /** The thread entry as the product bundles it (modules/workers.ts), where it finds its packages. */
 async function bundleThread(): Promise<string> {
   const cache = fileURLToPath(new URL('../../node_modules/.cache', import.meta.url))
   mkdirSync(cache, { recursive: true })
   const outdir = mkdtempSync(join(cache, 'espalier-threads-'))
-  process.once('exit', () => rmSync(outdir, { recursive: true }))
   const entry = fileURLToPath(new URL('../../server/workers/thread.ts', import.meta.url))
   await build({
     entryPoints: { thread: entry },
