@@ -1,7 +1,8 @@
 import type { Watch } from '../progress'
 import type { Assignment } from './assignment'
+import { MISSING_WEIGHT } from './assignment'
 import type { Coin } from './coin'
-import { makeMove } from './moves'
+import { Mover } from './moves'
 
 /** What an anneal changes from its beginning to its end. */
 export interface Schedule {
@@ -20,15 +21,14 @@ export interface Schedule {
   /** Largest distance of a line from where it was, in lines, linear. */
   readonly firstRadius: number
   readonly lastRadius: number
+  /** Whether to end in the first state that is an embedding. */
+  readonly endsWhenValid: boolean
 }
-
-/** Energy of an interaction without a coupler; it is counted once for each of its two ends. */
-const UNMET_WEIGHT = 8
 
 /** Moves between two looks at the watch: a few milliseconds. */
 const MOVES_PER_LOOK = 1024
 
-/** Every variable on a random line of either side, every interaction served by a random one of its two. */
+/** Puts every variable on a random line of either side, and lets a random one of the two serve each interaction. */
 export function scatter(assignment: Assignment, coin: Coin): void {
   const { problem, crossings } = assignment
   for (let part = 0; part < 2 * problem.order; part++) {
@@ -42,8 +42,8 @@ export function scatter(assignment: Assignment, coin: Coin): void {
 }
 
 /**
- * Simulated annealing (Kirkpatrick, Gelatt & Vecchi, Science 220, 1983) of line intervals. `onValid` is called once, in
- * the first state without overuse and unmet interactions. Returns false when it was stopped.
+ * Simulated annealing (Kirkpatrick, Gelatt & Vecchi, Science 220, 1983) of line intervals, for problems that have
+ * interactions. Returns false when it was stopped.
  * @param share of the try's work that is done when it begins, and when it ends; 0 … 1
  */
 export function anneal(
@@ -52,32 +52,27 @@ export function anneal(
   schedule: Schedule,
   watch: Watch,
   share: readonly [number, number],
-  onValid: (() => void) | null,
 ): boolean {
   const { moves, ramp, hottest, coldest, firstPairWeight, lastPairWeight, lengthWeight } = schedule
-  const { firstRadius, lastRadius } = schedule
-  let awaited = onValid
+  const { firstRadius, lastRadius, endsWhenValid } = schedule
+  const mover = new Mover(assignment, coin)
   for (let done = 0; done < moves; done += MOVES_PER_LOOK) {
     if (watch.shouldStop(assignment.pairs)) return false
     const way = Math.min(1, done / (moves * ramp))
     const temperature = hottest * (coldest / hottest) ** way
     const pairWeight = firstPairWeight + (lastPairWeight - firstPairWeight) * way
-    assignment.lengthWeight = lengthWeight
-    assignment.pairWeight = pairWeight
     const radius = Math.round(firstRadius + (lastRadius - firstRadius) * way)
+    assignment.setWeights(lengthWeight, pairWeight)
     for (let i = Math.min(MOVES_PER_LOOK, moves - done); i > 0; i--) {
       const { length, pairs, missing } = assignment
       assignment.begin()
-      makeMove(assignment, coin, radius)
+      mover.make(radius)
       const rise =
         lengthWeight * (assignment.length - length) +
         pairWeight * (assignment.pairs - pairs) +
-        (UNMET_WEIGHT / 2) * (assignment.missing - missing)
+        MISSING_WEIGHT * (assignment.missing - missing)
       if (rise > 0 && Math.exp(-rise / temperature) < coin.float()) assignment.undo()
-      else if (awaited && assignment.pairs === 0 && assignment.missing === 0) {
-        awaited()
-        awaited = null
-      }
+      else if (endsWhenValid && assignment.pairs === 0 && assignment.missing === 0) return true
     }
     watch.report(assignment.pairs, share[0] + ((share[1] - share[0]) * done) / moves)
   }

@@ -1,5 +1,6 @@
 import type { Attempt, PartialEmbedding, Runner } from '../method'
 import { sizeOf } from '../../graph/graph'
+import type { Watch } from '../progress'
 import { shortenEmbedding } from '../rework'
 import type { EmbeddingTask } from '../task'
 import { anneal, scatter } from './anneal'
@@ -11,47 +12,48 @@ import { isWhole, lacks, mendOnce } from './repair'
 import type { Mended } from './repair'
 
 const DEFAULTS = {
-  /** Moves of the first anneal and of the quality phase, by interaction and variable. */
-  movesPerEnd: 2000,
+  /** Moves a variable of the first anneal and of the one for quality. */
+  firstMoves: 6000,
+  qualityMoves: 6000,
   /** Largest overuse that mending is tried at, and how often. */
   mendablePairs: 60,
   mendings: 400,
 }
 
-function firstSchedule(moves: number, lines: number): Schedule {
-  return {
-    moves,
-    ramp: 0.85,
-    hottest: 0.8,
-    coldest: 0.2,
-    firstPairWeight: 0.5,
-    lastPairWeight: 2,
-    lengthWeight: 0.1,
-    firstRadius: lines,
-    lastRadius: 3,
-  }
-}
+/** From anywhere to intervals that hardly overlap: length counts little, overuse more and more. */
+const firstSchedule = (moves: number, lines: number): Schedule => ({
+  moves,
+  ramp: 0.85,
+  hottest: 0.8,
+  coldest: 0.2,
+  firstPairWeight: 0.5,
+  lastPairWeight: 2,
+  lengthWeight: 0.1,
+  firstRadius: lines,
+  lastRadius: 3,
+  endsWhenValid: true,
+})
 
-function qualitySchedule(moves: number): Schedule {
-  return {
-    moves,
-    ramp: 1,
-    hottest: 0.8,
-    coldest: 0.12,
-    firstPairWeight: 2,
-    lastPairWeight: 6,
-    lengthWeight: 0.3,
-    firstRadius: 20,
-    lastRadius: 20,
-  }
-}
+/** From there to shorter intervals that do not overlap. */
+const qualitySchedule = (moves: number): Schedule => ({
+  moves,
+  ramp: 1,
+  hottest: 0.8,
+  coldest: 0.12,
+  firstPairWeight: 2,
+  lastPairWeight: 6,
+  lengthWeight: 0.3,
+  firstRadius: 20,
+  lastRadius: 20,
+  endsWhenValid: false,
+})
 
 function partialOf({ chains, unmet, unplaced }: Mended): PartialEmbedding {
   return { chains: chains.toEmbedding(), overlap: 0, overlappedQubits: [], unmet, unplaced }
 }
 
 /** Mends the intervals again and again until nothing is lacking; returns the best. */
-function mend(assignment: Assignment, task: EmbeddingTask, coin: Coin, { watch }: Attempt): Mended {
+function mend(assignment: Assignment, task: EmbeddingTask, coin: Coin, watch: Watch): Mended {
   watch.phase = 'repairing'
   let best = mendOnce(assignment, task.machine, task.usable, coin)
   if (assignment.pairs > DEFAULTS.mendablePairs) return best
@@ -71,25 +73,25 @@ export const assignLines: Runner = (task, attempt) => {
   const { problem, machine, usable } = task
   const { random, watch, offer } = attempt
   const crossings = crossingsOf(machine, usable, task.segments)
-  if (!crossings || problem.order === 0) return null
+  if (!crossings || sizeOf(problem) === 0) return null
   const coin = new Coin(random)
   const assignment = new Assignment(problem, crossings)
-  const moves = DEFAULTS.movesPerEnd * (problem.order + sizeOf(problem))
-  const lines = Math.max(...crossings.counts)
-  let best = null as Mended | null
-  const take = (mended: Mended): void => {
+  const mendAndOffer = (): Mended => {
+    const mended = mend(assignment, task, coin, watch)
     if (isWhole(mended)) offer(mended.chains.toEmbedding())
-    if (!best || lacks(mended) <= lacks(best)) best = mended
+    return mended
   }
   watch.phase = 'assigning lines'
   scatter(assignment, coin)
-  const first = (): void => take(mendOnce(assignment, machine, usable, coin))
-  const finished = anneal(assignment, coin, firstSchedule(moves, lines), watch, [0, 0.5], first)
-  if (!best || finished) take(mend(assignment, task, coin, attempt))
-  if (!best || !isWhole(best)) return best && partialOf(best)
+  const first = firstSchedule(DEFAULTS.firstMoves * problem.order, Math.max(...crossings.counts))
+  anneal(assignment, coin, first, watch, [0, 0.4])
+  const valid = mendAndOffer()
+  if (!isWhole(valid)) return partialOf(valid)
   watch.phase = 'assigning lines'
-  if (anneal(assignment, coin, qualitySchedule(moves), watch, [0.5, 0.8], null))
-    take(mend(assignment, task, coin, attempt))
-  shortenEmbedding(task, best.chains.toEmbedding(), new Uint8Array(problem.order), attempt)
+  const quality = qualitySchedule(DEFAULTS.qualityMoves * problem.order)
+  anneal(assignment, coin, quality, watch, [0.4, 0.8])
+  const better = mendAndOffer()
+  const { chains } = isWhole(better) ? better : valid
+  shortenEmbedding(task, chains.toEmbedding(), new Uint8Array(problem.order), attempt)
   return null
 }

@@ -5,7 +5,8 @@ import type { Crossings } from './crossings'
 /** Low end of an empty interval: larger than every place on a line. */
 const NOWHERE = 32767
 
-const MISSING_WEIGHT = 4
+/** Energy of a crossing without a coupler; an unmet interaction has two. */
+export const MISSING_WEIGHT = 4
 
 /** Fields of a record of the undo log. */
 const RECORD = 5
@@ -25,8 +26,8 @@ export class Assignment {
   length = 0
   pairs = 0
   missing = 0
-  lengthWeight = 0.1
-  pairWeight = 1
+  private lengthWeight = 0
+  private pairWeight = 1
   /** By part: its line (numbered within its side), and its interval of places, empty where low > high. */
   readonly line: Int32Array
   readonly low: Int32Array
@@ -123,12 +124,19 @@ export class Assignment {
     return this.half[position]! >> 1
   }
 
+  /** Whether a qubit of the part's interval is in another interval too, or broken. */
   isOverused(part: number): boolean {
     const { use } = this
     const base = this.base[part]!
     const last = base + this.high[part]!
     for (let slot = base + this.low[part]!; slot <= last; slot++) if (use[slot]! > 1) return true
     return false
+  }
+
+  /** Sets what `settle` weighs lines by: energy of a qubit, and of a pair of intervals on one. */
+  setWeights(lengthWeight: number, pairWeight: number): void {
+    this.lengthWeight = lengthWeight
+    this.pairWeight = pairWeight
   }
 
   /** Opens a move: what follows can be undone until the next call. */

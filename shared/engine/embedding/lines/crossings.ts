@@ -82,7 +82,7 @@ function alikeStretches(place: Int16Array, counts: readonly [number, number]): {
     const [count, across] = [counts[side], counts[1 - side]!]
     const otherRow = side === 0 ? counts[0] * counts[1] : 0
     for (let begin = 0, end = 0; begin < count; begin = end) {
-      for (end = begin + 1; end < count && areAlike(place, otherRow, count, across, begin, end); ) end++
+      for (end = begin + 1; end < count && areAlike(place, otherRow, count, across, begin, end);) end++
       from.fill(begin, first + begin, first + end)
       to.fill(end, first + begin, first + end)
     }

@@ -1,77 +1,98 @@
+import { degreeOf } from '../../graph/graph'
 import type { Assignment } from './assignment'
 import type { Coin } from './coin'
 
-/** Shares of the kinds of move; the rest swaps both lines of two variables. */
-export const SHARES = {
-  flip: 0.4,
-  move: 0.35,
-  swap: 0.18,
-  near: 0.5,
-  focus: 0.5,
-  smart: 1,
+const DEFAULTS = {
+  /** Shares of the kinds of move; the rest swaps both lines of two variables. */
+  flip: 0.45,
+  move: 0.25,
+  swap: 0.28,
+  /** Share of line moves that bring a variable near a partner. */
+  nearPartner: 0.8,
+  /** How near, in lines. */
+  partnerRadius: 2,
+  /** How often a part without overuse is passed over in favour of another random one. */
+  focus: 0.9,
 }
 
-/** How far from a neighbour's line a part is put that is to come near it. */
-const NEAR = 2
+/** More than the lines that are ever like each other; the settling of equals begins at a random one. */
+const TURNS = 256
 
-/** A line of the side within `radius` of `line`, other than it where there is one. */
-function lineNear(count: number, line: number, radius: number, coin: Coin): number {
-  const low = Math.max(0, line - radius)
-  const high = Math.min(count - 1, line + radius)
-  return low + coin.below(high - low + 1)
-}
+/** Makes random changes to an assignment of a problem that has interactions. */
+export class Mover {
+  /** Variables that have interactions. */
+  private readonly active: Int32Array
 
-function swapLines(assignment: Assignment, a: number, b: number): void {
-  const line = assignment.line[a]!
-  assignment.move(a, assignment.line[b]!)
-  assignment.move(b, line)
-}
-
-function settleNearPartner(assignment: Assignment, part: number, coin: Coin): void {
-  const { start, partner, line, crossings } = assignment
-  const v = part >> 1
-  const u = partner[start[v]! + coin.below(start[v + 1]! - start[v]!)]!
-  assignment.settle(
-    part,
-    lineNear(crossings.counts[part & 1]!, line[2 * u + (part & 1)]!, NEAR, coin),
-    coin.below(256),
-  )
-}
-
-/** Makes one random change. @param radius largest distance of a line from where it was, in lines */
-export function makeMove(assignment: Assignment, coin: Coin, radius: number): void {
-  const { problem, crossings, line, start } = assignment
-  const { order, ends } = problem
-  const kind = coin.float()
-  let part = coin.below(2 * order)
-  if (assignment.needs(part) === 0) part ^= 1
-  if (!assignment.isOverused(part) && coin.float() < SHARES.focus) {
-    part = coin.below(2 * order)
-    if (assignment.needs(part) === 0) part ^= 1
+  constructor(
+    private readonly assignment: Assignment,
+    private readonly coin: Coin,
+  ) {
+    const { problem } = assignment
+    this.active = Int32Array.from({ length: problem.order }, (_, v) => v).filter((v) => degreeOf(problem, v) > 0)
   }
-  const v = part >> 1
-  const side = part & 1
-  if (kind < SHARES.flip) {
-    const [from, to] = side ? [assignment.middle[v]!, start[v + 1]!] : [start[v]!, assignment.middle[v]!]
-    if (from === to) return
+
+  private anyVariable(): number {
+    return this.active[this.coin.below(this.active.length)]!
+  }
+
+  /** A part that its variable needs. */
+  private anyPart(): number {
+    const part = 2 * this.anyVariable() + this.coin.below(2)
+    return this.assignment.needs(part) > 0 ? part : part ^ 1
+  }
+
+  private lineNear(side: number, line: number, radius: number): number {
+    const low = Math.max(0, line - radius)
+    const high = Math.min(this.assignment.crossings.counts[side]! - 1, line + radius)
+    return low + this.coin.below(high - low + 1)
+  }
+
+  private settleNearPartner(part: number): void {
+    const { start, partner, line } = this.assignment
+    const v = part >> 1
+    const side = part & 1
+    const u = partner[start[v]! + this.coin.below(start[v + 1]! - start[v]!)]!
+    const near = this.lineNear(side, line[2 * u + side]!, DEFAULTS.partnerRadius)
+    this.assignment.settle(part, near, this.coin.below(TURNS))
+  }
+
+  private swap(a: number, b: number): void {
+    const { assignment } = this
+    const line = assignment.line[a]!
+    assignment.move(a, assignment.line[b]!)
+    assignment.move(b, line)
+  }
+
+  /** Frees a part from one of its interactions. A part that was not needed before may be anywhere, so it is placed. */
+  private flipOneOf(part: number): void {
+    const { assignment, coin } = this
+    const { start, middle, problem } = assignment
+    const v = part >> 1
+    const from = part & 1 ? middle[v]! : start[v]!
+    const to = part & 1 ? start[v + 1]! : middle[v]!
     const k = assignment.edgeAt(from + coin.below(to - from))
     assignment.flip(k)
-    if (SHARES.smart) {
-      const s = assignment.sideOf(k)
-      const a = 2 * ends[2 * k]! + s
-      const b = 2 * ends[2 * k + 1]! + 1 - s
-      if (assignment.needs(a) === 1) settleNearPartner(assignment, a, coin)
-      if (assignment.needs(b) === 1) settleNearPartner(assignment, b, coin)
+    const side = assignment.sideOf(k)
+    const lower = 2 * problem.ends[2 * k]! + side
+    const higher = 2 * problem.ends[2 * k + 1]! + 1 - side
+    if (assignment.needs(lower) === 1) this.settleNearPartner(lower)
+    if (assignment.needs(higher) === 1) this.settleNearPartner(higher)
+  }
+
+  /** Makes one random change. @param radius largest distance of a line from where it was, in lines */
+  make(radius: number): void {
+    const { assignment, coin } = this
+    let part = this.anyPart()
+    if (!assignment.isOverused(part) && coin.float() < DEFAULTS.focus) part = this.anyPart()
+    const kind = coin.float()
+    if (kind < DEFAULTS.flip) this.flipOneOf(part)
+    else if (kind < DEFAULTS.flip + DEFAULTS.move) {
+      if (coin.float() < DEFAULTS.nearPartner) this.settleNearPartner(part)
+      else assignment.settle(part, this.lineNear(part & 1, assignment.line[part]!, radius), coin.below(TURNS))
+    } else {
+      const other = 2 * this.anyVariable() + (part & 1)
+      this.swap(part, other)
+      if (kind >= DEFAULTS.flip + DEFAULTS.move + DEFAULTS.swap) this.swap(part ^ 1, other ^ 1)
     }
-    return
   }
-  if (kind < SHARES.flip + SHARES.move) {
-    if (coin.float() < SHARES.near) settleNearPartner(assignment, part, coin)
-    else
-      assignment.settle(part, lineNear(crossings.counts[side]!, line[part]!, radius, coin), coin.below(256))
-    return
-  }
-  const u = coin.below(order)
-  swapLines(assignment, part, 2 * u + side)
-  if (kind >= SHARES.flip + SHARES.move + SHARES.swap) swapLines(assignment, part ^ 1, 2 * u + 1 - side)
 }
