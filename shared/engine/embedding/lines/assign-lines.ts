@@ -1,4 +1,4 @@
-import type { Attempt, PartialEmbedding, Runner } from '../method'
+import type { PartialEmbedding, Runner } from '../method'
 import { sizeOf } from '../../graph/graph'
 import type { Watch } from '../progress'
 import { shortenEmbedding } from '../rework'

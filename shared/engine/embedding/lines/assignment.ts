@@ -266,7 +266,7 @@ export class Assignment {
 
   /** Puts a part on another line of its side. */
   move(part: number, line: number): void {
-    const { problem, row, start, middle, partner } = this
+    const { row, start, middle, partner } = this
     const { place } = this.crossings
     const old = this.line[part]!
     if (old === line) return
