@@ -3,6 +3,7 @@ import { cornerTemplate } from './corner-template'
 import { fillPairing } from './fill'
 import type { Fitter } from './fitter'
 import { PairAnnealer } from './pair-annealing'
+import type { Cooling } from './pair-annealing'
 import { pairCosts } from './pair-costs'
 import { extentOf, rankWindows } from './windows'
 import type { Extent, MatchedWindow } from './windows'
@@ -23,10 +24,13 @@ const DEFAULTS = {
   /** Annealings once there is a solution, for complete problems and for others. */
   refinements: 6,
   refinementsOfOthers: 2,
-  /** Moves of an annealing a chain, and its temperatures in unmet pairs. */
+  /** Moves of an annealing: so many a chain and at least so many in all, but few for few pairs of chains. */
   movesPerChain: 600,
+  leastMoves: 90_000,
+  mostMovesPerPair: 60,
+  /** Temperatures of an annealing in unmet pairs. */
   hot: 2,
-  cold: 0.12,
+  cold: 0.02,
   /** Chains beyond the runs that are grown through what the others leave free. */
   mostExtra: 3,
   /** Annealings of the largest window before giving up, and when only a first solution is asked for. */
@@ -40,6 +44,13 @@ function sizesFrom(n: number, { size }: Extent): number[] {
   for (let s = Math.max(1, n); s < size; s = Math.max(s + 1, Math.round(s * DEFAULTS.growth))) sizes.push(s)
   sizes.push(size)
   return sizes
+}
+
+/** The annealing schedule of so many chains. */
+function coolingOf(chains: number): Cooling {
+  const { movesPerChain, leastMoves, mostMovesPerPair, hot, cold } = DEFAULTS
+  const wanted = Math.max(movesPerChain * chains, leastMoves)
+  return { moves: Math.min(wanted, (mostMovesPerPair * chains * (chains - 1)) / 2), hot, cold }
 }
 
 /** Lines that the runs lie on: chains beyond them would have to share one. */
@@ -99,8 +110,7 @@ export class CornerFitter {
     if (!filled) return false
     watch.phase = 'fitting the template'
     const annealer = new PairAnnealer(pairCosts(window), filled, random)
-    const { movesPerChain, hot, cold } = DEFAULTS
-    if (!annealer.run({ moves: movesPerChain * slots, hot, cold }, watch)) return false
+    if (!annealer.run(coolingOf(slots), watch)) return false
     return this.fitter.fit(cornerTemplate(window, annealer.pairing()))
   }
 

@@ -104,6 +104,3 @@ export function crossingsOf(machine: Graph, usable: Uint8Array, segments: Float3
   }
   return { vertical, horizontal, alongVertical, alongHorizontal }
 }
-
-/** The qubit at a place of a run. */
-export const qubitAt = (set: RunSet, run: number, place: number): number => set.qubits[set.offsets[run]! + place]!

@@ -4,13 +4,13 @@ import { crosses } from './corner-window'
 /** What meeting at a crossing costs a pair of chains, and what its corner costs a chain. */
 export const COSTS = {
   /** The two runs do not cross. */
-  unmet: 40,
+  unmet: 200,
   /** A crossing just outside the triangle, and the line spacings further out that cost one more, up to the most. */
   outside: 1,
   spacingsPerStep: 6,
   mostOutside: 10,
   /** No coupler at the corner. */
-  noCorner: 600,
+  noCorner: 2000,
   /** A corner this far from the diagonal costs nothing, then one for so many spacings, up to the most. */
   freeCorner: 6,
   spacingsPerCornerStep: 2,
@@ -21,7 +21,7 @@ export const COSTS = {
  * Pair costs carry the number of unmet pairs in the bits above the cost itself, so that a sum tells both; with at most
  * 2048 chains neither part overflows.
  */
-export const UNMET_UNIT = 1 << 17
+export const UNMET_UNIT = 1 << 19
 export const COST_MASK = UNMET_UNIT - 1
 
 /** Tables over the runs of a window. */

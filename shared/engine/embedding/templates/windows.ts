@@ -7,7 +7,6 @@ import type { Pairing } from './matching'
 
 /** A window with the chains that fit below its diagonal as they are. */
 export interface MatchedWindow {
-  readonly place: WindowPlace
   readonly window: CornerWindow
   readonly pairing: Pairing
 }
@@ -66,7 +65,7 @@ export function rankWindows(
   const matched = places(extent, size, limit, random).map((place): MatchedWindow => {
     const window = cutWindow(crossings, place)
     const pairing = matchInOrder(window)
-    return { place, window: centreDiagonal(window, pairing), pairing }
+    return { window: centreDiagonal(window, pairing), pairing }
   })
   return matched.sort((a, b) => b.pairing.verticals.length - a.pairing.verticals.length)
 }

@@ -6,7 +6,7 @@ import { fillPairing } from '../../../../../shared/engine/embedding/templates/fi
 import { matchInOrder } from '../../../../../shared/engine/embedding/templates/matching'
 import type { Pairing } from '../../../../../shared/engine/embedding/templates/matching'
 import { PairAnnealer } from '../../../../../shared/engine/embedding/templates/pair-annealing'
-import { COST_MASK, pairCosts, UNMET_UNIT } from '../../../../../shared/engine/embedding/templates/pair-costs'
+import { COST_MASK, COSTS, pairCosts, UNMET_UNIT } from '../../../../../shared/engine/embedding/templates/pair-costs'
 import type { PairCosts } from '../../../../../shared/engine/embedding/templates/pair-costs'
 import { createRandom } from '../../../../../shared/engine/random'
 import { machineOf } from './attempts'
@@ -18,7 +18,7 @@ function recount({ crossing, corner, width }: PairCosts, { verticals, horizontal
   verticals.forEach((v, i) => {
     const own = corner[v * width + horizontals[i]!]!
     cost += own
-    if (own >= 600) troubled.add(i)
+    if (own >= COSTS.noCorner) troubled.add(i)
     for (let j = 0; j < i; j++) {
       const met = [crossing[v * width + horizontals[j]!]!, crossing[verticals[j]! * width + horizontals[i]!]!]
       const pair = Math.min(...met)
