@@ -1,11 +1,13 @@
-import Graphology from 'graphology'
 import { describe, expect, it } from 'vitest'
-import { chainOf } from '../../shared/engine/embedding/embedding'
-import { provedInfeasible } from '../../shared/engine/embedding/feasibility'
-import { findEmbedding } from '../../shared/engine/embedding/search'
+import type { Embedding } from '../../shared/engine/embedding/embedding'
+import { DEFAULTS, findEmbedding } from '../../shared/engine/embedding/search'
+import type { EmbeddingTask } from '../../shared/engine/embedding/task'
+import { runTry } from '../../shared/engine/embedding/tries'
 import { verifyEmbedding } from '../../shared/engine/embedding/verify'
 import type { Graph } from '../../shared/engine/graph/graph'
+import { keepEdges } from '../../shared/engine/graph/subgraph'
 import { buildFabric } from '../../shared/engine/machine/build-fabric'
+import type { Family } from '../../shared/engine/machine/fabric'
 import { createRandom } from '../../shared/engine/random'
 import type { Random } from '../../shared/engine/random'
 import {
@@ -18,47 +20,8 @@ import {
   taskOf,
   usableExcept,
 } from '../fixtures/graphs'
-
-const control = { now: () => 0, cancelled: () => false, report: () => {} }
-
-/** The usable machine as a graphology graph. */
-function machineCopy(machine: Graph, usable: Uint8Array): Graphology {
-  const copy = new Graphology({ type: 'undirected' })
-  for (let q = 0; q < machine.order; q++) if (usable[q]) copy.addNode(q)
-  for (let k = 0; k < machine.ends.length; k += 2)
-    if (copy.hasNode(machine.ends[k]) && copy.hasNode(machine.ends[k + 1]))
-      copy.addEdge(machine.ends[k], machine.ends[k + 1])
-  return copy
-}
-
-/** Contracts an edge: node `from` is merged into node `into`. */
-function contract(graph: Graphology, into: string, from: string): void {
-  for (const neighbour of graph.neighbors(from)) if (neighbour !== into) graph.mergeEdge(into, neighbour)
-  graph.dropNode(from)
-}
-
-/**
- * The definition of a minor by its operations (Diestel, Graph Theory, §1.7): contract every chain along edges of the
- * machine until one vertex is left, delete the rest, and look for the problem as a subgraph under the given names.
- */
-function isMinorByContraction(problem: Graph, machine: Graph, usable: Uint8Array, chains: number[][]): boolean {
-  const graph = machineCopy(machine, usable)
-  const all = chains.flat()
-  if (new Set(all).size !== all.length || !all.every((q) => graph.hasNode(q))) return false
-  for (const chain of chains) {
-    if (chain.length === 0) return false
-    const left = new Set(chain.slice(1).map(String))
-    while (left.size > 0) {
-      const next = graph.neighbors(chain[0]).find((q) => left.has(q))
-      if (next === undefined) return false
-      contract(graph, String(chain[0]), next)
-      left.delete(next)
-    }
-  }
-  for (let k = 0; k < problem.ends.length; k += 2)
-    if (!graph.hasEdge(chains[problem.ends[k]!]![0], chains[problem.ends[k + 1]!]![0])) return false
-  return true
-}
+import { familyTask, METHODS, UNTIMED } from '../fixtures/methods'
+import { chainLists, isMinorByContraction } from '../fixtures/minors'
 
 type Mutation = (chains: number[][], machine: Graph, random: Random) => void
 const pick = (list: number[], random: Random): number => list[random.below(list.length)]!
@@ -111,8 +74,8 @@ const INSTANCES = (['king', 'chimera'] as const).flatMap((family) =>
 describe.each(INSTANCES)(
   'embedding on $name against contraction in graphology',
   ({ problem, machine, usable, seed }) => {
-    const { embedding } = findEmbedding(taskOf(problem, machine, usable), { seed, tries: 3 }, control)
-    const found = Array.from({ length: problem.order }, (_, i) => [...chainOf(embedding!, i)])
+    const { embedding } = findEmbedding(taskOf(problem, machine, usable), { seed, tries: 3 }, UNTIMED)
+    const found = chainLists(embedding!)
 
     it('is a minor', () => {
       expect(isMinorByContraction(problem, machine, usable, found)).toBe(true)
@@ -134,6 +97,61 @@ describe.each(INSTANCES)(
   },
 )
 
+const C6: Family = { kind: 'chimera', m: 6, n: 6, t: 4 }
+const P4: Family = { kind: 'pegasus', m: 4, trimmed: true }
+const Z3: Family = { kind: 'zephyr', m: 3, t: 4 }
+const WORN = { qubits: 0.02, couplers: 0.01 }
+
+const WORN_MACHINES: readonly (readonly [string, (random: Random) => Graph, Family])[] = [
+  ['K_10 on C6', () => completeGraph(10), C6],
+  ['K_16 on P4', () => completeGraph(16), P4],
+  ['K_16 on Z3', () => completeGraph(16), Z3],
+  ['G(20, 0.3) on P4', (random) => randomGraph(20, 0.3, random), P4],
+  ['6-regular 20 on Z3', (random) => regularGraph(20, 6, random), Z3],
+  ['3-regular 30 on C6', (random) => regularGraph(30, 3, random), C6],
+]
+
+describe.each(WORN_MACHINES)('%s with missing qubits and couplers', (_, make, family) => {
+  const SEEDS = [1, 2]
+  const taskOfSeed = (seed: number): EmbeddingTask => {
+    const random = createRandom(seed, 51)
+    return familyTask(make(random), family, WORN, random)
+  }
+  const isMinor = ({ problem, machine, usable }: EmbeddingTask, embedding: Embedding): boolean =>
+    isMinorByContraction(problem, machine, usable, chainLists(embedding))
+
+  it.each(METHODS)('what %s finds is a minor by contraction', (method) => {
+    const tasks = SEEDS.map(taskOfSeed)
+    const found = tasks.map((task, k) => findEmbedding(task, { seed: SEEDS[k]!, method, tries: 1 }, UNTIMED).embedding)
+    found.forEach((embedding, k) => embedding && expect(isMinor(tasks[k]!, embedding)).toBe(true))
+    // Only the general method has to find something everywhere.
+    if (method === 'search') expect(found).not.toContain(null)
+  })
+
+  it('what is shortened or repaired is a minor by contraction, and frozen chains stay', () => {
+    for (const seed of SEEDS) {
+      const task = taskOfSeed(seed)
+      const chains = findEmbedding(task, { seed, tries: 1 }, UNTIMED).embedding!
+      const frozen = Uint8Array.from({ length: task.problem.order }, (_, v) => (v === 0 ? 1 : 0))
+      const before = chainLists(chains)
+      const shortened = findEmbedding({ ...task, start: { chains, frozen } }, { method: 'shorten', seed }, UNTIMED)
+      expect(isMinor(task, shortened.embedding!)).toBe(true)
+      expect(shortened.embedding!.qubits.length).toBeLessThanOrEqual(chains.qubits.length)
+      expect(chainLists(shortened.embedding!)[0]).toEqual(before[0])
+
+      const broken = before[1]![0]!
+      const usable = task.usable.map((works, q) => (q === broken ? 0 : works))
+      const works = Uint8Array.from({ length: task.machine.ends.length / 2 }, (_, k) =>
+        task.machine.ends[2 * k] === broken || task.machine.ends[2 * k + 1] === broken ? 0 : 1,
+      )
+      const worse = { ...task, usable, machine: keepEdges(task.machine, works), start: { chains, frozen } }
+      const repaired = findEmbedding(worse, { method: 'repair', seed }, UNTIMED)
+      expect(isMinor(worse, repaired.embedding!)).toBe(true)
+      expect(chainLists(repaired.embedding!)[0]).toEqual(before[0])
+    }
+  })
+})
+
 describe('published constructions bound what has to be found', () => {
   // Choi, Quantum Inf. Process. 10, 343 (2011): Chimera C(4, 4, 4) holds K_16 (chains of 5); half of that size must be
   // within reach of a heuristic. Boothby et al., arXiv:2003.00133: Pegasus P(6) holds K_62 by construction.
@@ -142,9 +160,8 @@ describe('published constructions bound what has to be found', () => {
     ['K_30 in Pegasus P(6)', completeGraph(30), buildFabric({ kind: 'pegasus', m: 6, trimmed: true }).graph],
   ])('%s', (_, problem, machine) => {
     const usable = new Uint8Array(machine.order).fill(1)
-    const { embedding } = findEmbedding(taskOf(problem, machine, usable), { seed: 1, tries: 3 }, control)
-    const chains = Array.from({ length: problem.order }, (_, i) => [...chainOf(embedding!, i)])
-    expect(isMinorByContraction(problem, machine, usable, chains)).toBe(true)
+    const { embedding } = findEmbedding(taskOf(problem, machine, usable), { seed: 1, tries: 3 }, UNTIMED)
+    expect(isMinorByContraction(problem, machine, usable, chainLists(embedding!))).toBe(true)
   })
 
   it('finds no minor that theory forbids', () => {
@@ -154,9 +171,12 @@ describe('published constructions bound what has to be found', () => {
       [completeGraph(5), gridGraph(7, 7)],
       [completeGraph(4), chimeraGraph(1, 6, 2)],
     ] as const) {
-      const usable = new Uint8Array(machine.order).fill(1)
-      expect(provedInfeasible(taskOf(problem, machine, usable))).toBeNull()
-      expect(findEmbedding(taskOf(problem, machine, usable), { tries: 3 }, control).status).toBe('none found')
+      const task = taskOf(problem, machine)
+      expect(findEmbedding(task, { tries: 3 }, UNTIMED).status).toBe('none found')
+      for (const method of METHODS)
+        expect(
+          runTry(task, { tryNumber: 1, method }, { ...DEFAULTS, timeLimitSeconds: 1 }, UNTIMED).embedding,
+        ).toBeNull()
     }
   })
 })
