@@ -183,6 +183,7 @@ export function grow(variable: i32, start: i32, placed: i32, ceiling: i32, touch
           r = int(parent, r)
         }
         left -= reached
+        if (treeCost >= ceiling) break
         if (left == 0) {
           complete = true
           break

@@ -11,13 +11,12 @@ import type { EmbeddingTask } from './task'
 
 /** How each round of a try goes about it: more of the machine and more work on the placement each time. */
 const ROUNDS = [
-  { effort: 1, slack: 1 },
-  { effort: 2, slack: 1.5 },
+  { effort: 0.3, slack: 1 },
+  { effort: 1, slack: 1.5 },
   { effort: 4, slack: Infinity },
+  { effort: 1, slack: Infinity },
+  { effort: 4, slack: 2 },
 ] as const
-
-/** Partners that a tree is grown from. */
-const STARTS = 3
 
 /**
  * One try of placing variables on the machine's plane, routing their chains under negotiated congestion, and shortening
@@ -27,7 +26,7 @@ export function searchChains(task: EmbeddingTask, attempt: Attempt): PartialEmbe
   const { problem, machine, usable } = task
   const { random, watch } = attempt
   const state = new ChainState(problem, machine, usable, attempt.kernel)
-  const router = new Router(state, random, STARTS)
+  const router = new Router(state, random)
   const seeds = new Seeds(problem, machine, usable, positionsOf(task))
   const variables = Int32Array.from({ length: problem.order }, (_, v) => v).filter((v) => degreeOf(problem, v) > 0)
   let closest: PartialEmbedding | null = null

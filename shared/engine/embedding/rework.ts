@@ -10,8 +10,6 @@ import type { Embedding } from './embedding'
 import type { Attempt, PartialEmbedding } from './method'
 import type { EmbeddingTask } from './task'
 
-const STARTS = 3
-
 function stateOf(task: EmbeddingTask, chains: Embedding, kernel: KernelChoice): ChainState {
   const state = new ChainState(task.problem, task.machine, task.usable, kernel)
   for (let v = 0; v < task.problem.order; v++) for (const q of chainOf(chains, v)) state.add(v, q)
@@ -34,7 +32,7 @@ const movableOf = ({ problem }: EmbeddingTask, frozen: Uint8Array): Int32Array =
 export function shortenEmbedding(task: EmbeddingTask, chains: Embedding, frozen: Uint8Array, attempt: Attempt): void {
   const state = stateOf(task, chains, attempt.kernel)
   state.frozen.set(frozen)
-  const router = new Router(state, attempt.random, STARTS)
+  const router = new Router(state, attempt.random)
   const give = (): void => attempt.offer(packState(state))
   shortenChains(state, router, movableOf(task, frozen), attempt, give)
 }
@@ -140,7 +138,7 @@ export function repairStart(task: EmbeddingTask, { random, watch, offer, kernel 
     fenceAllBut(state, variables)
     sowBesidePartners(state, variables, task.usable)
     const connected = variables.filter((v) => state.partnersOf(v) > 0)
-    const valid = negotiate(state, new Router(state, random, STARTS), connected, random, watch)
+    const valid = negotiate(state, new Router(state, random), connected, random, watch)
     if (placeIsolated(state, task.usable) && valid) {
       offer(packState(state))
       return null

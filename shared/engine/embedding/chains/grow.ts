@@ -1,4 +1,4 @@
-import { FAR } from './state'
+import { FAR } from './costs'
 import type { ChainState } from './state'
 
 /** Packed heap keys hold the qubit below the distance: 2¹⁷ qubits at most. */

@@ -2,24 +2,28 @@ import type { Random } from '../../random'
 import type { Watch } from '../progress'
 import { markTouches } from './grow'
 import type { Router } from './router'
-import { COST_UNIT } from './state'
+import { COST_UNIT } from './costs'
 import type { ChainState } from './state'
 
 export const NEGOTIATION = {
   /** Factor on a qubit's cost for each chain that has it, in the first pass, and its growth from pass to pass. */
   penalty: 3,
-  penaltyGrowth: 1.15,
+  penaltyGrowth: 1.07,
+  /** Passes in which each tree is grown from one partner only; later ones take the cheapest of a few. */
+  roughPasses: 3,
+  starts: 3,
+  /** Beyond it chains only make detours. */
   penaltyMost: 10,
   /** Added to a qubit's history after a pass for each chain beyond the first. */
   historyStep: 0.5,
   /** Every so many passes all variables are rerouted, else the conflicted and some of the rest. */
   fullPassEvery: 5,
   shareOfRest: 0.5,
-  /** Share of used qubits that are overused below which of the rest only 4·overuse are rerouted. */
+  /** Share of used qubits that are overused below which only so many times the overuse of the rest are rerouted. */
   quietOveruse: 0.02,
   quietShare: 8,
-  /** Passes without less overlap before a try is given up. */
-  patience: 40,
+  /** Reroutes without less overlap, as a multiple of the variables, before it is given up. */
+  patience: 20,
   /** Largest random part of a cost, in 64ths; decides between equal ways only. */
   tieBreak: 4,
 }
@@ -89,7 +93,7 @@ export function negotiate(
 ): boolean {
   const patience = NEGOTIATION.patience * variables.length
   const unmet = new Uint8Array(state.variables)
-  let penalty = NEGOTIATION.penalty
+  let penalty: number = NEGOTIATION.penalty
   let best = Infinity
   // A pass counts too, so that those in which nothing can be rerouted come to an end.
   let spent = 0
@@ -110,6 +114,7 @@ export function negotiate(
     }
     refreshCosts(state, random, penalty)
     const quiet = pass > 0 && state.overlap < NEGOTIATION.quietOveruse * state.qubitsUsed
+    router.mostStarts = pass < NEGOTIATION.roughPasses ? 1 : NEGOTIATION.starts
     const rest = pass % NEGOTIATION.fullPassEvery === 0 ? 1 : NEGOTIATION.shareOfRest
     const share = quiet ? (NEGOTIATION.quietShare * state.overlap) / variables.length : rest
     shuffle(variables, random)

@@ -2,21 +2,21 @@ import type { Random } from '../../random'
 import { markTouches } from './grow'
 import { settleTree } from './settle'
 import type { Settling } from './settle'
-import { FAR } from './state'
+import { FAR } from './costs'
 import type { ChainState } from './state'
+
+const MOST_STARTS = 8
 
 /** Reroutes one variable at a time. */
 export class Router {
-  private readonly starts: Int32Array
+  /** Partners that a tree is grown from, of which the cheapest is kept; at most MOST_STARTS. */
+  mostStarts = 3
+  private readonly starts = new Int32Array(MOST_STARTS)
 
   constructor(
     readonly state: ChainState,
     private readonly random: Random,
-    /** Partners that a tree is grown from, of which the cheapest is kept. */
-    private readonly mostStarts: number,
-  ) {
-    this.starts = new Int32Array(64)
-  }
+  ) {}
 
   /** Draws up to `most` placed partners (reservoir sampling); returns how many. */
   private drawStarts(variable: number, most: number): number {
@@ -35,7 +35,7 @@ export class Router {
   /** Leaves the cheapest of a few trees in `state.tree`; returns its size, 0 when there is none. */
   private grow(variable: number, placed: number): number {
     const { state, starts } = this
-    const count = this.drawStarts(variable, Math.min(this.mostStarts, starts.length))
+    const count = this.drawStarts(variable, this.mostStarts)
     let ceiling = FAR
     let best = 0
     for (let i = 0; i < count; i++) {

@@ -1,4 +1,5 @@
 import type { Graph } from '../../graph/graph'
+import { COST_UNIT, FAR } from './costs'
 import { growTree } from './grow'
 import { allocate } from './kernel'
 import type { Arrays, KernelChoice } from './kernel'
@@ -6,10 +7,6 @@ import type { Arrays, KernelChoice } from './kernel'
 /** Entries of the table that tells the kernel sizes and addresses. */
 const TABLE_LENGTH = 18
 
-/** Distance of a qubit without a label, and cost of one that is out of reach; two of them fit a signed integer. */
-export const FAR = 2 ** 30 - 1
-/** Fixed-point unit of a qubit's cost: small enough a grain for tie-breaks, large enough for exact sums in a double. */
-export const COST_UNIT = 64
 /** Largest cost of a qubit that is in reach; ways of up to 2¹¹ of them are told apart. */
 const LARGEST_COST = 2 ** 19
 /** Uses of a qubit from which a further chain costs the same. */

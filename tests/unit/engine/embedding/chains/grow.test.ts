@@ -1,7 +1,7 @@
 import { describe, expect, it } from 'vitest'
 import { markTouches } from '../../../../../shared/engine/embedding/chains/grow'
 import type { ChainState } from '../../../../../shared/engine/embedding/chains/state'
-import { FAR } from '../../../../../shared/engine/embedding/chains/state'
+import { FAR } from '../../../../../shared/engine/embedding/chains/costs'
 import { graphFromEdges } from '../../../../../shared/engine/graph/build'
 import { createRandom } from '../../../../../shared/engine/random'
 import type { Random } from '../../../../../shared/engine/random'
