@@ -120,7 +120,8 @@ function frozenStand(state: ChainState, chains: Embedding, frozen: Uint8Array): 
  * The method `repair`: keeps every chain of the start that still stands and reroutes the others among free qubits.
  * Where that does not do, the chains around them are let go too, in widening rings; frozen ones never are.
  */
-export function repairStart(task: EmbeddingTask, { random, watch, offer, kernel }: Attempt): PartialEmbedding | null {
+export function repairStart(task: EmbeddingTask, attempt: Attempt): PartialEmbedding | null {
+  const { random, watch, offer, kernel } = attempt
   const { chains, frozen } = startOf(task)
   const intact = standing(task, chains, kernel)
   const kept = packState(intact)
@@ -138,9 +139,12 @@ export function repairStart(task: EmbeddingTask, { random, watch, offer, kernel 
     fenceAllBut(state, variables)
     sowBesidePartners(state, variables, task.usable)
     const connected = variables.filter((v) => state.partnersOf(v) > 0)
-    const valid = negotiate(state, new Router(state, random), connected, random, watch)
+    const router = new Router(state, random)
+    const valid = negotiate(state, router, connected, random, watch)
     if (placeIsolated(state, task.usable) && valid) {
-      offer(packState(state))
+      const give = (): void => offer(packState(state))
+      give()
+      shortenChains(state, router, connected, attempt, give)
       return null
     }
     closest = partialOf(state, task.problem)

@@ -6,7 +6,7 @@ import type { Embedding } from './embedding'
 import { assignLines } from './lines/assign-lines'
 import type { Method, PartialEmbedding, Runner } from './method'
 import type { Objective, Quality, Target } from './objective'
-import { compareQuality, qualityOf, reaches } from './objective'
+import { changedChains, compareQuality, qualityOf, reaches } from './objective'
 import type { PlannedTry } from './plan'
 import { Watch } from './progress'
 import type { SearchProgress, StopReason } from './progress'
@@ -62,7 +62,8 @@ export function runTry(
   let embedding: Embedding | null = null
   let firstSeconds: number | null = null
   const offer = (candidate: Embedding): void => {
-    const quality = qualityOf(candidate)
+    const changed = method === 'repair' && task.start ? changedChains(task.start.chains, candidate) : 0
+    const quality = { ...qualityOf(candidate), changed }
     if (watch.best && compareQuality(quality, watch.best, objective) >= 0) return
     const [violation] = verifyEmbedding(task.problem, task.machine, task.usable, candidate)
     if (violation) throw new Error(`${method} made an invalid embedding: ${violation.message}`)

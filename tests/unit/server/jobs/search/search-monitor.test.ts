@@ -22,7 +22,7 @@ test('puts tries at work and tries that are over together', () => {
   expect(monitor.report(progressOf(1, { overlap: 9 }), 1)).toMatchObject({ tryNumber: 1, running: 2, overlap: 9 })
   const second = monitor.report(progressOf(2, { fraction: 0.5, overlap: 0, longestChain: 6, qubitsUsed: 40 }), 2)
   expect(second).toMatchObject({ tries: 4, longestChain: 6, qubitsUsed: 40, seconds: 2 })
-  expect(monitor.ended(planned(1), { longest: 5, total: 50 }, 2.5)).toMatchObject({ running: 1, longestChain: 5 })
+  expect(monitor.ended(planned(1), { longest: 5, total: 50, changed: 0 }, 2.5)).toMatchObject({ running: 1, longestChain: 5 })
   monitor.began(planned(3))
   const third = monitor.report(progressOf(3, { overlap: 7 }), 3)
   expect(third).toMatchObject({ longestChain: 5, qubitsUsed: 50, overlap: 7 })
@@ -40,8 +40,8 @@ test('puts tries at work and tries that are over together', () => {
 
 test('compares by the objective', () => {
   const monitor = new SearchMonitor(2, 'total qubits', 100)
-  expect(monitor.ended(planned(1), { longest: 6, total: 40 }, 1)).toBeNull()
-  monitor.ended(planned(2), { longest: 5, total: 50 }, 1)
+  expect(monitor.ended(planned(1), { longest: 6, total: 40, changed: 0 }, 1)).toBeNull()
+  monitor.ended(planned(2), { longest: 5, total: 50, changed: 0 }, 1)
   expect(monitor.report(progressOf(2), 1)).toMatchObject({ longestChain: 6, qubitsUsed: 40 })
 })
 
