@@ -1,3 +1,4 @@
+import { groupDigits } from '../../../shared/engine/digits'
 import type { Objective, Quality } from '../../../shared/engine/embedding/objective'
 import { compareQuality } from '../../../shared/engine/embedding/objective'
 import type { SearchProgress } from '../../../shared/engine/embedding/progress'
@@ -40,17 +41,20 @@ export class SearchMonitor {
 
   /** @param seconds since the search began */
   report(report: SearchProgress, seconds: number): EmbeddingProgress {
-    const { tryNumber, longestChain, qubitsUsed } = report
+    const { tryNumber, longestChain, qubitsUsed, changed } = report
     if (this.atWork.has(tryNumber)) this.atWork.set(tryNumber, report)
-    if (longestChain !== null && qubitsUsed !== null) this.takeBest({ longest: longestChain, total: qubitsUsed })
+    if (longestChain !== null && qubitsUsed !== null)
+      this.takeBest({ longest: longestChain, total: qubitsUsed, changed })
     this.last = report
     return this.progress(report, seconds)
   }
 
   message({ running, phase, overlap, longestChain, qubitsUsed }: EmbeddingProgress): string {
     const best =
-      longestChain === null ? 'none valid yet' : `best so far: longest chain ${longestChain}, ${qubitsUsed} qubits`
-    return `${this.done} of ${this.tries} tries done, ${running} at work, ${phase}, overlap ${overlap}; ${best}`
+      longestChain === null
+        ? 'none valid yet'
+        : `best so far: longest chain ${groupDigits(longestChain)}, ${groupDigits(qubitsUsed!)} qubits`
+    return `${this.done} of ${this.tries} tries done, ${running} at work, ${phase}, overlap ${groupDigits(overlap)}; ${best}`
   }
 
   private progress({ method, tryNumber, phase, overlap }: SearchProgress, seconds: number): EmbeddingProgress {

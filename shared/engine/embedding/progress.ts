@@ -18,6 +18,8 @@ export interface SearchProgress {
   /** Longest chain and total of qubits of this try's best valid embedding so far. */
   readonly longestChain: number | null
   readonly qubitsUsed: number | null
+  /** Chains of that embedding that a repair changed; 0 otherwise. */
+  readonly changed: number
   /** Seconds since the try began. */
   readonly seconds: number
 }
@@ -77,6 +79,7 @@ export class Watch {
       overlap,
       longestChain: best?.longest ?? null,
       qubitsUsed: best?.total ?? null,
+      changed: best?.changed ?? 0,
       seconds,
     })
   }

@@ -12,6 +12,7 @@ const progressOf = (tryNumber: number, rest: Partial<SearchProgress> = {}): Sear
   overlap: 4,
   longestChain: null,
   qubitsUsed: null,
+  changed: 0,
   seconds: 0,
   ...rest,
 })
@@ -22,7 +23,10 @@ test('puts tries at work and tries that are over together', () => {
   expect(monitor.report(progressOf(1, { overlap: 9 }), 1)).toMatchObject({ tryNumber: 1, running: 2, overlap: 9 })
   const second = monitor.report(progressOf(2, { fraction: 0.5, overlap: 0, longestChain: 6, qubitsUsed: 40 }), 2)
   expect(second).toMatchObject({ tries: 4, longestChain: 6, qubitsUsed: 40, seconds: 2 })
-  expect(monitor.ended(planned(1), { longest: 5, total: 50, changed: 0 }, 2.5)).toMatchObject({ running: 1, longestChain: 5 })
+  expect(monitor.ended(planned(1), { longest: 5, total: 50, changed: 0 }, 2.5)).toMatchObject({
+    running: 1,
+    longestChain: 5,
+  })
   monitor.began(planned(3))
   const third = monitor.report(progressOf(3, { overlap: 7 }), 3)
   expect(third).toMatchObject({ longestChain: 5, qubitsUsed: 50, overlap: 7 })
@@ -43,6 +47,15 @@ test('compares by the objective', () => {
   expect(monitor.ended(planned(1), { longest: 6, total: 40, changed: 0 }, 1)).toBeNull()
   monitor.ended(planned(2), { longest: 5, total: 50, changed: 0 }, 1)
   expect(monitor.report(progressOf(2), 1)).toMatchObject({ longestChain: 6, qubitsUsed: 40 })
+})
+
+test('prefers a repair that changed fewer chains', () => {
+  const monitor = new SearchMonitor(2, 'longest chain', 100)
+  monitor.began(planned(1))
+  monitor.report(progressOf(1, { longestChain: 6, qubitsUsed: 1040, changed: 1 }), 1)
+  const shorter = monitor.report(progressOf(1, { longestChain: 5, qubitsUsed: 30, changed: 2 }), 2)
+  expect(shorter).toMatchObject({ longestChain: 6, qubitsUsed: 1040 })
+  expect(monitor.message(shorter)).toContain('longest chain 6, 1\u202f040 qubits')
 })
 
 test('never falls, and is done when the time is over', () => {
