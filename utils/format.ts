@@ -1,5 +1,6 @@
-/** Narrow no-break space: between thousands, and between a number and its unit. */
-export const THIN_SPACE = '\u202f'
+import { groupDigits, THIN_SPACE } from '#shared/engine/digits'
+
+export { THIN_SPACE }
 /** The true minus, as wide as a plus. */
 export const MINUS = '\u2212'
 /** Shown where there is no value. */
@@ -14,14 +15,9 @@ export interface NumberFormat {
   signed?: boolean
 }
 
-const DEFAULTS = { significant: 6, exponentFrom: 1e7, exponentBelow: 1e-4, groupFrom: 4 } as const
+const DEFAULTS = { significant: 6, exponentFrom: 1e7, exponentBelow: 1e-4 } as const
 
 type Maybe = number | null | undefined
-
-/** Groups the whole part by threes: `4313` becomes `4 313`. */
-function groupThousands(digits: string): string {
-  return digits.length < DEFAULTS.groupFrom ? digits : digits.replace(/\B(?=(\d{3})+$)/g, THIN_SPACE)
-}
 
 const SUPERSCRIPTS = '⁰¹²³⁴⁵⁶⁷⁸⁹'
 
@@ -44,7 +40,7 @@ function formatSize(size: number, format: NumberFormat): string {
   const significant = format.significant ?? DEFAULTS.significant
   if (size === 0) return '0'
   if (Number.isInteger(size) && size < Number.MAX_SAFE_INTEGER && format.significant === undefined) {
-    return groupThousands(size.toFixed(0))
+    return groupDigits(size.toFixed(0))
   }
   if (size >= DEFAULTS.exponentFrom || size < DEFAULTS.exponentBelow) return withExponent(size, significant)
   const rounded = Number(size.toPrecision(significant))
@@ -54,7 +50,7 @@ function formatSize(size: number, format: NumberFormat): string {
 
 function groupFixed(text: string): string {
   const [whole = '0', fraction] = text.split('.')
-  return fraction === undefined ? groupThousands(whole) : `${groupThousands(whole)}.${fraction}`
+  return fraction === undefined ? groupDigits(whole) : `${groupDigits(whole)}.${fraction}`
 }
 
 /** A number for reading: true minus, thin spaces between thousands; whole numbers in full, others to six digits. */

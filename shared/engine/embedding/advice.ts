@@ -1,3 +1,4 @@
+import { groupDigits, THIN_SPACE } from '../digits'
 import { degreeOf } from '../graph/graph'
 import { familyName } from '../machine/family'
 import { treewidthLowerBound } from '../problem/treewidth-lower'
@@ -104,8 +105,9 @@ function presolveOf({ problem }: EmbeddingTask): PresolveOutlook {
   return { degreeAtMostOne, degreeTwo, outsideCore: new Set(waiting).size }
 }
 
-const percent = (share: number): string => `${Math.round(100 * share)} %`
-const counted = (count: number, one: string, many: string): string => `${count} ${count === 1 ? one : many}`
+const percent = (share: number): string => `${groupDigits(Math.round(100 * share))}${THIN_SPACE}%`
+const counted = (count: number, one: string, many: string): string =>
+  `${groupDigits(count)} ${count === 1 ? one : many}`
 
 type Figures = Omit<EmbeddingAdvice, 'items'>
 
@@ -124,7 +126,7 @@ function smallerProblem({ drop, leaveOut }: Figures): AdviceItem[] {
 }
 
 function moreRoom({ room, larger }: Figures): AdviceItem | null {
-  const asks = `The closest state asks for ${room.needed} qubits, ${percent(room.ratio)} of the ${room.usable} usable ones (an estimate)`
+  const asks = `The closest state asks for ${groupDigits(room.needed)} qubits, ${percent(room.ratio)} of the ${groupDigits(room.usable)} usable ones (an estimate)`
   if (larger) {
     const why =
       larger.limitedBy === 'treewidth'

@@ -5,9 +5,8 @@ import { brokenTreewidth } from './bounds/treewidth'
 import type { Effort } from './bounds/treewidth'
 import type { EmbeddingTask } from './task'
 
-export type { Infeasibility, InfeasibilityCode } from './bounds/infeasibility'
+export type { Infeasibility } from './bounds/infeasibility'
 export { machineTreewidthBound } from './bounds/machine-treewidth'
-export type { MachineTreewidthBound } from './bounds/machine-treewidth'
 
 /** Proofs that are found within about a tenth of a second on machines of some thousand qubits. */
 export const AT_ONCE: Effort = { contractionWork: 1_500_000, routingWork: 3_000_000, cliqueWork: 200_000 }

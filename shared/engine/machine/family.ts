@@ -1,12 +1,10 @@
+import { groupDigits } from '../digits'
 import type { Family } from './fabric'
 import type { FamilySize } from './families/rules'
 import { rulesOf } from './families/registry'
 
 /** The largest machine graph that is built: 2¹⁷ qubits let a king's graph of 320 by 320 through. */
 export const FAMILY_LIMITS = { qubits: 131_072, couplers: 1_000_000 } as const
-
-/** Thin spaces between groups of three digits. */
-const grouped = (count: number): string => String(count).replace(/\B(?=(\d{3})+$)/g, '\u2009')
 
 function sizeProblem(value: unknown, { field, least }: FamilySize): string | null {
   if (typeof value === 'number' && Number.isInteger(value) && value >= least) return null
@@ -15,8 +13,8 @@ function sizeProblem(value: unknown, { field, least }: FamilySize): string | nul
 
 function limitProblem(family: Family, count: number, limit: number, what: string): string | null {
   if (count <= limit) return null
-  const size = Number.isSafeInteger(count) ? grouped(count) : 'far too many'
-  return `${familyName(family)} would have ${size} ${what}; at most ${grouped(limit)} are possible`
+  const size = Number.isSafeInteger(count) ? groupDigits(count) : 'far too many'
+  return `${familyName(family)} would have ${size} ${what}; at most ${groupDigits(limit)} are possible`
 }
 
 /**

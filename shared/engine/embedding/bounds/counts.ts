@@ -1,3 +1,4 @@
+import { groupDigits } from '../../digits'
 import type { Graph } from '../../graph/graph'
 import { degreeOf, sizeOf } from '../../graph/graph'
 import { connectedParts } from '../parts'
@@ -45,11 +46,11 @@ function leastChainLengths(problem: Graph, largestDegree: number): Float64Array 
 
 function bySize({ variables, interactions, qubits, couplers }: Counts): Infeasibility | null {
   if (variables > qubits) {
-    const message = `The problem has ${variables} variables, the machine ${qubits} usable qubits: ${variables - qubits} too few.`
+    const message = `The problem has ${groupDigits(variables)} variables, the machine ${groupDigits(qubits)} usable qubits: ${groupDigits(variables - qubits)} too few.`
     return infeasibility('more variables than qubits', variables, qubits, message)
   }
   if (interactions > couplers) {
-    const message = `The problem has ${interactions} interactions, the machine ${couplers} usable couplers: ${interactions - couplers} too few.`
+    const message = `The problem has ${groupDigits(interactions)} interactions, the machine ${groupDigits(couplers)} usable couplers: ${groupDigits(interactions - couplers)} too few.`
     return infeasibility('more interactions than couplers', interactions, couplers, message)
   }
   return null
@@ -62,10 +63,10 @@ function byDegrees(problem: Graph, lengths: Float64Array, { largestDegree, qubit
   if (need === Infinity) {
     let most = 0
     for (let v = 0; v < problem.order; v++) most = Math.max(most, degreeOf(problem, v))
-    const message = `A variable has ${most} interactions, and a chain of qubits with at most ${largestDegree} couplers each touches no more than two other chains: ${most - 2} too few.`
+    const message = `A variable has ${groupDigits(most)} interactions, and a chain of qubits with at most ${groupDigits(largestDegree)} couplers each touches no more than two other chains: ${groupDigits(most - 2)} too few.`
     return infeasibility(code, most, 2, message)
   }
-  const message = `With at most ${largestDegree} couplers a qubit, the problem's chains need at least ${need} qubits; the machine has ${qubits} usable ones: ${need - qubits} too few.`
+  const message = `With at most ${groupDigits(largestDegree)} couplers a qubit, the problem's chains need at least ${groupDigits(need)} qubits; the machine has ${groupDigits(qubits)} usable ones: ${groupDigits(need - qubits)} too few.`
   return infeasibility(code, need, qubits, message)
 }
 
@@ -83,14 +84,14 @@ function byParts({ problem, machine, usable }: EmbeddingTask, lengths: Float64Ar
   const rooms = connectedParts(machine, usable).sizes
   const [need, room] = [largest(needs), largest(rooms)]
   if (need > room) {
-    const message = `A connected set of variables needs at least ${need} qubits, and the largest connected part of the machine has ${room}: ${need - room} too few.`
+    const message = `A connected set of variables needs at least ${groupDigits(need)} qubits, and the largest connected part of the machine has ${groupDigits(room)}: ${groupDigits(need - room)} too few.`
     return infeasibility('no connected part large enough', need, room, message)
   }
   // Contracting and deleting couplers never adds an independent cycle (edges − vertices + parts).
   const wanted = counts.interactions - counts.variables + sizes.length
   const present = counts.couplers - counts.qubits + rooms.length
   if (wanted <= present) return null
-  const message = `The problem has ${wanted} independent cycles, the machine ${present}: ${wanted - present} too few.`
+  const message = `The problem has ${groupDigits(wanted)} independent cycles, the machine ${groupDigits(present)}: ${groupDigits(wanted - present)} too few.`
   return infeasibility('more independent cycles than the machine has', wanted, present, message)
 }
 

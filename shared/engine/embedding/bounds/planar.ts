@@ -1,3 +1,4 @@
+import { groupDigits } from '../../digits'
 import { sizeOf } from '../../graph/graph'
 import { largeClique } from '../../problem/clique'
 import { Contraction } from '../../problem/contraction'
@@ -24,11 +25,11 @@ export function brokenPlanarity(task: EmbeddingTask, work: number): Infeasibilit
     const most = mostPlanarEdges(vertices)
     if (edges <= most) continue
     const merged = vertices < task.problem.order ? 'Merged along interactions, the problem has' : 'The problem has'
-    const message = `${merged} ${vertices} variables with ${edges} interactions; on a machine whose couplers never cross, ${vertices} have at most ${most}: ${edges - most} too many.`
+    const message = `${merged} ${groupDigits(vertices)} variables with ${groupDigits(edges)} interactions; on a machine whose couplers never cross, ${groupDigits(vertices)} have at most ${groupDigits(most)}: ${groupDigits(edges - most)} too many.`
     return infeasibility('too many interactions for a planar machine', edges, most, message)
   }
   const clique = largeClique(task.problem, { atLeast: 5, maxWork: work }).length
   if (clique < 5) return null
-  const message = `The problem contains ${clique} variables that all interact with each other; a machine whose couplers never cross holds at most 4 such: ${clique - 4} too many.`
+  const message = `The problem contains ${groupDigits(clique)} variables that all interact with each other; a machine whose couplers never cross holds at most 4 such: ${groupDigits(clique - 4)} too many.`
   return infeasibility('clique larger than the machine can hold', clique, 4, message)
 }

@@ -1,3 +1,4 @@
+import { groupDigits } from '../../digits'
 import type { Graph } from '../../graph/graph'
 import { largeClique } from '../../problem/clique'
 import { treewidthLowerBound, treewidthReach } from '../../problem/treewidth-lower'
@@ -22,10 +23,10 @@ const DEFAULTS = {
 function proofOf(problem: Graph, lower: number, width: number, cliqueWork: number): Infeasibility {
   const clique = largeClique(problem, { atLeast: width + 2, maxWork: cliqueWork }).length
   if (clique > width + 1) {
-    const message = `The problem contains ${clique} variables that all interact with each other; by a proved bound the machine holds at most ${width + 1} such: ${clique - width - 1} too many.`
+    const message = `The problem contains ${groupDigits(clique)} variables that all interact with each other; by a proved bound the machine holds at most ${groupDigits(width + 1)} such: ${groupDigits(clique - width - 1)} too many.`
     return infeasibility('clique larger than the machine can hold', clique, width + 1, message)
   }
-  const message = `The problem's treewidth is at least ${lower}, the machine's at most ${width}: ${lower - width} too much.`
+  const message = `The problem's treewidth is at least ${groupDigits(lower)}, the machine's at most ${groupDigits(width)}: ${groupDigits(lower - width)} too much.`
   return infeasibility('treewidth too large', lower, width, message)
 }
 

@@ -121,7 +121,7 @@ describe('adviseOn', () => {
     expect(room).toEqual({ needed: 16, usable: 8, ratio: 2, qubitsTooMany: 8, variablesTooMany: 4 })
     // A ring, with two interactions at each variable.
     expect(items.slice(0, 2).map(({ kind }) => kind)).toEqual(['more room', 'pre-solve'])
-    expect(items[0]!.message).toContain('16 qubits, 200 % of the 8 usable ones (an estimate)')
+    expect(items[0]!.message).toContain('16 qubits, 200\u202f% of the 8 usable ones (an estimate)')
   })
 
   it('counts what pre-solving could take out', () => {

@@ -56,11 +56,11 @@ describe('familyProblems', () => {
 
   it('refuses what would be too large, without building it', () => {
     expect(familyProblems({ kind: 'square', width: 1000, height: 1000 })).toEqual([
-      'square grid 1000×1000 would have 1\u2009000\u2009000 qubits; at most 131\u2009072 are possible',
-      'square grid 1000×1000 would have 1\u2009998\u2009000 couplers; at most 1\u2009000\u2009000 are possible',
+      'square grid 1000×1000 would have 1\u202f000\u202f000 qubits; at most 131\u202f072 are possible',
+      'square grid 1000×1000 would have 1\u202f998\u202f000 couplers; at most 1\u202f000\u202f000 are possible',
     ])
     expect(familyProblems({ kind: 'chimera', m: 1, n: 1, t: 1100 })).toEqual([
-      'C(1,1,1100) would have 1\u2009210\u2009000 couplers; at most 1\u2009000\u2009000 are possible',
+      'C(1,1,1100) would have 1\u202f210\u202f000 couplers; at most 1\u202f000\u202f000 are possible',
     ])
     expect(familyProblems({ kind: 'zephyr', m: 1e200, t: 1e200 })[0]).toContain('far too many qubits')
   })
