@@ -5,6 +5,7 @@ import type { EmbeddingView, StartView } from '../../shared/schemas/embeddings'
 import type { Actor, App } from '../app'
 import type { EmbeddingRow } from '../database/repositories/embeddings'
 import { findNumbers } from '../database/repositories/embeddings'
+import type { JobRow } from '../database/repositories/jobs'
 import { findJobOfSubject } from '../database/repositories/jobs'
 import { personOf } from '../database/repositories/problems'
 import { runSheetsOfEmbeddings } from '../database/repositories/run-sheets'
@@ -46,6 +47,13 @@ function lengthHistogram(chains: Embedding): number[] {
     histogram[length]!++
   }
   return histogram
+}
+
+/** Tries of all methods together, as the search told. */
+function triesPlanned({ method, tries }: EmbeddingRow, job: JobRow | undefined): number | null {
+  const told = job?.detail.tries
+  if (typeof told === 'number') return told
+  return method === 'auto' ? null : tries
 }
 
 const NO_CHAINS: Embedding = { offsets: Uint32Array.of(0), qubits: new Uint32Array() }
@@ -95,14 +103,16 @@ export async function embeddingView(app: App, actor: Actor, id: string): Promise
   const found = row.status === 'found'
   const stats = statsView(row.stats, machine.calibration.qubits)
   const sheets = await runSheetsOfEmbeddings(app.db, [id])
+  const job = await findJobOfSubject(app.db, id)
   return {
     id,
     number: row.number,
     status: row.status,
-    jobId: (await findJobOfSubject(app.db, id))?.id ?? null,
+    jobId: job?.id ?? null,
     ...about(subject),
     holdsAtCurrentCalibration: await holdsNow(app, row, subject, chains),
     ...making(row),
+    triesPlanned: triesPlanned(row, job),
     start: await startView(app, row),
     chains: found ? named : {},
     stats: stats && { ...stats, lengthHistogram: lengthHistogram(chains) },

@@ -146,7 +146,10 @@ export interface EmbeddingView {
   methodUsed: MethodUsed | null
   tryNumber: number | null
   seed: number
+  /** As asked for; with `auto`, tries of each method that fits. */
   tries: number
+  /** Tries of all methods together; null before the search has told. */
+  triesPlanned: number | null
   timeLimitSeconds: number
   seconds: number | null
   /** Seconds to the first valid embedding of any try. */

@@ -2,13 +2,17 @@ import type { EmbeddingView } from '#shared/schemas/embeddings'
 import type { Fact } from '../ui/parts'
 import type { ChainFindings } from './layers'
 import { methodName } from './methods'
+import { triesText } from './search'
 import { formatCount, formatNumber, formatPercent } from '../format'
 import { formatDuration, splitDuration } from '../formatTime'
 
+const placeText = (tryNumber: number, of: number | null): string =>
+  of === null ? formatNumber(tryNumber) : `${formatNumber(tryNumber)} of ${formatNumber(of)}`
+
 function methodFact(embedding: EmbeddingView): Fact {
-  const { method, tryNumber, tries, seed, seconds } = embedding
+  const { method, tryNumber, triesPlanned, seed, seconds } = embedding
   if (method === 'imported') return { label: 'Method', value: 'imported', note: 'by hand or from a file' }
-  const place = tries > 1 && tryNumber !== null ? `try ${formatNumber(tryNumber)} of ${formatNumber(tries)}, ` : ''
+  const place = triesPlanned !== 1 && tryNumber !== null ? `try ${placeText(tryNumber, triesPlanned)}, ` : ''
   return {
     label: 'Method',
     value: methodName(embedding),
@@ -39,7 +43,7 @@ function foundFacts(embedding: EmbeddingView): Fact[] {
 }
 
 function searchFacts(embedding: EmbeddingView): Fact[] {
-  const { problem, machine, tries, timeLimitSeconds, seed, seconds, unmet } = embedding
+  const { problem, machine, triesPlanned, timeLimitSeconds, seed, seconds, unmet } = embedding
   const facts: Fact[] = [
     { label: 'Variables', value: formatNumber(problem.variables) },
     { label: 'Interactions', value: formatNumber(problem.interactions) },
@@ -48,13 +52,13 @@ function searchFacts(embedding: EmbeddingView): Fact[] {
       label: 'Method',
       value: methodName(embedding),
       word: true,
-      note: `${formatCount(tries, 'try', 'tries')}, seed ${seed}`,
+      note: `${triesPlanned === null ? triesText(embedding) : formatCount(triesPlanned, 'try', 'tries')}, seed ${seed}`,
     },
     { label: 'Time limit', value: formatNumber(timeLimitSeconds), unit: 's' },
   ]
   if (seconds !== null) facts.push({ label: 'Time taken', ...splitDuration(seconds) })
   if (unmet?.overlap) facts.push({ label: 'Overlap left', value: formatNumber(unmet.overlap), note: 'too many uses' })
-  else if (unmet)
+  else if (unmet?.unmetInteractions)
     facts.push({
       label: 'Left over',
       value: formatNumber(unmet.unmetInteractions),

@@ -1,4 +1,4 @@
-import type { CreateEmbedding, EmbeddingView, Objective, StartWork } from '#shared/schemas/embeddings'
+import type { CreateEmbedding, EmbeddingMethod, EmbeddingView, Objective, StartWork } from '#shared/schemas/embeddings'
 import type { MachineItem } from '#shared/schemas/machines'
 import type { MethodChoice } from './methods'
 import { formatCount, formatNumber } from '../format'
@@ -119,6 +119,10 @@ export function draftSummary({ seed, tries, objective, longestChain, totalQubits
     stops.length ? `stops at ${stops.join(' and ')}` : 'no early stop',
   ].join(', ')
 }
+
+/** `8 tries`; with `auto`, `8 tries of each method`. */
+export const triesText = ({ method, tries }: { method: EmbeddingMethod; tries: number }): string =>
+  formatCount(tries, 'try', 'tries') + (method === 'auto' ? ' of each method' : '')
 
 /** What an embedding was asked for with, to ask for it again. */
 function askedFor({ method, seed, tries, timeLimitSeconds, objective, target }: EmbeddingView) {

@@ -1,3 +1,4 @@
+import { groupDigits, THIN_SPACE } from '../../../shared/engine/digits'
 import type { SearchOptions, SearchResult } from '../../../shared/engine/embedding/search'
 import { outcomeOf } from '../../../shared/engine/embedding/search'
 import type { EmbeddingTask, Start } from '../../../shared/engine/embedding/task'
@@ -15,7 +16,7 @@ import type { JobContext, JobKindHandler, JobOutcome } from '../kind'
 import { SearchMonitor } from '../search/search-monitor'
 import { spreadTries } from '../search/spread-tries'
 import type { Ending } from '../search/unmet'
-import { unmetOf } from '../search/unmet'
+import { provedOnly, unmetOf } from '../search/unmet'
 
 /** Thrown while saving, it also takes back the adoption of what was written. */
 const DELETED = 'the embedding or its problem was deleted meanwhile'
@@ -113,7 +114,7 @@ async function found(
     : `, stopped early ${signal.aborted ? 'when it was cancelled' : 'at the time limit'} with the best so far`
   return {
     status: 'done',
-    message: `found: longest chain ${stats.chainLength.max}, ${stats.qubitsUsed} qubits, by ${result.method} in try ${result.tryNumber} of ${result.tries}${early}`,
+    message: `found: longest chain ${groupDigits(stats.chainLength.max)}, ${groupDigits(stats.qubitsUsed)} qubits, by ${result.method} in try ${groupDigits(result.tryNumber)} of ${groupDigits(result.tries)}${early}`,
     async save(tx) {
       await app.blobs.adopt(tx, chainsBlobId)
       const kept = await updateEmbedding(tx, row.id, {
@@ -141,17 +142,23 @@ async function endingOf(app: App, signal: AbortSignal, { row, task }: Search, re
   if (proof) return { words: `There is no embedding. ${proof.message.replace(/\.$/, '')}`, proved: true }
   const within =
     result.status === 'timed out'
-      ? `the time limit of ${row.timeLimitSeconds} s`
-      : `${result.tries} ${result.tries === 1 ? 'try' : 'tries'}`
+      ? `the time limit of ${row.timeLimitSeconds}${THIN_SPACE}s`
+      : `${groupDigits(result.tries)} ${result.tries === 1 ? 'try' : 'tries'}`
   return { words: `None found in ${within}`, proved: false }
 }
 
+/** What stood in the way, from the closest state and the proof; null where there is neither. */
+async function unmetBy(app: App, { subject, task }: Search, { partial }: SearchResult, ending: Ending) {
+  if (!partial) return ending.proved ? provedOnly(ending) : null
+  return unmetOf(subject, partial, await app.compute.run('advise', { task, partial }), ending)
+}
+
 async function notFound(app: App, { signal }: JobContext, search: Search, result: SearchResult): Promise<JobOutcome> {
-  const { row, subject, task } = search
+  const { row } = search
   const ending = await endingOf(app, signal, search, result)
   const cancelled = signal.aborted
   const { partial } = result
-  const unmet = partial ? unmetOf(subject, partial, await app.compute.run('advise', { task, partial }), ending) : null
+  const unmet = await unmetBy(app, search, result, ending)
   const reason = unmet?.message ?? `${ending.words}.`
   const chainsBlobId = partial ? await app.blobs.write(packEmbedding(partial.chains).bytes) : null
   return {

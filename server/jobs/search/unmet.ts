@@ -1,3 +1,4 @@
+import { groupDigits } from '../../../shared/engine/digits'
 import type { EmbeddingAdvice } from '../../../shared/engine/embedding/advice'
 import { chainOf } from '../../../shared/engine/embedding/embedding'
 import type { PartialEmbedding } from '../../../shared/engine/embedding/method'
@@ -14,7 +15,7 @@ export interface Ending {
 }
 
 const countOf = (count: number, one: string, many: string): string =>
-  count > 0 ? `${count} ${count === 1 ? one : many}` : ''
+  count > 0 ? `${groupDigits(count)} ${count === 1 ? one : many}` : ''
 
 /** What the closest state still lacks, in words. */
 function lacksOf({ overlappedQubits, unmet, unplaced }: PartialEmbedding): string {
@@ -58,3 +59,15 @@ export function unmetOf(
     advice: adviceView(advice, subject, ending),
   }
 }
+
+/** A proof where no try left a state behind: nothing is known of what stood in the way but the proof. */
+export const provedOnly = ({ words }: Ending): StoredUnmet => ({
+  message: `${words}.`,
+  proved: true,
+  overlap: 0,
+  overlappedQubits: [],
+  variables: [],
+  unmetInteractions: 0,
+  neededQubits: null,
+  advice: [],
+})

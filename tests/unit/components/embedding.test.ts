@@ -11,11 +11,11 @@ import { useSortedRows } from '../../../composables/useSortedRows'
 // What Nuxt imports by itself in a component.
 vi.stubGlobal('useSelectionStore', useSelectionStore)
 vi.stubGlobal('useSortedRows', useSortedRows)
-for (const name of ['computed', 'reactive', 'ref', 'watch'] as const) vi.stubGlobal(name, vue[name])
+for (const name of ['computed', 'markRaw', 'reactive', 'ref', 'watch'] as const) vi.stubGlobal(name, vue[name])
 
 const parts = import.meta.glob<{ default: vue.Component }>('../../../components/ui/*.vue', { eager: true })
 const own = import.meta.glob<{ default: vue.Component }>(
-  '../../../components/embedding/{MethodChoice,CompareSort}.vue',
+  '../../../components/embedding/{Advice,CompareSort,MethodChoice,Unmet}.vue',
   {
     eager: true,
   },
@@ -147,10 +147,63 @@ describe('Improve', async () => {
 
   it('offers repair where the embedding no longer holds', async () => {
     const wrapper = panel(false)
+    expect(button(wrapper, 'Shorten')).toBeUndefined()
+    expect(wrapper.text()).not.toContain('Shorten')
     await button(wrapper, 'Repair')!.trigger('click')
     expect(wrapper.emitted('start')?.[0]).toEqual([
       { problemId: 'p1', work: 'repair', frozen: [], timeLimitSeconds: 30 },
     ])
+  })
+})
+
+describe('Unfound', async () => {
+  const { default: Unfound } = await import('../../../components/embedding/Unfound.vue')
+  const outcome = (proved: boolean, partialChains: Record<string, number[]>) =>
+    mount(Unfound, {
+      props: {
+        embedding: {
+          id: 'e1',
+          status: 'none found',
+          problem: { id: 'p1' },
+          machine: { id: 'm1', qubits: 9 },
+          method: 'auto',
+          seed: 4,
+          tries: 8,
+          timeLimitSeconds: 30,
+          objective: 'longest chain',
+          target: { longestChain: null, totalQubits: null },
+          unmet: {
+            message: 'There is none. Why.',
+            proved,
+            overlap: 1,
+            overlappedQubits: [20],
+            variables: [],
+            unmetInteractions: 0,
+            neededQubits: null,
+            advice: [{ kind: 'another try', message: 'Another try may do.', variables: [], interactions: [] }],
+            partialChains,
+          },
+        } as unknown as EmbeddingView,
+        lattice: null,
+        maySearch: true,
+        busy: false,
+      },
+      global: { ...global, stubs: { ClientOnly: true, EmbeddingPartialLattice: true } },
+    })
+
+  it('offers another search, with the tries of each method', () => {
+    const text = outcome(false, { a: [20], b: [20] }).text()
+    expect(text).toContain('Search again')
+    expect(text).toContain('Seed 5, 16 tries of each method, at most')
+    expect(text).toContain('What stood in the way')
+  })
+
+  it('offers none where it is proved that there is no embedding, nor tells of a state that is not there', () => {
+    const text = outcome(true, {}).text()
+    expect(text).not.toContain('Search again')
+    expect(text).not.toContain('Another try')
+    expect(text).not.toContain('What stood in the way')
+    expect(text).toContain('A larger machine leaves more room.')
   })
 })
 
