@@ -1,6 +1,7 @@
 import type { Page } from '#shared/schemas/common'
-import type { CalibrationSaved, MachineItem, MachineView } from '#shared/schemas/machines'
+import type { CalibrationSaved, MachineCapacity, MachineItem, MachineView } from '#shared/schemas/machines'
 import { unpackArrays } from '#shared/packed-arrays'
+import type { ApiFailure } from './useApi'
 
 export const useMachines = () => useResource<Page<MachineItem>>('/api/machines?limit=200')
 
@@ -35,6 +36,34 @@ export function useLattice(machineId: MaybeRefOrGetter<string>, calibration: May
   }
   onMounted(() => watch([() => toValue(machineId), () => toValue(calibration)], load, { immediate: true }))
   return { lattice, failed, load }
+}
+
+/** What the machine holds at a calibration, worked out on request; forgotten when either changes. */
+export function useMachineCapacity(
+  machineId: MaybeRefOrGetter<string>,
+  calibration: MaybeRefOrGetter<number | undefined>,
+) {
+  const capacity = shallowRef<MachineCapacity | null>(null)
+  const failure = shallowRef<ApiFailure | null>(null)
+  const busy = ref(false)
+  const url = computed(() => `/api/machines/${toValue(machineId)}/capacity?calibration=${toValue(calibration)}`)
+  watch(url, () => {
+    capacity.value = failure.value = null
+    busy.value = false
+  })
+  const workOut = async (): Promise<void> => {
+    const asked = url.value
+    busy.value = true
+    failure.value = null
+    try {
+      const answer = await $fetch<MachineCapacity>(asked)
+      if (asked === url.value) capacity.value = answer
+    } catch (error) {
+      if (asked === url.value) failure.value = failureOf(error)
+    }
+    if (asked === url.value) busy.value = false
+  }
+  return { capacity, failure, busy, workOut }
 }
 
 /** Adding and recalibrating machines. */

@@ -12,4 +12,9 @@ export class Recent<T> {
     if (this.kept.size > this.size) this.kept.delete(this.kept.keys().next().value!)
     return value
   }
+
+  /** Forgets the value of the key, unless it is another one by now. */
+  drop(key: string, value: T): void {
+    if (this.kept.get(key) === value) this.kept.delete(key)
+  }
 }

@@ -1,6 +1,7 @@
 import type { Control } from '../../shared/engine/control'
 import { advise } from './tasks/advise'
 import { checkEmbedding } from './tasks/check-embedding'
+import { completeCapacity } from './tasks/complete-capacity'
 import { energies } from './tasks/energies'
 import { planSearch } from './tasks/plan-search'
 import { proveInfeasible } from './tasks/prove-infeasible'
@@ -16,6 +17,7 @@ import { writeSamplesFile } from './tasks/write-samples'
 export const TASKS = {
   advise,
   checkEmbedding,
+  completeCapacity,
   energies,
   planSearch,
   proveInfeasible,

@@ -145,3 +145,20 @@ export interface MachineGraph {
   edges: [number, number][]
   positions: [number, number][]
 }
+
+/** What a machine holds at a calibration, whatever the problem. */
+export interface MachineCapacity {
+  calibration: number
+  /** Proved upper bound: no complete graph of more than treewidth + 1 variables can be embedded. */
+  treewidth: number
+  /** The largest complete graph that the templates placed; null where none was. */
+  complete: {
+    order: number
+    /** Qubits of the longest chain. */
+    chainLength: number
+  } | null
+  seed: number
+  tries: number
+  /** The time was over before all tries: more may be possible, and without `complete` nothing is known. */
+  stoppedEarly: boolean
+}
