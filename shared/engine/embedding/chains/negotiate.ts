@@ -8,9 +8,9 @@ import type { ChainState } from './state'
 export const NEGOTIATION = {
   /** Factor on a qubit's cost for each chain that has it, in the first pass, and its growth from pass to pass. */
   penalty: 3,
-  penaltyGrowth: 1.07,
+  penaltyGrowth: 1.2,
   /** Passes in which each tree is grown from one partner only; later ones take the cheapest of a few. */
-  roughPasses: 3,
+  roughPasses: 8,
   starts: 3,
   /** Beyond it chains only make detours. */
   penaltyMost: 10,
@@ -24,8 +24,8 @@ export const NEGOTIATION = {
   quietShare: 8,
   /** Reroutes without less overlap, as a multiple of the variables, before it is given up. */
   patience: 20,
-  /** Largest random part of a cost, in 64ths; decides between equal ways only. */
-  tieBreak: 4,
+  /** How many random parts a cost may have, in 64ths; they decide between equal ways only. */
+  tieBreaks: 4,
 }
 
 /** Variables between two looks at the clock. */
@@ -43,9 +43,9 @@ export function shuffle(items: Int32Array, random: Random): void {
 
 /** Costs for the coming pass: history, and fresh tie-breaks. */
 export function refreshCosts(state: ChainState, random: Random, penalty: number): void {
-  const { base, history, fenced } = state
+  const { base, history } = state
   for (let q = 0; q < base.length; q++)
-    base[q] = fenced[q] ? Infinity : Math.floor(COST_UNIT * (1 + history[q]!)) + random.below(NEGOTIATION.tieBreak)
+    base[q] = Math.floor(COST_UNIT * (1 + history[q]!)) + random.below(NEGOTIATION.tieBreaks)
   state.setPenalty(penalty)
 }
 

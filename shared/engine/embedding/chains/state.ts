@@ -197,15 +197,28 @@ export class ChainState {
 
   /** Sets what each further chain multiplies a qubit's cost by; infinite puts used qubits out of reach. */
   setPenalty(penalty: number): void {
-    for (let use = 0; use <= LARGEST_EXPONENT; use++) this.factor[use] = use === 0 ? 1 : penalty ** use
+    this.setFactors(penalty)
     for (let q = 0; q < this.qubits; q++) this.setCost(q)
   }
 
-  /** To be called for every qubit whose base or use has changed. */
+  /** As `setPenalty`, but only the qubits of the given chains get their new cost now. */
+  setPenaltyOf(chains: Int32Array, count: number, penalty: number): void {
+    this.setFactors(penalty)
+    for (let i = 0; i < count; i++)
+      for (let record = this.head[chains[i]!]!; record >= 0; record = this.recordNext[record]!)
+        this.setCost(this.recordQubit[record]!)
+  }
+
+  private setFactors(penalty: number): void {
+    for (let use = 0; use <= LARGEST_EXPONENT; use++) this.factor[use] = use === 0 ? 1 : penalty ** use
+  }
+
+  /** To be called for every qubit whose base, fence or use has changed. */
   setCost(qubit: number): void {
     const use = this.use[qubit]!
     const cost = this.base[qubit]! * this.factor[use < LARGEST_EXPONENT ? use : LARGEST_EXPONENT]!
-    this.nodes[2 * qubit] = cost === Infinity ? FAR : Math.min(LARGEST_COST, Math.floor(cost))
+    const closed = this.fenced[qubit] === 1 || cost === Infinity
+    this.nodes[2 * qubit] = closed ? FAR : Math.min(LARGEST_COST, Math.floor(cost))
   }
 
   /** Adds a qubit that is not in the chain. There must be a free record. */
