@@ -41,7 +41,7 @@ function setFloat(array: usize, index: i32, value: f64): void {
   store<f64>(array + ((<usize>index) << 3), value)
 }
 
-/** Takes the table of sizes and addresses that `growthTable` in chains/kernel.ts writes. */
+/** Takes the table of sizes and addresses that `ChainState` in chains/state.ts writes. */
 export function bind(table: usize): void {
   words = int(table, 0)
   heapLength = int(table, 1)

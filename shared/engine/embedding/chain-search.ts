@@ -9,7 +9,10 @@ import type { Attempt, PartialEmbedding } from './method'
 import { positionsOf } from './positions'
 import type { EmbeddingTask } from './task'
 
-/** How each round of a try goes about it: more of the machine and more work on the placement each time. */
+/**
+ * How each round of a try goes about it: first on as much of the machine as the problem may need, with little work on
+ * the placement; then with more room and more work, in turns.
+ */
 const ROUNDS = [
   { effort: 0.3, slack: 1 },
   { effort: 1, slack: 1.5 },

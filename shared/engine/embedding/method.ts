@@ -12,7 +12,7 @@ import type { EmbeddingTask } from './task'
  */
 export type Method = 'search' | 'lines' | 'template' | 'repair' | 'shorten'
 
-/** The state with least overlap when no embedding was found. */
+/** The closest state when no embedding was found: the one with least overlap and fewest interactions without a coupler. */
 export interface PartialEmbedding {
   /** Chains that may share qubits; empty for a variable that was not placed. */
   readonly chains: Embedding

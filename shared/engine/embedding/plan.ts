@@ -20,7 +20,7 @@ export const PLAN = {
   completeFromDensity: 0.9,
 } as const
 
-/** Whether the machine is made of crossing segments, or of points in a king's graph, on which constructions are known. */
+/** Whether the machine is made of segments rather than points. */
 function hasLines({ segments }: EmbeddingTask): boolean {
   if (!segments) return false
   for (let k = 0; k < segments.length; k += 4)

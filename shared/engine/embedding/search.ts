@@ -13,7 +13,7 @@ import type { TryResult, TrySettings } from './tries'
 export interface SearchOptions extends TrySettings {
   /** `auto` races the methods that fit the problem and the machine. */
   readonly method: Method | 'auto'
-  /** Independent tries, at least 1; the best embedding of all is kept. */
+  /** Independent tries, at least 1, of each method where `auto` races several; the best embedding of all is kept. */
   readonly tries: number
   readonly objective: Objective
   readonly target: Target
