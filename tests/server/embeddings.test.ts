@@ -287,6 +287,9 @@ it('lists embeddings with how they were made and what they use', async () => {
   const { problemId, machineId } = await triangle()
   const { view } = await embedded({ problemId, machineId, seed: 5, tries: 2, objective: 'total qubits' })
   const [made, imported] = (await problemView(test.app, test.actor, problemId)).embeddings
+  // As many tries of each method that fits.
+  expect(view.triesPlanned! % 2).toBe(0)
+  expect(view.triesPlanned).toBeGreaterThanOrEqual(view.tryNumber!)
   expect(made).toMatchObject({
     id: view.id,
     machineId,

@@ -28,6 +28,7 @@ const found: Partial<EmbeddingView> = {
   stats: {
     chainLength: { min: 1, mean: 2, max: 3 },
     qubitsUsed: 10,
+    couplersUsed: 17,
     chainCouplers: 5,
     interactionCouplers: 12,
     unusedShare: 0.9,
