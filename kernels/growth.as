@@ -7,7 +7,7 @@ const FEW_PARTNERS = 6
 const FAR = (1 << 30) - 1
 
 let words: i32 = 0
-let heapLength: i32 = 0
+let heapRoom: i32 = 0
 let offsets: usize = 0
 let targets: usize = 0
 let partnerOffsets: usize = 0
@@ -44,7 +44,7 @@ function setFloat(array: usize, index: i32, value: f64): void {
 /** Takes the table of sizes and addresses that `ChainState` in chains/state.ts writes. */
 export function bind(table: usize): void {
   words = int(table, 0)
-  heapLength = int(table, 1)
+  heapRoom = int(table, 1)
   offsets = int(table, 2)
   targets = int(table, 3)
   partnerOffsets = int(table, 4)
@@ -207,7 +207,7 @@ export function grow(variable: i32, start: i32, placed: i32, ceiling: i32, touch
     }
     const begin = int(offsets, q)
     const end = int(offsets, q + 1)
-    if (size + end - begin + treeSize > heapLength) size = dropStale(size)
+    if (size + end - begin > heapRoom) size = dropStale(size)
     for (let p = begin; p < end; p++) {
       const r = int(targets, p)
       const there = here + int(nodes, 2 * r)

@@ -3,7 +3,7 @@ import { negotiate } from './chains/negotiate'
 import { Seeds } from './chains/seeds'
 import { shortenChains } from './chains/shorten'
 import { ChainState } from './chains/state'
-import { packState, partialOf, placeIsolated } from './chains/outcome'
+import { lacks, packState, partialOf, placeIsolated } from './chains/outcome'
 import { degreeOf } from '../graph/graph'
 import type { Attempt, PartialEmbedding } from './method'
 import { positionsOf } from './positions'
@@ -20,6 +20,22 @@ const ROUNDS = [
   { effort: 1, slack: Infinity },
   { effort: 4, slack: 2 },
 ] as const
+
+/**
+ * Shortens the chains to leave free qubits for variables without interactions, which have found too few. Returns
+ * whether all have one then.
+ */
+function makeRoom(
+  state: ChainState,
+  router: Router,
+  variables: Int32Array,
+  { problem, usable }: EmbeddingTask,
+  attempt: Attempt,
+): boolean {
+  for (let v = 0; v < problem.order; v++) if (degreeOf(problem, v) === 0) state.drop(v)
+  shortenChains(state, router, variables, { ...attempt, objective: 'total qubits' }, () => {})
+  return placeIsolated(state, usable)
+}
 
 /**
  * One try of placing variables on the machine's plane, routing their chains under negotiated congestion, and shortening
@@ -39,7 +55,7 @@ export function searchChains(task: EmbeddingTask, attempt: Attempt): PartialEmbe
     seeds.sow(state, random, effort, slack, () => watch.shouldStop(state.overlap))
     watch.phase = 'rerouting'
     const valid = negotiate(state, router, variables, random, watch)
-    if (valid && placeIsolated(state, usable)) {
+    if (valid && (placeIsolated(state, usable) || makeRoom(state, router, variables, task, attempt))) {
       const give = (): void => attempt.offer(packState(state))
       give()
       shortenChains(state, router, variables, attempt, give)
@@ -47,7 +63,7 @@ export function searchChains(task: EmbeddingTask, attempt: Attempt): PartialEmbe
     }
     placeIsolated(state, usable)
     const partial = partialOf(state, problem)
-    if (!closest || partial.overlap + partial.unmet.length < closest.overlap + closest.unmet.length) closest = partial
+    if (!closest || lacks(partial) < lacks(closest)) closest = partial
     if (watch.shouldStop(state.overlap)) break
   }
   return closest

@@ -1,7 +1,7 @@
 import { degreeOf } from '../graph/graph'
 import type { KernelChoice } from './chains/kernel'
-import { fenceAllBut, isMet, negotiate, unmetPartners } from './chains/negotiate'
-import { packState, partialOf, placeIsolated } from './chains/outcome'
+import { fenceAllBut, negotiate, unmetPartners } from './chains/negotiate'
+import { lacks, packState, partialOf, placeIsolated } from './chains/outcome'
 import { Router } from './chains/router'
 import { shortenChains } from './chains/shorten'
 import { ChainState } from './chains/state'
@@ -63,7 +63,9 @@ function largestPiece({ offsets, targets }: ChainState, qubits: readonly number[
 /** Chains as they stand on the machine now: broken qubits and what they cut off are gone, no qubit has two chains. */
 function standing(task: EmbeddingTask, chains: Embedding, kernel: KernelChoice): ChainState {
   const state = new ChainState(task.problem, task.machine, task.usable, kernel)
-  for (let v = 0; v < task.problem.order; v++) {
+  const { frozen } = startOf(task)
+  const frozenFirst = Array.from(frozen, (_, v) => v).sort((a, b) => frozen[b]! - frozen[a]! || a - b)
+  for (const v of frozenFirst) {
     const left = [...chainOf(chains, v)].filter((q) => task.usable[q] === 1 && state.use[q] === 0)
     for (const q of largestPiece(state, left)) state.add(v, q)
   }
@@ -97,10 +99,9 @@ function damaged(state: ChainState, chains: Embedding, frozen: Uint8Array): Uint
   for (let v = 0; v < state.variables; v++)
     if (!frozen[v] && (state.length[v]! < chainOf(chains, v).length || state.length[v] === 0)) chosen[v] = 1
   for (let v = 0; v < state.variables; v++) {
-    if (frozen[v] || chosen[v] || isMet(state, v)) continue
-    const { partners, partnerOffsets } = state
-    const covered = partners.subarray(partnerOffsets[v]!, partnerOffsets[v + 1]!).some((u) => chosen[u] === 1)
-    if (!covered) chosen[v] = 1
+    if (frozen[v] || chosen[v]) continue
+    const first = state.partnerOffsets[v]!
+    if (unmetPartners(state, v).some((k) => !chosen[state.partners[first + k]!])) chosen[v] = 1
   }
   return chosen
 }
@@ -141,13 +142,14 @@ export function repairStart(task: EmbeddingTask, attempt: Attempt): PartialEmbed
     const connected = variables.filter((v) => state.partnersOf(v) > 0)
     const router = new Router(state, random)
     const valid = negotiate(state, router, connected, random, watch)
-    if (placeIsolated(state, task.usable) && valid) {
+    if (placeIsolated(state, task.usable) && valid && lacks(partialOf(state, task.problem)) === 0) {
       const give = (): void => offer(packState(state))
       give()
       shortenChains(state, router, connected, attempt, give)
       return null
     }
-    closest = partialOf(state, task.problem)
+    const partial = partialOf(state, task.problem)
+    if (!closest || lacks(partial) < lacks(closest)) closest = partial
     if (watch.shouldStop(state.overlap)) return closest
     widen(intact, chosen, frozen)
   }

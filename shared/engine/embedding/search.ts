@@ -44,6 +44,9 @@ export interface SearchResult {
   readonly firstSeconds: number | null
 }
 
+/** What keeps the tries of a plan from being done. */
+type EarlyEnd = Exclude<StopReason, 'target reached'>
+
 /** Throws for options out of range, and for arrays that do not belong together. */
 export function checkSearch(
   { problem, machine, usable, segments, start }: EmbeddingTask,
@@ -77,12 +80,14 @@ function closer(a: TryResult, b: TryResult, objective: Objective): number {
  * The outcome of a search from the results of its tries, in any order: the best embedding, else the closest state; of
  * equals the one of the lowest try. Tries after the first that reached the target do not count, so that the outcome is
  * the same whether they ran at the same time or never.
+ * @param ended what kept further tries from beginning; null when nothing did
  */
 export function outcomeOf(
   results: readonly TryResult[],
   planned: number,
   options: SearchOptions,
   seconds: number,
+  ended: EarlyEnd | null = null,
 ): SearchResult {
   const inOrder = [...results].sort((a, b) => a.tryNumber - b.tryNumber)
   const reached = inOrder.findIndex(({ stopped }) => stopped === 'target reached')
@@ -90,11 +95,7 @@ export function outcomeOf(
   let best: TryResult | null = null
   for (const result of counted) if (!best || closer(result, best, options.objective) < 0) best = result
   const stops = counted.map(({ stopped }) => stopped)
-  const cut: StopReason | null = stops.includes('cancelled')
-    ? 'cancelled'
-    : stops.includes('timed out')
-      ? 'timed out'
-      : null
+  const cut = (['cancelled', 'timed out'] as const).find((reason) => stops.includes(reason)) ?? ended
   const first = counted.reduce((least, { firstSeconds }) => Math.min(least, firstSeconds ?? Infinity), Infinity)
   const shows = best && (best.embedding || best.partial)
   return {
@@ -130,15 +131,18 @@ export function findEmbedding(
   const began = control.now()
   const seconds = (): number => control.now() - began
   const results: TryResult[] = []
+  let ended: EarlyEnd | null = null
   const feasible = !provedInfeasible(task)
   const plan = feasible ? planTries(task, settings) : []
   for (const planned of plan) {
     const left = settings.timeLimitSeconds - seconds()
-    if (left <= 0 || control.cancelled()) break
+    if (control.cancelled()) ended = 'cancelled'
+    else if (left <= 0) ended = 'timed out'
+    if (ended) break
     const before = seconds()
     const result = runTry(task, planned, { ...settings, timeLimitSeconds: left }, control)
     results.push({ ...result, firstSeconds: result.firstSeconds === null ? null : before + result.firstSeconds })
     if (result.stopped) break
   }
-  return outcomeOf(results, plan.length, settings, seconds())
+  return outcomeOf(results, plan.length, settings, seconds(), ended)
 }

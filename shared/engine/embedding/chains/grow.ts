@@ -195,7 +195,7 @@ export function growTree(state: ChainState, variable: number, start: number, pla
         continue
       }
     }
-    if (size + offsets[q + 1]! - offsets[q]! + treeSize > heap.length) size = dropStale(state, size)
+    if (size + offsets[q + 1]! - offsets[q]! > state.heapRoom) size = dropStale(state, size)
     for (let p = offsets[q]!; p < offsets[q + 1]!; p++) {
       const r = targets[p]!
       const there = (here + nodes[2 * r]!) | 0

@@ -20,7 +20,7 @@ export const SHORTENING = {
   ballPasses: 8,
   ballPenalty: 1.5,
   ballGrowth: 1.6,
-  /** Balls between two fresh draws of the tie-breaks. */
+  /** Balls between two fresh draws of the tie-breaks, when what has been gained is offered too. */
   ballsPerRefresh: 32,
   /** Balls without a gain, as a multiple of the variables, before shortening ends. */
   patience: 4,
@@ -94,8 +94,13 @@ export function shortenChains(
   for (const v of variables) movable[v] = 1
   const ball = new Ball(state, movable)
   let idle = 0
+  let gained = false
   for (let round = 0; idle < SHORTENING.patience * variables.length && !watch.shouldStop(0); round++) {
-    if (round % SHORTENING.ballsPerRefresh === 0) refreshCosts(state, random, SHORTENING.ballPenalty)
+    if (round % SHORTENING.ballsPerRefresh === 0) {
+      refreshCosts(state, random, SHORTENING.ballPenalty)
+      if (gained) offer()
+      gained = false
+    }
     const centre = variables[random.below(variables.length)]!
     const most = SHORTENING.smallestBall + random.below(span)
     if (round % 2 === 0) ball.gatherPartners(centre, most, random)
@@ -106,6 +111,7 @@ export function shortenChains(
     const after = ball.burden(exponent)
     ball.end(whole && after <= before)
     idle = whole && after < before ? 0 : idle + 1
+    gained ||= idle === 0
   }
   offer()
 }

@@ -71,6 +71,8 @@ export class ChainState {
   readonly labelled: Int32Array
   /** 4-ary heap of keys distance·2¹⁷ + qubit; stale keys are skipped when they come up. */
   readonly heap: Float64Array
+  /** Keys from which stale ones are dropped: there is room for a tree beyond. */
+  readonly heapRoom: number
   /** touch[q·words + w] holds a bit for each partner whose chain is beside q, where touchedAt[q] = touchNow. */
   readonly touch: Int32Array
   readonly touchedAt: Int32Array
@@ -143,6 +145,7 @@ export class ChainState {
       result: this.result,
     } = arrays.ints)
     ;({ heap: this.heap } = arrays.floats)
+    this.heapRoom = this.heap.length - qubits
     this.offsets.set(neighbours.offsets)
     this.targets.set(neighbours.targets)
     this.partnerOffsets.set(problem.offsets)
@@ -174,7 +177,7 @@ export class ChainState {
       ...[offsets, targets, partnerOffsets, partners, head, recordQubit, recordNext, nodes],
       ...[parent, labelled, heap, touch, touchedAt, missing, tree, result],
     ]
-    table.set([this.words, heap.length, ...growth.map(({ byteOffset }) => byteOffset)])
+    table.set([this.words, this.heapRoom, ...growth.map(({ byteOffset }) => byteOffset)])
     this.kernel.bind(table.byteOffset)
   }
 

@@ -118,3 +118,49 @@ describe('kernels', () => {
     expect(assembly.embedding).toEqual(plain.embedding)
   })
 })
+
+describe('corners', () => {
+  it('repairs an interaction between two chains that both lie beside damaged ones', () => {
+    const path = (n: number) => graphFromEdges(n, Array.from({ length: n - 1 }, (_, i) => [i, i + 1]).flat())
+    const start = { chains: packChains([[], [2], [5], []]), frozen: new Uint8Array(4) }
+    const result = run({ ...taskOf(path(4), path(10)), start }, { method: 'repair', tries: 1 })
+    expect(verifyEmbedding(path(4), path(10), new Uint8Array(10).fill(1), result.embedding!)).toEqual([])
+  })
+
+  it('gives a qubit that two chains of the start share to the frozen one', () => {
+    const path = graphFromEdges(6, [0, 1, 1, 2, 2, 3, 3, 4, 4, 5])
+    const pair = graphFromEdges(2, [0, 1])
+    const start = { chains: packChains([[2, 3], [3]]), frozen: Uint8Array.from([0, 1]) }
+    const result = run({ ...taskOf(pair, path), start }, { method: 'repair', tries: 1 })
+    expect([...chainOf(result.embedding!, 1)]).toEqual([3])
+  })
+
+  it('makes room for variables without interactions by shortening', () => {
+    const small = chimeraGraph(4, 4, 4)
+    const core = regularGraph(16, 3, createRandom(5))
+    const total = qualityOf(run(taskOf(core, small), { method: 'search', tries: 1 }).embedding!).total
+    const wide = graphFromEdges(16 + small.order - total - 4, core.ends)
+    expect(run(taskOf(wide, small), { method: 'search', tries: 1 }).status).toBe('found')
+  })
+
+  it('says what ended it, also before a try has begun', () => {
+    const cancelled = findEmbedding(task, {}, { ...control, cancelled: () => true })
+    expect(cancelled).toMatchObject({ status: 'cancelled', stoppedEarly: true })
+  })
+
+  it('stops as soon as the target is reached', () => {
+    const start = { chains: first, frozen: none(task) }
+    const all = run({ ...task, start }, { method: 'shorten', tries: 1, objective: 'total qubits' })
+    const totalQubits = qualityOf(all.embedding!).total + 4
+    let looks = 0
+    const counting = { ...control, cancelled: () => (looks++, false) }
+    const target = { longestChain: null, totalQubits }
+    const options = { method: 'shorten', tries: 1, objective: 'total qubits' } as const
+    findEmbedding({ ...task, start }, options, counting)
+    const full = looks
+    looks = 0
+    const reached = findEmbedding({ ...task, start }, { ...options, target }, counting)
+    expect(qualityOf(reached.embedding!).total).toBeLessThanOrEqual(totalQubits)
+    expect(looks).toBeLessThan(full)
+  })
+})
