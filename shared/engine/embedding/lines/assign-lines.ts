@@ -12,26 +12,34 @@ import { isWhole, lacks, mendOnce } from './repair'
 import type { Mended } from './repair'
 
 const DEFAULTS = {
-  /** Moves a variable of the first anneal and of the one for quality. */
-  firstMoves: 6000,
+  /** Moves for each variable: of a first, quick anneal, of a patient one where that does not do, and of that for quality. */
+  quickMoves: 2500,
+  patientMoves: 5500,
   qualityMoves: 6000,
-  /** Largest overuse that mending is tried at, and how often. */
+  /** Largest overuse that mending is tried at, and how often when one thing is lacking; the less often the more are. */
   mendablePairs: 60,
   mendings: 400,
 }
 
 /** From anywhere to intervals that hardly overlap: length counts little, overuse more and more. */
-const firstSchedule = (moves: number, lines: number): Schedule => ({
+const quickSchedule = (moves: number, lines: number): Schedule => ({
   moves,
-  ramp: 0.85,
+  ramp: 1,
   hottest: 0.8,
   coldest: 0.2,
-  firstPairWeight: 0.5,
-  lastPairWeight: 2,
+  firstPairWeight: 0.25,
+  lastPairWeight: 1.5,
   lengthWeight: 0.1,
   firstRadius: lines,
   lastRadius: 3,
   endsWhenValid: true,
+})
+
+/** The same more slowly, beginning so late in it that what the quick anneal has put in order stays so. */
+const patientSchedule = (moves: number, lines: number): Schedule => ({
+  ...quickSchedule(moves, lines),
+  hottest: 0.57,
+  firstPairWeight: 0.55,
 })
 
 /** From there to shorter intervals that do not overlap. */
@@ -57,7 +65,7 @@ function mend(assignment: Assignment, task: EmbeddingTask, coin: Coin, watch: Wa
   watch.phase = 'repairing'
   let best = mendOnce(assignment, task.machine, task.usable, coin)
   if (assignment.pairs > DEFAULTS.mendablePairs) return best
-  for (let i = 1; i < DEFAULTS.mendings && !isWhole(best) && !watch.shouldStop(best.unmet.length); i++) {
+  for (let i = 1; i * lacks(best) < DEFAULTS.mendings && !isWhole(best) && !watch.shouldStop(lacks(best)); i++) {
     const mended = mendOnce(assignment, task.machine, task.usable, coin)
     if (lacks(mended) < lacks(best)) best = mended
   }
@@ -76,21 +84,19 @@ export const assignLines: Runner = (task, attempt) => {
   if (!crossings || sizeOf(problem) === 0) return null
   const coin = new Coin(random)
   const assignment = new Assignment(problem, crossings)
-  const mendAndOffer = (): Mended => {
+  const lines = Math.max(...crossings.counts)
+  const annealAndMend = (schedule: Schedule, from: number, to: number): Mended => {
+    watch.phase = 'assigning lines'
+    anneal(assignment, coin, schedule, watch, [from, to])
     const mended = mend(assignment, task, coin, watch)
     if (isWhole(mended)) offer(mended.chains.toEmbedding())
     return mended
   }
-  watch.phase = 'assigning lines'
   scatter(assignment, coin)
-  const first = firstSchedule(DEFAULTS.firstMoves * problem.order, Math.max(...crossings.counts))
-  anneal(assignment, coin, first, watch, [0, 0.4])
-  const valid = mendAndOffer()
+  let valid = annealAndMend(quickSchedule(DEFAULTS.quickMoves * problem.order, lines), 0, 0.2)
+  if (!isWhole(valid)) valid = annealAndMend(patientSchedule(DEFAULTS.patientMoves * problem.order, lines), 0.2, 0.5)
   if (!isWhole(valid)) return partialOf(valid)
-  watch.phase = 'assigning lines'
-  const quality = qualitySchedule(DEFAULTS.qualityMoves * problem.order)
-  anneal(assignment, coin, quality, watch, [0.4, 0.8])
-  const better = mendAndOffer()
+  const better = annealAndMend(qualitySchedule(DEFAULTS.qualityMoves * problem.order), 0.5, 0.8)
   const { chains } = isWhole(better) ? better : valid
   shortenEmbedding(task, chains.toEmbedding(), new Uint8Array(problem.order), attempt)
   return null
