@@ -15,7 +15,9 @@ const DEFAULTS = {
   /** Moves for each variable: of a first, quick anneal, of a patient one where that does not do, and of that for quality. */
   quickMoves: 2500,
   patientMoves: 5500,
-  qualityMoves: 6000,
+  qualityMoves: 7000,
+  /** Largest share of the working qubits in intervals at which a machine is roomy. */
+  roomyShare: 0.65,
   /** Largest overuse that mending is tried at, and how often when one thing is lacking; the less often the more are. */
   mendablePairs: 60,
   mendings: 400,
@@ -42,17 +44,20 @@ const patientSchedule = (moves: number, lines: number): Schedule => ({
   firstPairWeight: 0.55,
 })
 
-/** From there to shorter intervals that do not overlap. */
-const qualitySchedule = (moves: number): Schedule => ({
+/**
+ * From there to shorter intervals that do not overlap. Where there is room the anneal may begin by letting them overlap
+ * more, and so rearrange them all; in a full machine they would not come apart again.
+ */
+const qualitySchedule = (moves: number, lines: number, isRoomy: boolean): Schedule => ({
   moves,
   ramp: 1,
-  hottest: 0.8,
+  hottest: isRoomy ? 1.5 : 1,
   coldest: 0.12,
-  firstPairWeight: 2,
+  firstPairWeight: isRoomy ? 0.6 : 1.5,
   lastPairWeight: 6,
-  lengthWeight: 0.3,
-  firstRadius: 20,
-  lastRadius: 20,
+  lengthWeight: 0.5,
+  firstRadius: lines,
+  lastRadius: 5,
   endsWhenValid: false,
 })
 
@@ -96,7 +101,8 @@ export const assignLines: Runner = (task, attempt) => {
   let valid = annealAndMend(quickSchedule(DEFAULTS.quickMoves * problem.order, lines), 0, 0.2)
   if (!isWhole(valid)) valid = annealAndMend(patientSchedule(DEFAULTS.patientMoves * problem.order, lines), 0.2, 0.5)
   if (!isWhole(valid)) return partialOf(valid)
-  const better = annealAndMend(qualitySchedule(DEFAULTS.qualityMoves * problem.order), 0.5, 0.8)
+  const isRoomy = assignment.length <= DEFAULTS.roomyShare * usable.reduce((sum, works) => sum + works, 0)
+  const better = annealAndMend(qualitySchedule(DEFAULTS.qualityMoves * problem.order, lines, isRoomy), 0.5, 0.8)
   const { chains } = isWhole(better) ? better : valid
   shortenEmbedding(task, chains.toEmbedding(), new Uint8Array(problem.order), attempt)
   return null
