@@ -10,7 +10,8 @@ export const METHOD_CHOICES = [
   {
     value: 'search',
     name: 'Search',
-    purpose: 'For sparse problems: chains are placed one by one and rerouted until no qubit is wanted twice.',
+    purpose:
+      'For sparse problems: variables are placed near those they interact with, and chains rerouted until no qubit is wanted twice.',
   },
   {
     value: 'lines',
