@@ -71,3 +71,13 @@ export function createRandom(seed: number, stream = 0): Random {
   }
   return { uint32, float, below, normal }
 }
+
+/** Shuffles in place (Fisher & Yates). */
+export function shuffle(items: Int32Array | number[], random: Pick<Random, 'below'>): void {
+  for (let i = items.length - 1; i > 0; i--) {
+    const j = random.below(i + 1)
+    const moved = items[i]!
+    items[i] = items[j]!
+    items[j] = moved
+  }
+}

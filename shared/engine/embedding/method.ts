@@ -26,6 +26,9 @@ export interface PartialEmbedding {
   readonly unplaced: number
 }
 
+/** How far a state is from an embedding: overlap, interactions without a coupler, variables without a qubit. */
+export const lacks = ({ overlap, unmet, unplaced }: PartialEmbedding): number => overlap + unmet.length + unplaced
+
 /** What one try of a method is given besides the task. */
 export interface Attempt {
   readonly random: Random

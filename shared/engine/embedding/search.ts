@@ -1,6 +1,7 @@
 import type { Control } from '../control'
 import type { Embedding } from './embedding'
 import { provedInfeasible } from './feasibility'
+import { lacks } from './method'
 import type { Method, PartialEmbedding } from './method'
 import type { Objective, Target } from './objective'
 import { compareQuality } from './objective'
@@ -68,12 +69,10 @@ export function checkSearch(
     throw new RangeError(`${options.method} needs an embedding to begin from`)
 }
 
-const overlapOf = ({ overlap, unmet, unplaced }: PartialEmbedding): number => overlap + unmet.length + unplaced
-
 function closer(a: TryResult, b: TryResult, objective: Objective): number {
   if (a.quality && b.quality) return compareQuality(a.quality, b.quality, objective)
   if (a.quality || b.quality) return a.quality ? -1 : 1
-  return (a.partial ? overlapOf(a.partial) : Infinity) - (b.partial ? overlapOf(b.partial) : Infinity) || 0
+  return (a.partial ? lacks(a.partial) : Infinity) - (b.partial ? lacks(b.partial) : Infinity) || 0
 }
 
 /**

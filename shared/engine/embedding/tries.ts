@@ -15,8 +15,6 @@ import { repairStart, shortenStart } from './rework'
 import type { EmbeddingTask } from './task'
 import { verifyEmbedding } from './verify'
 
-export type { PlannedTry } from './plan'
-
 export interface TrySettings {
   /** Any non-negative safe integer. */
   readonly seed: number

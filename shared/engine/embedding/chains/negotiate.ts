@@ -1,3 +1,4 @@
+import { shuffle } from '../../random'
 import type { Random } from '../../random'
 import type { Watch } from '../progress'
 import { markTouches } from './grow'
@@ -30,16 +31,6 @@ export const NEGOTIATION = {
 
 /** Variables between two looks at the clock. */
 const VARIABLES_PER_LOOK = 16
-
-/** Shuffles in place (Fisher & Yates). */
-export function shuffle(items: Int32Array, random: Random): void {
-  for (let i = items.length - 1; i > 0; i--) {
-    const j = random.below(i + 1)
-    const moved = items[i]!
-    items[i] = items[j]!
-    items[j] = moved
-  }
-}
 
 /** Costs for the coming pass: history, and fresh tie-breaks. */
 export function refreshCosts(state: ChainState, random: Random, penalty: number): void {

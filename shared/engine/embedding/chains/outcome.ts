@@ -27,9 +27,6 @@ export function partialOf(state: ChainState, problem: Graph): PartialEmbedding {
   return { chains: packState(state), overlap, overlappedQubits, unmet: unmet.sort((a, b) => a - b), unplaced }
 }
 
-/** How far a state is from an embedding: overlap, interactions without a coupler, variables without a qubit. */
-export const lacks = ({ overlap, unmet, unplaced }: PartialEmbedding): number => overlap + unmet.length + unplaced
-
 /** Gives each variable without a chain a free usable qubit, as long as there are any. Returns whether all have one. */
 export function placeIsolated(state: ChainState, usable: Uint8Array): boolean {
   let q = 0

@@ -1,8 +1,9 @@
+import { shuffle } from '../../random'
 import type { Random } from '../../random'
 import type { Attempt } from '../method'
 import type { Watch } from '../progress'
 import { Ball } from './ball'
-import { isMet, refreshCosts, shuffle } from './negotiate'
+import { isMet, refreshCosts } from './negotiate'
 import type { Router } from './router'
 import type { ChainState } from './state'
 

@@ -1,4 +1,5 @@
 import type { Graph } from '../../graph/graph'
+import { shuffle } from '../../random'
 import type { Assignment } from './assignment'
 import { carve } from './carve'
 import type { Coin } from './coin'
@@ -16,15 +17,6 @@ function placeLeft(chains: Ownership): number {
     else unplaced++
   }
   return unplaced
-}
-
-function shuffle(items: number[], coin: Coin): void {
-  for (let i = items.length - 1; i > 0; i--) {
-    const j = coin.below(i + 1)
-    const moved = items[i]!
-    items[i] = items[j]!
-    items[j] = moved
-  }
 }
 
 /** Disjoint chains and what they still lack. */

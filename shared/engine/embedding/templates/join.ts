@@ -1,7 +1,7 @@
 import type { Random } from '../../random'
 import type { ChainSet } from './chain-set'
 import { FREE } from './chain-set'
-import { shuffle } from '../chains/negotiate'
+import { shuffle } from '../../random'
 
 /** Joins chains that should touch by paths of free qubits; holds the scratch of its breadth-first search. */
 export class Joiner {
