@@ -73,7 +73,7 @@ export function createRandom(seed: number, stream = 0): Random {
 }
 
 /** Shuffles in place (Fisher & Yates). */
-export function shuffle(items: Int32Array | number[], random: Pick<Random, 'below'>): void {
+export function shuffle(items: Int32Array | Uint32Array | number[], random: Pick<Random, 'below'>): void {
   for (let i = items.length - 1; i > 0; i--) {
     const j = random.below(i + 1)
     const moved = items[i]!

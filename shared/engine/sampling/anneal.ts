@@ -1,5 +1,5 @@
 import type { Control } from '../control'
-import { createRandom, STREAMS } from '../random'
+import { createRandom, shuffle, STREAMS } from '../random'
 import { createWalker, startWalker, sweep } from './metropolis'
 import type { Walker } from './metropolis'
 import { renumbered } from './physical-model'
@@ -61,12 +61,7 @@ export function annealSchedule(model: SamplerModel, options: AnnealOptions): Flo
 function shuffledOrder(n: number, seed: number): Uint32Array {
   const random = createRandom(seed, STREAMS.order)
   const order = Uint32Array.from({ length: n }, (_, i) => i)
-  for (let k = n - 1; k > 0; k--) {
-    const other = random.below(k + 1)
-    const spin = order[k]!
-    order[k] = order[other]!
-    order[other] = spin
-  }
+  shuffle(order, random)
   return order
 }
 
