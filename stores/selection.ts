@@ -1,17 +1,29 @@
 import { defineStore } from 'pinia'
 import { ref, shallowRef } from 'vue'
+import { rangeBetween } from '~/utils/lattice/range'
+import type { LatticeKind } from '~/utils/lattice/kinds'
 import type { Lens } from '~/utils/lattice/types'
 
 /**
- * Which chain is in focus, which are selected, and which lens is on: shared by the lattice, the ledger and the problem
- * graph, so that each follows the others. Holds variable indices only, never data of the chains.
+ * Which chain is in focus, which are selected, which lens is on and what of the lattice is hidden: shared by the lattice,
+ * the ledger and the problem graph, so that each follows the others. Holds variable indices only, never data of the
+ * chains.
+ *
+ * The focus is the one chain looked at closely; the selection is any number of chains. `choose` is what a plain click
+ * does, `toggle` a click with Ctrl or Cmd, `extendTo` one with Shift.
  */
 export const useSelectionStore = defineStore('selection', () => {
   const scope = ref<string | null>(null)
   const focused = ref<number | null>(null)
   const hovered = ref<number | null>(null)
   const selected = shallowRef<ReadonlySet<number>>(new Set())
+  /** Where a range begins: the variable last chosen or toggled. */
+  const anchor = ref<number | null>(null)
   const lens = ref<Lens>('occupancy')
+  /** Kinds of thing that the legend switched off. */
+  const hiddenKinds = shallowRef<ReadonlySet<LatticeKind>>(new Set())
+  /** Keys of the classes of chain that the legend switched off; see utils/lattice/kinds.ts. */
+  const hiddenClasses = shallowRef<ReadonlySet<string>>(new Set())
 
   /** Starts afresh when another embedding comes on the page; keeps everything when it is the same one. */
   function begin(nextScope: string) {
@@ -19,6 +31,7 @@ export const useSelectionStore = defineStore('selection', () => {
     scope.value = nextScope
     release()
     clearSelection()
+    showEverything()
     hovered.value = null
   }
 
@@ -34,11 +47,35 @@ export const useSelectionStore = defineStore('selection', () => {
     hovered.value = variable
   }
 
+  /** Brings the variable alone into focus and selection; once more lets go of both. */
+  function choose(variable: number) {
+    if (focused.value === variable) {
+      release()
+      clearSelection()
+      return
+    }
+    anchor.value = variable
+    selected.value = new Set([variable])
+    focus(variable)
+  }
+
   /** Adds the variable to the selection, or takes it out. */
   function toggle(variable: number) {
     const next = new Set(selected.value)
     if (!next.delete(variable)) next.add(variable)
+    anchor.value = variable
     selected.value = next
+  }
+
+  /**
+   * Selects from the anchor to the variable as they stand in `order`.
+   *
+   * @param isAdded keeps what was selected before
+   */
+  function extendTo(variable: number, order: readonly number[], isAdded = false) {
+    const range = rangeBetween(order, anchor.value, variable)
+    anchor.value ??= variable
+    selected.value = new Set(isAdded ? [...selected.value, ...range] : range)
   }
 
   function select(variables: Iterable<number>) {
@@ -46,6 +83,7 @@ export const useSelectionStore = defineStore('selection', () => {
   }
 
   function clearSelection() {
+    anchor.value = null
     selected.value = new Set()
   }
 
@@ -53,19 +91,44 @@ export const useSelectionStore = defineStore('selection', () => {
     lens.value = next
   }
 
+  function toggleKind(kind: LatticeKind) {
+    const next = new Set(hiddenKinds.value)
+    if (!next.delete(kind)) next.add(kind)
+    hiddenKinds.value = next
+  }
+
+  function toggleClass(key: string) {
+    const next = new Set(hiddenClasses.value)
+    if (!next.delete(key)) next.add(key)
+    hiddenClasses.value = next
+  }
+
+  function showEverything() {
+    hiddenKinds.value = new Set()
+    hiddenClasses.value = new Set()
+  }
+
   return {
     scope,
     focused,
     hovered,
     selected,
+    anchor,
     lens,
+    hiddenKinds,
+    hiddenClasses,
     begin,
     focus,
     release,
     hover,
+    choose,
     toggle,
+    extendTo,
     select,
     clearSelection,
     setLens,
+    toggleKind,
+    toggleClass,
+    showEverything,
   }
 })
