@@ -14,26 +14,37 @@ import type { Lens } from '~/utils/lattice/types'
  */
 export const useSelectionStore = defineStore('selection', () => {
   const scope = ref<string | null>(null)
-  const focused = ref<number | null>(null)
   const hovered = ref<number | null>(null)
-  const selected = shallowRef<ReadonlySet<number>>(new Set())
-  /** Where a range begins: the variable last chosen or toggled. */
-  const anchor = ref<number | null>(null)
   const lens = ref<Lens>('occupancy')
-  /** Kinds of thing that the legend switched off. */
-  const hiddenKinds = shallowRef<ReadonlySet<LatticeKind>>(new Set())
-  /** Keys of the classes of chain that the legend switched off; see utils/lattice/kinds.ts. */
-  const hiddenClasses = shallowRef<ReadonlySet<string>>(new Set())
+  const chosen = chosenVariables()
+  const hidden = hiddenThings()
 
   /** Starts afresh when another embedding comes on the page; keeps everything when it is the same one. */
   function begin(nextScope: string) {
     if (scope.value === nextScope) return
     scope.value = nextScope
-    release()
-    clearSelection()
-    showEverything()
+    chosen.release()
+    chosen.clearSelection()
+    hidden.showEverything()
     hovered.value = null
   }
+
+  function hover(variable: number | null) {
+    hovered.value = variable
+  }
+
+  function setLens(next: Lens) {
+    lens.value = next
+  }
+
+  return { scope, hovered, lens, begin, hover, setLens, ...chosen, ...hidden }
+})
+
+function chosenVariables() {
+  const focused = ref<number | null>(null)
+  const selected = shallowRef<ReadonlySet<number>>(new Set())
+  /** Where a range begins: the variable last chosen or toggled. */
+  const anchor = ref<number | null>(null)
 
   function focus(variable: number) {
     focused.value = variable
@@ -43,8 +54,13 @@ export const useSelectionStore = defineStore('selection', () => {
     focused.value = null
   }
 
-  function hover(variable: number | null) {
-    hovered.value = variable
+  function select(variables: Iterable<number>) {
+    selected.value = new Set(variables)
+  }
+
+  function clearSelection() {
+    anchor.value = null
+    selected.value = new Set()
   }
 
   /** Brings the variable alone into focus and selection; once more lets go of both. */
@@ -61,10 +77,8 @@ export const useSelectionStore = defineStore('selection', () => {
 
   /** Adds the variable to the selection, or takes it out. */
   function toggle(variable: number) {
-    const next = new Set(selected.value)
-    if (!next.delete(variable)) next.add(variable)
     anchor.value = variable
-    selected.value = next
+    selected.value = toggled(selected.value, variable)
   }
 
   /**
@@ -78,29 +92,21 @@ export const useSelectionStore = defineStore('selection', () => {
     selected.value = new Set(isAdded ? [...selected.value, ...range] : range)
   }
 
-  function select(variables: Iterable<number>) {
-    selected.value = new Set(variables)
-  }
+  return { focused, selected, anchor, focus, release, select, clearSelection, choose, toggle, extendTo }
+}
 
-  function clearSelection() {
-    anchor.value = null
-    selected.value = new Set()
-  }
-
-  function setLens(next: Lens) {
-    lens.value = next
-  }
+function hiddenThings() {
+  /** Kinds of thing that the legend switched off. */
+  const hiddenKinds = shallowRef<ReadonlySet<LatticeKind>>(new Set())
+  /** Keys of the classes of chain that the legend switched off; see utils/lattice/kinds.ts. */
+  const hiddenClasses = shallowRef<ReadonlySet<string>>(new Set())
 
   function toggleKind(kind: LatticeKind) {
-    const next = new Set(hiddenKinds.value)
-    if (!next.delete(kind)) next.add(kind)
-    hiddenKinds.value = next
+    hiddenKinds.value = toggled(hiddenKinds.value, kind)
   }
 
   function toggleClass(key: string) {
-    const next = new Set(hiddenClasses.value)
-    if (!next.delete(key)) next.add(key)
-    hiddenClasses.value = next
+    hiddenClasses.value = toggled(hiddenClasses.value, key)
   }
 
   function showEverything() {
@@ -108,27 +114,11 @@ export const useSelectionStore = defineStore('selection', () => {
     hiddenClasses.value = new Set()
   }
 
-  return {
-    scope,
-    focused,
-    hovered,
-    selected,
-    anchor,
-    lens,
-    hiddenKinds,
-    hiddenClasses,
-    begin,
-    focus,
-    release,
-    hover,
-    choose,
-    toggle,
-    extendTo,
-    select,
-    clearSelection,
-    setLens,
-    toggleKind,
-    toggleClass,
-    showEverything,
-  }
-})
+  return { hiddenKinds, hiddenClasses, toggleKind, toggleClass, showEverything }
+}
+
+function toggled<T>(set: ReadonlySet<T>, member: T): Set<T> {
+  const next = new Set(set)
+  if (!next.delete(member)) next.add(member)
+  return next
+}
