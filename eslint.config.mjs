@@ -20,7 +20,7 @@ const OUTSIDE_ENGINE = [
 ]
 
 export default withNuxt(
-  { ignores: ['server/database/migrations/**', '.output/**', '.data*/**', 'coverage/**'] },
+  { ignores: ['server/database/migrations/**', '.output/**', '.data*/**', 'coverage/**', 'screens/**'] },
   {
     rules: {
       'max-lines-per-function': ['error', { max: 60, skipBlankLines: true, skipComments: true }],

@@ -19,7 +19,9 @@ export default defineNuxtConfig({
   ],
   tailwindcss: { cssPath: '~/assets/css/main.css', viewer: false },
   eslint: { config: { stylistic: false } },
-  ignore: ['.data/**', '.data-*/**', '.bench/**', 'coverage/**', 'docs/**', 'bench/**', 'tests/**'],
+  ignore: ['.data/**', '.data-*/**', '.bench/**', 'coverage/**', 'screens/**', 'docs/**', 'bench/**', 'tests/**'],
+  // Code of a linked page is fetched when the link is pointed at or focused, not as soon as it is seen.
+  experimental: { defaults: { nuxtLink: { prefetchOn: { visibility: false, interaction: true } } } },
   runtimeConfig: { session: { cookie: { secure: true } } },
   routeRules: {
     '/**': {
