@@ -1,4 +1,5 @@
 import Sigma from 'sigma'
+import type { MouseCoords } from 'sigma/types'
 import type { SDFShape } from 'sigma/rendering'
 import { pathLine, sdfCircle, sdfSquare } from 'sigma/rendering'
 import { bandLayer, glyphLayer } from './band-layer'
@@ -23,7 +24,7 @@ export interface DrawingEvents {
   /** After every frame, and whenever the camera moved. */
   onFrame(view: View): void
   /** A click or tap that was no drag, in pixels of the viewport. */
-  onClick(x: number, y: number): void
+  onClick(x: number, y: number, additive: boolean): void
 }
 
 export const DRAWING_DEFAULTS = {
@@ -71,8 +72,12 @@ export function createDrawing(container: HTMLElement, { bounds, tokens, scene, e
   sigma.on('resize', measure)
   holdBackSlowFrames(sigma)
   sigma.on('afterRender', () => events.onFrame(view()))
-  sigma.on('clickStage', ({ event }) => events.onClick(event.x, event.y))
-  sigma.on('clickNode', ({ event }) => events.onClick(event.x, event.y))
+  const onClick = ({ event: { x, y, original } }: { event: MouseCoords }) => {
+    const { shiftKey, ctrlKey, metaKey } = original
+    events.onClick(x, y, shiftKey || ctrlKey || metaKey)
+  }
+  sigma.on('clickStage', onClick)
+  sigma.on('clickNode', onClick)
 
   return {
     show: (next) => void sigma.setGraph(sceneGraph(next)),

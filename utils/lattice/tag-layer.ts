@@ -1,6 +1,8 @@
 import type { Coverage } from './coverage'
 import { placeTags } from './labels'
 import type { PlacedTag } from './labels'
+import { paintOverlay } from './paint-overlay'
+import type { Overlay } from './paint-overlay'
 import { paintRuler, paintTag } from './paint-tags'
 import type { TagLook } from './paint-tags'
 import { requestTags } from './tag-requests'
@@ -8,10 +10,11 @@ import type { TagInput } from './tag-requests'
 import type { Tokens } from './tokens'
 import type { Box, View } from './types'
 
-/** Tags over the chains, and the ruler around them, on two canvases. */
+/** Outlines and tags over the chains, and the ruler around them, on two canvases. */
 export interface TagLayer {
   theme(tokens: Tokens, limits: Box, coverage: Coverage | null): void
   give(input: TagInput): void
+  point(overlay: Overlay | null): void
   resize(width: number, height: number): void
   paint(view: View): void
   repaint(): void
@@ -40,6 +43,7 @@ export function createTagLayer(canvas: HTMLCanvasElement, ruler: HTMLCanvasEleme
   let input: TagInput | null = null
   let placed: { scale: number; x: number; y: number; tags: PlacedTag[]; looks: TagLook[] } | null = null
   let latest: View | null = null
+  let overlay: Overlay | null = null
 
   /** Places are kept while the camera only shifts a little, so that tags travel with their bands and do not jump. */
   const placeFor = (view: View) => {
@@ -58,6 +62,7 @@ export function createTagLayer(canvas: HTMLCanvasElement, ruler: HTMLCanvasEleme
     prepareCanvas(rulerCtx, size.width + inset + 2, size.height + inset + 2)
     paintRuler(rulerCtx, view, { ...size, inset }, theme.limits, theme.tokens)
     prepareCanvas(ctx, size.width, size.height)
+    if (overlay) paintOverlay(ctx, overlay, view, theme.tokens)
     const places = placeFor(view)
     if (!places) return
     const dx = view.x - places.x
@@ -79,6 +84,9 @@ export function createTagLayer(canvas: HTMLCanvasElement, ruler: HTMLCanvasEleme
     give(next) {
       input = next
       placed = null
+    },
+    point(next) {
+      overlay = next
     },
     resize(width, height) {
       size = { width, height }

@@ -50,6 +50,19 @@ export interface MarkLayer {
   readonly words: string
 }
 
+/** Qubits and couplers (pairs of qubits) to be outlined, for instance a found path or what was picked. */
+export interface OverlayLayer {
+  readonly qubits: readonly number[]
+  readonly couplers: readonly (readonly [number, number])[]
+}
+
+/** What was clicked or tapped; `additive` when Shift, Ctrl or Cmd was held. */
+export interface LatticePick {
+  readonly qubit: number | null
+  readonly variable: number | null
+  readonly additive: boolean
+}
+
 export type Lens = 'occupancy' | 'load' | 'breaks'
 
 export const LENSES: readonly Lens[] = ['occupancy', 'load', 'breaks']
