@@ -4,6 +4,7 @@ import { migrate, openDatabase } from './database/client'
 import { createBlobStore } from './database/repositories/blobs'
 import { startQueue } from './jobs/queue'
 import { startRunner } from './jobs/runner'
+import { sweepDeletions } from './services/deletions'
 import { createCompute } from './workers/compute'
 import { VERSION } from './version'
 
@@ -26,7 +27,22 @@ export interface StartedApp {
 }
 
 const UNADOPTED_KEPT_MS = 60 * 60 * 1000
-const SWEEP_MS = 30 * 60 * 1000
+const SWEEP_MS = 30_000
+
+/** Clears away now and then what was never adopted and what was deleted for good. @returns how to end that */
+async function keepSweeping(app: App): Promise<() => void> {
+  const sweep = async (): Promise<void> => {
+    await app.blobs.sweep(new Date(app.now().getTime() - UNADOPTED_KEPT_MS))
+    await sweepDeletions(app)
+  }
+  await sweep()
+  const timer = setInterval(
+    () => void sweep().catch((error: Error) => console.error(`sweep: ${error.message}`)),
+    SWEEP_MS,
+  )
+  timer.unref()
+  return () => clearInterval(timer)
+}
 
 /** Opens the database, applies migrations, and starts the queue and the job runner. */
 export async function startApp(options: StartOptions): Promise<StartedApp> {
@@ -34,21 +50,15 @@ export async function startApp(options: StartOptions): Promise<StartedApp> {
   await migrate(database)
   const now = (): Date => new Date()
   const blobs = createBlobStore(database, now)
-  const sweep = (): Promise<void> => blobs.sweep(new Date(Date.now() - UNADOPTED_KEPT_MS))
-  await sweep()
-  const timer = setInterval(
-    () => void sweep().catch((error: Error) => console.error(`sweep: ${error.message}`)),
-    SWEEP_MS,
-  )
-  timer.unref()
   const compute = createCompute(options.workersFolder, options.threads)
   const queue = await startQueue(database)
   const app: App = { database, db: database.db, blobs, compute, queue, now, version: VERSION, demo: options.demo }
+  const stopSweeping = await keepSweeping(app)
   const runner = options.concurrency > 0 ? await startRunner(app, options.concurrency) : undefined
   return {
     app,
     async close() {
-      clearInterval(timer)
+      stopSweeping()
       if (runner) await runner.stop()
       else await queue.stop()
       await compute.close()

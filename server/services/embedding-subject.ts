@@ -8,7 +8,7 @@ import type { Actor, App } from '../app'
 import type { EmbeddingRow } from '../database/repositories/embeddings'
 import { findEmbedding } from '../database/repositories/embeddings'
 import type { ProblemRow } from '../database/repositories/problems'
-import { findProblem } from '../database/repositories/problems'
+import { findReferredProblem } from '../database/repositories/problems'
 import { unpackChains } from './chains'
 import type { CalibratedMachine } from './machine-graphs'
 import { calibratedMachine } from './machine-graphs'
@@ -36,8 +36,18 @@ export async function subjectOf(
   ids: { problemId: string; machineId: string; calibration?: number },
 ): Promise<Subject> {
   const problem = await problemRow(app, actor, ids.problemId)
+  return withMachine(app, problem, await calibratedMachine(app, actor, ids.machineId, ids.calibration))
+}
+
+/** What an embedding that is there stands on. @throws Error when its problem is gone */
+export async function subjectOfRow(app: App, row: EmbeddingRow): Promise<Subject> {
+  const problem = await findReferredProblem(app.db, row.problemId)
+  if (!problem) throw new Error('the problem was deleted meanwhile')
+  return withMachine(app, problem, await calibratedMachine(app, row, row.machineId, row.calibration))
+}
+
+async function withMachine(app: App, problem: ProblemRow, machine: CalibratedMachine): Promise<Subject> {
   const { labels, problem: coefficients } = await problemData(app, problem)
-  const machine = await calibratedMachine(app, actor, ids.machineId, ids.calibration)
   return { problem, labels, graph: interactionGraph(coefficients), machine }
 }
 
@@ -58,7 +68,7 @@ export const taskOf = ({ graph, machine }: Subject, start: Start | null): Embedd
 export async function carriedChains(app: App, subject: Subject, earlier: EmbeddingRow): Promise<Embedding> {
   const chains = unpackChains(await app.blobs.read(earlier.chainsBlobId!))
   if (earlier.problemId === subject.problem.id) return chains
-  const problem = await findProblem(app.db, earlier.workspaceId, earlier.problemId)
+  const problem = await findReferredProblem(app.db, earlier.problemId)
   const { labels } = await problemData(app, problem!)
   const places = new Map(labels.map((label, i) => [label, i]))
   return packChains(

@@ -1,11 +1,15 @@
 import { randomUUID } from 'node:crypto'
 import type { EmbeddingTask } from '../../shared/engine/embedding/task'
 import { DomainError } from '../../shared/errors'
+import type { DeletionView } from '../../shared/schemas/deletions'
 import type { CreateEmbedding } from '../../shared/schemas/embeddings'
+import { EDITABLE_STATES } from '../../shared/schemas/run-sheets'
 import type { Actor, App } from '../app'
 import { nextNumber } from '../database/repositories/counters'
 import { insertEmbedding, markChosen } from '../database/repositories/embeddings'
 import { insertJob } from '../database/repositories/jobs'
+import { runSheetsOfEmbeddings } from '../database/repositories/run-sheets'
+import { deleteFor } from './deletions'
 import { startOf } from './embedding-start'
 import { embeddingRow, identityOf, subjectOf, taskOf } from './embedding-subject'
 
@@ -68,4 +72,17 @@ export async function chooseEmbedding(app: App, actor: Actor, id: string, chosen
       `E-${row.number} is ${row.status}; only an embedding that was found can be chosen.`,
     )
   await app.db.transaction((tx) => markChosen(tx, row, chosen))
+}
+
+/** Deletes an embedding with the drafts on it; kept once a run sheet on it was handed over. */
+export async function removeEmbedding(app: App, actor: Actor, id: string): Promise<DeletionView> {
+  const row = await embeddingRow(app, actor, id)
+  const kept = (await runSheetsOfEmbeddings(app.db, [id])).find(({ state }) => !EDITABLE_STATES.includes(state))
+  if (kept)
+    throw new DomainError(
+      'wrong state',
+      'embedding.kept',
+      `E-${row.number} is kept: RS-${kept.number} on it is ${kept.state}. Only embeddings with nothing but drafts can be deleted.`,
+    )
+  return deleteFor(app, 'embedding', id)
 }

@@ -32,7 +32,7 @@ import {
   machineNameTaken,
 } from '../database/repositories/machines'
 import { pageOf, positionOf } from '../database/repositories/pages'
-import { findProblem } from '../database/repositories/problems'
+import { findReferredProblem } from '../database/repositories/problems'
 import { runSheetsOfEmbeddings } from '../database/repositories/run-sheets'
 import { unpackChains } from './chains'
 import type { CalibratedMachine } from './machine-graphs'
@@ -153,7 +153,7 @@ async function embeddingsBroken(app: App, before: CalibratedMachine, working: Wo
 }
 
 async function holdsOn(app: App, embedding: EmbeddingRow, working: WorkingGraph): Promise<boolean> {
-  const problem = await findProblem(app.db, embedding.workspaceId, embedding.problemId)
+  const problem = await findReferredProblem(app.db, embedding.problemId)
   if (!embedding.chainsBlobId || !problem) return false
   const graph = interactionGraph((await problemData(app, problem)).problem)
   const chains = unpackChains(await app.blobs.read(embedding.chainsBlobId))

@@ -2,6 +2,7 @@ import type { z } from 'zod'
 import { convertForm } from '../../shared/engine/problem/convert'
 import { DomainError } from '../../shared/errors'
 import type { Page, PageQuery } from '../../shared/schemas/common'
+import type { DeletionView } from '../../shared/schemas/deletions'
 import type {
   coefficientsQuerySchema,
   editProblemSchema,
@@ -15,10 +16,10 @@ import type { Actor, App } from '../app'
 import { embeddingsOfProblems } from '../database/repositories/embeddings'
 import { pageOf, positionOf } from '../database/repositories/pages'
 import type { ProblemRow } from '../database/repositories/problems'
-import { deleteProblem, findProblem, listProblems, personOf, updateProblem } from '../database/repositories/problems'
+import { findProblem, listProblems, personOf, updateProblem } from '../database/repositories/problems'
 import { returnsOfRunSheets, runSheetsOfEmbeddings } from '../database/repositories/run-sheets'
 import { statsView } from './embedding-stats'
-import { clearAway } from './jobs'
+import { deleteFor } from './deletions'
 import type { ProblemData } from './problem-data'
 import { unpackProblem } from './problem-data'
 import { signed, signOf } from './sense'
@@ -150,9 +151,9 @@ export async function editProblem(
 }
 
 /** Deletes a problem with its embeddings, run sheets and samples. */
-export async function removeProblem(app: App, actor: Actor, id: string): Promise<void> {
-  const row = await problemRow(app, actor, id)
-  await app.db.transaction(async (tx) => clearAway(app, tx, await deleteProblem(tx, row)))
+export async function removeProblem(app: App, actor: Actor, id: string): Promise<DeletionView> {
+  await problemRow(app, actor, id)
+  return deleteFor(app, 'problem', id)
 }
 
 /** Rows of both forms side by side, in the problem's own sense. */

@@ -20,7 +20,7 @@ import { packArrays } from '../../shared/packed-arrays'
 import type { RuleView, RunSheetSettings, RunSheetView, Strength } from '../../shared/schemas/run-sheets'
 import type { App } from '../app'
 import type { EmbeddingRow } from '../database/repositories/embeddings'
-import { findProblem } from '../database/repositories/problems'
+import { findReferredProblem } from '../database/repositories/problems'
 import type { ProblemRow } from '../database/repositories/problems'
 import { unpackChains } from './chains'
 import type { CalibratedMachine } from './machine-graphs'
@@ -53,7 +53,7 @@ export async function loadBench(app: App, row: EmbeddingRow): Promise<Bench> {
       'embedding.not-found',
       `Embedding E-${row.number} has no chains (${row.status}). Choose one that was found.`,
     )
-  const problem = await findProblem(app.db, row.workspaceId, row.problemId)
+  const problem = await findReferredProblem(app.db, row.problemId)
   if (!problem) throw new DomainError('not found', 'problem.unknown', 'The problem of this embedding was deleted.')
   const { form, labels, problem: coefficients } = await problemData(app, problem)
   return {

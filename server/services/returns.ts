@@ -7,8 +7,8 @@ import { DomainError } from '../../shared/errors'
 import type { uploadReturnSchema } from '../../shared/schemas/returns'
 import type { Actor, App } from '../app'
 import { nextNumber } from '../database/repositories/counters'
-import type { ReturnRow, RunSheetRow } from '../database/repositories/run-sheets'
-import { findReturn, findRunSheet, insertReturn, updateRunSheet } from '../database/repositories/run-sheets'
+import type { ReturnRow } from '../database/repositories/run-sheets'
+import { findReturn, insertReturn, updateRunSheet } from '../database/repositories/run-sheets'
 import { programmeBench, requireProgrammed } from './programming'
 import type { UploadedFile } from './problem-upload'
 import { benchOf, runSheetRow } from './run-sheets'
@@ -20,10 +20,6 @@ export async function returnRow(app: App, actor: Actor, id: string): Promise<Ret
   const row = await findReturn(app.db, actor.workspaceId, id)
   if (!row) throw new DomainError('not found', 'return.unknown', 'There are no such samples in this workspace.')
   return row
-}
-
-export function runSheetOfReturn(app: App, row: ReturnRow): Promise<RunSheetRow | undefined> {
-  return findRunSheet(app.db, row.workspaceId, row.runSheetId)
 }
 
 interface Given {

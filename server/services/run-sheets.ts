@@ -4,6 +4,7 @@ import { machineTimeEstimate } from '../../shared/engine/programming/machine-tim
 import { referenceSize } from '../../shared/engine/programming/strength'
 import { DomainError } from '../../shared/errors'
 import type { Page, PageQuery } from '../../shared/schemas/common'
+import type { DeletionView } from '../../shared/schemas/deletions'
 import type {
   ChainRow,
   createRunSheetSchema,
@@ -11,9 +12,9 @@ import type {
   MachineTimePart,
   RunSheetItem,
   RunSheetSettings,
-  RunSheetState,
   RunSheetView,
 } from '../../shared/schemas/run-sheets'
+import { EDITABLE_STATES } from '../../shared/schemas/run-sheets'
 import type { Actor, App } from '../app'
 import { nextNumber } from '../database/repositories/counters'
 import { jobsOfSubjects } from '../database/repositories/jobs'
@@ -21,7 +22,6 @@ import { pageOf, positionOf } from '../database/repositories/pages'
 import { personOf } from '../database/repositories/problems'
 import type { RunSheetRow } from '../database/repositories/run-sheets'
 import {
-  deleteRunSheet,
   findRunSheet,
   insertRunSheet,
   listRemarks,
@@ -29,15 +29,12 @@ import {
   returnsOfRunSheets,
   updateRunSheet,
 } from '../database/repositories/run-sheets'
+import { deleteFor } from './deletions'
 import { embeddingRow } from './embedding-subject'
-import { clearAway } from './jobs'
 import type { Bench, Programming } from './programming'
 import { checksOf } from './run-sheet-checks'
 import { compareRules, fingerprintOf, loadBench, precisionOf, programmeBench, requireProgrammed } from './programming'
 import { couplerCountsOf } from './chain-couplers'
-
-/** States in which the settings may change. */
-const EDITABLE: readonly RunSheetState[] = ['draft', 'sent back']
 
 /** A run sheet of the workspace. @throws DomainError not found, also for another workspace's */
 export async function runSheetRow(app: App, actor: Actor, id: string): Promise<RunSheetRow> {
@@ -94,13 +91,13 @@ export async function createRunSheet(
 /** Changes a draft; from submission on the settings stand still. */
 export async function editRunSheet(app: App, actor: Actor, id: string, edit: EditRunSheet): Promise<void> {
   const row = await runSheetRow(app, actor, id)
-  if (!EDITABLE.includes(row.state)) throw frozen(row)
+  if (!EDITABLE_STATES.includes(row.state)) throw frozen(row)
   const { name, ...changes } = edit
   const given = Object.fromEntries(Object.entries(changes).filter(([, value]) => value !== undefined))
   const settings: RunSheetSettings = { ...row.settings, ...given }
   const bench = await benchOf(app, actor, row)
   requireProgrammed(programmeBench(bench, settings))
-  const saved = await updateRunSheet(app.db, id, EDITABLE, {
+  const saved = await updateRunSheet(app.db, id, EDITABLE_STATES, {
     ...(name ? { name } : {}),
     settings,
     machineTimeMilliseconds: estimate(bench, settings).totalMicroseconds / 1000,
@@ -116,15 +113,16 @@ const frozen = (row: RunSheetRow): DomainError =>
     `RS-${row.number} is ${row.state}; its settings no longer change. Ask the reviewer to send it back, or prepare a new one.`,
   )
 
-export async function removeRunSheet(app: App, actor: Actor, id: string): Promise<void> {
+/** Deletes a draft with its rehearsals. */
+export async function removeRunSheet(app: App, actor: Actor, id: string): Promise<DeletionView> {
   const row = await runSheetRow(app, actor, id)
-  if (!EDITABLE.includes(row.state))
+  if (!EDITABLE_STATES.includes(row.state))
     throw new DomainError(
       'wrong state',
       'run-sheet.kept',
       `RS-${row.number} is ${row.state} and is kept. Only drafts can be deleted.`,
     )
-  await app.db.transaction(async (tx) => clearAway(app, tx, await deleteRunSheet(tx, id)))
+  return deleteFor(app, 'run sheet', id)
 }
 
 export async function runSheetsOf(app: App, actor: Actor, query: PageQuery): Promise<Page<RunSheetItem>> {

@@ -61,6 +61,9 @@ export const programmedQuerySchema = z.object({ format: z.enum(['json', 'csv', '
 
 export type RunSheetState = 'draft' | 'in review' | 'approved' | 'sent back' | 'issued' | 'returned' | 'closed'
 
+/** States in which the settings may change, and in which a run sheet may be deleted. */
+export const EDITABLE_STATES: readonly RunSheetState[] = ['draft', 'sent back']
+
 export interface CheckView {
   verdict: 'passed' | 'caution' | 'refused'
   what: string

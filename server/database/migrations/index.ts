@@ -85,5 +85,21 @@ export const MIGRATIONS = [
       "\nUPDATE \"embeddings\" SET \"method_used\" = \"method\" WHERE \"status\" = 'found';",
       "\nUPDATE \"embeddings\" SET \"unmet\" = \"unmet\" || '{\"proved\":false,\"neededQubits\":null,\"advice\":[]}'::jsonb WHERE \"unmet\" IS NOT NULL;\n"
     ]
+  },
+  {
+    "tag": "0002_undone_deletions",
+    "folderMillis": 1796142687416,
+    "hash": "602104474272841a201a81dac02e2cb4fd7056782e351e85be200dbde52c8e41",
+    "bps": true,
+    "sql": [
+      "ALTER TABLE \"embeddings\" ADD COLUMN \"deleted_at\" timestamp with time zone;",
+      "\nALTER TABLE \"embeddings\" ADD COLUMN \"deleted_with\" text;",
+      "\nALTER TABLE \"problems\" ADD COLUMN \"deleted_at\" timestamp with time zone;",
+      "\nALTER TABLE \"problems\" ADD COLUMN \"deleted_with\" text;",
+      "\nALTER TABLE \"returns\" ADD COLUMN \"deleted_at\" timestamp with time zone;",
+      "\nALTER TABLE \"returns\" ADD COLUMN \"deleted_with\" text;",
+      "\nALTER TABLE \"run_sheets\" ADD COLUMN \"deleted_at\" timestamp with time zone;",
+      "\nALTER TABLE \"run_sheets\" ADD COLUMN \"deleted_with\" text;"
+    ]
   }
 ]

@@ -1,4 +1,4 @@
-import { and, desc, eq, inArray } from 'drizzle-orm'
+import { and, desc, eq, inArray, isNull } from 'drizzle-orm'
 import type { Db } from '../client'
 import { calibrations, embeddings, machines, problems } from '../schema'
 
@@ -13,11 +13,11 @@ export async function findEmbedding(db: Db, workspaceId: string, id: string): Pr
     await db
       .select()
       .from(embeddings)
-      .where(and(eq(embeddings.workspaceId, workspaceId), eq(embeddings.id, id)))
+      .where(and(eq(embeddings.workspaceId, workspaceId), eq(embeddings.id, id), isNull(embeddings.deletedWith)))
   )[0]
 }
 
-/** An embedding by its id alone, for jobs, which are not asked for by anyone. */
+/** An embedding by its id alone, deleted or not, for jobs, which are not asked for by anyone. */
 export async function findEmbeddingOfJob(db: Db, id: string): Promise<EmbeddingRow | undefined> {
   return (await db.select().from(embeddings).where(eq(embeddings.id, id)))[0]
 }
@@ -51,7 +51,7 @@ export async function findNumbers(db: Db, id: string) {
       .select({ id: embeddings.id, number: embeddings.number, problem: { id: problems.id, number: problems.number } })
       .from(embeddings)
       .innerJoin(problems, eq(problems.id, embeddings.problemId))
-      .where(eq(embeddings.id, id))
+      .where(and(eq(embeddings.id, id), isNull(embeddings.deletedWith)))
   )[0]
 }
 
@@ -66,7 +66,7 @@ export async function embeddingsOfProblems(db: Db, problemIds: readonly string[]
       calibrations,
       and(eq(calibrations.machineId, embeddings.machineId), eq(calibrations.number, embeddings.calibration)),
     )
-    .where(inArray(embeddings.problemId, [...problemIds]))
+    .where(and(inArray(embeddings.problemId, [...problemIds]), isNull(embeddings.deletedWith)))
     .orderBy(desc(embeddings.createdAt))
 }
 
@@ -76,5 +76,5 @@ export async function foundEmbeddingsOn(db: Db, machineId: string) {
     .select({ embedding: embeddings, problem: problems.name })
     .from(embeddings)
     .innerJoin(problems, eq(problems.id, embeddings.problemId))
-    .where(and(eq(embeddings.machineId, machineId), eq(embeddings.status, 'found')))
+    .where(and(eq(embeddings.machineId, machineId), eq(embeddings.status, 'found'), isNull(embeddings.deletedWith)))
 }

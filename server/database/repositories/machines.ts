@@ -1,4 +1,4 @@
-import { and, count, desc, eq } from 'drizzle-orm'
+import { and, count, desc, eq, isNull } from 'drizzle-orm'
 import type { Db } from '../client'
 import { calibrations, embeddings, machines, users } from '../schema'
 
@@ -74,5 +74,6 @@ export async function listCalibrations(db: Db, machineId: string) {
 }
 
 export async function countEmbeddingsOn(db: Db, machineId: string): Promise<number> {
-  return (await db.select({ n: count() }).from(embeddings).where(eq(embeddings.machineId, machineId)))[0]!.n
+  const standing = and(eq(embeddings.machineId, machineId), isNull(embeddings.deletedWith))
+  return (await db.select({ n: count() }).from(embeddings).where(standing))[0]!.n
 }

@@ -1,4 +1,4 @@
-import { and, asc, count, eq } from 'drizzle-orm'
+import { and, asc, count, eq, isNull } from 'drizzle-orm'
 import type { Role } from '../../../shared/schemas/common'
 import type { Db } from '../client'
 import { installation, machines, memberships, problems, runSheets, users, workspaces } from '../schema'
@@ -80,9 +80,19 @@ export async function listMembers(db: Db, workspaceId: string) {
 export async function countThings(db: Db, workspaceId: string) {
   const counted = async (query: Promise<{ n: number }[]>): Promise<number> => (await query)[0]!.n
   return {
-    problems: await counted(db.select({ n: count() }).from(problems).where(eq(problems.workspaceId, workspaceId))),
+    problems: await counted(
+      db
+        .select({ n: count() })
+        .from(problems)
+        .where(and(eq(problems.workspaceId, workspaceId), isNull(problems.deletedWith))),
+    ),
     machines: await counted(db.select({ n: count() }).from(machines).where(eq(machines.workspaceId, workspaceId))),
-    runSheets: await counted(db.select({ n: count() }).from(runSheets).where(eq(runSheets.workspaceId, workspaceId))),
+    runSheets: await counted(
+      db
+        .select({ n: count() })
+        .from(runSheets)
+        .where(and(eq(runSheets.workspaceId, workspaceId), isNull(runSheets.deletedWith))),
+    ),
     people: await counted(db.select({ n: count() }).from(memberships).where(eq(memberships.workspaceId, workspaceId))),
   }
 }

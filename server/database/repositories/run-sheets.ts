@@ -1,6 +1,5 @@
-import { and, asc, desc, eq, inArray, ne } from 'drizzle-orm'
+import { and, asc, desc, eq, inArray, isNull, ne } from 'drizzle-orm'
 import type { Db } from '../client'
-import type { Deleted } from './jobs'
 import { embeddings, machines, problems, returns, runSheetRemarks, runSheets, users } from '../schema'
 
 export type RunSheetRow = typeof runSheets.$inferSelect
@@ -15,8 +14,13 @@ export async function findRunSheet(db: Db, workspaceId: string, id: string): Pro
     await db
       .select()
       .from(runSheets)
-      .where(and(eq(runSheets.workspaceId, workspaceId), eq(runSheets.id, id)))
+      .where(and(eq(runSheets.workspaceId, workspaceId), eq(runSheets.id, id), isNull(runSheets.deletedWith)))
   )[0]
+}
+
+/** A run sheet by its id alone, deleted or not, for jobs. */
+export async function findRunSheetOfJob(db: Db, id: string): Promise<RunSheetRow | undefined> {
+  return (await db.select().from(runSheets).where(eq(runSheets.id, id)))[0]
 }
 
 export async function listRunSheets(db: Db, workspaceId: string, limit: number, offset: number) {
@@ -31,7 +35,7 @@ export async function listRunSheets(db: Db, workspaceId: string, limit: number, 
     .innerJoin(embeddings, eq(embeddings.id, runSheets.embeddingId))
     .innerJoin(problems, eq(problems.id, embeddings.problemId))
     .innerJoin(machines, eq(machines.id, embeddings.machineId))
-    .where(eq(runSheets.workspaceId, workspaceId))
+    .where(and(eq(runSheets.workspaceId, workspaceId), isNull(runSheets.deletedWith)))
     .orderBy(desc(runSheets.changedAt), desc(runSheets.number))
     .limit(limit)
     .offset(offset)
@@ -42,7 +46,7 @@ export async function runSheetsOfEmbeddings(db: Db, embeddingIds: readonly strin
   return db
     .select()
     .from(runSheets)
-    .where(inArray(runSheets.embeddingId, [...embeddingIds]))
+    .where(and(inArray(runSheets.embeddingId, [...embeddingIds]), isNull(runSheets.deletedWith)))
     .orderBy(desc(runSheets.createdAt))
 }
 
@@ -61,19 +65,9 @@ export async function updateRunSheet(
   const rows = await db
     .update(runSheets)
     .set(set)
-    .where(and(eq(runSheets.id, id), inArray(runSheets.state, [...states]), unchanged))
+    .where(and(eq(runSheets.id, id), inArray(runSheets.state, [...states]), isNull(runSheets.deletedWith), unchanged))
     .returning({ id: runSheets.id })
   return rows.length === 1
-}
-
-/** Deletes a run sheet with its returns. */
-export async function deleteRunSheet(db: Db, id: string): Promise<Deleted> {
-  const rows = await db
-    .select({ id: returns.id, blobId: returns.samplesBlobId })
-    .from(returns)
-    .where(eq(returns.runSheetId, id))
-  await db.delete(runSheets).where(eq(runSheets.id, id))
-  return { blobIds: rows.flatMap(({ blobId }) => blobId ?? []), subjectIds: rows.map((row) => row.id) }
 }
 
 export async function insertRemark(db: Db, row: typeof runSheetRemarks.$inferInsert): Promise<void> {
@@ -98,11 +92,11 @@ export async function findReturn(db: Db, workspaceId: string, id: string): Promi
     await db
       .select()
       .from(returns)
-      .where(and(eq(returns.workspaceId, workspaceId), eq(returns.id, id)))
+      .where(and(eq(returns.workspaceId, workspaceId), eq(returns.id, id), isNull(returns.deletedWith)))
   )[0]
 }
 
-/** A return by its id alone, for jobs. */
+/** A return by its id alone, deleted or not, for jobs. */
 export async function findReturnOfJob(db: Db, id: string): Promise<ReturnRow | undefined> {
   return (await db.select().from(returns).where(eq(returns.id, id)))[0]
 }

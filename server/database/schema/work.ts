@@ -37,6 +37,8 @@ const createdBy = () =>
   text()
     .notNull()
     .references(() => users.id)
+/** Set while a deletion can still be undone: when, and the id of what was deleted: the row itself or what it stands on. */
+const deletion = () => ({ deletedAt: moment(), deletedWith: text() })
 
 /** Running numbers: problems and run sheets per workspace, embeddings per problem, returns per run sheet. */
 export const counters = pgTable(
@@ -69,6 +71,7 @@ export const problems = pgTable(
     createdBy: createdBy(),
     createdAt: createdAt(),
     changedAt: moment().notNull(),
+    ...deletion(),
   },
   (table) => [uniqueIndex().on(table.workspaceId, table.number)],
 )
@@ -151,6 +154,7 @@ export const embeddings = pgTable(
     version: text().notNull(),
     createdBy: createdBy(),
     createdAt: createdAt(),
+    ...deletion(),
   },
   (table) => [
     uniqueIndex().on(table.problemId, table.number),
@@ -182,6 +186,7 @@ export const runSheets = pgTable(
     reviewedBy: text().references(() => users.id),
     createdAt: createdAt(),
     changedAt: moment().notNull(),
+    ...deletion(),
   },
   (table) => [uniqueIndex().on(table.workspaceId, table.number), index().on(table.embeddingId)],
 )
@@ -227,6 +232,7 @@ export const returns = pgTable(
     version: text().notNull(),
     createdBy: createdBy(),
     createdAt: createdAt(),
+    ...deletion(),
   },
   (table) => [uniqueIndex().on(table.runSheetId, table.number)],
 )

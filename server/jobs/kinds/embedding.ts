@@ -9,7 +9,7 @@ import { findEmbeddingOfJob, updateEmbedding } from '../../database/repositories
 import { changedChains, packEmbedding } from '../../services/chains'
 import { storedStats } from '../../services/embedding-stats'
 import type { Subject } from '../../services/embedding-subject'
-import { carriedChains, frozenMask, subjectOf, taskOf } from '../../services/embedding-subject'
+import { carriedChains, frozenMask, subjectOfRow, taskOf } from '../../services/embedding-subject'
 import { shareArrays } from '../../workers/shared-arrays'
 import { newSearchClock, secondsOn } from '../../workers/search-clock'
 import type { JobContext, JobKindHandler, JobOutcome } from '../kind'
@@ -33,7 +33,7 @@ export const embeddingJob: JobKindHandler = {
   async run(app, context) {
     const row = await findEmbeddingOfJob(app.db, context.job.subjectId)
     if (!row) throw new Error(DELETED)
-    const subject = await subjectOf(app, row, row)
+    const subject = await subjectOfRow(app, row)
     const task = taskOf(subject, await startOfRow(app, row, subject))
     const search = { row, subject, task, options: optionsOf(row) }
     const result = await runTries(app, context, search)

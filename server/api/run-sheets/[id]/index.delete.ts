@@ -1,7 +1,6 @@
 import { removeRunSheet } from '../../../services/run-sheets'
 
-/** Deletes a draft with its rehearsals. */
-export default defineRoute(['developer', 'owner'], async (event, { app, ...actor }) => {
-  await removeRunSheet(app, actor, partOf(event, 'id'))
-  return { ok: true }
-})
+/** Deletes a draft with its rehearsals. For a minute `POST …/restore` brings it back. */
+export default defineRoute(['developer', 'owner'], (event, { app, ...actor }) =>
+  removeRunSheet(app, actor, partOf(event, 'id')),
+)
