@@ -1,5 +1,6 @@
 import type { LedgerRow, Lens } from './types'
 
+/** Columns of the chain ledger: which of them a lens shows, how wide they are, and how rows are sorted by them. */
 export type LedgerColumn =
   'variable' | 'qubits' | 'couplers' | 'strength' | 'bound' | 'breaks' | 'field' | 'coupling' | 'sum'
 
@@ -39,6 +40,57 @@ export const COLUMN_HEADS: Record<LedgerColumn, string> = {
 /** Order of giving way when the ledger is narrow: the first to go is the first in the list. */
 export const COLUMNS_GIVING_WAY: readonly LedgerColumn[] = ['couplers', 'strength', 'field', 'coupling', 'bound']
 
+export const LEDGER_DEFAULTS = {
+  /** Heights of a row in pixels: one line, and a two-line entry for fingers. */
+  rowHeight: { wide: 28, touch: 44 },
+  headHeight: 31,
+  sumHeight: 32,
+  /** Width below which rows become two-line entries. */
+  narrowBelow: 380,
+  /** Room for the bar beside the number of qubits. */
+  barWidth: 48,
+  /** Room for the box that selects a row, where there is no key to hold. */
+  boxWidth: 36,
+}
+
+const WIDTHS: Record<Exclude<LedgerColumn, 'variable'>, number> = {
+  qubits: 60,
+  couplers: 66,
+  strength: 46,
+  bound: 72,
+  breaks: 152,
+  field: 74,
+  coupling: 74,
+  sum: 108,
+}
+const LABEL_WIDTH = { least: 82, most: 160, perCharacter: 7.9, swatch: 44 }
+
+/** Least width of a column; labels are given the room they need, within reason. */
+export function widthOfColumn(column: LedgerColumn, longestLabel: number): number {
+  if (column !== 'variable') return WIDTHS[column]
+  const { least, most, perCharacter, swatch } = LABEL_WIDTH
+  return Math.min(most, Math.max(least, swatch + perCharacter * longestLabel))
+}
+
+/** Columns of the lens that have a figure in some row and find room in the width, and whether lengths find a bar. */
+export function columnsFor(rows: readonly LedgerRow[], lens: Lens, width: number) {
+  const longestLabel = rows.reduce((most, row) => Math.max(most, row.label.length), 0)
+  const needed = (shown: readonly LedgerColumn[]) =>
+    shown.reduce((sum, column) => sum + widthOfColumn(column, longestLabel), 0)
+  let columns = LENS_COLUMNS[lens].filter((column) => rows.some((row) => valueOf(row, column) !== null))
+  if (rows.length === 0) columns = ['variable', 'qubits', 'couplers']
+  for (const column of COLUMNS_GIVING_WAY) {
+    if (needed(columns) <= width) break
+    columns = columns.filter((kept) => kept !== column)
+  }
+  const hasBar = lens === 'occupancy' && needed(columns) + LEDGER_DEFAULTS.barWidth <= width
+  const template = columns.map((column) => {
+    const least = widthOfColumn(column, longestLabel) + (hasBar && column === 'qubits' ? LEDGER_DEFAULTS.barWidth : 0)
+    return `minmax(${least}px, ${column === 'variable' ? 1.4 : 1}fr)`
+  })
+  return { columns, hasBar, template: template.join(' ') }
+}
+
 export function valueOf(row: LedgerRow, column: LedgerColumn): number | null {
   switch (column) {
     case 'variable':
@@ -58,6 +110,8 @@ export function valueOf(row: LedgerRow, column: LedgerColumn): number | null {
   }
 }
 
+const COLLATOR = new Intl.Collator('en', { numeric: true })
+
 /** Sorted copy: labels in natural order, rows without a value always last, ties by variable. */
 export function sortRows(rows: readonly LedgerRow[], { column, descending }: LedgerSort): LedgerRow[] {
   const direction = descending ? -1 : 1
@@ -71,73 +125,18 @@ export function sortRows(rows: readonly LedgerRow[], { column, descending }: Led
   return [...rows].sort((a, b) => compare(a, b) || a.variable - b.variable)
 }
 
-const COLLATOR = new Intl.Collator('en', { numeric: true })
-
-/**
- * Rows that a filter lets through. Text must occur in the label; a comparison such as `> 5 %` or `<= 0.5%` is about the
- * break rate, or the load in that lens; without `%` it is about the number of qubits. Several terms, set apart by
- * commas, must all hold.
- */
-export function filterRows(rows: readonly LedgerRow[], filter: string, lens: Lens): LedgerRow[] {
-  const tests = filter
-    .split(',')
-    .map((term) => term.trim().toLowerCase())
-    .filter(Boolean)
-    .map((term) => testOf(term, lens))
-  return rows.filter((row) => tests.every((test) => test(row)))
-}
-
-const COMPARISONS: Record<string, (a: number, b: number) => boolean> = {
-  '>': (a, b) => a > b,
-  '<': (a, b) => a < b,
-  '>=': (a, b) => a >= b,
-  '<=': (a, b) => a <= b,
-  '≥': (a, b) => a >= b,
-  '≤': (a, b) => a <= b,
-  '=': (a, b) => a === b,
-}
-
-function testOf(term: string, lens: Lens): (row: LedgerRow) => boolean {
-  const match = /^(>=|<=|[<>=≥≤])\s*(\d+(?:\.\d+)?)\s*(%?)$/.exec(term)
-  if (!match) return (row) => row.label.toLowerCase().includes(term)
-  const holds = COMPARISONS[match[1]!]!
-  const limit = Number(match[2])
-  if (!match[3]) return (row) => holds(row.qubits, limit)
-  return (row) => {
-    const share = lens === 'load' ? row.load?.sum : row.breaks?.rate
-    return share !== undefined && holds(100 * share, limit)
-  }
-}
+/** Sorting after a click on a column: the same one turns round, another begins with its largest, labels with the first. */
+export const nextSort = (sort: LedgerSort, column: LedgerColumn): LedgerSort => ({
+  column,
+  descending: sort.column === column ? !sort.descending : column !== 'variable',
+})
 
 /** Whether the bound asks for more than the chain strength that is set. */
 export const isUnderBound = (row: LedgerRow): boolean =>
   row.strength != null && row.bound != null && row.bound > row.strength
 
-/** All columns of all lenses as comma-separated values, shares as fractions. */
-export function rowsToCsv(rows: readonly LedgerRow[]): string {
-  const heads =
-    'variable,qubits,couplers,strength,bound,bound_exact,break_rate,break_low,break_high,broken_reads,reads,largest_h,largest_j,load'
-  const lines = rows.map(({ label, qubits, couplers, strength, bound, boundExact, breaks, load }) =>
-    [
-      quoted(label),
-      qubits,
-      couplers,
-      strength,
-      bound,
-      bound == null ? null : Number(boundExact ?? true),
-      breaks?.rate,
-      breaks?.low,
-      breaks?.high,
-      breaks?.count,
-      breaks?.reads,
-      load?.field,
-      load?.coupling,
-      load?.sum,
-    ]
-      .map((value) => value ?? '')
-      .join(','),
-  )
-  return `${[heads, ...lines].join('\n')}\n`
+/** Rate at the right end of the interval bars. */
+export function scaleEndOf(rows: readonly LedgerRow[]): number {
+  const highest = rows.reduce((most, row) => Math.max(most, row.breaks?.high ?? 0), 0.05)
+  return [0.05, 0.1, 0.25, 0.5, 1].find((end) => end >= highest) ?? 1
 }
-
-const quoted = (text: string) => (/[",\n]/.test(text) ? `"${text.replaceAll('"', '""')}"` : text)

@@ -86,6 +86,8 @@ export interface LedgerRow {
     readonly count: number
     readonly reads: number
   } | null
+  /** Why the chain cannot stay as it is, in words, such as a qubit that two chains want. */
+  readonly conflict?: string | null
   /** Largest programmed sizes on the chain, and its fullest coupling sum as a share of the range, 0 … 1. */
   readonly load?: { readonly field: number; readonly coupling: number; readonly sum: number } | null
 }

@@ -1,6 +1,10 @@
 import { describe, expect, it } from 'vitest'
 import { decimal, percent, percentRange, strengthText } from '../../../../utils/lattice/figures'
-import { filterRows, isUnderBound, rowsToCsv, sortRows, valueOf } from '../../../../utils/lattice/ledger'
+import { columnsFor, isUnderBound, nextSort, sortRows, valueOf } from '../../../../utils/lattice/ledger'
+import { filterRows, isFiltering, NO_FILTER, onlyChoices } from '../../../../utils/lattice/ledger-filter'
+import type { LedgerFilter } from '../../../../utils/lattice/ledger-filter'
+import { sumsOf } from '../../../../utils/lattice/ledger-sums'
+import { rowsToCsv, rowsToTabs } from '../../../../utils/lattice/ledger-text'
 import type { LedgerRow } from '../../../../utils/lattice/types'
 
 const row = (variable: number, label: string, more: Partial<LedgerRow> = {}): LedgerRow => ({
@@ -38,21 +42,109 @@ describe('sorting', () => {
   })
 })
 
+describe('columns', () => {
+  it('shows the columns of the lens that have figures, and lets the least important give way', () => {
+    expect(columnsFor(rows, 'breaks', 700).columns).toEqual([
+      'variable',
+      'qubits',
+      'couplers',
+      'strength',
+      'bound',
+      'breaks',
+    ])
+    expect(columnsFor(rows, 'breaks', 400).columns).toEqual(['variable', 'qubits', 'bound', 'breaks'])
+    expect(columnsFor(rows.slice(2), 'load', 700).columns).toEqual([
+      'variable',
+      'qubits',
+      'couplers',
+      'field',
+      'coupling',
+      'sum',
+    ])
+  })
+
+  it('finds room for bars beside lengths in the occupancy lens alone', () => {
+    expect(columnsFor(rows, 'occupancy', 700).hasBar).toBe(true)
+    expect(columnsFor(rows, 'occupancy', 400).hasBar).toBe(false)
+    expect(columnsFor(rows, 'breaks', 700).hasBar).toBe(false)
+  })
+
+  it('gives one track for each column', () => {
+    const { columns, template } = columnsFor(rows, 'occupancy', 500)
+    expect(template.match(/minmax/g)).toHaveLength(columns.length)
+  })
+
+  it('turns round the sorting of a column pressed twice', () => {
+    const first = nextSort({ column: 'breaks', descending: true }, 'qubits')
+    expect(first).toEqual({ column: 'qubits', descending: true })
+    expect(nextSort(first, 'qubits')).toEqual({ column: 'qubits', descending: false })
+    expect(nextSort(first, 'variable')).toEqual({ column: 'variable', descending: false })
+  })
+})
+
 describe('filtering', () => {
+  const by = (part: Partial<LedgerFilter>): LedgerFilter => ({ ...NO_FILTER, ...part })
+
   it('matches text anywhere in the label, in any case', () => {
-    expect(order(filterRows(rows, 'DUN', 'occupancy'))).toEqual([0, 1])
-    expect(order(filterRows(rows, '', 'occupancy'))).toEqual([0, 1, 2, 3])
+    expect(order(filterRows(rows, by({ text: 'DUN' }), 'occupancy'))).toEqual([0, 1])
+    expect(order(filterRows(rows, NO_FILTER, 'occupancy'))).toEqual([0, 1, 2, 3])
   })
 
   it('compares break rates, loads in their lens, and lengths', () => {
-    expect(order(filterRows(rows, '> 5 %', 'breaks'))).toEqual([1])
-    expect(order(filterRows(rows, '>=5%', 'occupancy'))).toEqual([1, 3])
-    expect(order(filterRows(rows, '> 90 %', 'load'))).toEqual([2])
-    expect(order(filterRows(rows, '> 3', 'breaks'))).toEqual([0])
+    expect(order(filterRows(rows, by({ text: '> 5 %' }), 'breaks'))).toEqual([1])
+    expect(order(filterRows(rows, by({ text: '>=5%' }), 'occupancy'))).toEqual([1, 3])
+    expect(order(filterRows(rows, by({ text: '> 90 %' }), 'load'))).toEqual([2])
+    expect(order(filterRows(rows, by({ text: '> 3' }), 'breaks'))).toEqual([0])
   })
 
   it('takes several terms together', () => {
-    expect(order(filterRows(rows, 'dun, < 10 %', 'breaks'))).toEqual([0])
+    expect(order(filterRows(rows, by({ text: 'dun, < 10 %' }), 'breaks'))).toEqual([0])
+    expect(order(filterRows(rows, by({ text: 'dun', most: 3 }), 'breaks'))).toEqual([1])
+  })
+
+  it('keeps to lengths, both ends included', () => {
+    expect(order(filterRows(rows, by({ least: 4 }), 'occupancy'))).toEqual([0])
+    expect(order(filterRows(rows, by({ least: 3, most: 3 }), 'occupancy'))).toEqual([1, 2, 3])
+  })
+
+  it('shows chains of one condition alone', () => {
+    expect(order(filterRows(rows, by({ only: 'selected' }), 'occupancy', new Set([2, 3])))).toEqual([2, 3])
+    expect(order(filterRows(rows, by({ only: 'broken' }), 'breaks'))).toEqual([0, 1, 3])
+    expect(order(filterRows(rows, by({ only: 'full' }), 'load'))).toEqual([2])
+    expect(order(filterRows(rows, by({ only: 'under-bound' }), 'occupancy'))).toEqual([1])
+    const conflicted = [...rows, row(4, 'tea', { conflict: 'qubit 7 is wanted by sal, x' })]
+    expect(order(filterRows(conflicted, by({ only: 'conflicted' }), 'occupancy'))).toEqual([4])
+  })
+
+  it('offers the conditions of the lens that some chain meets', () => {
+    expect(onlyChoices(rows, 'breaks', new Set([1]))).toEqual([
+      { only: 'selected', count: 1 },
+      { only: 'broken', count: 3 },
+      { only: 'under-bound', count: 1 },
+    ])
+    expect(onlyChoices(rows, 'load', new Set())).toEqual([{ only: 'full', count: 1 }])
+  })
+
+  it('tells whether anything is hidden', () => {
+    expect(isFiltering(NO_FILTER)).toBe(false)
+    for (const part of [{ text: 'a' }, { least: 0 }, { most: 3 }, { only: 'broken' as const }])
+      expect(isFiltering(by(part))).toBe(true)
+    expect(isFiltering(by({ text: '  ' }))).toBe(false)
+  })
+})
+
+describe('sums', () => {
+  it('adds up qubits, and pools breaks over all chain reads', () => {
+    expect(sumsOf(rows)).toEqual({
+      chains: 4,
+      qubits: 14,
+      meanLength: 3.5,
+      longest: 5,
+      couplers: 36,
+      breakRate: 230 / 3000,
+      fullest: 0.93,
+    })
+    expect(sumsOf([])).toMatchObject({ chains: 0, qubits: 0, meanLength: null, breakRate: null, fullest: null })
   })
 })
 
@@ -69,10 +161,18 @@ describe('figures', () => {
     expect(rows.map(isUnderBound)).toEqual([false, true, false, false])
   })
 
-  it('writes CSV with quoted labels and empty fields', () => {
+  it('writes CSV with units in the headings, quoted labels and empty fields', () => {
     const lines = rowsToCsv(rows).split('\n')
+    expect(lines[0]).toMatch(/^variable,chain length \(qubits\),couplers to other chains \(count\),/)
     expect(lines[0]!.split(',')).toHaveLength(14)
     expect(lines[2]).toBe('dun.2,3,9,11,16.4,1,0.14,0.07,0.28,140,1000,,,')
     expect(lines[4]).toMatch(/^"sal, x",3,9,/)
+    expect(lines.at(-1)).toBe('')
+  })
+
+  it('leaves out columns without a value, and sets apart by tabs for the clipboard', () => {
+    expect(rowsToCsv([row(0, 'a')])).toBe('variable,chain length (qubits),couplers to other chains (count)\na,3,9\n')
+    expect(rowsToTabs(rows).split('\n')[4]).toMatch(/^sal, x\t3\t9\t/)
+    expect(rowsToCsv([row(0, 'say "x"')]).split('\n')[1]).toBe('"say ""x""",3,9')
   })
 })
