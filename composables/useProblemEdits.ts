@@ -1,9 +1,9 @@
 import type { ApiFailure, Outcome } from './useApi'
 
 /** Renaming, noting and deleting one problem: which of them is going on, and what went wrong. */
-export function useProblemEdits(id: string, refresh: () => Promise<unknown>) {
-  const { edit, remove } = useProblemActions()
-  const { load } = useSession()
+export function useProblemEdits(id: string, label: () => string, refresh: () => Promise<unknown>) {
+  const { edit } = useProblemActions()
+  const { erase } = useDeletions()
   const open = ref<'name' | 'note' | 'deletion' | null>(null)
   const isBusy = ref(false)
   const failure = shallowRef<ApiFailure | null>(null)
@@ -33,11 +33,8 @@ export function useProblemEdits(id: string, refresh: () => Promise<unknown>) {
     note: (note: string) => run(() => edit(id, { note }), refresh),
     erase: () =>
       run(
-        () => remove(id),
-        async () => {
-          await load()
-          await navigateTo('/')
-        },
+        () => erase('problem', id, label()),
+        async () => navigateTo('/'),
       ),
   }
 }

@@ -55,7 +55,7 @@ export interface ProblemUpload {
   skipRejected: boolean
 }
 
-/** Uploading, renaming and deleting problems. */
+/** Uploading and renaming problems. */
 export function useProblemActions() {
   const api = useApi()
   const form = (upload: ProblemUpload, dryRun: boolean): FormData => {
@@ -71,6 +71,5 @@ export function useProblemActions() {
     preview: (upload: ProblemUpload) => api.post<UploadedProblem>('/api/problems', form(upload, true)),
     save: (upload: ProblemUpload) => api.post<UploadedProblem>('/api/problems', form(upload, false)),
     edit: (id: string, change: { name?: string; note?: string }) => api.patch(`/api/problems/${id}`, change),
-    remove: (id: string) => api.remove(`/api/problems/${id}`),
   }
 }

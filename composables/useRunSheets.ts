@@ -17,7 +17,6 @@ export function useRunSheetActions() {
     create: (input: { embeddingId: string } & Partial<RunSheetSettings>) =>
       api.post<{ id: string; number: number }>('/api/run-sheets', input),
     edit: (id: string, change: EditRunSheet) => api.patch<RunSheetView>(`/api/run-sheets/${id}`, change),
-    remove: (id: string) => api.remove(`/api/run-sheets/${id}`),
     handOver: (id: string, step: 'submit' | 'approve' | 'send-back' | 'issue', remark: string) =>
       api.post<{ state: string }>(`/api/run-sheets/${id}/${step}`, { remark }),
     rehearse: (id: string, input: Partial<Rehearse>) =>

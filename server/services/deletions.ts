@@ -43,7 +43,7 @@ export async function restore(app: App, actor: Actor, kind: DeletableKind, id: s
       throw new DomainError(
         'not found',
         'deletion.final',
-        `This ${kind} is gone: its deletion can no longer be undone.`,
+        `There is no deletion of this ${kind} that can still be undone.`,
       )
     if (await carrierHidden(tx, kind, id))
       throw new DomainError(

@@ -526,6 +526,25 @@ describe('roles', () => {
     expect((await reader.post('/api/embeddings', { problemId, machineId })).status).toBe(403)
   })
 
+  it('lets those who may delete also undo, and nobody else', async () => {
+    const reader = await Client.signedIn(server.url, 'reader')
+    const { id } = (await developer.upload<{ id: string }>('/api/problems', QUBO, 'short-lived.txt')).body
+    const path = `/api/problems/${id}`
+    const { body } = await developer.call<{ restorableUntil: string }>('DELETE', path)
+    expect(new Date(body.restorableUntil).getTime()).toBeGreaterThan(Date.now())
+    expect((await developer.get(path)).status).toBe(404)
+    for (const kind of ['problems', 'embeddings', 'run-sheets'])
+      for (const client of [reader, steward])
+        expect((await client.post(`/api/${kind}/${id}/restore`)).status, kind).toBe(403)
+    expect((await developer.post(`/api/embeddings/${id}/restore`)).status).toBe(404)
+    expect((await developer.post(`${path}/restore`)).status).toBe(200)
+    expect((await developer.get(`${path}/coefficients?form=qubo`)).text).toContain('a')
+    expect((await developer.post(`${path}/restore`)).status).toBe(404)
+    expect((await reader.call('DELETE', `/api/embeddings/${embeddingId}`)).status).toBe(403)
+    expect((await developer.call('DELETE', `/api/embeddings/${embeddingId}`)).status).toBe(409)
+    await developer.call('DELETE', path)
+  })
+
   it('are asked of everybody', async () => {
     const nobody = new Client(server.url)
     expect((await nobody.get('/api/problems')).status).toBe(401)
