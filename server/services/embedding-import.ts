@@ -1,4 +1,5 @@
 import { randomUUID } from 'node:crypto'
+import type { Embedding } from '../../shared/engine/embedding/embedding'
 import { packChains } from '../../shared/engine/embedding/embedding'
 import { embeddingStats } from '../../shared/engine/embedding/stats'
 import { verifyEmbedding } from '../../shared/engine/embedding/verify'
@@ -7,20 +8,52 @@ import type { ImportEmbedding } from '../../shared/schemas/embeddings'
 import type { Actor, App } from '../app'
 import { nextNumber } from '../database/repositories/counters'
 import { insertEmbedding } from '../database/repositories/embeddings'
-import { packEmbedding } from './chains'
+import { changedChains, packEmbedding } from './chains'
 import { storedStats } from './embedding-stats'
-import { identityOf, subjectOf } from './embedding-subject'
+import type { Subject } from './embedding-subject'
+import { carriedChains, embeddingRow, identityOf, subjectOf } from './embedding-subject'
 
 /** Saves chains given by hand, by variable label, after the checker has passed them. */
 export async function importEmbedding(app: App, actor: Actor, input: ImportEmbedding): Promise<{ id: string }> {
   const subject = await subjectOf(app, actor, input)
+  const before = input.editedFrom ? await editedChains(app, actor, subject, input.editedFrom) : null
+  const embedding = verifiedChains(subject, input.chains)
+  const { bytes, fingerprint } = packEmbedding(embedding)
+  const chainsBlobId = await app.blobs.write(bytes)
+  const id = randomUUID()
+  const method = before ? 'edited' : 'imported'
+  await app.db.transaction(async (tx) => {
+    await app.blobs.adopt(tx, chainsBlobId)
+    await insertEmbedding(tx, {
+      id,
+      ...identityOf(app, actor, subject),
+      number: await nextNumber(tx, subject.problem.id, 'embedding'),
+      status: 'found',
+      method,
+      methodUsed: method,
+      startId: input.editedFrom,
+      changedChains: before && changedChains(before, embedding),
+      seed: 0,
+      tries: 0,
+      timeLimitSeconds: 0,
+      seconds: 0,
+      chainsBlobId,
+      fingerprint,
+      stats: storedStats(embeddingStats(embedding, subject.graph, subject.machine.graph)),
+    })
+  })
+  return { id }
+}
+
+/** @throws DomainError naming each broken rule */
+function verifiedChains(subject: Subject, named: ImportEmbedding['chains']): Embedding {
   const { labels, graph, machine } = subject
   const known = new Set(labels)
-  const unknown = Object.keys(input.chains).filter((label) => !known.has(label))
+  const unknown = Object.keys(named).filter((label) => !known.has(label))
   const issues = unknown.map((label) => ({ path: `chains.${label}`, message: `The problem has no variable ${label}.` }))
   const { fabric, indexOf } = machine
   const outside = fabric.graph.order
-  const chains = labels.map((label) => (Object.hasOwn(input.chains, label) ? input.chains[label]! : []))
+  const chains = labels.map((label) => (Object.hasOwn(named, label) ? named[label]! : []))
   // A number that the family lacks becomes an index outside the machine, which the checker names as unknown.
   const dense = chains.map((chain) => chain.map((number) => (indexOf(number) < 0 ? outside + number : indexOf(number))))
   const violations = verifyEmbedding(graph, machine.graph, machine.usable, dense, {
@@ -34,30 +67,22 @@ export async function importEmbedding(app: App, actor: Actor, input: ImportEmbed
     throw new DomainError(
       'not acceptable',
       'embedding.invalid',
-      `These chains break ${issues.length} rules; the first: ${issues[0]!.message}`,
+      issues.length === 1
+        ? issues[0]!.message
+        : `These chains break ${issues.length} rules; the first: ${issues[0]!.message}`,
       issues.slice(0, 200),
     )
-  const embedding = packChains(dense)
-  const { bytes, fingerprint } = packEmbedding(embedding)
-  const chainsBlobId = await app.blobs.write(bytes)
-  const id = randomUUID()
-  await app.db.transaction(async (tx) => {
-    await app.blobs.adopt(tx, chainsBlobId)
-    await insertEmbedding(tx, {
-      id,
-      ...identityOf(app, actor, subject),
-      number: await nextNumber(tx, subject.problem.id, 'embedding'),
-      status: 'found',
-      method: 'imported',
-      methodUsed: 'imported',
-      seed: 0,
-      tries: 0,
-      timeLimitSeconds: 0,
-      seconds: 0,
-      chainsBlobId,
-      fingerprint,
-      stats: storedStats(embeddingStats(embedding, graph, machine.graph)),
-    })
-  })
-  return { id }
+  return packChains(dense)
+}
+
+/** The chains as they were before they were edited. */
+async function editedChains(app: App, actor: Actor, subject: Subject, id: string): Promise<Embedding> {
+  const row = await embeddingRow(app, actor, id)
+  const refuse = (message: string) => {
+    throw new DomainError('not acceptable', 'embedding.edited-from', message, [{ path: 'editedFrom', message }])
+  }
+  if (row.problemId !== subject.problem.id) refuse(`E-${row.number} is not of ${subject.problem.name}.`)
+  if (row.machineId !== subject.machine.machine.id) refuse(`E-${row.number} is not on ${subject.machine.machine.name}.`)
+  if (row.status !== 'found') refuse(`E-${row.number} is ${row.status}; it has no chains to edit.`)
+  return carriedChains(app, subject, row)
 }

@@ -13,12 +13,18 @@ import { namedChains, unpackChains } from './chains'
 import { statsView } from './embedding-stats'
 import type { Subject } from './embedding-subject'
 import { embeddingRow, subjectOf } from './embedding-subject'
+import type { CalibratedMachine } from './machine-graphs'
 import { calibratedMachine } from './machine-graphs'
 
 /** True when the embedding still holds at the calibration in force; null when it has no chains. */
-async function holdsNow(app: App, row: EmbeddingRow, subject: Subject, chains: Embedding): Promise<boolean | null> {
+async function holdsNow(
+  app: App,
+  row: EmbeddingRow,
+  subject: Subject,
+  chains: Embedding,
+  current: CalibratedMachine,
+): Promise<boolean | null> {
   if (row.status !== 'found') return null
-  const current = await calibratedMachine(app, row, row.machineId)
   if (current.calibration.number === row.calibration) return true
   const { violations } = await app.compute.run('checkEmbedding', {
     task: { problem: subject.graph, machine: current.graph, usable: current.usable },
@@ -33,7 +39,7 @@ async function holdsNow(app: App, row: EmbeddingRow, subject: Subject, chains: E
 async function startView(app: App, row: EmbeddingRow): Promise<StartView | null> {
   const { method, startId, frozen, changedChains } = row
   const numbers = startId ? await findNumbers(app.db, startId) : undefined
-  if (!numbers || (method !== 'repair' && method !== 'shorten')) return null
+  if (!numbers || (method !== 'repair' && method !== 'shorten' && method !== 'edited')) return null
   return { ...numbers, work: method, frozen, changed: changedChains }
 }
 
@@ -98,6 +104,7 @@ export async function embeddingView(app: App, actor: Actor, id: string): Promise
   const row = await embeddingRow(app, actor, id)
   const subject = await subjectOf(app, actor, row)
   const { labels, machine } = subject
+  const current = await calibratedMachine(app, row, row.machineId)
   const chains = row.chainsBlobId ? unpackChains(await app.blobs.read(row.chainsBlobId)) : NO_CHAINS
   const named = row.chainsBlobId ? namedChains(chains, labels, machine.fabric.ids) : {}
   const found = row.status === 'found'
@@ -110,7 +117,8 @@ export async function embeddingView(app: App, actor: Actor, id: string): Promise
     status: row.status,
     jobId: job?.id ?? null,
     ...about(subject),
-    holdsAtCurrentCalibration: await holdsNow(app, row, subject, chains),
+    calibrationInForce: current.calibration.number,
+    holdsAtCurrentCalibration: await holdsNow(app, row, subject, chains, current),
     ...making(row),
     triesPlanned: triesPlanned(row, job),
     start: await startView(app, row),

@@ -59,6 +59,8 @@ export const importEmbeddingSchema = z.object({
   problemId: idSchema,
   machineId: idSchema,
   calibration: calibrationNumberSchema.optional(),
+  /** The embedding whose chains were edited by hand: of the same problem on the same machine. */
+  editedFrom: idSchema.optional(),
   chains: z.record(z.string(), z.array(z.number().int().min(0)).max(100_000)),
 })
 export type ImportEmbedding = z.infer<typeof importEmbeddingSchema>
@@ -68,7 +70,7 @@ export type EmbeddingStatus = 'running' | 'found' | 'none found' | 'cancelled' |
 export type Objective = z.infer<typeof objectiveSchema>
 export type StartWork = z.infer<typeof startWorkSchema>
 /** What was asked for. */
-export type EmbeddingMethod = z.infer<typeof embeddingMethodSchema> | StartWork | 'imported'
+export type EmbeddingMethod = z.infer<typeof embeddingMethodSchema> | StartWork | 'imported' | 'edited'
 /** What made the embedding that is kept. */
 export type MethodUsed = Exclude<EmbeddingMethod, 'auto'>
 
@@ -95,7 +97,7 @@ export interface StartView {
   number: number
   /** Another problem than the embedding's own where the problem was changed in between. */
   problem: { id: string; number: number }
-  work: StartWork
+  work: StartWork | 'edited'
   /** Labels of the variables whose chains had to stay. */
   frozen: string[]
   /** Chains that differ from the start's; null unless found. */
@@ -139,6 +141,8 @@ export interface EmbeddingView {
   problem: { id: string; number: number; name: string; variables: number; interactions: number }
   machine: { id: string; name: string; family: string; qubits: number }
   calibration: number
+  /** Of the machine, now. */
+  calibrationInForce: number
   /** False when a newer calibration of the machine broke it. */
   holdsAtCurrentCalibration: boolean | null
   method: EmbeddingMethod

@@ -221,6 +221,67 @@ describe('shortening', () => {
   })
 })
 
+describe('chains edited by hand', () => {
+  const save = (input: Parameters<typeof importEmbedding>[2]) => importEmbedding(test.app, test.actor, input)
+  const EDITED = { ...CHAINS, b: [1, 2] }
+
+  it('are saved as an embedding of their own, with the one they were edited from', async () => {
+    const { problemId, machineId, embeddingId } = await triangle()
+    const { id } = await save({ problemId, machineId, editedFrom: embeddingId, chains: EDITED })
+    expect(await embeddingView(test.app, test.actor, id)).toMatchObject({
+      status: 'found',
+      method: 'edited',
+      methodUsed: 'edited',
+      chains: EDITED,
+      calibration: 1,
+      calibrationInForce: 1,
+      start: { id: embeddingId, work: 'edited', changed: 1, frozen: [] },
+    })
+    expect((await embeddingView(test.app, test.actor, embeddingId)).chains).toEqual(CHAINS)
+  })
+
+  it('are refused with every broken rule, and nothing is saved', async () => {
+    const { problemId, machineId, embeddingId } = await triangle()
+    const before = (await problemView(test.app, test.actor, problemId)).embeddings.length
+    const broken = save({ problemId, machineId, editedFrom: embeddingId, chains: { ...CHAINS, b: [1, 8], c: [3] } })
+    await expect(broken).rejects.toMatchObject({
+      kind: 'not acceptable',
+      code: 'embedding.invalid',
+      issues: [
+        { path: 'chains.b', message: expect.stringContaining('falls apart') },
+        { path: 'chains.b', message: expect.stringContaining('No coupler joins the chains of b and c') },
+      ],
+    })
+    expect((await problemView(test.app, test.actor, problemId)).embeddings).toHaveLength(before)
+  })
+
+  it('are checked against the calibration in force', async () => {
+    const { problemId, machineId, embeddingId } = await triangle()
+    await lose(machineId, [2])
+    await expect(save({ problemId, machineId, editedFrom: embeddingId, chains: EDITED })).rejects.toMatchObject({
+      code: 'embedding.invalid',
+      message: expect.stringMatching(/qubit 2, which is missing/),
+    })
+    const { id } = await save({ problemId, machineId, editedFrom: embeddingId, chains: CHAINS })
+    expect(await embeddingView(test.app, test.actor, id)).toMatchObject({ calibration: 2, start: { changed: 0 } })
+    expect(await embeddingView(test.app, test.actor, embeddingId)).toMatchObject({
+      calibration: 1,
+      calibrationInForce: 2,
+    })
+  })
+
+  it('come from an embedding of the same problem on the same machine', async () => {
+    const { problemId, machineId, embeddingId } = await triangle()
+    const otherProblem = await test.problem(TRIANGLE)
+    const otherMachine = await test.machine({ kind: 'square', width: 3, height: 3 })
+    const asked = { machineId, problemId, editedFrom: embeddingId, chains: CHAINS }
+    const refused = { kind: 'not acceptable', code: 'embedding.edited-from' }
+    await expect(save({ ...asked, problemId: otherProblem })).rejects.toMatchObject(refused)
+    await expect(save({ ...asked, machineId: otherMachine })).rejects.toMatchObject(refused)
+    await expect(save({ ...asked, editedFrom: 'nowhere' })).rejects.toMatchObject({ kind: 'not found' })
+  })
+})
+
 describe('the chosen embedding', () => {
   const choose = (id: string, chosen = true) => chooseEmbedding(test.app, test.actor, id, chosen)
   const chosenOf = async (problemId: string) =>

@@ -1,5 +1,5 @@
 import type { EmbeddingOfProblem } from '#shared/schemas/problems'
-import { methodName } from './methods'
+import { isSearched, methodName } from './methods'
 import { formatNumber, formatPercent } from '../format'
 import { formatDuration } from '../formatTime'
 
@@ -51,8 +51,8 @@ export const COMPARE_COLUMNS: readonly CompareColumn[] = [
     field: 'seconds',
     label: 'Time',
     better: 'less',
-    of: ({ method, seconds }) => (method === 'imported' ? null : seconds),
-    text: ({ method, seconds }) => formatDuration(method === 'imported' ? null : seconds),
+    of: ({ method, seconds }) => (isSearched(method) ? seconds : null),
+    text: ({ method, seconds }) => formatDuration(isSearched(method) ? seconds : null),
   },
 ]
 

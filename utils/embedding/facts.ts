@@ -12,6 +12,13 @@ const placeText = (tryNumber: number, of: number | null): string =>
 function methodFact(embedding: EmbeddingView): Fact {
   const { method, tryNumber, triesPlanned, seed, seconds } = embedding
   if (method === 'imported') return { label: 'Method', value: 'imported', note: 'by hand or from a file' }
+  if (method === 'edited')
+    return {
+      label: 'Method',
+      value: methodName(embedding),
+      word: true,
+      note: embedding.start ? `from E-${embedding.start.number}` : undefined,
+    }
   const place = triesPlanned !== 1 && tryNumber !== null ? `try ${placeText(tryNumber, triesPlanned)}, ` : ''
   return {
     label: 'Method',

@@ -35,6 +35,7 @@ export const METHOD_NAMES: Record<EmbeddingMethod, string> = {
   repair: 'repair',
   shorten: 'shortening',
   imported: 'imported',
+  edited: 'edited by hand',
 }
 
 export const OBJECTIVE_CHOICES: readonly { value: Objective; label: string }[] = [
@@ -53,6 +54,9 @@ const PHASES: Record<string, string> = {
 
 /** What a try is doing, in words. */
 export const phaseWords = (phase: string): string => PHASES[phase] ?? phase
+
+/** Whether a search gave the embedding, so that it has a seed and took time. */
+export const isSearched = (method: EmbeddingMethod): boolean => method !== 'imported' && method !== 'edited'
 
 /** The method that gave the embedding, else the one asked for. */
 export const methodName = ({

@@ -52,7 +52,7 @@ async function startOfRow(app: App, row: EmbeddingRow, subject: Subject): Promis
 }
 
 function optionsOf({ method, seed, tries, timeLimitSeconds, objective, target }: EmbeddingRow): SearchOptions {
-  if (method === 'imported') throw new Error('an imported embedding is not searched for')
+  if (method === 'imported' || method === 'edited') throw new Error(`an ${method} embedding is not searched for`)
   return { method, seed, tries, timeLimitSeconds, objective, target }
 }
 
