@@ -5,14 +5,28 @@ import { lightColours, lightHues, themeVariables } from './assets/css/tokens'
 const asVariables = (names: string[], prefix = '') =>
   Object.fromEntries(names.map((name) => [name, `var(--${prefix}${name})`]))
 
+/** Who asks the system for more contrast gets it with every theme but one chosen for its own contrast. */
+const MORE_CONTRAST = ['(prefers-contrast: more)', '(forced-colors: active)']
+const withContrast = (and = '') => `@media ${MORE_CONTRAST.map((asked) => `screen and ${asked}${and}`).join(', ')}`
+const DARK = '(prefers-color-scheme: dark)'
+
 /** The system decides, `data-theme` on <html> overrides, paper is always light. */
 const themes = plugin(({ addBase }) => {
-  const light = themeVariables('light')
-  const dark = themeVariables('dark')
   addBase({
-    ':root': light,
-    '@media screen and (prefers-color-scheme: dark)': { ":root:not([data-theme='light'])": dark },
-    '@media screen': { ":root[data-theme='dark']": dark },
+    ':root': themeVariables('light'),
+    [`@media screen and ${DARK}`]: { ':root:not([data-theme])': themeVariables('dark') },
+    '@media screen': { ":root[data-theme='dark']": themeVariables('dark') },
+  })
+  addBase({
+    [withContrast()]: {
+      ":root:not([data-theme]), :root[data-theme='light']": themeVariables('contrast-light'),
+      ":root[data-theme='dark']": themeVariables('contrast-dark'),
+    },
+    [withContrast(` and ${DARK}`)]: { ':root:not([data-theme])': themeVariables('contrast-dark') },
+    '@media screen': {
+      ":root[data-theme='contrast-light']": themeVariables('contrast-light'),
+      ":root[data-theme='contrast-dark']": themeVariables('contrast-dark'),
+    },
   })
 })
 

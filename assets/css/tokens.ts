@@ -51,6 +51,53 @@ export const darkColours: Palette = {
   slate: '#93B4D6',
 }
 
+/** High contrast: text at 7:1 and more, and the rules, mere decoration elsewhere, can be seen too. */
+export const contrastLightColours: Palette = {
+  paper: '#FFFFFF',
+  well: '#F5F5F2',
+  tint: '#E6E6E0',
+  field: '#FFFFFF',
+  ink: '#000000',
+  ink2: '#2B332F',
+  edge: '#3F4A44',
+  hair: '#8C948F',
+  rule: '#6F7873',
+  pale: '#6A736E',
+  leaf: '#064A39',
+  leafhover: '#00352A',
+  leafwash: '#DCEBE2',
+  onleaf: '#FFFFFF',
+  clay: '#8A3210',
+  claytext: '#7A2A0A',
+  claywash: '#FBE9DF',
+  ochre: '#8A6200',
+  ochretext: '#5C4100',
+  slate: '#1D3C5E',
+}
+
+export const contrastDarkColours: Palette = {
+  paper: '#000000',
+  well: '#0D1210',
+  tint: '#232B27',
+  field: '#0A0E0C',
+  ink: '#FFFFFF',
+  ink2: '#D6DDD8',
+  edge: '#B4BDB7',
+  hair: '#6B746F',
+  rule: '#858E89',
+  pale: '#8A938E',
+  leaf: '#8FE6C8',
+  leafhover: '#B5F2DC',
+  leafwash: '#0F3A2D',
+  onleaf: '#000000',
+  clay: '#FF9F6E',
+  claytext: '#FFB48C',
+  claywash: '#3A1B0A',
+  ochre: '#FFD24D',
+  ochretext: '#FFD966',
+  slate: '#B5D6FA',
+}
+
 /** Hues of chains: told apart with normal and with deficient colour vision; none is near clay. */
 export const lightHues = {
   mulberry: '#974E66',
@@ -76,12 +123,24 @@ export const darkHues: Readonly<Record<HueName, string>> = {
   iris: '#6A81CE',
 }
 
-/** Declarations of one theme: `--paper`, …, `--hue-mulberry`, …. */
-export function themeVariables(theme: 'light' | 'dark'): Record<string, string> {
-  const colours = theme === 'light' ? lightColours : darkColours
-  const hues = theme === 'light' ? lightHues : darkHues
-  const declarations: Record<string, string> = { 'color-scheme': theme }
-  for (const [name, value] of Object.entries(colours)) declarations[`--${name}`] = value
+export const palettes = {
+  light: lightColours,
+  dark: darkColours,
+  'contrast-light': contrastLightColours,
+  'contrast-dark': contrastDarkColours,
+} satisfies Record<string, Palette>
+
+export type ThemeName = keyof typeof palettes
+
+/** Declarations of one theme: `--paper`, …, `--hue-mulberry`, …, and what lies over the page behind a dialog. */
+export function themeVariables(theme: ThemeName): Record<string, string> {
+  const isDark = theme.endsWith('dark')
+  const hues = isDark ? darkHues : lightHues
+  const declarations: Record<string, string> = {
+    'color-scheme': isDark ? 'dark' : 'light',
+    '--veil': isDark ? 'rgb(0 0 0 / 0.6)' : 'rgb(30 42 38 / 0.32)',
+  }
+  for (const [name, value] of Object.entries(palettes[theme])) declarations[`--${name}`] = value
   for (const [name, value] of Object.entries(hues)) declarations[`--hue-${name}`] = value
   return declarations
 }

@@ -2,12 +2,12 @@ import { onBeforeUnmount, onMounted, shallowRef } from 'vue'
 import type { ShallowRef } from 'vue'
 import { readTokens } from './tokens'
 import type { Tokens } from './tokens'
+import { watchTheme } from '../ui/themes'
 
 /** Tokens of the theme in force, read again whenever the root element or the system's preference changes. */
 export function useTokens(): Readonly<ShallowRef<Tokens>> {
   const tokens = shallowRef(readTokens(() => ''))
-  let observer: MutationObserver | null = null
-  let scheme: MediaQueryList | null = null
+  let stop: (() => void) | undefined
 
   const read = () => {
     const style = getComputedStyle(document.documentElement)
@@ -16,14 +16,8 @@ export function useTokens(): Readonly<ShallowRef<Tokens>> {
   }
   onMounted(() => {
     read()
-    observer = new MutationObserver(read)
-    observer.observe(document.documentElement, { attributes: true, attributeFilter: ['class', 'data-theme', 'style'] })
-    scheme = matchMedia('(prefers-color-scheme: dark)')
-    scheme.addEventListener('change', read)
+    stop = watchTheme(read)
   })
-  onBeforeUnmount(() => {
-    observer?.disconnect()
-    scheme?.removeEventListener('change', read)
-  })
+  onBeforeUnmount(() => stop?.())
   return tokens
 }

@@ -1,11 +1,15 @@
 import { describe, expect, it } from 'vitest'
 import {
+  contrastDarkColours,
+  contrastLightColours,
   darkColours,
   darkHues,
   lightColours,
   lightHues,
+  palettes,
   themeVariables,
   type Palette,
+  type ThemeName,
 } from '../../../../assets/css/tokens'
 
 // Contrast as defined by WCAG 2.2, "contrast ratio" and "relative luminance".
@@ -27,28 +31,30 @@ const themes: [string, Palette][] = [
   ['dark', darkColours],
 ]
 
+const TEXT_ON_GROUND = [
+  ['ink', 'paper'],
+  ['ink', 'well'],
+  ['ink', 'leafwash'],
+  ['ink', 'claywash'],
+  ['ink2', 'paper'],
+  ['ink2', 'well'],
+  ['ink2', 'field'],
+  ['ink2', 'leafwash'],
+  ['leaf', 'paper'],
+  ['leaf', 'leafwash'],
+  ['onleaf', 'leaf'],
+  ['onleaf', 'leafhover'],
+  ['claytext', 'paper'],
+  ['claytext', 'claywash'],
+  ['ochretext', 'paper'],
+  ['ochretext', 'well'],
+  ['slate', 'paper'],
+  ['slate', 'well'],
+  ['paper', 'ink'],
+] as const
+
 describe.each(themes)('the %s theme', (_, colours) => {
-  it.each([
-    ['ink', 'paper'],
-    ['ink', 'well'],
-    ['ink', 'leafwash'],
-    ['ink', 'claywash'],
-    ['ink2', 'paper'],
-    ['ink2', 'well'],
-    ['ink2', 'field'],
-    ['ink2', 'leafwash'],
-    ['leaf', 'paper'],
-    ['leaf', 'leafwash'],
-    ['onleaf', 'leaf'],
-    ['onleaf', 'leafhover'],
-    ['claytext', 'paper'],
-    ['claytext', 'claywash'],
-    ['ochretext', 'paper'],
-    ['ochretext', 'well'],
-    ['slate', 'paper'],
-    ['slate', 'well'],
-    ['paper', 'ink'],
-  ] as const)('%s on %s can be read', (text, ground) => {
+  it.each(TEXT_ON_GROUND)('%s on %s can be read', (text, ground) => {
     expect(contrast(colours[text], colours[ground])).toBeGreaterThanOrEqual(4.5)
   })
 
@@ -62,11 +68,34 @@ describe.each(themes)('the %s theme', (_, colours) => {
   })
 })
 
+describe.each([
+  ['light', contrastLightColours],
+  ['dark', contrastDarkColours],
+] as [string, Palette][])('the %s high-contrast theme', (_, colours) => {
+  // WCAG 2.2, success criterion 1.4.6 (AAA).
+  it.each(TEXT_ON_GROUND)('%s on %s can be read with ease', (text, ground) => {
+    expect(contrast(colours[text], colours[ground])).toBeGreaterThanOrEqual(7)
+  })
+
+  it.each([
+    ['edge', 'paper', 4.5],
+    ['edge', 'field', 4.5],
+    ['clay', 'paper', 4.5],
+    ['ochre', 'paper', 4.5],
+    ['rule', 'paper', 3],
+    ['rule', 'well', 3],
+    ['hair', 'paper', 3],
+  ] as const)('%s on %s can be seen', (mark, ground, least) => {
+    expect(contrast(colours[mark], colours[ground])).toBeGreaterThanOrEqual(least)
+  })
+})
+
 it('every hue of chains can be told from paper', () => {
   for (const hue of Object.values(lightHues)) expect(contrast(hue, lightColours.paper)).toBeGreaterThanOrEqual(3)
   for (const hue of Object.values(darkHues)) expect(contrast(hue, darkColours.paper)).toBeGreaterThanOrEqual(3)
 })
 
-it('both themes set the same variables', () => {
-  expect(Object.keys(themeVariables('dark'))).toEqual(Object.keys(themeVariables('light')))
+it('all themes set the same variables', () => {
+  for (const theme of Object.keys(palettes) as ThemeName[])
+    expect(Object.keys(themeVariables(theme))).toEqual(Object.keys(themeVariables('light')))
 })
