@@ -6,9 +6,16 @@ export interface Answer<T> {
   text: string
 }
 
+/** What a browser would be shown at an address, redirections followed. */
+export interface PageAnswer {
+  status: number
+  text: string
+  endedAt: string
+}
+
 /** A signed-in caller of the routes, with its session cookie. */
 export class Client {
-  private cookie = ''
+  private readonly cookies = new Map<string, string>()
 
   constructor(readonly url: string) {}
 
@@ -24,18 +31,47 @@ export class Client {
 
   async call<T = Record<string, unknown>>(method: string, path: string, body?: unknown): Promise<Answer<T>> {
     const form = body instanceof FormData
+    const type: Record<string, string> = body && !form ? { 'content-type': 'application/json' } : {}
+    const { status, headers, text } = await this.send(
+      method,
+      path,
+      type,
+      form ? body : body === undefined ? undefined : JSON.stringify(body),
+    )
+    const json = headers.get('content-type')?.includes('json')
+    return { status, text, body: (json ? JSON.parse(text) : undefined) as T }
+  }
+
+  private async send(method: string, path: string, headers: Record<string, string>, body?: BodyInit) {
+    const cookie = [...this.cookies].map(([name, value]) => `${name}=${value}`).join('; ')
     const response = await fetch(this.url + path, {
       method,
-      headers: {
-        ...(this.cookie ? { cookie: this.cookie } : {}),
-        ...(body && !form ? { 'content-type': 'application/json' } : {}),
-      },
-      body: form ? body : body === undefined ? undefined : JSON.stringify(body),
+      headers: { ...headers, ...(this.cookies.size > 0 ? { cookie } : {}) },
+      body,
+      redirect: 'manual',
     })
-    for (const cookie of response.headers.getSetCookie()) this.cookie = cookie.split(';')[0]!
-    const text = await response.text()
-    const json = response.headers.get('content-type')?.includes('json')
-    return { status: response.status, text, body: (json ? JSON.parse(text) : undefined) as T }
+    for (const set of response.headers.getSetCookie()) {
+      const [, name, value] = /^([^=]+)=([^;]*)/.exec(set)!
+      this.cookies.set(name!, value!)
+    }
+    return { status: response.status, headers: response.headers, text: await response.text() }
+  }
+
+  /** Cookies for a browser that is to go on as this person. */
+  browserCookies(): { name: string; value: string; url: string }[] {
+    return [...this.cookies].map(([name, value]) => ({ name, value, url: this.url }))
+  }
+
+  async page(path: string): Promise<PageAnswer> {
+    let endedAt = path
+    for (let hop = 0; hop < 5; hop++) {
+      const { status, headers, text } = await this.send('GET', endedAt, { accept: 'text/html' })
+      const location = headers.get('location')
+      if (status < 300 || status >= 400 || !location) return { status, text, endedAt }
+      const next = new URL(location, this.url)
+      endedAt = next.pathname + next.search
+    }
+    throw new Error(`${path} sends visitors round in circles`)
   }
 
   get = <T>(path: string) => this.call<T>('GET', path)

@@ -1,0 +1,81 @@
+import type { Browser } from 'playwright-core'
+import { fileURLToPath } from 'node:url'
+import { afterAll, beforeAll, describe, expect, it } from 'vitest'
+import { launch } from '../support/browser'
+import type { RunningServer } from '../support/server'
+import { startServer, temporaryFolder } from '../support/server'
+import type { DeadLink, Shown } from '../support/pages/crawl'
+import { crawl, tellingViews } from '../support/pages/crawl'
+import { findRoutes } from '../support/pages/routes'
+import { prepareRunning, prepareStates } from '../support/pages/states'
+import type { Finding } from '../support/pages/survey'
+import { survey } from '../support/pages/survey'
+import { demoVisitors, exploreAs, startBare } from '../support/pages/worlds'
+
+/*
+ * Every page of the product, found by itself: the fixed ones from the folder of pages, examples of the others by
+ * following links as each of the demo's people, in a workspace that holds nothing, and before there is one. Of the
+ * views that are made of the same parts one is looked at.
+ */
+
+const routes = findRoutes(fileURLToPath(new URL('../../pages', import.meta.url)))
+
+let browser: Browser
+const servers: RunningServer[] = []
+const shown: Shown = new Map()
+const dead: DeadLink[] = []
+const findings: Finding[] = []
+
+beforeAll(async () => {
+  browser = await launch()
+  await lookAtDemo()
+  await lookAtBare()
+})
+afterAll(async () => {
+  await browser?.close()
+  await Promise.all(servers.map((server) => server.stop()))
+})
+
+async function lookAtDemo(): Promise<void> {
+  const server = await startServer({ DEMO: 'true', DATA_DIR: temporaryFolder() })
+  servers.push(server)
+  await prepareStates(server.url)
+  const visitors = await demoVisitors(server.url)
+  await lookAs(visitors)
+  const running = await prepareRunning(server.url)
+  const { views } = await crawl(routes, visitors[0]!, running.paths, () => false)
+  findings.push(...(await survey(browser, tellingViews(views, shown))))
+  await running.stop()
+}
+
+async function lookAtBare(): Promise<void> {
+  const { server, stranger, setUp } = await startBare()
+  servers.push(server)
+  await lookAs([stranger])
+  await lookAs([await setUp()])
+}
+
+async function lookAs(visitors: Parameters<typeof exploreAs>[1]): Promise<void> {
+  const found = await exploreAs(routes, visitors, shown)
+  dead.push(...found.dead)
+  findings.push(...(await survey(browser, found.views)))
+}
+
+describe.each(routes)('page $pattern', ({ pattern, file }) => {
+  const about = (aspect: Finding['aspect']): string[] =>
+    findings.filter((finding) => finding.pattern === pattern && finding.aspect === aspect).map(({ text }) => text)
+
+  it('is found', () => {
+    expect(
+      shown.has(pattern),
+      `no address of pages/${file} was found: nothing links to one. Link to it from a page, or bring the demo workspace into a state that does (tests/support/pages/states.ts).`,
+    ).toBe(true)
+  })
+  it('has one first heading and a title', () => expect(about('naming')).toEqual([]))
+  it('has no violation that axe-core finds, in any theme, wide and narrow', () =>
+    expect(about('accessibility')).toEqual([]))
+  it('never scrolls sideways, 360 px wide', () => expect(about('width')).toEqual([]))
+  it('leaves the console empty', () => expect(about('console')).toEqual([]))
+})
+
+it('links nowhere but to pages that are there', () => expect(dead).toEqual([]))

@@ -1,0 +1,92 @@
+import { readFileSync } from 'node:fs'
+import { createRequire } from 'node:module'
+import type axe from 'axe-core'
+import type { Page } from 'playwright-core'
+
+const AXE = readFileSync(createRequire(import.meta.url).resolve('axe-core/axe.min.js'), 'utf8')
+/** WCAG 2.2 A and AA, and what axe-core calls good practice. */
+const TAGS = ['wcag2a', 'wcag2aa', 'wcag21a', 'wcag21aa', 'wcag22aa', 'best-practice']
+
+/** A narrow telephone, in CSS pixels: nothing may have to be scrolled sideways on it. */
+export const NARROW = { width: 360, height: 780 }
+export const WIDE = { width: 1280, height: 900 }
+
+declare global {
+  interface Window {
+    axe: typeof axe
+    useNuxtApp?: () => { isHydrating: boolean }
+  }
+}
+
+/** Waits until the page is hydrated, nothing of it is still being loaded, and fonts are there. */
+export async function settled(page: Page): Promise<void> {
+  await page.waitForFunction(() => window.useNuxtApp?.().isHydrating === false)
+  await page.waitForFunction(() => !document.querySelector('main [aria-busy="true"]'))
+  await page.evaluate(() => document.fonts.ready.then(() => undefined))
+  await twoFrames(page)
+}
+
+/** What was changed is laid out and painted after this. */
+export async function twoFrames(page: Page): Promise<void> {
+  await page.evaluate(() => new Promise((done) => requestAnimationFrame(() => requestAnimationFrame(done))))
+}
+
+/** Opens whatever is folded in the main part and is no menu, so that it is checked too. */
+export async function unfold(page: Page): Promise<void> {
+  await page.evaluate(() => {
+    for (const details of document.querySelectorAll<HTMLDetailsElement>('main details:not([open])')) details.open = true
+    const folded = 'main button[aria-expanded="false"]:not([aria-haspopup]):not(:disabled)'
+    for (const button of document.querySelectorAll<HTMLButtonElement>(folded)) button.click()
+  })
+  await twoFrames(page)
+}
+
+/** Violations, each with the first elements that show it; `within` is a selector. */
+export async function violations(page: Page, within?: string): Promise<string[]> {
+  if (!(await page.evaluate(() => 'axe' in window))) await page.evaluate(AXE)
+  return page.evaluate(
+    async ({ tags, selector }) => {
+      const { violations: found } = await window.axe.run(selector ?? document, {
+        runOnly: tags,
+        resultTypes: ['violations'],
+        elementRef: false,
+      })
+      return found.map(({ id, help, nodes }) => {
+        const places = nodes.slice(0, 3).map(({ target, any }) => `${target.join(' ')} (${any[0]?.message ?? ''})`)
+        return `${id}: ${help}, ${nodes.length}×: ${places.join('; ')}`
+      })
+    },
+    { tags: TAGS, selector: within },
+  )
+}
+
+/** Elements that reach over the right edge where the page has to be scrolled sideways; none where it has not. */
+export async function sideways(page: Page): Promise<string[]> {
+  return page.evaluate(() => {
+    const root = document.documentElement
+    if (root.scrollWidth <= root.clientWidth) return []
+    const scrolls = (element: Element): boolean => {
+      for (let up = element.parentElement; up && up !== document.body; up = up.parentElement)
+        if (getComputedStyle(up).overflowX !== 'visible') return true
+      return false
+    }
+    const over = [...document.body.querySelectorAll('*')].filter(
+      (element) => element.getBoundingClientRect().right > root.clientWidth + 0.5 && !scrolls(element),
+    )
+    const names = over.slice(-4).map((element) => {
+      const { width, right } = element.getBoundingClientRect()
+      return `<${element.tagName.toLowerCase()} class="${element.getAttribute('class') ?? ''}"> ${Math.round(width)} wide, to ${Math.round(right)}`
+    })
+    return [`${root.scrollWidth} px wide on ${root.clientWidth}: ${names.join('; ')}`]
+  })
+}
+
+/** One visible first heading, and a title that names the page. */
+export async function naming(page: Page): Promise<string[]> {
+  const { title, headings } = await page.evaluate(() => ({
+    title: document.title,
+    headings: [...document.querySelectorAll('h1')].filter((h1) => h1.checkVisibility()).length,
+  }))
+  const complaints = headings === 1 ? [] : [`${headings} headings of the first level`]
+  return /^\S.* · Espalier$/.test(title) ? complaints : [...complaints, `the title is “${title}”`]
+}

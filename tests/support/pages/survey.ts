@@ -1,0 +1,68 @@
+import type { Browser, BrowserContext } from 'playwright-core'
+import { watchPage } from '../browser'
+import { NARROW, naming, settled, sideways, twoFrames, unfold, violations, WIDE } from './checks'
+import type { View } from './crawl'
+import { themesOf, wear } from './themes'
+
+/** What is looked for on a page. */
+export const ASPECTS = ['naming', 'accessibility', 'width', 'console'] as const
+export type Aspect = (typeof ASPECTS)[number]
+
+export interface Finding {
+  readonly pattern: string
+  readonly aspect: Aspect
+  readonly text: string
+}
+
+/** Pages looked at side by side: one a processor core. */
+const AT_ONCE = 2
+
+/** Opens every view in a browser of its person and says what is wrong with it. */
+export async function survey(browser: Browser, views: readonly View[]): Promise<Finding[]> {
+  const findings: Finding[] = []
+  const waiting = [...views]
+  const worker = async (): Promise<void> => {
+    for (let view = waiting.shift(); view; view = waiting.shift()) findings.push(...(await lookAt(browser, view)))
+  }
+  await Promise.all(Array.from({ length: AT_ONCE }, worker))
+  return findings
+}
+
+/** A window of the view's person, calm and light, as wide as a desk's. */
+export async function openWindow(browser: Browser, { client }: Pick<View, 'client'>): Promise<BrowserContext> {
+  const context = await browser.newContext({ viewport: WIDE, reducedMotion: 'reduce', colorScheme: 'light' })
+  await context.addCookies(client.browserCookies())
+  return context
+}
+
+async function lookAt(browser: Browser, view: View): Promise<Finding[]> {
+  const { route, path, person, client, headings } = view
+  const findings: Finding[] = []
+  const add = (aspect: Aspect, texts: string[], where = ''): void => {
+    for (const text of texts)
+      findings.push({ pattern: route.pattern, aspect, text: `${path} as ${person ?? 'a stranger'}${where}: ${text}` })
+  }
+  if (headings !== 1) add('naming', [`${headings} headings of the first level`], ' as served')
+  const context = await openWindow(browser, view)
+  const page = await context.newPage()
+  const complaints = watchPage(page, client.url)
+  try {
+    await page.goto(client.url + path)
+    await settled(page)
+    add('naming', await naming(page))
+    await unfold(page)
+    for (const theme of await themesOf(page)) {
+      await wear(page, theme)
+      add('accessibility', await violations(page), `, ${theme}`)
+    }
+    await page.setViewportSize(NARROW)
+    await twoFrames(page)
+    add('width', await sideways(page))
+    add('accessibility', await violations(page), ', narrow')
+  } catch (error) {
+    add('console', [error instanceof Error ? error.message : String(error)])
+  }
+  add('console', complaints)
+  await context.close()
+  return findings
+}
