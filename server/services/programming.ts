@@ -1,5 +1,6 @@
 import { createHash } from 'node:crypto'
 import type { Embedding } from '../../shared/engine/embedding/embedding'
+import { couplingSums } from '../../shared/engine/programming/ranges'
 import { histogram } from '../../shared/engine/problem/histogram'
 import { convertForm } from '../../shared/engine/problem/convert'
 import type { Problem } from '../../shared/engine/problem/problem'
@@ -11,13 +12,20 @@ import {
   chainStrengths,
   cutBounds,
   referenceSize,
+  rmsCoupling,
   rmsSize,
   STRENGTH_DEFAULTS,
 } from '../../shared/engine/programming/strength'
 import { precisionReport } from '../../shared/engine/programming/precision'
 import { DomainError } from '../../shared/errors'
 import { packArrays } from '../../shared/packed-arrays'
-import type { RuleView, RunSheetSettings, RunSheetView, Strength } from '../../shared/schemas/run-sheets'
+import type {
+  RuleView,
+  RunSheetSettings,
+  RunSheetView,
+  ScaleLimitView,
+  Strength,
+} from '../../shared/schemas/run-sheets'
 import type { App } from '../app'
 import type { EmbeddingRow } from '../database/repositories/embeddings'
 import { findReferredProblem } from '../database/repositories/problems'
@@ -196,6 +204,7 @@ export function compareRules(bench: Bench, settings: RunSheetSettings, bounds: C
       value: value ?? null,
       k: { min: summary.least, max: summary.greatest },
       scale: programmed?.scale ?? 0,
+      scaleLimit: programmed ? scaleLimitOf(bench, programmed) : null,
       couplingsUnderTwoSigma: programmed
         ? couplingsUnderTwoSigma(programmed, bench.machine.sheet.controlError.J)
         : null,
@@ -203,6 +212,37 @@ export function compareRules(bench: Bench, settings: RunSheetSettings, bounds: C
       selected,
     }
   })
+}
+
+/** The value before scaling that goes furthest beyond its range, where the scale had to come down for one. */
+export function scaleLimitOf(bench: Bench, programmed: Programmed): ScaleLimitView | null {
+  const { limitedBy: range, scale } = programmed
+  if (range === 'nothing') return null
+  const { h, J, couplingSum } = bench.machine.sheet.ranges
+  const [values, ends] = {
+    h: [programmed.h, h] as const,
+    J: [programmed.J, J] as const,
+    'coupling sum': [couplingSums(programmed), couplingSum!] as const,
+  }[range]
+  let limit: ScaleLimitView = { range, limit: 1, value: 0 }
+  for (const value of values) {
+    const end = ends[value < 0 ? 0 : 1]
+    if (value / end > (limit.value * scale) / limit.limit) limit = { range, limit: end, value: value / scale }
+  }
+  return limit
+}
+
+/** Figures of the Ising form that strengths are reckoned from. */
+export function isingSizes({ ising }: Bench): RunSheetView['ising'] {
+  const greatest = (list: Float64Array) => list.reduce((most, value) => Math.max(most, Math.abs(value)), 0)
+  return {
+    variables: ising.n,
+    interactions: ising.values.length,
+    greatestJ: greatest(ising.values),
+    greatestH: greatest(ising.linear),
+    rmsJ: rmsCoupling(ising),
+    leastShare: STRENGTH_DEFAULTS.leastShare,
+  }
 }
 
 const SIZE_BINS = 24

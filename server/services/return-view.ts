@@ -13,6 +13,7 @@ import type {
   EnergySeries,
   ReturnView,
   SolutionRow,
+  SolutionView,
 } from '../../shared/schemas/returns'
 import type { Actor, App } from '../app'
 import { findJobOfSubject } from '../database/repositories/jobs'
@@ -113,7 +114,7 @@ export async function returnView(app: App, actor: Actor, id: string, decode: Dec
     return { ...base, breaks: null, decodings: [], energies: null, best: null, solutions: [], physicalEnergies: [] }
   const loaded = await load(app, actor, row, [...METHODS], SHOWN_SOLUTIONS)
   const shown = loaded.summary.decoded.find(({ method }) => method === decode)!
-  const solutions = solutionRows(bench, shown)
+  const solutions = solutionViews(bench, shown)
   return {
     ...base,
     breaks: breaksView(loaded),
@@ -162,18 +163,19 @@ function breaksView({ bench, programming, programmed, summary }: Loaded): Return
 function centre({
   energies,
   counts,
-}: Pick<DecodedSummary, 'energies' | 'counts'>): { mean: number; median: number } | null {
-  const total = readsIn({ counts })
-  if (total === 0) return null
+}: Pick<DecodedSummary, 'energies' | 'counts'>): { mean: number; median: number; total: number } | null {
+  const reads = readsIn({ counts })
+  if (reads === 0) return null
   const order = Array.from(energies.keys()).sort((a, b) => energies[a]! - energies[b]!)
   let below = 0
   let median = energies[order[0]!]!
   for (const row of order) {
     median = energies[row]!
     below += counts[row]!
-    if (2 * below >= total) break
+    if (2 * below >= reads) break
   }
-  return { mean: energies.reduce((sum, energy, row) => sum + energy * counts[row]!, 0) / total, median }
+  const total = energies.reduce((sum, energy, row) => sum + energy * counts[row]!, 0)
+  return { mean: total / reads, median, total }
 }
 
 function decodingRow({ problem }: Bench, decoded: DecodedSummary): DecodingRow {
@@ -190,6 +192,7 @@ function decodingRow({ problem }: Bench, decoded: DecodedSummary): DecodingRow {
     bestCount,
     median: middle ? signed(sign, middle.median) : null,
     mean: middle ? signed(sign, middle.mean) : null,
+    total: middle ? signed(sign, middle.total) : null,
   }
 }
 
@@ -244,6 +247,23 @@ function solutionRows({ labels, problem }: Bench, { solutions }: DecodedSummary)
       labels.map((label, i) => [label, problem.form === 'qubo' ? (spins[i]! + 1) / 2 : spins[i]!]),
     ),
   }))
+}
+
+/** Solutions with the parts of their energies, in the Ising form. */
+function solutionViews(bench: Bench, decoded: DecodedSummary): SolutionView[] {
+  const { linear, rows, cols, values, offset } = bench.ising
+  const sign = signOf(bench.problem.sense)
+  return solutionRows(bench, decoded).map((row, k) => {
+    const { spins } = decoded.solutions[k]!
+    const fields = linear.reduce((sum, h, i) => sum + h * spins[i]!, 0)
+    const interactions = values.reduce((sum, J, e) => sum + J * spins[rows[e]!]! * spins[cols[e]!]!, 0)
+    const parts = {
+      linear: signed(sign, fields),
+      interactions: signed(sign, interactions),
+      offset: signed(sign, offset),
+    }
+    return { ...row, parts }
+  })
 }
 
 /** The best distinct decoded assignments. */

@@ -1,7 +1,7 @@
 import { randomUUID } from 'node:crypto'
 import type { z } from 'zod'
 import { machineTimeEstimate } from '../../shared/engine/programming/machine-time'
-import { referenceSize } from '../../shared/engine/programming/strength'
+import { pullsOf, referenceSize } from '../../shared/engine/programming/strength'
 import { DomainError } from '../../shared/errors'
 import type { Page, PageQuery } from '../../shared/schemas/common'
 import type { DeletionView } from '../../shared/schemas/deletions'
@@ -33,7 +33,16 @@ import { deleteFor } from './deletions'
 import { embeddingRow } from './embedding-subject'
 import type { Bench, Programming } from './programming'
 import { checksOf } from './run-sheet-checks'
-import { compareRules, fingerprintOf, loadBench, precisionOf, programmeBench, requireProgrammed } from './programming'
+import {
+  compareRules,
+  fingerprintOf,
+  isingSizes,
+  loadBench,
+  precisionOf,
+  programmeBench,
+  requireProgrammed,
+  scaleLimitOf,
+} from './programming'
 import { couplerCountsOf } from './chain-couplers'
 
 /** A run sheet of the workspace. @throws DomainError not found, also for another workspace's */
@@ -172,10 +181,12 @@ export async function runSheetView(app: App, actor: Actor, id: string): Promise<
       programmed: row.fingerprint ?? fingerprintOf(programmed),
     },
     maxAbsJ: referenceSize(bench.ising),
+    ising: isingSizes(bench),
     rules: compareRules(bench, row.settings, programming.bounds),
     chains: chainRows(bench, programming),
     scale: programmed.scale,
     limitedBy: programmed.limitedBy,
+    scaleLimit: scaleLimitOf(bench, programmed),
     precision,
     machineTime: time,
     checks: await checksOf(app, bench, row.settings, programming, programmed, precision),
@@ -192,16 +203,22 @@ export async function runSheetView(app: App, actor: Actor, id: string): Promise<
   }
 }
 
+const qubitsIn = ({ embedding: { offsets } }: Bench, i: number): number => offsets[i + 1]! - offsets[i]!
+
 function chainRows(bench: Bench, { strengths, bounds }: Programming): ChainRow[] {
   const couplers = couplerCountsOf(bench)
+  const pulls = pullsOf(bench.ising)
   return bench.labels.map((label, i) => ({
     variable: i,
     label,
-    qubits: bench.embedding.offsets[i + 1]! - bench.embedding.offsets[i]!,
+    qubits: qubitsIn(bench, i),
     couplers: couplers[i]!,
     strength: strengths[i]!,
     cutBound: bounds.bound[i]!,
     cutBoundExact: bounds.exact[i] === 1,
+    cutSplit: qubitsIn(bench, i) > 1 ? bounds.splits[i]! : null,
+    pull: pulls[i]!,
+    field: bench.ising.linear[i]!,
   }))
 }
 
@@ -222,7 +239,8 @@ function machineTimeView(bench: Bench, settings: RunSheetSettings): RunSheetView
       milliseconds: (time.readoutMicroseconds + time.delayMicroseconds) / 1000,
     },
   ]
-  return { parts, totalMilliseconds: time.totalMicroseconds / 1000 }
+  const timing = { programmingMicroseconds, readoutMicroseconds, delayMicroseconds }
+  return { parts, totalMilliseconds: time.totalMicroseconds / 1000, timing }
 }
 
 async function returnViews(app: App, runSheetId: string): Promise<RunSheetView['returns']> {

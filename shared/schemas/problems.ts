@@ -75,6 +75,8 @@ export interface StructureView {
   degreeHistogram: { value: number; count: number }[]
   linearHistogram: HistogramBin[]
   interactionHistogram: HistogramBin[]
+  /** Left out in reports of before it was kept. */
+  coefficientSizes?: { least: number; greatest: number } | null
   /** max |coefficient| / min nonzero |coefficient|, or null without coefficients. */
   dynamicRange: number | null
   components: number

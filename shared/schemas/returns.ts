@@ -39,6 +39,8 @@ export interface DecodingRow {
   bestCount: number
   median: number | null
   mean: number | null
+  /** Of the energies of all reads kept; the mean is this over `readsKept`. */
+  total: number | null
 }
 
 export interface EnergySeries {
@@ -55,6 +57,11 @@ export interface SolutionRow {
   distance: number
   /** 0/1 for a QUBO, −1/+1 for an Ising problem, by label. */
   assignment: Record<string, number>
+}
+
+/** A solution with the parts that its energy is the sum of, in the Ising form and the problem's own sense. */
+export interface SolutionView extends SolutionRow {
+  parts: { linear: number; interactions: number; offset: number }
 }
 
 export interface ReturnView {
@@ -92,8 +99,8 @@ export interface ReturnView {
     width: number
     series: EnergySeries[]
   } | null
-  best: SolutionRow | null
-  solutions: SolutionRow[]
+  best: SolutionView | null
+  solutions: SolutionView[]
   physicalEnergies: HistogramBin[]
   createdBy: Person
   createdAt: string

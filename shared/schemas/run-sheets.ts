@@ -70,6 +70,14 @@ export interface CheckView {
   figure: string
 }
 
+/** The value that decides the scale, and the end of the machine's range that it must come down to. */
+export interface ScaleLimitView {
+  range: 'h' | 'J' | 'coupling sum'
+  limit: number
+  /** Before scaling, in units of the Ising form. */
+  value: number
+}
+
 /** One strength rule worked out on this embedding, for comparing rules side by side. */
 export interface RuleView {
   rule: Strength['rule']
@@ -81,6 +89,7 @@ export interface RuleView {
   /** Smallest and largest k over the chains, in units of the Ising form. */
   k: { min: number; max: number }
   scale: number
+  scaleLimit: ScaleLimitView | null
   /** Share of programmed couplings below 2σ_J; null when σ_J is zero. */
   couplingsUnderTwoSigma: number | null
   chainsBelowCutBound: number
@@ -97,6 +106,11 @@ export interface ChainRow {
   cutBound: number
   /** False where the bound is a safe upper bound, for chains with cycles. */
   cutBoundExact: boolean
+  /** The split of the chain that the bound comes from: min(up, down) / cut. Null for a single qubit. */
+  cutSplit: { up: number; down: number; cut: number } | null
+  /** Σ|J| over the variable's interactions, and its field, of the Ising form. */
+  pull: number
+  field: number
 }
 
 export interface MachineTimePart {
@@ -143,10 +157,21 @@ export interface RunSheetView extends RunSheetItem {
   sense: 'min' | 'max'
   fingerprints: { problem: string; embedding: string; programmed: string }
   maxAbsJ: number
+  /** Figures of the Ising form that strengths are reckoned from. */
+  ising: {
+    variables: number
+    interactions: number
+    greatestJ: number
+    greatestH: number
+    rmsJ: number
+    /** Least strength of a chain by Choi's and the cut bound, as a share of the largest |J|. */
+    leastShare: number
+  }
   rules: RuleView[]
   chains: ChainRow[]
   scale: number
   limitedBy: string
+  scaleLimit: ScaleLimitView | null
   precision: {
     sigmaH: number
     sigmaJ: number
@@ -157,7 +182,12 @@ export interface RunSheetView extends RunSheetItem {
     fieldSizes: HistogramBin[]
     couplingSizes: HistogramBin[]
   }
-  machineTime: { parts: MachineTimePart[]; totalMilliseconds: number }
+  machineTime: {
+    parts: MachineTimePart[]
+    totalMilliseconds: number
+    /** From the machine sheet. */
+    timing: { programmingMicroseconds: number; readoutMicroseconds: number; delayMicroseconds: number }
+  }
   checks: CheckView[]
   returns: ReturnOfRunSheet[]
   remarks: RemarkView[]

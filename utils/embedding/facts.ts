@@ -1,8 +1,9 @@
-import type { EmbeddingView } from '#shared/schemas/embeddings'
+import type { EmbeddingView, UnmetView } from '#shared/schemas/embeddings'
 import type { Fact } from '../ui/parts'
 import type { ChainFindings } from './layers'
 import { methodName } from './methods'
 import { triesText } from './search'
+import { CHAIN_READS } from '../returns/facts'
 import { formatCount, formatNumber, formatPercent } from '../format'
 import { formatDuration, splitDuration } from '../formatTime'
 
@@ -31,23 +32,66 @@ function methodFact(embedding: EmbeddingView): Fact {
 function foundFacts(embedding: EmbeddingView): Fact[] {
   const { stats, machine, problem } = embedding
   if (!stats) return []
+  const { lengthHistogram: histogram, qubitsUsed } = stats
   return [
-    { label: 'Longest chain', value: formatNumber(stats.chainLength.max), unit: 'qubits' },
-    { label: 'Mean length', value: formatNumber(stats.chainLength.mean, { decimals: 2 }) },
+    {
+      label: 'Longest chain',
+      value: formatNumber(stats.chainLength.max),
+      unit: 'qubits',
+      help: { id: 'longestChain', given: { histogram } },
+      name: 'the length of the longest chain',
+    },
+    {
+      label: 'Mean length',
+      value: formatNumber(stats.chainLength.mean, { decimals: 2 }),
+      help: { id: 'meanLength', given: { histogram } },
+    },
     {
       label: 'Qubits used',
-      value: formatNumber(stats.qubitsUsed),
+      value: formatNumber(qubitsUsed),
       note: `of ${formatNumber(machine.qubits)}, ${formatPercent(stats.unusedShare)} left free`,
+      help: { id: 'qubitsUsed', given: { histogram, working: machine.qubits } },
+      name: 'the number of qubits used',
     },
-    { label: 'Chain couplers', value: formatNumber(stats.chainCouplers) },
+    {
+      label: 'Chain couplers',
+      value: formatNumber(stats.chainCouplers),
+      help: {
+        id: 'chainCouplers',
+        given: { couplers: stats.chainCouplers, used: qubitsUsed, chains: problem.variables },
+      },
+      name: 'the number of chain couplers',
+    },
     {
       label: 'Interaction couplers',
       value: formatNumber(stats.interactionCouplers),
       note: `for ${formatNumber(problem.interactions)}`,
+      help: {
+        id: 'interactionCouplers',
+        given: { couplers: stats.interactionCouplers, interactions: problem.interactions },
+      },
+      name: 'the number of interaction couplers',
     },
     methodFact(embedding),
   ]
 }
+
+/** usesOf[u] qubits are wanted by u chains. */
+export function usesOf(chains: Readonly<Record<string, readonly number[]>>): number[] {
+  const uses = new Map<number, number>()
+  for (const qubit of Object.values(chains).flat()) uses.set(qubit, (uses.get(qubit) ?? 0) + 1)
+  const counts: number[] = [0]
+  for (const use of uses.values()) {
+    while (counts.length <= use) counts.push(0)
+    counts[use]!++
+  }
+  return counts
+}
+
+const overlapHelp = ({ overlap, partialChains }: UnmetView): Pick<Fact, 'help' | 'name'> => ({
+  help: { id: 'overlap', given: { overlap, uses: usesOf(partialChains) } },
+  name: 'the overlap left',
+})
 
 function searchFacts(embedding: EmbeddingView): Fact[] {
   const { problem, machine, triesPlanned, timeLimitSeconds, seed, seconds, unmet } = embedding
@@ -64,12 +108,20 @@ function searchFacts(embedding: EmbeddingView): Fact[] {
     { label: 'Time limit', value: formatNumber(timeLimitSeconds), unit: 's' },
   ]
   if (seconds !== null) facts.push({ label: 'Time taken', ...splitDuration(seconds) })
-  if (unmet?.overlap) facts.push({ label: 'Overlap left', value: formatNumber(unmet.overlap), note: 'too many uses' })
+  if (unmet?.overlap)
+    facts.push({
+      label: 'Overlap left',
+      value: formatNumber(unmet.overlap),
+      note: 'too many uses',
+      ...overlapHelp(unmet),
+    })
   else if (unmet?.unmetInteractions)
     facts.push({
       label: 'Left over',
       value: formatNumber(unmet.unmetInteractions),
       note: 'interactions without a coupler',
+      help: { id: 'unmetInteractions', given: { unmet: unmet.unmetInteractions } },
+      name: 'the number left over',
     })
   return facts
 }
@@ -82,6 +134,16 @@ function breaksFact({ samples }: ChainFindings): Fact[] {
       label: 'Chains broken',
       value: formatPercent(broken.rate, { significant: 2 }),
       note: `of ${formatNumber(broken.total)} chain reads`,
+      help: {
+        id: 'rate',
+        given: {
+          ...broken,
+          ...CHAIN_READS,
+          format: { significant: 2 },
+          rehearsal: samples.source === 'rehearsal',
+        },
+      },
+      name: 'the share of chains broken',
     },
   ]
 }

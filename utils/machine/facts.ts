@@ -23,16 +23,45 @@ export function familyTitle(family: Family): string | undefined {
 
 /** The strip under the title of a machine. */
 export function machineFacts(machine: MachineView): Fact[] {
-  const { ranges, temperatureMillikelvin } = machine.sheet
+  const { ranges, defects, temperatureMillikelvin } = machine.sheet
+  const missing = new Set(defects.qubits).size
+  const rangeHelp = (what: 'h' | 'J' | 'coupling sum', text: string): Pick<Fact, 'help' | 'name'> => ({
+    help: { id: 'range', given: { what, text, calibration: machine.calibration } },
+    name: `the range of ${what}`,
+  })
   return [
     { label: 'Graph', value: machine.family, note: familyTitle(machine.familySizes) },
-    { label: 'Qubits', value: formatNumber(machine.qubits), note: `of ${formatNumber(machine.qubitsMade)}` },
-    { label: 'Couplers', value: formatNumber(machine.couplers), note: `of ${formatNumber(machine.couplersMade)}` },
-    { label: 'Highest degree', value: formatNumber(machine.maxDegree) },
-    { label: 'h', value: rangeText(ranges.h) },
-    { label: 'J', value: rangeText(ranges.J) },
+    {
+      label: 'Qubits',
+      value: formatNumber(machine.qubits),
+      note: `of ${formatNumber(machine.qubitsMade)}`,
+      help: { id: 'workingQubits', given: { family: machine.familySizes, missing } },
+      name: 'the number of working qubits',
+    },
+    {
+      label: 'Couplers',
+      value: formatNumber(machine.couplers),
+      note: `of ${formatNumber(machine.couplersMade)}`,
+      help: { id: 'workingCouplers', given: { made: machine.couplersMade, working: machine.couplers } },
+      name: 'the number of working couplers',
+    },
+    {
+      label: 'Highest degree',
+      value: formatNumber(machine.maxDegree),
+      help: {
+        id: 'machineDegree',
+        given: { degree: machine.maxDegree, qubits: machine.qubits, couplers: machine.couplers },
+      },
+    },
+    { label: 'h', value: rangeText(ranges.h), ...rangeHelp('h', rangeText(ranges.h)) },
+    { label: 'J', value: rangeText(ranges.J), ...rangeHelp('J', rangeText(ranges.J)) },
     ranges.couplingSum
-      ? { label: 'Coupling sum', value: rangeText(ranges.couplingSum), note: 'per qubit' }
+      ? {
+          label: 'Coupling sum',
+          value: rangeText(ranges.couplingSum),
+          note: 'per qubit',
+          ...rangeHelp('coupling sum', rangeText(ranges.couplingSum)),
+        }
       : { label: 'Coupling sum', value: 'not limited', word: true },
     temperatureMillikelvin === null
       ? { label: 'Temperature', value: 'not measured', word: true }

@@ -47,17 +47,49 @@ export function countingFacts(reading: ReadingView): Fact[] {
 
 /** What the problem looks like as a graph. */
 export function structureFacts(structure: StructureView): Fact[] {
-  const { degree, treewidthUpperBound } = structure
+  const { degree, degreeHistogram: degrees, dynamicRange, treewidthUpperBound, variables, interactions } = structure
+  const size = { variables, interactions }
   return [
-    { label: 'Density', value: formatPercent(structure.density) },
-    { label: 'Highest degree', value: formatNumber(degree.max), note: `mean ${formatSignificant(degree.mean)}` },
-    { label: 'Dynamic range', value: formatSignificant(structure.dynamicRange, 4) },
-    { label: 'Components', value: formatNumber(structure.components) },
-    { label: 'Isolated', value: formatNumber(structure.isolated) },
+    {
+      label: 'Density',
+      value: formatPercent(structure.density),
+      // There is no pair among fewer than two.
+      help: variables > 1 ? { id: 'density', given: size } : undefined,
+    },
+    {
+      label: 'Highest degree',
+      value: formatNumber(degree.max),
+      note: `mean ${formatSignificant(degree.mean)}`,
+      help: { id: 'degrees', given: { ...size, degrees } },
+    },
+    {
+      label: 'Dynamic range',
+      value: formatSignificant(dynamicRange, 4),
+      help:
+        dynamicRange === null
+          ? undefined
+          : { id: 'dynamicRange', given: { value: dynamicRange, sizes: structure.coefficientSizes } },
+    },
+    {
+      label: 'Components',
+      value: formatNumber(structure.components),
+      help: { id: 'components', given: { ...size, components: structure.components } },
+      name: 'the number of components',
+    },
+    {
+      label: 'Isolated',
+      value: formatNumber(structure.isolated),
+      help: { id: 'isolated', given: { degrees, isolated: structure.isolated } },
+      name: 'the number of isolated variables',
+    },
     {
       label: 'Treewidth',
       value: treewidthUpperBound === null ? 'not sought' : `≤ ${formatNumber(treewidthUpperBound)}`,
       word: treewidthUpperBound === null,
+      help:
+        treewidthUpperBound === null
+          ? undefined
+          : { id: 'problemTreewidth', given: { ...size, bound: treewidthUpperBound } },
     },
   ]
 }
@@ -98,6 +130,7 @@ export function problemFacts({ structure, best, sense }: ProblemView): Fact[] {
           label: 'Best energy',
           value: formatNumber(best),
           note: `${sense === 'min' ? 'lowest' : 'highest'} by majority so far`,
+          help: { id: 'bestOfProblem', given: { best, sense } },
         },
   ]
 }

@@ -2,6 +2,7 @@ import type { CheckView, RunSheetView } from '#shared/schemas/run-sheets'
 import type { Fact } from '../ui/parts'
 import { formatNumber } from '../format'
 import { splitDuration } from '../formatTime'
+import { chainStrengthHelp, timeHelp } from './help'
 import { strengthText } from './strength'
 
 /** `4 passed, 2 cautions, none refused`. */
@@ -25,10 +26,10 @@ export function runSheetFacts(sheet: RunSheetView): Fact[] {
   return [
     { label: 'State', value: sheet.state, mark: sheet.state },
     { label: 'Machine', value: sheet.machine.name, note: `calibration ${sheet.calibration}` },
-    { label: 'Chain strength', value: chosen ? strengthText(chosen.k) : '–' },
+    { label: 'Chain strength', value: chosen ? strengthText(chosen.k) : '–', ...chainStrengthHelp(sheet) },
     { label: 'Reads', value: formatNumber(settings.reads), note: gauges },
     { label: 'Anneal', value: formatNumber(settings.annealMicroseconds), unit: 'µs' },
-    { label: 'Machine time', value: time.value, unit: `${time.unit}, estimate` },
+    { label: 'Machine time', value: time.value, unit: `${time.unit}, estimate`, ...timeHelp(sheet) },
     { label: 'Checks', value: passed, note: checksText(checks).replace(/^\d+ /, '') },
   ]
 }

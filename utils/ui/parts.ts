@@ -1,5 +1,6 @@
 import type { InjectionKey, Ref } from 'vue'
 import type { RouteLocationRaw } from 'vue-router'
+import type { HelpCase, HelpRequest } from '../help/registry'
 
 /** Shapes that pages hand to the shared parts. */
 
@@ -22,6 +23,13 @@ export interface Fact {
   mark?: MarkKind | RunState
   /** The value is a word rather than a number. */
   word?: boolean
+  /** How the value is computed, asked for by its label. */
+  help?: HelpRequest
+  /** Where each of several has its own: the chains of a strength. */
+  cases?: () => readonly HelpCase[]
+  casesOf?: string
+  /** Reads after “How” and before “is computed”, where the label alone would not. */
+  name?: string
 }
 
 export type StageState = 'done' | 'under way' | 'not yet'

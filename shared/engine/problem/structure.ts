@@ -20,7 +20,9 @@ export interface StructureReport {
   readonly linearHistogram: readonly HistogramBin[]
   /** Interaction values, at most 24 bins. */
   readonly interactionHistogram: readonly HistogramBin[]
-  /** Greatest over least nonzero size among all coefficients; null when every coefficient is zero. */
+  /** Least nonzero and greatest size among all coefficients, the offset left out; null when every one is zero. */
+  readonly coefficientSizes: { readonly least: number; readonly greatest: number } | null
+  /** The greatest of them over the least. */
   readonly dynamicRange: number | null
   /** Connected components, isolated variables counted. */
   readonly components: number
@@ -30,7 +32,7 @@ export interface StructureReport {
   readonly treewidthUpperBound: number | null
 }
 
-function dynamicRange(linear: Float64Array, values: Float64Array): number | null {
+function coefficientSizes(linear: Float64Array, values: Float64Array): StructureReport['coefficientSizes'] {
   let least = Infinity
   let greatest = 0
   for (const list of [linear, values])
@@ -40,7 +42,7 @@ function dynamicRange(linear: Float64Array, values: Float64Array): number | null
       least = Math.min(least, size)
       greatest = Math.max(greatest, size)
     }
-  return greatest === 0 ? null : greatest / least
+  return greatest === 0 ? null : { least, greatest }
 }
 
 /** The structure report of a problem in the form it is given in. Well under a second for a million interactions. */
@@ -50,6 +52,7 @@ export function structureOf(problem: Problem): StructureReport {
   const degrees = Uint32Array.from({ length: n }, (_, v) => degreeOf(graph, v))
   const degreeHistogram = countDistinct(degrees) ?? []
   const components = connectedComponents(graph)
+  const sizes = coefficientSizes(linear, values)
   return {
     variables: n,
     interactions: values.length,
@@ -65,7 +68,8 @@ export function structureOf(problem: Problem): StructureReport {
       DEFAULTS.bins,
     ),
     interactionHistogram: histogram(values, DEFAULTS.bins),
-    dynamicRange: dynamicRange(linear, values),
+    coefficientSizes: sizes,
+    dynamicRange: sizes && sizes.greatest / sizes.least,
     components: components.count,
     isolated: components.isolated,
     treewidthUpperBound: treewidthUpperBound(graph),

@@ -35,7 +35,22 @@ export interface CutBounds {
   readonly bound: Float64Array
   /** 1 where no smaller value has this property in every surrounding; 0 where `bound` is a safe upper bound of that value. */
   readonly exact: Uint8Array
+  /** The split that the bound comes from: bound = max(0, min(up, down) / cut). */
+  readonly splits: readonly Split[]
 }
+
+/** A chain with its part S up and the rest R down. */
+export interface Split {
+  /** a(S), and b(R), in logical units. */
+  readonly up: number
+  readonly down: number
+  /** Couplers of the chain between the two; of its spanning tree where the bound is not exact. */
+  readonly cut: number
+}
+
+const NO_SPLIT: Split = { up: 0, down: 0, cut: 1 }
+const boundBy = ({ up, down, cut }: Split): number => Math.min(up, down) / cut
+const worse = (one: Split, other: Split): Split => (boundBy(other) > boundBy(one) ? other : one)
 
 /** One chain in local numbering 0 … length − 1. */
 interface Chain {
@@ -82,8 +97,8 @@ function spanningTree({ up, ends }: Chain): { order: number[]; parent: Int32Arra
   return { order, parent }
 }
 
-/** Greatest min(up(A), down(B)) over the splits at one coupler of the spanning tree, both orientations. */
-function singleCouplerBound(chain: Chain, up: Float64Array, down: Float64Array): number {
+/** The split of greatest min(up(A), down(B)) at one coupler of the spanning tree, both orientations. */
+function singleCouplerSplit(chain: Chain, up: Float64Array, down: Float64Array): Split {
   const { order, parent } = spanningTree(chain)
   const upBelow = up.slice()
   const downBelow = down.slice()
@@ -91,18 +106,17 @@ function singleCouplerBound(chain: Chain, up: Float64Array, down: Float64Array):
     upBelow[parent[order[k]!]!]! += upBelow[order[k]!]!
     downBelow[parent[order[k]!]!]! += downBelow[order[k]!]!
   }
-  let bound = -Infinity
+  let worst: Split = { up: -Infinity, down: -Infinity, cut: 1 }
   for (let k = 1; k < order.length; k++) {
     const q = order[k]!
-    const belowUp = Math.min(upBelow[q]!, downBelow[0]! - downBelow[q]!)
-    const belowDown = Math.min(upBelow[0]! - upBelow[q]!, downBelow[q]!)
-    bound = Math.max(bound, belowUp, belowDown)
+    worst = worse(worst, { up: upBelow[q]!, down: downBelow[0]! - downBelow[q]!, cut: 1 })
+    worst = worse(worst, { up: upBelow[0]! - upBelow[q]!, down: downBelow[q]!, cut: 1 })
   }
-  return bound
+  return worst
 }
 
-/** The maximum over all splits; sums of subsets are built from smaller subsets, so that nothing drifts. */
-function enumeratedBound({ up, down, ends }: Chain): number {
+/** The worst of all splits; sums of subsets are built from smaller subsets, so that nothing drifts. */
+function enumeratedSplit({ up, down, ends }: Chain): Split {
   const length = up.length
   const adjacency = new Uint32Array(length)
   for (let e = 0; e < ends.length; e += 2) {
@@ -121,24 +135,31 @@ function enumeratedBound({ up, down, ends }: Chain): number {
     downSum[set] = downSum[smaller]! + down[q]!
     cut[set] = cut[smaller]! + bitCount(adjacency[q]!) - 2 * bitCount(adjacency[q]! & smaller)
   }
+  let worst = -1
   let bound = -Infinity
-  for (let set = 1; set < full; set++) bound = Math.max(bound, Math.min(upSum[set]!, downSum[full ^ set]!) / cut[set]!)
-  return bound
+  for (let set = 1; set < full; set++) {
+    const own = Math.min(upSum[set]!, downSum[full ^ set]!) / cut[set]!
+    if (own <= bound) continue
+    bound = own
+    worst = set
+  }
+  return { up: upSum[worst]!, down: downSum[full ^ worst]!, cut: cut[worst]! }
 }
 
-function boundOf(chain: Chain): { bound: number; exact: boolean } {
+function worstSplitOf(chain: Chain): { split: Split; exact: boolean } {
   const length = chain.up.length
-  if (length === 1) return { bound: 0, exact: true }
-  const safe = singleCouplerBound(
+  if (length === 1) return { split: NO_SPLIT, exact: true }
+  const safe = singleCouplerSplit(
     chain,
     chain.up.map((x) => Math.max(0, x)),
     chain.down.map((x) => Math.max(0, x)),
   )
-  if (safe <= 0) return { bound: 0, exact: true }
+  if (boundBy(safe) <= 0) return { split: NO_SPLIT, exact: true }
   const isTree = chain.ends.length / 2 === length - 1
-  if (isTree && singleCouplerBound(chain, chain.up, chain.down) === safe) return { bound: safe, exact: true }
-  if (length <= DEFAULTS.enumeratedLength) return { bound: Math.max(0, enumeratedBound(chain)), exact: true }
-  return { bound: safe, exact: false }
+  if (isTree && boundBy(singleCouplerSplit(chain, chain.up, chain.down)) === boundBy(safe))
+    return { split: safe, exact: true }
+  if (length <= DEFAULTS.enumeratedLength) return { split: enumeratedSplit(chain), exact: true }
+  return { split: safe, exact: false }
 }
 
 /**
@@ -154,9 +175,10 @@ export function cutBounds(input: LayoutInput): CutBounds {
 
 /** The same for a problem that is laid out already. */
 export function cutBoundsOf(layout: Layout): CutBounds {
-  const bounds = chainsOf(layout).map(boundOf)
+  const worst = chainsOf(layout).map(worstSplitOf)
   return {
-    bound: Float64Array.from(bounds, ({ bound }) => bound),
-    exact: Uint8Array.from(bounds, ({ exact }) => (exact ? 1 : 0)),
+    bound: Float64Array.from(worst, ({ split }) => Math.max(0, boundBy(split))),
+    exact: Uint8Array.from(worst, ({ exact }) => (exact ? 1 : 0)),
+    splits: worst.map(({ split }) => split),
   }
 }

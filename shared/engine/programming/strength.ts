@@ -50,22 +50,31 @@ export function referenceSize(ising: Problem): number {
   return ising.values.length > 0 ? greatestSize(ising.values) : greatestSize(ising.linear)
 }
 
+/** J_rms over the interactions; 0 when there is none. */
+export function rmsCoupling({ values }: Problem): number {
+  return values.length === 0 ? 0 : Math.sqrt(values.reduce((sum, v) => sum + v * v, 0) / values.length)
+}
+
 /** κ = 1 of the root-mean-square rule: J_rms·√(mean degree), or max|h| when there is no interaction. */
 export function rmsSize(ising: Problem): number {
   const m = ising.values.length
   if (m === 0) return referenceSize(ising)
-  const meanSquare = ising.values.reduce((sum, v) => sum + v * v, 0) / m
-  return Math.sqrt(meanSquare) * Math.sqrt((2 * m) / ising.n)
+  return rmsCoupling(ising) * Math.sqrt((2 * m) / ising.n)
 }
 
-/** Choi's bound per variable, max(0, Σ_j|J_ij| − |h_i|), in logical units (Choi, arXiv:0804.4884, 2008). */
-export function choiBounds(ising: Problem): Float64Array {
+/** Σ_j|J_ij| of every variable: how hard its partners can pull together. */
+export function pullsOf(ising: Problem): Float64Array {
   const pull = new Float64Array(ising.n)
   ising.values.forEach((v, k) => {
     pull[ising.rows[k]!]! += Math.abs(v)
     pull[ising.cols[k]!]! += Math.abs(v)
   })
-  return pull.map((sum, i) => Math.max(0, sum - Math.abs(ising.linear[i]!)))
+  return pull
+}
+
+/** Choi's bound per variable, max(0, Σ_j|J_ij| − |h_i|), in logical units (Choi, arXiv:0804.4884, 2008). */
+export function choiBounds(ising: Problem): Float64Array {
+  return pullsOf(ising).map((sum, i) => Math.max(0, sum - Math.abs(ising.linear[i]!)))
 }
 
 function requireAtLeast(value: number, least: number, what: string): number {

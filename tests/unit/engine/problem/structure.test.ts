@@ -33,6 +33,7 @@ describe('structureOf', () => {
         { from: 1, to: 1, count: 2 },
         { from: 2, to: 2, count: 2 },
       ],
+      coefficientSizes: { least: 0.5, greatest: 8 },
       dynamicRange: 16,
       components: 3,
       isolated: 1,

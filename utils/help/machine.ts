@@ -1,0 +1,210 @@
+import type { Family } from '#shared/engine/machine/fabric'
+import { CAUTIONS } from './cautions'
+import { entry, type HelpInput } from './entry'
+import type { Expr } from './formula'
+import { minus, over, plus, square, times } from './formula'
+import {
+  BODLAENDER_KOSTER,
+  BOOTHBY_2016,
+  CHOI_2011,
+  DEFINITION,
+  GILBERT,
+  MACHINE_SHEET,
+  PEGASUS,
+  ZEPHYR,
+} from './sources'
+import { formatNumber } from '../format'
+
+/** How the figures of a machine are computed. */
+
+interface Count {
+  expr: Expr
+  inputs: HelpInput[]
+}
+
+const size = (symbol: string, name: string, value: number): HelpInput => ({ symbol, name, value })
+
+function qubitsOf(family: Family): Count {
+  switch (family.kind) {
+    case 'chimera':
+      return {
+        expr: times(2, 'm', 'n', 't'),
+        inputs: [
+          size('m', 'rows of cells', family.m),
+          size('n', 'columns', family.n),
+          size('t', 'half a cell', family.t),
+        ],
+      }
+    case 'pegasus':
+      return {
+        expr: family.trimmed ? times(8, minus(times(3, 'm'), 1), minus('m', 1)) : times(24, 'm', minus('m', 1)),
+        inputs: [size('m', family.trimmed ? 'size, trimmed fabric' : 'size, untrimmed fabric', family.m)],
+      }
+    case 'zephyr':
+      return {
+        expr: times(4, 't', 'm', plus(times(2, 'm'), 1)),
+        inputs: [size('m', 'size', family.m), size('t', 'tile', family.t)],
+      }
+    default:
+      return { expr: times('W', 'H'), inputs: boardInputs(family) }
+  }
+}
+
+const boardInputs = ({ width, height }: Extract<Family, { kind: 'king' | 'square' }>): HelpInput[] => [
+  size('W', 'width', width),
+  size('H', 'height', height),
+]
+
+/** Closed forms of the number of couplers, where there are some. */
+function couplersOf(family: Family): Count | null {
+  switch (family.kind) {
+    case 'chimera':
+      return {
+        expr: plus(times('m', 'n', square('t')), times('t', 'n', minus('m', 1)), times('t', 'm', minus('n', 1))),
+        inputs: qubitsOf(family).inputs,
+      }
+    case 'king':
+      return {
+        expr: plus(minus(times(4, 'W', 'H'), times(3, plus('W', 'H'))), 2),
+        inputs: boardInputs(family),
+      }
+    case 'square':
+      return { expr: minus(minus(times(2, 'W', 'H'), 'W'), 'H'), inputs: boardInputs(family) }
+    default:
+      return null
+  }
+}
+
+const FAMILY_SOURCE = { pegasus: PEGASUS, zephyr: ZEPHYR, chimera: BOOTHBY_2016, king: DEFINITION, square: DEFINITION }
+
+export const machineHelp = {
+  workingQubits: entry<{ family: Family; missing: number }>({
+    inputs: ({ family, missing }) => [
+      ...qubitsOf(family).inputs,
+      { symbol: 'x', name: 'missing qubits', value: missing, from: 'machine sheet' },
+    ],
+    steps: ({ family }) => [
+      { symbol: 'Q', name: 'qubits made', expr: qubitsOf(family).expr },
+      { symbol: 'q', name: 'working qubits', expr: minus('Q', 'x') },
+    ],
+    sources: ({ family }) => [FAMILY_SOURCE[family.kind], MACHINE_SHEET],
+    caution: () => CAUTIONS.sheet,
+  }),
+  qubitsMade: entry<{ family: Family }>({
+    inputs: ({ family }) => qubitsOf(family).inputs,
+    steps: ({ family }) => [{ symbol: 'Q', name: 'qubits made', expr: qubitsOf(family).expr }],
+    sources: ({ family }) => [FAMILY_SOURCE[family.kind]],
+  }),
+  couplersMade: entry<{ family: Family; couplers: number }>({
+    inputs: ({ family }) => couplersOf(family)?.inputs ?? qubitsOf(family).inputs,
+    steps: ({ family }) => {
+      const count = couplersOf(family)
+      return count ? [{ symbol: 'E', name: 'couplers made', expr: count.expr }] : []
+    },
+    method: ({ family }) => (couplersOf(family) ? '' : COUNTED),
+    result: ({ couplers }) => formatNumber(couplers),
+    sources: ({ family }) => [FAMILY_SOURCE[family.kind]],
+  }),
+  workingCouplers: entry<{ made: number; working: number }>({
+    inputs: ({ made, working }) => [
+      { symbol: 'E', name: 'couplers made', value: made },
+      {
+        symbol: 'x',
+        name: 'missing: listed, or at a missing qubit',
+        value: made - working,
+        from: 'machine sheet',
+      },
+    ],
+    steps: () => [{ symbol: 'e', name: 'working couplers', expr: minus('E', 'x') }],
+    sources: () => [MACHINE_SHEET],
+    caution: () => CAUTIONS.sheet,
+  }),
+  machineDegree: entry<{ degree: number; qubits: number; couplers: number }>({
+    inputs: ({ qubits, couplers }) => [
+      { symbol: 'q', name: 'working qubits', value: qubits },
+      { symbol: 'e', name: 'working couplers', value: couplers },
+    ],
+    method: () => 'The most working couplers at one working qubit, counted over the whole machine.',
+    result: ({ degree }) => formatNumber(degree),
+    sources: () => [DEFINITION],
+  }),
+  range: entry<{ what: 'h' | 'J' | 'coupling sum'; text: string; calibration: number }>({
+    inputs: () => [],
+    method: ({ what, calibration }) =>
+      `Not computed: entered with calibration ${calibration}. ${RANGE_RULE[what]} The scale α shrinks all programmed values alike until every one fits.`,
+    result: ({ text }) => text,
+    sources: () => [MACHINE_SHEET],
+    caution: () => CAUTIONS.sheet,
+  }),
+  capacityBound: entry<{ treewidth: number }>({
+    inputs: ({ treewidth }) => [{ symbol: 'w', name: 'upper bound of the machine’s treewidth', value: treewidth }],
+    steps: () => [
+      { symbol: 'n', name: 'variables of the largest complete graph that is not ruled out', expr: plus('w', 1) },
+    ],
+    method: () =>
+      'Embedding never lowers treewidth, and a complete graph of n variables has treewidth n − 1. The machine’s bound is the smallest width of several elimination orders: sweeps over its lines from each side, breadth first from far to near, and least fill on small machines. Missing qubits and couplers are left out.',
+    sources: () => [BODLAENDER_KOSTER, GILBERT],
+  }),
+  capacityTreewidth: entry<{ treewidth: number; qubits: number; couplers: number }>({
+    inputs: ({ qubits, couplers }) => [
+      { symbol: 'q', name: 'working qubits', value: qubits },
+      { symbol: 'e', name: 'working couplers', value: couplers },
+    ],
+    method: () =>
+      'Qubits are taken out in an order, the remaining neighbours of each being joined; the width is the most neighbours that a qubit has when its turn comes. The smallest width over several orders is kept.',
+    result: ({ treewidth }) => formatNumber(treewidth),
+    sources: () => [BODLAENDER_KOSTER, GILBERT],
+    caution: () => 'An upper bound: the treewidth itself may be smaller.',
+  }),
+  completeByTemplate: entry<{ order: number; chainLength: number; seed: number; tries: number }>({
+    inputs: ({ seed, tries, chainLength }) => [
+      { symbol: 'L', name: 'qubits of its longest chain', value: chainLength, unit: 'qubits' },
+      { symbol: 'T', name: 'tries', value: tries },
+      { symbol: 's', name: 'seed', value: seed },
+    ],
+    method: () =>
+      'Every chain is a vertical and a horizontal run of working qubits that meet pairwise below a diagonal; on square windows of the machine, seen from each corner, the largest such set is kept, and up to three more chains grow through what is left free.',
+    result: ({ order }) => formatNumber(order),
+    sources: () => [CHOI_2011, BOOTHBY_2016],
+    caution: () => CAUTIONS.noneFound,
+  }),
+  qubitsEach: entry<{ qubits: number; variables: number }>({
+    inputs: ({ qubits, variables }) => [
+      { symbol: 'q', name: 'working qubits', value: qubits },
+      { symbol: 'n', name: 'variables of the problem', value: variables },
+    ],
+    steps: () => [
+      {
+        symbol: 'r',
+        name: 'qubits for each variable',
+        expr: over('q', 'n'),
+        show: (value) => formatNumber(value, { significant: 3 }),
+      },
+    ],
+    method: () => 'Room to spare helps a search, but does not say that an embedding exists.',
+    sources: () => [DEFINITION],
+  }),
+  couplersEach: entry<{ couplers: number; interactions: number }>({
+    inputs: ({ couplers, interactions }) => [
+      { symbol: 'e', name: 'working couplers', value: couplers },
+      { symbol: 'm', name: 'interactions of the problem', value: interactions },
+    ],
+    steps: () => [
+      {
+        symbol: 'r',
+        name: 'couplers for each interaction',
+        expr: over('e', 'm'),
+        show: (value) => formatNumber(value, { significant: 3 }),
+      },
+    ],
+    sources: () => [DEFINITION],
+  }),
+}
+
+const COUNTED =
+  'Counted on the published construction: crossing segments share an internal coupler, successive ones on a line an external one, close parallel ones an odd one.'
+const RANGE_RULE = {
+  h: 'Every programmed field must lie in it.',
+  J: 'Every programmed coupling must lie in it, those inside chains too.',
+  'coupling sum': 'The signed sum of all programmed couplings at a qubit must lie in it.',
+} as const

@@ -1,0 +1,85 @@
+/** Where a formula comes from. Titles are from memory, as in docs/formulas.md. */
+export interface Source {
+  readonly author?: string
+  readonly title: string
+  readonly venue?: string
+  readonly year?: number
+}
+
+export const DEFINITION: Source = { title: 'By definition' }
+export const OWN: Source = { title: 'Espalier’s own: docs/formulas.md' }
+export const MACHINE_SHEET: Source = { title: 'The machine sheet, as its steward entered it' }
+
+export const WILSON: Source = {
+  author: 'Wilson',
+  title: 'Probable inference, the law of succession, and statistical inference',
+  venue: 'J. Am. Stat. Assoc. 22:209',
+  year: 1927,
+}
+export const CHOI_2008: Source = {
+  author: 'Choi',
+  title: 'Minor-embedding in adiabatic quantum computation: I. The parameter setting problem',
+  venue: 'arXiv:0804.4884',
+  year: 2008,
+}
+export const CHOI_2011: Source = {
+  author: 'Choi',
+  title: 'Minor-embedding in adiabatic quantum computation: II. Minor-universal graph design',
+  venue: 'Quantum Inf. Process. 10',
+  year: 2011,
+}
+export const VENTURELLI: Source = {
+  author: 'Venturelli et al.',
+  title: 'Quantum optimization of fully connected spin glasses',
+  venue: 'Phys. Rev. X 5:031040',
+  year: 2015,
+}
+export const KING_MCGEOCH: Source = {
+  author: 'King & McGeoch',
+  title: 'Algorithm engineering for a quantum annealing platform',
+  venue: 'arXiv:1410.2628',
+  year: 2014,
+}
+export const BOOTHBY_2016: Source = {
+  author: 'Boothby, King & Roy',
+  title: 'Fast clique minor generation in Chimera qubit connectivity graphs',
+  venue: 'Quantum Inf. Process. 15',
+  year: 2016,
+}
+export const PEGASUS: Source = {
+  author: 'Boothby, Bunyk, Raymond & Roy',
+  title: 'definition of the Pegasus graphs',
+  venue: 'arXiv:2003.00133',
+  year: 2020,
+}
+export const ZEPHYR: Source = { author: 'Boothby, King & Raymond', title: 'Zephyr topology', year: 2021 }
+export const BODLAENDER_KOSTER: Source = {
+  author: 'Bodlaender & Koster',
+  title: 'Treewidth computations I. Upper bounds',
+  venue: 'Inf. Comput. 208',
+  year: 2010,
+}
+export const GILBERT: Source = {
+  author: 'Gilbert, Ng & Peyton',
+  title: 'An efficient algorithm to compute row and column counts for sparse Cholesky factorization',
+  venue: 'SIAM J. Matrix Anal. Appl. 15',
+  year: 1994,
+}
+export const CAI: Source = {
+  author: 'Cai, Macready & Roy',
+  title: 'A practical heuristic for finding graph minors',
+  venue: 'arXiv:1406.2741',
+  year: 2014,
+}
+export const LUCAS: Source = {
+  author: 'Lucas',
+  title: 'Ising formulations of many NP problems',
+  venue: 'Front. Phys. 2:5',
+  year: 2014,
+}
+export const KIRKPATRICK: Source = {
+  author: 'Kirkpatrick, Gelatt & Vecchi',
+  title: 'Optimization by simulated annealing',
+  venue: 'Science 220:671',
+  year: 1983,
+}
