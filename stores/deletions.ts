@@ -1,3 +1,5 @@
+import { defineStore } from 'pinia'
+import { ref } from 'vue'
 import type { DeletableKind } from '#shared/schemas/deletions'
 
 /** Something deleted a moment ago that can still be brought back. */
