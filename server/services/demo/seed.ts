@@ -7,9 +7,10 @@ import { createMachineSchema } from '../../../shared/schemas/machines'
 import { uploadProblemSchema } from '../../../shared/schemas/problems'
 import { createRunSheetSchema } from '../../../shared/schemas/run-sheets'
 import type { Actor, App } from '../../app'
-import { anyUser, keepFact, readFact, removeWorkspace, setFact } from '../../database/repositories/people'
+import { anyUser, keepFact, readFact, removeWorkspace, setFact, takeFact } from '../../database/repositories/people'
 import { findJob } from '../../database/repositories/jobs'
 import { startEmbedding } from '../embeddings'
+import { SEEDED_AT } from '../first-steps'
 import { fabricOf } from '../machine-graphs'
 import { calibrateMachine, createMachine } from '../machines'
 import type { Passwords } from '../people'
@@ -33,12 +34,19 @@ type Cast = Record<'owner' | 'developer' | 'steward' | 'reviewer' | 'reader', Ac
  */
 export async function seedDemo(app: App, passwords: Passwords): Promise<void> {
   const earlier = await readFact(app.db, FACT)
-  if (earlier === 'seeded') return
+  if (earlier === 'seeded') return noteSeeded(app)
+  await takeFact(app.db, SEEDED_AT)
   if (earlier) await removeWorkspace(app.db, earlier)
   else if (await anyUser(app.db)) return
   const cast = await seedPeople(app, passwords)
   await seedWork(app, cast)
   await setFact(app.db, FACT, 'seeded')
+  await noteSeeded(app)
+}
+
+/** What is made from now on is made by people. */
+async function noteSeeded(app: App): Promise<void> {
+  await keepFact(app.db, SEEDED_AT, app.now().toISOString())
 }
 
 async function seedPeople(app: App, passwords: Passwords): Promise<Cast> {
