@@ -2,13 +2,6 @@ import type { EdgeLayer, FragmentLayer } from 'sigma/rendering'
 import { channelsOf } from './tokens'
 import type { Tokens } from './tokens'
 
-/** What an edge of the drawing looks like; the numbers are those the shader switches on. */
-export const EDGE_KINDS = { line: 0, band: 1, tube: 2, dash: 3 } as const
-export type EdgeKind = keyof typeof EDGE_KINDS
-
-/** Inlays 0 … 2 as in utils/hues; a tube may be hatched instead. */
-export const HATCH = 3
-
 const FLOAT = 5126
 const UNSIGNED_BYTE = 5121
 
@@ -18,31 +11,15 @@ const vec3 = (colour: string): [number, number, number] => {
 }
 
 /** Per-edge numbers of the band layer, all read from edge attributes of the same name. */
-const EDGE_VARIABLES = [
-  'kind',
-  'from',
-  'span',
-  'value',
-  'inlay',
-  'casing',
-  'outline',
-  'caps',
-  'under0',
-  'under1',
-  'under2',
-] as const
+const EDGE_VARIABLES = ['kind', 'from', 'span', 'value', 'inlay', 'casing', 'outline', 'caps'] as const
 
 export type EdgeVariable = (typeof EDGE_VARIABLES)[number]
-
-/** Lines that one of the `under` numbers speaks for: few enough bits to come through interpolation unharmed. */
-export const UNDER_BITS = 20
 
 /**
  * One layer draws every straight thing that carries meaning: chain bands with casing, focus outline and inlay; load
  * tubes filled up to `value`; dashed breaks; plain lines. Widths inside the shader are in pixels, so that casings and
  * outlines keep theirs at every zoom. `from` and `span` place the edge on its line of the lattice: dots of an inlay
- * then sit between crossings. The bits of `under` say on which lines, counted from the first the edge reaches, it passes
- * under the strokes drawn before it: there it is left out for their width.
+ * then sit between crossings. Only the chain in focus is drawn by it, which passes over all others.
  */
 export function bandLayer(tokens: Tokens): EdgeLayer {
   return {
@@ -94,15 +71,6 @@ vec3 bandColour(float d, float casing, float total, float across, float ends, fl
   return colour;
 }
 
-/** Whether the edge passes under another here; reach is half the width left out, in pixels. */
-bool isUnder(float along, float unit, float reach) {
-  float line = floor(along + 0.5);
-  if (abs(along - line) * unit > reach) return false;
-  int k = int(line - ceil(v_from - 0.001));
-  int bits = k < ${UNDER_BITS} ? int(v_under0 + 0.5) : k < ${2 * UNDER_BITS} ? int(v_under1 + 0.5) : int(v_under2 + 0.5);
-  return k >= 0 && k < ${3 * UNDER_BITS} && ((bits >> (k % ${UNDER_BITS})) & 1) == 1;
-}
-
 vec4 layer_band(EdgeContext ctx) {
   // sigma's own unit is half a pixel.
   float px = 2.0 * ctx.aaWidth;
@@ -116,8 +84,6 @@ vec4 layer_band(EdgeContext ctx) {
   float ends = v_caps > 0.5 ? max(radius - fromSource, radius - toTarget) : -1000.0;
   float d = length(vec2(max(ends, 0.0), across)) - radius;
   float casing = v_casing * min(1.0, 0.16 * total);
-
-  if (isUnder(along, unit, radius)) return vec4(0.0);
 
   vec3 colour = v_color.rgb;
   if (v_kind > 2.5) {

@@ -6,11 +6,11 @@ import { bandLayer, glyphLayer } from './band-layer'
 import type { EdgeVariable } from './band-layer'
 import { bandWidth } from './framing'
 import { sceneGraph } from './to-graph'
-import type { Scene } from './scene'
+import type { Scene } from './scene-types'
 import type { Box, View } from './types'
 import type { Tokens } from './tokens'
 
-/** The live drawing of chains: sigma for camera, gestures and everything that carries meaning. */
+/** Camera and gestures, and the chain in focus drawn sharply at every moment: what carries the meaning. All by sigma. */
 export interface Drawing {
   show(scene: Scene): void
   /** Where the lattice lies in the viewport at this moment. */
@@ -170,9 +170,6 @@ const EDGE_VARIABLE_TYPES = {
   casing: number,
   outline: number,
   caps: number,
-  under0: number,
-  under1: number,
-  under2: number,
 } as const satisfies Record<EdgeVariable, typeof number>
 
 const EDGE_STYLE = {
@@ -187,9 +184,6 @@ const EDGE_STYLE = {
   casing: { attribute: 'casing' },
   outline: { attribute: 'outline' },
   caps: { attribute: 'caps' },
-  under0: { attribute: 'under0' },
-  under1: { attribute: 'under1' },
-  under2: { attribute: 'under2' },
 } as const
 
 /** Equilateral triangles with `size` as the distance of a corner from the middle. */

@@ -29,6 +29,7 @@ export interface TagSpot {
 export interface PlacedTag {
   readonly key: number
   readonly box: Box
+  readonly spot: TagSpot
 }
 
 export const TAG_DEFAULTS = {
@@ -76,6 +77,7 @@ export function placeTags(
   for (const request of ordered) {
     const limit = request.insist ? Infinity : (tolerance * request.width * request.height) / 1000
     let best: Box | null = null
+    let bestSpot: TagSpot | null = null
     let bestCost = Infinity
     for (const spot of request.spots) {
       const box = boxOfSpot(spot, request, view)
@@ -84,17 +86,32 @@ export function placeTags(
       const cost = (coverage ? coveredIn(coverage, toLattice(box, view)) : 0) + (hidesBand ? HIDDEN_BAND_COST : 0)
       if (cost < bestCost - 0.5 && cost <= limit) {
         best = box
+        bestSpot = spot
         bestCost = cost
       }
     }
-    if (!best) continue
+    if (!best || !bestSpot) continue
     taken.push(best)
-    placed.push({ key: request.key, box: best })
+    placed.push({ key: request.key, box: best, spot: bestSpot })
   }
   return placed
 }
 
-function boxOfSpot(spot: TagSpot, { width, height }: TagRequest, view: View): Box {
+/**
+ * Tags placed for another view, where they belong now: each keeps its spot, and those that would now touch one of higher
+ * priority are left out. Tags are in order of priority.
+ */
+export function carryTags(tags: readonly PlacedTag[], view: View, { gap } = TAG_DEFAULTS): PlacedTag[] {
+  const carried: PlacedTag[] = []
+  for (const tag of tags) {
+    const { box, spot } = tag
+    const moved = boxOfSpot(spot, { width: box.x2 - box.x1, height: box.y2 - box.y1 }, view)
+    if (!carried.some((other) => overlap(moved, other.box, gap))) carried.push({ ...tag, box: moved })
+  }
+  return carried
+}
+
+function boxOfSpot(spot: TagSpot, { width, height }: Pick<TagRequest, 'width' | 'height'>, view: View): Box {
   const x = view.x + view.scale * spot.x + (spot.ox * width) / 2
   const y = view.y + view.scale * spot.y + (spot.oy * height) / 2
   return { x1: x - width / 2, y1: y - height / 2, x2: x + width / 2, y2: y + height / 2 }

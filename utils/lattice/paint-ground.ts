@@ -1,52 +1,66 @@
-import { placesOfPair } from './places'
 import { bandWidth } from './framing'
-import { SCENE_DEFAULTS } from './scene'
-import type { Tails } from './scene'
-import type { Tokens } from './tokens'
-import type { LatticeData, MarkLayer, View } from './types'
+import { GROUND_DEFAULTS, isBare } from './ground'
+import type { Ground } from './ground'
+import type { Canvas2D } from './paint-edges'
+import { isOfPoints } from './scene'
+import { SCENE_DEFAULTS } from './scene-types'
+import { paintMissing } from './paint-missing'
+import type { View } from './types'
 
-/** What lies beneath the chains: free and missing qubits, couplers, marks. */
-export interface Ground {
-  readonly data: LatticeData
-  readonly tokens: Tokens
-  /** 1 where a chain uses the qubit: its segment and dot are left to the chain. */
-  readonly used: Uint8Array
-  readonly tails: readonly Tails[]
-  readonly marks?: MarkLayer | null
-}
-
-export const GROUND_DEFAULTS = {
-  /** Line spacing in pixels from which couplers along lines, and at crossings, are worth drawing. */
-  couplersFrom: 7,
-  crossingsFrom: 18,
-  dotsFrom: 2.2,
-}
-
-/** Without chains the machine itself is the figure and is drawn more firmly. */
-const isBare = (used: Uint8Array): boolean => !used.includes(1)
-
-/** Paints the part of the ground that falls on a canvas of the given size in pixels. */
-export function paintGround(ctx: CanvasRenderingContext2D, ground: Ground, view: View, width: number, height: number) {
-  ctx.clearRect(0, 0, width, height)
-  paintSegments(ctx, ground, view, width, height)
-  if (view.scale >= GROUND_DEFAULTS.couplersFrom) paintCouplers(ctx, ground, view, width, height)
-  paintDots(ctx, ground, view, width, height)
+/**
+ * Paints the part of the ground that falls on a canvas of the given size in pixels; yields between steps. What it shows
+ * grows with the zoom: a field of qubits from afar, then dots and lines, then couplers.
+ */
+export function* paintGround(
+  ctx: Canvas2D,
+  ground: Ground,
+  view: View,
+  { width, height }: { readonly width: number; readonly height: number },
+): Generator<void> {
+  const showsFree = !ground.hiddenKinds?.has('free')
+  if (isOfPoints(ground.data)) {
+    if (showsFree && view.scale < GROUND_DEFAULTS.dotsFrom) paintField(ctx, ground, view)
+  } else {
+    if (showsFree) paintFreeSegments(ctx, ground, view, width, height)
+    yield
+    paintTails(ctx, ground, view, width, height)
+  }
+  yield
+  if (showsFree && view.scale >= GROUND_DEFAULTS.couplersFrom) paintCouplers(ctx, ground, view, width, height)
+  yield
+  if (showsFree) paintDots(ctx, ground, view, width, height)
+  yield
   paintMissing(ctx, ground, view, width, height)
 }
 
-function paintSegments(
-  ctx: CanvasRenderingContext2D,
-  { data, tokens, used, tails }: Ground,
-  view: View,
-  width: number,
-  height: number,
-) {
+/** Lattices of points from afar: every run of working qubits in a row as one stripe, with holes where some are missing. */
+function paintField(ctx: Canvas2D, { data: { segments, usable }, tokens }: Ground, { scale, x, y }: View) {
+  ctx.beginPath()
+  for (let q = 0; q < usable.length; q++) {
+    if (!usable[q]) continue
+    const first = q
+    while (usable[q + 1] && isNextInRow(segments, q)) q++
+    const top = y + scale * (segments[4 * first + 1]! - 0.5)
+    ctx.rect(x + scale * (segments[4 * first]! - 0.5), top, scale * (q - first + 1), scale)
+  }
+  ctx.fillStyle = tokens.hair
+  ctx.fill()
+}
+
+const isNextInRow = (segments: Float32Array, q: number): boolean =>
+  segments[4 * q + 5] === segments[4 * q + 1] && segments[4 * q + 4] === segments[4 * q]! + 1
+
+function paintFreeSegments(ctx: Canvas2D, ground: Ground, view: View, width: number, height: number) {
+  const { data, tokens, used } = ground
   ctx.beginPath()
   for (let q = 0; q < data.usable.length; q++)
     if (data.usable[q] && !used[q]) traceSegment(ctx, data.segments, q, view, width, height)
   ctx.strokeStyle = isBare(used) ? tokens.rule : tokens.hair
   ctx.lineWidth = Math.min(1.2, Math.max(0.5, view.scale / 6))
   ctx.stroke()
+}
+
+function paintTails(ctx: Canvas2D, { data, tails }: Ground, view: View, width: number, height: number) {
   ctx.lineWidth = Math.max(0.7, SCENE_DEFAULTS.tailWidth * bandWidth(view.scale))
   ctx.globalAlpha = 0.75
   for (const { color, qubits } of tails) {
@@ -59,7 +73,7 @@ function paintSegments(
 }
 
 function traceSegment(
-  ctx: CanvasRenderingContext2D,
+  ctx: Canvas2D,
   segments: Float32Array,
   qubit: number,
   { scale, x, y }: View,
@@ -75,13 +89,7 @@ function traceSegment(
   ctx.lineTo(x2, y2)
 }
 
-function paintCouplers(
-  ctx: CanvasRenderingContext2D,
-  { data, tokens }: Ground,
-  { scale, x, y }: View,
-  width: number,
-  height: number,
-) {
+function paintCouplers(ctx: Canvas2D, { data, tokens }: Ground, { scale, x, y }: View, width: number, height: number) {
   const { places } = data
   const crossings = scale >= GROUND_DEFAULTS.crossingsFrom
   ctx.beginPath()
@@ -108,7 +116,7 @@ function paintCouplers(
 }
 
 function paintDots(
-  ctx: CanvasRenderingContext2D,
+  ctx: Canvas2D,
   { data, tokens, used }: Ground,
   { scale, x, y }: View,
   width: number,
@@ -123,65 +131,14 @@ function paintDots(
     const px = x + (scale * (data.segments[4 * q]! + data.segments[4 * q + 2]!)) / 2
     const py = y + (scale * (data.segments[4 * q + 1]! + data.segments[4 * q + 3]!)) / 2
     if (px < -2 || py < -2 || px > width + 2 || py > height + 2) continue
-    ctx.moveTo(px + radius, py)
-    ctx.arc(px, py, radius, 0, 2 * Math.PI)
+    if (radius < 1.2) ctx.rect(px - radius, py - radius, 2 * radius, 2 * radius)
+    else {
+      ctx.moveTo(px + radius, py)
+      ctx.arc(px, py, radius, 0, 2 * Math.PI)
+    }
   }
   ctx.globalAlpha = bare ? 0.9 : Math.min(0.85, 0.35 + scale / 26)
   ctx.fillStyle = tokens.edge
   ctx.fill()
   ctx.globalAlpha = 1
-}
-
-function paintMissing(
-  ctx: CanvasRenderingContext2D,
-  { data, tokens, marks }: Ground,
-  { scale, x, y }: View,
-  width: number,
-  height: number,
-) {
-  const side = Math.min(8, Math.max(3.5, 0.6 * scale))
-  const square = (qubit: number, size: number) => {
-    const px = Math.round(x + (scale * (data.segments[4 * qubit]! + data.segments[4 * qubit + 2]!)) / 2)
-    const py = Math.round(y + (scale * (data.segments[4 * qubit + 1]! + data.segments[4 * qubit + 3]!)) / 2)
-    if (px < -9 || py < -9 || px > width + 9 || py > height + 9) return
-    ctx.rect(px - Math.round(size / 2) + 0.5, py - Math.round(size / 2) + 0.5, Math.round(size), Math.round(size))
-  }
-  ctx.lineWidth = 1.1
-  ctx.beginPath()
-  for (let q = 0; q < data.usable.length; q++) if (!data.usable[q]) square(q, side)
-  ctx.fillStyle = tokens.paper
-  ctx.fill()
-  ctx.strokeStyle = tokens.ink2
-  ctx.stroke()
-  paintMissingCouplers(ctx, data, tokens, { scale, x, y })
-  if (!marks) return
-  ctx.beginPath()
-  for (const qubit of marks.qubits) square(qubit, side + 6)
-  ctx.setLineDash([3, 2])
-  ctx.strokeStyle = tokens.clay
-  ctx.lineWidth = 1.4
-  ctx.stroke()
-  ctx.setLineDash([])
-}
-
-function paintMissingCouplers(ctx: CanvasRenderingContext2D, data: LatticeData, tokens: Tokens, { scale, x, y }: View) {
-  const pairs = data.missingCouplers
-  if (!pairs || scale < GROUND_DEFAULTS.couplersFrom) return
-  const arm = Math.min(3, 0.22 * scale)
-  ctx.beginPath()
-  for (let k = 0; k < pairs.length; k += 2) {
-    const [x1, y1, x2, y2] = placesOfPair(data.segments, pairs[k]!, pairs[k + 1]!)
-    const px = x + (scale * (x1 + x2)) / 2
-    const py = y + (scale * (y1 + y2)) / 2
-    ctx.moveTo(px, py - arm)
-    ctx.lineTo(px + arm, py)
-    ctx.lineTo(px, py + arm)
-    ctx.lineTo(px - arm, py)
-    ctx.closePath()
-  }
-  ctx.fillStyle = tokens.paper
-  ctx.fill()
-  ctx.strokeStyle = tokens.edge
-  ctx.lineWidth = 1
-  ctx.stroke()
 }

@@ -1,6 +1,5 @@
-import { rulerTicks } from './ruler'
 import type { Tokens } from './tokens'
-import type { Box, View } from './types'
+import type { Box } from './types'
 
 /** How a tag looks: boxed on its band, bare beside it, or the rate of a break. */
 export interface TagLook {
@@ -20,10 +19,23 @@ export const TAG_FONT = {
 const fontOf = (kind: TagLook['kind']) =>
   `${kind === 'focus' || kind === 'rate' ? 600 : kind === 'chain' ? 500 : 400} ${TAG_FONT.size[kind]}px ${TAG_FONT.family}`
 
+/** Widths of texts measured before: thousands of labels are asked for again with every hover. */
+export type TextWidths = Map<string, number>
+
 /** Size of a tag in pixels. */
-export function measureTag(ctx: CanvasRenderingContext2D, { text, kind }: TagLook): { width: number; height: number } {
-  ctx.font = fontOf(kind)
-  return { width: Math.ceil(ctx.measureText(text).width) + 2 * TAG_FONT.padding[kind], height: TAG_FONT.height[kind] }
+export function measureTag(
+  ctx: CanvasRenderingContext2D,
+  { text, kind }: TagLook,
+  widths: TextWidths,
+): { width: number; height: number } {
+  const key = `${kind} ${text}`
+  let width = widths.get(key)
+  if (width === undefined) {
+    ctx.font = fontOf(kind)
+    width = Math.ceil(ctx.measureText(text).width) + 2 * TAG_FONT.padding[kind]
+    widths.set(key, width)
+  }
+  return { width, height: TAG_FONT.height[kind] }
 }
 
 export function paintTag(ctx: CanvasRenderingContext2D, look: TagLook, box: Box, tokens: Tokens) {
@@ -46,40 +58,4 @@ export function paintTag(ctx: CanvasRenderingContext2D, look: TagLook, box: Box,
   ctx.textAlign = 'center'
   ctx.fillStyle = look.kind === 'quiet' ? tokens.ink2 : look.kind === 'rate' ? tokens.claytext : tokens.ink
   ctx.fillText(look.text, x + width / 2, y + height / 2 + 0.5)
-}
-
-/** Numbers and ticks along the top and left of the frame; the frame starts at (inset, inset). */
-export function paintRuler(
-  ctx: CanvasRenderingContext2D,
-  view: View,
-  size: { width: number; height: number; inset: number },
-  limits: Box,
-  tokens: Tokens,
-) {
-  const { width, height, inset } = size
-  ctx.font = `400 11.5px ${TAG_FONT.family}`
-  ctx.fillStyle = tokens.ink2
-  ctx.strokeStyle = tokens.ink
-  ctx.lineWidth = 1
-  ctx.textAlign = 'center'
-  ctx.textBaseline = 'alphabetic'
-  ctx.beginPath()
-  for (const { at, text } of rulerTicks(view.x, view.scale, width, [limits.x1, limits.x2])) {
-    const x = Math.round(inset + at) + 0.5
-    ctx.moveTo(x, inset - (text ? 6 : 3))
-    ctx.lineTo(x, inset)
-    if (text) ctx.fillText(text, Math.min(inset + width - 10, Math.max(inset + 8, x + 9)), inset - 8)
-  }
-  for (const { at, text } of rulerTicks(view.y, view.scale, height, [limits.y1, limits.y2])) {
-    const y = Math.round(inset + at) + 0.5
-    ctx.moveTo(inset - (text ? 6 : 3), y)
-    ctx.lineTo(inset, y)
-    if (!text) continue
-    ctx.save()
-    ctx.translate(inset - 8, Math.min(inset + height - 10, Math.max(inset + 8, y - 9)))
-    ctx.rotate(-Math.PI / 2)
-    ctx.fillText(text, 0, 0)
-    ctx.restore()
-  }
-  ctx.stroke()
 }

@@ -1,98 +1,113 @@
 import type { Coverage } from './coverage'
-import { placeTags } from './labels'
+import { carryTags, placeTags } from './labels'
 import type { PlacedTag } from './labels'
+import { boxNow, isSameView, marginOf } from './painted-view'
+import type { Painted } from './painted-view'
 import { paintOverlay } from './paint-overlay'
 import type { Overlay } from './paint-overlay'
-import { paintRuler, paintTag } from './paint-tags'
+import { paintTag } from './paint-tags'
 import type { TagLook } from './paint-tags'
+import { prepareCanvas } from './prepare-canvas'
 import { requestTags } from './tag-requests'
 import type { TagInput } from './tag-requests'
 import type { Tokens } from './tokens'
-import type { Box, View } from './types'
+import type { View } from './types'
 
-/** Outlines and tags over the chains, and the ruler around them, on two canvases. */
-export interface TagLayer {
-  theme(tokens: Tokens, limits: Box, coverage: Coverage | null): void
-  give(input: TagInput): void
-  point(overlay: Overlay | null): void
-  resize(width: number, height: number): void
-  paint(view: View): void
-  repaint(): void
+export interface TagTheme {
+  readonly tokens: Tokens
+  readonly coverage: Coverage | null
 }
 
-/** Sizes and clears a canvas; afterwards one unit of its context is one CSS pixel. */
-function prepareCanvas(context: CanvasRenderingContext2D, width: number, height: number) {
-  const { canvas } = context
-  const ratio = window.devicePixelRatio || 1
-  const [pixelWidth, pixelHeight] = [Math.round(width * ratio), Math.round(height * ratio)]
-  if (canvas.width !== pixelWidth) canvas.width = pixelWidth
-  if (canvas.height !== pixelHeight) canvas.height = pixelHeight
-  canvas.style.width = `${width}px`
-  canvas.style.height = `${height}px`
-  context.setTransform(ratio, 0, 0, ratio, 0, 0)
-  context.clearRect(0, 0, width, height)
-}
+/**
+ * Tags and outlines over the chains. The canvas has a margin around the viewport and only shifts with the camera; when
+ * the zoom changes the tags keep their spots, and once the camera rests they are placed anew.
+ */
+export class TagLayer {
+  private readonly ctx: CanvasRenderingContext2D | null
+  private readonly widths = new Map<string, number>()
+  private size = { width: 0, height: 0 }
+  private theme: TagTheme | null = null
+  private input: TagInput | null = null
+  private overlay: Overlay | null = null
+  private placed: { readonly tags: readonly PlacedTag[]; readonly looks: readonly TagLook[] } | null = null
+  private painted: Painted | null = null
+  private latest: View | null = null
+  private timer = 0
 
-/** @param inset width of the ruler's margin, left and top */
-export function createTagLayer(canvas: HTMLCanvasElement, ruler: HTMLCanvasElement, inset: number): TagLayer {
-  // By the processor, as the ground: see ground-layer.
-  const ctx = canvas.getContext('2d', { willReadFrequently: true })!
-  const rulerCtx = ruler.getContext('2d', { willReadFrequently: true })!
-  let size = { width: 0, height: 0 }
-  let theme: { tokens: Tokens; limits: Box; coverage: Coverage | null } | null = null
-  let input: TagInput | null = null
-  let placed: { scale: number; x: number; y: number; tags: PlacedTag[]; looks: TagLook[] } | null = null
-  let latest: View | null = null
-  let overlay: Overlay | null = null
-
-  /** Places are kept while the camera only shifts a little, so that tags travel with their bands and do not jump. */
-  const placeFor = (view: View) => {
-    if (!input || !theme) return null
-    const keeps = placed && placed.scale === view.scale && Math.hypot(placed.x - view.x, placed.y - view.y) < 40
-    if (keeps) return placed
-    const { requests, looks } = requestTags(ctx, input)
-    const viewport = { x1: 2, y1: 2, x2: size.width - 2, y2: size.height - 2 }
-    placed = { ...view, tags: placeTags(requests, view, viewport, theme.coverage), looks }
-    return placed
+  constructor(private readonly canvas: HTMLCanvasElement) {
+    // By the processor, as the picture: see painter.worker.
+    this.ctx = canvas.getContext('2d', { willReadFrequently: true })
   }
 
-  const paint = (view: View) => {
-    latest = view
-    if (!theme || size.width === 0) return
-    prepareCanvas(rulerCtx, size.width + inset + 2, size.height + inset + 2)
-    paintRuler(rulerCtx, view, { ...size, inset }, theme.limits, theme.tokens)
-    prepareCanvas(ctx, size.width, size.height)
-    if (overlay) paintOverlay(ctx, overlay, view, theme.tokens)
-    const places = placeFor(view)
-    if (!places) return
-    const dx = view.x - places.x
-    const dy = view.y - places.y
-    for (const { key, box } of [...places.tags].reverse())
-      paintTag(
-        ctx,
-        places.looks[key]!,
-        { x1: box.x1 + dx, y1: box.y1 + dy, x2: box.x2 + dx, y2: box.y2 + dy },
-        theme.tokens,
-      )
+  show(theme: TagTheme, input: TagInput, overlay: Overlay | null): void {
+    this.theme = theme
+    this.input = input
+    this.overlay = overlay
+    this.settle()
   }
 
-  return {
-    theme(tokens, limits, coverage) {
-      theme = { tokens, limits, coverage }
-      placed = null
-    },
-    give(next) {
-      input = next
-      placed = null
-    },
-    point(next) {
-      overlay = next
-    },
-    resize(width, height) {
-      size = { width, height }
-      placed = null
-    },
-    paint,
-    repaint: () => latest && paint(latest),
+  resize(width: number, height: number): void {
+    this.size = { width, height }
+    this.placed = null
+    this.painted = null
+  }
+
+  follow(view: View): void {
+    if (this.latest && this.painted && isSameView(this.latest, view)) return
+    this.latest = view
+    window.clearTimeout(this.timer)
+    this.timer = window.setTimeout(() => this.settle(), 120)
+    if (this.painted && this.painted.view.scale === view.scale) this.shift()
+    else this.paint()
+  }
+
+  /** Texts are measured anew, once the fonts are there. */
+  forgetWidths(): void {
+    this.widths.clear()
+  }
+
+  kill(): void {
+    window.clearTimeout(this.timer)
+  }
+
+  /** Places all tags anew. */
+  private settle(): void {
+    this.placed = null
+    if (this.latest) this.paint()
+  }
+
+  private shift(): void {
+    if (!this.painted || !this.latest) return
+    const { x1, y1 } = boxNow(this.painted, this.latest)
+    this.canvas.style.transform = `translate(${x1}px, ${y1}px)`
+  }
+
+  private paint(): void {
+    const { ctx, theme, latest: view } = this
+    if (!ctx || !theme || !view || this.size.width === 0) return
+    const [marginX, marginY] = [marginOf(this.size.width), marginOf(this.size.height)]
+    const [width, height] = [this.size.width + 2 * marginX, this.size.height + 2 * marginY]
+    this.painted = { view, marginX, marginY, width, height, ratio: 1 }
+    prepareCanvas(ctx, width, height)
+    ctx.translate(marginX, marginY)
+    if (this.overlay) paintOverlay(ctx, this.overlay, view, theme.tokens)
+    this.placed ??= this.place(ctx, view, theme)
+    const looks = this.placed?.looks ?? []
+    for (const { key, box } of carryTags(this.placed?.tags ?? [], view).reverse())
+      paintTag(ctx, looks[key]!, box, theme.tokens)
+    this.shift()
+  }
+
+  private place(ctx: CanvasRenderingContext2D, view: View, { coverage }: TagTheme) {
+    if (!this.input) return null
+    const { requests, looks } = requestTags(ctx, this.input, this.widths)
+    const [marginX, marginY] = [marginOf(this.size.width), marginOf(this.size.height)]
+    const inner = { x1: 2, y1: 2, x2: this.size.width - 2, y2: this.size.height - 2 }
+    const outer = { x1: -marginX, y1: -marginY, x2: this.size.width + marginX, y2: this.size.height + marginY }
+    const seen = placeTags(requests, view, inner, coverage)
+    const placedKeys = new Set(seen.map(({ key }) => key))
+    const rest = requests.filter(({ key }) => !placedKeys.has(key))
+    const held = [...seen.map(({ box }) => box), inner]
+    return { tags: [...seen, ...placeTags(rest, view, outer, coverage, held)], looks }
   }
 }

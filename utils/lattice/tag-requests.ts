@@ -1,10 +1,11 @@
 import { measureTag } from './paint-tags'
-import type { TagLook } from './paint-tags'
+import type { TagLook, TextWidths } from './paint-tags'
 import { spotsOf } from './labels'
 import type { TagRequest, TagSpot } from './labels'
 import type { Band } from './bands'
 import type { ChainGeometry } from './geometry'
-import type { Break, Tier } from './scene'
+import type { Break } from './scene-types'
+import type { Tier } from './tiers'
 
 /** The longest bands of each chain, longest first: where its tag may sit. */
 export function tagBands({ bands, neighbours }: ChainGeometry, most = 3): Band[][] {
@@ -30,8 +31,9 @@ export interface TagInput {
   readonly bands: readonly (readonly Band[])[]
   readonly tiers: readonly Tier[]
   readonly hueOf: (chain: number) => string
+  /** Couplers whose rates are to be written. */
   readonly breaks: readonly Break[]
-  readonly showsRates: boolean
+  readonly showsLabels: boolean
   readonly hovered: number | null
 }
 
@@ -42,28 +44,28 @@ export interface TagInput {
 export function requestTags(
   ctx: CanvasRenderingContext2D,
   input: TagInput,
+  widths: TextWidths,
 ): { requests: TagRequest[]; looks: TagLook[] } {
   const requests: TagRequest[] = []
   const looks: TagLook[] = []
   const add = (look: TagLook, priority: number, spots: readonly TagSpot[], insist: boolean) => {
-    requests.push({ key: looks.length, priority, spots, insist, ...measureTag(ctx, look) })
+    requests.push({ key: looks.length, priority, spots, insist, ...measureTag(ctx, look, widths) })
     looks.push(look)
   }
   input.labels.forEach((text, chain) => {
     const tier = input.tiers[chain]!
     const isHovered = chain === input.hovered
-    if (tier === 'far' && !isHovered) return
+    if ((tier === 'far' || !input.showsLabels) && !isHovered && tier !== 'focus') return
     const kind = tier === 'focus' ? 'focus' : 'chain'
     const bands = input.bands[chain]!
     const length = bands[0] ? Math.hypot(bands[0].x2 - bands[0].x1, bands[0].y2 - bands[0].y1) : 0
     const priority = PRIORITY[tier] + Math.min(99, length) + (isHovered ? 900 : 0)
     add({ text, kind, frame: input.hueOf(chain) }, priority, bands.flatMap(spotsOf), tier === 'focus' || isHovered)
   })
-  if (input.showsRates)
-    for (const { rate, x, y } of input.breaks) {
-      const spots = RATE_SPOTS.map(([ox, oy]) => ({ x, y, ox, oy, room: Infinity }))
-      add({ text: rateText(rate), kind: 'rate', frame: '' }, 600 + rate, spots, true)
-    }
+  for (const { rate, x, y } of input.breaks) {
+    const spots = RATE_SPOTS.map(([ox, oy]) => ({ x, y, ox, oy, room: Infinity }))
+    add({ text: rateText(rate), kind: 'rate', frame: '' }, 600 + rate, spots, true)
+  }
   return { requests, looks }
 }
 

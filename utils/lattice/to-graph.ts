@@ -1,9 +1,9 @@
 import Graph from 'graphology'
-import type { Scene, SceneEdge, SceneNode } from './scene'
+import type { Scene, SceneEdge, SceneNode } from './scene-types'
 
 /** Attributes of the nodes sigma draws; the points between which bands run have size 0. y grows upwards, as sigma's. */
 export type DrawnNode = Omit<SceneNode, 'chain'> & { readonly z: number; readonly chain: number }
-export type DrawnEdge = Omit<SceneEdge, 'x1' | 'y1' | 'x2' | 'y2'>
+export type DrawnEdge = Omit<SceneEdge, 'x1' | 'y1' | 'x2' | 'y2' | 'gaps'>
 
 export type DrawnGraph = Graph<DrawnNode, DrawnEdge>
 
@@ -20,7 +20,7 @@ export function sceneGraph(scene: Scene): DrawnGraph {
     if (!graph.hasNode(key)) graph.addNode(key, { ...BARE_POINT, x, y: -y })
     return key
   }
-  for (const { x1, y1, x2, y2, ...look } of scene.edges)
+  for (const { x1, y1, x2, y2, gaps: _, ...look } of scene.edges)
     graph.addDirectedEdge(pointAt(x1, y1), pointAt(x2, y2), { ...look, size: THICKNESS_OF_PIXEL * look.size })
   scene.nodes.forEach((node, k) => graph.addNode(`mark ${k}`, { ...node, y: -node.y, z: 1 }))
   return graph

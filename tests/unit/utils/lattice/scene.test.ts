@@ -1,9 +1,11 @@
 import { describe, expect, it } from 'vitest'
 import { assignHues } from '../../../../utils/hues'
-import { EDGE_KINDS, HATCH } from '../../../../utils/lattice/band-layer'
 import { chainGeometry } from '../../../../utils/lattice/geometry'
-import { buildScene, tailsOf, tiersOf } from '../../../../utils/lattice/scene'
-import type { SceneInput } from '../../../../utils/lattice/scene'
+import { buildScene } from '../../../../utils/lattice/scene'
+import { EDGE_KINDS, HATCH } from '../../../../utils/lattice/scene-types'
+import type { SceneInput } from '../../../../utils/lattice/scene-types'
+import { tailsOf } from '../../../../utils/lattice/tails'
+import { tiersOf } from '../../../../utils/lattice/tiers'
 import { sceneGraph } from '../../../../utils/lattice/to-graph'
 import { readTokens } from '../../../../utils/lattice/tokens'
 import { HAND_DRAWN, latticeOf, layerOf } from './small-lattice'
@@ -58,7 +60,7 @@ describe('occupancy', () => {
     const { edges } = buildScene(input({ geometry: chainGeometry(HAND_DRAWN, all) }))
     const upright = edges.find(({ x1, x2, chain }) => x1 === 5 && x2 === 5 && chain === 2)!
     // It reaches lines 0 and 1; at x = 5 the level band lies over it on line 1 only.
-    expect([upright.under0, upright.under1, upright.under2]).toEqual([0b10, 0, 0])
+    expect(upright.gaps).toEqual([1])
   })
 
   it('rings the couplers of the focus, dims the rest and orders all by weight', () => {

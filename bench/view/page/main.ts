@@ -1,0 +1,50 @@
+/** The lattice view alone on a page, with one case of data; `window.bench` is what the measuring side talks to. */
+import './globals'
+import '../../../assets/css/main.css'
+import { createPinia } from 'pinia'
+import { createApp, h, shallowRef } from 'vue'
+import LatticeLegend from '../../../components/lattice/LatticeLegend.vue'
+import LatticeView from '../../../components/lattice/LatticeView.client.vue'
+import LatticeLensPicker from '../../../components/lattice/LensPicker.vue'
+import LatticeMinimap from '../../../components/lattice/Minimap.vue'
+import LatticeToolbar from '../../../components/lattice/Toolbar.vue'
+import { useSelectionStore } from '../../../stores/selection'
+import { buildCase, CASES } from '../cases'
+import type { BuiltCase } from '../cases'
+import { startRecorder } from './recorder'
+
+const shown = shallowRef<BuiltCase | null>(null)
+const app = createApp({
+  render: () => (shown.value ? h(LatticeView, { ...shown.value, aspect: 0.92, maxHeight: 760 }) : null),
+})
+app.use(createPinia())
+app.component('LatticeLegend', LatticeLegend)
+app.component('LatticeLensPicker', LatticeLensPicker)
+app.component('LatticeMinimap', LatticeMinimap)
+app.component('LatticeToolbar', LatticeToolbar)
+app.mount('#app')
+
+let built: BuiltCase | null = null
+
+const bench = {
+  /** Makes the data, as it would arrive from the server. */
+  prepare(name: string) {
+    built = buildCase(CASES.find((candidate) => candidate.name === name)!)
+    return { qubits: built.data.ids.length, couplers: built.data.ends.length / 2, chains: built.chains.labels.length }
+  },
+  /** Milliseconds from the data's arrival until the frame that shows the picture has been presented. */
+  async firstPaint(): Promise<number> {
+    const start = performance.now()
+    shown.value = built
+    const frame = () => new Promise(requestAnimationFrame)
+    while (!document.querySelector('[data-lattice-frame][aria-busy="false"]')) await frame()
+    await frame()
+    await frame()
+    return performance.now() - start
+  },
+  record: startRecorder,
+  selection: useSelectionStore(),
+}
+
+export type Bench = typeof bench
+Object.assign(window, { bench })

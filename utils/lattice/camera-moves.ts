@@ -1,0 +1,83 @@
+import { viewOfBox } from './framing'
+import type { Box, View } from './types'
+
+export interface Extent {
+  readonly width: number
+  readonly height: number
+}
+
+/** The view zoomed by a factor about a pixel of the viewport, its middle unless another is given. */
+export function zoomed(
+  { scale, x, y }: View,
+  factor: number,
+  { width, height }: Extent,
+  at?: { x: number; y: number },
+) {
+  const [cx, cy] = at ? [at.x, at.y] : [width / 2, height / 2]
+  return { scale: scale * factor, x: cx - factor * (cx - x), y: cy - factor * (cy - y) }
+}
+
+/** What the viewport shows, in line spacings. */
+export const seenBox = ({ scale, x, y }: View, { width, height }: Extent): Box => ({
+  x1: -x / scale,
+  y1: -y / scale,
+  x2: (width - x) / scale,
+  y2: (height - y) / scale,
+})
+
+/** The view with a point of the lattice in its middle. */
+export const centred = ({ scale }: View, { width, height }: Extent, at: { x: number; y: number }): View => ({
+  scale,
+  x: width / 2 - scale * at.x,
+  y: height / 2 - scale * at.y,
+})
+
+const middle = (box: Box) => ({ x: (box.x1 + box.x2) / 2, y: (box.y1 + box.y2) / 2 })
+
+/** The view moved so that the box is in its middle, or null when a part of the box is in sight already. */
+export function broughtIntoSight(view: View, extent: Extent, box: Box): View | null {
+  const seen = seenBox(view, extent)
+  const isInSight = seen.x1 < box.x2 && seen.x2 > box.x1 && seen.y1 < box.y2 && seen.y2 > box.y1
+  return isInSight ? null : centred(view, extent, middle(box))
+}
+
+export const REVEAL_DEFAULTS = {
+  /** Pixels kept free around what is shown. */
+  margin: 36,
+  /** Line spacing in pixels from which a qubit is easy to tell from its neighbours, and the largest used. */
+  legible: 14,
+  largest: 30,
+}
+
+/**
+ * A view that has the whole box in it. The zoom stays where it is when the box fits and single qubits can be told apart;
+ * a view that has it all already is left alone.
+ */
+export function revealing(view: View, extent: Extent, box: Box): View {
+  const { margin, legible, largest } = REVEAL_DEFAULTS
+  const fitting = viewOfBox(box, extent.width, extent.height, margin, largest)
+  const scale = Math.min(fitting.scale, Math.max(view.scale, Math.min(legible, fitting.scale)))
+  const seen = seenBox(view, extent)
+  const isSeen = seen.x1 <= box.x1 && seen.x2 >= box.x2 && seen.y1 <= box.y1 && seen.y2 >= box.y2
+  return isSeen && scale === view.scale ? view : centred({ ...view, scale }, extent, middle(box))
+}
+
+/** Whether most of a machine is in view, so that a map of it would tell nothing. */
+export function showsMost(view: View, extent: Extent, bounds: Box, share = 0.85): boolean {
+  const seen = seenBox(view, extent)
+  const within = (a1: number, a2: number, b1: number, b2: number) => Math.max(0, Math.min(a2, b2) - Math.max(a1, b1))
+  const across = within(seen.x1, seen.x2, bounds.x1, bounds.x2) / (bounds.x2 - bounds.x1)
+  const down = within(seen.y1, seen.y2, bounds.y1, bounds.y2) / (bounds.y2 - bounds.y1)
+  return across >= share && down >= share
+}
+
+/** What is in view, for those who cannot see it. */
+export function describeView(view: View, extent: Extent, bounds: Box): string {
+  if (showsMost(view, extent, bounds, 0.97)) return 'Whole machine in view.'
+  const seen = seenBox(view, extent)
+  const lines = (from: number, to: number, low: number, high: number) =>
+    `${Math.ceil(Math.max(from, low))} to ${Math.floor(Math.min(to, high))}`
+  const across = lines(seen.x1, seen.x2, bounds.x1, bounds.x2)
+  const down = lines(seen.y1, seen.y2, bounds.y1, bounds.y2)
+  return `In view: lines ${across} across, ${down} down.`
+}

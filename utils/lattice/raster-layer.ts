@@ -1,0 +1,170 @@
+import { viewOfBox } from './framing'
+import { boxNow, covers, isSameView, isUsedUp, marginOf } from './painted-view'
+import type { Painted } from './painted-view'
+import { createPainter } from './painter'
+import type { PictureLook, PictureSource } from './picture'
+import type { Box, View } from './types'
+
+export interface RasterEvents {
+  /** A picture arrived; the first one ends the waiting. */
+  onPainted(): void
+  /** The picture of the whole machine arrived. */
+  onOverview(): void
+  onFailure(reason: string): void
+}
+
+export const RASTER_DEFAULTS = {
+  restMilliseconds: 110,
+  /** Longest side of the picture of the whole machine, in pixels. */
+  overview: 900,
+  /** Most device pixels to a CSS pixel. */
+  largestRatio: 2,
+}
+
+const restRatio = () => Math.min(RASTER_DEFAULTS.largestRatio, window.devicePixelRatio || 1)
+
+/**
+ * The picture of the lattice. It is painted with a margin around the viewport; while the camera moves it is only shifted
+ * and stretched, and it is painted anew once the camera rests or the margin is nearly used up. Beneath it lies a small
+ * picture of the whole machine, so that no part of the viewport is ever empty.
+ */
+export class RasterLayer {
+  private readonly painter = createPainter()
+  private readonly screen: ImageBitmapRenderingContext | null
+  private readonly whole: CanvasRenderingContext2D | null
+  private size = { width: 0, height: 0 }
+  private bounds: Box = { x1: 0, y1: 0, x2: 1, y2: 1 }
+  private latest: View | null = null
+  private painted: Painted | null = null
+  private overview: Painted | null = null
+  private isStale = true
+  private isOverviewStale = true
+  private isResting = true
+  private isBusy = false
+  private isOver = false
+  private timer = 0
+
+  /**
+   * @param front canvas of the picture
+   * @param back canvas of the whole machine, beneath it
+   */
+  constructor(
+    private readonly front: HTMLCanvasElement,
+    private readonly back: HTMLCanvasElement,
+    private readonly events: RasterEvents,
+  ) {
+    this.screen = front.getContext('bitmaprenderer')
+    this.whole = back.getContext('2d', { alpha: false })
+  }
+
+  of(source: PictureSource, bounds: Box): void {
+    this.bounds = bounds
+    this.painter.of(source)
+    this.isStale = this.isOverviewStale = true
+  }
+
+  show(look: PictureLook): void {
+    this.painter.show(look)
+    this.isStale = this.isOverviewStale = true
+    void this.work()
+  }
+
+  follow(view: View): void {
+    if (!this.latest || !isSameView(this.latest, view)) {
+      this.isResting = this.latest === null
+      this.latest = view
+      this.place()
+      window.clearTimeout(this.timer)
+      this.timer = window.setTimeout(() => {
+        this.isResting = true
+        void this.work()
+      }, RASTER_DEFAULTS.restMilliseconds)
+    }
+    void this.work()
+  }
+
+  resize(width: number, height: number): void {
+    this.size = { width, height }
+    this.isStale = true
+  }
+
+  kill(): void {
+    this.isOver = true
+    window.clearTimeout(this.timer)
+    this.painter.kill()
+  }
+
+  private place(): void {
+    if (!this.latest) return
+    const box = this.painted && boxNow(this.painted, this.latest)
+    if (box) moveTo(this.front, box)
+    if (!this.overview) return
+    const isCovered = box !== null && covers(box, this.size.width, this.size.height)
+    this.back.style.visibility = isCovered ? 'hidden' : 'visible'
+    if (!isCovered) moveTo(this.back, boxNow(this.overview, this.latest))
+  }
+
+  private isWanted(view: View): boolean {
+    if (this.isStale || !this.painted) return true
+    if (!this.isResting) return isUsedUp(this.painted, view, this.size.width, this.size.height)
+    return !isSameView(this.painted.view, view) || this.painted.ratio !== restRatio()
+  }
+
+  /** Paints what is wanted most, one picture after the other. */
+  private async work(): Promise<void> {
+    if (this.isBusy || this.isOver || !this.latest || this.size.width === 0) return
+    const wantsPicture = this.isWanted(this.latest)
+    if (!wantsPicture && !(this.isOverviewStale && this.isResting)) return
+    this.isBusy = true
+    try {
+      await (wantsPicture ? this.paintPicture(this.latest) : this.paintOverview())
+    } catch (error) {
+      this.isOver = true
+      this.events.onFailure(error instanceof Error ? error.message : String(error))
+    }
+    this.isBusy = false
+    void this.work()
+  }
+
+  private async paintPicture(view: View): Promise<void> {
+    const [marginX, marginY] = [marginOf(this.size.width), marginOf(this.size.height)]
+    const [width, height] = [this.size.width + 2 * marginX, this.size.height + 2 * marginY]
+    this.isStale = false
+    const next = { view, marginX, marginY, width, height, ratio: this.isResting ? restRatio() : 1 }
+    const bitmap = await this.paint(next, false)
+    if (this.isOver) return bitmap.close()
+    this.screen?.transferFromImageBitmap(bitmap)
+    this.front.style.width = `${width}px`
+    this.front.style.height = `${height}px`
+    this.painted = next
+    this.place()
+    this.events.onPainted()
+  }
+
+  private async paintOverview(): Promise<void> {
+    const [across, down] = [this.bounds.x2 - this.bounds.x1, this.bounds.y2 - this.bounds.y1]
+    const scale = RASTER_DEFAULTS.overview / Math.max(across, down)
+    const [width, height] = [Math.ceil(scale * across), Math.ceil(scale * down)]
+    this.isOverviewStale = false
+    const next = { view: viewOfBox(this.bounds, width, height, 0), width, height, marginX: 0, marginY: 0, ratio: 1 }
+    const bitmap = await this.paint(next, true)
+    if (this.isOver) return bitmap.close()
+    this.back.width = width
+    this.back.height = height
+    this.whole?.drawImage(bitmap, 0, 0)
+    bitmap.close()
+    this.overview = next
+    this.place()
+    this.events.onOverview()
+  }
+
+  private paint(painted: Painted, whole: boolean): Promise<ImageBitmap> {
+    const { view, marginX, marginY, width, height, ratio } = painted
+    const shifted = { scale: view.scale, x: view.x + marginX, y: view.y + marginY }
+    return this.painter.paint({ view: shifted, width, height, ratio, whole })
+  }
+}
+
+function moveTo(canvas: HTMLCanvasElement, { x1, y1, stretch }: { x1: number; y1: number; stretch: number }): void {
+  canvas.style.transform = `translate(${x1}px, ${y1}px) scale(${stretch})`
+}

@@ -1,0 +1,258 @@
+import { broughtIntoSight, centred, revealing, seenBox, zoomed } from './camera-moves'
+import { coverageOf } from './coverage'
+import { createDrawing } from './drawing'
+import type { Drawing } from './drawing'
+import { viewOfBox } from './framing'
+import type { ChainGeometry } from './geometry'
+import type { PictureLook, PictureSource } from './picture'
+import { placesOfPair } from './places'
+import { RasterLayer } from './raster-layer'
+import { RulerLayer } from './ruler-layer'
+import { buildScene } from './scene'
+import { breaksOf } from './scene-couplers'
+import type { Scene } from './scene-types'
+import type { Coverage } from './coverage'
+import type { Band } from './bands'
+import { TagLayer } from './tag-layer'
+import { tagBands } from './tag-requests'
+import { tiersOf } from './tiers'
+import type { Box, OverlayLayer, View } from './types'
+
+export interface StageElements {
+  /** Takes the camera's gestures. */
+  readonly container: HTMLElement
+  readonly front: HTMLCanvasElement
+  readonly back: HTMLCanvasElement
+  readonly tags: HTMLCanvasElement
+  readonly rulerTop: HTMLCanvasElement
+  readonly rulerLeft: HTMLCanvasElement
+}
+
+export interface StageEvents {
+  onPainted(): void
+  onOverview(): void
+  onView(view: View): void
+  /** A click or tap that was no drag, in pixels of the viewport. */
+  onClick(x: number, y: number, additive: boolean): void
+  onFailure(reason: string): void
+}
+
+/** What stays the same for as long as the embedding does. */
+export interface StageSource extends PictureSource {
+  readonly geometry: ChainGeometry
+  readonly bounds: Box
+}
+
+export interface StageLook extends PictureLook {
+  readonly hovered: number | null
+  readonly overlay: OverlayLayer | null
+}
+
+export const STAGE_DEFAULTS = {
+  /** Width of the ruler in pixels. */
+  inset: 24,
+  /** Pixels kept free around what is fitted, and the largest line spacing it is fitted at. */
+  margin: 14,
+  largestFit: 30,
+}
+
+/** The layers of the lattice drawing, one on the other, and the one camera that moves them. */
+export class LatticeStage {
+  private readonly raster: RasterLayer
+  private readonly tags: TagLayer
+  private readonly ruler: RulerLayer
+  private drawing: Drawing | null = null
+  private source: StageSource | null = null
+  private look: StageLook | null = null
+  private bandsForTags: Band[][] = []
+  private coverage: Coverage | null = null
+  private size = { width: 0, height: 0 }
+
+  constructor(
+    private readonly elements: StageElements,
+    private readonly events: StageEvents,
+  ) {
+    this.raster = new RasterLayer(elements.front, elements.back, events)
+    this.tags = new TagLayer(elements.tags)
+    this.ruler = new RulerLayer(elements.rulerTop, elements.rulerLeft, STAGE_DEFAULTS.inset)
+    this.measure()
+  }
+
+  get extent(): { readonly width: number; readonly height: number } {
+    return this.size
+  }
+
+  /**
+   * Starts on another machine or embedding. The picture is asked for before the camera is made, which takes a while.
+   *
+   * @param first box to be shown at the start; null keeps the view
+   */
+  begin(source: StageSource, look: StageLook, first: Box | null): void {
+    const kept = this.drawing?.view() ?? null
+    this.source = source
+    this.look = look
+    this.bandsForTags = tagBands(source.geometry)
+    this.coverage = source.geometry.bands.length > 0 ? coverageOf(source.geometry.bands, source.bounds) : null
+    const { data, chains, hues } = source
+    this.raster.of({ data, chains, hues }, source.bounds)
+    this.raster.show(pictureLook(look))
+    const view = kept && !first ? kept : this.fitting(first ?? source.bounds)
+    this.raster.follow(view)
+    this.makeCamera(view)
+    this.showTags()
+  }
+
+  /** Shows the same embedding in another lens, focus, selection or filter. */
+  show(look: StageLook): void {
+    const before = this.look
+    this.look = look
+    if (!this.source) return
+    if (before && before.tokens !== look.tokens) this.makeCamera(this.view())
+    else if (before?.focused !== look.focused || isOtherPicture(before, look)) this.drawing?.show(this.focusScene())
+    if (!before || isOtherPicture(before, look)) this.raster.show(pictureLook(look))
+    this.showTags()
+  }
+
+  resize(): void {
+    if (!this.measure() || !this.drawing) return
+    this.drawing.refresh()
+    this.follow(this.drawing.view())
+  }
+
+  view(): View {
+    return this.drawing?.view() ?? { scale: 1, x: 0, y: 0 }
+  }
+
+  moveTo(view: View, milliseconds = 0): void {
+    this.drawing?.moveTo(view, milliseconds)
+  }
+
+  fit(box: Box, milliseconds = 0): void {
+    this.moveTo(this.fitting(box), milliseconds)
+  }
+
+  reveal(box: Box, milliseconds = 0): void {
+    this.moveTo(revealing(this.view(), this.size, box), milliseconds)
+  }
+
+  bringIntoSight(box: Box, milliseconds = 0): void {
+    const view = broughtIntoSight(this.view(), this.size, box)
+    if (view) this.moveTo(view, milliseconds)
+  }
+
+  zoom(factor: number, milliseconds = 0): void {
+    this.moveTo(zoomed(this.view(), factor, this.size), milliseconds)
+  }
+
+  pan(dx: number, dy: number): void {
+    const { scale, x, y } = this.view()
+    this.moveTo({ scale, x: x + dx, y: y + dy })
+  }
+
+  centre(at: { x: number; y: number }): void {
+    this.moveTo(centred(this.view(), this.size, at))
+  }
+
+  seen(): Box {
+    return seenBox(this.view(), this.size)
+  }
+
+  /** Labels are measured and placed anew, once the fonts are there. */
+  refreshTags(): void {
+    this.tags.forgetWidths()
+    this.showTags()
+    if (this.drawing) this.paintRuler(this.drawing.view())
+  }
+
+  kill(): void {
+    this.drawing?.kill()
+    this.drawing = null
+    this.raster.kill()
+    this.tags.kill()
+  }
+
+  private fitting(box: Box): View {
+    const { margin, largestFit } = STAGE_DEFAULTS
+    return viewOfBox(box, this.size.width, this.size.height, margin, largestFit)
+  }
+
+  /** @returns whether the size has changed */
+  private measure(): boolean {
+    const { clientWidth: width, clientHeight: height } = this.elements.container
+    if (width === this.size.width && height === this.size.height) return false
+    this.size = { width, height }
+    this.raster.resize(width, height)
+    this.tags.resize(width, height)
+    return true
+  }
+
+  private makeCamera(view: View): void {
+    if (!this.source || !this.look) return
+    this.drawing?.kill()
+    this.drawing = null
+    try {
+      this.drawing = createDrawing(this.elements.container, {
+        bounds: this.source.bounds,
+        tokens: this.look.tokens,
+        scene: this.focusScene(),
+        events: { onFrame: (next) => this.follow(next), onClick: this.events.onClick },
+      })
+    } catch {
+      return this.events.onFailure('This browser offers no WebGL 2, so the lattice cannot be moved.')
+    }
+    this.drawing.moveTo(view)
+    // Where the camera stood there already, no frame follows from moving it.
+    this.follow(this.drawing.view())
+  }
+
+  private focusScene(): Scene {
+    const { source, look } = this
+    if (!source || !look || look.focused === null) return { nodes: [], edges: [], breaks: [] }
+    return buildScene({ ...source, ...look, part: 'focus' })
+  }
+
+  private follow(view: View): void {
+    this.raster.follow(view)
+    this.tags.follow(view)
+    this.paintRuler(view)
+    this.events.onView(view)
+  }
+
+  private paintRuler(view: View): void {
+    if (this.source && this.look) this.ruler.paint(view, this.size, this.source.bounds, this.look.tokens)
+  }
+
+  private showTags(): void {
+    const { source, look } = this
+    if (!source || !look) return
+    const { tokens, lens, hiddenKinds } = look
+    const showsRates = lens === 'breaks' && !look.read && !hiddenKinds?.has('breaks')
+    const { data, geometry, hues } = source
+    this.tags.show(
+      { tokens, coverage: this.coverage },
+      {
+        labels: source.chains.labels,
+        bands: this.bandsForTags,
+        tiers: tiersOf({ geometry, ...look }),
+        hueOf: (chain) => (lens === 'occupancy' ? tokens.hues[hues.hue[chain]!]! : tokens.edge),
+        breaks: showsRates ? breaksOf({ data, geometry, breaks: look.breaks }) : [],
+        showsLabels: !hiddenKinds?.has('labels'),
+        hovered: look.hovered,
+      },
+      look.overlay && {
+        data,
+        layer: look.overlay,
+        spanOf: new Map(geometry.spans.map((span) => [span.qubit, span])),
+        placeOf: (a, b) => placesOfPair(data.segments, a, b),
+      },
+    )
+  }
+}
+
+/** Without what is drawn over the picture, not in it. */
+const pictureLook = ({ hovered: _, overlay: __, ...look }: StageLook): PictureLook => look
+
+function isOtherPicture(before: StageLook | null, look: StageLook): boolean {
+  if (!before) return true
+  return (Object.keys(pictureLook(look)) as (keyof PictureLook)[]).some((key) => before[key] !== look[key])
+}
