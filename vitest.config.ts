@@ -45,7 +45,7 @@ export default defineConfig({
           name: 'browser',
           environment: 'node',
           include: ['tests/browser/**/*.test.ts'],
-          globalSetup: 'tests/setup/build.ts',
+          globalSetup: 'tests/setup/demo.ts',
           testTimeout: 300_000,
           hookTimeout: 300_000,
           fileParallelism: false,

@@ -3,8 +3,8 @@ import { afterAll, beforeAll, describe, expect, it } from 'vitest'
 import { createRandom } from '../../shared/engine/random'
 import { Client } from '../support/client'
 import { launch, watchPage } from '../support/browser'
+import { startDemo } from '../support/demo'
 import type { RunningServer } from '../support/server'
-import { startServer, temporaryFolder } from '../support/server'
 
 /** A random problem of 60 variables at density 0.1, as a modelling script would write it. */
 function problemFile(): string {
@@ -25,7 +25,7 @@ let complaints: string[]
 let missing: number[]
 
 beforeAll(async () => {
-  server = await startServer({ DEMO: 'true', DATA_DIR: temporaryFolder() })
+  server = await startDemo()
   browser = await launch()
   page = await (await browser.newContext({ viewport: { width: 1280, height: 900 } })).newPage()
   page.setDefaultTimeout(30_000)

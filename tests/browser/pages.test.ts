@@ -2,8 +2,8 @@ import type { Browser } from 'playwright-core'
 import { fileURLToPath } from 'node:url'
 import { afterAll, beforeAll, describe, expect, it } from 'vitest'
 import { launch } from '../support/browser'
+import { startDemo } from '../support/demo'
 import type { RunningServer } from '../support/server'
-import { startServer, temporaryFolder } from '../support/server'
 import type { DeadLink, Shown } from '../support/pages/crawl'
 import { crawl, tellingViews } from '../support/pages/crawl'
 import { findRoutes } from '../support/pages/routes'
@@ -37,7 +37,7 @@ afterAll(async () => {
 })
 
 async function lookAtDemo(): Promise<void> {
-  const server = await startServer({ DEMO: 'true', DATA_DIR: temporaryFolder() })
+  const server = await startDemo()
   servers.push(server)
   await prepareStates(server.url)
   const visitors = await demoVisitors(server.url)

@@ -41,23 +41,26 @@ export async function unfold(page: Page): Promise<void> {
   await twoFrames(page)
 }
 
-/** Violations, each with the first elements that show it; `within` is a selector. */
-export async function violations(page: Page, within?: string): Promise<string[]> {
+/** Rules about colours, the only ones that a theme can break. */
+const COLOUR_RULES = ['color-contrast', 'link-in-text-block']
+
+/** Violations, each with the first places that show it. */
+export async function violations(page: Page, about: 'all' | 'colours' | 'all but colours' = 'all'): Promise<string[]> {
   if (!(await page.evaluate(() => 'axe' in window))) await page.evaluate(AXE)
-  return page.evaluate(
-    async ({ tags, selector }) => {
-      const { violations: found } = await window.axe.run(selector ?? document, {
-        runOnly: tags,
-        resultTypes: ['violations'],
-        elementRef: false,
-      })
-      return found.map(({ id, help, nodes }) => {
-        const places = nodes.slice(0, 3).map(({ target, any }) => `${target.join(' ')} (${any[0]?.message ?? ''})`)
-        return `${id}: ${help}, ${nodes.length}×: ${places.join('; ')}`
-      })
-    },
-    { tags: TAGS, selector: within },
-  )
+  const without = Object.fromEntries(COLOUR_RULES.map((rule) => [rule, { enabled: about === 'all' }]))
+  const options: axe.RunOptions = {
+    resultTypes: ['violations'],
+    ...(about === 'colours'
+      ? { runOnly: { type: 'rule', values: COLOUR_RULES } }
+      : { runOnly: { type: 'tag', values: TAGS }, rules: without }),
+  }
+  return page.evaluate(async (asked) => {
+    const { violations: found } = await window.axe.run(document, asked)
+    return found.map(({ id, help, nodes }) => {
+      const places = nodes.slice(0, 3).map(({ target, any }) => `${target.join(' ')} (${any[0]?.message ?? ''})`)
+      return `${id}: ${help}, ${nodes.length}×: ${places.join('; ')}`
+    })
+  }, options)
 }
 
 /** Elements that reach over the right edge where the page has to be scrolled sideways; none where it has not. */

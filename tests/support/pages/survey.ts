@@ -51,14 +51,15 @@ async function lookAt(browser: Browser, view: View): Promise<Finding[]> {
     await settled(page)
     add('naming', await naming(page))
     await unfold(page)
+    add('accessibility', await violations(page))
     for (const theme of await themesOf(page)) {
       await wear(page, theme)
-      add('accessibility', await violations(page), `, ${theme}`)
+      add('accessibility', await violations(page, 'colours'), `, ${theme}`)
     }
     await page.setViewportSize(NARROW)
     await twoFrames(page)
     add('width', await sideways(page))
-    add('accessibility', await violations(page), ', narrow')
+    add('accessibility', await violations(page, 'all but colours'), ', narrow')
   } catch (error) {
     add('console', [error instanceof Error ? error.message : String(error)])
   }
