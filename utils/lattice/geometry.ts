@@ -19,10 +19,17 @@ export interface ChainGeometry {
   readonly neighbours: readonly (readonly number[])[]
 }
 
+const known = new WeakMap<ChainLayer, { readonly data: LatticeData; readonly geometry: ChainGeometry }>()
+
+/** Worked out once for as long as machine and chains are the same objects: hues, drawing and tags all ask for it. */
 export function chainGeometry(data: LatticeData, chains: ChainLayer): ChainGeometry {
+  const kept = known.get(chains)
+  if (kept?.data === data) return kept.geometry
   const roles = rolesOf(data, chains)
   const spans = spansOf(data, roles)
   const joints = jointsOf(data, roles)
   const bands = bandsOf(data, spans, joints)
-  return { roles, spans, joints, bands, crossings: crossingsOf(bands), neighbours: neighboursOf(chains) }
+  const geometry = { roles, spans, joints, bands, crossings: crossingsOf(bands), neighbours: neighboursOf(chains) }
+  known.set(chains, { data, geometry })
+  return geometry
 }

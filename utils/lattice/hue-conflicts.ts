@@ -1,11 +1,9 @@
 import { assignHues } from '~/utils/hues'
 import type { ChainHues, HueConflicts } from '~/utils/hues'
-import { bandsOf, jointsOf } from './bands'
 import type { Band } from './bands'
-import { rolesOf } from './roles'
+import { chainGeometry } from './geometry'
 import type { Roles } from './roles'
 import { axisOf } from './segments'
-import { spansOf } from './spans'
 import type { ChainLayer, LatticeData } from './types'
 
 export const HUE_WEIGHTS = { adjacentLine: 4, secondLine: 2, sharedCoupler: 1 }
@@ -61,8 +59,7 @@ function noteParallels(
 
 /** Hues of all chains of an embedding, for the lattice, the ledger and the problem graph alike. */
 export function huesOfChains(data: LatticeData, chains: ChainLayer): ChainHues {
-  const roles = rolesOf(data, chains)
-  const bands = bandsOf(data, spansOf(data, roles), jointsOf(data, roles))
+  const { roles, bands } = chainGeometry(data, chains)
   const isPoints = roles.owner.every((_, qubit) => axisOf(data.segments, qubit).length === 0)
   const conflicts = hueConflicts(data, roles, isPoints ? [] : bands)
   return assignHues(chains.labels.length, isPoints ? couplerConflicts(data, roles) : conflicts)

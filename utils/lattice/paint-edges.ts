@@ -1,5 +1,5 @@
 import { EDGE_KINDS, HATCH } from './scene-types'
-import { placeEdge, traceEdge } from './trace'
+import { fillEdge, placeEdge } from './trace'
 import type { PlacedEdge } from './trace'
 import type { SceneEdge } from './scene-types'
 import type { Tokens } from './tokens'
@@ -30,11 +30,8 @@ export function paintEdges(
 type HalfWidth = (placed: PlacedEdge) => number
 
 function fillAll(ctx: Canvas2D, placed: readonly PlacedEdge[], style: string | CanvasPattern, half: HalfWidth): void {
-  if (placed.length === 0) return
-  ctx.beginPath()
-  for (const one of placed) traceEdge(ctx, one, half(one))
   ctx.fillStyle = style
-  ctx.fill()
+  for (const one of placed) fillEdge(ctx, one, half(one))
 }
 
 function byColour(placed: readonly PlacedEdge[]): Map<string, PlacedEdge[]> {
@@ -65,25 +62,25 @@ function paintBands(ctx: Canvas2D, bands: readonly PlacedEdge[], tokens: Tokens)
   fillAll(ctx, outlined, tokens.paper, (one) => one.radius - casingOf(one) - outlineOf(one))
   paintPlain(ctx, bands, innerOf)
   const inlaid = bands.filter((one) => one.edge.inlay > 0 && innerOf(one) > LEAST_INLAID)
-  ctx.beginPath()
-  for (const one of inlaid) {
-    if (one.edge.inlay === 1) traceEdge(ctx, one, Math.max(0.5, 0.3 * innerOf(one)))
-    else traceDots(ctx, one, Math.max(0.6, 0.4 * innerOf(one)))
-  }
   ctx.fillStyle = tokens.paper
-  ctx.fill()
+  for (const one of inlaid) {
+    if (one.edge.inlay === 1) fillEdge(ctx, one, Math.max(0.5, 0.3 * innerOf(one)))
+    else fillDots(ctx, one, Math.max(0.6, 0.4 * innerOf(one)))
+  }
 }
 
 /** Dots half-way between lines of the lattice, where no other band crosses; fewer where lines are close together. */
-function traceDots(ctx: Canvas2D, { edge, x, y, dx, dy, length, unit, radius }: PlacedEdge, dot: number): void {
+function fillDots(ctx: Canvas2D, { edge, x, y, dx, dy, length, unit, radius }: PlacedEdge, dot: number): void {
   const pace = 2 ** Math.ceil(Math.log2(Math.max(1, 8 / unit)))
   const first = Math.ceil(edge.from / pace - 0.5)
+  ctx.beginPath()
   for (let k = first; (k + 0.5) * pace < edge.from + edge.span; k++) {
     const at = ((k + 0.5) * pace - edge.from) * unit
     if (at < radius || at > length - radius) continue
     ctx.moveTo(x + at * dx + dot, y + at * dy)
     ctx.arc(x + at * dx, y + at * dy, dot, 0, 2 * Math.PI)
   }
+  ctx.fill()
 }
 
 const wallOf = ({ edge }: PlacedEdge) => (edge.outline > 0 ? 1.5 : 1)
@@ -109,20 +106,16 @@ function paintTubes(ctx: Canvas2D, tubes: readonly PlacedEdge[], tokens: Tokens)
     )
     if (hatched.length > 0) fillUpTo(ctx, hatched, hatching(ctx, colour))
   }
-  ctx.beginPath()
+  ctx.fillStyle = tokens.ink
   for (const one of tubes) {
     const at = (one.edge.value - one.edge.from) * one.unit
-    traceEdge(ctx, one, boreOf(one), [Math.max(0, at - 0.7), Math.min(one.length, at + 0.7)])
+    fillEdge(ctx, one, boreOf(one), [Math.max(0, at - 0.7), Math.min(one.length, at + 0.7)])
   }
-  ctx.fillStyle = tokens.ink
-  ctx.fill()
 }
 
 function fillUpTo(ctx: Canvas2D, tubes: readonly PlacedEdge[], style: string | CanvasPattern): void {
-  ctx.beginPath()
-  for (const one of tubes) traceEdge(ctx, one, boreOf(one), [0, (one.edge.value - one.edge.from) * one.unit])
   ctx.fillStyle = style
-  ctx.fill()
+  for (const one of tubes) fillEdge(ctx, one, boreOf(one), [0, (one.edge.value - one.edge.from) * one.unit])
 }
 
 const HATCH_PIXELS = 5

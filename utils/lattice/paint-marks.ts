@@ -46,25 +46,23 @@ function fill(
   radiusOf: (node: SceneNode) => number,
   colour: string,
 ): void {
-  ctx.beginPath()
-  for (const node of nodes) traceMark(ctx, node.shape, x + scale * node.x, y + scale * node.y, radiusOf(node))
   ctx.fillStyle = colour
-  ctx.fill()
+  for (const node of nodes) fillMark(ctx, node.shape, x + scale * node.x, y + scale * node.y, radiusOf(node))
 }
 
-function traceMark(ctx: Canvas2D, shape: SceneNode['shape'], x: number, y: number, radius: number): void {
-  if (shape === 'square') {
-    const half = radius * Math.SQRT1_2
-    ctx.rect(x - half, y - half, 2 * half, 2 * half)
-  } else if (shape === 'circle') {
-    if (radius < LEAST_ROUND) return ctx.rect(x - 0.9 * radius, y - 0.9 * radius, 1.8 * radius, 1.8 * radius)
-    ctx.moveTo(x + radius, y)
-    ctx.arc(x, y, radius, 0, 2 * Math.PI)
-  } else {
+/** Each mark by itself: one path of thousands of shapes takes a rasteriser many times as long. */
+function fillMark(ctx: Canvas2D, shape: SceneNode['shape'], x: number, y: number, radius: number): void {
+  const half = shape === 'square' ? radius * Math.SQRT1_2 : 0.9 * radius
+  if (shape === 'square' || (shape === 'circle' && radius < LEAST_ROUND))
+    return ctx.fillRect(x - half, y - half, 2 * half, 2 * half)
+  ctx.beginPath()
+  if (shape === 'circle') ctx.arc(x, y, radius, 0, 2 * Math.PI)
+  else {
     const tip = shape === 'up' ? -radius : radius
     ctx.moveTo(x, y + tip)
     ctx.lineTo(x + 0.866 * radius, y - tip / 2)
     ctx.lineTo(x - 0.866 * radius, y - tip / 2)
     ctx.closePath()
   }
+  ctx.fill()
 }

@@ -14,27 +14,25 @@ export function paintMissing(
   height: number,
 ) {
   const side = Math.min(8, Math.max(scale < 4 ? 2.5 : 3.5, 0.6 * scale))
-  const square = (qubit: number, size: number) => {
+  const square = (qubit: number, size: number, isFilled: boolean) => {
     const px = Math.round(x + (scale * (data.segments[4 * qubit]! + data.segments[4 * qubit + 2]!)) / 2)
     const py = Math.round(y + (scale * (data.segments[4 * qubit + 1]! + data.segments[4 * qubit + 3]!)) / 2)
     if (px < -9 || py < -9 || px > width + 9 || py > height + 9) return
-    ctx.rect(px - Math.round(size / 2) + 0.5, py - Math.round(size / 2) + 0.5, Math.round(size), Math.round(size))
+    const [left, top] = [px - Math.round(size / 2) + 0.5, py - Math.round(size / 2) + 0.5]
+    if (isFilled) ctx.fillRect(left, top, Math.round(size), Math.round(size))
+    ctx.strokeRect(left, top, Math.round(size), Math.round(size))
   }
   ctx.lineWidth = 1.1
-  ctx.beginPath()
-  if (!hiddenKinds?.has('missing')) for (let q = 0; q < data.usable.length; q++) if (!data.usable[q]) square(q, side)
   ctx.fillStyle = tokens.paper
-  ctx.fill()
   ctx.strokeStyle = tokens.ink2
-  ctx.stroke()
+  if (!hiddenKinds?.has('missing'))
+    for (let q = 0; q < data.usable.length; q++) if (!data.usable[q]) square(q, side, true)
   if (!hiddenKinds?.has('missingCouplers')) paintMissingCouplers(ctx, data, tokens, { scale, x, y })
   if (!marks || hiddenKinds?.has('marks')) return
-  ctx.beginPath()
-  for (const qubit of marks.qubits) square(qubit, side + 6)
   ctx.setLineDash([3, 2])
   ctx.strokeStyle = tokens.clay
   ctx.lineWidth = 1.4
-  ctx.stroke()
+  for (const qubit of marks.qubits) square(qubit, side + 6, false)
   ctx.setLineDash([])
 }
 

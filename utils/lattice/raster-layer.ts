@@ -1,7 +1,7 @@
 import { viewOfBox } from './framing'
 import { boxNow, covers, isSameView, isUsedUp, marginOf } from './painted-view'
 import type { Painted } from './painted-view'
-import { createPainter } from './painter'
+import type { Painter } from './painter'
 import type { PictureLook, PictureSource } from './picture'
 import type { Box, View } from './types'
 
@@ -29,7 +29,6 @@ const restRatio = () => Math.min(RASTER_DEFAULTS.largestRatio, window.devicePixe
  * picture of the whole machine, so that no part of the viewport is ever empty.
  */
 export class RasterLayer {
-  private readonly painter = createPainter()
   private readonly screen: ImageBitmapRenderingContext | null
   private readonly whole: CanvasRenderingContext2D | null
   private size = { width: 0, height: 0 }
@@ -51,6 +50,7 @@ export class RasterLayer {
   constructor(
     private readonly front: HTMLCanvasElement,
     private readonly back: HTMLCanvasElement,
+    private readonly painter: Painter,
     private readonly events: RasterEvents,
   ) {
     this.screen = front.getContext('bitmaprenderer')
@@ -91,7 +91,6 @@ export class RasterLayer {
   kill(): void {
     this.isOver = true
     window.clearTimeout(this.timer)
-    this.painter.kill()
   }
 
   private place(): void {

@@ -1,9 +1,9 @@
 import { broughtIntoSight, centred, revealing, seenBox, zoomed } from './camera-moves'
 import { coverageOf } from './coverage'
-import { createDrawing } from './drawing'
 import type { Drawing } from './drawing'
 import { viewOfBox } from './framing'
 import type { ChainGeometry } from './geometry'
+import type { Painter } from './painter'
 import type { PictureLook, PictureSource } from './picture'
 import { placesOfPair } from './places'
 import { RasterLayer } from './raster-layer'
@@ -67,12 +67,21 @@ export class LatticeStage {
   private bandsForTags: Band[][] = []
   private coverage: Coverage | null = null
   private size = { width: 0, height: 0 }
+  /** Where the lattice lies for as long as there is no camera. */
+  private held: View = { scale: 1, x: 0, y: 0 }
+  private readonly drawingModule = import('./drawing')
+  private isKilled = false
 
   constructor(
     private readonly elements: StageElements,
+    painter: Painter,
     private readonly events: StageEvents,
   ) {
-    this.raster = new RasterLayer(elements.front, elements.back, events)
+    const onPainted = () => {
+      events.onPainted()
+      if (!this.drawing) window.setTimeout(() => void this.makeCamera())
+    }
+    this.raster = new RasterLayer(elements.front, elements.back, painter, { ...events, onPainted })
     this.tags = new TagLayer(elements.tags)
     this.ruler = new RulerLayer(elements.rulerTop, elements.rulerLeft, STAGE_DEFAULTS.inset)
     this.measure()
@@ -83,12 +92,13 @@ export class LatticeStage {
   }
 
   /**
-   * Starts on another machine or embedding. The picture is asked for before the camera is made, which takes a while.
+   * Starts on another machine or embedding. The camera is made once the picture is there: compiling its shaders takes
+   * longer than painting.
    *
    * @param first box to be shown at the start; null keeps the view
    */
   begin(source: StageSource, look: StageLook, first: Box | null): void {
-    const kept = this.drawing?.view() ?? null
+    const view = first ? this.fitting(first) : this.view()
     this.source = source
     this.look = look
     this.bandsForTags = tagBands(source.geometry)
@@ -96,10 +106,11 @@ export class LatticeStage {
     const { data, chains, hues } = source
     this.raster.of({ data, chains, hues }, source.bounds)
     this.raster.show(pictureLook(look))
-    const view = kept && !first ? kept : this.fitting(first ?? source.bounds)
-    this.raster.follow(view)
-    this.makeCamera(view)
+    const hadCamera = this.drawing !== null
+    this.dropCamera()
+    this.follow(view)
     this.showTags()
+    if (hadCamera) void this.makeCamera()
   }
 
   /** Shows the same embedding in another lens, focus, selection or filter. */
@@ -107,24 +118,27 @@ export class LatticeStage {
     const before = this.look
     this.look = look
     if (!this.source) return
-    if (before && before.tokens !== look.tokens) this.makeCamera(this.view())
-    else if (before?.focused !== look.focused || isOtherPicture(before, look)) this.drawing?.show(this.focusScene())
+    if (this.drawing && before && before.tokens !== look.tokens) {
+      this.dropCamera()
+      void this.makeCamera()
+    } else if (before?.focused !== look.focused || isOtherPicture(before, look)) this.drawing?.show(this.focusScene())
     if (!before || isOtherPicture(before, look)) this.raster.show(pictureLook(look))
     this.showTags()
   }
 
   resize(): void {
-    if (!this.measure() || !this.drawing) return
-    this.drawing.refresh()
-    this.follow(this.drawing.view())
+    if (!this.measure()) return
+    this.drawing?.refresh()
+    this.follow(this.view())
   }
 
   view(): View {
-    return this.drawing?.view() ?? { scale: 1, x: 0, y: 0 }
+    return this.drawing?.view() ?? this.held
   }
 
   moveTo(view: View, milliseconds = 0): void {
-    this.drawing?.moveTo(view, milliseconds)
+    if (this.drawing) this.drawing.moveTo(view, milliseconds)
+    else this.follow(view)
   }
 
   fit(box: Box, milliseconds = 0): void {
@@ -161,12 +175,12 @@ export class LatticeStage {
   refreshTags(): void {
     this.tags.forgetWidths()
     this.showTags()
-    if (this.drawing) this.paintRuler(this.drawing.view())
+    this.paintRuler(this.view())
   }
 
   kill(): void {
-    this.drawing?.kill()
-    this.drawing = null
+    this.isKilled = true
+    this.dropCamera()
     this.raster.kill()
     this.tags.kill()
   }
@@ -186,10 +200,16 @@ export class LatticeStage {
     return true
   }
 
-  private makeCamera(view: View): void {
-    if (!this.source || !this.look) return
+  private dropCamera(): void {
+    this.held = this.view()
     this.drawing?.kill()
     this.drawing = null
+  }
+
+  /** Without WebGL there is no camera to drag; keys and buttons still move the picture. */
+  private async makeCamera(): Promise<void> {
+    const { createDrawing } = await this.drawingModule
+    if (!this.source || !this.look || this.drawing || this.isKilled) return
     try {
       this.drawing = createDrawing(this.elements.container, {
         bounds: this.source.bounds,
@@ -198,11 +218,9 @@ export class LatticeStage {
         events: { onFrame: (next) => this.follow(next), onClick: this.events.onClick },
       })
     } catch {
-      return this.events.onFailure('This browser offers no WebGL 2, so the lattice cannot be moved.')
+      return this.events.onFailure('This browser offers no WebGL 2: the lattice moves by keys and buttons only.')
     }
-    this.drawing.moveTo(view)
-    // Where the camera stood there already, no frame follows from moving it.
-    this.follow(this.drawing.view())
+    this.drawing.moveTo(this.held)
   }
 
   private focusScene(): Scene {
@@ -212,6 +230,7 @@ export class LatticeStage {
   }
 
   private follow(view: View): void {
+    this.held = view
     this.raster.follow(view)
     this.tags.follow(view)
     this.paintRuler(view)

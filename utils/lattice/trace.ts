@@ -1,8 +1,16 @@
 import type { SceneEdge } from './scene-types'
 import type { View } from './types'
 
-/** What is needed of a canvas to trace a path on it. */
-export type Tracer = Pick<CanvasRenderingContext2D, 'moveTo' | 'lineTo' | 'arc' | 'closePath'>
+/** What is needed of a canvas to fill shapes on it. */
+export type Filler = Pick<
+  CanvasRenderingContext2D,
+  'beginPath' | 'moveTo' | 'lineTo' | 'arc' | 'closePath' | 'fill' | 'fillRect'
+>
+
+export const TRACE_DEFAULTS = {
+  /** Half width in pixels up to which nobody sees whether an end is round. */
+  leastRound: 1.9,
+}
 
 /**
  * Stretches of `from … to` that are left when `reach` on both sides of every gap is taken out, ascending. Gaps are
@@ -53,30 +61,31 @@ export function placeEdge(edge: SceneEdge, { scale, x, y }: View, bandPixels: nu
 }
 
 /**
- * Adds the outline of an edge to the path: its stretches between gaps, `half` pixels to each side. Ends are round about
- * the same points for every `half`, so that casing, outline and band lie in one another like tubes.
+ * Fills an edge, stretch by stretch between its gaps, `half` pixels to each side. Ends are round about the same points
+ * for every `half`, so that casing, outline and band lie in one another like tubes. Every stretch is filled by itself,
+ * as a rectangle where it can be: one path of thousands of shapes takes a rasteriser many times as long.
  *
- * @param limits part of the edge to trace, in pixels along it; its ends are then cut straight
+ * @param limits part of the edge to fill, in pixels along it; its ends are then cut straight
  */
-export function traceEdge(
-  path: Tracer,
+export function fillEdge(
+  ctx: Filler,
   placed: PlacedEdge,
   half: number,
   limits: readonly [number, number] | null = null,
 ): void {
   if (half <= 0) return
   const { edge, length, unit, radius } = placed
-  const round = edge.caps > 0 && limits === null
+  const round = edge.caps > 0 && limits === null && radius > TRACE_DEFAULTS.leastRound
   const inset = round ? Math.min(radius, length / 2) : 0
   const [from, to] = limits ?? [inset, length - inset]
-  const gaps = edge.gaps.length === 0 ? edge.gaps : edge.gaps.map((line) => (line - edge.from) * unit)
-  if (gaps.length === 0) return tracePiece(path, placed, half, from, to, round, round)
+  if (edge.gaps.length === 0) return fillPiece(ctx, placed, half, from, to, round, round)
+  const gaps = edge.gaps.map((line) => (line - edge.from) * unit)
   for (const [start, end] of stretchesBetween(from, to, gaps, radius))
-    tracePiece(path, placed, half, start, end, round && start === from, round && end === to)
+    fillPiece(ctx, placed, half, start, end, round && start === from, round && end === to)
 }
 
-function tracePiece(
-  path: Tracer,
+function fillPiece(
+  ctx: Filler,
   { x, y, dx, dy }: PlacedEdge,
   half: number,
   from: number,
@@ -84,13 +93,24 @@ function tracePiece(
   roundStart: boolean,
   roundEnd: boolean,
 ): void {
-  const angle = Math.atan2(dy, dx)
   const [sx, sy, ex, ey] = [x + from * dx, y + from * dy, x + to * dx, y + to * dy]
-  path.moveTo(sx - half * dy, sy + half * dx)
-  if (roundStart) path.arc(sx, sy, half, angle + Math.PI / 2, angle + 1.5 * Math.PI)
-  else path.lineTo(sx + half * dy, sy - half * dx)
-  path.lineTo(ex + half * dy, ey - half * dx)
-  if (roundEnd) path.arc(ex, ey, half, angle - Math.PI / 2, angle + Math.PI / 2)
-  else path.lineTo(ex - half * dy, ey + half * dx)
-  path.closePath()
+  if (!roundStart && !roundEnd && (dx === 0 || dy === 0)) {
+    const [acrossX, acrossY] = dy === 0 ? [0, half] : [half, 0]
+    return ctx.fillRect(
+      Math.min(sx, ex) - acrossX,
+      Math.min(sy, ey) - acrossY,
+      Math.abs(ex - sx) + 2 * acrossX,
+      Math.abs(ey - sy) + 2 * acrossY,
+    )
+  }
+  const angle = Math.atan2(dy, dx)
+  ctx.beginPath()
+  ctx.moveTo(sx - half * dy, sy + half * dx)
+  if (roundStart) ctx.arc(sx, sy, half, angle + Math.PI / 2, angle + 1.5 * Math.PI)
+  else ctx.lineTo(sx + half * dy, sy - half * dx)
+  ctx.lineTo(ex + half * dy, ey - half * dx)
+  if (roundEnd) ctx.arc(ex, ey, half, angle - Math.PI / 2, angle + Math.PI / 2)
+  else ctx.lineTo(ex - half * dy, ey + half * dx)
+  ctx.closePath()
+  ctx.fill()
 }
