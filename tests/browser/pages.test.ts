@@ -30,7 +30,7 @@ beforeAll(async () => {
   browser = await launch()
   await lookAtDemo()
   await lookAtBare()
-})
+}, 900_000)
 afterAll(async () => {
   await browser?.close()
   await Promise.all(servers.map((server) => server.stop()))

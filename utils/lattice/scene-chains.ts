@@ -7,6 +7,7 @@ import type { EdgeLook, Stroke } from './strokes'
 import { colourOf, isInPart, TIER_LEVEL, widthOf } from './tiers'
 import type { Tier } from './tiers'
 import { mixColours } from './tokens'
+import type { Tokens } from './tokens'
 import type { LoadLayer } from './types'
 import { gapsOf } from './weave'
 
@@ -49,16 +50,23 @@ export function addTubes(input: SceneInput, load: LoadLayer, tiers: readonly Tie
   })
 }
 
+/** Fillings by how much of the range is used; full ones are hatched as well. */
+export const loadColours = (tokens: Pick<Tokens, 'paper' | 'slate' | 'ochre'>) => ({
+  low: mixColours(tokens.slate, tokens.paper, 0.45),
+  high: tokens.slate,
+  full: tokens.ochre,
+})
+
 function tubeLooks(input: SceneInput, { qubitLoad }: LoadLayer, tiers: readonly Tier[]): (span: Span) => EdgeLook {
   const { tokens } = input
   const { fullLoad, highLoad } = SCENE_DEFAULTS
-  const quietSlate = mixColours(tokens.slate, tokens.paper, 0.45)
+  const colours = loadColours(tokens)
   return (span) => {
     const tier = tiers[span.chain]!
     const share = qubitLoad[span.qubit]!
     const isFull = share > fullLoad
     const from = isUpright(span) ? Math.min(span.y1, span.y2) : Math.min(span.x1, span.x2)
-    const filling = isFull ? tokens.ochre : share > highLoad ? tokens.slate : quietSlate
+    const filling = isFull ? colours.full : share > highLoad ? colours.high : colours.low
     return {
       size: tier === 'focus' ? 1.5 : tier === 'far' ? widthOf(tier) : 0.96,
       color: tier === 'far' ? tokens.rule : filling,
