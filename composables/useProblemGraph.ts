@@ -1,0 +1,22 @@
+import { unpackArrays } from '#shared/packed-arrays'
+import type { ApiFailure } from './useApi'
+import type { ProblemGraph } from '~/utils/problem/graph'
+
+/** Variables, interactions and coefficients of a problem, loaded in the browser once they are asked for. */
+export function useProblemGraph(problemId: MaybeRefOrGetter<string>) {
+  const graph = shallowRef<ProblemGraph | null>(null)
+  const failure = shallowRef<ApiFailure | null>(null)
+  const load = async (): Promise<void> => {
+    const id = toValue(problemId)
+    failure.value = null
+    try {
+      const bytes = await $fetch<ArrayBuffer>(`/api/problems/${id}/graph`, { responseType: 'arrayBuffer' })
+      const { meta, arrays } = unpackArrays(new Uint8Array(bytes))
+      if (id !== toValue(problemId)) return
+      graph.value = markRaw({ ...arrays, labels: meta.labels as string[] } as unknown as ProblemGraph)
+    } catch (error) {
+      failure.value = failureOf(error)
+    }
+  }
+  return { graph, failure, load }
+}

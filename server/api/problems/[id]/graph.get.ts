@@ -1,0 +1,11 @@
+import { problemGraphOf } from '../../../services/problem-graph'
+
+/**
+ * The interactions and the coefficients of both forms as packed arrays (shared/packed-arrays.ts), with the labels in the
+ * header; refused above the sizes of shared/problem-graph.ts.
+ */
+export default defineRoute('member', async (event, { app, ...actor }) => {
+  const bytes = await problemGraphOf(app, actor, partOf(event, 'id'))
+  setResponseHeader(event, 'content-type', 'application/octet-stream')
+  return bytes
+})
