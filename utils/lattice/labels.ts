@@ -37,6 +37,8 @@ export const TAG_DEFAULTS = {
   gap: 3,
   /** Foreign band cells a tag may hide for each thousand square pixels of its own. */
   tolerance: 17,
+  /** Most tags at once. */
+  most: 90,
 }
 
 /** As bad as hiding so many cells of other bands. */
@@ -69,19 +71,20 @@ export function placeTags(
   viewport: Box,
   coverage: Coverage | null,
   held: readonly Box[] = [],
-  { gap, tolerance } = TAG_DEFAULTS,
+  { gap, tolerance, most }: typeof TAG_DEFAULTS = TAG_DEFAULTS,
 ): PlacedTag[] {
-  const taken: Box[] = [...held]
+  const taken = new BoxGrid(held)
   const placed: PlacedTag[] = []
   const ordered = [...requests].sort((a, b) => b.priority - a.priority || a.key - b.key)
   for (const request of ordered) {
+    if (placed.length >= most) break
     const limit = request.insist ? Infinity : (tolerance * request.width * request.height) / 1000
     let best: Box | null = null
     let bestSpot: TagSpot | null = null
     let bestCost = Infinity
     for (const spot of request.spots) {
       const box = boxOfSpot(spot, request, view)
-      if (!isInside(box, viewport) || taken.some((other) => overlap(box, other, gap))) continue
+      if (!isInside(box, viewport) || taken.touches(box, gap)) continue
       const hidesBand = spot.room * view.scale < 1.6 * request.width
       const cost = (coverage ? coveredIn(coverage, toLattice(box, view)) : 0) + (hidesBand ? HIDDEN_BAND_COST : 0)
       if (cost < bestCost - 0.5 && cost <= limit) {
@@ -91,7 +94,7 @@ export function placeTags(
       }
     }
     if (!best || !bestSpot) continue
-    taken.push(best)
+    taken.add(best)
     placed.push({ key: request.key, box: best, spot: bestSpot })
   }
   return placed
@@ -115,6 +118,37 @@ function boxOfSpot(spot: TagSpot, { width, height }: Pick<TagRequest, 'width' | 
   const x = view.x + view.scale * spot.x + (spot.ox * width) / 2
   const y = view.y + view.scale * spot.y + (spot.oy * height) / 2
   return { x1: x - width / 2, y1: y - height / 2, x2: x + width / 2, y2: y + height / 2 }
+}
+
+/** Boxes by the cells of a coarse grid that they touch, so that few need comparing. */
+class BoxGrid {
+  private readonly cells = new Map<string, Box[]>()
+
+  constructor(boxes: readonly Box[]) {
+    for (const box of boxes) this.add(box)
+  }
+
+  add(box: Box): void {
+    for (const key of keysOf(box, 0)) {
+      const cell = this.cells.get(key)
+      if (cell) cell.push(box)
+      else this.cells.set(key, [box])
+    }
+  }
+
+  touches(box: Box, gap: number): boolean {
+    return keysOf(box, gap).some((key) => this.cells.get(key)?.some((other) => overlap(box, other, gap)))
+  }
+}
+
+const CELL_PIXELS = 64
+
+function keysOf({ x1, y1, x2, y2 }: Box, gap: number): string[] {
+  const keys: string[] = []
+  for (let row = Math.floor((y1 - gap) / CELL_PIXELS); row <= Math.floor((y2 + gap) / CELL_PIXELS); row++)
+    for (let column = Math.floor((x1 - gap) / CELL_PIXELS); column <= Math.floor((x2 + gap) / CELL_PIXELS); column++)
+      keys.push(`${column} ${row}`)
+  return keys
 }
 
 const toLattice = (box: Box, { scale, x, y }: View): Box => ({

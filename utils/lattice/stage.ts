@@ -12,9 +12,9 @@ import { buildScene } from './scene'
 import { breaksOf } from './scene-couplers'
 import type { Scene } from './scene-types'
 import type { Coverage } from './coverage'
-import type { Band } from './bands'
 import { TagLayer } from './tag-layer'
 import { tagBands } from './tag-requests'
+import type { TagSeat } from './tag-requests'
 import { tiersOf } from './tiers'
 import type { Box, OverlayLayer, View } from './types'
 
@@ -64,7 +64,7 @@ export class LatticeStage {
   private drawing: Drawing | null = null
   private source: StageSource | null = null
   private look: StageLook | null = null
-  private bandsForTags: Band[][] = []
+  private bandsForTags: TagSeat[] = []
   private coverage: Coverage | null = null
   private size = { width: 0, height: 0 }
   /** Where the lattice lies for as long as there is no camera. */

@@ -100,10 +100,10 @@ export class TagLayer {
 
   private place(ctx: CanvasRenderingContext2D, view: View, { coverage }: TagTheme) {
     if (!this.input) return null
-    const { requests, looks } = requestTags(ctx, this.input, this.widths)
     const [marginX, marginY] = [marginOf(this.size.width), marginOf(this.size.height)]
     const inner = { x1: 2, y1: 2, x2: this.size.width - 2, y2: this.size.height - 2 }
     const outer = { x1: -marginX, y1: -marginY, x2: this.size.width + marginX, y2: this.size.height + marginY }
+    const { requests, looks } = requestTags(ctx, this.input, this.widths, { view, viewport: outer })
     const seen = placeTags(requests, view, inner, coverage)
     const placedKeys = new Set(seen.map(({ key }) => key))
     const rest = requests.filter(({ key }) => !placedKeys.has(key))

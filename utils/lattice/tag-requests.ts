@@ -5,15 +5,36 @@ import type { TagRequest, TagSpot } from './labels'
 import type { Band } from './bands'
 import type { ChainGeometry } from './geometry'
 import type { Break } from './scene-types'
+import { boxOfSegments } from './segments'
 import type { Tier } from './tiers'
+import type { Box, View } from './types'
 
-/** The longest bands of each chain, longest first: where its tag may sit. */
-export function tagBands({ bands, neighbours }: ChainGeometry, most = 3): Band[][] {
+/** Where the tag of a chain may sit, and how far the chain reaches. */
+export interface TagSeat {
+  readonly spots: readonly TagSpot[]
+  /** Around all bands of the chain. */
+  readonly box: Box
+  /** Length of the longest band, in line spacings. */
+  readonly longest: number
+}
+
+const lengthOf = (band: Band) => Math.hypot(band.x2 - band.x1, band.y2 - band.y1)
+
+/** The tag of a chain sits on one of its longest bands, or beside it. */
+export function tagBands({ bands, neighbours }: ChainGeometry, most = 3): TagSeat[] {
   const ofChain: Band[][] = neighbours.map(() => [])
   for (const band of bands) ofChain[band.chain]!.push(band)
-  const length = (band: Band) => Math.hypot(band.x2 - band.x1, band.y2 - band.y1)
-  return ofChain.map((own) => [...own].sort((a, b) => length(b) - length(a)).slice(0, most))
+  return ofChain.map((own) => {
+    const longest = [...own].sort((a, b) => lengthOf(b) - lengthOf(a)).slice(0, most)
+    return {
+      spots: longest.flatMap(spotsOf),
+      box: boxOfSegments(Float32Array.from(own.flatMap(({ x1, y1, x2, y2 }) => [x1, y1, x2, y2]))) ?? NOWHERE,
+      longest: longest[0] ? lengthOf(longest[0]) : 0,
+    }
+  })
 }
+
+const NOWHERE: Box = { x1: 0, y1: 0, x2: 0, y2: 0 }
 
 const RATE_SPOTS: readonly [number, number][] = [
   [1.5, 0],
@@ -28,7 +49,7 @@ const PRIORITY: Record<Tier, number> = { focus: 1000, near: 500, full: 200, far:
 
 export interface TagInput {
   readonly labels: readonly string[]
-  readonly bands: readonly (readonly Band[])[]
+  readonly bands: readonly TagSeat[]
   readonly tiers: readonly Tier[]
   readonly hueOf: (chain: number) => string
   /** Couplers whose rates are to be written. */
@@ -37,37 +58,63 @@ export interface TagInput {
   readonly hovered: number | null
 }
 
+/** The part of the lattice that tags are wanted for. */
+export interface TagArea {
+  readonly view: View
+  /** In pixels. */
+  readonly viewport: Box
+}
+
+export const REQUEST_DEFAULTS = {
+  /** Share of its tag's width that a chain must extend over: the tags of smaller ones would be all that one sees. */
+  leastExtent: 0.9,
+}
+
 /**
  * Tags to be placed: the chain in focus first, then rates of breaks, then chains by length. Chains out of focus carry
- * none unless the pointer is on them, so that the bands stay in sight.
+ * none unless the pointer is on them, so that the bands stay in sight; nor do chains smaller than their tags.
+ *
+ * @param area leaves out what lies outside; everything is asked for without it
  */
 export function requestTags(
   ctx: CanvasRenderingContext2D,
   input: TagInput,
   widths: TextWidths,
+  area: TagArea | null = null,
 ): { requests: TagRequest[]; looks: TagLook[] } {
   const requests: TagRequest[] = []
   const looks: TagLook[] = []
-  const add = (look: TagLook, priority: number, spots: readonly TagSpot[], insist: boolean) => {
-    requests.push({ key: looks.length, priority, spots, insist, ...measureTag(ctx, look, widths) })
+  const add = (look: TagLook, request: Omit<TagRequest, 'key' | 'width' | 'height'>) => {
+    requests.push({ key: looks.length, ...request, ...measureTag(ctx, look, widths) })
     looks.push(look)
   }
   input.labels.forEach((text, chain) => {
     const tier = input.tiers[chain]!
     const isHovered = chain === input.hovered
-    if ((tier === 'far' || !input.showsLabels) && !isHovered && tier !== 'focus') return
-    const kind = tier === 'focus' ? 'focus' : 'chain'
-    const bands = input.bands[chain]!
-    const length = bands[0] ? Math.hypot(bands[0].x2 - bands[0].x1, bands[0].y2 - bands[0].y1) : 0
-    const priority = PRIORITY[tier] + Math.min(99, length) + (isHovered ? 900 : 0)
-    add({ text, kind, frame: input.hueOf(chain) }, priority, bands.flatMap(spotsOf), tier === 'focus' || isHovered)
+    const insist = tier === 'focus' || isHovered
+    if (!insist && (tier === 'far' || !input.showsLabels)) return
+    const { spots, box, longest } = input.bands[chain]!
+    const look: TagLook = { text, kind: tier === 'focus' ? 'focus' : 'chain', frame: input.hueOf(chain) }
+    if (area && !isWithin(area, box)) return
+    if (area && !insist && extentOf(box) * area.view.scale < leastExtentOf(measureTag(ctx, look, widths))) return
+    add(look, { priority: PRIORITY[tier] + Math.min(99, longest) + (isHovered ? 900 : 0), spots, insist })
   })
   for (const { rate, x, y } of input.breaks) {
+    if (area && !isWithin(area, { x1: x, y1: y, x2: x, y2: y })) continue
     const spots = RATE_SPOTS.map(([ox, oy]) => ({ x, y, ox, oy, room: Infinity }))
-    add({ text: rateText(rate), kind: 'rate', frame: '' }, 600 + rate, spots, true)
+    add({ text: rateText(rate), kind: 'rate', frame: '' }, { priority: 600 + rate, spots, insist: true })
   }
   return { requests, looks }
 }
+
+const extentOf = ({ x1, y1, x2, y2 }: Box): number => Math.max(x2 - x1, y2 - y1)
+const leastExtentOf = ({ width }: { width: number }): number => REQUEST_DEFAULTS.leastExtent * width
+
+const isWithin = ({ view: { scale, x, y }, viewport }: TagArea, box: Box): boolean =>
+  x + scale * box.x2 >= viewport.x1 &&
+  x + scale * box.x1 <= viewport.x2 &&
+  y + scale * box.y2 >= viewport.y1 &&
+  y + scale * box.y1 <= viewport.y2
 
 /** `14 %`, or with one decimal under ten. */
 export const rateText = (rate: number): string => `${rate < 0.0995 ? (100 * rate).toFixed(1) : Math.round(100 * rate)}%`

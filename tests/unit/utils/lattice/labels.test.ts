@@ -25,7 +25,7 @@ describe('placeTags', () => {
       const band = random() < 0.5 ? { x1: x, y1: y, x2: x + 12, y2: y } : { x1: x, y1: y, x2: x, y2: y + 12 }
       return request(key, band, { priority: random() })
     })
-    const placed = placeTags(requests, view, viewport, null)
+    const placed = placeTags(requests, view, viewport, null, [], { gap: 3, tolerance: 17, most: 150 })
     expect(placed.length).toBeGreaterThan(60)
     placed.forEach(({ box: a }, i) => {
       expect(Math.min(a.x1, a.y1)).toBeGreaterThanOrEqual(0)
@@ -48,7 +48,7 @@ describe('placeTags', () => {
     const bands = Array.from({ length: 30 }, (_, i) => ({ chain: i, qubits: [], x1: 0, y1: i, x2: 60, y2: i }))
     const coverage = coverageOf(bands, { x1: 0, y1: 0, x2: 60, y2: 30 })
     const crowded = request(0, { x1: 20, y1: 15, x2: 32, y2: 15 }, { width: 60, height: 40 })
-    const strict = { gap: 3, tolerance: 10 }
+    const strict = { gap: 3, tolerance: 10, most: 90 }
     expect(placeTags([crowded], view, viewport, coverage, [], strict)).toEqual([])
     expect(placeTags([{ ...crowded, insist: true }], view, viewport, coverage, [], strict)).toHaveLength(1)
   })
