@@ -125,5 +125,13 @@ export function useEmbeddingActions() {
     choose: (id: string, chosen: boolean) => api.patch<EmbeddingView>(`/api/embeddings/${id}`, { chosen }),
     importChains: (input: { problemId: string; machineId: string; chains: Record<string, number[]> }) =>
       api.post<{ id: string }>('/api/embeddings/import', input),
+    /** Chains edited by hand as an embedding of their own, at the calibration in force; by label, with qubit numbers. */
+    saveEdited: ({ id, problem, machine }: EmbeddingView, chains: Record<string, number[]>) =>
+      api.post<{ id: string }>('/api/embeddings/import', {
+        problemId: problem.id,
+        machineId: machine.id,
+        editedFrom: id,
+        chains,
+      }),
   }
 }

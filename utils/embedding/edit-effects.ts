@@ -105,7 +105,7 @@ function lookFrom(state: EditState, variable: number) {
 }
 
 /** The parts of the chain that couplers hold together. */
-function piecesOf(machine: Graph, chain: readonly number[]): number[][] {
+export function piecesOf(machine: Graph, chain: readonly number[]): number[][] {
   const waiting = new Set(chain)
   const pieces: number[][] = []
   for (const first of chain) {

@@ -57,12 +57,16 @@ export function editedLayer(base: EmbeddingChains, machine: Graph, chains: reado
   return { ...layer, couplers: interactionCouplers(layer, machine) }
 }
 
+/** Chain of each qubit, or −1. */
+export function ownersIn({ offsets, qubits }: Pick<ChainLayer, 'offsets' | 'qubits'>, order: number): Int32Array {
+  const owner = new Int32Array(order).fill(-1)
+  for (let i = 0; i + 1 < offsets.length; i++) for (let k = offsets[i]!; k < offsets[i + 1]!; k++) owner[qubits[k]!] = i
+  return owner
+}
+
 /** Per variable, couplers to the chains it interacts with. */
 function interactionCouplers({ labels, offsets, qubits, neighbours }: ChainLayer, machine: Graph): Uint32Array {
-  const owner = new Int32Array(machine.order).fill(-1)
-  labels.forEach((_, i) => {
-    for (let k = offsets[i]!; k < offsets[i + 1]!; k++) owner[qubits[k]!] = i
-  })
+  const owner = ownersIn({ offsets, qubits }, machine.order)
   const interacting = labels.map(() => new Set<number>())
   for (let k = 0; k < neighbours.length; k += 2) {
     interacting[neighbours[k]!]!.add(neighbours[k + 1]!)
