@@ -136,6 +136,8 @@ function breaksView({ bench, programming, programmed, summary }: Loaded): Return
     length: lengths[i]!,
     strength: programmed.chainStrength[i]!,
     cutBound: programming.bounds.bound[i]!,
+    cutBoundExact: programming.bounds.exact[i] === 1,
+    cutSplit: lengths[i]! > 1 ? programming.bounds.splits[i]! : null,
     ...proportion(breaks.perChain.breaks[i]!, breaks.reads),
   }))
   const couplers: CouplerBreaks[] = []

@@ -20,6 +20,9 @@ export interface ChainBreaks extends Proportion {
   length: number
   strength: number
   cutBound: number
+  cutBoundExact: boolean
+  /** The split of the chain that the bound comes from: min(up, down) / cut. Null for a single qubit. */
+  cutSplit: { up: number; down: number; cut: number } | null
 }
 
 /** A coupler inside a chain whose two qubits disagreed. */

@@ -44,8 +44,7 @@ export interface ShownStep {
   readonly spoken: string
   /** As the page shows it; both ends of an interval. */
   readonly value: string
-  /** With its unit. */
-  readonly text: string
+  readonly unit?: string
   readonly values: readonly number[]
 }
 
@@ -93,8 +92,7 @@ export function explainWith<Given>(entry: HelpEntry<Given>, given: Given): Expla
     const values = valuesOf(expr, known)
     if (values.length === 1) known[symbol] = values[0]!
     const value = textOf(values, show)
-    const text = unit ? `${value} ${unit}` : value
-    return { formula: { symbol, expr }, spoken: spokenFormula({ symbol, expr }, names), value, text, values }
+    return { formula: { symbol, expr }, spoken: spokenFormula({ symbol, expr }, names), value, unit, values }
   })
   const main = steps[asked.findIndex(({ isAsked }) => isAsked)] ?? steps.findLast(({ values }) => values.length === 1)
   return {

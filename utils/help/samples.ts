@@ -1,5 +1,5 @@
 import { CAUTIONS } from './cautions'
-import { entry } from './entry'
+import { entry, type HelpStep } from './entry'
 import { minus, over, plus, plusMinus, root, square, times } from './formula'
 import { DEFINITION, WILSON } from './sources'
 import { formatNumber, formatPercent, type NumberFormat } from '../format'
@@ -21,13 +21,24 @@ interface Rate {
 }
 
 /** Wilson’s interval of c counts in N trials, without a division by c so that 0 and N need no case of their own. */
-const wilsonEnds = over(
-  plusMinus(
-    plus('c', over(square('z'), 2)),
-    times('z', root(plus(over(times('c', minus('N', 'c')), 'N'), over(square('z'), 4)))),
-  ),
-  plus('N', square('z')),
-)
+const WILSON_STEPS: readonly HelpStep[] = [
+  {
+    symbol: 'm',
+    name: 'middle of the interval',
+    expr: over(plus('c', over(square('z'), 2)), plus('N', square('z'))),
+    show: (value) => formatPercent(value),
+  },
+  {
+    symbol: 'w',
+    name: 'half its width',
+    expr: over(
+      times('z', root(plus(over(times('c', minus('N', 'c')), 'N'), over(square('z'), 4)))),
+      plus('N', square('z')),
+    ),
+    show: (value) => formatPercent(value),
+  },
+  { symbol: 'p_95', name: '95 % interval', expr: plusMinus('m', 'w'), show: (value) => formatPercent(value) },
+]
 
 const rehearsalCaution = ({ rehearsal }: { rehearsal: boolean }) => (rehearsal ? CAUTIONS.rehearsal : undefined)
 
@@ -39,8 +50,8 @@ export const samplesHelp = {
       { symbol: 'z', name: 'quantile of the normal distribution for 95 %', value: Z_95 },
     ],
     steps: ({ format }) => [
-      { symbol: 'p', name: 'rate', expr: over('c', 'N'), show: (value) => formatPercent(value, format) },
-      { symbol: 'p_95', name: 'interval', expr: wilsonEnds, show: (value) => formatPercent(value, format) },
+      { symbol: 'p', name: 'rate', isAsked: true, expr: over('c', 'N'), show: (value) => formatPercent(value, format) },
+      ...WILSON_STEPS,
     ],
     method: () => 'A chain is broken in a read when its qubits disagree. The interval is Wilson’s.',
     sources: () => [WILSON],
