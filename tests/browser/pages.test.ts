@@ -8,8 +8,8 @@ import type { DeadLink, Shown } from '../support/pages/crawl'
 import { crawl, tellingViews } from '../support/pages/crawl'
 import { findRoutes } from '../support/pages/routes'
 import { prepareRunning, prepareStates } from '../support/pages/states'
-import type { Finding } from '../support/pages/survey'
-import { survey } from '../support/pages/survey'
+import type { Aspect, Finding } from '../support/pages/survey'
+import { summaryOf, survey } from '../support/pages/survey'
 import { demoVisitors, exploreAs, startBare } from '../support/pages/worlds'
 
 /*
@@ -62,8 +62,7 @@ async function lookAs(visitors: Parameters<typeof exploreAs>[1]): Promise<void> 
 }
 
 describe.each(routes)('page $pattern', ({ pattern, file }) => {
-  const about = (aspect: Finding['aspect']): string[] =>
-    findings.filter((finding) => finding.pattern === pattern && finding.aspect === aspect).map(({ text }) => text)
+  const about = (aspect: Aspect): string[] => summaryOf(findings, pattern, aspect)
 
   it('is found', () => {
     expect(

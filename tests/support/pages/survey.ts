@@ -5,13 +5,25 @@ import type { View } from './crawl'
 import { themesOf, wear } from './themes'
 
 /** What is looked for on a page. */
-export const ASPECTS = ['naming', 'accessibility', 'width', 'console'] as const
-export type Aspect = (typeof ASPECTS)[number]
+export type Aspect = 'naming' | 'accessibility' | 'width' | 'console'
 
 export interface Finding {
   readonly pattern: string
   readonly aspect: Aspect
-  readonly text: string
+  readonly problem: string
+  /** Address, person, and state of the page. */
+  readonly where: string
+}
+
+/** One line for each problem of a page, with the first place that has it. */
+export function summaryOf(findings: readonly Finding[], pattern: string, aspect: Aspect): string[] {
+  const places = new Map<string, string[]>()
+  for (const finding of findings.filter((one) => one.pattern === pattern && one.aspect === aspect))
+    places.set(finding.problem, [...(places.get(finding.problem) ?? []), finding.where])
+  return [...places].map(([problem, [first, ...more]]) => {
+    const others = more.length > 0 ? ` and ${more.length} more` : ''
+    return `${problem} (${first}${others})`
+  })
 }
 
 /** Pages looked at side by side: one a processor core. */
@@ -38,9 +50,9 @@ export async function openWindow(browser: Browser, { client }: Pick<View, 'clien
 async function lookAt(browser: Browser, view: View): Promise<Finding[]> {
   const { route, path, person, client, headings } = view
   const findings: Finding[] = []
-  const add = (aspect: Aspect, texts: string[], where = ''): void => {
-    for (const text of texts)
-      findings.push({ pattern: route.pattern, aspect, text: `${path} as ${person ?? 'a stranger'}${where}: ${text}` })
+  const add = (aspect: Aspect, problems: string[], how = ''): void => {
+    const where = `${path} as ${person ?? 'a stranger'}${how}`
+    for (const problem of problems) findings.push({ pattern: route.pattern, aspect, problem, where })
   }
   if (headings !== 1) add('naming', [`${headings} headings of the first level`], ' as served')
   const context = await openWindow(browser, view)
