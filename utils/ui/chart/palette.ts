@@ -10,11 +10,15 @@ export function currentPalette(printing = false): Palette {
 export function watchPalette(onChange: (palette: Palette) => void): () => void {
   const onScreen = () => onChange(currentPalette())
   const onPaper = () => onChange(currentPalette(true))
+  const medium = matchMedia('print')
+  const onMedium = () => (medium.matches ? onPaper() : onScreen())
   const stop = watchTheme(onScreen)
+  medium.addEventListener('change', onMedium)
   window.addEventListener('beforeprint', onPaper)
   window.addEventListener('afterprint', onScreen)
   return () => {
     stop()
+    medium.removeEventListener('change', onMedium)
     window.removeEventListener('beforeprint', onPaper)
     window.removeEventListener('afterprint', onScreen)
   }
