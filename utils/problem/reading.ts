@@ -45,6 +45,23 @@ export function countingFacts(reading: ReadingView): Fact[] {
   ]
 }
 
+/** The degrees of a problem, for a strip that is about embedding it. */
+export function degreeFacts({ degree, degreeHistogram: degrees, variables, interactions }: StructureView): Fact[] {
+  const format = { decimals: 2 }
+  return [
+    {
+      label: 'Highest degree',
+      value: formatNumber(degree.max),
+      help: { id: 'degrees', given: { variables, interactions, degrees } },
+    },
+    {
+      label: 'Mean degree',
+      value: formatNumber(degree.mean, format),
+      help: { id: 'meanDegree', given: { variables, interactions, format } },
+    },
+  ]
+}
+
 /** What the problem looks like as a graph. */
 export function structureFacts(structure: StructureView): Fact[] {
   const { degree, degreeHistogram: degrees, dynamicRange, treewidthUpperBound, variables, interactions } = structure
