@@ -141,7 +141,7 @@ function rejectedLines(fileName: string, reading: Reading): DomainError {
   return new DomainError(
     'not acceptable',
     'problem.rejected-lines',
-    `${fileName}: ${plural(reading.rejectedCount, 'line')} could not be read, the first at line ${first.line}: ${first.reason}. Mend the file, or save without ${reading.rejectedCount === 1 ? 'this line' : 'these lines'}.`,
+    `${fileName}: ${plural(reading.rejectedCount, 'line')} could not be read, the first at line ${first.line}: ${first.reason}. Correct the file, or save without ${reading.rejectedCount === 1 ? 'this line' : 'these lines'}.`,
     reading.rejected.slice(0, SHOWN_LINES).map(({ line, reason }) => ({ line, message: reason })),
   )
 }

@@ -75,8 +75,8 @@ async function refuseBroken(app: App, actor: Actor, row: RunSheetRow, step: 'sub
       'not acceptable',
       'run-sheet.checks',
       step === 'submit'
-        ? `${refused[0]!.what}. Mend this before submitting.`
-        : `${refused[0]!.what}. Send the run sheet back to have this mended.`,
+        ? `${refused[0]!.what}. Correct this before submitting.`
+        : `${refused[0]!.what}. Send the run sheet back to have this corrected.`,
       refused.map(({ what }) => ({ message: what })),
     )
 }
