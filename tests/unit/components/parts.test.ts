@@ -12,6 +12,7 @@ import UiNotice from '../../../components/ui/Notice.vue'
 import UiProgress from '../../../components/ui/Progress.vue'
 import UiRadioRow from '../../../components/ui/RadioRow.vue'
 import UiSortHead from '../../../components/ui/SortHead.vue'
+import UiTabs from '../../../components/ui/Tabs.vue'
 import UiTable from '../../../components/ui/Table.vue'
 import UiWire from '../../../components/ui/Wire.vue'
 
@@ -211,4 +212,33 @@ it('lists facts as terms and values', () => {
   })
   expect(facts.findAll('dt').map((term) => term.text())).toEqual(['Anneal', 'State'])
   expect(facts.findAll('dd').map((value) => value.text())).toEqual(['72µs', 'draft'])
+})
+
+describe('UiTabs', () => {
+  it('shows one panel, keeps what the others hold, and goes by arrow keys', async () => {
+    const tabs = mount(UiTabs, {
+      props: {
+        label: 'How',
+        tabs: [
+          { key: 'search', label: 'Look' },
+          { key: 'import', label: 'Import' },
+        ],
+        modelValue: 'search',
+        'onUpdate:modelValue': (key: string) => tabs.setProps({ modelValue: key }),
+      },
+      slots: { search: () => h('input', { id: 'seed' }), import: () => h('p', 'chains') },
+      attachTo: document.body,
+    })
+    await nextTick()
+    await tabs.get('#seed').setValue('4')
+    const [look, importing] = tabs.findAll('[role=tab]')
+    expect(look!.attributes('aria-selected')).toBe('true')
+    ;(look!.element as HTMLElement).focus()
+    await look!.trigger('keydown', { key: 'ArrowRight' })
+    await nextTick()
+    expect(importing!.attributes('aria-selected')).toBe('true')
+    expect(tabs.get('[role=tabpanel][data-state=active]').text()).toBe('chains')
+    expect((tabs.get('#seed').element as HTMLInputElement).value).toBe('4')
+    tabs.unmount()
+  })
 })
