@@ -1,16 +1,18 @@
 import type { ChartConfiguration, ChartDataset, ChartOptions, ChartType, TooltipItem } from 'chart.js'
 import type { Palette } from '../../../assets/css/tokens'
-import { formatInterval, formatNumber } from '../../format'
 import { axisOptions } from './axes'
-import { DASHES, overlayPlugin, ruleHeadroom } from './overlays'
+import { placeText, valueText } from './points'
+import { headroom, overlayPlugin, POINT_ROOM } from './overlays'
 import { RATE_COLUMNS, ratesPlugin } from './rates'
-import { kindOf, toneOf } from './series'
-import type { ChartAxis, ChartInput, ChartPoint, ChartSeries } from './types'
+import { DASHES, kindOf, toneOf } from './series'
+import type { ChartAxis, ChartInput, ChartLook, ChartPoint, ChartSeries } from './types'
 
 const SANS = '"IBM Plex Sans", sans-serif'
 const MONO = '"IBM Plex Mono", monospace'
 /** Bars stand apart by one pixel, as ruled columns do. */
 const BAR_GAP = 1
+/** Width of one digit or letter of a label in a chart of rates. */
+const LABEL_LETTER = 7.6
 
 function smallestStep(points: readonly ChartPoint[]): number {
   const xs = points.map((point) => point.x).sort((a, b) => a - b)
@@ -33,6 +35,7 @@ function barDataset(input: ChartInput, index: number, palette: Palette): ChartDa
     label: series.name,
     data: series.points,
     backgroundColor: series.points.map((point) => palette[point.tone ?? tone]),
+    hoverBackgroundColor: palette.ink,
     barThickness: ((context: {
       chart: { scales: Record<string, { getPixelForValue: (value: number) => number }> }
     }) => {
@@ -61,6 +64,8 @@ function lineDataset(input: ChartInput, index: number, palette: Palette): ChartD
     borderWidth: 1.8,
     borderDash: [...DASHES[series.stroke ?? 'solid']],
     borderJoinStyle: 'miter',
+    // Points at the ends of the axes are drawn whole.
+    clip: POINT_ROOM,
     pointStyle: marker === 'plus' ? 'cross' : isOpen ? 'rect' : 'circle',
     pointRadius: marker === 'none' ? 0 : isOpen ? 4 : marker === 'plus' ? 4 : 3,
     pointHitRadius: 10,
@@ -76,7 +81,6 @@ function lineDataset(input: ChartInput, index: number, palette: Palette): ChartD
 }
 
 function tooltipOptions(input: ChartInput, palette: Palette) {
-  const across = input.x.label
   return {
     backgroundColor: palette.paper,
     borderColor: palette.ink,
@@ -93,15 +97,10 @@ function tooltipOptions(input: ChartInput, palette: Palette) {
     callbacks: {
       title: (items: TooltipItem<ChartType>[]) => {
         const point = items[0]?.raw as ChartPoint | undefined
-        if (!point) return ''
-        if (input.kind === 'rates') return point.label ?? ''
-        return input.x.categories?.[point.x] ?? `${formatNumber(point.x)}, ${across}`
+        return point ? placeText(input, point) : ''
       },
       label: (item: TooltipItem<ChartType>) => {
-        const point = item.raw as ChartPoint
-        const interval = point.low === undefined ? '' : `  ${formatInterval(point.low, point.high)}`
-        const name = input.series.length > 1 ? `${item.dataset.label}  ` : ''
-        return `${name}${formatNumber(point.y)}${interval}`
+        return valueText(input, item.datasetIndex, item.raw as ChartPoint)
       },
     },
   }
@@ -112,22 +111,27 @@ function commonOptions(input: ChartInput, palette: Palette): ChartOptions {
     responsive: true,
     maintainAspectRatio: false,
     animation: false,
-    layout: { padding: { top: 6 + ruleHeadroom(input.rules), right: 6 } },
+    layout: { padding: { top: 6 + headroom(input), right: 6 } },
     interaction: { mode: 'nearest', axis: input.kind === 'rates' ? 'y' : 'x', intersect: false },
     plugins: { legend: { display: false }, tooltip: tooltipOptions(input, palette) },
   } as ChartOptions
 }
 
-function plotConfig(input: ChartInput, palette: Palette): ChartConfiguration {
+/** The x axis with room for the halves of bars, or of single points, at its ends. */
+function withRoom(input: ChartInput, bars: ChartSeries | undefined, points: readonly ChartPoint[]): ChartAxis {
+  const isApart = input.kind === 'points' && input.x.scale !== 'log'
+  const held = bars?.points ?? (isApart ? points : [])
+  if (held.length === 0) return input.x
+  const room = (bars ? binWidthOf(input, bars) : smallestStep(points)) / 2
+  const xs = held.map(({ x }) => x)
+  return { ...input.x, min: input.x.min ?? Math.min(...xs) - room, max: input.x.max ?? Math.max(...xs) + room }
+}
+
+function plotConfig(input: ChartInput, palette: Palette, live: () => ChartLook): ChartConfiguration {
   const bars = input.series.find((series) => kindOf(input, series) === 'bar')
-  const offset = bars ? binWidthOf(input, bars) / 2 : 0
   const points = input.series.flatMap((series) => series.points)
   const ends = points.flatMap((point) => [point.low ?? point.y, point.high ?? point.y])
-  const xs = bars?.points.map((point) => point.x) ?? []
-  const x: ChartAxis =
-    xs.length > 0
-      ? { ...input.x, min: input.x.min ?? Math.min(...xs) - offset, max: input.x.max ?? Math.max(...xs) + offset }
-      : input.x
+  const x = withRoom(input, bars, points)
   const yMin = input.y.min ?? (bars ? 0 : undefined)
   const datasets = input.series.map((series, index) =>
     kindOf(input, series) === 'bar' ? barDataset(input, index, palette) : lineDataset(input, index, palette),
@@ -147,24 +151,22 @@ function plotConfig(input: ChartInput, palette: Palette): ChartConfiguration {
         y: axisOptions({ ...input.y, min: yMin }, palette, 'up', ends),
       },
     } as ChartOptions,
-    plugins: [
-      overlayPlugin(
-        () => input,
-        () => palette,
-      ),
-    ],
+    plugins: [overlayPlugin(live)],
   }
 }
 
-function ratesConfig(input: ChartInput, palette: Palette): ChartConfiguration {
+function ratesConfig(input: ChartInput, palette: Palette, live: () => ChartLook): ChartConfiguration {
   const points = input.series[0]?.points ?? []
   const most = Math.max(1e-9, ...points.map((point) => point.high ?? point.y))
-  const across = axisOptions({ ...input.x, min: input.x.min ?? 0, max: input.x.max ?? most * 1.05 }, palette, 'across')
+  const labels = points.map((point) => point.label ?? String(point.x))
+  const beside = RATE_COLUMNS + LABEL_LETTER * Math.max(0, ...labels.map(({ length }) => length)) + 12
+  const x = { ...input.x, min: input.x.min ?? 0, max: input.x.max ?? most * 1.05 }
+  const across = axisOptions(x, palette, 'across', [], beside)
   const data = points.map((point, index) => ({ ...point, value: point.y, row: index }))
   return {
     type: 'bar',
     data: {
-      labels: points.map((point) => point.label ?? String(point.x)),
+      labels,
       datasets: [
         {
           label: input.series[0]?.name,
@@ -199,16 +201,15 @@ function ratesConfig(input: ChartInput, palette: Palette): ChartConfiguration {
         },
       },
     } as unknown as ChartOptions,
-    plugins: [
-      ratesPlugin(
-        () => input,
-        () => palette,
-      ),
-    ],
+    plugins: [ratesPlugin(live)],
   }
 }
 
-/** The whole chart.js configuration of a chart in the given colours. */
-export function chartConfig(input: ChartInput, palette: Palette): ChartConfiguration {
-  return input.kind === 'rates' ? ratesConfig(input, palette) : plotConfig(input, palette)
+/**
+ * The whole chart.js configuration of a chart.
+ * @param live asked at each drawing for what is drawn over the plot, so that a chart can be changed in place
+ */
+export function chartConfig(live: () => ChartLook): ChartConfiguration {
+  const { input, palette } = live()
+  return input.kind === 'rates' ? ratesConfig(input, palette, live) : plotConfig(input, palette, live)
 }

@@ -1,12 +1,17 @@
 import type { Chart, ChartType, Plugin } from 'chart.js'
 import type { ColourName, Palette } from '../../../assets/css/tokens'
-import type { ChartInput, ChartRule, ChartSeries } from './types'
+import { axisName } from './axisName'
+import { DASHES } from './series'
+import type { ChartInput, ChartLook, ChartPoint, ChartRule, ChartSeries } from './types'
 
 /** What the plots need beyond chart.js: intervals, rules, spans and direct labels, drawn in the colours of the theme. */
 
 const SANS = '"IBM Plex Sans", sans-serif'
-export const DASHES = { solid: [], dashed: [5, 3], dotted: [1.5, 3] } as const
 const INTERVAL_WIDTH = 1.4
+/** Px beyond the plot that marks at its ends may take. */
+export const POINT_ROOM = 6
+/** Below this width names stand in the legend only. */
+const LEAST_LABELLED = 420
 /** Height of a line of labels above the plot. */
 const LABEL_LINE = 17
 
@@ -26,7 +31,7 @@ function clipToPlot(chart: Chart, draw: (context: CanvasRenderingContext2D) => v
   const { ctx, chartArea } = chart
   ctx.save()
   ctx.beginPath()
-  ctx.rect(chartArea.left, chartArea.top - 1, chartArea.width, chartArea.height + 2)
+  ctx.rect(chartArea.left - POINT_ROOM, chartArea.top - 1, chartArea.width + 2 * POINT_ROOM, chartArea.height + 2)
   ctx.clip()
   draw(ctx)
   ctx.restore()
@@ -102,10 +107,43 @@ const textTone = (tone: ColourName = 'ink'): ColourName =>
   tone === 'ochre' ? 'ochretext' : tone === 'clay' ? 'claytext' : tone
 
 /** Room above the plot for the labels of rules across x: one line of text, two when there are more to place. */
-export function ruleHeadroom(rules: readonly ChartRule[] = []): number {
+function ruleHeadroom(rules: readonly ChartRule[] = []): number {
   const labelled = rules.filter((rule) => rule.axis === 'x' && rule.label).length
   if (labelled === 0) return 0
   return labelled < 3 ? LABEL_LINE : 2 * LABEL_LINE
+}
+
+/** The y axis is named at the right of the title, or above the plot where something else stands there. */
+const hasUpName = ({ unit, y }: ChartInput): boolean => unit !== undefined && !unit.includes(y.label)
+
+/** Room above the plot, in px. */
+export const headroom = (input: ChartInput): number => ruleHeadroom(input.rules) + (hasUpName(input) ? LABEL_LINE : 0)
+
+function drawUpName(chart: Chart, input: ChartInput, palette: Palette) {
+  if (!hasUpName(input)) return
+  const { ctx } = chart
+  ctx.save()
+  ctx.font = `12px ${SANS}`
+  ctx.textBaseline = 'top'
+  ctx.fillStyle = palette.ink2
+  ctx.fillText(axisName(input.y), 0, 0)
+  ctx.restore()
+}
+
+/** A thin line at the place that is pointed at or stepped to, beneath what is written there. */
+function drawPlumb(chart: Chart, axes: Axes, palette: Palette) {
+  const [active] = chart.getActiveElements()
+  const point = active && (chart.data.datasets[active.datasetIndex]?.data[active.index] as ChartPoint | undefined)
+  if (!point) return
+  const { ctx, chartArea } = chart
+  ctx.save()
+  ctx.strokeStyle = palette.edge
+  ctx.lineWidth = 1
+  ctx.beginPath()
+  ctx.moveTo(axes.x(point.x), chartArea.top)
+  ctx.lineTo(axes.x(point.x), chartArea.bottom)
+  ctx.stroke()
+  ctx.restore()
 }
 
 /** Rules across x carry their labels above the plot, from left to right, on a second line where the first is taken. */
@@ -148,7 +186,7 @@ function drawRuleAlong(chart: Chart, rule: ChartRule, axes: Axes, palette: Palet
 /** The name of a series beside its line, on a casing of paper so that gridlines do not run through it. */
 function drawDirectLabel(chart: Chart, series: ChartSeries, axes: Axes, palette: Palette) {
   const at = series.labelAt
-  if (at === undefined || series.points.length === 0) return
+  if (at === undefined || series.points.length === 0 || chart.width < LEAST_LABELLED) return
   const nearest = series.points.reduce((best, point) => (Math.abs(point.x - at) < Math.abs(best.x - at) ? point : best))
   const { ctx, chartArea } = chart
   ctx.save()
@@ -161,7 +199,7 @@ function drawDirectLabel(chart: Chart, series: ChartSeries, axes: Axes, palette:
   ctx.restore()
 }
 
-function drawBeneath(chart: Chart, input: ChartInput, palette: Palette) {
+function drawBeneath(chart: Chart, { input, palette }: ChartLook) {
   const axes = axesOf(chart)
   clipToPlot(chart, (ctx) => {
     for (const span of input.spans ?? []) {
@@ -173,8 +211,10 @@ function drawBeneath(chart: Chart, input: ChartInput, palette: Palette) {
   })
 }
 
-function drawAbove(chart: Chart, input: ChartInput, palette: Palette) {
+function drawAbove(chart: Chart, { input, palette }: ChartLook) {
   const axes = axesOf(chart)
+  drawUpName(chart, input, palette)
+  drawPlumb(chart, axes, palette)
   clipToPlot(chart, (ctx) => {
     for (const series of input.series) {
       if (!series.band) drawBars(ctx, series, axes, (tone) => palette[tone ?? series.tone ?? 'ink'])
@@ -191,10 +231,10 @@ function drawAbove(chart: Chart, input: ChartInput, palette: Palette) {
   for (const series of input.series) drawDirectLabel(chart, series, axes, palette)
 }
 
-export function overlayPlugin(input: () => ChartInput, palette: () => Palette): Plugin<ChartType> {
+export function overlayPlugin(live: () => ChartLook): Plugin<ChartType> {
   return {
     id: 'workbook-overlays',
-    beforeDatasetsDraw: (chart) => drawBeneath(chart, input(), palette()),
-    afterDatasetsDraw: (chart) => drawAbove(chart, input(), palette()),
+    beforeDatasetsDraw: (chart) => drawBeneath(chart, live()),
+    afterDatasetsDraw: (chart) => drawAbove(chart, live()),
   }
 }

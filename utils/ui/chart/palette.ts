@@ -7,9 +7,9 @@ export function currentPalette(printing = false): Palette {
 }
 
 /** Calls back whenever the theme or the medium changes; returns how to stop. */
-export function watchPalette(onChange: (palette: Palette) => void): () => void {
-  const onScreen = () => onChange(currentPalette())
-  const onPaper = () => onChange(currentPalette(true))
+export function watchPalette(onChange: (palette: Palette, isPrinting: boolean) => void): () => void {
+  const onScreen = () => onChange(currentPalette(), false)
+  const onPaper = () => onChange(currentPalette(true), true)
   const medium = matchMedia('print')
   const onMedium = () => (medium.matches ? onPaper() : onScreen())
   const stop = watchTheme(onScreen)

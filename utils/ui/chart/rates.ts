@@ -1,7 +1,7 @@
 import type { Chart, ChartType, Plugin } from 'chart.js'
 import type { Palette } from '../../../assets/css/tokens'
 import { formatInterval, formatNumber } from '../../format'
-import type { ChartInput, ChartPoint } from './types'
+import type { ChartLook, ChartPoint } from './types'
 
 /** Rates with intervals, one row each: a dashed line from nought, the interval as a bar, the estimate as a tick. */
 
@@ -61,17 +61,18 @@ function drawColumns(ctx: CanvasRenderingContext2D, point: ChartPoint, y: number
   ctx.fillText(intervalText(point), right + RATE_COLUMNS - 2, y + 0.5)
 }
 
-export function ratesPlugin(input: () => ChartInput, palette: () => Palette): Plugin<ChartType> {
+export function ratesPlugin(live: () => ChartLook): Plugin<ChartType> {
   return {
     id: 'workbook-rates',
     afterDatasetsDraw(chart: Chart) {
       const { ctx, chartArea, scales } = chart
-      const points = input().series[0]?.points ?? []
+      const { input, palette } = live()
+      const points = input.series[0]?.points ?? []
       ctx.save()
       for (const [index, point] of points.entries()) {
         const y = scales.y?.getPixelForValue(index) ?? 0
-        drawRow(ctx, point, y, (value) => scales.x?.getPixelForValue(value) ?? 0, palette())
-        drawColumns(ctx, point, y, chartArea.right, palette())
+        drawRow(ctx, point, y, (value) => scales.x?.getPixelForValue(value) ?? 0, palette)
+        drawColumns(ctx, point, y, chartArea.right, palette)
       }
       ctx.restore()
     },

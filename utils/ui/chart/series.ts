@@ -1,6 +1,9 @@
 import type { ColourName } from '../../../assets/css/tokens'
 import type { ChartInput, ChartKind, ChartSeries } from './types'
 
+/** Strokes tell series apart before colours do. */
+export const DASHES = { solid: [], dashed: [5, 3], dotted: [1.5, 3] } as const
+
 /** Height of one row in a chart of rates. */
 export const RATE_ROW = 19
 

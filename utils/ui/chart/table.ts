@@ -1,4 +1,5 @@
 import { formatInterval, formatNumber } from '../../format'
+import { axisName } from './axisName'
 import type { ChartInput } from './types'
 
 /** The numbers of a chart as rows: the same for the table beneath it and for the CSV. */
@@ -26,10 +27,17 @@ function nameOf(input: ChartInput, x: number): string | undefined {
   return input.x.categories?.[x]
 }
 
+/** Bars that stand for a stretch of values are listed by its middle. */
+function placeHeading({ kind, x, y, series, binWidth }: ChartInput): string {
+  if (kind === 'rates') return axisName(y)
+  const isStretch = kind === 'bar' && binWidth !== undefined && binWidth !== 1 && (series[0]?.points.length ?? 0) > 1
+  return isStretch ? `${axisName(x)}, middle of bars of ${formatNumber(binWidth)}` : axisName(x)
+}
+
 export function chartTable(input: ChartInput): ChartTable {
   const single = input.series.length === 1
-  const first = input.kind === 'rates' ? input.y.label : input.x.label
-  const valueAxis = input.kind === 'rates' ? input.x.label : input.y.label
+  const first = placeHeading(input)
+  const valueAxis = axisName(input.kind === 'rates' ? input.x : input.y)
   const table: ChartTable = { headings: [first], valueHeadings: [first], rows: [], values: [] }
   for (const [index, series] of input.series.entries()) {
     const name = single ? valueAxis : `${series.name}: ${valueAxis}`
@@ -76,12 +84,12 @@ export function chartCsv(input: ChartInput): string {
 }
 
 /** One sentence for those who do not see the picture. */
-export function chartSummary(input: ChartInput): string {
+export function chartSummary(input: ChartInput, tableBeside = false): string {
   const points = input.series.flatMap((series) => series.points)
   if (points.length === 0) return `${input.title}: no data.`
   const values = points.map((point) => point.y)
   const range = formatInterval(Math.min(...values), Math.max(...values))
   const names = input.series.length > 1 ? ` Series: ${input.series.map((series) => series.name).join(', ')}.` : ''
-  const axis = input.kind === 'rates' ? input.x.label : input.y.label
-  return `${input.title}. ${axis}: ${range}, ${points.length} values.${names} The table beneath holds all of them.`
+  const axis = axisName(input.kind === 'rates' ? input.x : input.y)
+  return `${input.title}. ${axis}: ${range}, ${points.length} values.${names} The table ${tableBeside ? 'beside it' : 'beneath'} holds all of them.`
 }

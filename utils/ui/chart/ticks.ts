@@ -2,6 +2,7 @@
 
 const FINE = [1, 1.2, 1.5, 2, 2.5, 3, 4, 5, 6, 8]
 const COARSE = [1, 2, 5]
+const ROUGH = [1, 3]
 const MOST_FINE = 12
 /** More whole values than this are left to the library. */
 const MOST_WHOLE = 16
@@ -17,11 +18,15 @@ function stepsWithin(min: number, max: number, steps: readonly number[]): number
   return ticks
 }
 
-/** Ticks of a logarithmic axis between two positive ends: fine steps over a decade or less, then coarser. */
-export function logTicks(min: number, max: number): number[] {
+/**
+ * Ticks of a logarithmic axis between two positive ends: fine steps over a decade or less, then coarser, down to one a
+ * decade.
+ * @param most how many there is room for
+ */
+export function logTicks(min: number, max: number, most: number = MOST_FINE): number[] {
   if (!(min > 0) || !(max > min)) return []
-  const candidates = [FINE, COARSE, [1]].map((steps) => stepsWithin(min, max, steps))
-  return candidates.find((ticks) => ticks.length <= MOST_FINE) ?? candidates[2] ?? []
+  const candidates = [FINE, COARSE, ROUGH, [1]].map((steps) => stepsWithin(min, max, steps))
+  return candidates.find((ticks) => ticks.length <= most) ?? candidates.at(-1) ?? []
 }
 
 /** A tick at every whole number when the values are few of them, such as gauges or counts of chains. */

@@ -1,12 +1,14 @@
-import type { ColourName } from '../../../assets/css/tokens'
+import type { ColourName, Palette } from '../../../assets/css/tokens'
 
 /** What a page hands to a chart. Numbers only: words on axes go through `categories`. */
 
 export type ChartKind = 'bar' | 'step' | 'line' | 'points' | 'rates'
 
 export interface ChartAxis {
-  /** Name with its unit: `chain strength k, in units of J`. */
+  /** What is measured: `chain strength k`. A count needs no unit beside its name. */
   label: string
+  /** Said after the name: `in units of J`, `%`. */
+  unit?: string
   scale?: 'linear' | 'log'
   min?: number
   max?: number
@@ -64,6 +66,8 @@ export interface ChartSpan {
 export interface ChartInput {
   kind: ChartKind
   title: string
+  /** At the right of the title: unit of the values, or what one bar is; the y axis where it is left out. */
+  unit?: string
   x: ChartAxis
   y: ChartAxis
   series: ChartSeries[]
@@ -71,4 +75,10 @@ export interface ChartInput {
   binWidth?: number
   rules?: ChartRule[]
   spans?: ChartSpan[]
+}
+
+/** What is drawn, and in which colours. */
+export interface ChartLook {
+  input: ChartInput
+  palette: Palette
 }
