@@ -71,6 +71,40 @@ export function showsMost(view: View, extent: Extent, bounds: Box, share = 0.85)
   return across >= share && down >= share
 }
 
+/** Size in pixels of a map of the whole machine, and the pixels of one line spacing in it. */
+export function mapSize(bounds: Box, longest: number): { scale: number; width: number; height: number } {
+  const [across, down] = [bounds.x2 - bounds.x1, bounds.y2 - bounds.y1]
+  const scale = longest / Math.max(across, down)
+  return { scale, width: Math.ceil(scale * across), height: Math.ceil(scale * down) }
+}
+
+/** Corners of the frame in the order in which they are tried. */
+export const CORNERS = ['bottom right', 'top right', 'bottom left', 'top left'] as const
+export type Corner = (typeof CORNERS)[number]
+
+/** The corner's rectangle of the given size, in pixels of the viewport. */
+export function cornerBox(corner: Corner, { width, height }: Extent, size: Extent): Box {
+  const x1 = corner.endsWith('right') ? width - size.width : 0
+  const y1 = corner.startsWith('bottom') ? height - size.height : 0
+  return { x1, y1, x2: x1 + size.width, y2: y1 + size.height }
+}
+
+/** The corner in which a map would hide the fewest bands. */
+export function freestCorner(view: View, extent: Extent, size: Extent, hiddenIn: (box: Box) => number): Corner {
+  let best: Corner = CORNERS[0]
+  let least = Infinity
+  for (const corner of CORNERS) {
+    const { x1, y1, x2, y2 } = cornerBox(corner, extent, size)
+    const { scale, x, y } = view
+    const hidden = hiddenIn({ x1: (x1 - x) / scale, y1: (y1 - y) / scale, x2: (x2 - x) / scale, y2: (y2 - y) / scale })
+    if (hidden < least) {
+      best = corner
+      least = hidden
+    }
+  }
+  return best
+}
+
 /** What is in view, for those who cannot see it. */
 export function describeView(view: View, extent: Extent, bounds: Box): string {
   if (showsMost(view, extent, bounds, 0.97)) return 'Whole machine in view.'

@@ -11,7 +11,8 @@ export interface Painter {
 }
 
 export type PainterMessage =
-  | { readonly kind: 'of'; readonly source: PictureSource }
+  /** The machine is left out when it is the one sent last: it is by far the largest part. */
+  | { readonly kind: 'of'; readonly data: PictureSource['data'] | null; readonly source: Omit<PictureSource, 'data'> }
   | { readonly kind: 'show'; readonly look: PictureLook }
   | { readonly kind: 'paint'; readonly request: PictureRequest }
 
@@ -26,6 +27,7 @@ export const createPainter = (): Painter =>
 function createWorkerPainter(): Painter {
   const worker = new Worker(new URL('./painter.worker.ts', import.meta.url), { type: 'module' })
   const send = (message: PainterMessage) => worker.postMessage(message)
+  let sent: PictureSource['data'] | null = null
   let settle: { resolve: (bitmap: ImageBitmap) => void; reject: (reason: Error) => void } | null = null
   worker.onmessage = ({ data }: MessageEvent<PainterAnswer>) => {
     if ('bitmap' in data) settle?.resolve(data.bitmap)
@@ -34,7 +36,10 @@ function createWorkerPainter(): Painter {
   }
   worker.onerror = ({ message }) => settle?.reject(new Error(message))
   return {
-    of: (source) => send({ kind: 'of', source }),
+    of({ data, ...source }) {
+      send({ kind: 'of', data: data === sent ? null : data, source })
+      sent = data
+    },
     show: (look) => send({ kind: 'show', look }),
     paint: (request) =>
       new Promise((resolve, reject) => {

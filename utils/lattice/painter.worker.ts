@@ -1,5 +1,5 @@
 import { createPicture } from './picture'
-import type { PictureRequest } from './picture'
+import type { PictureRequest, PictureSource } from './picture'
 import type { PainterAnswer, PainterMessage } from './painter'
 
 interface Scope {
@@ -21,13 +21,17 @@ function paint(request: PictureRequest): ImageBitmap {
   return canvas.transferToImageBitmap()
 }
 
-scope.onmessage = ({ data }) => {
-  if (data.kind === 'of') picture.of(data.source)
-  else if (data.kind === 'show') picture.show(data.look)
+let machine: PictureSource['data'] | null = null
+
+scope.onmessage = ({ data: message }) => {
+  if (message.kind === 'of') {
+    machine = message.data ?? machine
+    if (machine) picture.of({ data: machine, ...message.source })
+  } else if (message.kind === 'show') picture.show(message.look)
   else {
     let answer: PainterAnswer
     try {
-      answer = { bitmap: paint(data.request) }
+      answer = { bitmap: paint(message.request) }
     } catch (error) {
       answer = { failure: error instanceof Error ? error.message : String(error) }
     }

@@ -1,4 +1,4 @@
-import { viewOfBox } from './framing'
+import { mapSize } from './camera-moves'
 import { boxNow, covers, isSameView, isUsedUp, marginOf } from './painted-view'
 import type { Painted } from './painted-view'
 import type { Painter } from './painter'
@@ -8,8 +8,8 @@ import type { Box, View } from './types'
 export interface RasterEvents {
   /** A picture arrived; the first one ends the waiting. */
   onPainted(): void
-  /** The picture of the whole machine arrived. */
-  onOverview(): void
+  /** A new map of the whole machine, the receiver's to close. */
+  onMap(map: ImageBitmap): void
   onFailure(reason: string): void
 }
 
@@ -17,6 +17,8 @@ export const RASTER_DEFAULTS = {
   restMilliseconds: 110,
   /** Longest side of the picture of the whole machine, in pixels. */
   overview: 900,
+  /** Longest side of the map of it in a corner. */
+  map: 116,
   /** Most device pixels to a CSS pixel. */
   largestRatio: 2,
 }
@@ -38,6 +40,7 @@ export class RasterLayer {
   private overview: Painted | null = null
   private isStale = true
   private isOverviewStale = true
+  private isMapStale = true
   private isResting = true
   private isBusy = false
   private isOver = false
@@ -60,12 +63,12 @@ export class RasterLayer {
   of(source: PictureSource, bounds: Box): void {
     this.bounds = bounds
     this.painter.of(source)
-    this.isStale = this.isOverviewStale = true
+    this.isStale = this.isOverviewStale = this.isMapStale = true
   }
 
   show(look: PictureLook): void {
     this.painter.show(look)
-    this.isStale = this.isOverviewStale = true
+    this.isStale = this.isOverviewStale = this.isMapStale = true
     void this.work()
   }
 
@@ -113,10 +116,11 @@ export class RasterLayer {
   private async work(): Promise<void> {
     if (this.isBusy || this.isOver || !this.latest || this.size.width === 0) return
     const wantsPicture = this.isWanted(this.latest)
-    if (!wantsPicture && !(this.isOverviewStale && this.isResting)) return
+    const wantsMap = this.isResting && (this.isOverviewStale || this.isMapStale)
+    if (!wantsPicture && !wantsMap) return
     this.isBusy = true
     try {
-      await (wantsPicture ? this.paintPicture(this.latest) : this.paintOverview())
+      await (wantsPicture ? this.paintPicture(this.latest) : this.isMapStale ? this.paintMap() : this.paintOverview())
     } catch (error) {
       this.isOver = true
       this.events.onFailure(error instanceof Error ? error.message : String(error))
@@ -141,20 +145,29 @@ export class RasterLayer {
   }
 
   private async paintOverview(): Promise<void> {
-    const [across, down] = [this.bounds.x2 - this.bounds.x1, this.bounds.y2 - this.bounds.y1]
-    const scale = RASTER_DEFAULTS.overview / Math.max(across, down)
-    const [width, height] = [Math.ceil(scale * across), Math.ceil(scale * down)]
     this.isOverviewStale = false
-    const next = { view: viewOfBox(this.bounds, width, height, 0), width, height, marginX: 0, marginY: 0, ratio: 1 }
+    const next = this.wholeMachine(RASTER_DEFAULTS.overview, 1)
     const bitmap = await this.paint(next, true)
     if (this.isOver) return bitmap.close()
-    this.back.width = width
-    this.back.height = height
+    this.back.width = next.width
+    this.back.height = next.height
     this.whole?.drawImage(bitmap, 0, 0)
     bitmap.close()
     this.overview = next
     this.place()
-    this.events.onOverview()
+  }
+
+  private async paintMap(): Promise<void> {
+    this.isMapStale = false
+    const bitmap = await this.paint(this.wholeMachine(RASTER_DEFAULTS.map, restRatio()), true)
+    if (this.isOver) bitmap.close()
+    else this.events.onMap(bitmap)
+  }
+
+  private wholeMachine(longest: number, ratio: number): Painted {
+    const { scale, width, height } = mapSize(this.bounds, longest)
+    const view = { scale, x: -scale * this.bounds.x1, y: -scale * this.bounds.y1 }
+    return { view, width, height, marginX: 0, marginY: 0, ratio }
   }
 
   private paint(painted: Painted, whole: boolean): Promise<ImageBitmap> {

@@ -1,51 +1,48 @@
-import { broughtIntoSight, centred, revealing, seenBox, zoomed } from './camera-moves'
-import { coverageOf } from './coverage'
+import {
+  broughtIntoSight,
+  centred,
+  cornerBox,
+  freestCorner,
+  mapSize,
+  revealing,
+  seenBox,
+  showsMost,
+  zoomed,
+} from './camera-moves'
+import type { Corner } from './camera-moves'
+import { coverageOf, coveredIn } from './coverage'
 import type { Drawing } from './drawing'
 import { viewOfBox } from './framing'
-import type { ChainGeometry } from './geometry'
+import type { Layers } from './layers'
 import type { Painter } from './painter'
-import type { PictureLook, PictureSource } from './picture'
-import { placesOfPair } from './places'
-import { RasterLayer } from './raster-layer'
+import type { PictureLook } from './picture'
+import { RASTER_DEFAULTS, RasterLayer } from './raster-layer'
 import { RulerLayer } from './ruler-layer'
 import { buildScene } from './scene'
-import { breaksOf } from './scene-couplers'
 import type { Scene } from './scene-types'
 import type { Coverage } from './coverage'
 import { TagLayer } from './tag-layer'
+import { overlayOf, tagInputOf } from './tag-input'
 import { tagBands } from './tag-requests'
 import type { TagSeat } from './tag-requests'
-import { tiersOf } from './tiers'
-import type { Box, OverlayLayer, View } from './types'
-
-export interface StageElements {
-  /** Takes the camera's gestures. */
-  readonly container: HTMLElement
-  readonly front: HTMLCanvasElement
-  readonly back: HTMLCanvasElement
-  readonly tags: HTMLCanvasElement
-  readonly rulerTop: HTMLCanvasElement
-  readonly rulerLeft: HTMLCanvasElement
-}
+import type { StageLook, StageSource } from './stage-types'
+import type { Box, View } from './types'
 
 export interface StageEvents {
   onPainted(): void
-  onOverview(): void
-  onView(view: View): void
+  /** A new map of the whole machine, the receiver's to close. */
+  onMap(map: ImageBitmap): void
+  onView(state: StageView): void
   /** A click or tap that was no drag, in pixels of the viewport. */
   onClick(x: number, y: number, additive: boolean): void
   onFailure(reason: string): void
 }
 
-/** What stays the same for as long as the embedding does. */
-export interface StageSource extends PictureSource {
-  readonly geometry: ChainGeometry
-  readonly bounds: Box
-}
-
-export interface StageLook extends PictureLook {
-  readonly hovered: number | null
-  readonly overlay: OverlayLayer | null
+export interface StageView {
+  /** What the viewport shows, in line spacings. */
+  readonly seen: Box
+  /** Where a map of the machine hides least, or null when the machine is in view anyhow. */
+  readonly map: Corner | null
 }
 
 export const STAGE_DEFAULTS = {
@@ -71,9 +68,10 @@ export class LatticeStage {
   private held: View = { scale: 1, x: 0, y: 0 }
   private readonly drawingModule = import('./drawing')
   private isKilled = false
+  private corner: Corner = 'bottom right'
 
   constructor(
-    private readonly elements: StageElements,
+    private readonly layers: Layers,
     painter: Painter,
     private readonly events: StageEvents,
   ) {
@@ -81,9 +79,9 @@ export class LatticeStage {
       events.onPainted()
       if (!this.drawing) window.setTimeout(() => void this.makeCamera())
     }
-    this.raster = new RasterLayer(elements.front, elements.back, painter, { ...events, onPainted })
-    this.tags = new TagLayer(elements.tags)
-    this.ruler = new RulerLayer(elements.rulerTop, elements.rulerLeft, STAGE_DEFAULTS.inset)
+    this.raster = new RasterLayer(layers.front, layers.back, painter, { ...events, onPainted })
+    this.tags = new TagLayer(layers.tags)
+    this.ruler = new RulerLayer(layers.rulerTop, layers.rulerLeft, STAGE_DEFAULTS.inset)
     this.measure()
   }
 
@@ -99,6 +97,8 @@ export class LatticeStage {
    */
   begin(source: StageSource, look: StageLook, first: Box | null): void {
     const view = first ? this.fitting(first) : this.view()
+    const hadCamera = this.drawing !== null
+    const keepsCamera = hadCamera && first === null && this.source?.data === source.data
     this.source = source
     this.look = look
     this.bandsForTags = tagBands(source.geometry)
@@ -106,11 +106,12 @@ export class LatticeStage {
     const { data, chains, hues } = source
     this.raster.of({ data, chains, hues }, source.bounds)
     this.raster.show(pictureLook(look))
-    const hadCamera = this.drawing !== null
-    this.dropCamera()
+    this.chooseCorner(view)
+    if (keepsCamera) this.drawing?.show(this.focusScene())
+    else this.dropCamera()
     this.follow(view)
     this.showTags()
-    if (hadCamera) void this.makeCamera()
+    if (hadCamera && !keepsCamera) void this.makeCamera()
   }
 
   /** Shows the same embedding in another lens, focus, selection or filter. */
@@ -142,11 +143,17 @@ export class LatticeStage {
   }
 
   fit(box: Box, milliseconds = 0): void {
-    this.moveTo(this.fitting(box), milliseconds)
+    this.goTo(this.fitting(box), milliseconds)
   }
 
   reveal(box: Box, milliseconds = 0): void {
-    this.moveTo(revealing(this.view(), this.size, box), milliseconds)
+    this.goTo(revealing(this.view(), this.size, box), milliseconds)
+  }
+
+  private goTo(view: View, milliseconds: number): void {
+    this.chooseCorner(view)
+    this.moveTo(view, milliseconds)
+    this.showTags()
   }
 
   bringIntoSight(box: Box, milliseconds = 0): void {
@@ -192,7 +199,7 @@ export class LatticeStage {
 
   /** @returns whether the size has changed */
   private measure(): boolean {
-    const { clientWidth: width, clientHeight: height } = this.elements.container
+    const { clientWidth: width, clientHeight: height } = this.layers.container
     if (width === this.size.width && height === this.size.height) return false
     this.size = { width, height }
     this.raster.resize(width, height)
@@ -211,7 +218,7 @@ export class LatticeStage {
     const { createDrawing } = await this.drawingModule
     if (!this.source || !this.look || this.drawing || this.isKilled) return
     try {
-      this.drawing = createDrawing(this.elements.container, {
+      this.drawing = createDrawing(this.layers.container, {
         bounds: this.source.bounds,
         tokens: this.look.tokens,
         scene: this.focusScene(),
@@ -234,7 +241,19 @@ export class LatticeStage {
     this.raster.follow(view)
     this.tags.follow(view)
     this.paintRuler(view)
-    this.events.onView(view)
+    this.events.onView({ seen: seenBox(view, this.size), map: this.isMapNeeded(view) ? this.corner : null })
+  }
+
+  private isMapNeeded(view: View): boolean {
+    return this.source !== null && !showsMost(view, this.size, this.source.bounds)
+  }
+
+  /** Puts the map where it hides least; only for a view that was asked for, so that it never moves under the pointer. */
+  private chooseCorner(view: View): void {
+    const { coverage, source } = this
+    if (!coverage || !source) return
+    const size = mapSize(source.bounds, RASTER_DEFAULTS.map)
+    this.corner = freestCorner(view, this.size, size, (box) => coveredIn(coverage, box))
   }
 
   private paintRuler(view: View): void {
@@ -244,26 +263,14 @@ export class LatticeStage {
   private showTags(): void {
     const { source, look } = this
     if (!source || !look) return
-    const { tokens, lens, hiddenKinds } = look
-    const showsRates = lens === 'breaks' && !look.read && !hiddenKinds?.has('breaks')
-    const { data, geometry, hues } = source
+    const held = this.isMapNeeded(this.view())
+      ? [cornerBox(this.corner, this.size, mapSize(source.bounds, RASTER_DEFAULTS.map))]
+      : []
+    const overlay = look.overlay && overlayOf(source, look.overlay)
     this.tags.show(
-      { tokens, coverage: this.coverage },
-      {
-        labels: source.chains.labels,
-        bands: this.bandsForTags,
-        tiers: tiersOf({ geometry, ...look }),
-        hueOf: (chain) => (lens === 'occupancy' ? tokens.hues[hues.hue[chain]!]! : tokens.edge),
-        breaks: showsRates ? breaksOf({ data, geometry, breaks: look.breaks }) : [],
-        showsLabels: !hiddenKinds?.has('labels'),
-        hovered: look.hovered,
-      },
-      look.overlay && {
-        data,
-        layer: look.overlay,
-        spanOf: new Map(geometry.spans.map((span) => [span.qubit, span])),
-        placeOf: (a, b) => placesOfPair(data.segments, a, b),
-      },
+      { tokens: look.tokens, coverage: this.coverage, held },
+      tagInputOf(source, look, this.bandsForTags),
+      overlay,
     )
   }
 }

@@ -1,7 +1,7 @@
 import type { Overlay } from './paint-overlay'
 import { placesOfPair } from './places'
 import { breaksOf } from './scene-couplers'
-import type { StageLook, StageSource } from './stage'
+import type { StageLook, StageSource } from './stage-types'
 import type { TagInput } from './tag-requests'
 import { tiersOf } from './tiers'
 import type { OverlayLayer } from './types'

@@ -11,11 +11,13 @@ import { prepareCanvas } from './prepare-canvas'
 import { requestTags } from './tag-requests'
 import type { TagInput } from './tag-requests'
 import type { Tokens } from './tokens'
-import type { View } from './types'
+import type { Box, View } from './types'
 
 export interface TagTheme {
   readonly tokens: Tokens
   readonly coverage: Coverage | null
+  /** Parts of the viewport that tags keep clear of. */
+  readonly held: readonly Box[]
 }
 
 /**
@@ -98,16 +100,16 @@ export class TagLayer {
     this.shift()
   }
 
-  private place(ctx: CanvasRenderingContext2D, view: View, { coverage }: TagTheme) {
+  private place(ctx: CanvasRenderingContext2D, view: View, { coverage, held }: TagTheme) {
     if (!this.input) return null
     const [marginX, marginY] = [marginOf(this.size.width), marginOf(this.size.height)]
     const inner = { x1: 2, y1: 2, x2: this.size.width - 2, y2: this.size.height - 2 }
     const outer = { x1: -marginX, y1: -marginY, x2: this.size.width + marginX, y2: this.size.height + marginY }
     const { requests, looks } = requestTags(ctx, this.input, this.widths, { view, viewport: outer })
-    const seen = placeTags(requests, view, inner, coverage)
+    const seen = placeTags(requests, view, inner, coverage, held)
     const placedKeys = new Set(seen.map(({ key }) => key))
     const rest = requests.filter(({ key }) => !placedKeys.has(key))
-    const held = [...seen.map(({ box }) => box), inner]
-    return { tags: [...seen, ...placeTags(rest, view, outer, coverage, held)], looks }
+    const around = placeTags(rest, view, outer, coverage, [...seen.map(({ box }) => box), inner])
+    return { tags: [...seen, ...around], looks }
   }
 }

@@ -7,7 +7,7 @@ import type { ChainGeometry } from './geometry'
 import { indexSegments, nearestSegment } from './hit-test'
 import { huesOfChains } from './hue-conflicts'
 import { boxOfSegments } from './segments'
-import type { StageSource } from './stage'
+import type { StageSource } from './stage-types'
 import type { Box, ChainLayer, LatticeData, View } from './types'
 
 const NO_CHAINS: ChainLayer = {

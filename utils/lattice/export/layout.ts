@@ -1,5 +1,5 @@
 import { viewOfBox } from '../framing'
-import type { StageLook, StageSource } from '../stage'
+import type { StageLook, StageSource } from '../stage-types'
 import type { Box, View } from '../types'
 
 /** What the screen shows at the moment, ready to be drawn elsewhere. */

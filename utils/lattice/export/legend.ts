@@ -1,6 +1,6 @@
 import { percent } from '../figures'
 import { SCENE_DEFAULTS } from '../scene-types'
-import type { StageLook, StageSource } from '../stage'
+import type { StageLook, StageSource } from '../stage-types'
 import type { Tokens } from '../tokens'
 import type { Canvas2D } from '../paint-edges'
 
