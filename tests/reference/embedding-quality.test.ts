@@ -57,7 +57,7 @@ const median = (values: readonly number[]): number => [...values].sort((a, b) =>
 function measure([, make, family, shares]: (typeof INSTANCES)[number]): Stored {
   const found = SEEDS.flatMap((seed) => {
     const task = familyTask(make(seed), family, shares, createRandom(seed, 71))
-    const { embedding } = findEmbedding(task, { seed, tries: 1 }, UNTIMED)
+    const { embedding } = findEmbedding(task, { seed, tries: 1, timeLimitSeconds: 2 }, UNTIMED)
     return embedding ? [qualityOf(embedding)] : []
   })
   return {

@@ -55,7 +55,7 @@ describe('small random cases', () => {
       const task = make(createRandom(seed, 90))
       const { problem, machine, usable } = task
       const method = TURNS[seed % TURNS.length]!
-      const { status, embedding } = findEmbedding(task, { seed, method, tries: 1 }, UNTIMED)
+      const { status, embedding } = findEmbedding(task, { seed, method, tries: 1, timeLimitSeconds: 0.1 }, UNTIMED)
       const least = leastQubits(problem, machine, usable)
       const hasToFind = least !== null && (method === 'search' || method === 'auto')
       if (hasToFind) possible++
@@ -90,7 +90,7 @@ describe('names mean nothing', () => {
       const variables = permutation(problem.order, random)
       const qubits = permutation(machine.order, random)
       const other = renamed(task, variables, qubits)
-      const { embedding } = findEmbedding(task, { seed, tries: 1 }, UNTIMED)
+      const { embedding } = findEmbedding(task, { seed, tries: 1, timeLimitSeconds: 0.5 }, UNTIMED)
       const bare = taskOf(problem, machine, usable)
       expect(provedInfeasible(other)?.code).toBe(provedInfeasible(bare)?.code)
       if (!embedding) continue
@@ -117,7 +117,11 @@ describe('names mean nothing', () => {
       const task = make(random)
       const variables = permutation(task.problem.order, random)
       const qubits = permutation(task.machine.order, random)
-      const { embedding } = findEmbedding(renamed(task, variables, qubits), { seed, tries: 1 }, UNTIMED)
+      const { embedding } = findEmbedding(
+        renamed(task, variables, qubits),
+        { seed, tries: 1, timeLimitSeconds: 0.5 },
+        UNTIMED,
+      )
       if (!embedding) continue
       const lists = chainLists(embedding)
       const back = variables.map((name) => lists[name]!.map((q) => qubits.indexOf(q)))

@@ -74,7 +74,11 @@ const INSTANCES = (['king', 'chimera'] as const).flatMap((family) =>
 describe.each(INSTANCES)(
   'embedding on $name against contraction in graphology',
   ({ problem, machine, usable, seed }) => {
-    const { embedding } = findEmbedding(taskOf(problem, machine, usable), { seed, tries: 3 }, UNTIMED)
+    const { embedding } = findEmbedding(
+      taskOf(problem, machine, usable),
+      { seed, tries: 3, timeLimitSeconds: 1 },
+      UNTIMED,
+    )
     const found = chainLists(embedding!)
 
     it('is a minor', () => {
@@ -122,7 +126,9 @@ describe.each(WORN_MACHINES)('%s with missing qubits and couplers', (_, make, fa
 
   it.each(METHODS)('what %s finds is a minor by contraction', (method) => {
     const tasks = SEEDS.map(taskOfSeed)
-    const found = tasks.map((task, k) => findEmbedding(task, { seed: SEEDS[k]!, method, tries: 1 }, UNTIMED).embedding)
+    const found = tasks.map(
+      (task, k) => findEmbedding(task, { seed: SEEDS[k]!, method, tries: 1, timeLimitSeconds: 1 }, UNTIMED).embedding,
+    )
     found.forEach((embedding, k) => embedding && expect(isMinor(tasks[k]!, embedding)).toBe(true))
     // Only the general method has to find something everywhere.
     if (method === 'search') expect(found).not.toContain(null)
@@ -131,10 +137,14 @@ describe.each(WORN_MACHINES)('%s with missing qubits and couplers', (_, make, fa
   it('what is shortened or repaired is a minor by contraction, and frozen chains stay', () => {
     for (const seed of SEEDS) {
       const task = taskOfSeed(seed)
-      const chains = findEmbedding(task, { seed, tries: 1 }, UNTIMED).embedding!
+      const chains = findEmbedding(task, { seed, tries: 1, timeLimitSeconds: 1 }, UNTIMED).embedding!
       const frozen = Uint8Array.from({ length: task.problem.order }, (_, v) => (v === 0 ? 1 : 0))
       const before = chainLists(chains)
-      const shortened = findEmbedding({ ...task, start: { chains, frozen } }, { method: 'shorten', seed }, UNTIMED)
+      const shortened = findEmbedding(
+        { ...task, start: { chains, frozen } },
+        { method: 'shorten', seed, timeLimitSeconds: 1 },
+        UNTIMED,
+      )
       expect(isMinor(task, shortened.embedding!)).toBe(true)
       expect(shortened.embedding!.qubits.length).toBeLessThanOrEqual(chains.qubits.length)
       expect(chainLists(shortened.embedding!)[0]).toEqual(before[0])
@@ -145,7 +155,7 @@ describe.each(WORN_MACHINES)('%s with missing qubits and couplers', (_, make, fa
         task.machine.ends[2 * k] === broken || task.machine.ends[2 * k + 1] === broken ? 0 : 1,
       )
       const worse = { ...task, usable, machine: keepEdges(task.machine, works), start: { chains, frozen } }
-      const repaired = findEmbedding(worse, { method: 'repair', seed }, UNTIMED)
+      const repaired = findEmbedding(worse, { method: 'repair', seed, timeLimitSeconds: 1 }, UNTIMED)
       expect(isMinor(worse, repaired.embedding!)).toBe(true)
       expect(chainLists(repaired.embedding!)[0]).toEqual(before[0])
     }
@@ -160,7 +170,11 @@ describe('published constructions bound what has to be found', () => {
     ['K_30 in Pegasus P(6)', completeGraph(30), buildFabric({ kind: 'pegasus', m: 6, trimmed: true }).graph],
   ])('%s', (_, problem, machine) => {
     const usable = new Uint8Array(machine.order).fill(1)
-    const { embedding } = findEmbedding(taskOf(problem, machine, usable), { seed: 1, tries: 3 }, UNTIMED)
+    const { embedding } = findEmbedding(
+      taskOf(problem, machine, usable),
+      { seed: 1, tries: 3, timeLimitSeconds: 1 },
+      UNTIMED,
+    )
     expect(isMinorByContraction(problem, machine, usable, chainLists(embedding!))).toBe(true)
   })
 
@@ -172,10 +186,10 @@ describe('published constructions bound what has to be found', () => {
       [completeGraph(4), chimeraGraph(1, 6, 2)],
     ] as const) {
       const task = taskOf(problem, machine)
-      expect(findEmbedding(task, { tries: 3 }, UNTIMED).status).toBe('none found')
+      expect(findEmbedding(task, { tries: 3, timeLimitSeconds: 1 }, UNTIMED).status).toBe('none found')
       for (const method of METHODS)
         expect(
-          runTry(task, { tryNumber: 1, method }, { ...DEFAULTS, timeLimitSeconds: 1 }, UNTIMED).embedding,
+          runTry(task, { tryNumber: 1, method, share: 1 }, { ...DEFAULTS, timeLimitSeconds: 1 }, UNTIMED).embedding,
         ).toBeNull()
     }
   })

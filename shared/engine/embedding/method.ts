@@ -34,6 +34,8 @@ export interface Attempt {
   readonly random: Random
   /** What the best is chosen by. */
   readonly objective: Objective
+  /** Time that falls to this try, in seconds: sets how much work goes into shortening, whatever the clock says. */
+  readonly seconds: number
   /** What grows chains; both give the same. */
   readonly kernel: KernelChoice
   /** Asks for the end, and takes progress; to be asked at least every few milliseconds. */

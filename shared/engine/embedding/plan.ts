@@ -7,6 +7,8 @@ export interface PlannedTry {
   /** From 1; also the number of the try's stream of random numbers. */
   readonly tryNumber: number
   readonly method: Method
+  /** Its share of the time limit, in seconds. */
+  readonly share: number
 }
 
 export const PLAN = {
@@ -50,11 +52,12 @@ function fittingMethods(task: EmbeddingTask): Method[] {
  */
 export function planTries(
   task: EmbeddingTask,
-  { method, tries }: { method: Method | 'auto'; tries: number },
+  { method, tries, timeLimitSeconds }: { method: Method | 'auto'; tries: number; timeLimitSeconds: number },
 ): PlannedTry[] {
   const methods = method === 'auto' ? fittingMethods(task) : [method]
   return Array.from({ length: tries * methods.length }, (_, i) => ({
     tryNumber: i + 1,
     method: methods[i % methods.length]!,
+    share: timeLimitSeconds / (tries * methods.length),
   }))
 }

@@ -52,7 +52,7 @@ const RUNNERS: Record<Method, Runner> = {
  */
 export function runTry(
   task: EmbeddingTask,
-  { tryNumber, method }: PlannedTry,
+  { tryNumber, method, share }: PlannedTry,
   { seed, objective, target, timeLimitSeconds, kernel = 'assembly' }: TrySettings,
   control: Control<SearchProgress>,
 ): TryResult {
@@ -70,10 +70,12 @@ export function runTry(
     watch.best = quality
     if (reaches(quality, target)) watch.stopped ??= 'target reached'
   }
-  const partial = RUNNERS[method](task, { random: createRandom(seed, tryNumber), objective, kernel, watch, offer })
+  const random = createRandom(seed, tryNumber)
+  const partial = RUNNERS[method](task, { random, objective, seconds: share, kernel, watch, offer })
   return {
     tryNumber,
     method,
+    share,
     embedding,
     quality: watch.best,
     partial: embedding ? null : partial,

@@ -32,11 +32,11 @@ export const NEGOTIATION = {
 /** Variables between two looks at the clock. */
 const VARIABLES_PER_LOOK = 16
 
-/** Costs for the coming pass: history, and fresh tie-breaks. */
-export function refreshCosts(state: ChainState, random: Random, penalty: number): void {
+/** Costs for the coming pass: history, and a fresh random part of fewer than `spread` 64ths. */
+export function refreshCosts(state: ChainState, random: Random, penalty: number, spread: number): void {
   const { base, history } = state
   for (let q = 0; q < base.length; q++)
-    base[q] = Math.floor(COST_UNIT * (1 + history[q]!)) + random.below(NEGOTIATION.tieBreaks)
+    base[q] = Math.floor(COST_UNIT * (1 + history[q]!)) + random.below(spread)
   state.setPenalty(penalty)
 }
 
@@ -103,7 +103,7 @@ export function negotiate(
       penalty = Math.min(NEGOTIATION.penaltyMost, penalty * NEGOTIATION.penaltyGrowth)
       watch.report(state.overlap, 0.5 * (1 - best / state.qubitsUsed))
     }
-    refreshCosts(state, random, penalty)
+    refreshCosts(state, random, penalty, NEGOTIATION.tieBreaks)
     const quiet = pass > 0 && state.overlap < NEGOTIATION.quietOveruse * state.qubitsUsed
     router.mostStarts = pass < NEGOTIATION.roughPasses ? 1 : NEGOTIATION.starts
     const rest = pass % NEGOTIATION.fullPassEvery === 0 ? 1 : NEGOTIATION.shareOfRest

@@ -6,6 +6,15 @@ import { placeProblem } from '../placement'
 import { Ground } from './ground'
 import type { ChainState } from './state'
 
+/**
+ * How much the middle of a full machine is stretched at the cost of its rim: ways between others lead through the
+ * middle, which would be crowded while the rim has qubits left.
+ */
+const STRETCH = 0.3
+
+/** A coordinate in (0, 1), moved away from the middle; rises from 0 to 1. */
+const stretched = (x: number): number => x - (STRETCH * Math.sin(2 * Math.PI * x)) / (2 * Math.PI)
+
 /** Estimated qubits that a variable with so many interactions takes, itself included. */
 const estimatedQubits = (degree: number): number => 0.6 * degree + 1
 
@@ -56,6 +65,19 @@ export class Seeds {
     this.machineParts = connectedParts(machine, usable)
   }
 
+  /** Estimated qubits that the variables with interactions take. */
+  get need(): number {
+    const { problem } = this
+    let need = 0
+    for (let v = 0; v < problem.order; v++) if (degreeOf(problem, v) > 0) need += estimatedQubits(degreeOf(problem, v))
+    return need
+  }
+
+  /** Usable qubits. */
+  get room(): number {
+    return this.machineParts.sizes.reduce((sum, size) => sum + size, 0)
+  }
+
   private groundOf(part: number): Ground {
     const { partOf } = this.machineParts
     const ground =
@@ -99,7 +121,8 @@ export class Seeds {
       const options = { columns, rows, effort }
       const { x, y } = placeProblem(this.problem, variables, random, options, shouldStop)
       const share = Math.sqrt(Math.min(1, (slack * need) / ground.usable))
-      for (const v of variables) state.add(v, ground.nearest(x[v]!, y[v]!, share, state.use))
+      const at = share < 1 ? (coordinate: number): number => coordinate : stretched
+      for (const v of variables) state.add(v, ground.nearest(at(x[v]!), at(y[v]!), share, state.use))
     }
   }
 }

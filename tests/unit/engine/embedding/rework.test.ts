@@ -11,7 +11,8 @@ import { createRandom } from '../../../../shared/engine/random'
 import { chimeraGraph, cycleGraph, gridGraph, regularGraph, taskOf } from '../../../fixtures/graphs'
 
 const control = { now: () => 0, cancelled: () => false, report: () => {} }
-const run = (task: EmbeddingTask, options: Partial<SearchOptions>) => findEmbedding(task, options, control)
+const run = (task: EmbeddingTask, options: Partial<SearchOptions>) =>
+  findEmbedding(task, { timeLimitSeconds: 1, ...options }, control)
 const none = (task: EmbeddingTask): Uint8Array => new Uint8Array(task.problem.order)
 
 const machine = chimeraGraph(8, 8, 4)

@@ -36,7 +36,7 @@ function search(
   options: Partial<SearchOptions>,
   usable = allOf(machine),
 ): SearchResult {
-  const result = findEmbedding(taskOf(problem, machine, usable), options, stillControl())
+  const result = findEmbedding(taskOf(problem, machine, usable), { timeLimitSeconds: 1, ...options }, stillControl())
   if (result.embedding) expect(verifyEmbedding(problem, machine, usable, result.embedding)).toEqual([])
   return result
 }
@@ -133,8 +133,8 @@ describe('findEmbedding', () => {
           (t += 1e-4)
       )(0),
     }
-    const first = search(problem, machine, { seed: 5, tries: 2 })
-    const second = findEmbedding(taskOf(problem, machine), { seed: 5, tries: 2 }, ticking)
+    const first = search(problem, machine, { seed: 5, tries: 2, timeLimitSeconds: 5 })
+    const second = findEmbedding(taskOf(problem, machine), { seed: 5, tries: 2, timeLimitSeconds: 5 }, ticking)
     expect(second.embedding).toEqual(first.embedding)
     expect(search(problem, machine, { seed: 6, tries: 2 }).embedding).not.toEqual(first.embedding)
   })
@@ -145,7 +145,11 @@ describe('findEmbedding', () => {
     for (let seed = 0; seed < 3; seed++) {
       const problem = regularGraph(40, 3, createRandom(34, seed))
       const measure = (tries: number): number[] => {
-        const stats = embeddingStats(search(problem, machine, { seed, tries }).embedding!, problem, machine)
+        const stats = embeddingStats(
+          search(problem, machine, { seed, tries, timeLimitSeconds: 0.5 * tries }).embedding!,
+          problem,
+          machine,
+        )
         return [stats.chainLength.max, stats.qubitsUsed]
       }
       const ranks = [1, 2, 3].map(measure)

@@ -16,7 +16,7 @@ const task = {
   start: null,
 }
 const settings: SearchOptions = { ...DEFAULTS, timeLimitSeconds: 60 }
-const planned = { tryNumber: 1, method: 'search' as const }
+const planned = { tryNumber: 1, method: 'search' as const, share: 1 }
 
 test('the clock of a search starts with the first of its tries that gets a thread', () => {
   const clock = newSearchClock()
