@@ -71,6 +71,7 @@ export function useLatticeTools(subject: () => ToolSubject, apply: (edit: HandEd
     } else if (chain === null) said.value = 'Pick a chain first.'
     else if (!data.usable[qubit] && variable === null) said.value = `${name} is missing: no chain can use it.`
     else {
+      overlay.value = null
       apply({ kind: variable === chain ? 'free' : 'add', variable: chain, qubit })
       said.value = variable === chain ? `${name} was freed.` : `${name} was added to ${labels[chain]}.`
     }
