@@ -1,5 +1,17 @@
 // `npm run screens`: pictures of every page into screens/, see scripts/screens/run.ts. Vite reads the TypeScript.
-import { runnerImport } from 'vite'
+import { fileURLToPath } from 'node:url'
+import { createServer } from 'vite'
 
-const { module } = await runnerImport(new URL('screens/run.ts', import.meta.url).pathname, { configFile: false })
-await module.run(process.argv.slice(2))
+const vite = await createServer({
+  configFile: false,
+  root: fileURLToPath(new URL('..', import.meta.url)),
+  appType: 'custom',
+  server: { middlewareMode: true, hmr: false, ws: false, watch: null },
+  optimizeDeps: { noDiscovery: true },
+})
+try {
+  const { run } = await vite.ssrLoadModule('/scripts/screens/run.ts')
+  await run(process.argv.slice(2))
+} finally {
+  await vite.close()
+}
