@@ -6,16 +6,10 @@ import { chainGeometry } from './geometry'
 import type { ChainGeometry } from './geometry'
 import { indexSegments, nearestSegment } from './hit-test'
 import { huesOfChains } from './hue-conflicts'
+import { NO_CHAINS } from './no-chains'
 import { boxOfSegments } from './segments'
 import type { StageSource } from './stage-types'
 import type { Box, ChainLayer, LatticeData, View } from './types'
-
-const NO_CHAINS: ChainLayer = {
-  labels: [],
-  offsets: new Uint32Array(1),
-  qubits: new Uint32Array(0),
-  neighbours: new Uint32Array(0),
-}
 
 const NOWHERE: Box = { x1: 0, y1: 0, x2: 1, y2: 1 }
 
@@ -23,6 +17,8 @@ export interface ChainView {
   readonly chains: ComputedRef<ChainLayer>
   readonly geometry: ComputedRef<ChainGeometry>
   readonly source: ComputedRef<StageSource>
+  /** The smallest box around all qubits; the bounds of the source have some room around it. */
+  readonly machine: ComputedRef<Box>
   /** Chain that holds the qubit, or −1. */
   ownerOf(qubit: number): number
   /** Qubit at a pixel of the viewport, or −1; those of chains are easier to hit than free ones. */
@@ -45,12 +41,13 @@ const REACH = { pixels: 7, lines: 1.4 }
 export function useChainView(props: ChainViewProps): ChainView {
   const chains = computed(() => props.chains ?? NO_CHAINS)
   const geometry = computed(() => chainGeometry(props.data, chains.value))
+  const machine = computed(() => boxOfSegments(props.data.segments) ?? NOWHERE)
   const source = computed<StageSource>(() => ({
     data: props.data,
     chains: chains.value,
     hues: props.hues ?? huesOfChains(props.data, chains.value),
     geometry: geometry.value,
-    bounds: padBox(boxOfSegments(props.data.segments) ?? NOWHERE, 1.5),
+    bounds: padBox(machine.value, 1.5),
   }))
   const index = computed(() => indexSegments(props.data.segments))
   const ownerOf = (qubit: number): number => geometry.value.roles.owner[qubit] ?? -1
@@ -59,6 +56,7 @@ export function useChainView(props: ChainViewProps): ChainView {
     chains,
     geometry,
     source,
+    machine,
     ownerOf,
     qubitAt({ scale, x: originX, y: originY }, x, y) {
       const reach = Math.min(REACH.lines, REACH.pixels / scale)
