@@ -115,7 +115,7 @@ export function draftSummary({ seed, tries, objective, longestChain, totalQubits
   return [
     isGiven(seed) ? `seed ${seed}` : 'no seed',
     isGiven(tries) ? formatCount(tries, 'try', 'tries') : 'no tries',
-    objective === 'longest chain' ? 'longest chain compared first' : 'total of qubits compared first',
+    objective === 'longest chain' ? 'longest chain minimised first' : 'total of qubits minimised first',
     stops.length ? `stops at ${stops.join(' and ')}` : 'no early stop',
   ].join(', ')
 }

@@ -5,8 +5,15 @@
 export function describeStackedTable(table: HTMLTableElement): void {
   table.setAttribute('role', 'table')
   for (const group of table.querySelectorAll('thead, tbody, tfoot')) group.setAttribute('role', 'rowgroup')
-  const headings = [...(table.querySelector('thead tr')?.children ?? [])].map((cell) => cell.textContent?.trim() ?? '')
+  const headings = [...(table.querySelector('thead tr')?.children ?? [])].map(wordsOf)
   for (const row of table.querySelectorAll('tr')) describeRow(row, headings)
+}
+
+/** What a heading says, without marks such as the arrow of the sorted one. */
+function wordsOf(heading: Element): string {
+  const copy = heading.cloneNode(true) as Element
+  for (const mark of copy.querySelectorAll('[aria-hidden="true"]')) mark.remove()
+  return copy.textContent?.trim() ?? ''
 }
 
 function describeRow(row: HTMLElement, headings: string[]): void {

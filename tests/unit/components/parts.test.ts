@@ -242,3 +242,20 @@ describe('UiTabs', () => {
     tabs.unmount()
   })
 })
+
+describe('UiTable, stacking', () => {
+  it('labels each cell with the words of its heading, without the arrow of the sorted one', async () => {
+    const sort = { field: 'reads', direction: 'descending' }
+    const table = mount(UiTable, {
+      props: { caption: 'Run sheets', stack: true },
+      slots: {
+        head: () => h('tr', [h('th', 'Name'), h(UiSortHead, { label: 'Reads', field: 'reads', sort, numeric: true })]),
+        default: () => h('tr', [h('th', { scope: 'row' }, 'First'), h('td', '1000')]),
+      },
+    })
+    await nextTick()
+    await nextTick()
+    expect(table.get('thead').text()).toContain('↓')
+    expect(table.get('td').attributes('data-label')).toBe('Reads')
+  })
+})

@@ -55,9 +55,9 @@ describe('the form', () => {
   })
 
   it('says in one line what is set out of sight', () => {
-    expect(draftSummary(startDraft(3))).toBe('seed 3, 8 tries, longest chain compared first, no early stop')
+    expect(draftSummary(startDraft(3))).toBe('seed 3, 8 tries, longest chain minimised first, no early stop')
     expect(draftSummary({ ...draft, seed: Number.NaN, objective: 'total qubits', totalQubits: 1 })).toBe(
-      'no seed, 8 tries, total of qubits compared first, stops at a longest chain of 6 and 1 qubit in all',
+      'no seed, 8 tries, total of qubits minimised first, stops at a longest chain of 6 and 1 qubit in all',
     )
   })
 })
