@@ -56,6 +56,7 @@ export function useGraphPicture({ graph, form, positions, isMoving, tokens }: Pi
     const close = [...around(focused), ...(hovered === focused ? [] : around(hovered))]
     const first = [focused, hovered].filter((variable) => variable !== null)
     const order = [...first, ...close.map(({ variable }) => variable), ...selected]
+    const ranked = new Set(order).size
     if (focused === null && isPlaced.value) order.push(...byDegree.value)
     const marks = {
       steps: isPlaced.value ? markSteps.value : new Int8Array(0),
@@ -73,6 +74,7 @@ export function useGraphPicture({ graph, form, positions, isMoving, tokens }: Pi
         texts: graph().labels,
         order: [...new Set(order)].filter((variable) => variable < graph().labels.length && !isHidden(variable)),
         insisting: new Set(first).size,
+        ranked,
         focused,
         isHidden,
         radius: shrinkOf(graph().labels.length) * radiusOfStep(markScale.value, markScale.value.bounds.length),

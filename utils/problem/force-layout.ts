@@ -59,7 +59,7 @@ export function createForceLayout(task: LayoutTask): ForceLayout {
     barnesHutOptimize: task.variables >= LAYOUT_DEFAULTS.groupFrom,
     barnesHutTheta: 0.6,
     edgeWeightInfluence: 1,
-    gravity: 0.08,
+    gravity: 0.05,
     linLogMode: false,
     outboundAttractionDistribution: false,
     scalingRatio: 10,

@@ -11,6 +11,8 @@ export interface GraphLabels {
   readonly order: readonly number[]
   /** The first so many are placed even where they cover others. */
   readonly insisting: number
+  /** The first so many are shown in a crowd as well. */
+  readonly ranked: number
   readonly focused: number | null
   /** Radius of the largest marks, in pixels at the scale that shows all. */
   readonly radius: number
@@ -19,7 +21,7 @@ export interface GraphLabels {
 
 /** Most labels that ask for a place in one frame. */
 const MOST = 160
-/** Marks in sight up to which labels keep off them. */
+/** Marks in sight up to which labels keep off them; among more, only labels of the focus and its partners are shown. */
 const MOST_OBSTACLES = 700
 const SIZE = { focus: 13, plain: 11 }
 
@@ -34,8 +36,10 @@ export interface LabelFrame {
 export function paintLabels(ctx: CanvasRenderingContext2D, labels: GraphLabels, frame: LabelFrame): void {
   const { view, width, height, tokens } = frame
   const requests: (LabelRequest & { readonly variable: number })[] = []
+  const obstacles = marksInSight(labels, frame)
+  const isCrowded = obstacles.length > MOST_OBSTACLES
   for (const [rank, variable] of labels.order.entries()) {
-    if (requests.length >= MOST) break
+    if (requests.length >= MOST || (isCrowded && rank >= labels.ranked)) break
     const x = view.x + view.scale * labels.positions[2 * variable]!
     const y = view.y + view.scale * labels.positions[2 * variable + 1]!
     if (x < 0 || y < 0 || x > width || y > height) continue
@@ -54,7 +58,7 @@ export function paintLabels(ctx: CanvasRenderingContext2D, labels: GraphLabels, 
     })
   }
   ctx.textBaseline = 'middle'
-  for (const { request, x, y } of placeLabels(requests, width, height, marksInSight(labels, frame))) {
+  for (const { request, x, y } of placeLabels(requests, width, height, isCrowded ? [] : obstacles)) {
     const isFocus = 'variable' in request && request.variable === labels.focused
     ctx.globalAlpha = 0.82
     ctx.fillStyle = tokens.paper
@@ -74,7 +78,7 @@ function marksInSight({ positions, radius, isHidden }: GraphLabels, { view, widt
     if (x < 0 || y < 0 || x > width || y > height || isHidden(i)) continue
     found.push({ x, y, radius })
   }
-  return found.length > MOST_OBSTACLES ? [] : found
+  return found
 }
 
 const fontOf = (isFocus: boolean): string =>

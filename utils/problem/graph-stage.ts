@@ -5,7 +5,7 @@ import { createGraphDrawing } from './graph-drawing'
 import type { GraphDrawing } from './graph-drawing'
 import { paintLabels } from './graph-label-paint'
 import type { GraphLabels } from './graph-label-paint'
-import { LINE_DEFAULTS, paintLines } from './graph-lines'
+import { lookOfLines, paintLines } from './graph-lines'
 import type { GraphLines } from './graph-lines'
 import { marksOf, shrinkOf } from './graph-marks'
 import type { MarksInput } from './graph-marks'
@@ -47,15 +47,10 @@ export function createGraphStage(
   let picture: GraphPicture | null = null
   const size = { width: elements.marks.clientWidth, height: elements.marks.clientHeight }
 
-  const all = createCachedCanvas(elements.lines, (ctx, view) => {
+  const all = createCachedCanvas(elements.lines, function* (ctx, view) {
     if (!picture) return
-    const { interactions } = picture.lines
-    const look = {
-      tokens,
-      thickness: shrinkOf(picture.marks.steps.length),
-      opaque: interactions.length <= LINE_DEFAULTS.opaqueUpTo,
-    }
-    paintLines(ctx, picture.lines, view, { ...look, dashed: interactions.length <= LINE_DEFAULTS.dashedUpTo })
+    const { lines, marks } = picture
+    yield* paintLines(ctx, lines, view, lookOfLines(lines.interactions.length, tokens, shrinkOf(marks.steps.length)))
   })
   const near = canvasOfViewport(elements.near, size)
   const labels = canvasOfViewport(elements.labels, size)
@@ -64,9 +59,8 @@ export function createGraphStage(
     if (!picture) return
     all.follow(view)
     const { lines, near: interactions } = picture
-    near((ctx) =>
-      paintLines(ctx, { ...lines, interactions }, view, { tokens, thickness: 1, dashed: true, opaque: true }),
-    )
+    const look = { tokens, thickness: 1, dashed: true, opacity: 1 }
+    near((ctx) => Array.from(paintLines(ctx, { ...lines, interactions }, view, look)))
     labels((ctx) => paintLabels(ctx, picture!.labels, { view, ...size, tokens }))
   }
 
@@ -107,7 +101,7 @@ const hasSameLines = (a: GraphLines, b: GraphLines): boolean =>
 /** Paints into a canvas as large as the viewport, cleared and sharp. */
 function canvasOfViewport(canvas: HTMLCanvasElement, size: { readonly width: number; readonly height: number }) {
   const ctx = canvas.getContext('2d')
-  return (paint: (ctx: CanvasRenderingContext2D) => void) => {
+  return (paint: (ctx: CanvasRenderingContext2D) => unknown) => {
     if (!ctx || size.width === 0) return
     const ratio = Math.min(2, window.devicePixelRatio || 1)
     const [width, height] = [Math.round(size.width * ratio), Math.round(size.height * ratio)]
