@@ -24,9 +24,11 @@ export interface PictureLayout {
 }
 
 export const PICTURE_DEFAULTS = {
-  /** Longest side of the frame around a whole machine, and bounds of the line spacing, in pixels. */
-  longestSide: 1600,
-  smallestScale: 3,
+  /** Longest side of the frame around a whole machine in pixels; more where lines would lie too close for labels. */
+  usualSide: 1600,
+  longestSide: 4000,
+  /** Line spacing at which most labels find room, and the largest there is. */
+  roomyScale: 10,
   largestScale: 24,
   /** Paper around everything; ruler beside the frame; room for the words above and below it. */
   margin: 32,
@@ -59,9 +61,10 @@ function asSeen({ seen, scale }: DrawnLattice) {
 }
 
 function asWhole(bounds: Box) {
-  const { longestSide, smallestScale, largestScale } = PICTURE_DEFAULTS
+  const { usualSide, longestSide, roomyScale, largestScale } = PICTURE_DEFAULTS
   const [lines, rows] = [bounds.x2 - bounds.x1, bounds.y2 - bounds.y1]
-  const scale = Math.min(largestScale, Math.max(smallestScale, longestSide / Math.max(lines, rows)))
+  const longest = Math.max(lines, rows)
+  const scale = Math.min(largestScale, Math.max(usualSide / longest, Math.min(roomyScale, longestSide / longest)))
   const width = Math.round(scale * lines)
   const height = Math.round(scale * rows)
   return { width, height, view: viewOfBox(bounds, width, height, 0, scale) }
