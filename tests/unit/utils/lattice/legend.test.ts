@@ -1,0 +1,39 @@
+import { describe, expect, it } from 'vitest'
+import { kindCounts, legendEntries } from '../../../../utils/lattice/legend'
+
+const plain = { lens: null, oneRead: false, hasFocus: false, missing: false, missingCouplers: false, marks: null }
+
+describe('legendEntries', () => {
+  it('lists what is drawn and no more', () => {
+    expect(legendEntries(plain).map(({ words }) => words)).toEqual(['qubit'])
+    const words = legendEntries({ ...plain, lens: 'occupancy', hasFocus: true, missing: true }).map((e) => e.words)
+    expect(words).toEqual(['chain', 'coupler carrying an interaction', 'labels', 'free', 'missing'])
+  })
+
+  it('lets everything be hidden that is a thing and not an explanation', () => {
+    const entries = legendEntries({ ...plain, lens: 'breaks', missingCouplers: true, marks: 'lost since' })
+    expect(entries.map(({ sign, kind }) => [sign, kind])).toEqual([
+      ['broken', 'breaks'],
+      ['held', undefined],
+      ['label', 'labels'],
+      ['free', 'free'],
+      ['missing-coupler', 'missingCouplers'],
+      ['marked', 'marks'],
+    ])
+    const signs = legendEntries({ ...plain, lens: 'breaks', oneRead: true }).map(({ sign }) => sign)
+    expect(signs.slice(0, 3)).toEqual(['up', 'down', 'broken'])
+  })
+})
+
+describe('kindCounts', () => {
+  it('counts a qubit that two chains want once', () => {
+    const data = { usable: Uint8Array.of(1, 1, 0, 1, 1), missingCouplers: Uint32Array.of(0, 1) }
+    expect(kindCounts(data, { qubits: Uint32Array.of(0, 1, 1) }, null)).toEqual({
+      free: 2,
+      missing: 1,
+      missingCouplers: 1,
+      marks: 0,
+    })
+    expect(kindCounts({ usable: Uint8Array.of(1) }, null, { qubits: Uint32Array.of(0), words: '' }).free).toBe(1)
+  })
+})
