@@ -127,10 +127,12 @@ export class LatticeStage {
     this.showTags()
   }
 
+  /** What was in view stays in view: the camera sees to it, and where there is none yet it is done here. */
   resize(): void {
+    const seen = this.size.width > 0 ? this.seen() : null
     if (!this.measure()) return
     this.drawing?.refresh()
-    this.follow(this.view())
+    this.follow(this.drawing || !seen ? this.view() : viewOfBox(seen, this.size.width, this.size.height, 0))
   }
 
   view(): View {
