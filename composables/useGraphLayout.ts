@@ -3,16 +3,11 @@ import type { ProblemGraph } from '~/utils/problem/graph'
 import { keepLayout, keptLayout } from '~/utils/problem/kept-layouts'
 import type { LayoutReport, LayoutRequest } from '~/workers/problem-layout'
 
-export interface LaidOutProblem {
-  readonly id: string
-  readonly fingerprint: string
-}
-
 /**
  * Positions of the variables, laid out by a worker of the browser. What was laid out before is taken up again; otherwise
  * it begins by itself.
  */
-export function useGraphLayout(problem: () => LaidOutProblem, graph: () => ProblemGraph) {
+export function useGraphLayout(problemId: () => string, graph: () => ProblemGraph) {
   const positions = shallowRef<Float32Array>(new Float32Array(0))
   const seed = ref(1)
   const made = ref(0)
@@ -20,9 +15,8 @@ export function useGraphLayout(problem: () => LaidOutProblem, graph: () => Probl
   const steps = computed(() => stepsFor(graph().labels.length))
 
   function keep() {
-    const { id, fingerprint } = problem()
-    const layout = { fingerprint, seed: seed.value, made: made.value, settled: isSettled.value }
-    if (made.value > 0) keepLayout(localStorage, id, { ...layout, positions: positions.value })
+    const layout = { fingerprint: graph().fingerprint, seed: seed.value, made: made.value, settled: isSettled.value }
+    if (made.value > 0) keepLayout(localStorage, problemId(), { ...layout, positions: positions.value })
   }
   function hear(report: LayoutReport) {
     positions.value = report.positions
@@ -42,8 +36,8 @@ export function useGraphLayout(problem: () => LaidOutProblem, graph: () => Probl
 
   /** Takes up what was kept of the problem, or begins. */
   function begin() {
-    const { id, fingerprint } = problem()
-    const kept = keptLayout(localStorage, id, { fingerprint, variables: graph().labels.length })
+    const { fingerprint, labels } = graph()
+    const kept = keptLayout(localStorage, problemId(), { fingerprint, variables: labels.length })
     if (!kept) return run(null)
     positions.value = kept.positions
     seed.value = kept.seed

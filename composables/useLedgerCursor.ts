@@ -141,6 +141,7 @@ function ledgerGestures({ cursor, position, order, pageRows, moveTo, copy }: Ges
 
   function onRowClick(event: MouseEvent, variable: number) {
     cursor.value = variable
+    if (event.currentTarget instanceof HTMLElement) event.currentTarget.focus({ preventScroll: true })
     const isAdded = event.ctrlKey || event.metaKey
     if (event.shiftKey) selection.extendTo(variable, order(), isAdded)
     else if (isAdded) selection.toggle(variable)

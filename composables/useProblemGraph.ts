@@ -13,7 +13,7 @@ export function useProblemGraph(problemId: MaybeRefOrGetter<string>) {
       const bytes = await $fetch<ArrayBuffer>(`/api/problems/${id}/graph`, { responseType: 'arrayBuffer' })
       const { meta, arrays } = unpackArrays(new Uint8Array(bytes))
       if (id !== toValue(problemId)) return
-      graph.value = markRaw({ ...arrays, labels: meta.labels as string[] } as unknown as ProblemGraph)
+      graph.value = markRaw({ ...arrays, ...meta } as unknown as ProblemGraph)
     } catch (error) {
       failure.value = failureOf(error)
     }

@@ -8,8 +8,8 @@ import { signed, signOf } from './sense'
 
 /**
  * What the problem graph is drawn from, by dense index: `rows` and `cols` of the interactions, and the coefficients of
- * both forms in the problem's own sense (`quboLinear`, `isingLinear`, `quboValues`, `isingValues`); the labels travel in
- * the header.
+ * both forms in the problem's own sense (`quboLinear`, `isingLinear`, `quboValues`, `isingValues`); the labels, the form
+ * given and the fingerprint travel in the header.
  * @throws DomainError too large for a drawing
  */
 export async function problemGraphOf(app: App, actor: Actor, id: string): Promise<Uint8Array> {
@@ -33,6 +33,6 @@ export async function problemGraphOf(app: App, actor: Actor, id: string): Promis
       quboValues: inSense(qubo.values),
       isingValues: inSense(ising.values),
     },
-    { labels },
+    { labels, form: row.form, fingerprint: row.fingerprint },
   )
 }

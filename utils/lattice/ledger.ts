@@ -54,11 +54,11 @@ export const LEDGER_DEFAULTS = {
 }
 
 const WIDTHS: Record<Exclude<LedgerColumn, 'variable'>, number> = {
-  qubits: 60,
-  couplers: 66,
-  strength: 46,
-  bound: 72,
-  breaks: 152,
+  qubits: 56,
+  couplers: 64,
+  strength: 42,
+  bound: 70,
+  breaks: 162,
   field: 74,
   coupling: 74,
   sum: 108,

@@ -3,6 +3,10 @@ import type { Form } from '#shared/engine/problem/problem'
 /** A problem as it is drawn: variables and interactions by dense index, coefficients in the problem's own sense. */
 export interface ProblemGraph {
   readonly labels: readonly string[]
+  /** Form in which the problem was given. */
+  readonly form: Form
+  /** Of the problem's content. */
+  readonly fingerprint: string
   /** Interaction k joins variables rows[k] < cols[k]. */
   readonly rows: Uint32Array
   readonly cols: Uint32Array

@@ -1,8 +1,8 @@
 import { problemGraphOf } from '../../../services/problem-graph'
 
 /**
- * The interactions and the coefficients of both forms as packed arrays (shared/packed-arrays.ts), with the labels in the
- * header; refused above the sizes of shared/problem-graph.ts.
+ * The interactions and the coefficients of both forms as packed arrays (shared/packed-arrays.ts), with labels, form
+ * and fingerprint in the header; refused above the sizes of shared/problem-graph.ts.
  */
 export default defineRoute('member', async (event, { app, ...actor }) => {
   const bytes = await problemGraphOf(app, actor, partOf(event, 'id'))
