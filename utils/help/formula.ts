@@ -13,7 +13,7 @@ export type Expr =
   /** The largest of a few values. */
   | { readonly op: 'most' | 'least'; readonly of: readonly Expr[] }
   /** Over all values of a list; symbols of lists in the body stand for one value each. */
-  | { readonly op: 'sum' | 'greatest' | 'smallest'; readonly index: string; readonly body: Expr }
+  | { readonly op: 'sum' | 'greatest'; readonly index: string; readonly body: Expr }
 
 /** `symbol = expr`. */
 export interface Formula {
@@ -36,7 +36,6 @@ export const most = (...of: Expr[]): Expr => ({ op: 'most', of })
 export const least = (...of: Expr[]): Expr => ({ op: 'least', of })
 export const sum = (index: string, body: Expr): Expr => ({ op: 'sum', index, body })
 export const greatest = (index: string, body: Expr): Expr => ({ op: 'greatest', index, body })
-export const smallest = (index: string, body: Expr): Expr => ({ op: 'smallest', index, body })
 
 function valueOf(symbol: string, values: Values, place: number | null): number {
   const value = values[symbol]
@@ -98,7 +97,7 @@ export function evaluate(expr: Expr, values: Values, sign: 1 | -1 = 1, place: nu
     default: {
       const items = Array.from({ length: lengthOf(expr.body, values) }, (_, k) => evaluate(expr.body, values, sign, k))
       if (expr.op === 'sum') return items.reduce((total, item) => total + item, 0)
-      return items.reduce((one, other) => (expr.op === 'greatest' ? Math.max(one, other) : Math.min(one, other)))
+      return Math.max(...items)
     }
   }
 }

@@ -4,7 +4,7 @@ import { isCompound } from './formula'
 
 /** Formulas set as MathML. */
 
-const FOLDS = { sum: '∑', greatest: 'max', smallest: 'min' } as const
+const FOLDS = { sum: '∑', greatest: 'max' } as const
 
 const operator = (sign: string, attributes: Record<string, string> = {}) => h('mo', attributes, sign)
 const row = (...parts: VNode[]) => h('mrow', parts)

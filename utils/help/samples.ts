@@ -57,16 +57,6 @@ export const samplesHelp = {
     sources: () => [WILSON],
     caution: rehearsalCaution,
   }),
-  plainRate: entry<Omit<Rate, 'rehearsal'>>({
-    inputs: ({ count, total, counted, of }) => [
-      { symbol: 'c', name: counted, value: count },
-      { symbol: 'N', name: of, value: total },
-    ],
-    steps: ({ format }) => [
-      { symbol: 'p', name: 'rate', expr: over('c', 'N'), show: (value) => formatPercent(value, format) },
-    ],
-    sources: () => [DEFINITION],
-  }),
   bestCount: entry<{ best: number; count: number; reads: number; rehearsal: boolean }>({
     inputs: ({ best, reads }) => [
       { symbol: 'E', name: 'best energy', value: best },

@@ -77,9 +77,3 @@ export const LUCAS: Source = {
   venue: 'Front. Phys. 2:5',
   year: 2014,
 }
-export const KIRKPATRICK: Source = {
-  author: 'Kirkpatrick, Gelatt & Vecchi',
-  title: 'Optimization by simulated annealing',
-  venue: 'Science 220:671',
-  year: 1983,
-}

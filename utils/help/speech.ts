@@ -5,7 +5,7 @@ import { isCompound } from './formula'
 
 type Names = Readonly<Record<string, string>>
 
-const FOLDS = { sum: 'the sum of', greatest: 'the largest of', smallest: 'the smallest of' } as const
+const FOLDS = { sum: 'the sum of', greatest: 'the largest of' } as const
 
 function grouped(expr: Expr, names: Names): string {
   const words = spoken(expr, names)

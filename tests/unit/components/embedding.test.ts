@@ -81,6 +81,7 @@ describe('Compare', async () => {
       props: {
         embeddings: [row(1, 5, true), row(2, 4)],
         machine: { id: 'alder', name: 'Alder' },
+        variables: 9,
         current: 'e2',
         mayChoose,
       },

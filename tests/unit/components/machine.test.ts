@@ -19,7 +19,14 @@ describe('Capacity', async () => {
   const { default: Capacity } = await import('../../../components/machine/Capacity.vue')
   const panel = (props: Partial<InstanceType<typeof Capacity>['$props']>) =>
     mount(Capacity, {
-      props: { capacity: null, failure: null, busy: false, mayAsk: true, ...props },
+      props: {
+        machine: { qubits: 7440, couplers: 71_736 },
+        capacity: null,
+        failure: null,
+        busy: false,
+        mayAsk: true,
+        ...props,
+      },
       global: { components },
     })
   const capacity: MachineCapacity = {

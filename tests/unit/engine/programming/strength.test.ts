@@ -68,7 +68,8 @@ describe('cut bounds', () => {
     for (let seed = 1; seed <= 30; seed++) {
       const density = seed % 2 ? 0.05 : 0.25
       const instance = randomInstance(seed, { order: 24, sizes: [7, 5, 4, 3, 1], density, field })
-      const { bound, exact } = cutBounds({ ...instance, ...shares })
+      const { bound, exact, splits } = cutBounds({ ...instance, ...shares })
+      expect(splits.map(({ up, down, cut }) => Math.max(0, Math.min(up, down) / cut))).toEqual([...bound])
       expect([...exact]).toEqual([1, 1, 1, 1, 1])
       for (let i = 0; i < 5; i++) expect(bound[i]).toBeCloseTo(bruteForceBound(instance, i), 10)
       if (density < 0.1) trees++

@@ -8,6 +8,8 @@ const chain = (label: string, count: number): ChainBreaks => ({
   length: 3,
   strength: 10,
   cutBound: 9,
+  cutBoundExact: true,
+  cutSplit: { up: 9, down: 12, cut: 1 },
   count,
   total: 100,
   rate: count / 100,
