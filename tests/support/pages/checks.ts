@@ -21,8 +21,13 @@ declare global {
 /** Waits until the page is hydrated, nothing of it is still being loaded, and fonts are there. */
 export async function settled(page: Page): Promise<void> {
   await page.waitForFunction(() => window.useNuxtApp?.().isHydrating === false)
-  await page.waitForFunction(() => !document.querySelector('main [aria-busy="true"]'))
-  await page.evaluate(() => document.fonts.ready.then(() => undefined))
+  // Some parts are loaded once they come into view.
+  await page.waitForFunction(() => {
+    const busy = document.querySelector('main [aria-busy="true"]')
+    busy?.scrollIntoView({ block: 'center' })
+    return !busy
+  })
+  await page.evaluate(() => document.fonts.ready.then(() => window.scrollTo(0, 0)))
   await twoFrames(page)
 }
 
