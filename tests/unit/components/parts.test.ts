@@ -245,7 +245,7 @@ describe('UiTabs', () => {
 
 describe('UiTable, stacking', () => {
   it('labels each cell with the words of its heading, without the arrow of the sorted one', async () => {
-    const sort = { field: 'reads', direction: 'descending' }
+    const sort = { field: 'reads', direction: 'descending' as const }
     const table = mount(UiTable, {
       props: { caption: 'Run sheets', stack: true },
       slots: {

@@ -62,6 +62,7 @@ class CapacitySearch {
   private fitter(order: number): Fitter {
     const attempt: Attempt = {
       random: createRandom(this.seed, order),
+      seconds: 0,
       watch: this.watch,
       objective: 'longest chain',
       kernel: 'plain',

@@ -23,6 +23,7 @@ function run(task: EmbeddingTask, seed: number, cancelAt = Infinity): Outcome {
   const offers: Embedding[] = []
   const partial = assignLines(task, {
     random: createRandom(seed),
+    seconds: 0.1,
     objective: 'total qubits',
     kernel: 'plain',
     watch: new Watch(control, 'lines', 1, 1),

@@ -34,6 +34,7 @@ export function attemptOn(task: EmbeddingTask, seed = 1, looks = Infinity): { at
   const cancelled = (): boolean => ++looked > looks
   const attempt: Attempt = {
     random: createRandom(seed, 1),
+    seconds: 0.1,
     watch: new Watch({ now: () => 0, cancelled, report: () => {} }, 'template', 1, Infinity),
     objective: 'longest chain',
     kernel: 'plain',

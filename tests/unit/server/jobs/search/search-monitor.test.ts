@@ -2,7 +2,7 @@ import { expect, test } from 'vitest'
 import { SearchMonitor } from '../../../../../server/jobs/search/search-monitor'
 import type { SearchProgress } from '../../../../../shared/engine/embedding/progress'
 
-const planned = (tryNumber: number) => ({ tryNumber, method: 'search' as const })
+const planned = (tryNumber: number) => ({ tryNumber, method: 'search' as const, share: 1 })
 
 const progressOf = (tryNumber: number, rest: Partial<SearchProgress> = {}): SearchProgress => ({
   method: 'search',

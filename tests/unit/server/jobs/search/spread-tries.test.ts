@@ -4,11 +4,12 @@ import type { StopReason } from '../../../../../shared/engine/embedding/progress
 import type { TryResult } from '../../../../../shared/engine/embedding/tries'
 
 const planOf = (tries: number) =>
-  Array.from({ length: tries }, (_, k) => ({ tryNumber: k + 1, method: 'search' as const }))
+  Array.from({ length: tries }, (_, k) => ({ tryNumber: k + 1, method: 'search' as const, share: 1 }))
 
 const resultOf = (tryNumber: number, stopped: StopReason | null = null): TryResult => ({
   tryNumber,
   method: 'search',
+  share: 1,
   embedding: null,
   quality: null,
   partial: null,
