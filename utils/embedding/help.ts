@@ -3,7 +3,7 @@ import type { FoundEmbedding } from './compare'
 import type { EmbeddingChains } from './layers'
 import type { HelpCase } from '../help/registry'
 import type { LatticeData } from '../lattice/types'
-import { formatNumber } from '../format'
+import { formatNumber, THIN_SPACE } from '../format'
 
 /** How the columns in which embeddings are compared are computed, embedding by embedding. */
 export function compareCases(rows: readonly FoundEmbedding[], chains: number) {
@@ -32,7 +32,7 @@ export function sumCases(
   if (!bounds) return []
   const sums = new Map<number, number>()
   for (const [a, b, J] of programmed.J) for (const id of [a, b]) sums.set(id, (sums.get(id) ?? 0) + J)
-  const show = (share: number) => `${formatNumber(100 * share, { decimals: 0 })}\u2009%`
+  const show = (share: number) => `${formatNumber(100 * share, { decimals: 0 })}${THIN_SPACE}%`
   return labels.map((label, i) => {
     const own = [...qubits.subarray(offsets[i], offsets[i + 1])].map((q) => sums.get(lattice.ids[q]!) ?? 0)
     const fullest = own.reduce((most, sum) => (share(sum, bounds) > share(most, bounds) ? sum : most), 0)

@@ -2,7 +2,7 @@ import type { Expr, Formula } from './formula'
 import { evaluate, isTwofold } from './formula'
 import { spokenFormula } from './speech'
 import type { Source } from './sources'
-import { formatInterval, formatNumber } from '../format'
+import { formatInterval, formatNumber, THIN_SPACE } from '../format'
 
 /** A number that went into a formula. Several values at once are a list. */
 export interface HelpInput {
@@ -74,7 +74,7 @@ function textOf(values: readonly number[], show: (value: number) => string): str
   if (high === undefined) return show(low!)
   // Both ends bear the unit of the format, such as %: it is said once.
   const percent = show(low!).endsWith('%')
-  return percent ? `${formatInterval(100 * low!, 100 * high)}\u2009%` : formatInterval(low, high)
+  return percent ? `${formatInterval(100 * low!, 100 * high)}${THIN_SPACE}%` : formatInterval(low, high)
 }
 
 /** The explanation of one number: formulas worked out from the inputs, one after the other. */

@@ -24,7 +24,7 @@ import {
   scaleLimitOf,
 } from '../../../../server/services/programming'
 import { embeddingFacts } from '../../../../utils/embedding/facts'
-import { formatPercent, formatSignificant } from '../../../../utils/format'
+import { formatPercent, formatSignificant, THIN_SPACE } from '../../../../utils/format'
 import { explain } from '../../../../utils/help/registry'
 import { machineFacts } from '../../../../utils/machine/facts'
 import { problemFacts } from '../../../../utils/problem/reading'
@@ -271,7 +271,7 @@ describe('numbers of samples', () => {
     expect(agreeing(facts)).toEqual(['Best energy', 'Reads with a break', 'Chain reads broken', 'Ties'])
     const withBreak = facts.find(({ label }) => label === 'Reads with a break')!
     const { steps, caution } = explain(withBreak.help!)
-    expect(steps.at(-1)!.value).toBe(`${withBreak.note}\u2009%`)
+    expect(steps.at(-1)!.value).toBe(`${withBreak.note}${THIN_SPACE}%`)
     const { low, high } = wilson(count, total)
     expect(steps.at(-1)!.values[0]).toBeCloseTo(low, 11)
     expect(steps.at(-1)!.values[1]).toBeCloseTo(high, 11)

@@ -66,6 +66,31 @@ describe('chartTable', () => {
   })
 })
 
+describe('units', () => {
+  it('stand in the headings, and bars that hold a stretch of values say so', () => {
+    const sizes: ChartInput = {
+      kind: 'bar',
+      title: 'Sizes',
+      x: { label: 'size of a programmed J', unit: 'programmed units' },
+      y: { label: 'couplers' },
+      binWidth: 0.25,
+      series: [
+        {
+          name: 'couplers',
+          points: [
+            { x: 0.125, y: 3 },
+            { x: 0.375, y: 1 },
+          ],
+        },
+      ],
+    }
+    expect(chartCsv(sizes).split('\r\n')[0]).toBe(
+      '"size of a programmed J, programmed units, middle of bars of 0.25",couplers',
+    )
+    expect(chartTable({ ...sizes, binWidth: 1 }).headings[0]).toBe('size of a programmed J, programmed units')
+  })
+})
+
 describe('chartCsv', () => {
   it('gives plain numbers, empty fields for missing ones, and quotes where needed', () => {
     const lines = chartCsv(scan).split('\r\n')

@@ -19,6 +19,13 @@ describe('logTicks', () => {
   })
 })
 
+describe('logTicks with little room', () => {
+  it('are evenly thinned, down to one a decade', () => {
+    expect(logTicks(0.03, 3, 5)).toEqual([0.03, 0.1, 0.3, 1, 3])
+    expect(logTicks(0.03, 3, 4)).toEqual([0.1, 1])
+  })
+})
+
 describe('wholeTicks', () => {
   it('ticks every whole number when they are few', () => {
     expect(wholeTicks([0, 1, 2, 5])).toEqual([0, 1, 2, 3, 4, 5])
