@@ -34,11 +34,28 @@ export const centred = ({ scale }: View, { width, height }: Extent, at: { x: num
 
 const middle = (box: Box) => ({ x: (box.x1 + box.x2) / 2, y: (box.y1 + box.y2) / 2 })
 
-/** The view moved so that the box is in its middle, or null when a part of the box is in sight already. */
-export function broughtIntoSight(view: View, extent: Extent, box: Box): View | null {
+const around = (boxes: readonly Box[]): Box => ({
+  x1: Math.min(...boxes.map((box) => Math.min(box.x1, box.x2))),
+  y1: Math.min(...boxes.map((box) => Math.min(box.y1, box.y2))),
+  x2: Math.max(...boxes.map((box) => Math.max(box.x1, box.x2))),
+  y2: Math.max(...boxes.map((box) => Math.max(box.y1, box.y2))),
+})
+
+/** Pixels of the edge of the viewport in which a thing does not count as in sight. */
+const BLIND_EDGE = 8
+
+/** The view moved so that the parts are around its middle, or null when one of them is in sight already. */
+export function broughtIntoSight(view: View, extent: Extent, parts: readonly Box[]): View | null {
   const seen = seenBox(view, extent)
-  const isInSight = seen.x1 < box.x2 && seen.x2 > box.x1 && seen.y1 < box.y2 && seen.y2 > box.y1
-  return isInSight ? null : centred(view, extent, middle(box))
+  const edge = BLIND_EDGE / view.scale
+  const isInSight = parts.some(
+    (part) =>
+      seen.x1 + edge < Math.max(part.x1, part.x2) &&
+      seen.x2 - edge > Math.min(part.x1, part.x2) &&
+      seen.y1 + edge < Math.max(part.y1, part.y2) &&
+      seen.y2 - edge > Math.min(part.y1, part.y2),
+  )
+  return isInSight || parts.length === 0 ? null : centred(view, extent, middle(around(parts)))
 }
 
 export const REVEAL_DEFAULTS = {

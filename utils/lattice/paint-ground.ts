@@ -18,19 +18,29 @@ export function* paintGround(
   { width, height }: { readonly width: number; readonly height: number },
 ): Generator<void> {
   const showsFree = !ground.hiddenKinds?.has('free')
-  if (isOfPoints(ground.data)) {
-    if (showsFree && view.scale < GROUND_DEFAULTS.dotsFrom) paintField(ctx, ground, view)
-  } else {
-    if (showsFree) paintFreeSegments(ctx, ground, view, width, height)
-    yield
-    paintTails(ctx, ground, view, width, height)
-  }
+  const points = isOfPoints(ground.data)
+  const isFar = view.scale < GROUND_DEFAULTS.dotsFrom
+  if (showsFree && (isFar || !points)) yield* paintFabric(ctx, ground, view, { width, height })
+  if (!points) paintTails(ctx, ground, view, width, height)
   yield
   if (showsFree && view.scale >= GROUND_DEFAULTS.couplersFrom) paintCouplers(ctx, ground, view, width, height)
   yield
   if (showsFree) paintDots(ctx, ground, view, width, height)
   yield
-  paintMissing(ctx, ground, view, width, height)
+  // From afar the holes in the field tell where qubits are missing: squares around them would be all that one sees.
+  if (!points || !isFar) paintMissing(ctx, ground, view, width, height)
+}
+
+/** The qubits alone: lines, or a field of points. */
+export function* paintFabric(
+  ctx: Canvas2D,
+  ground: Ground,
+  view: View,
+  { width, height }: { readonly width: number; readonly height: number },
+): Generator<void> {
+  if (isOfPoints(ground.data)) paintField(ctx, ground, view)
+  else paintFreeSegments(ctx, ground, view, width, height)
+  yield
 }
 
 /** Lattices of points from afar: every run of working qubits in a row as one stripe, with holes where some are missing. */

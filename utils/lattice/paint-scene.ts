@@ -2,9 +2,10 @@ import { bandWidth } from './framing'
 import { paintEdges } from './paint-edges'
 import type { Canvas2D } from './paint-edges'
 import { paintMarks } from './paint-marks'
+import { isOfPoints } from './scene'
 import type { Scene, SceneEdge, SceneNode } from './scene-types'
 import type { Tokens } from './tokens'
-import type { Box, View } from './types'
+import type { Box, LatticeData, View } from './types'
 
 /** A scene sorted into levels, ready to be painted at any zoom. */
 export interface LevelledScene {
@@ -22,20 +23,36 @@ export function levelScene({ edges, nodes }: Pick<Scene, 'edges' | 'nodes'>): Le
   return { levels: [...levels].sort(([a], [b]) => a - b).map(([, level]) => level), nodes }
 }
 
-/**
- * Paints the scene on a canvas of the given size in pixels; yields between steps so that the caller may pause.
- *
- * @param most largest radius of a mark in pixels
- */
+export interface SceneScale {
+  /** Size of the canvas in pixels. */
+  readonly width: number
+  readonly height: number
+  /** Width of a band, and largest radius of a mark, in pixels. */
+  readonly bandPixels: number
+  readonly largestMark: number
+}
+
+/** Marks of neighbouring qubits of a lattice of points stay apart when seen from afar. */
+export const sceneScale = (
+  data: Pick<LatticeData, 'segments'>,
+  { scale }: View,
+  { width, height }: { readonly width: number; readonly height: number },
+): SceneScale => ({
+  width,
+  height,
+  bandPixels: bandWidth(scale),
+  largestMark: isOfPoints(data) ? 0.46 * scale : Infinity,
+})
+
+/** Paints the scene; yields between steps so that the caller may pause. */
 export function* paintScene(
   ctx: Canvas2D,
   { levels, nodes }: LevelledScene,
   view: View,
-  size: { readonly width: number; readonly height: number },
-  most: number,
+  size: SceneScale,
   tokens: Tokens,
 ): Generator<void> {
-  const bandPixels = bandWidth(view.scale)
+  const { bandPixels } = size
   const seen = seenBox(view, size, bandPixels)
   for (const level of levels) {
     paintEdges(
@@ -48,7 +65,7 @@ export function* paintScene(
     yield
   }
   const near = nodes.filter(({ x, y }) => isSeen({ x1: x, y1: y, x2: x, y2: y }, seen))
-  paintMarks(ctx, near, view, bandPixels, most, tokens)
+  paintMarks(ctx, near, view, bandPixels, size.largestMark, tokens)
 }
 
 /** What the canvas shows, in line spacings, with room for the width of a band. */

@@ -3,10 +3,10 @@ import { chainGeometry } from './geometry'
 import type { ChainGeometry } from './geometry'
 import type { Ground } from './ground'
 import type { Canvas2D } from './paint-edges'
-import { paintGround } from './paint-ground'
-import { levelScene, paintScene } from './paint-scene'
+import { paintFabric, paintGround } from './paint-ground'
+import { levelScene, paintScene, sceneScale } from './paint-scene'
 import type { LevelledScene } from './paint-scene'
-import { buildScene, isOfPoints } from './scene'
+import { buildScene } from './scene'
 import type { SceneInput } from './scene-types'
 import { tailsOf } from './tails'
 import type { ChainLayer, LatticeData, MarkLayer, View } from './types'
@@ -29,8 +29,11 @@ export interface PictureRequest {
   readonly width: number
   readonly height: number
   readonly ratio: number
-  /** Paints the chain in focus too, which is else left to a layer above. */
-  readonly whole: boolean
+  /**
+   * `rest` leaves the chain in focus to a layer above; `whole` paints it too; `map` is the whole in thin strokes, by
+   * occupancy and without marks, for a picture in which one line spacing is less than a pixel.
+   */
+  readonly kind: 'rest' | 'whole' | 'map'
 }
 
 /** Everything but the tags and the ruler, ready to be painted from any point of view. */
@@ -41,27 +44,35 @@ export interface Picture {
   paint(ctx: Canvas2D, request: PictureRequest): Generator<void>
 }
 
+/** Width of a band in a map. */
+const MAP_BAND_PIXELS = 1.1
+
+function sceneInput(kind: PictureRequest['kind'], input: SceneInput): SceneInput {
+  if (kind === 'rest') return { ...input, part: 'rest' }
+  return kind === 'map' ? { ...input, lens: 'occupancy', hiddenKinds: new Set(['couplers']) } : input
+}
+
 export function createPicture(): Picture {
   let source: (PictureSource & { geometry: ChainGeometry; used: Uint8Array }) | null = null
   let look: PictureLook | null = null
   let ground: Ground | null = null
-  const scenes = new Map<boolean, LevelledScene>()
+  const scenes = new Map<PictureRequest['kind'], LevelledScene>()
   const forget = () => {
     ground = null
     scenes.clear()
   }
 
   /** Works out what is to be painted, once for all points of view. */
-  const prepare = (whole: boolean) => {
+  const prepare = (kind: PictureRequest['kind']) => {
     if (!source || !look) return null
     const input = { ...source, ...look }
     ground ??= { ...input, tails: tailsOf(input) }
-    let scene = scenes.get(whole)
+    let scene = scenes.get(kind)
     if (!scene) {
-      scene = levelScene(buildScene(whole ? input : { ...input, part: 'rest' }))
-      scenes.set(whole, scene)
+      scene = levelScene(buildScene(sceneInput(kind, input)))
+      scenes.set(kind, scene)
     }
-    return { ground, scene, tokens: look.tokens, areMarksApart: isOfPoints(source.data) }
+    return { ground, scene, tokens: look.tokens }
   }
 
   return {
@@ -74,17 +85,21 @@ export function createPicture(): Picture {
       look = next
       forget()
     },
-    *paint(ctx, { view, width, height, ratio, whole }) {
-      const prepared = prepare(whole)
+    *paint(ctx, { view, width, height, ratio, kind }) {
+      const prepared = prepare(kind)
       if (!prepared) return
-      const { tokens, scene, areMarksApart } = prepared
+      const { tokens, scene } = prepared
       yield
       ctx.setTransform(ratio, 0, 0, ratio, 0, 0)
       ctx.fillStyle = tokens.paper
       ctx.fillRect(0, 0, width, height)
-      yield* paintGround(ctx, prepared.ground, view, { width, height })
+      const size = { width, height }
+      yield* kind === 'map'
+        ? paintFabric(ctx, prepared.ground, view, size)
+        : paintGround(ctx, prepared.ground, view, size)
       yield
-      yield* paintScene(ctx, scene, view, { width, height }, areMarksApart ? 0.46 * view.scale : Infinity, tokens)
+      const sizes = sceneScale(prepared.ground.data, view, size)
+      yield* paintScene(ctx, scene, view, kind === 'map' ? { ...sizes, bandPixels: MAP_BAND_PIXELS } : sizes, tokens)
     },
   }
 }

@@ -2,7 +2,7 @@ import { mapSize } from './camera-moves'
 import { boxNow, covers, isSameView, isUsedUp, marginOf } from './painted-view'
 import type { Painted } from './painted-view'
 import type { Painter } from './painter'
-import type { PictureLook, PictureSource } from './picture'
+import type { PictureLook, PictureRequest, PictureSource } from './picture'
 import type { Box, View } from './types'
 
 export interface RasterEvents {
@@ -134,7 +134,7 @@ export class RasterLayer {
     const [width, height] = [this.size.width + 2 * marginX, this.size.height + 2 * marginY]
     this.isStale = false
     const next = { view, marginX, marginY, width, height, ratio: this.isResting ? restRatio() : 1 }
-    const bitmap = await this.paint(next, false)
+    const bitmap = await this.paint(next, 'rest')
     if (this.isOver) return bitmap.close()
     this.screen?.transferFromImageBitmap(bitmap)
     this.front.style.width = `${width}px`
@@ -147,7 +147,7 @@ export class RasterLayer {
   private async paintOverview(): Promise<void> {
     this.isOverviewStale = false
     const next = this.wholeMachine(RASTER_DEFAULTS.overview, 1)
-    const bitmap = await this.paint(next, true)
+    const bitmap = await this.paint(next, 'whole')
     if (this.isOver) return bitmap.close()
     this.back.width = next.width
     this.back.height = next.height
@@ -159,7 +159,7 @@ export class RasterLayer {
 
   private async paintMap(): Promise<void> {
     this.isMapStale = false
-    const bitmap = await this.paint(this.wholeMachine(RASTER_DEFAULTS.map, restRatio()), true)
+    const bitmap = await this.paint(this.wholeMachine(RASTER_DEFAULTS.map, restRatio()), 'map')
     if (this.isOver) bitmap.close()
     else this.events.onMap(bitmap)
   }
@@ -170,10 +170,10 @@ export class RasterLayer {
     return { view, width, height, marginX: 0, marginY: 0, ratio }
   }
 
-  private paint(painted: Painted, whole: boolean): Promise<ImageBitmap> {
+  private paint(painted: Painted, kind: PictureRequest['kind']): Promise<ImageBitmap> {
     const { view, marginX, marginY, width, height, ratio } = painted
     const shifted = { scale: view.scale, x: view.x + marginX, y: view.y + marginY }
-    return this.painter.paint({ view: shifted, width, height, ratio, whole })
+    return this.painter.paint({ view: shifted, width, height, ratio, kind })
   }
 }
 

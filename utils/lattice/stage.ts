@@ -158,8 +158,9 @@ export class LatticeStage {
     this.showTags()
   }
 
-  bringIntoSight(box: Box, milliseconds = 0): void {
-    const view = broughtIntoSight(this.view(), this.size, box)
+  /** @param parts boxes one of which must be in sight */
+  bringIntoSight(parts: readonly Box[], milliseconds = 0): void {
+    const view = broughtIntoSight(this.view(), this.size, parts)
     if (view) this.moveTo(view, milliseconds)
   }
 

@@ -3,11 +3,8 @@ import './globals'
 import '../../../assets/css/main.css'
 import { createPinia } from 'pinia'
 import { createApp, h, shallowRef } from 'vue'
-import LatticeLegend from '../../../components/lattice/LatticeLegend.vue'
+import type { Component } from 'vue'
 import LatticeView from '../../../components/lattice/LatticeView.client.vue'
-import LatticeLensPicker from '../../../components/lattice/LensPicker.vue'
-import LatticeMinimap from '../../../components/lattice/Minimap.vue'
-import LatticeToolbar from '../../../components/lattice/Toolbar.vue'
 import { useSelectionStore } from '../../../stores/selection'
 import { buildCase, CASES } from '../cases'
 import type { BuiltCase } from '../cases'
@@ -18,10 +15,12 @@ const app = createApp({
   render: () => (shown.value ? h(LatticeView, { ...shown.value, aspect: 0.92, maxHeight: 760 }) : null),
 })
 app.use(createPinia())
-app.component('LatticeLegend', LatticeLegend)
-app.component('LatticeLensPicker', LatticeLensPicker)
-app.component('LatticeMinimap', LatticeMinimap)
-app.component('LatticeToolbar', LatticeToolbar)
+// As Nuxt names them: by folder, which is not said twice.
+const parts = import.meta.glob<{ default: Component }>('../../../components/lattice/*.vue', { eager: true })
+for (const [path, part] of Object.entries(parts)) {
+  const name = path.slice(path.lastIndexOf('/') + 1).replace(/(\.client)?\.vue$/, '')
+  app.component(name.startsWith('Lattice') ? name : `Lattice${name}`, part.default)
+}
 app.mount('#app')
 
 let built: BuiltCase | null = null

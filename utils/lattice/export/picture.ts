@@ -4,9 +4,9 @@ import type { Canvas2D } from '../paint-edges'
 import { paintGround } from '../paint-ground'
 import { paintOverlay } from '../paint-overlay'
 import { paintRulerLeft, paintRulerTop } from '../paint-ruler'
-import { levelScene, paintScene } from '../paint-scene'
+import { levelScene, paintScene, sceneScale } from '../paint-scene'
 import { paintTag } from '../paint-tags'
-import { buildScene, isOfPoints } from '../scene'
+import { buildScene } from '../scene'
 import { overlayOf, tagInputOf } from '../tag-input'
 import { requestTags, tagBands } from '../tag-requests'
 import { tailsOf } from '../tails'
@@ -83,14 +83,14 @@ function paintFramed(
   const size = { width: frame.x2 - frame.x1, height: frame.y2 - frame.y1 }
   const input = { ...source, ...look }
   const used = Uint8Array.from(source.geometry.roles.owner, (chain) => (chain < 0 ? 0 : 1))
-  const most = isOfPoints(source.data) ? 0.46 * view.scale : Infinity
+  const scale = sceneScale(source.data, view, size)
   ctx.save()
   ctx.beginPath()
   ctx.rect(frame.x1, frame.y1, size.width, size.height)
   ctx.clip()
   ctx.translate(frame.x1, frame.y1)
   group('machine', () => drain(paintGround(ctx, { ...input, used, tails: tailsOf(input) }, view, size)))
-  group('chains', () => drain(paintScene(ctx, levelScene(buildScene(input)), view, size, most, look.tokens)))
+  group('chains', () => drain(paintScene(ctx, levelScene(buildScene(input)), view, scale, look.tokens)))
   if (look.overlay) {
     const overlay = overlayOf(source, look.overlay)
     group('pointed-out', () => paintOverlay(ctx, overlay, view, look.tokens))

@@ -36,10 +36,21 @@ describe('zooming and centring', () => {
 
 describe('bringing into sight', () => {
   it('leaves alone what is in sight in part, and centres the rest without zooming', () => {
-    expect(broughtIntoSight(view, extent, { x1: 0, y1: 0, x2: 21, y2: 11 })).toBeNull()
-    const moved = broughtIntoSight(view, extent, { x1: 90, y1: 60, x2: 94, y2: 70 })!
+    const [inSight, away] = [
+      { x1: 22, y1: 30, x2: 0, y2: 30 },
+      { x1: 94, y1: 60, x2: 90, y2: 60 },
+    ]
+    expect(broughtIntoSight(view, extent, [away, inSight])).toBeNull()
+    const moved = broughtIntoSight(view, extent, [away, { x1: 90, y1: 60, x2: 90, y2: 70 }])!
     expect(moved.scale).toBe(10)
     expect(under(moved, 300, 200)).toEqual([92, 65])
+    // The box around both parts reaches through the viewport, yet neither is in it.
+    const corner = [
+      { x1: 0, y1: 60, x2: 90, y2: 60 },
+      { x1: 90, y1: 0, x2: 90, y2: 60 },
+    ]
+    expect(broughtIntoSight(view, extent, corner)).not.toBeNull()
+    expect(broughtIntoSight(view, extent, [])).toBeNull()
   })
 
   it('reveals all of a box: still where it is seen already, nearer where it is small, farther where it is large', () => {

@@ -2,7 +2,7 @@ import { describe, expect, it } from 'vitest'
 import { assignHues } from '../../../../utils/hues'
 import type { Canvas2D } from '../../../../utils/lattice/paint-edges'
 import { createPicture } from '../../../../utils/lattice/picture'
-import type { PictureLook } from '../../../../utils/lattice/picture'
+import type { PictureLook, PictureRequest } from '../../../../utils/lattice/picture'
 import { readTokens } from '../../../../utils/lattice/tokens'
 import { HAND_DRAWN, latticeOf, layerOf } from './small-lattice'
 
@@ -32,12 +32,15 @@ function countingCanvas() {
   return { ctx: ctx as unknown as Canvas2D, fills }
 }
 
-function paint(look: Partial<PictureLook>, { data = HAND_DRAWN, whole = false, scale = 20, x = 30, y = 40 } = {}) {
+function paint(
+  look: Partial<PictureLook>,
+  { data = HAND_DRAWN, kind = 'rest' as PictureRequest['kind'], scale = 20, x = 30, y = 40 } = {},
+) {
   const picture = createPicture()
   picture.of({ data, chains: data === HAND_DRAWN ? chains : layerOf([], []), hues })
   picture.show({ ...PLAIN, ...look })
   const { ctx, fills } = countingCanvas()
-  const steps = [...picture.paint(ctx, { view: { scale, x, y }, width: 300, height: 200, ratio: 1, whole })].length
+  const steps = [...picture.paint(ctx, { view: { scale, x, y }, width: 300, height: 200, ratio: 1, kind })].length
   return { fills, steps, of: (colour: string) => fills.get(colour) ?? 0 }
 }
 
@@ -53,7 +56,7 @@ describe('the picture of the lattice', () => {
   it('leaves the chain in focus to the layer above, unless the whole is asked for', () => {
     // Its thin line beneath the bands stays in the picture, one for each of its qubits.
     expect(paint({ focused: 2 }).of(hueOf(2))).toBe(1)
-    expect(paint({ focused: 2 }, { whole: true }).of(hueOf(2))).toBeGreaterThan(1)
+    expect(paint({ focused: 2 }, { kind: 'whole' }).of(hueOf(2))).toBeGreaterThan(1)
   })
 
   it('takes the hue from chains that step back, whether by focus, selection or legend', () => {

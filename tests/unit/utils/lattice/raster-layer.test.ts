@@ -58,15 +58,15 @@ afterEach(() => {
 describe('the raster layer', () => {
   it('asks for the view with a margin first, then for the map and the whole machine, one at a time', async () => {
     const { asked, waiting, events, deliver, deliverAll } = setUp()
-    expect(asked).toEqual([{ view: { scale: 8, x: 140, y: 105 }, width: 680, height: 510, ratio: 2, whole: false }])
+    expect(asked).toEqual([{ view: { scale: 8, x: 140, y: 105 }, width: 680, height: 510, ratio: 2, kind: 'rest' }])
     expect(waiting).toHaveLength(1)
     await deliver()
     expect(events.onPainted).toHaveBeenCalledOnce()
     await deliverAll()
-    expect(asked.map(({ width, whole }) => [width, whole])).toEqual([
-      [680, false],
-      [RASTER_DEFAULTS.map, true],
-      [RASTER_DEFAULTS.overview, true],
+    expect(asked.map(({ width, kind }) => [width, kind])).toEqual([
+      [680, 'rest'],
+      [RASTER_DEFAULTS.map, 'map'],
+      [RASTER_DEFAULTS.overview, 'whole'],
     ])
     expect(events.onMap).toHaveBeenCalledOnce()
   })
