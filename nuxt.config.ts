@@ -22,6 +22,12 @@ export default defineNuxtConfig({
   ignore: ['.data/**', '.data-*/**', '.bench/**', 'coverage/**', 'screens/**', 'docs/**', 'bench/**', 'tests/**'],
   // Code of a linked page is fetched when the link is pointed at or focused, not as soon as it is seen.
   experimental: { defaults: { nuxtLink: { prefetchOn: { visibility: false, interaction: true } } } },
+  hooks: {
+    // What may be needed later, such as a dialog, is fetched when it is, not in the wake of every page.
+    'build:manifest'(manifest) {
+      for (const file of Object.values(manifest)) if (file.resourceType === 'script') file.prefetch = false
+    },
+  },
   runtimeConfig: { session: { cookie: { secure: true } } },
   routeRules: {
     '/**': {
