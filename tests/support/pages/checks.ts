@@ -23,7 +23,8 @@ export async function settled(page: Page): Promise<void> {
   await page.waitForFunction(() => window.useNuxtApp?.().isHydrating === false)
   // Some parts are loaded once they come into view.
   await page.waitForFunction(() => {
-    const busy = document.querySelector('main [aria-busy="true"]')
+    const waiting = [...document.querySelectorAll('main [aria-busy="true"]')]
+    const busy = waiting.find((part) => part.checkVisibility())
     busy?.scrollIntoView({ block: 'center' })
     return !busy
   })
@@ -43,7 +44,7 @@ export async function unfold(page: Page): Promise<void> {
     const folded = 'main button[aria-expanded="false"]:not([aria-haspopup]):not(:disabled)'
     for (const button of document.querySelectorAll<HTMLButtonElement>(folded)) button.click()
   })
-  await twoFrames(page)
+  await settled(page)
 }
 
 /** Rules about colours, the only ones that a theme can break. */
