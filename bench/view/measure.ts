@@ -14,6 +14,8 @@ export interface Measured {
   readonly name: string
   readonly size: { readonly qubits: number; readonly couplers: number; readonly chains: number }
   readonly firstPaint: number
+  /** Milliseconds from the data's arrival until the pointer can move the picture. */
+  readonly ready: number
   readonly gestures: readonly Gesture[]
 }
 
@@ -26,6 +28,9 @@ interface Frame {
 
 /** Pace of the pointer: about one event a frame. */
 const PACE = 16
+
+/** Pause after the start and after a change, so that each gesture is measured by itself. */
+const SETTLING = 1000
 
 const middleOf = ({ x, y, width, height }: Frame) => ({ x: x + width / 2, y: y + height / 2 })
 
@@ -84,7 +89,8 @@ async function throwAbout(page: Page, frame: Frame): Promise<void> {
 export async function measureCase(page: Page, { name }: ViewCase): Promise<Measured> {
   const size = await page.evaluate((wanted) => bench.prepare(wanted), name)
   const firstPaint = await page.evaluate(() => bench.firstPaint())
-  await page.waitForTimeout(1000)
+  const ready = await page.evaluate(() => bench.ready())
+  await page.waitForTimeout(SETTLING)
   const frame = (await page.locator('[data-lattice-frame]').boundingBox())!
   const gestures: Gesture[] = []
   const record = async (gesture: string, act: () => Promise<void>) => {
@@ -96,7 +102,7 @@ export async function measureCase(page: Page, { name }: ViewCase): Promise<Measu
   await record('zoom', () => wheel(page, frame, 8))
   await record('far pan, close', () => throwAbout(page, frame))
   await page.evaluate(() => bench.selection.focus(3))
-  await page.waitForTimeout(800)
+  await page.waitForTimeout(SETTLING)
   await record('pan, chain in focus', () => drag(page, frame, 2))
-  return { name, size, firstPaint, gestures }
+  return { name, size, firstPaint, ready, gestures }
 }

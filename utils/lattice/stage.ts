@@ -30,6 +30,8 @@ import type { Box, View } from './types'
 
 export interface StageEvents {
   onPainted(): void
+  /** The camera follows the pointer from now on. */
+  onReady(): void
   /** A new map of the whole machine, the receiver's to close. */
   onMap(map: ImageBitmap): void
   onView(state: StageView): void
@@ -68,6 +70,7 @@ export class LatticeStage {
   private held: View = { scale: 1, x: 0, y: 0 }
   private readonly drawingModule = import('./drawing')
   private isKilled = false
+  private isCameraAwaited = false
   private corner: Corner = 'bottom right'
 
   constructor(
@@ -77,7 +80,9 @@ export class LatticeStage {
   ) {
     const onPainted = () => {
       events.onPainted()
-      if (!this.drawing) window.setTimeout(() => void this.makeCamera())
+      if (this.drawing || this.isCameraAwaited) return
+      this.isCameraAwaited = true
+      afterNextFrame(() => void this.makeCamera())
     }
     this.raster = new RasterLayer(layers.front, layers.back, painter, { ...events, onPainted })
     this.tags = new TagLayer(layers.tags)
@@ -231,6 +236,7 @@ export class LatticeStage {
       return this.events.onFailure('This browser offers no WebGL 2: the lattice moves by keys and buttons only.')
     }
     this.drawing.moveTo(this.held)
+    this.events.onReady()
   }
 
   private focusScene(): Scene {
@@ -276,6 +282,11 @@ export class LatticeStage {
       overlay,
     )
   }
+}
+
+/** Once what was changed is on the screen. */
+function afterNextFrame(act: () => void): void {
+  requestAnimationFrame(() => requestAnimationFrame(() => window.setTimeout(act)))
 }
 
 /** Without what is drawn over the picture, not in it. */

@@ -23,6 +23,8 @@ export interface ChainView {
   ownerOf(qubit: number): number
   /** Qubit at a pixel of the viewport, or −1; those of chains are easier to hit than free ones. */
   qubitAt(view: View, x: number, y: number): number
+  /** Works out what hits need, so that the first move of the pointer does not wait for it. */
+  prepareHits(): void
   /** Box around the bands of the chains meant, all of them unless told otherwise; null where there are none. */
   boxOfChains(isMeant?: (chain: number) => boolean): Box | null
   boxOfQubits(qubits: readonly number[]): Box | null
@@ -63,6 +65,7 @@ export function useChainView(props: ChainViewProps): ChainView {
       const bonus = (qubit: number) => (ownerOf(qubit) < 0 ? 0 : 0.12)
       return nearestSegment(index.value, (x - originX) / scale, (y - originY) / scale, reach, bonus)
     },
+    prepareHits: () => void index.value,
     boxOfChains(isMeant = () => true) {
       const meant = geometry.value.bands.filter((band) => isMeant(band.chain))
       const box = boxOfSegments(Float32Array.from(meant.flatMap(({ x1, y1, x2, y2 }) => [x1, y1, x2, y2])))
