@@ -79,8 +79,13 @@ export function createDrawing(container: HTMLElement, { bounds, tokens, scene, e
   sigma.on('clickStage', onClick)
   sigma.on('clickNode', onClick)
 
+  hideIfEmpty(sigma, scene)
+
   return {
-    show: (next) => void sigma.setGraph(sceneGraph(next)),
+    show(next) {
+      sigma.setGraph(sceneGraph(next))
+      hideIfEmpty(sigma, next)
+    },
     view,
     moveTo(target, milliseconds = 0) {
       const { width, height } = sigma.getDimensions()
@@ -95,6 +100,12 @@ export function createDrawing(container: HTMLElement, { bounds, tokens, scene, e
     refresh: () => void sigma.refresh(),
     kill: () => sigma.kill(),
   }
+}
+
+/** An empty layer of the size of the viewport still costs a quarter of every frame where no graphics card blends it. */
+function hideIfEmpty(sigma: Pick<FrameSource, 'getWebGLContext'>, { edges, nodes }: Scene): void {
+  const { canvas } = sigma.getWebGLContext()
+  if (canvas instanceof HTMLCanvasElement) canvas.style.opacity = edges.length + nodes.length > 0 ? '1' : '0'
 }
 
 interface FrameSource {

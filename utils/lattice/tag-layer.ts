@@ -1,7 +1,7 @@
 import type { Coverage } from './coverage'
 import { carryTags, placeTags } from './labels'
 import type { PlacedTag } from './labels'
-import { boxNow, isSameView, marginOf } from './painted-view'
+import { boxNow, covers, isSameView, marginOf } from './painted-view'
 import type { Painted } from './painted-view'
 import { paintOverlay } from './paint-overlay'
 import type { Overlay } from './paint-overlay'
@@ -20,9 +20,13 @@ export interface TagTheme {
   readonly held: readonly Box[]
 }
 
+/** Pixels around the viewport that the canvas covers too: it is blended anew with every frame, so there are few. */
+const CANVAS_MARGIN = 48
+
 /**
- * Tags and outlines over the chains. The canvas has a margin around the viewport and only shifts with the camera; when
- * the zoom changes the tags keep their spots, and once the camera rests they are placed anew.
+ * Tags and outlines over the chains, placed as far around the viewport as the picture reaches. The canvas shifts with the
+ * camera; where it would leave the viewport bare, and when the zoom changes, it is painted anew with every tag on its
+ * spot. Once the camera rests the tags are placed anew.
  */
 export class TagLayer {
   private readonly ctx: CanvasRenderingContext2D | null
@@ -59,7 +63,9 @@ export class TagLayer {
     this.latest = view
     window.clearTimeout(this.timer)
     this.timer = window.setTimeout(() => this.settle(), 120)
-    if (this.painted && this.painted.view.scale === view.scale) this.shift()
+    const { painted } = this
+    const isStill = painted !== null && Math.abs(painted.view.scale - view.scale) < 1e-6 * view.scale
+    if (isStill && covers(boxNow(painted, view), this.size.width, this.size.height)) this.shift()
     else this.paint()
   }
 
@@ -87,7 +93,7 @@ export class TagLayer {
   private paint(): void {
     const { ctx, theme, latest: view } = this
     if (!ctx || !theme || !view || this.size.width === 0) return
-    const [marginX, marginY] = [marginOf(this.size.width), marginOf(this.size.height)]
+    const [marginX, marginY] = [CANVAS_MARGIN, CANVAS_MARGIN]
     const [width, height] = [this.size.width + 2 * marginX, this.size.height + 2 * marginY]
     this.painted = { view, marginX, marginY, width, height, ratio: 1 }
     prepareCanvas(ctx, width, height)
