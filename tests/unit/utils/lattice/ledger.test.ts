@@ -52,6 +52,7 @@ describe('columns', () => {
       'bound',
       'breaks',
     ])
+    expect(columnsFor(rows, 'breaks', 450).columns).toEqual(['variable', 'qubits', 'strength', 'bound', 'breaks'])
     expect(columnsFor(rows, 'breaks', 400).columns).toEqual(['variable', 'qubits', 'bound', 'breaks'])
     expect(columnsFor(rows.slice(2), 'load', 700).columns).toEqual([
       'variable',

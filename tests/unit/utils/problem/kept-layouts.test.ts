@@ -60,6 +60,13 @@ describe('kept layouts', () => {
     expect(storage.items.size).toBe(KEPT_DEFAULTS.most + 1)
   })
 
+  it('push no other out by being kept again and again', () => {
+    const storage = storageOf()
+    keepLayout(storage, 'other', layout([1, 2]))
+    for (let k = 0; k < 2 * KEPT_DEFAULTS.most; k++) keepLayout(storage, 'p', layout([1, 2]))
+    expect(keptLayout(storage, 'other', of(1))).not.toBeNull()
+  })
+
   it('give way quietly where there is no room, or what is stored cannot be read', () => {
     const storage = storageOf(20)
     keepLayout(storage, 'p', layout([1, 2, 3, 4]))
