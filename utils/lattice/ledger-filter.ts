@@ -18,7 +18,7 @@ export const NO_FILTER: LedgerFilter = { text: '', least: null, most: null, only
 
 export const ONLY_WORDS: Record<LedgerOnly, string> = {
   selected: 'selected',
-  conflicted: 'conflicted',
+  conflicted: 'breaking a rule',
   'under-bound': 'bound above k',
   full: 'over 90 % of range',
   broken: 'broken',
