@@ -18,7 +18,7 @@ const sizeInputs = ({ variables, interactions }: Size) => [
 ]
 
 const ofDegrees = (histogram: StructureView['degreeHistogram']) =>
-  histogram.map(({ value, count }) => `${formatNumber(value)} (${formatNumber(count)})`).join(', ')
+  histogram.map(({ value, count }) => `${formatNumber(value)}\u00a0(${formatNumber(count)})`).join(', ')
 
 export const problemHelp = {
   density: entry<Size>({

@@ -40,35 +40,66 @@ const byDecoding = (
     return help ? [{ label: row.title, help }] : []
   })
 
-/** What each column of the decodings is computed from, decoding by decoding. */
-export function decodingCases({ decodings, breaks, reads, source }: ReturnView) {
+/** The computed columns of the decodings, explained decoding by decoding. */
+export function decodingColumns({ decodings, breaks, reads, source }: ReturnView) {
   const broken = breaks?.readsWithBreak.count ?? 0
   const rehearsal = source === 'rehearsal'
-  return {
-    kept: () => byDecoding(decodings, ({ decoding }) => ({ id: 'readsKept', given: { reads, broken, decoding } })),
-    times: () =>
-      byDecoding(decodings, ({ best, bestCount: count, readsKept }) =>
-        best === null ? null : { id: 'bestCount', given: { best, count, reads: readsKept, rehearsal } },
-      ),
-    median: () =>
-      byDecoding(decodings, ({ median, readsKept }) =>
-        median === null ? null : { id: 'medianEnergy', given: { median, reads: readsKept } },
-      ),
-    mean: () =>
-      byDecoding(decodings, ({ total, readsKept }) =>
-        total === null ? null : { id: 'meanEnergy', given: { total, reads: readsKept } },
-      ),
-    ties: () =>
-      byDecoding(decodings, ({ decoding, ties }) => (decoding === 'discard' ? null : { id: 'ties', given: { ties } })),
-  }
+  return [
+    {
+      label: 'Reads kept',
+      name: 'the number of reads kept',
+      cases: () => byDecoding(decodings, ({ decoding }) => ({ id: 'readsKept', given: { reads, broken, decoding } })),
+    },
+    {
+      label: 'Reads at best',
+      name: 'the number of reads at the best energy',
+      cases: () =>
+        byDecoding(decodings, ({ best, bestCount: count, readsKept }) =>
+          best === null ? null : { id: 'bestCount', given: { best, count, reads: readsKept, rehearsal } },
+        ),
+    },
+    {
+      label: 'Median',
+      name: 'the median energy',
+      cases: () =>
+        byDecoding(decodings, ({ median, readsKept }) =>
+          median === null ? null : { id: 'medianEnergy', given: { median, reads: readsKept } },
+        ),
+    },
+    {
+      label: 'Mean',
+      name: 'the mean energy',
+      cases: () =>
+        byDecoding(decodings, ({ total, readsKept }) =>
+          total === null ? null : { id: 'meanEnergy', given: { total, reads: readsKept } },
+        ),
+    },
+    {
+      label: 'Ties',
+      name: 'the number of ties',
+      cases: () =>
+        byDecoding(decodings, ({ decoding, ties }) =>
+          decoding === 'discard' ? null : { id: 'ties', given: { ties } },
+        ),
+    },
+  ] as const
 }
 
-/** Energies of the assignments shown, first row first. */
-export const solutionCases = ({ solutions, source }: ReturnView): HelpCase[] =>
-  solutions.map(({ parts }, k) => ({
-    label: `row ${k + 1}`,
-    help: { id: 'energyOfState', given: { ...parts, rehearsal: source === 'rehearsal' } },
-  }))
-
-export const distanceCases = ({ solutions }: ReturnView): HelpCase[] =>
-  solutions.map(({ distance }, k) => ({ label: `row ${k + 1}`, help: { id: 'distance', given: { distance } } }))
+/** The computed columns of the assignments shown, explained row by row. */
+export function solutionColumns({ solutions, source }: ReturnView) {
+  const byRow = (helpOf: (row: ReturnView['solutions'][number]) => HelpRequest): readonly HelpCase[] =>
+    solutions.map((row, k) => ({ label: `row ${k + 1}`, help: helpOf(row) }))
+  const rehearsal = source === 'rehearsal'
+  return [
+    {
+      label: 'Energy',
+      name: 'the energy of an assignment',
+      cases: () => byRow(({ parts }) => ({ id: 'energyOfState', given: { ...parts, rehearsal } })),
+    },
+    {
+      label: 'Differs in',
+      name: 'what an assignment differs in',
+      cases: () => byRow(({ distance }) => ({ id: 'distance', given: { distance } })),
+    },
+  ] as const
+}

@@ -14,6 +14,9 @@ const mostUp = ({ height }: { height: number }): number => (height > TALL ? 7 : 
 /** Mean width of a letter of an axis name, in px. */
 const LETTER = 6.2
 
+/** A unit of a letter or two stays with the word before it. */
+const unbroken = (name: string): string => name.replace(/ (\S{1,2})$/, '\u00a0$1')
+
 /** Words in as few lines as fit into a width: a name that is too long would be squeezed. */
 export function inLines(text: string, width: number): string[] {
   const most = Math.max(1, Math.floor(width / LETTER))
@@ -74,7 +77,8 @@ export function axisOptions(
     title: across
       ? {
           display: true,
-          text: (context: { chart: { width: number } }) => inLines(axisName(axis), context.chart.width - beside),
+          text: (context: { chart: { width: number } }) =>
+            inLines(unbroken(axisName(axis)), context.chart.width - beside),
           align: 'end',
           color: palette.ink2,
           font: { family: SANS, size: 12, weight: 'normal' },
