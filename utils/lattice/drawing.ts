@@ -70,7 +70,6 @@ export function createDrawing(container: HTMLElement, { bounds, tokens, scene, e
   }
   measure()
   sigma.on('resize', measure)
-  holdBackSlowFrames(sigma)
   sigma.on('afterRender', () => events.onFrame(view()))
   const onClick = ({ event: { x, y, original } }: { event: MouseCoords }) => {
     const { shiftKey, ctrlKey, metaKey } = original
@@ -103,37 +102,9 @@ export function createDrawing(container: HTMLElement, { bounds, tokens, scene, e
 }
 
 /** An empty layer of the size of the viewport still costs a quarter of every frame where no graphics card blends it. */
-function hideIfEmpty(sigma: Pick<FrameSource, 'getWebGLContext'>, { edges, nodes }: Scene): void {
+function hideIfEmpty(sigma: { getWebGLContext(): WebGL2RenderingContext }, { edges, nodes }: Scene): void {
   const { canvas } = sigma.getWebGLContext()
   if (canvas instanceof HTMLCanvasElement) canvas.style.opacity = edges.length + nodes.length > 0 ? '1' : '0'
-}
-
-interface FrameSource {
-  getWebGLContext(): WebGL2RenderingContext
-  on(event: 'beforeRender' | 'afterRender', listener: () => void): unknown
-}
-
-/**
- * Lets one frame at most wait in the graphics queue. Without it a slow renderer falls behind the pointer by as many
- * frames as were asked for; a fast one has always finished and is not held up.
- */
-function holdBackSlowFrames(sigma: FrameSource): void {
-  const gl = sigma.getWebGLContext()
-  const pixel = new Uint8Array(4)
-  let last: WebGLSync | null = null
-  sigma.on('beforeRender', () => {
-    if (!last) return
-    if (gl.getSyncParameter(last, gl.SYNC_STATUS) !== gl.SIGNALED) {
-      gl.bindFramebuffer(gl.FRAMEBUFFER, null)
-      gl.readPixels(0, 0, 1, 1, gl.RGBA, gl.UNSIGNED_BYTE, pixel)
-    }
-    gl.deleteSync(last)
-    last = null
-  })
-  sigma.on('afterRender', () => {
-    last = gl.fenceSync(gl.SYNC_GPU_COMMANDS_COMPLETE, 0)
-    gl.flush()
-  })
 }
 
 const SETTINGS = {
