@@ -95,6 +95,10 @@ export function mapSize(bounds: Box, longest: number): { scale: number; width: n
   return { scale, width: Math.ceil(scale * across), height: Math.ceil(scale * down) }
 }
 
+/** Longest side of the map in a viewport, in pixels: large enough to be dragged in, small enough to hide little. */
+export const mapLongest = ({ width, height }: Extent): number =>
+  Math.round(Math.min(116, Math.max(56, 0.19 * Math.min(width, height))))
+
 /** Corners of the frame in the order in which they are tried. */
 export const CORNERS = ['bottom right', 'top right', 'bottom left', 'top left'] as const
 export type Corner = (typeof CORNERS)[number]

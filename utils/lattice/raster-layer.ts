@@ -1,4 +1,4 @@
-import { mapSize } from './camera-moves'
+import { mapLongest, mapSize } from './camera-moves'
 import { boxNow, covers, isSameView, isUsedUp, marginOf } from './painted-view'
 import type { Painted } from './painted-view'
 import type { Painter } from './painter'
@@ -17,8 +17,6 @@ export const RASTER_DEFAULTS = {
   restMilliseconds: 110,
   /** Longest side of the picture of the whole machine, in pixels. */
   overview: 900,
-  /** Longest side of the map of it in a corner. */
-  map: 116,
   /** Most device pixels to a CSS pixel. */
   largestRatio: 2,
 }
@@ -87,6 +85,7 @@ export class RasterLayer {
   }
 
   resize(width: number, height: number): void {
+    if (mapLongest({ width, height }) !== mapLongest(this.size)) this.isMapStale = true
     this.size = { width, height }
     this.isStale = true
   }
@@ -159,7 +158,7 @@ export class RasterLayer {
 
   private async paintMap(): Promise<void> {
     this.isMapStale = false
-    const bitmap = await this.paint(this.wholeMachine(RASTER_DEFAULTS.map, restRatio()), 'map')
+    const bitmap = await this.paint(this.wholeMachine(mapLongest(this.size), restRatio()), 'map')
     if (this.isOver) bitmap.close()
     else this.events.onMap(bitmap)
   }

@@ -3,6 +3,7 @@ import {
   centred,
   cornerBox,
   freestCorner,
+  mapLongest,
   mapSize,
   revealing,
   seenBox,
@@ -16,7 +17,7 @@ import { viewOfBox } from './framing'
 import type { Layers } from './layers'
 import type { Painter } from './painter'
 import type { PictureLook } from './picture'
-import { RASTER_DEFAULTS, RasterLayer } from './raster-layer'
+import { RasterLayer } from './raster-layer'
 import { RulerLayer } from './ruler-layer'
 import { buildScene } from './scene'
 import type { Scene } from './scene-types'
@@ -43,8 +44,8 @@ export interface StageEvents {
 export interface StageView {
   /** What the viewport shows, in line spacings. */
   readonly seen: Box
-  /** Where a map of the machine hides least, or null when the machine is in view anyhow. */
-  readonly map: Corner | null
+  /** Where a map of the machine hides least, and its longest side in pixels; null when the machine is in view anyhow. */
+  readonly map: { readonly corner: Corner; readonly longest: number } | null
 }
 
 export const STAGE_DEFAULTS = {
@@ -250,7 +251,10 @@ export class LatticeStage {
     this.raster.follow(view)
     this.tags.follow(view)
     this.paintRuler(view)
-    this.events.onView({ seen: seenBox(view, this.size), map: this.isMapNeeded(view) ? this.corner : null })
+    this.events.onView({
+      seen: seenBox(view, this.size),
+      map: this.isMapNeeded(view) ? { corner: this.corner, longest: mapLongest(this.size) } : null,
+    })
   }
 
   private isMapNeeded(view: View): boolean {
@@ -261,7 +265,7 @@ export class LatticeStage {
   private chooseCorner(view: View): void {
     const { coverage, source } = this
     if (!coverage || !source) return
-    const size = mapSize(source.bounds, RASTER_DEFAULTS.map)
+    const size = mapSize(source.bounds, mapLongest(this.size))
     this.corner = freestCorner(view, this.size, size, (box) => coveredIn(coverage, box))
   }
 
@@ -273,7 +277,7 @@ export class LatticeStage {
     const { source, look } = this
     if (!source || !look) return
     const held = this.isMapNeeded(this.view())
-      ? [cornerBox(this.corner, this.size, mapSize(source.bounds, RASTER_DEFAULTS.map))]
+      ? [cornerBox(this.corner, this.size, mapSize(source.bounds, mapLongest(this.size)))]
       : []
     const overlay = look.overlay && overlayOf(source, look.overlay)
     this.tags.show(

@@ -65,7 +65,7 @@ describe('the raster layer', () => {
     await deliverAll()
     expect(asked.map(({ width, kind }) => [width, kind])).toEqual([
       [680, 'rest'],
-      [RASTER_DEFAULTS.map, 'map'],
+      [57, 'map'],
       [RASTER_DEFAULTS.overview, 'whole'],
     ])
     expect(events.onMap).toHaveBeenCalledOnce()
