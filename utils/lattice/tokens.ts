@@ -90,3 +90,44 @@ function lightness(colour: string): number {
   const [r, g, b] = channelsOf(colour)
   return (0.299 * r + 0.587 * g + 0.114 * b) / 255
 }
+
+export const CALM_DEFAULTS = {
+  /** Most contrast with paper of what steps back, and of the lines of free qubits. */
+  rule: 2,
+  hair: 1.6,
+}
+
+/**
+ * Tokens for the lattice: chains that step back and free qubits stay behind those that matter, also in themes of high
+ * contrast, in which rules are nearly as dark as text.
+ */
+export const calmed = (tokens: Tokens): Tokens => ({
+  ...tokens,
+  rule: towards(tokens.rule, tokens.paper, CALM_DEFAULTS.rule),
+  hair: towards(tokens.hair, tokens.paper, CALM_DEFAULTS.hair),
+})
+
+/** The colour, or a mix with paper that has the contrast allowed. */
+function towards(colour: string, paper: string, most: number): string {
+  if (contrastOf(colour, paper) <= most) return colour
+  let [low, high] = [0, 1]
+  for (let step = 0; step < 12; step++) {
+    const share = (low + high) / 2
+    if (contrastOf(mixColours(colour, paper, share), paper) > most) low = share
+    else high = share
+  }
+  return mixColours(colour, paper, high)
+}
+
+/** Contrast ratio of WCAG 2.2, 1 … 21. */
+export function contrastOf(first: string, second: string): number {
+  const [a, b] = [luminance(first), luminance(second)]
+  return (Math.max(a, b) + 0.05) / (Math.min(a, b) + 0.05)
+}
+
+function luminance(colour: string): number {
+  const [r, g, b] = channelsOf(colour).map((v) =>
+    v <= 10.31475 ? v / 255 / 12.92 : ((v / 255 + 0.055) / 1.055) ** 2.4,
+  )
+  return 0.2126 * r! + 0.7152 * g! + 0.0722 * b!
+}

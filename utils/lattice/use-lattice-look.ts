@@ -4,6 +4,7 @@ import type { useSelectionStore } from '~/stores/selection'
 import { chainClasses, chainsOfClasses } from './kinds'
 import type { ChainClass } from './kinds'
 import type { StageLook } from './stage-types'
+import { calmed } from './tokens'
 import type { Tokens } from './tokens'
 import type { BreakLayer, ChainLayer, LatticeData, Lens, LoadLayer, MarkLayer, OverlayLayer, ReadLayer } from './types'
 import type { ChainView } from './use-chain-view'
@@ -49,8 +50,9 @@ export function useLatticeLook(
     chainClasses({ lens: lens.value, chains: view.chains.value, breaks: props.breaks, load: props.load }),
   )
   const muted = computed(() => chainsOfClasses(classes.value, selection.hiddenClasses))
+  const calm = computed(() => calmed(tokens.value))
   const look = computed<StageLook>(() => ({
-    tokens: tokens.value,
+    tokens: calm.value,
     lens: lens.value,
     focused: focused.value,
     selected: selection.selected,
