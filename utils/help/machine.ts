@@ -142,7 +142,7 @@ export const machineHelp = {
       { symbol: 'n', name: 'variables of the largest complete graph that is not ruled out', expr: plus('w', 1) },
     ],
     method: () =>
-      'Embedding never lowers treewidth, and a complete graph of n variables has treewidth n − 1. The machine’s bound is the smallest width of several elimination orders: sweeps over its lines from each side, breadth first from far to near, and least fill on small machines. Missing qubits and couplers are left out.',
+      'Treewidth never grows by contracting and deleting, so a problem that can be embedded has at most the machine’s; a complete graph of n variables has treewidth n − 1. The machine’s bound is the smallest width of several elimination orders: sweeps over its lines from each side, breadth first from far to near, and least fill on small machines. Missing qubits and couplers are left out.',
     sources: () => [BODLAENDER_KOSTER, GILBERT],
   }),
   capacityTreewidth: entry<{ treewidth: number; qubits: number; couplers: number }>({
