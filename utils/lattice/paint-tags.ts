@@ -1,23 +1,22 @@
 import type { Tokens } from './tokens'
 import type { Box } from './types'
 
-/** How a tag looks: boxed on its band, bare beside it, or the rate of a break. */
+/** How a tag looks: boxed on its band, bare beside it, or a note beside its place. */
 export interface TagLook {
   readonly text: string
-  readonly kind: 'focus' | 'chain' | 'quiet' | 'rate'
+  readonly kind: 'focus' | 'chain' | 'note'
   /** Frame of a `chain` tag: the hue of its chain. */
   readonly frame: string
 }
 
 export const TAG_FONT = {
   family: '"IBM Plex Mono", ui-monospace, monospace',
-  size: { focus: 13, chain: 10.5, quiet: 10.5, rate: 11 },
-  height: { focus: 21, chain: 15, quiet: 13, rate: 15 },
-  padding: { focus: 6, chain: 4, quiet: 3, rate: 3 },
+  size: { focus: 13, chain: 10.5, note: 11 },
+  height: { focus: 21, chain: 15, note: 15 },
+  padding: { focus: 6, chain: 4, note: 3 },
 } as const
 
-const fontOf = (kind: TagLook['kind']) =>
-  `${kind === 'focus' || kind === 'rate' ? 600 : kind === 'chain' ? 500 : 400} ${TAG_FONT.size[kind]}px ${TAG_FONT.family}`
+const fontOf = (kind: TagLook['kind']) => `${kind === 'chain' ? 500 : 600} ${TAG_FONT.size[kind]}px ${TAG_FONT.family}`
 
 /** Widths of texts measured before: thousands of labels are asked for again with every hover. */
 export type TextWidths = Map<string, number>
@@ -43,11 +42,9 @@ export function paintTag(ctx: CanvasRenderingContext2D, look: TagLook, box: Box,
   const y = Math.round(box.y1)
   const width = Math.round(box.x2 - box.x1)
   const height = Math.round(box.y2 - box.y1)
-  ctx.globalAlpha = look.kind === 'quiet' ? 0.86 : 1
   ctx.fillStyle = tokens.paper
   ctx.fillRect(x, y, width, height)
-  ctx.globalAlpha = 1
-  if (look.kind === 'focus' || look.kind === 'chain') {
+  if (look.kind !== 'note') {
     const line = look.kind === 'focus' ? 1.5 : 1
     ctx.strokeStyle = look.kind === 'focus' ? tokens.ink : look.frame
     ctx.lineWidth = line
@@ -56,6 +53,6 @@ export function paintTag(ctx: CanvasRenderingContext2D, look: TagLook, box: Box,
   ctx.font = fontOf(look.kind)
   ctx.textBaseline = 'middle'
   ctx.textAlign = 'center'
-  ctx.fillStyle = look.kind === 'quiet' ? tokens.ink2 : look.kind === 'rate' ? tokens.claytext : tokens.ink
+  ctx.fillStyle = look.kind === 'note' ? tokens.claytext : tokens.ink
   ctx.fillText(look.text, x + width / 2, y + height / 2 + 0.5)
 }

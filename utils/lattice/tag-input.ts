@@ -1,10 +1,11 @@
+import type { ChainGeometry } from './geometry'
 import type { Overlay } from './paint-overlay'
 import { placesOfPair } from './places'
 import { breaksOf } from './scene-couplers'
 import type { StageLook, StageSource } from './stage-types'
-import type { TagInput } from './tag-requests'
+import type { Note, TagInput } from './tag-requests'
 import { tiersOf } from './tiers'
-import type { OverlayLayer } from './types'
+import type { LatticeData, OverlayLayer } from './types'
 
 /** What the tags of a lens, a focus and a filter say. */
 export function tagInputOf(
@@ -13,17 +14,43 @@ export function tagInputOf(
   bands: TagInput['bands'],
 ): TagInput {
   const { tokens, lens, hiddenKinds, hovered } = look
-  const showsRates = lens === 'breaks' && !look.read && !hiddenKinds?.has('breaks')
   return {
     labels: chains.labels,
     bands,
     tiers: tiersOf({ geometry, ...look }),
     hueOf: (chain) => (lens === 'occupancy' ? tokens.hues[hues.hue[chain]!]! : tokens.edge),
-    breaks: showsRates ? breaksOf({ data, geometry, breaks: look.breaks }) : [],
+    notes: [...rateNotes(data, geometry, look), ...markNotes(data, look)],
     showsLabels: !hiddenKinds?.has('labels'),
     hovered,
   }
 }
+
+/** Rates of the couplers that disagreed; a single read has none. */
+function rateNotes(data: LatticeData, geometry: ChainGeometry, look: StageLook): Note[] {
+  if (look.lens !== 'breaks' || look.read || look.hiddenKinds?.has('breaks')) return []
+  return breaksOf({ data, geometry, breaks: look.breaks }).map(({ rate, x, y }) => ({
+    text: rateText(rate),
+    x,
+    y,
+    weight: rate,
+  }))
+}
+
+/** Numbers of the marked qubits, unless they are so many that they would be all one sees. */
+function markNotes({ ids, segments }: LatticeData, { marks, hiddenKinds }: StageLook): Note[] {
+  if (!marks || marks.qubits.length > MOST_MARKS_NUMBERED || hiddenKinds?.has('marks')) return []
+  return Array.from(marks.qubits, (qubit) => ({
+    text: String(ids[qubit]),
+    x: (segments[4 * qubit]! + segments[4 * qubit + 2]!) / 2,
+    y: (segments[4 * qubit + 1]! + segments[4 * qubit + 3]!) / 2,
+    weight: 0,
+  }))
+}
+
+const MOST_MARKS_NUMBERED = 24
+
+/** `14 %`, or with one decimal under ten. */
+export const rateText = (rate: number): string => `${rate < 0.0995 ? (100 * rate).toFixed(1) : Math.round(100 * rate)}%`
 
 /** What is pointed out, with where it lies. */
 export function overlayOf({ data, geometry }: StageSource, layer: OverlayLayer): Overlay {

@@ -4,7 +4,6 @@ import { spotsOf } from './labels'
 import type { TagRequest, TagSpot } from './labels'
 import type { Band } from './bands'
 import type { ChainGeometry } from './geometry'
-import type { Break } from './scene-types'
 import { boxOfSegments } from './segments'
 import type { Tier } from './tiers'
 import type { Box, View } from './types'
@@ -36,7 +35,7 @@ export function tagBands({ bands, neighbours }: ChainGeometry, most = 3): TagSea
 
 const NOWHERE: Box = { x1: 0, y1: 0, x2: 0, y2: 0 }
 
-const RATE_SPOTS: readonly [number, number][] = [
+const NOTE_SPOTS: readonly [number, number][] = [
   [1.5, 0],
   [-1.5, 0],
   [0, 2.2],
@@ -47,13 +46,21 @@ const RATE_SPOTS: readonly [number, number][] = [
 
 const PRIORITY: Record<Tier, number> = { focus: 1000, near: 500, full: 200, far: 0 }
 
+export interface Note {
+  readonly text: string
+  readonly x: number
+  readonly y: number
+  /** Those of more weight are placed first, 0 … 1. */
+  readonly weight: number
+}
+
 export interface TagInput {
   readonly labels: readonly string[]
   readonly bands: readonly TagSeat[]
   readonly tiers: readonly Tier[]
   readonly hueOf: (chain: number) => string
-  /** Couplers whose rates are to be written. */
-  readonly breaks: readonly Break[]
+  /** Rates of breaks, numbers of marked qubits: written beside their places. */
+  readonly notes: readonly Note[]
   readonly showsLabels: boolean
   readonly hovered: number | null
 }
@@ -68,10 +75,12 @@ export interface TagArea {
 export const REQUEST_DEFAULTS = {
   /** Share of its tag's width that a chain must extend over: the tags of smaller ones would be all that one sees. */
   leastExtent: 0.9,
+  /** Line spacing in pixels from which every chain is large enough. */
+  near: 9,
 }
 
 /**
- * Tags to be placed: the chain in focus first, then rates of breaks, then chains by length. Chains out of focus carry
+ * Tags to be placed: the chain in focus first, then notes, then chains by length. Chains out of focus carry
  * none unless the pointer is on them, so that the bands stay in sight; nor do chains smaller than their tags.
  *
  * @param area leaves out what lies outside; everything is asked for without it
@@ -96,25 +105,22 @@ export function requestTags(
     const { spots, box, longest } = input.bands[chain]!
     const look: TagLook = { text, kind: tier === 'focus' ? 'focus' : 'chain', frame: input.hueOf(chain) }
     if (area && !isWithin(area, box)) return
-    if (area && !insist && extentOf(box) * area.view.scale < leastExtentOf(measureTag(ctx, look, widths))) return
+    if (area && !insist && isTooSmall(box, area.view.scale, measureTag(ctx, look, widths).width)) return
     add(look, { priority: PRIORITY[tier] + Math.min(99, longest) + (isHovered ? 900 : 0), spots, insist })
   })
-  for (const { rate, x, y } of input.breaks) {
+  for (const { text, x, y, weight } of input.notes) {
     if (area && !isWithin(area, { x1: x, y1: y, x2: x, y2: y })) continue
-    const spots = RATE_SPOTS.map(([ox, oy]) => ({ x, y, ox, oy, room: Infinity }))
-    add({ text: rateText(rate), kind: 'rate', frame: '' }, { priority: 600 + rate, spots, insist: true })
+    const spots = NOTE_SPOTS.map(([ox, oy]) => ({ x, y, ox, oy, room: Infinity }))
+    add({ text, kind: 'note', frame: '' }, { priority: 600 + weight, spots, insist: true })
   }
   return { requests, looks }
 }
 
-const extentOf = ({ x1, y1, x2, y2 }: Box): number => Math.max(x2 - x1, y2 - y1)
-const leastExtentOf = ({ width }: { width: number }): number => REQUEST_DEFAULTS.leastExtent * width
+const isTooSmall = ({ x1, y1, x2, y2 }: Box, scale: number, tag: number): boolean =>
+  scale < REQUEST_DEFAULTS.near && Math.max(x2 - x1, y2 - y1) * scale < REQUEST_DEFAULTS.leastExtent * tag
 
 const isWithin = ({ view: { scale, x, y }, viewport }: TagArea, box: Box): boolean =>
   x + scale * box.x2 >= viewport.x1 &&
   x + scale * box.x1 <= viewport.x2 &&
   y + scale * box.y2 >= viewport.y1 &&
   y + scale * box.y1 <= viewport.y2
-
-/** `14 %`, or with one decimal under ten. */
-export const rateText = (rate: number): string => `${rate < 0.0995 ? (100 * rate).toFixed(1) : Math.round(100 * rate)}%`
