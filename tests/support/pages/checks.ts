@@ -14,7 +14,6 @@ export const WIDE = { width: 1280, height: 900 }
 declare global {
   interface Window {
     axe: typeof axe
-    useNuxtApp?: () => { isHydrating: boolean }
   }
 }
 
