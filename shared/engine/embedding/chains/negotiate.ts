@@ -35,8 +35,7 @@ const VARIABLES_PER_LOOK = 16
 /** Costs for the coming pass: history, and a fresh random part of fewer than `spread` 64ths. */
 export function refreshCosts(state: ChainState, random: Random, penalty: number, spread: number): void {
   const { base, history } = state
-  for (let q = 0; q < base.length; q++)
-    base[q] = Math.floor(COST_UNIT * (1 + history[q]!)) + random.below(spread)
+  for (let q = 0; q < base.length; q++) base[q] = Math.floor(COST_UNIT * (1 + history[q]!)) + random.below(spread)
   state.setPenalty(penalty)
 }
 
