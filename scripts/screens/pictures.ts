@@ -33,7 +33,7 @@ export async function takePictures(browser: Browser, folder: string, view: View)
     for (const theme of THEMES) {
       await wear(page, theme)
       await settled(page)
-      await page.waitForTimeout(150)
+      await page.waitForTimeout(400)
       await twoFrames(page)
       const file = `${number}-${name}-${person?.replace(/\W/g, '-') ?? 'stranger'}-${size}-${theme}.png`
       await page.screenshot({ path: join(folder, file), fullPage: true })

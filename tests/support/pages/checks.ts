@@ -20,6 +20,8 @@ declare global {
 /** Waits until the page is hydrated, nothing of it is still being loaded, and fonts are there. */
 export async function settled(page: Page): Promise<void> {
   await page.waitForFunction(() => window.useNuxtApp?.().isHydrating === false)
+  // Parts whose code is fetched on its own. Pages of running work hold a connection and are never quiet.
+  await page.waitForLoadState('networkidle', { timeout: 3000 }).catch(() => undefined)
   // Some parts are loaded once they come into view.
   await page.waitForFunction(() => {
     const waiting = [...document.querySelectorAll('main [aria-busy="true"]')]
