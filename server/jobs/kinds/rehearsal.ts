@@ -1,3 +1,4 @@
+import { groupDigits } from '../../../shared/engine/digits'
 import { readsPerGauge } from '../../../shared/engine/programming/machine-time'
 import type { Programmed } from '../../../shared/engine/programming/programme'
 import { joinSamples } from '../../../shared/engine/sampling/merge'
@@ -44,7 +45,9 @@ export const rehearsalJob: JobKindHandler = {
     const status = reads > 0 ? 'ready' : 'cancelled'
     return {
       status: cancelled ? 'cancelled' : 'done',
-      message: cancelled ? `cancelled; ${reads} reads were complete and are kept` : `${reads} reads`,
+      message: cancelled
+        ? `cancelled; ${groupDigits(reads)} reads were complete and are kept`
+        : `${groupDigits(reads)} reads`,
       async save(tx) {
         if (samplesBlobId) await app.blobs.adopt(tx, samplesBlobId)
         const kept = await updateReturn(tx, row.id, {
@@ -107,7 +110,7 @@ async function annealBlocks(
           onProgress: ({ readsDone }) => {
             done[b] = readsDone
             const sum = done.reduce((total, part) => total + part, 0)
-            context.report(sum / reads, `${sum} of ${reads} reads`, { reads: sum })
+            context.report(sum / reads, `${groupDigits(sum)} of ${groupDigits(reads)} reads`, { reads: sum })
           },
         },
       ),
