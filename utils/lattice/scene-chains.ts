@@ -1,3 +1,4 @@
+import { INLAYS } from '~/utils/hues'
 import { crossingsOf } from './crossings'
 import { HATCH, SCENE_DEFAULTS } from './scene-types'
 import type { Draft, EdgeKind, SceneInput } from './scene-types'
@@ -17,6 +18,12 @@ const LOUD_IN_DARK: ReadonlySet<number> = new Set([2, 4])
 const isOutlined = ({ focused, selected }: SceneInput, chain: number): boolean =>
   chain === focused || selected?.has(chain) === true
 
+const DOTS = INLAYS.indexOf('dots')
+
+/** The chain in focus has no dots, which would pass for the rings of its couplers. */
+const inlayOf = (inlay: number, tier: Tier): number =>
+  tier === 'far' || (tier === 'focus' && inlay === DOTS) ? 0 : inlay
+
 /** Occupancy: a band in the hue of its chain for every straight piece of it. */
 export function addBands(input: SceneInput, tiers: readonly Tier[], { edges }: Draft): void {
   const { geometry, hues, tokens } = input
@@ -25,12 +32,15 @@ export function addBands(input: SceneInput, tiers: readonly Tier[], { edges }: D
     const { chain } = band
     if (!isInPart(input, chain)) return
     const tier = tiers[chain]!
+    const outline = isOutlined(input, chain) ? 1 : 0
     const look: EdgeLook = {
-      size: widthOf(tier) * (tokens.isDark && LOUD_IN_DARK.has(hues.hue[chain]!) ? 0.88 : 1),
+      // What is selected beside the focus is outlined, and needs the room for it.
+      size:
+        Math.max(widthOf(tier), outline > 0 ? 1 : 0) * (tokens.isDark && LOUD_IN_DARK.has(hues.hue[chain]!) ? 0.88 : 1),
       color: colourOf(input, chain, tier),
-      inlay: tier === 'far' ? 0 : hues.inlay[chain]!,
+      inlay: inlayOf(hues.inlay[chain]!, tier),
       casing: tier === 'far' ? 0 : 1,
-      outline: isOutlined(input, chain) ? 1 : 0,
+      outline,
       z: TIER_LEVEL[tier] + (isUpright(band) ? 1 : 0),
       gaps: gaps.get(i) ?? [],
     }

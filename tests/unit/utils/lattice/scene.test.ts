@@ -73,6 +73,15 @@ describe('occupancy', () => {
     expect(level(0).z).toBeLessThan(level(2).z)
     expect(level(2).size).toBeGreaterThan(level(0).size)
   })
+
+  it('outlines what is selected at full width, and keeps dots off the chain whose couplers are ringed', () => {
+    const dotted = { hue: new Uint8Array(3), inlay: Uint8Array.of(2, 2, 2) }
+    const { edges } = buildScene(input({ focused: 2, selected: new Set([1]), hues: dotted }))
+    const of = (chain: number) => edges.find((edge) => edge.chain === chain)!
+    expect([of(0).outline, of(1).outline, of(2).outline]).toEqual([0, 1, 1])
+    expect(of(1).size).toBeGreaterThan(of(0).size)
+    expect([of(0).inlay, of(1).inlay, of(2).inlay]).toEqual([2, 2, 0])
+  })
 })
 
 describe('load', () => {
