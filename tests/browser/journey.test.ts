@@ -85,7 +85,7 @@ describe('the whole job, by hand', () => {
 
   it('shows what was understood of a file before saving it', async () => {
     await signIn('developer')
-    await page.getByRole('link', { name: 'New problem' }).click()
+    await page.getByRole('link', { name: 'New problem' }).first().click()
     await page.setInputFiles('input[type=file]', {
       name: 'sixty.txt',
       mimeType: 'text/plain',

@@ -48,7 +48,7 @@ describe('the main job by keyboard alone', () => {
     await heading('Problems').waitFor()
     await keys.press('Tab')
     await keys.press('Enter')
-    await keys.use(page.getByRole('link', { name: 'New problem' }))
+    await keys.use(page.getByRole('link', { name: 'New problem' }).first())
     await heading('New problem').waitFor()
   })
 

@@ -22,15 +22,19 @@ export async function settled(page: Page): Promise<void> {
   await page.waitForFunction(() => window.useNuxtApp?.().isHydrating === false)
   // Parts whose code is fetched on its own. Pages of running work hold a connection and are never quiet.
   await page.waitForLoadState('networkidle', { timeout: 3000 }).catch(() => undefined)
-  // Some parts are loaded once they come into view.
+  await loaded(page)
+  await page.evaluate(() => document.fonts.ready.then(() => window.scrollTo(0, 0)))
+  await twoFrames(page)
+}
+
+/** Waits for what says that it is busy; some parts are loaded once they come into view. */
+async function loaded(page: Page): Promise<void> {
   await page.waitForFunction(() => {
     const waiting = [...document.querySelectorAll('main [aria-busy="true"]')]
     const busy = waiting.find((part) => part.checkVisibility())
     busy?.scrollIntoView({ block: 'center' })
     return !busy
   })
-  await page.evaluate(() => document.fonts.ready.then(() => window.scrollTo(0, 0)))
-  await twoFrames(page)
 }
 
 /** What was changed is laid out and painted after this. */
@@ -45,7 +49,8 @@ export async function unfold(page: Page): Promise<void> {
     const folded = 'main button[aria-expanded="false"]:not([aria-haspopup]):not(:disabled)'
     for (const button of document.querySelectorAll<HTMLButtonElement>(folded)) button.click()
   })
-  await settled(page)
+  await twoFrames(page)
+  await loaded(page)
 }
 
 /** Rules about colours, the only ones that a theme can break. */

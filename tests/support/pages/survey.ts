@@ -26,8 +26,8 @@ export function summaryOf(findings: readonly Finding[], pattern: string, aspect:
   })
 }
 
-/** Pages looked at side by side: one a processor core. */
-const AT_ONCE = 2
+/** Pages looked at side by side: waiting for one leaves time for the others. */
+const AT_ONCE = 3
 
 /** Opens every view in a browser of its person and says what is wrong with it. */
 export async function survey(browser: Browser, views: readonly View[]): Promise<Finding[]> {
