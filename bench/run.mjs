@@ -1,15 +1,16 @@
-// `npm run bench:view`: bundles the benchmark once and runs it in Node.
+// `node bench/run.mjs NAME [options]`: bundles bench/NAME/run.ts once and runs it in Node.
 import { spawnSync } from 'node:child_process'
 import { rmSync } from 'node:fs'
 import { fileURLToPath } from 'node:url'
 import { buildSync } from 'esbuild'
 
-const root = fileURLToPath(new URL('../..', import.meta.url))
-const outfile = `${root}node_modules/.cache/bench/view-${process.pid}.mjs`
+const root = fileURLToPath(new URL('..', import.meta.url))
+const [name, ...options] = process.argv.slice(2)
+const outfile = `${root}node_modules/.cache/bench/${name}-${process.pid}.mjs`
 
 buildSync({
   absWorkingDir: root,
-  entryPoints: ['bench/view/run.ts'],
+  entryPoints: [`bench/${name}/run.ts`],
   outfile,
   bundle: true,
   packages: 'external',
@@ -18,7 +19,7 @@ buildSync({
   target: 'node20',
   logLevel: 'warning',
 })
-const { status } = spawnSync(process.execPath, ['--enable-source-maps', outfile, ...process.argv.slice(2)], {
+const { status } = spawnSync(process.execPath, ['--enable-source-maps', outfile, ...options], {
   cwd: root,
   stdio: 'inherit',
 })
