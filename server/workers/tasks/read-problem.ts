@@ -1,6 +1,6 @@
 import type { Control } from '../../../shared/engine/control'
 import { readProblem } from '../../../shared/engine/formats'
-import type { ProblemReading, ReadOptions } from '../../../shared/engine/formats/format'
+import type { FileReading, ReadingProgress, ReadOptions } from '../../../shared/engine/formats/format'
 import type { StructureReport } from '../../../shared/engine/problem/structure'
 import { structureOf } from '../../../shared/engine/problem/structure'
 
@@ -10,19 +10,15 @@ export interface ReadProblemInput extends ReadOptions {
 }
 
 export interface ReadProblemOutput {
-  /** Null when the bytes are not text. */
-  reading: ProblemReading | null
+  reading: FileReading
   structure: StructureReport | null
 }
 
 /** Reads an uploaded problem file and reports its structure. */
-export function readProblemFile({ bytes, ...options }: ReadProblemInput, _control: Control<never>): ReadProblemOutput {
-  let text: string
-  try {
-    text = new TextDecoder('utf-8', { fatal: true }).decode(bytes)
-  } catch {
-    return { reading: null, structure: null }
-  }
-  const reading = readProblem(text, options)
+export function readProblemFile(
+  { bytes, ...options }: ReadProblemInput,
+  control: Control<ReadingProgress>,
+): ReadProblemOutput {
+  const reading = readProblem(bytes, { ...options, control })
   return { reading, structure: reading.problem ? structureOf(reading.problem) : null }
 }

@@ -13,9 +13,8 @@ export interface WriteProblemInput {
   sense: 'min' | 'max'
 }
 
-/** The UTF-8 text of a problem file in either form. */
+/** A problem file in either form. */
 export function writeProblemFile({ stored, form, format, sense }: WriteProblemInput, _control: Control<never>) {
   const problem = convertForm(stored.problem, stored.form, form)
-  const text = writeProblem(format, { form, labels: stored.labels, problem, sense })
-  return { bytes: new TextEncoder().encode(text) }
+  return { bytes: writeProblem(format, { form, labels: stored.labels, problem, sense }) }
 }

@@ -15,6 +15,7 @@ import { forEachLine } from './lines'
 import { formatNumber, isDecimal, numberFault, parseNumber } from './numbers'
 import { negateProblem } from '../problem/negate'
 import { Rejections } from './rejections'
+import { bytesOf, holdsText, readAsText, textOf } from './text'
 
 const ID = 'coefficients'
 const DEFAULTS = { maxLineLength: 2000 }
@@ -89,7 +90,7 @@ function emptinessIssues(reader: ListReader): ReadingIssue[] {
 }
 
 /** Reads a coefficient list; see the head of this file. A million lines take a few seconds. */
-function read(text: string, options: ReadOptions): ProblemReading {
+function readText(text: string, options: ReadOptions): ProblemReading {
   const reader = new ListReader(text)
   forEachLine(text, reader.readLine)
   const { table, directives, header, rejections } = reader
@@ -117,7 +118,7 @@ function reordered(labels: readonly string[], ranks: Uint32Array): string[] {
 }
 
 /** Writes every variable's linear coefficient first, zeros included, so that all variables and their order survive. */
-function write({ form, labels, problem, sense }: ProblemDocument): string {
+function writeText({ form, labels, problem, sense }: ProblemDocument): string {
   checkLabels(labels, problem.n)
   const isMax = sense === 'max'
   const { n, linear, rows, cols, values, offset } = negateProblem(problem, { coefficients: isMax, offset: isMax })
@@ -132,7 +133,7 @@ function write({ form, labels, problem, sense }: ProblemDocument): string {
 }
 
 /** The share of data lines that are entries; less sure when the first two columns hold fractions. */
-function sniff(head: string): number {
+function sniffText(head: string): number {
   const directives: Directives = {}
   let lines = 0
   let entries = 0
@@ -158,7 +159,8 @@ export const coefficients: ProblemFormat = {
   id: ID,
   title: 'Coefficient list',
   extensions: ['csv', 'tsv', 'txt'],
-  sniff: (head) => Math.max(0, sniff(head)),
-  read,
-  write,
+  mediaType: 'text/csv',
+  sniff: (head) => (holdsText(head) ? Math.max(0, sniffText(textOf(head))) : 0),
+  read: (chunks, options) => readAsText(ID, chunks, options, readText),
+  write: (document) => bytesOf(writeText(document)),
 }

@@ -14,6 +14,7 @@ import { checkLabels, labelClashes, labelFault, quoteLabel } from './labels'
 import { LABEL_CORNER, type MatrixShape } from './matrix-shape'
 import { cellsOf, gatherRows, shapeOf, type Table, type TableRow } from './matrix-table'
 import { formatNumber, isDecimal, numberFault, parseNumber } from './numbers'
+import { bytesOf, holdsText, readAsText, textOf } from './text'
 
 const ID = 'dense-csv'
 const DEFAULTS = { maxVariables: 5000 }
@@ -97,7 +98,7 @@ class MatrixReader {
 const NOTHING = { labels: [], rows: [], cols: [], values: [], header: null }
 
 /** Reads a dense matrix; see the head of this file. */
-function read(text: string, options: ReadOptions): ProblemReading {
+function readText(text: string, options: ReadOptions): ProblemReading {
   const table = gatherRows(text)
   const { directives, rejections } = table
   const common = { format: ID, isMatrix: true, directives, rejections }
@@ -110,7 +111,7 @@ function read(text: string, options: ReadOptions): ProblemReading {
 }
 
 /** Writes the upper triangle with a row and a column of labels. */
-function write({ form, labels, problem, sense }: ProblemDocument): string {
+function writeText({ form, labels, problem, sense }: ProblemDocument): string {
   checkLabels(labels, problem.n)
   if (problem.n > DEFAULTS.maxVariables)
     throw new RangeError(`a dense matrix has at most ${DEFAULTS.maxVariables} variables, not ${problem.n}`)
@@ -133,7 +134,7 @@ function write({ form, labels, problem, sense }: ProblemDocument): string {
 const CONFIDENCE = { corner: 0.9, regular: 0.7, threeColumns: 0.5, oneRow: 0.3 }
 
 /** The share of rows of one width that hold numbers behind their first cell, weighed by what else they could be. */
-function sniff(head: string): number {
+function sniffText(head: string): number {
   const table = gatherRows(head)
   const { layout } = table.directives
   if (layout) return layout === 'matrix' ? 1 : 0
@@ -152,7 +153,8 @@ export const denseCsv: ProblemFormat = {
   id: ID,
   title: 'Dense matrix (CSV)',
   extensions: ['csv', 'tsv', 'txt'],
-  sniff,
-  read,
-  write,
+  mediaType: 'text/csv',
+  sniff: (head) => (holdsText(head) ? sniffText(textOf(head)) : 0),
+  read: (chunks, options) => readAsText(ID, chunks, options, readText),
+  write: (document) => bytesOf(writeText(document)),
 }

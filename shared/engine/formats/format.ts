@@ -1,3 +1,4 @@
+import type { Control } from '../control'
 import type { Form, Problem } from '../problem/problem'
 
 /** `plus`: E = Σ h s + Σ J s s. `minus`: the file means E = −Σ h s − Σ J s s (its offset keeps its sign). */
@@ -15,6 +16,16 @@ export interface ReadOptions {
   readonly convention?: Convention
   readonly sense?: Sense
 }
+
+/** How far a reading is: bytes of the file as it was given, packed or not. */
+export interface ReadingProgress {
+  readonly bytes: number
+}
+
+export type ReadingControl = Control<ReadingProgress>
+
+/** Thrown by a source of chunks that cannot go on: a damaged archive, a limit, a cancellation. `readProblem` catches it. */
+export class ReadingFault extends Error {}
 
 /** A problem with its names: labels[i] names variable i; all labels differ. */
 export interface ProblemDocument {
@@ -67,19 +78,41 @@ export interface ProblemReading {
   readonly issues: ReadingIssue[]
 }
 
-/** A text format for problems. */
+/** A format for problems: one module each, all of this shape. */
 export interface ProblemFormat {
   readonly id: string
   readonly title: string
   /** File name endings without the point. */
   readonly extensions: readonly string[]
-  /** How much the beginning of a text (whole lines) looks like this format, 0 … 1. */
-  sniff(head: string): number
-  /** Never throws for what the text holds: what is wrong is in `rejected` and `issues`. */
-  read(text: string, options: ReadOptions): ProblemReading
+  readonly mediaType: string
   /**
-   * A text that reads back to the same document without options, to the last bit.
-   * @throws RangeError for labels that cannot be written, or a problem too large for the format
+   * How much the beginning of a file looks like this format, 0 … 1.
+   * @param head at most 64 KiB, unpacked; of a longer file, cut after a line or field where it has any
    */
-  write(document: ProblemDocument): string
+  sniff(head: Uint8Array): number
+  /**
+   * Reads bytes that arrive in chunks, cut anywhere; each chunk is used up before the next is asked for. Never throws for
+   * what the bytes hold: what is wrong is in `rejected` and `issues`. Lets through what the source throws.
+   */
+  read(chunks: Iterable<Uint8Array>, options: ReadOptions): ProblemReading
+  /**
+   * A file that reads back to the same document without options, to the last bit.
+   * @throws RangeError for labels that cannot be written, or a problem that the format cannot hold
+   */
+  write(document: ProblemDocument): Uint8Array
+}
+
+/** What the beginning of a file looks like: the formats with any likeness, the likeliest first. */
+export interface Likeness {
+  readonly format: string
+  /** 0 … 1 */
+  readonly score: number
+}
+
+/** A reading of a file, with how its format was found. */
+export interface FileReading extends ProblemReading {
+  readonly formatSource: 'given' | 'detected'
+  readonly likenesses: readonly Likeness[]
+  /** What the file was packed in; undone before the format saw it. */
+  readonly container: 'gzip' | null
 }

@@ -4,12 +4,15 @@ import { coefficients } from '../../../../shared/engine/formats/coefficients'
 import type { ProblemDocument } from '../../../../shared/engine/formats/format'
 import { buildProblem } from '../../../../shared/engine/problem/build'
 import { createRandom } from '../../../../shared/engine/random'
+import { fileOf, textOf } from '../../../fixtures/problems/bytes'
 import { dyadic, randomOrder, randomProblem, real } from '../../../fixtures/problems/random-problem'
 
 const fixture = (name: string): string =>
   readFileSync(new URL(`../../../fixtures/problems/${name}`, import.meta.url), 'utf8')
 
-const read = (text: string, options = {}) => coefficients.read(text, options)
+const write = (document: ProblemDocument): string => textOf(coefficients.write(document))
+
+const read = (text: string, options = {}) => coefficients.read(fileOf(text), options)
 
 /** The problem as a map from labels to values, for comparing without regard to the order of variables. */
 function byLabel(text: string, options = {}) {
@@ -165,7 +168,7 @@ describe('writing a coefficient list', () => {
           : randomOrder(random, n).map((k) => String(k * 3 - 4))
       const problem = randomProblem(random, n, random.float(), trial % 3 === 0 ? real : dyadic)
       const document: ProblemDocument = { form, labels, problem, sense: trial % 4 < 2 ? 'min' : 'max' }
-      const reading = read(coefficients.write(document))
+      const reading = read(write(document))
       expect(reading.issues).toEqual([])
       expect(reading.rejectedCount).toBe(0)
       expect(reading).toMatchObject({ form, formSource: 'file', sense: document.sense, labels, problem })
@@ -174,17 +177,17 @@ describe('writing a coefficient list', () => {
 
   it('is unchanged by another round, and keeps isolated variables', () => {
     const problem = buildProblem(3, { rows: [0], cols: [2], values: [0.1] }, 0).problem
-    const text = coefficients.write({ form: 'qubo', labels: ['b', 'a', 'c'], problem, sense: 'max' })
+    const text = write({ form: 'qubo', labels: ['b', 'a', 'c'], problem, sense: 'max' })
     expect(text).toBe(
       '# layout: list\n# form: qubo\n# sense: max\n# offset: 0\ni,j,value\nb,b,0\na,a,0\nc,c,0\nb,c,-0.1\n',
     )
     const { form, labels, sense, problem: again } = read(text)
-    expect(coefficients.write({ form, labels, sense, problem: again! })).toBe(text)
+    expect(write({ form, labels, sense, problem: again! })).toBe(text)
   })
 
   it('refuses labels that would not come back', () => {
     const problem = buildProblem(2, { rows: [0], cols: [1], values: [1] }, 0).problem
-    expect(() => coefficients.write({ form: 'qubo', labels: ['a', 'A'], problem, sense: 'min' })).toThrow(RangeError)
-    expect(() => coefficients.write({ form: 'qubo', labels: ['a', 'b\nc'], problem, sense: 'min' })).toThrow(RangeError)
+    expect(() => write({ form: 'qubo', labels: ['a', 'A'], problem, sense: 'min' })).toThrow(RangeError)
+    expect(() => write({ form: 'qubo', labels: ['a', 'b\nc'], problem, sense: 'min' })).toThrow(RangeError)
   })
 })
