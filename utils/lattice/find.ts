@@ -1,3 +1,4 @@
+import { labelsHolding } from '../find-labels'
 import type { LatticeData } from './types'
 
 /** A chain or a qubit that was looked for. */
@@ -17,8 +18,6 @@ export const FIND_DEFAULTS = {
   most: 8,
 }
 
-const COLLATOR = new Intl.Collator('en', { numeric: true })
-
 /**
  * Chains whose label holds the words, those that begin with them first and the one that is them before all; then the
  * qubit of that number and those whose numbers begin with it. `qubit 17` and `q17` mean the qubit alone.
@@ -28,20 +27,11 @@ export function findThings(words: string, { data, labels }: Findable, most = FIN
   if (sought === '') return []
   const [, prefix = '', digits] = /^(q(?:ubit)?\s*)?(\d+)$/.exec(sought) ?? []
   const qubits = digits === undefined ? [] : qubitsFrom(data.ids, digits, most)
-  const chains = prefix ? [] : chainsWith(labels, sought)
+  const chains: Found[] = prefix
+    ? []
+    : labelsHolding(labels, sought, most).map((variable) => ({ kind: 'chain', variable }))
   // A number means a qubit at least as often as a variable, so that room is kept for it.
   return [...chains.slice(0, qubits.length > 0 ? most - 1 : most), ...qubits].slice(0, most)
-}
-
-function chainsWith(labels: readonly string[], sought: string): Found[] {
-  const rankOf = (label: string): number => (label === sought ? 0 : label.startsWith(sought) ? 1 : 2)
-  return labels
-    .flatMap((label, variable) => {
-      const lower = label.toLowerCase()
-      return lower.includes(sought) ? [{ variable, label, rank: rankOf(lower) }] : []
-    })
-    .sort((a, b) => a.rank - b.rank || COLLATOR.compare(a.label, b.label))
-    .map(({ variable }) => ({ kind: 'chain', variable }))
 }
 
 function qubitsFrom(ids: Uint32Array, digits: string, most: number): Found[] {
