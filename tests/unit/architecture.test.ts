@@ -55,6 +55,16 @@ describe('the house', () => {
     expect(findCircle(files)).toBeNull()
   })
 
+  it('lets one file of the engine know one package, and no other any', () => {
+    const imports = /^(?:import|export|\})[^'\n]*\sfrom '([^.'][^']*)'|\bimport\(?\s*'([^.'][^']*)'/gm
+    const known = filesUnder(join(root, 'shared/engine'), /\.ts$/).flatMap((path) =>
+      [...readFileSync(path, 'utf8').matchAll(imports)].map(
+        ([, from, bare]) => `${relative(root, path)}: ${from ?? bare}`,
+      ),
+    )
+    expect(known).toEqual(['shared/engine/formats/archive.ts: fflate'])
+  })
+
   it('sends every route through the role check, or says that it is public', () => {
     const open = ['entrance.get.ts', 'health.get.ts', 'session.delete.ts', 'session.post.ts', 'setup.post.ts']
     for (const path of filesUnder(join(root, 'server/api'), /\.ts$/)) {

@@ -1,5 +1,6 @@
+import { gunzip, isGzip } from './archive'
 import { peek } from './chunks'
-import { ReadingFault, type FileReading } from './format'
+import type { FileReading } from './format'
 
 /** A file without what it was packed in. */
 export interface Opened {
@@ -7,15 +8,10 @@ export interface Opened {
   readonly chunks: Iterable<Uint8Array>
 }
 
-const GZIP_MAGIC = [0x1f, 0x8b] as const
+const MAGIC_LENGTH = 2
 
-/**
- * The chunks of a file without what it was packed in.
- * @throws ReadingFault for a file that is packed
- */
+/** The chunks of a file without what it was packed in; a fault of the packing is thrown by the chunks (`ReadingFault`). */
 export function openContainer(source: Iterable<Uint8Array>): Opened {
-  const { head, chunks } = peek(source, GZIP_MAGIC.length)
-  if (head[0] === GZIP_MAGIC[0] && head[1] === GZIP_MAGIC[1])
-    throw new ReadingFault('the file is packed with gzip: unpack it first')
-  return { container: null, chunks }
+  const { head, chunks } = peek(source, MAGIC_LENGTH)
+  return isGzip(head) ? { container: 'gzip', chunks: gunzip(chunks) } : { container: null, chunks }
 }

@@ -1,0 +1,17 @@
+import { describe, expect, it } from 'vitest'
+import { crc32 } from '../../../../shared/engine/formats/checksum'
+
+const bytes = (text: string): Uint8Array => new TextEncoder().encode(text)
+
+describe('crc32', () => {
+  it('has the check value of the published polynomial', () => {
+    expect(crc32(bytes('123456789'))).toBe(0xcbf43926)
+    expect(crc32(new Uint8Array(0))).toBe(0)
+  })
+
+  it('goes on from the checksum of earlier bytes', () => {
+    const whole = bytes('Nevern, Farstrand and Skerry Sound')
+    for (let cut = 0; cut <= whole.length; cut++)
+      expect(crc32(whole.subarray(cut), crc32(whole.subarray(0, cut)))).toBe(crc32(whole))
+  })
+})
