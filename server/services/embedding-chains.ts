@@ -18,7 +18,7 @@ export async function chainsOf(app: App, actor: Actor, id: string): Promise<Uint
   const row = await embeddingRow(app, actor, id)
   if (row.status !== 'found' || !row.chainsBlobId)
     throw new DomainError('wrong state', 'embedding.no-chains', `E-${row.number} is ${row.status}; it has no chains.`)
-  const { labels, problem } = await problemData(app, await problemRow(app, actor, row.problemId))
+  const { labels, problem } = await problemData(app, await problemRow(app, actor, row.problemId, row.problemVersion))
   const machine = await calibratedMachine(app, actor, row.machineId, row.calibration)
   const embedding = unpackChains(await app.blobs.read(row.chainsBlobId))
   const graph = interactionGraph(problem)

@@ -33,15 +33,15 @@ export interface Subject {
 export async function subjectOf(
   app: App,
   actor: Pick<Actor, 'workspaceId'>,
-  ids: { problemId: string; machineId: string; calibration?: number },
+  ids: { problemId: string; problemVersion?: number; machineId: string; calibration?: number },
 ): Promise<Subject> {
-  const problem = await problemRow(app, actor, ids.problemId)
+  const problem = await problemRow(app, actor, ids.problemId, ids.problemVersion)
   return withMachine(app, problem, await calibratedMachine(app, actor, ids.machineId, ids.calibration))
 }
 
 /** What an embedding that is there stands on. @throws Error when its problem is gone */
 export async function subjectOfRow(app: App, row: EmbeddingRow): Promise<Subject> {
-  const problem = await findReferredProblem(app.db, row.problemId)
+  const problem = await findReferredProblem(app.db, row.problemId, row.problemVersion)
   if (!problem) throw new Error('the problem was deleted meanwhile')
   return withMachine(app, problem, await calibratedMachine(app, row, row.machineId, row.calibration))
 }
@@ -67,8 +67,8 @@ export const taskOf = ({ graph, machine }: Subject, start: Start | null): Embedd
  */
 export async function carriedChains(app: App, subject: Subject, earlier: EmbeddingRow): Promise<Embedding> {
   const chains = unpackChains(await app.blobs.read(earlier.chainsBlobId!))
-  if (earlier.problemId === subject.problem.id) return chains
-  const problem = await findReferredProblem(app.db, earlier.problemId)
+  if (earlier.problemId === subject.problem.id && earlier.problemVersion === subject.problem.version) return chains
+  const problem = await findReferredProblem(app.db, earlier.problemId, earlier.problemVersion)
   const { labels } = await problemData(app, problem!)
   const places = new Map(labels.map((label, i) => [label, i]))
   return packChains(
@@ -89,6 +89,7 @@ export function frozenMask(labels: readonly string[], frozen: readonly string[])
 export const identityOf = (app: App, actor: Actor, { problem, machine }: Subject) => ({
   workspaceId: actor.workspaceId,
   problemId: problem.id,
+  problemVersion: problem.version,
   machineId: machine.machine.id,
   calibration: machine.calibration.number,
   version: app.version,

@@ -153,7 +153,7 @@ async function embeddingsBroken(app: App, before: CalibratedMachine, working: Wo
 }
 
 async function holdsOn(app: App, embedding: EmbeddingRow, working: WorkingGraph): Promise<boolean> {
-  const problem = await findReferredProblem(app.db, embedding.problemId)
+  const problem = await findReferredProblem(app.db, embedding.problemId, embedding.problemVersion)
   if (!embedding.chainsBlobId || !problem) return false
   const graph = interactionGraph((await problemData(app, problem)).problem)
   const chains = unpackChains(await app.blobs.read(embedding.chainsBlobId))

@@ -71,24 +71,31 @@ async function saveProblem(
   const number = await app.db.transaction(async (tx) => {
     const number = await nextNumber(tx, actor.workspaceId, 'problem')
     await app.blobs.adopt(tx, dataBlobId)
-    await insertProblem(tx, {
-      id,
-      workspaceId: actor.workspaceId,
-      number,
-      name: view.name,
-      form: view.form,
-      sense: view.sense,
-      variables: view.variables,
-      interactions: view.interactions,
-      dataBlobId,
-      fingerprint,
-      source: { fileName: file.name, bytes: file.bytes.byteLength, sha256 },
-      reading: view.reading,
-      structure: view.structure,
-      createdBy: actor.userId,
-      createdAt: now,
-      changedAt: now,
-    })
+    await insertProblem(
+      tx,
+      {
+        id,
+        workspaceId: actor.workspaceId,
+        number,
+        name: view.name,
+        createdBy: actor.userId,
+        createdAt: now,
+        changedAt: now,
+      },
+      {
+        form: view.form,
+        sense: view.sense,
+        variables: view.variables,
+        interactions: view.interactions,
+        dataBlobId,
+        fingerprint,
+        source: { fileName: file.name, bytes: file.bytes.byteLength, sha256 },
+        reading: view.reading,
+        structure: view.structure,
+        versionBy: actor.userId,
+        versionAt: now,
+      },
+    )
     return number
   })
   return { ...view, id, number }

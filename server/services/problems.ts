@@ -24,9 +24,19 @@ import type { ProblemData } from './problem-data'
 import { unpackProblem } from './problem-data'
 import { signed, signOf } from './sense'
 
-/** A problem of the workspace. @throws DomainError not found, also for another workspace's */
-export async function problemRow(app: App, actor: Pick<Actor, 'workspaceId'>, id: string): Promise<ProblemRow> {
-  const row = await findProblem(app.db, actor.workspaceId, id)
+/**
+ * A problem of the workspace at one of its versions, without a number at the current one.
+ * @throws DomainError not found, also for another workspace's
+ */
+export async function problemRow(
+  app: App,
+  actor: Pick<Actor, 'workspaceId'>,
+  id: string,
+  version?: number,
+): Promise<ProblemRow> {
+  const row = await findProblem(app.db, actor.workspaceId, id, version)
+  if (!row && version !== undefined && (await findProblem(app.db, actor.workspaceId, id)))
+    throw new DomainError('not found', 'problem.version', `This problem has no version ${version}.`)
   if (!row) throw new DomainError('not found', 'problem.unknown', 'There is no such problem in this workspace.')
   return row
 }

@@ -61,7 +61,7 @@ export async function loadBench(app: App, row: EmbeddingRow): Promise<Bench> {
       'embedding.not-found',
       `Embedding E-${row.number} has no chains (${row.status}). Choose one that was found.`,
     )
-  const problem = await findReferredProblem(app.db, row.problemId)
+  const problem = await findReferredProblem(app.db, row.problemId, row.problemVersion)
   if (!problem) throw new DomainError('not found', 'problem.unknown', 'The problem of this embedding was deleted.')
   const { form, labels, problem: coefficients } = await problemData(app, problem)
   return {

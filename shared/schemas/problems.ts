@@ -84,6 +84,16 @@ export interface StructureView {
   treewidthUpperBound: number | null
 }
 
+/** Variables of which exactly, at most or at least `k` are 1 in an answer that is allowed. */
+export interface ConstraintGroup {
+  name: string
+  kind: 'exactly' | 'at most' | 'at least'
+  k: number
+  /** Indices of the variables. */
+  members: number[]
+  source: 'recognised' | 'entered'
+}
+
 /** Answer to an upload; with dryRun nothing was saved and `id` is null. */
 export interface UploadedProblem {
   id: string | null

@@ -86,24 +86,24 @@ beforeEach(async () => {
   await blobs.adopt(db, dataBlobId)
   samplesBlobId = await blobs.write(Uint8Array.of(2))
   await blobs.adopt(db, samplesBlobId)
-  await insertProblem(db, {
-    id: problemId,
-    workspaceId: 'w',
-    number: round,
-    name: 'P',
-    form: 'qubo',
-    sense: 'min',
-    variables: 1,
-    interactions: 0,
-    dataBlobId,
-    fingerprint: '-',
-    source: { fileName: 'p.csv', bytes: 1, sha256: '-' },
-    reading: {} as never,
-    structure: { density: 0 } as never,
-    createdBy: 'u',
-    createdAt: now(),
-    changedAt: now(),
-  })
+  const at = now()
+  await insertProblem(
+    db,
+    { id: problemId, workspaceId: 'w', number: round, name: 'P', createdBy: 'u', createdAt: at, changedAt: at },
+    {
+      form: 'qubo',
+      sense: 'min',
+      variables: 1,
+      interactions: 0,
+      dataBlobId,
+      fingerprint: '-',
+      source: { fileName: 'p.csv', bytes: 1, sha256: '-' },
+      reading: {} as never,
+      structure: { density: 0 } as never,
+      versionBy: 'u',
+      versionAt: at,
+    },
+  )
   await insertEmbedding(db, {
     id: embeddingId,
     workspaceId: 'w',

@@ -46,6 +46,27 @@ it('bring a database of the first release up to date without losing anything', a
   ])
 })
 
+it('move the data of a problem to its first version', async () => {
+  const { rows } = await database.executeSql(
+    'select p.name, p.current_version, p.tags, v.* from problems p join problem_versions v on v.problem_id = p.id',
+  )
+  expect(rows).toMatchObject([
+    {
+      name: 'Problem',
+      current_version: 1,
+      tags: [],
+      version: 1,
+      form: 'qubo',
+      sense: 'min',
+      variables: 2,
+      interactions: 1,
+      data_blob_id: 'b',
+      groups: null,
+      version_by: 'u',
+    },
+  ])
+})
+
 it('are applied once', async () => {
   await migrate(database)
   const { rows } = await database.executeSql('select count(*)::int as n from embeddings')

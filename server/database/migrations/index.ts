@@ -101,5 +101,44 @@ export const MIGRATIONS = [
       "\nALTER TABLE \"run_sheets\" ADD COLUMN \"deleted_at\" timestamp with time zone;",
       "\nALTER TABLE \"run_sheets\" ADD COLUMN \"deleted_with\" text;"
     ]
+  },
+  {
+    "tag": "0003_problem_versions",
+    "folderMillis": 1796159081859,
+    "hash": "fd569c5b4489033bd6d73fb6ae2b17a5ec7fa7063b2cf99bfe21868639bcaa58",
+    "bps": true,
+    "sql": [
+      "CREATE TABLE \"problem_versions\" (\n\t\"problem_id\" text NOT NULL,\n\t\"version\" integer NOT NULL,\n\t\"remark\" text DEFAULT '' NOT NULL,\n\t\"form\" text NOT NULL,\n\t\"sense\" text NOT NULL,\n\t\"variables\" integer NOT NULL,\n\t\"interactions\" integer NOT NULL,\n\t\"data_blob_id\" text NOT NULL,\n\t\"fingerprint\" text NOT NULL,\n\t\"source\" jsonb NOT NULL,\n\t\"reading\" jsonb NOT NULL,\n\t\"structure\" jsonb NOT NULL,\n\t\"groups\" jsonb,\n\t\"version_by\" text NOT NULL,\n\t\"version_at\" timestamp with time zone NOT NULL,\n\tCONSTRAINT \"problem_versions_problem_id_version_pk\" PRIMARY KEY(\"problem_id\",\"version\")\n);\n",
+      "\nCREATE TABLE \"reductions\" (\n\t\"problem_id\" text PRIMARY KEY NOT NULL,\n\t\"source_id\" text,\n\t\"source_version\" integer NOT NULL,\n\t\"blob_id\" text NOT NULL,\n\t\"summary\" jsonb NOT NULL,\n\t\"seconds\" double precision NOT NULL,\n\t\"version\" text NOT NULL,\n\t\"created_at\" timestamp with time zone NOT NULL\n);\n",
+      "\nCREATE TABLE \"reference_optima\" (\n\t\"id\" text PRIMARY KEY NOT NULL,\n\t\"workspace_id\" text NOT NULL,\n\t\"problem_id\" text NOT NULL,\n\t\"problem_version\" integer NOT NULL,\n\t\"status\" text NOT NULL,\n\t\"energy\" double precision,\n\t\"bound\" double precision,\n\t\"proved\" boolean DEFAULT false NOT NULL,\n\t\"state_blob_id\" text,\n\t\"method\" text,\n\t\"detail\" jsonb DEFAULT '{}'::jsonb NOT NULL,\n\t\"settings\" jsonb NOT NULL,\n\t\"reason\" text,\n\t\"seconds\" double precision,\n\t\"version\" text NOT NULL,\n\t\"created_by\" text NOT NULL,\n\t\"created_at\" timestamp with time zone NOT NULL\n);\n",
+      "\nALTER TABLE \"problems\" DROP CONSTRAINT \"problems_data_blob_id_blobs_id_fk\";\n",
+      "\nALTER TABLE \"embeddings\" ADD COLUMN \"problem_version\" integer DEFAULT 1 NOT NULL;",
+      "\nALTER TABLE \"problems\" ADD COLUMN \"tags\" jsonb DEFAULT '[]'::jsonb NOT NULL;",
+      "\nALTER TABLE \"problems\" ADD COLUMN \"current_version\" integer DEFAULT 1 NOT NULL;",
+      "\nALTER TABLE \"problem_versions\" ADD CONSTRAINT \"problem_versions_problem_id_problems_id_fk\" FOREIGN KEY (\"problem_id\") REFERENCES \"public\".\"problems\"(\"id\") ON DELETE cascade ON UPDATE no action;",
+      "\nALTER TABLE \"problem_versions\" ADD CONSTRAINT \"problem_versions_data_blob_id_blobs_id_fk\" FOREIGN KEY (\"data_blob_id\") REFERENCES \"public\".\"blobs\"(\"id\") ON DELETE no action ON UPDATE no action;",
+      "\nALTER TABLE \"problem_versions\" ADD CONSTRAINT \"problem_versions_version_by_users_id_fk\" FOREIGN KEY (\"version_by\") REFERENCES \"public\".\"users\"(\"id\") ON DELETE no action ON UPDATE no action;",
+      "\nALTER TABLE \"reductions\" ADD CONSTRAINT \"reductions_problem_id_problems_id_fk\" FOREIGN KEY (\"problem_id\") REFERENCES \"public\".\"problems\"(\"id\") ON DELETE cascade ON UPDATE no action;",
+      "\nALTER TABLE \"reductions\" ADD CONSTRAINT \"reductions_source_id_problems_id_fk\" FOREIGN KEY (\"source_id\") REFERENCES \"public\".\"problems\"(\"id\") ON DELETE set null ON UPDATE no action;",
+      "\nALTER TABLE \"reductions\" ADD CONSTRAINT \"reductions_blob_id_blobs_id_fk\" FOREIGN KEY (\"blob_id\") REFERENCES \"public\".\"blobs\"(\"id\") ON DELETE no action ON UPDATE no action;",
+      "\nALTER TABLE \"reference_optima\" ADD CONSTRAINT \"reference_optima_workspace_id_workspaces_id_fk\" FOREIGN KEY (\"workspace_id\") REFERENCES \"public\".\"workspaces\"(\"id\") ON DELETE cascade ON UPDATE no action;",
+      "\nALTER TABLE \"reference_optima\" ADD CONSTRAINT \"reference_optima_problem_id_problems_id_fk\" FOREIGN KEY (\"problem_id\") REFERENCES \"public\".\"problems\"(\"id\") ON DELETE cascade ON UPDATE no action;",
+      "\nALTER TABLE \"reference_optima\" ADD CONSTRAINT \"reference_optima_state_blob_id_blobs_id_fk\" FOREIGN KEY (\"state_blob_id\") REFERENCES \"public\".\"blobs\"(\"id\") ON DELETE no action ON UPDATE no action;",
+      "\nALTER TABLE \"reference_optima\" ADD CONSTRAINT \"reference_optima_created_by_users_id_fk\" FOREIGN KEY (\"created_by\") REFERENCES \"public\".\"users\"(\"id\") ON DELETE no action ON UPDATE no action;",
+      "\nCREATE INDEX \"reductions_source_id_index\" ON \"reductions\" USING btree (\"source_id\");",
+      "\nCREATE INDEX \"reference_optima_problem_id_problem_version_index\" ON \"reference_optima\" USING btree (\"problem_id\",\"problem_version\");",
+      "\nCREATE INDEX \"problems_workspace_id_changed_at_index\" ON \"problems\" USING btree (\"workspace_id\",\"changed_at\");",
+      "\nCREATE INDEX \"problems_workspace_id_name_index\" ON \"problems\" USING btree (\"workspace_id\",\"name\");",
+      "\nINSERT INTO \"problem_versions\" (\"problem_id\", \"version\", \"form\", \"sense\", \"variables\", \"interactions\", \"data_blob_id\", \"fingerprint\", \"source\", \"reading\", \"structure\", \"version_by\", \"version_at\")\nSELECT \"id\", 1, \"form\", \"sense\", \"variables\", \"interactions\", \"data_blob_id\", \"fingerprint\", \"source\", \"reading\", \"structure\", \"created_by\", \"created_at\" FROM \"problems\";",
+      "\nALTER TABLE \"problems\" DROP COLUMN \"form\";",
+      "\nALTER TABLE \"problems\" DROP COLUMN \"sense\";",
+      "\nALTER TABLE \"problems\" DROP COLUMN \"variables\";",
+      "\nALTER TABLE \"problems\" DROP COLUMN \"interactions\";",
+      "\nALTER TABLE \"problems\" DROP COLUMN \"data_blob_id\";",
+      "\nALTER TABLE \"problems\" DROP COLUMN \"fingerprint\";",
+      "\nALTER TABLE \"problems\" DROP COLUMN \"source\";",
+      "\nALTER TABLE \"problems\" DROP COLUMN \"reading\";",
+      "\nALTER TABLE \"problems\" DROP COLUMN \"structure\";"
+    ]
   }
 ]

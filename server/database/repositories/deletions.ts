@@ -1,7 +1,7 @@
 import { and, eq, gte, inArray, isNull, lt } from 'drizzle-orm'
 import type { DeletableKind } from '../../../shared/schemas/deletions'
 import type { Db } from '../client'
-import { embeddings, problems, returns, runSheets } from '../schema'
+import { embeddings, problems, problemVersions, reductions, referenceOptima, returns, runSheets } from '../schema'
 import type { Deleted } from './jobs'
 
 const ROOTS = { problem: problems, embedding: embeddings, 'run sheet': runSheets } as const
@@ -117,8 +117,7 @@ export async function deleteForGood(
     .where(and(eq(root.id, id), eq(root.deletedWith, id), lt(root.deletedAt, before)))
     .for('update')
   if (held.length === 0) return undefined
-  const data =
-    kind === 'problem' ? await tx.select({ blobId: problems.dataBlobId }).from(problems).where(eq(problems.id, id)) : []
+  const data = kind === 'problem' ? await dataOf(tx, id) : { blobs: [], references: [] }
   const chains = await tx
     .select({ id: embeddings.id, blobId: embeddings.chainsBlobId })
     .from(embeddings)
@@ -129,7 +128,22 @@ export async function deleteForGood(
     .where(returnsUnder(tx, kind, id))
   await tx.delete(root).where(eq(root.id, id))
   return {
-    blobIds: [...data, ...chains, ...samples].flatMap(({ blobId }) => blobId ?? []),
-    subjectIds: [...chains, ...samples].map((row) => row.id),
+    blobIds: [...data.blobs, ...data.references, ...chains, ...samples].flatMap(({ blobId }) => blobId ?? []),
+    subjectIds: [...data.references, ...chains, ...samples].map((row) => row.id),
   }
+}
+
+/** What a problem itself keeps: its versions, the record of its reduction, its reference optima. */
+async function dataOf(tx: Db, problemId: string) {
+  const versions = tx
+    .select({ blobId: problemVersions.dataBlobId })
+    .from(problemVersions)
+    .where(eq(problemVersions.problemId, problemId))
+  const reduction = tx.select({ blobId: reductions.blobId }).from(reductions).where(eq(reductions.problemId, problemId))
+  const blobs = [...(await versions), ...(await reduction)]
+  const references = await tx
+    .select({ id: referenceOptima.id, blobId: referenceOptima.stateBlobId })
+    .from(referenceOptima)
+    .where(eq(referenceOptima.problemId, problemId))
+  return { blobs, references }
 }

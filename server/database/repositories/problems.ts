@@ -1,31 +1,51 @@
-import { and, desc, eq, isNull } from 'drizzle-orm'
+import { and, desc, eq, getTableColumns, isNull } from 'drizzle-orm'
 import type { Db } from '../client'
-import { problems, users } from '../schema'
+import { problems, problemVersions, users } from '../schema'
 
-export type ProblemRow = typeof problems.$inferSelect
+const { problemId: _problemId, ...versionColumns } = getTableColumns(problemVersions)
+const columns = { ...getTableColumns(problems), ...versionColumns }
 
-export async function insertProblem(db: Db, row: typeof problems.$inferInsert): Promise<void> {
-  await db.insert(problems).values(row)
+/** A problem with the data of one of its versions. */
+export type ProblemRow = typeof problems.$inferSelect & Omit<typeof problemVersions.$inferSelect, 'problemId'>
+export type NewProblem = Omit<typeof problems.$inferInsert, 'currentVersion'>
+export type NewVersion = Omit<typeof problemVersions.$inferInsert, 'problemId' | 'version'>
+
+/** A problem with its first version. */
+export async function insertProblem(tx: Db, problem: NewProblem, version: NewVersion): Promise<void> {
+  await tx.insert(problems).values(problem)
+  await tx.insert(problemVersions).values({ ...version, problemId: problem.id, version: 1 })
 }
 
-export async function findProblem(db: Db, workspaceId: string, id: string): Promise<ProblemRow | undefined> {
-  return (
-    await db
-      .select()
-      .from(problems)
-      .where(and(eq(problems.workspaceId, workspaceId), eq(problems.id, id), isNull(problems.deletedWith)))
-  )[0]
+const rowsAt = (db: Db, version?: number) =>
+  db
+    .select(columns)
+    .from(problems)
+    .innerJoin(
+      problemVersions,
+      and(eq(problemVersions.problemId, problems.id), eq(problemVersions.version, version ?? problems.currentVersion)),
+    )
+
+/** A problem of the workspace at a version; without one, at the current. */
+export async function findProblem(
+  db: Db,
+  workspaceId: string,
+  id: string,
+  version?: number,
+): Promise<ProblemRow | undefined> {
+  const rows = await rowsAt(db, version).where(
+    and(eq(problems.workspaceId, workspaceId), eq(problems.id, id), isNull(problems.deletedWith)),
+  )
+  return rows[0]
 }
 
 /** The problem that a row refers to, deleted or not: jobs work on while a deletion can be undone. */
-export async function findReferredProblem(db: Db, id: string): Promise<ProblemRow | undefined> {
-  return (await db.select().from(problems).where(eq(problems.id, id)))[0]
+export async function findReferredProblem(db: Db, id: string, version: number): Promise<ProblemRow | undefined> {
+  return (await rowsAt(db, version).where(eq(problems.id, id)))[0]
 }
 
+/** Problems at their current versions. */
 export async function listProblems(db: Db, workspaceId: string, limit: number, offset: number): Promise<ProblemRow[]> {
-  return db
-    .select()
-    .from(problems)
+  return rowsAt(db)
     .where(and(eq(problems.workspaceId, workspaceId), isNull(problems.deletedWith)))
     .orderBy(desc(problems.changedAt), desc(problems.number))
     .limit(limit)
