@@ -50,6 +50,7 @@ describe('UiUndo', () => {
   })
 
   it('waits while the pointer rests on it, but no longer than the server keeps it', async () => {
+    document.body.appendChild(document.createElement('button')).focus()
     const line = make()
     await line.trigger('pointerenter')
     await pass(30_000)
