@@ -122,3 +122,26 @@ export function treewidthUpperBound(graph: Graph, limits = DEFAULTS): number | n
   }
   return bound
 }
+
+/** An order in which vertices are eliminated, and the most neighbours that any has when its turn comes. */
+export interface EliminationOrder {
+  readonly order: Uint32Array
+  readonly width: number
+}
+
+/** The order of greedy elimination with least fill; null where `treewidthUpperBound` gives no bound either. */
+export function leastFillOrder(graph: Graph, limits = DEFAULTS): EliminationOrder | null {
+  const firstCount = 2 * sizeOf(graph) * Math.ceil(graph.order / 32)
+  if (graph.order > limits.maxOrder || firstCount > limits.maxWork) return null
+  const elimination = new Elimination(graph)
+  const order = new Uint32Array(graph.order)
+  let width = 0
+  for (let k = 0; k < graph.order; k++) {
+    if (elimination.work > limits.maxWork) return null
+    const v = elimination.leastFill()
+    width = Math.max(width, elimination.degree[v]!)
+    elimination.eliminate(v)
+    order[k] = v
+  }
+  return { order, width }
+}
