@@ -1,256 +1,144 @@
-<script setup lang="ts">
-import { computed, inject, ref, useId } from 'vue'
-import UiKeyHint from './KeyHint.vue'
-import { fieldKey } from '../../utils/ui/parts'
+import { matchVariables } from './match-variables'
+import type { NamedProblem } from './match-variables'
 
-/** One answer to what was typed. */
-export interface ComboboxOption {
-  readonly key: string
-  readonly label: string
-  readonly note?: string
+/** A coefficient that is not the same in both; null on the side where there is none. */
+export interface TermChange {
+  /** One label for a linear coefficient, two for an interaction; as the later problem calls them. */
+  readonly labels: readonly string[]
+  readonly before: number | null
+  readonly after: number | null
 }
 
-const props = withDefaults(
-  defineProps<{
-    /** Above the box, or before it; within a field the field's label stands there. */
-    label: string
-    /** Answers to the question, best first. */
-    options: readonly ComboboxOption[]
-    /** Said when there is no answer. */
-    none: string
-    /** What is chosen, where the box keeps a choice. */
-    chosen?: { key: string; label: string } | null
-    /** Key on the keyboard that leads here, shown in the box. */
-    shortcut?: string
-    /** The label stands before the box and not above it. */
-    inline?: boolean
-    /** The box is part of a form: what is typed or chosen stays in it. */
-    keepsWords?: boolean
-  }>(),
-  { chosen: null, shortcut: undefined },
-)
-const emit = defineEmits<{ choose: [key: string] }>()
-const words = defineModel<string>('words', { required: true })
+/**
+ * How the interactions of the later problem stand to those of the earlier one: an embedding of the earlier one holds for
+ * the later one where they are the same, or fewer among the same variables or some of them.
+ */
+export type GraphStanding = 'same' | 'fewer' | 'changed'
 
-const ownId = useId()
-const field = inject(fieldKey, undefined)
-const id = field?.id ?? ownId
-const input = ref<HTMLInputElement>()
-const isOpen = ref(false)
-/** Answer that Enter takes. */
-const at = ref(0)
-
-const isAsking = computed(() => isOpen.value && words.value.trim() !== '')
-const hasAnswers = computed(() => isAsking.value && props.options.length > 0)
-const current = computed(() => Math.min(at.value, props.options.length - 1))
-const shown = computed(() => words.value || props.chosen?.label || '')
-const optionId = (k: number) => `${id}-${k}`
-
-function ask(event: Event) {
-  words.value = (event.target as HTMLInputElement).value
-  isOpen.value = true
-  at.value = 0
+export interface ProblemDifference {
+  /** Labels of the variables that are new, gone, and called otherwise (before, after). */
+  readonly added: string[]
+  readonly removed: string[]
+  readonly renamed: [string, string][]
+  /** Linear coefficients of variables in both that differ. */
+  readonly linearChanged: number
+  readonly interactionsAdded: number
+  readonly interactionsRemoved: number
+  /** Interactions in both whose values differ. */
+  readonly interactionsChanged: number
+  /** The first changes of coefficients, linear ones before interactions, in the later problem's order. */
+  readonly changes: TermChange[]
+  readonly offset: { readonly before: number; readonly after: number }
+  readonly graph: GraphStanding
 }
 
-function choose(option: ComboboxOption | undefined) {
-  if (!option) return
-  emit('choose', option.key)
-  close()
-  words.value = props.keepsWords ? option.label : ''
+interface Pairs {
+  /** lower · n + higher of the after-indices, ascending. */
+  readonly keys: Float64Array
+  readonly values: Float64Array
 }
 
-function close() {
-  isOpen.value = false
-}
-
-/** A choice that stands is shown again when the box is left. */
-function leave() {
-  close()
-  if (props.chosen) words.value = ''
-}
-
-function move(by: number) {
-  isOpen.value = true
-  const count = props.options.length
-  if (count > 0) at.value = (current.value + by + count) % count
-}
-
-const KEYS: Record<string, () => void> = {
-  ArrowDown: () => move(1),
-  ArrowUp: () => move(-1),
-  Enter: () => choose(props.options[current.value]),
-  Escape: close,
-}
-
-function onKeydown(event: KeyboardEvent) {
-  if (event.isComposing || !(event.key in KEYS) || !isAsking.value) return
-  KEYS[event.key]!()
-  event.preventDefault()
-}
-
-function focus() {
-  input.value?.focus()
-  input.value?.select()
-}
-defineExpose({ focus })
-</script>
-
-<template>
-  <div class="combobox" :class="{ inline }">
-    <label v-if="!field" :for="id">{{ label }}</label>
-    <div class="box" :class="{ invalid: field?.invalid.value }">
-      <input
-        :id="id"
-        ref="input"
-        class="font-mono"
-        type="text"
-        role="combobox"
-        autocomplete="off"
-        spellcheck="false"
-        aria-autocomplete="list"
-        aria-haspopup="listbox"
-        :aria-expanded="hasAnswers"
-        :aria-controls="hasAnswers ? `${id}-list` : undefined"
-        :aria-activedescendant="hasAnswers ? optionId(current) : undefined"
-        :aria-keyshortcuts="shortcut"
-        :aria-invalid="field?.invalid.value || undefined"
-        :aria-describedby="field?.describedBy.value"
-        :required="field?.required.value || undefined"
-        :value="shown"
-        @input="ask"
-        @keydown="onKeydown"
-        @focus="input?.select()"
-        @click="isOpen = true"
-        @blur="leave"
-      />
-      <span v-if="shortcut && !shown" class="pr-2" aria-hidden="true"><UiKeyHint :keys="[shortcut]" /></span>
-      <!-- The focus stays in the field while the pointer chooses. -->
-      <div v-if="isAsking" class="answers" @pointerdown.prevent>
-        <ul v-if="options.length" :id="`${id}-list`" role="listbox" :aria-label="label">
-          <li
-            v-for="(option, k) in options"
-            :id="optionId(k)"
-            :key="option.key"
-            role="option"
-            :aria-selected="k === current"
-            @click="choose(option)"
-            @pointermove="at = k"
-          >
-            <span class="font-mono">{{ option.label }}</span>
-            <span v-if="option.note" class="note">{{ option.note }}</span>
-          </li>
-        </ul>
-        <p v-else class="none" role="status">{{ none }}</p>
-      </div>
-    </div>
-  </div>
-</template>
-
-<style scoped>
-.combobox {
-  display: grid;
-  grid-template-columns: minmax(0, 1fr);
-  gap: 0.25rem;
-  min-width: 0;
-  font-size: 0.8125rem;
-  line-height: 1.125rem;
-}
-
-.inline {
-  grid-template-columns: auto minmax(0, 1fr);
-  align-items: center;
-  gap: 0.75rem;
-}
-
-.box {
-  position: relative;
-  display: flex;
-  align-items: center;
-  min-height: 2.125rem;
-  border: 1px solid var(--rule);
-  border-bottom: 2px solid var(--edge);
-  border-radius: 2px;
-  background: var(--field);
-  color: var(--ink);
-}
-
-.box:hover {
-  border-bottom-color: var(--ink);
-}
-
-.box:focus-within {
-  outline: 2px solid var(--leaf);
-  outline-offset: 2px;
-}
-
-.invalid {
-  border-color: var(--clay);
-}
-
-input {
-  flex: 1 1 auto;
-  align-self: stretch;
-  width: 100%;
-  min-width: 0;
-  border: 0;
-  background: none;
-  padding: 0.25rem 0.625rem;
-  color: inherit;
-  font-size: 0.875rem;
-  outline: none;
-}
-
-.answers {
-  position: absolute;
-  z-index: 30;
-  top: calc(100% + 6px);
-  left: -1px;
-  width: max(100% + 2px, 15rem);
-  max-width: calc(100vw - 2rem);
-  border: 1px solid var(--ink);
-  background: var(--paper);
-  padding: 0.25rem 0;
-}
-
-li {
-  display: flex;
-  align-items: baseline;
-  gap: 0.5rem;
-  min-height: 1.875rem;
-  padding: 0.375rem 0.75rem;
-  cursor: pointer;
-}
-
-li[aria-selected='true'] {
-  background: var(--well);
-  outline: 2px solid var(--leaf);
-  outline-offset: -2px;
-}
-
-.note {
-  margin-left: auto;
-  padding-left: 1rem;
-  color: var(--ink2);
-  text-align: right;
-}
-
-.none {
-  padding: 0.375rem 0.75rem;
-  color: var(--ink2);
-}
-
-@media screen and (max-width: 719.98px), (pointer: coarse) {
-  .box,
-  li {
-    min-height: 2.75rem;
-  }
-
-  li {
-    align-items: center;
-  }
-
-  input {
-    font-size: 1rem;
+/** The earlier interactions whose ends both are in the later problem, by the later problem's indices. */
+function carriedPairs({ problem }: NamedProblem, places: Int32Array, n: number): Pairs {
+  const carried: number[] = []
+  const keyOf = new Float64Array(problem.values.length)
+  let isSorted = true
+  problem.values.forEach((_, k) => {
+    const [a, b] = [places[problem.rows[k]!]!, places[problem.cols[k]!]!]
+    if (a < 0 || b < 0) return
+    keyOf[k] = Math.min(a, b) * n + Math.max(a, b)
+    const last = carried.at(-1)
+    if (last !== undefined && keyOf[last]! > keyOf[k]!) isSorted = false
+    carried.push(k)
+  })
+  if (!isSorted) carried.sort((x, y) => keyOf[x]! - keyOf[y]!)
+  return {
+    keys: Float64Array.from(carried, (k) => keyOf[k]!),
+    values: Float64Array.from(carried, (k) => problem.values[k]!),
   }
 }
-</style>
+
+const pairsOf = ({ problem: { n, rows, cols, values } }: NamedProblem): Pairs => ({
+  keys: Float64Array.from(values, (_, k) => rows[k]! * n + cols[k]!),
+  values,
+})
+
+interface Collected {
+  added: number
+  removed: number
+  changed: number
+  changes: TermChange[]
+}
+
+/** Walks both sorted lists of interactions side by side. */
+function compareInteractions(before: Pairs, after: Pairs, labels: readonly string[], room: number): Collected {
+  const found: Collected = { added: 0, removed: 0, changed: 0, changes: [] }
+  const n = labels.length
+  const tell = (key: number, was: number | null, is: number | null): void => {
+    if (found.changes.length < room)
+      found.changes.push({ labels: [labels[Math.floor(key / n)]!, labels[key % n]!], before: was, after: is })
+  }
+  for (let b = 0, a = 0; b < before.keys.length || a < after.keys.length; ) {
+    const [was, is] = [before.keys[b] ?? Infinity, after.keys[a] ?? Infinity]
+    if (was < is) {
+      found.removed++
+      tell(was, before.values[b++]!, null)
+    } else if (is < was) {
+      found.added++
+      tell(is, null, after.values[a++]!)
+    } else {
+      if (before.values[b] !== after.values[a]) {
+        found.changed++
+        tell(was, before.values[b]!, after.values[a]!)
+      }
+      b++
+      a++
+    }
+  }
+  return found
+}
+
+const standingOf = (added: number, removed: number): GraphStanding => {
+  if (added > 0) return 'changed'
+  return removed > 0 ? 'fewer' : 'same'
+}
+
+/**
+ * What was changed from one problem to another. Both are to be given in the same form and sense; values are compared to
+ * the last bit. Variables are matched by label, then by what is said of them (see match-variables.ts).
+ *
+ * @param shown at most as many changes of coefficients are listed; all are counted
+ */
+export function differenceOf(before: NamedProblem, after: NamedProblem, shown: number): ProblemDifference {
+  const places = matchVariables(before, after)
+  const isKept = new Uint8Array(after.labels.length)
+  const removed: string[] = []
+  const renamed: [string, string][] = []
+  const changes: { place: number; change: TermChange }[] = []
+  places.forEach((j, i) => {
+    const label = before.labels[i]!
+    if (j < 0) return void removed.push(label)
+    isKept[j] = 1
+    if (after.labels[j] !== label) renamed.push([label, after.labels[j]!])
+    const [was, is] = [before.problem.linear[i]!, after.problem.linear[j]!]
+    if (was !== is) changes.push({ place: j, change: { labels: [after.labels[j]!], before: was, after: is } })
+  })
+  const added = after.labels.filter((_, j) => isKept[j] === 0)
+  changes.sort((a, b) => a.place - b.place)
+  const linear = changes.slice(0, shown).map(({ change }) => change)
+  const carried = carriedPairs(before, places, after.labels.length)
+  const pairs = compareInteractions(carried, pairsOf(after), after.labels, shown - linear.length)
+  const interactionsRemoved = pairs.removed + before.problem.values.length - carried.keys.length
+  return {
+    added,
+    removed,
+    renamed,
+    linearChanged: changes.length,
+    interactionsAdded: pairs.added,
+    interactionsRemoved,
+    interactionsChanged: pairs.changed,
+    changes: [...linear, ...pairs.changes],
+    offset: { before: before.problem.offset, after: after.problem.offset },
+    graph: standingOf(added.length + pairs.added, removed.length + interactionsRemoved),
+  }
+}
