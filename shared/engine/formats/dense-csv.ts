@@ -144,7 +144,7 @@ function sniffText(head: string): number {
   const width = second.length
   const body = [second, ...others]
   const regular = body.filter((cells) => cells.length === width && cells.slice(1).every(isDecimal))
-  const hasCorner = first[0] === '' || first[0]!.toLowerCase() === LABEL_CORNER
+  const hasCorner = first[0] === '' || first[0]?.toLowerCase() === LABEL_CORNER
   const wide = width === 3 ? CONFIDENCE.threeColumns : CONFIDENCE.regular
   return (regular.length / body.length) * (hasCorner ? CONFIDENCE.corner : wide)
 }

@@ -12,13 +12,16 @@ import {
   type ReadingControl,
   type ReadOptions,
 } from './format'
+import { json } from './json'
+import { npy } from './npy'
+import { npz } from './npz'
 
 const DEFAULTS = { headBytes: 65_536 }
 const LINE_FEED = 0x0a
 const FIELD_ENDS = [0x20, 0x09, 0x2c, 0x3b]
 
 /** Every format for problems; where two seem equally likely the earlier one is taken. */
-export const FORMATS: readonly ProblemFormat[] = [coefficients, denseCsv]
+export const FORMATS: readonly ProblemFormat[] = [coefficients, denseCsv, npy, npz, json]
 
 /** The beginning of a file, cut after a whole line or else a whole field where more follows. */
 function headOf({ head, isWhole }: Peeked): Uint8Array {

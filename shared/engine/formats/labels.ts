@@ -65,7 +65,11 @@ function difference(a: string, b: string): string {
  * One issue for each label that may be an earlier one misspelt: the same number, or the same but for case, white space
  * or Unicode normalisation (and, in a list of labels that should each stand once, the same label again).
  */
-export function labelClashes(labels: readonly string[], lines: readonly number[]): ReadingIssue[] {
+export function labelClashes(
+  labels: readonly string[],
+  lines: readonly number[],
+  place: 'line' | 'variable' = 'line',
+): ReadingIssue[] {
   const seen = new Map<string, number>()
   const issues: ReadingIssue[] = []
   for (let i = 0; i < labels.length && issues.length < DEFAULTS.maxClashesShown; i++) {
@@ -73,9 +77,9 @@ export function labelClashes(labels: readonly string[], lines: readonly number[]
     const first = seen.get(key)
     if (first === undefined) seen.set(key, i)
     else {
-      const where = `the labels "${labels[first]}" (line ${lines[first]}) and "${labels[i]}" (line ${lines[i]})`
+      const where = `the labels "${labels[first]}" (${place} ${lines[first]}) and "${labels[i]}" (${place} ${lines[i]})`
       const message = `${where} ${difference(labels[first]!, labels[i]!)}: give each variable one label`
-      issues.push({ line: lines[i]!, message })
+      issues.push(place === 'line' ? { line: lines[i]!, message } : { message })
     }
   }
   return issues
@@ -108,6 +112,6 @@ export function checkLabels(labels: readonly string[], n: number): void {
     const fault = labelFault(label)
     if (fault) throw new RangeError(`the label ${JSON.stringify(label)} cannot be written: ${fault}`)
   }
-  const clash = labelClashes(labels, [...labels.keys()])[0]
+  const clash = labelClashes(labels, [...labels.keys()], 'variable')[0]
   if (clash) throw new RangeError(clash.message)
 }

@@ -1,6 +1,6 @@
 /** Coefficients as decimal text: read strictly, written with the fewest digits that read back exactly. */
 
-const LIMITS = {
+export const LIMITS = {
   /** Beyond these sizes sums, squares and ratios of coefficients would leave the range of doubles. */
   greatest: 1e150,
   least: 1e-150,

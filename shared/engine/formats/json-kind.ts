@@ -1,0 +1,3 @@
+/** What a problem document says it is. */
+export const JSON_KIND = 'espalier.problem'
+export const JSON_VERSION = 1
