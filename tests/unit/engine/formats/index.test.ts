@@ -34,9 +34,9 @@ describe('detectFormat', () => {
 })
 
 describe('readProblem and writeProblem', () => {
-  it('read back what every format writes, detected or named', () => {
+  it('read back what the text formats write, detected or named', () => {
     const problem = randomProblem(createRandom(51), 3, 1, dyadic)
-    for (const { id } of FORMATS) {
+    for (const id of ['coefficients', 'dense-csv']) {
       const text = writeProblem(id, { form: 'ising', labels: ['0', '1', '2'], problem, sense: 'max' })
       expect(readProblem(text)).toMatchObject({ format: id, form: 'ising', sense: 'max', problem })
       expect(readProblem(text, { format: id, sense: 'min' })).toMatchObject({ format: id, sense: 'min' })
@@ -45,7 +45,7 @@ describe('readProblem and writeProblem', () => {
 
   it('name the formats there are', () => {
     expect(() => readProblem(bytesOf(''), { format: 'tarot' })).toThrow(
-      'unknown format "tarot": expected coefficients or dense-csv',
+      /^unknown format "tarot": expected coefficients, dense-csv, .* or \S+$/,
     )
     expect(new Set(FORMATS.map((format) => format.id)).size).toBe(FORMATS.length)
   })
