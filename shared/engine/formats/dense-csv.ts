@@ -8,13 +8,14 @@
  */
 import { negateProblem } from '../problem/negate'
 import { assembleReading } from './assemble'
+import { collected } from './chunks'
 import { writeDirectives } from './directives'
 import type { ProblemDocument, ProblemFormat, ProblemReading, ReadingIssue, ReadOptions } from './format'
 import { checkLabels, labelClashes, labelFault, quoteLabel } from './labels'
 import { LABEL_CORNER, type MatrixShape } from './matrix-shape'
 import { cellsOf, gatherRows, shapeOf, type Table, type TableRow } from './matrix-table'
 import { formatNumber, isDecimal, numberFault, parseNumber } from './numbers'
-import { bytesOf, holdsText, readAsText, textOf } from './text'
+import { bytesOf, holdsText, textOf } from './text'
 
 const ID = 'dense-csv'
 const DEFAULTS = { maxVariables: 5000 }
@@ -155,6 +156,6 @@ export const denseCsv: ProblemFormat = {
   extensions: ['csv', 'tsv', 'txt'],
   mediaType: 'text/csv',
   sniff: (head) => (holdsText(head) ? sniffText(textOf(head)) : 0),
-  read: (chunks, options) => readAsText(ID, chunks, options, readText),
+  read: (chunks, options) => readText(textOf(collected(chunks)), options),
   write: (document) => bytesOf(writeText(document)),
 }

@@ -24,8 +24,15 @@ export interface ReadingProgress {
 
 export type ReadingControl = Control<ReadingProgress>
 
-/** Thrown by a source of chunks that cannot go on: a damaged archive, a limit, a cancellation. `readProblem` catches it. */
-export class ReadingFault extends Error {}
+/** Why bytes cannot be read on: no text, a damaged archive, a limit, a cancellation. `readProblem` makes an issue of it. */
+export class ReadingFault extends Error {
+  constructor(
+    message: string,
+    readonly line?: number,
+  ) {
+    super(message)
+  }
+}
 
 /** A problem with its names: labels[i] names variable i; all labels differ. */
 export interface ProblemDocument {
@@ -91,8 +98,9 @@ export interface ProblemFormat {
    */
   sniff(head: Uint8Array): number
   /**
-   * Reads bytes that arrive in chunks, cut anywhere; each chunk is used up before the next is asked for. Never throws for
-   * what the bytes hold: what is wrong is in `rejected` and `issues`. Lets through what the source throws.
+   * Reads bytes that arrive in chunks, cut anywhere; each chunk is used up before the next is asked for. What is wrong is
+   * in `rejected` and `issues`.
+   * @throws ReadingFault where reading cannot go on, and what the source throws
    */
   read(chunks: Iterable<Uint8Array>, options: ReadOptions): ProblemReading
   /**

@@ -12,25 +12,6 @@ export function labelFault(label: string): string | null {
   return null
 }
 
-/** Labels in order of first appearance, with the line of each. */
-export class LabelTable {
-  readonly labels: string[] = []
-  readonly lines: number[] = []
-  private readonly indices = new Map<string, number>()
-
-  indexOf(label: string): number | undefined {
-    return this.indices.get(label)
-  }
-
-  add(label: string, line: number): number {
-    const index = this.labels.length
-    this.indices.set(label, index)
-    this.labels.push(label)
-    this.lines.push(line)
-    return index
-  }
-}
-
 function isExactInteger(label: string): boolean {
   const digits = label.length - (label[0] === '-' || label[0] === '+' ? 1 : 0)
   if (digits === 0 || digits > DEFAULTS.maxExactDigits) return false
@@ -41,7 +22,7 @@ function isExactInteger(label: string): boolean {
 const PLAIN = /^[!-~]+$/
 
 /** Two labels with the same key are taken for the same name written twice. */
-function clashKey(label: string): string {
+export function clashKey(label: string): string {
   const trimmed = label.trim()
   const isNumber = trimmed.length <= DEFAULTS.maxExactDigits && isDecimal(trimmed)
   if (isNumber) return `number ${Number(trimmed) + 0}`

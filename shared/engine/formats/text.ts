@@ -1,10 +1,12 @@
 /** Text as bytes: UTF-8, with or without a byte order mark. */
-import { collected } from './chunks'
-import { emptyReading } from './empty-reading'
-import type { ProblemReading, ReadOptions } from './format'
+import { eachLine } from './blocks'
+import { ReadingFault } from './format'
 
-export const bytesOf = (text: string): Uint8Array => new TextEncoder().encode(text)
-export const textOf = (bytes: Uint8Array): string => new TextDecoder().decode(bytes)
+const encoder = new TextEncoder()
+const decoder = new TextDecoder()
+
+export const bytesOf = (text: string): Uint8Array => encoder.encode(text)
+export const textOf = (bytes: Uint8Array): string => decoder.decode(bytes)
 
 /** Whether the beginning of a file is text; half a character at its end is no fault. */
 export function holdsText(head: Uint8Array): boolean {
@@ -17,19 +19,21 @@ export function holdsText(head: Uint8Array): boolean {
   }
 }
 
-/** Reads a file as one text. */
-export function readAsText(
-  format: string,
-  chunks: Iterable<Uint8Array>,
-  options: ReadOptions,
-  read: (text: string, options: ReadOptions) => ProblemReading,
-): ProblemReading {
-  let text: string
-  try {
-    text = new TextDecoder('utf-8', { fatal: true }).decode(collected(chunks))
-  } catch (error) {
-    if (!(error instanceof TypeError)) throw error
-    return emptyReading(format, options, 'the file is not UTF-8 text')
+/** Decodes lines one at a time. */
+export class LineDecoder {
+  private readonly strict = new TextDecoder('utf-8', { fatal: true, ignoreBOM: true })
+
+  /** @throws ReadingFault for bytes that are no UTF-8 */
+  decode(bytes: Uint8Array, start: number, end: number, line: number): string {
+    try {
+      return this.strict.decode(bytes.subarray(start, end))
+    } catch {
+      throw new ReadingFault(`line ${line} is not UTF-8 text: save the file as UTF-8`, line)
+    }
   }
-  return read(text, options)
+}
+
+/** Visits each line of the beginning of a file as text. */
+export function eachTextLine(head: Uint8Array, visit: (text: string, line: number) => void): void {
+  eachLine([head], (bytes, start, end, line) => visit(textOf(bytes.subarray(start, end)), line))
 }
