@@ -4,7 +4,6 @@ import { DomainError } from '../../shared/errors'
 import type { Page, PageQuery } from '../../shared/schemas/common'
 import type { DeletionView } from '../../shared/schemas/deletions'
 import type {
-  coefficientsQuerySchema,
   editProblemSchema,
   energyRequestSchema,
   ProblemItem,
@@ -205,32 +204,6 @@ export async function termsOf(
         : [],
     offset: { qubo: signed(sign, qubo.offset), ising: signed(sign, ising.offset) },
   }
-}
-
-const MAX_DENSE_VARIABLES = 5000
-
-/** The problem as a file, in either form; the offset, the sense and the labels travel in it. */
-export async function coefficientsOf(
-  app: App,
-  actor: Actor,
-  id: string,
-  query: z.infer<typeof coefficientsQuerySchema>,
-): Promise<{ fileName: string; bytes: Uint8Array }> {
-  const row = await problemRow(app, actor, id)
-  if (query.format === 'dense' && row.variables > MAX_DENSE_VARIABLES)
-    throw new DomainError(
-      'not acceptable',
-      'coefficients.dense',
-      `A dense matrix has at most ${MAX_DENSE_VARIABLES} variables, this problem has ${row.variables}. Take the coefficient list.`,
-    )
-  const form = query.form ?? row.form
-  const { bytes } = await app.compute.run('writeProblemFile', {
-    stored: await problemData(app, row),
-    form,
-    format: query.format === 'dense' ? 'dense-csv' : 'coefficients',
-    sense: row.sense,
-  })
-  return { fileName: `P-${row.number}-${form}.csv`, bytes }
 }
 
 /** Terms summed in one request: some seconds of a thread. */

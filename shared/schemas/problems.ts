@@ -1,4 +1,5 @@
 import { z } from 'zod'
+import { PROBLEM_FILE_KEYS } from '../problem-files'
 import type { HistogramBin, Person } from './common'
 import { nameSchema, textSchema } from './common'
 import type { EmbeddingMethod, EmbeddingStats, EmbeddingStatus, MethodUsed, Objective } from './embeddings'
@@ -7,7 +8,7 @@ import type { RunSheetState } from './run-sheets'
 export const formSchema = z.enum(['qubo', 'ising'])
 export const senseSchema = z.enum(['min', 'max'])
 export const conventionSchema = z.enum(['plus', 'minus'])
-export const problemFormatSchema = z.enum(['coefficients', 'dense-csv'])
+export const problemFormatSchema = z.enum(['coefficients', 'dense-csv', 'npy', 'npz', 'json'])
 
 const flag = z.preprocess((value) => value === true || value === 'true' || value === '1' || value === 'on', z.boolean())
 
@@ -29,7 +30,9 @@ export const editProblemSchema = z.object({ name: nameSchema.optional(), note: t
 
 export const coefficientsQuerySchema = z.object({
   form: formSchema.optional(),
-  format: z.enum(['csv', 'dense']).default('csv'),
+  format: z.enum(PROBLEM_FILE_KEYS).default('csv'),
+  /** Pack the file with gzip. */
+  gzip: flag.default(false),
 })
 
 export const energyRequestSchema = z.object({

@@ -1,5 +1,6 @@
 import type { Control } from '../../../shared/engine/control'
-import { writeProblem } from '../../../shared/engine/formats'
+import { formatById } from '../../../shared/engine/formats'
+import { gzip as packed } from '../../../shared/engine/formats/archive'
 import { convertForm } from '../../../shared/engine/problem/convert'
 import type { Problem } from '../../../shared/engine/problem/problem'
 
@@ -9,12 +10,24 @@ export interface WriteProblemInput {
   /** A problem as it is stored: to be minimised, in the form that it came in. */
   stored: { form: Form; labels: string[]; problem: Problem }
   form: Form
-  format: 'coefficients' | 'dense-csv'
+  /** Identifier of a format. */
+  format: string
   sense: 'min' | 'max'
+  gzip: boolean
 }
 
-/** A problem file in either form. */
-export function writeProblemFile({ stored, form, format, sense }: WriteProblemInput, _control: Control<never>) {
-  const problem = convertForm(stored.problem, stored.form, form)
-  return { bytes: writeProblem(format, { form, labels: stored.labels, problem, sense }) }
+/** A problem file in either form, or why the format cannot hold the problem. */
+export function writeProblemFile(
+  { stored, form, format, sense, gzip }: WriteProblemInput,
+  _control: Control<never>,
+): { bytes: Uint8Array; mediaType: string } | { refusal: string } {
+  const { write, mediaType } = formatById(format)
+  try {
+    const problem = convertForm(stored.problem, stored.form, form)
+    const bytes = write({ form, labels: stored.labels, problem, sense })
+    return gzip ? { bytes: packed(bytes), mediaType: 'application/gzip' } : { bytes, mediaType }
+  } catch (error) {
+    if (error instanceof RangeError) return { refusal: error.message }
+    throw error
+  }
 }

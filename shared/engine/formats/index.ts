@@ -45,7 +45,8 @@ export function likenessesOf(head: Uint8Array): Likeness[] {
 export const detectFormat = (head: Uint8Array): ProblemFormat =>
   formatById(likenessesOf(head)[0]?.format ?? coefficients.id)
 
-function formatById(id: string): ProblemFormat {
+/** @throws RangeError for a format that does not exist */
+export function formatById(id: string): ProblemFormat {
   const format = FORMATS.find((candidate) => candidate.id === id)
   if (format) return format
   const known = FORMATS.map((candidate) => candidate.id)

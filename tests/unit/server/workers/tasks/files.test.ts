@@ -24,12 +24,21 @@ test('energies are the same in either alphabet', () => {
   expect([...energies({ problem, from: 'qubo', form: 'ising', states: spins }, control)]).toEqual(expected)
 })
 
-test.each(['coefficients', 'dense-csv'] as const)('a file as %s reads back as the problem', (format) => {
-  const stored = { form: 'qubo' as const, labels: ['é', 'b'], problem }
-  const { bytes } = writeProblemFile({ stored, form: 'qubo', format, sense: 'max' }, control)
-  const reading = readProblem(bytes)
-  expect(reading).toMatchObject({ format, sense: 'max', labels: ['é', 'b'] })
-  expect(reading.problem).toEqual(problem)
+const stored = { form: 'qubo' as const, labels: ['é', 'b'], problem }
+
+test.each(['coefficients', 'dense-csv', 'json', 'npz'])('a file as %s reads back as the problem', (format) => {
+  for (const gzip of [false, true]) {
+    const written = writeProblemFile({ stored, form: 'qubo', format, sense: 'max', gzip }, control)
+    if ('refusal' in written) throw new Error(written.refusal)
+    const reading = readProblem(written.bytes)
+    expect(reading).toMatchObject({ format, sense: 'max', labels: ['é', 'b'], container: gzip ? 'gzip' : null })
+    expect(reading.problem).toEqual(problem)
+  }
+})
+
+test('what a format cannot hold is a refusal with the reason', () => {
+  const written = writeProblemFile({ stored, form: 'qubo', format: 'npy', sense: 'min', gzip: false }, control)
+  expect(written).toEqual({ refusal: expect.stringContaining('would lose the offset 1, the labels') as string })
 })
 
 test('samples are written with the numbers of their qubits', () => {

@@ -1,0 +1,27 @@
+/** The files that a problem can be taken as. The pages and the server read the same table. */
+export const PROBLEM_FILES = {
+  csv: { format: 'coefficients', ending: 'csv', title: 'Coefficient list (.csv)', holds: 'Any problem.' },
+  dense: {
+    format: 'dense-csv',
+    ending: 'csv',
+    title: 'Dense matrix (.csv)',
+    holds: 'Any problem of at most 5,000 variables.',
+  },
+  json: { format: 'json', ending: 'json', title: 'JSON document (.json)', holds: 'Any problem.' },
+  npz: {
+    format: 'npz',
+    ending: 'npz',
+    title: 'SciPy sparse matrix (.npz)',
+    holds: 'Any problem; SciPy reads the matrix, NumPy the rest.',
+  },
+  npy: {
+    format: 'npy',
+    ending: 'npy',
+    title: 'NumPy array (.npy)',
+    holds: 'A bare matrix: only a QUBO to be minimised, with offset 0 and variables 0 … n − 1, at most 5,000.',
+  },
+} as const
+
+export type ProblemFileKey = keyof typeof PROBLEM_FILES
+
+export const PROBLEM_FILE_KEYS = Object.keys(PROBLEM_FILES) as [ProblemFileKey, ...ProblemFileKey[]]
