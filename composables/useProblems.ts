@@ -1,28 +1,29 @@
-import type { Page } from '#shared/schemas/common'
 import type { ApiFailure } from './useApi'
-import type { ProblemItem, ProblemView, TermsView, UploadedProblem } from '#shared/schemas/problems'
+import type { ProblemView, TermsView, UploadedProblem } from '#shared/schemas/problems'
 
-const LIST = '/api/problems?limit=200'
+/** `?version=3`, or nothing for the current one. */
+const versionPart = (version: number | null): string => (version === null ? '' : `?version=${version}`)
 
-/** The newest 200 problems, and as many more each time they are asked for. */
-export async function useProblems() {
-  const { data, failure, refresh, status } = await useResource<Page<ProblemItem>>(LIST)
-  const later = useLaterPages<ProblemItem>(data, (cursor) => `${LIST}&cursor=${encodeURIComponent(cursor)}`)
-  return { ...later, failure, refresh, status, loaded: computed(() => data.value !== undefined) }
-}
-
-export const useProblem = (id: MaybeRefOrGetter<string>) =>
-  useResource<ProblemView>(() => `/api/problems/${toValue(id)}`)
+/** A problem at one of its versions; null is the current one. */
+export const useProblem = (id: MaybeRefOrGetter<string>, version: MaybeRefOrGetter<number | null> = null) =>
+  useResource<ProblemView>(() => `/api/problems/${toValue(id)}${versionPart(toValue(version))}`)
 
 const FIRST_TERMS = { linear: 6, interactions: 8 } as const
 /** What one request may bring. */
 const MOST_TERMS = 500
 
 /** The coefficients in both forms: the first few, and more each time they are asked for. */
-export async function useTerms(id: string, part: TermsView['part']) {
-  const address = (start: number, limit: number) =>
-    `/api/problems/${id}/terms?part=${part}&start=${start}&limit=${limit}`
-  const { data: first, failure, refresh } = await useResource<TermsView>(address(0, FIRST_TERMS[part]))
+export async function useTerms(
+  id: string,
+  part: TermsView['part'],
+  version: MaybeRefOrGetter<number | null> = null,
+) {
+  const address = (start: number, limit: number) => {
+    const shown = toValue(version)
+    const of = shown === null ? '' : `&version=${shown}`
+    return `/api/problems/${id}/terms?part=${part}&start=${start}&limit=${limit}${of}`
+  }
+  const { data: first, failure, refresh } = await useResource<TermsView>(() => address(0, FIRST_TERMS[part]))
   const grown = shallowRef<{ from?: TermsView; terms?: TermsView }>({})
   const moreFailure = shallowRef<ApiFailure | null>(null)
   const terms = computed(() => (grown.value.from === first.value ? grown.value.terms : undefined) ?? first.value)
@@ -71,5 +72,10 @@ export function useProblemActions() {
     preview: (upload: ProblemUpload) => api.post<UploadedProblem>('/api/problems', form(upload, true)),
     save: (upload: ProblemUpload) => api.post<UploadedProblem>('/api/problems', form(upload, false)),
     edit: (id: string, change: { name?: string; note?: string }) => api.patch(`/api/problems/${id}`, change),
+    tag: (id: string, tags: { add?: string[]; remove?: string[] }) => api.patch(`/api/problems/${id}`, { tags }),
+    duplicate: (id: string, version: number) =>
+      api.post<{ id: string; number: number }>(`/api/problems/${id}/duplicate`, { version }),
+    relabel: (id: string, version: number, renames: { from: string; to: string }[]) =>
+      api.post<{ version: number }>(`/api/problems/${id}/labels`, { version, renames }),
   }
 }

@@ -2,6 +2,8 @@ import type { Embedding } from '../../shared/engine/embedding/embedding'
 import type { EmbeddingTask, Start } from '../../shared/engine/embedding/task'
 import { chainOf, packChains } from '../../shared/engine/embedding/embedding'
 import type { Graph } from '../../shared/engine/graph/graph'
+import { convertForm } from '../../shared/engine/problem/convert'
+import { matchVariables } from '../../shared/engine/problem/difference/match-variables'
 import { interactionGraph } from '../../shared/engine/problem/interaction-graph'
 import { DomainError } from '../../shared/errors'
 import type { Actor, App } from '../app'
@@ -61,22 +63,33 @@ export const taskOf = ({ graph, machine }: Subject, start: Start | null): Embedd
   start,
 })
 
+/** The place in the earlier problem of every variable of the subject, −1 where it had none. Versions know renames. */
+async function earlierPlaces(app: App, { problem, labels }: Subject, earlier: ProblemRow): Promise<Int32Array> {
+  const before = await problemData(app, earlier)
+  if (earlier.id !== problem.id) {
+    const places = new Map(before.labels.map((label, i) => [label, i]))
+    return Int32Array.from(labels, (label) => places.get(label) ?? -1)
+  }
+  const after = await problemData(app, problem)
+  const inOneForm = { labels: before.labels, problem: convertForm(before.problem, before.form, after.form) }
+  const places = new Int32Array(labels.length).fill(-1)
+  matchVariables(inOneForm, after).forEach((j, i) => {
+    if (j >= 0) places[j] = i
+  })
+  return places
+}
+
 /**
- * The chains of an earlier embedding on the same machine, for the variables of the subject by label: empty for those that
- * the earlier problem did not have. Qubits keep their dense indices, which are the fabric's at every calibration.
+ * The chains of an earlier embedding on the same machine, for the variables of the subject: by label, and for another
+ * version of the same problem also for those renamed since. Empty for those that the earlier problem did not have.
+ * Qubits keep their dense indices, which are the fabric's at every calibration.
  */
 export async function carriedChains(app: App, subject: Subject, earlier: EmbeddingRow): Promise<Embedding> {
   const chains = unpackChains(await app.blobs.read(earlier.chainsBlobId!))
   if (earlier.problemId === subject.problem.id && earlier.problemVersion === subject.problem.version) return chains
   const problem = await findReferredProblem(app.db, earlier.problemId, earlier.problemVersion)
-  const { labels } = await problemData(app, problem!)
-  const places = new Map(labels.map((label, i) => [label, i]))
-  return packChains(
-    subject.labels.map((label) => {
-      const place = places.get(label)
-      return place === undefined ? [] : chainOf(chains, place)
-    }),
-  )
+  const places = await earlierPlaces(app, subject, problem!)
+  return packChains(Array.from(places, (place) => (place < 0 ? [] : chainOf(chains, place))))
 }
 
 /** Marks the variables that are named. */

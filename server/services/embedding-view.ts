@@ -11,6 +11,7 @@ import { personOf } from '../database/repositories/problems'
 import { runSheetsOfEmbeddings } from '../database/repositories/run-sheets'
 import { namedChains, unpackChains } from './chains'
 import { statsView } from './embedding-stats'
+import { standingOf } from './problem-difference'
 import type { Subject } from './embedding-subject'
 import { embeddingRow, subjectOf } from './embedding-subject'
 import type { CalibratedMachine } from './machine-graphs'
@@ -117,6 +118,7 @@ export async function embeddingView(app: App, actor: Actor, id: string): Promise
     status: row.status,
     jobId: job?.id ?? null,
     ...about(subject),
+    ofVersion: await standingOf(app, subject.problem),
     calibrationInForce: current.calibration.number,
     holdsAtCurrentCalibration: await holdsNow(app, row, subject, chains, current),
     ...making(row),

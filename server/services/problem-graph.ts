@@ -12,8 +12,8 @@ import { signed, signOf } from './sense'
  * given and the fingerprint travel in the header.
  * @throws DomainError too large for a drawing
  */
-export async function problemGraphOf(app: App, actor: Actor, id: string): Promise<Uint8Array> {
-  const row = await problemRow(app, actor, id)
+export async function problemGraphOf(app: App, actor: Actor, id: string, version?: number): Promise<Uint8Array> {
+  const row = await problemRow(app, actor, id, version)
   if (!isDrawnAsGraph(row)) {
     const { variables, interactions } = PROBLEM_GRAPH_LIMITS
     const message = `The graph is drawn up to ${variables} variables and ${interactions} interactions.`

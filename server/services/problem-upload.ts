@@ -1,5 +1,6 @@
 import { createHash, randomUUID } from 'node:crypto'
 import { DomainError } from '../../shared/errors'
+import type { ProblemSource } from '../../shared/schemas/problem-versions'
 import type { ReadingView, UploadedProblem, UploadProblem } from '../../shared/schemas/problems'
 import type { Actor, App } from '../app'
 import { nextNumber } from '../database/repositories/counters'
@@ -9,12 +10,24 @@ import type { ProblemData } from './problem-data'
 import { packProblem } from './problem-data'
 import { signed, signOf } from './sense'
 
+/** Of a file as it is sent. */
+export const PROBLEM_LIMIT_BYTES = 64 * 2 ** 20
+
 export interface UploadedFile {
   name: string
   bytes: Uint8Array
 }
 
 type Reading = NonNullable<ReadProblemOutput['reading']>
+
+/** A file as it was read; nothing is saved yet. */
+export interface ReadUpload {
+  view: UploadedProblem
+  data: ProblemData
+  source: ProblemSource
+  /** Why it cannot be saved unless the lines that could not be read are left out. */
+  incomplete: DomainError | null
+}
 
 /** Reads a file, and saves it as a problem unless only the preview was asked for. */
 export async function uploadProblem(
@@ -23,6 +36,14 @@ export async function uploadProblem(
   file: UploadedFile,
   options: UploadProblem,
 ): Promise<UploadedProblem> {
+  const upload = await readProblemUpload(app, file, options)
+  if (options.dryRun) return upload.view
+  if (upload.incomplete && !options.skipRejected) throw upload.incomplete
+  return saveProblem(app, actor, upload)
+}
+
+/** @throws DomainError when no problem can be made of the file */
+export async function readProblemUpload(app: App, file: UploadedFile, options: UploadProblem): Promise<ReadUpload> {
   const { format, form, convention, sense } = options
   const output = await app.compute.run('readProblemFile', { bytes: file.bytes, format, form, convention, sense })
   const { reading, structure } = output
@@ -51,23 +72,20 @@ export async function uploadProblem(
       interactionHistogram: [...structure.interactionHistogram],
     },
   }
-  if (options.dryRun) return view
-  if (reading.rejectedCount > 0 && !options.skipRejected) throw rejectedLines(file.name, reading)
-  return saveProblem(app, actor, file, view, { form: reading.form, labels: reading.labels, problem: reading.problem })
+  const sha256 = createHash('sha256').update(file.bytes).digest('hex')
+  return {
+    view,
+    data: { form: reading.form, labels: reading.labels, problem: reading.problem },
+    source: { fileName: file.name, bytes: file.bytes.byteLength, sha256 },
+    incomplete: reading.rejectedCount > 0 ? rejectedLines(file.name, reading) : null,
+  }
 }
 
-async function saveProblem(
-  app: App,
-  actor: Actor,
-  file: UploadedFile,
-  view: UploadedProblem,
-  data: ProblemData,
-): Promise<UploadedProblem> {
+async function saveProblem(app: App, actor: Actor, { view, data, source }: ReadUpload): Promise<UploadedProblem> {
   const { bytes, fingerprint } = packProblem(data)
   const dataBlobId = await app.blobs.write(bytes)
   const id = randomUUID()
   const now = app.now()
-  const sha256 = createHash('sha256').update(file.bytes).digest('hex')
   const number = await app.db.transaction(async (tx) => {
     const number = await nextNumber(tx, actor.workspaceId, 'problem')
     await app.blobs.adopt(tx, dataBlobId)
@@ -89,7 +107,7 @@ async function saveProblem(
         interactions: view.interactions,
         dataBlobId,
         fingerprint,
-        source: { fileName: file.name, bytes: file.bytes.byteLength, sha256 },
+        source,
         reading: view.reading,
         structure: view.structure,
         versionBy: actor.userId,

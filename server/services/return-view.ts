@@ -23,6 +23,7 @@ import { returnToCompare } from '../database/repositories/run-sheets'
 import type { DecodedSummary, Summary } from '../workers/tasks/summarise'
 import type { Bench, Programming } from './programming'
 import { programmeBench, requireProgrammed } from './programming'
+import { standingOf } from './problem-difference'
 import { returnRow } from './returns'
 import { benchOf, runSheetRow } from './run-sheets'
 import { readsIn, unpackSamples } from './samples-data'
@@ -100,6 +101,7 @@ export async function returnView(app: App, actor: Actor, id: string, decode: Dec
       form: problem.form,
       sense: problem.sense,
     },
+    ofVersion: await standingOf(app, problem),
     embedding: { id: bench.row.id, number: bench.row.number },
     machine: { id: machine.machine.id, name: machine.machine.name, calibration: machine.calibration.number },
     made: row.made,

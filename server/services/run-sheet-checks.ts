@@ -2,6 +2,7 @@ import { verifyEmbedding } from '../../shared/engine/embedding/verify'
 import { interactionGraph } from '../../shared/engine/problem/interaction-graph'
 import { gaugesOutsideRanges } from '../../shared/engine/programming/gauges'
 import type { Programmed } from '../../shared/engine/programming/programme'
+import type { VersionStanding } from '../../shared/schemas/problem-versions'
 import type { CheckView, RunSheetSettings, RunSheetView } from '../../shared/schemas/run-sheets'
 import type { App } from '../app'
 import { calibratedMachine } from './machine-graphs'
@@ -18,11 +19,13 @@ export async function checksOf(
   programming: Programming,
   programmed: Programmed,
   precision: RunSheetView['precision'],
+  ofVersion: VersionStanding,
 ): Promise<CheckView[]> {
   return [
     rangesCheck(bench, programmed),
     ...gaugeCheck(bench, settings, programmed),
     await embeddingCheck(app, bench),
+    ...versionCheck(ofVersion),
     annealCheck(bench, settings),
     strengthCheck(bench, programming),
     ...precisionCheck(precision),
@@ -53,6 +56,13 @@ async function embeddingCheck(app: App, { machine, row, ising, embedding }: Benc
     }
   const figure = machine.calibration.number === number ? 'the one in force' : `made at ${machine.calibration.number}`
   return { verdict: 'passed', what: `The embedding holds at calibration ${number}`, figure }
+}
+
+/** Samples answer the version that was programmed, whatever the problem has become since. */
+function versionCheck({ version, current }: VersionStanding): CheckView[] {
+  if (version === current) return []
+  const what = `The embedding was made for version ${version} of the problem: that version is programmed`
+  return [{ verdict: 'caution', what, figure: `version ${current} is current` }]
 }
 
 function annealCheck({ machine }: Bench, { annealMicroseconds }: RunSheetSettings): CheckView {

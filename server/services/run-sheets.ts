@@ -31,6 +31,7 @@ import {
 } from '../database/repositories/run-sheets'
 import { deleteFor } from './deletions'
 import { embeddingRow } from './embedding-subject'
+import { standingOf } from './problem-difference'
 import type { Bench, Programming } from './programming'
 import { checksOf } from './run-sheet-checks'
 import {
@@ -166,6 +167,7 @@ export async function runSheetView(app: App, actor: Actor, id: string): Promise<
   const { problem, machine } = bench
   const precision = precisionOf(bench, programmed)
   const time = machineTimeView(bench, row.settings)
+  const ofVersion = await standingOf(app, problem)
   return {
     ...itemOf(row, {
       problem: { id: problem.id, number: problem.number, name: problem.name },
@@ -173,6 +175,7 @@ export async function runSheetView(app: App, actor: Actor, id: string): Promise<
       machine: { id: machine.machine.id, name: machine.machine.name },
     }),
     settings: row.settings,
+    ofVersion,
     calibration: machine.calibration.number,
     sense: problem.sense,
     fingerprints: {
@@ -189,7 +192,7 @@ export async function runSheetView(app: App, actor: Actor, id: string): Promise<
     scaleLimit: scaleLimitOf(bench, programmed),
     precision,
     machineTime: time,
-    checks: await checksOf(app, bench, row.settings, programming, programmed, precision),
+    checks: await checksOf(app, bench, row.settings, programming, programmed, precision, ofVersion),
     returns: await returnViews(app, id),
     remarks: (await listRemarks(app.db, id)).map(({ remark, by }) => ({
       at: remark.createdAt.toISOString(),

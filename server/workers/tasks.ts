@@ -1,6 +1,7 @@
 import type { Control } from '../../shared/engine/control'
 import { advise } from './tasks/advise'
 import { checkEmbedding } from './tasks/check-embedding'
+import { compareProblems } from './tasks/compare-problems'
 import { completeCapacity } from './tasks/complete-capacity'
 import { energies } from './tasks/energies'
 import { planSearch } from './tasks/plan-search'
@@ -17,6 +18,7 @@ import { writeSamplesFile } from './tasks/write-samples'
 export const TASKS = {
   advise,
   checkEmbedding,
+  compareProblems,
   completeCapacity,
   energies,
   planSearch,

@@ -22,6 +22,13 @@ export const calibrationNumberSchema = z
   .min(1)
   .max(2 ** 31 - 1)
 
+/** Versions of a problem, as parts of an address. */
+export const versionNumberSchema = z.coerce
+  .number()
+  .int()
+  .min(1)
+  .max(2 ** 31 - 1)
+
 /** Seeds stay exactly representable on both sides of JSON. */
 export const seedSchema = z.number().int().min(0).max(Number.MAX_SAFE_INTEGER)
 

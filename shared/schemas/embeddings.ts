@@ -2,6 +2,7 @@ import { z } from 'zod'
 import type { AdviceKind } from '../engine/embedding/advice'
 import type { Person } from './common'
 import { calibrationNumberSchema, idSchema, seedSchema } from './common'
+import type { VersionStanding } from './problem-versions'
 
 /** Ways to make an embedding that a person may ask for; `auto` races those that fit the problem and the machine. */
 export const embeddingMethodSchema = z.enum(['auto', 'search', 'lines', 'template'])
@@ -139,6 +140,8 @@ export interface EmbeddingView {
   status: EmbeddingStatus
   jobId: string | null
   problem: { id: string; number: number; name: string; variables: number; interactions: number }
+  /** The version of the problem that it was made for. */
+  ofVersion: VersionStanding
   machine: { id: string; name: string; family: string; qubits: number }
   calibration: number
   /** Of the machine, now. */

@@ -1,8 +1,11 @@
 import { z } from 'zod'
+import type { ProblemState } from '../library'
 import { PROBLEM_FILE_KEYS } from '../problem-files'
 import type { HistogramBin, Person } from './common'
-import { nameSchema, textSchema } from './common'
+import { nameSchema, textSchema, versionNumberSchema } from './common'
 import type { EmbeddingMethod, EmbeddingStats, EmbeddingStatus, MethodUsed, Objective } from './embeddings'
+import { editTagsSchema } from './library'
+import type { ProblemSource, VersionStanding } from './problem-versions'
 import type { RunSheetState } from './run-sheets'
 
 export const formSchema = z.enum(['qubo', 'ising'])
@@ -26,9 +29,18 @@ export const uploadProblemSchema = z.object({
 })
 export type UploadProblem = z.infer<typeof uploadProblemSchema>
 
-export const editProblemSchema = z.object({ name: nameSchema.optional(), note: textSchema(2000).optional() })
+export const editProblemSchema = z.object({
+  name: nameSchema.optional(),
+  note: textSchema(2000).optional(),
+  tags: editTagsSchema.optional(),
+})
+
+/** `?version=` of everything that is read of a problem; the current one where none is given. */
+const version = versionNumberSchema.optional()
+export const versionQuerySchema = z.object({ version })
 
 export const coefficientsQuerySchema = z.object({
+  version,
   form: formSchema.optional(),
   format: z.enum(PROBLEM_FILE_KEYS).default('csv'),
   /** Pack the file with gzip. */
@@ -41,6 +53,7 @@ export const energyRequestSchema = z.object({
 })
 
 export const termsQuerySchema = z.object({
+  version,
   part: z.enum(['linear', 'interactions']),
   start: z.coerce.number().int().min(0).default(0),
   limit: z.coerce.number().int().min(1).max(500).default(100),
@@ -121,17 +134,22 @@ export interface ProblemItem {
   variables: number
   interactions: number
   density: number
-  /** The newest embedding that is chosen, else the newest found, else the newest of all. */
+  tags: string[]
+  state: ProblemState
+  currentVersion: number
+  /** One of the current version before others, then one that is chosen, one that was found, the newest. */
   embedding: {
     id: string
     number: number
     status: EmbeddingStatus
     machine: string
     longestChain: number | null
+    /** The version of the problem that it was made for. */
+    ofVersion: number
   } | null
-  /** The newest run sheet, if there is one. */
-  runSheet: { id: string; number: number; state: RunSheetState } | null
-  /** Best decoded energy of any samples so far, in the problem's own sense. */
+  /** The newest run sheet for the current version, else the newest of all. */
+  runSheet: { id: string; number: number; state: RunSheetState; ofVersion: number } | null
+  /** Best decoded energy of any samples of this version so far, in the problem's own sense. */
   best: number | null
   changedAt: string
 }
@@ -154,15 +172,25 @@ export interface EmbeddingOfProblem {
   qubitsUsed: number | null
   seconds: number | null
   createdAt: string
+  /** The version of the problem that it was made for. */
+  ofVersion: VersionStanding
   runSheets: { id: string; number: number; state: RunSheetState }[]
 }
 
 export interface ProblemView extends Omit<ProblemItem, 'embedding' | 'runSheet'> {
   note: string
+  /** The version shown. */
+  version: number
+  versionBy: Person
+  versionAt: string
+  /** What the version is for, in the words of who made it. */
+  remark: string
+  /** When and by whom the version after it was made. */
+  superseded: { at: string; by: Person } | null
   offset: number
   /** SHA-256 over form, labels, coefficients and offset, hex. */
   fingerprint: string
-  source: { fileName: string; bytes: number; sha256: string }
+  source: Omit<ProblemSource, 'change'>
   reading: ReadingView
   structure: StructureView
   embeddings: EmbeddingOfProblem[]

@@ -1,5 +1,6 @@
 import { z } from 'zod'
 import type { HistogramBin, Person, Proportion } from './common'
+import type { VersionStanding } from './problem-versions'
 
 export const decodeSchema = z.enum(['majority', 'discard', 'descent'])
 export type Decoding = z.infer<typeof decodeSchema>
@@ -76,6 +77,8 @@ export interface ReturnView {
   reason: string | null
   runSheet: { id: string; number: number; name: string; state: string }
   problem: { id: string; number: number; name: string; variables: number; form: 'qubo' | 'ising'; sense: 'min' | 'max' }
+  /** The version of the problem that was programmed. */
+  ofVersion: VersionStanding
   embedding: { id: string; number: number }
   machine: { id: string; name: string; calibration: number }
   /** How the samples came to be: sweeps, temperature and seed of a rehearsal, or the uploaded file. */

@@ -1,5 +1,7 @@
 import { z } from 'zod'
+import type { RUN_SHEET_STATES } from '../library'
 import type { HistogramBin, Person } from './common'
+import type { VersionStanding } from './problem-versions'
 import { idSchema, nameSchema, seedSchema, textSchema } from './common'
 
 const positive = z.number().positive().max(1e9)
@@ -59,7 +61,7 @@ export type Rehearse = z.infer<typeof rehearseSchema>
 
 export const programmedQuerySchema = z.object({ format: z.enum(['json', 'csv', 'mtx']).default('json') })
 
-export type RunSheetState = 'draft' | 'in review' | 'approved' | 'sent back' | 'issued' | 'returned' | 'closed'
+export type RunSheetState = (typeof RUN_SHEET_STATES)[number]
 
 /** States in which the settings may change, and in which a run sheet may be deleted. */
 export const EDITABLE_STATES: readonly RunSheetState[] = ['draft', 'sent back']
@@ -153,6 +155,8 @@ export interface RunSheetItem {
 
 export interface RunSheetView extends RunSheetItem {
   settings: RunSheetSettings
+  /** The version of the problem that is programmed. */
+  ofVersion: VersionStanding
   calibration: number
   sense: 'min' | 'max'
   fingerprints: { problem: string; embedding: string; programmed: string }

@@ -20,8 +20,10 @@ import {
 import { blobs as blobTable, embeddings, problems, returns, runSheets } from '../../server/database/schema'
 import { restore, sweepDeletions } from '../../server/services/deletions'
 import { removeEmbedding } from '../../server/services/embeddings'
-import { problemsOf, removeProblem } from '../../server/services/problems'
+import { libraryPage } from '../../server/services/library'
+import { removeProblem } from '../../server/services/problems'
 import { removeRunSheet, runSheetsOf } from '../../server/services/run-sheets'
+import { libraryQuerySchema } from '../../shared/schemas/library'
 import { temporaryFolder } from '../support/server'
 
 const folder = temporaryFolder()
@@ -35,6 +37,7 @@ let round = 0
 
 const MINUTE = 60_000
 const LIST = { limit: 50 }
+const LIBRARY = libraryQuerySchema.parse({})
 
 beforeAll(async () => {
   database = await openDatabase({ dataFolder: folder })
@@ -163,7 +166,7 @@ async function stored() {
 }
 
 const numbersListed = async (): Promise<number[]> => [
-  ...(await problemsOf(app, actor, LIST)).items.map(({ number }) => number),
+  ...(await libraryPage(app, actor, LIBRARY)).items.map(({ number }) => number),
   ...(await runSheetsOf(app, actor, LIST)).items.map(({ number }) => number),
 ]
 

@@ -1,58 +1,94 @@
-import type { ProblemItem } from '#shared/schemas/problems'
+import type { LocationQuery, LocationQueryRaw } from 'vue-router'
+import type { Direction, LibraryField, ProblemState } from '#shared/library'
+import { DIRECTIONS, firstDirection, LIBRARY_FIELDS, PROBLEM_STATES, RUN_SHEET_STATES } from '#shared/library'
+import type { LibrarySummary } from '#shared/schemas/library'
 import type { RunSheetItem } from '#shared/schemas/run-sheets'
-import type { Fact, Sort } from '../ui/parts'
+import { formatCount, formatNumber } from '../format'
+import type { Choice, Fact } from '../ui/parts'
 
-type Key = string | number | null
-
-const KEYS = {
-  number: (item) => item.number,
-  name: (item) => item.name.toLowerCase(),
-  form: (item) => item.form,
-  variables: (item) => item.variables,
-  interactions: (item) => item.interactions,
-  density: (item) => item.density,
-  machine: (item) => item.embedding?.machine.toLowerCase() ?? null,
-  embedding: (item) => item.embedding?.number ?? null,
-  longest: (item) => item.embedding?.longestChain ?? null,
-  runSheet: (item) => item.runSheet?.state ?? null,
-  best: (item) => item.best,
-  changedAt: (item) => item.changedAt,
-} satisfies Record<string, (item: ProblemItem) => Key>
-
-export type LibraryField = keyof typeof KEYS
-
-export const isLibraryField = (field: string): field is LibraryField => Object.hasOwn(KEYS, field)
-
-/** Problems by one column; those without a value stand last either way, equals by number. */
-export function sortProblems(items: readonly ProblemItem[], sort: Sort): ProblemItem[] {
-  const key: (item: ProblemItem) => Key = isLibraryField(sort.field) ? KEYS[sort.field] : KEYS.number
-  const sign = sort.direction === 'ascending' ? 1 : -1
-  return [...items].sort((one, two) => {
-    const [a, b] = [key(one), key(two)]
-    if (a === b) return one.number - two.number
-    if (a === null || b === null) return a === null ? 1 : -1
-    return a < b ? -sign : sign
-  })
+/** What the library shows: what is sought, how it is sorted, and which page of it. */
+export interface LibraryView {
+  q: string
+  tag: string[]
+  form: 'qubo' | 'ising' | null
+  state: ProblemState | null
+  sort: LibraryField
+  direction: Direction
+  cursor: string | null
 }
 
-function wordsOf(item: ProblemItem): string {
-  const { embedding, runSheet } = item
-  return [
-    `p-${item.number}`,
-    item.name,
-    item.form,
-    embedding && `e-${embedding.number} ${embedding.machine}`,
-    runSheet && `rs-${runSheet.number} ${runSheet.state}`,
-  ]
-    .join(' ')
-    .toLowerCase()
+const ROWS = 100
+
+const FORMS = { qubo: 'QUBO', ising: 'Ising' } as const
+
+type Given = LocationQuery[string] | undefined
+const textsOf = (given: Given): string[] => [given].flat().filter((text): text is string => Boolean(text))
+const oneOf = <T extends string>(given: Given, allowed: readonly T[]): T | null =>
+  allowed.find((one) => one === textsOf(given)[0]) ?? null
+
+/** The view that an address stands for; parts of it that mean nothing are as good as left out. */
+export function libraryView(query: LocationQuery): LibraryView {
+  const sort = oneOf(query.sort, LIBRARY_FIELDS) ?? 'changedAt'
+  return {
+    q: textsOf(query.q)[0]?.trim() ?? '',
+    tag: textsOf(query.tag),
+    form: oneOf(query.form, ['qubo', 'ising']),
+    state: oneOf(query.state, PROBLEM_STATES),
+    sort,
+    direction: oneOf(query.direction, DIRECTIONS) ?? firstDirection(sort),
+    cursor: textsOf(query.cursor)[0] ?? null,
+  }
 }
 
-/** Problems in whose name, number, form, machine, embedding or run sheet every typed word occurs. */
-export function filterProblems(items: readonly ProblemItem[], typed: string): ProblemItem[] {
-  const words = typed.toLowerCase().split(/\s+/).filter(Boolean)
-  return items.filter((item) => words.every((word) => wordsOf(item).includes(word)))
+/** The address's query for a view, without what goes without saying. */
+export function libraryQuery(view: LibraryView): LocationQueryRaw {
+  const query: LocationQueryRaw = {}
+  if (view.q) query.q = view.q
+  if (view.tag.length > 0) query.tag = view.tag
+  if (view.form) query.form = view.form
+  if (view.state) query.state = view.state
+  if (view.sort !== 'changedAt') query.sort = view.sort
+  if (view.direction !== firstDirection(view.sort)) query.direction = view.direction
+  if (view.cursor) query.cursor = view.cursor
+  return query
 }
+
+/** Where the problems of a view are loaded from. */
+export function libraryAddress(view: LibraryView): string {
+  const given = Object.entries(libraryQuery(view)).flatMap(([key, value]) =>
+    [value].flat().map((one): [string, string] => [key, String(one)]),
+  )
+  return `/api/problems?${new URLSearchParams([...given, ['limit', String(ROWS)]])}`
+}
+
+export const isNarrowed = ({ q, tag, form, state }: LibraryView): boolean =>
+  q !== '' || tag.length > 0 || form !== null || state !== null
+
+/** `that hold “berth”, are tagged ferry, are Ising and are embedded`, for a view that found nothing. */
+export function soughtWords({ q, tag, form, state }: LibraryView): string {
+  const parts = [
+    q && `hold “${q}”`,
+    tag.length > 0 && `are tagged ${tag.join(', ')}`,
+    form && `are in ${FORMS[form]} form`,
+    state && `are “${state}”`,
+  ].filter((part): part is string => Boolean(part))
+  const last = parts.at(-1)
+  return parts.length > 1 ? `${parts.slice(0, -1).join(', ')} and ${last}` : `${last}`
+}
+
+/** `Rows 101 to 200 of 10 000`. */
+export function rowsWords(start: number, shown: number, total: number): string {
+  if (shown === total) return formatCount(total, 'problem')
+  return `${formatNumber(start + 1)} to ${formatNumber(start + shown)} of ${formatCount(total, 'problem')}`
+}
+
+export const stateChoices = ({ states }: Pick<LibrarySummary, 'states'>): Choice[] =>
+  PROBLEM_STATES.map((state) => ({ value: state, label: state, note: formatNumber(states[state] ?? 0) }))
+
+export const tagChoices = ({ tags }: Pick<LibrarySummary, 'tags'>, chosen: readonly string[]): Choice[] =>
+  tags
+    .filter(({ tag }) => !chosen.includes(tag))
+    .map(({ tag, count }) => ({ value: tag, label: tag, note: formatNumber(count) }))
 
 function sheetFact(label: string, sheets: readonly RunSheetItem[]): Fact {
   const [first] = sheets
@@ -60,13 +96,14 @@ function sheetFact(label: string, sheets: readonly RunSheetItem[]): Fact {
   return { label, value: sheets.length, note: first && `RS-${first.number}${more}` }
 }
 
-/** The strip above the table. `total` counts all problems of the workspace, listed or not. */
-export function libraryFacts(total: number, items: readonly ProblemItem[], sheets: readonly RunSheetItem[]): Fact[] {
+/** The strip above the table, over all problems of the workspace. */
+export function libraryFacts({ total, states }: LibrarySummary, sheets: readonly RunSheetItem[]): Fact[] {
   const inState = (state: RunSheetItem['state']) => sheets.filter((sheet) => sheet.state === state)
+  const withSheet = RUN_SHEET_STATES.reduce((sum, state) => sum + (states[state] ?? 0), 0)
   return [
-    { label: 'Problems', value: total },
-    { label: 'Not embedded yet', value: items.filter(({ embedding }) => !embedding).length },
-    { label: 'With a run sheet', value: items.filter(({ runSheet }) => runSheet).length },
+    { label: 'Problems', value: formatNumber(total) },
+    { label: 'Not embedded yet', value: formatNumber(states['not embedded'] ?? 0) },
+    { label: 'With a run sheet', value: formatNumber(withSheet) },
     sheetFact('Waiting for a reviewer', inState('in review')),
     sheetFact('Approved, not issued', inState('approved')),
     sheetFact('Returned', inState('returned')),

@@ -1,7 +1,10 @@
-import { pageQuerySchema } from '../../../shared/schemas/common'
-import { problemsOf } from '../../services/problems'
+import { libraryQuerySchema } from '../../../shared/schemas/library'
+import { libraryPage } from '../../services/library'
 
-/** Problems, newest change first: `{items, nextCursor}`. */
+/**
+ * Problems, newest change first: `{items, nextCursor, previousCursor, total, start}`. `?q&tag&form&state` narrow them,
+ * `?sort&direction` order them, `?limit&cursor` turn the pages.
+ */
 export default defineRoute('member', (event, { app, ...actor }) =>
-  problemsOf(app, actor, queryOf(event, pageQuerySchema)),
+  libraryPage(app, actor, queryOf(event, libraryQuerySchema)),
 )

@@ -1,14 +1,12 @@
 import { uploadProblemSchema } from '../../../shared/schemas/problems'
-import { uploadProblem } from '../../services/problem-upload'
-
-const LIMIT_BYTES = 64 * 2 ** 20
+import { PROBLEM_LIMIT_BYTES, uploadProblem } from '../../services/problem-upload'
 
 /**
  * Multipart upload of a problem: `file` with `name`, `form`, `format`, `convention`, `sense`, `dryRun`, `skipRejected`.
  * 201 with what was understood, 200 for a dry run; 422 with line numbers when the file cannot be accepted.
  */
 export default defineRoute(['developer', 'owner'], async (event, { app, ...actor }) => {
-  const upload = await readUpload(event, LIMIT_BYTES)
+  const upload = await readUpload(event, PROBLEM_LIMIT_BYTES)
   const options = parse(uploadProblemSchema, upload.fields, 'The upload’s fields cannot be accepted')
   const result = await uploadProblem(app, actor, requireFile(upload), options)
   if (!options.dryRun) setResponseStatus(event, 201)

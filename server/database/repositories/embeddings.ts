@@ -67,7 +67,7 @@ export async function embeddingsOfProblems(db: Db, problemIds: readonly string[]
       and(eq(calibrations.machineId, embeddings.machineId), eq(calibrations.number, embeddings.calibration)),
     )
     .where(and(inArray(embeddings.problemId, [...problemIds]), isNull(embeddings.deletedWith)))
-    .orderBy(desc(embeddings.createdAt))
+    .orderBy(desc(embeddings.createdAt), desc(embeddings.number))
 }
 
 /** Found embeddings on a machine with their problem's name. */

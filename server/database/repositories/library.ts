@@ -78,9 +78,9 @@ function partsOf(db: Db, workspaceId: string) {
     when ${shown.status} = 'found' then case when ${shown.isCurrent} then 'embedded' else 'to carry over' end
     when ${shown.status} = 'running' then 'searching'
     else 'none found' end`
-  const from = <T extends Record<string, SQL | typeof problems.id>>(columns: T) =>
+  const select = () =>
     db
-      .select(columns)
+      .select({ id: problems.id, state: state.as('problem_state') })
       .from(problems)
       .innerJoin(
         problemVersions,
@@ -89,7 +89,7 @@ function partsOf(db: Db, workspaceId: string) {
       .leftJoin(shown, eq(shown.problemId, problems.id))
       .leftJoin(sheets, eq(sheets.problemId, problems.id))
       .leftJoin(energies, eq(energies.problemId, problems.id))
-  return { shown, sheets, energies, state, from }
+  return { shown, sheets, energies, state, select }
 }
 
 type Parts = ReturnType<typeof partsOf>
@@ -160,13 +160,14 @@ export async function searchLibrary(
   const condition = conditionOf(parts, workspaceId, filter)
   const key = keyOf(parts, sort)
   const rows = await parts
-    .from({ id: problems.id })
+    .select()
     .where(condition)
     .orderBy(direction === 'ascending' ? sql`${key} asc nulls last` : sql`${key} desc nulls last`, asc(problems.number))
     .limit(limit)
     .offset(offset)
-  const [counted] = await parts.from({ total: count() }).where(condition)
-  return { ids: rows.map(({ id }) => id), total: Number(counted!.total) }
+  const matching = parts.select().where(condition).as('matching')
+  const [counted] = await db.select({ total: count() }).from(matching)
+  return { ids: rows.map(({ id }) => id), total: counted!.total }
 }
 
 /** Problems at their current versions, in the order of the ids given. */
@@ -180,11 +181,11 @@ export async function problemsInOrder(db: Db, ids: readonly string[]): Promise<P
 /** How many problems have come to each state. */
 export async function countStates(db: Db, workspaceId: string): Promise<{ state: ProblemState; count: number }[]> {
   const parts = partsOf(db, workspaceId)
-  const rows = await parts
-    .from({ state: parts.state, count: count() })
+  const all = parts
+    .select()
     .where(conditionOf(parts, workspaceId, { q: '', tag: [] }))
-    .groupBy(sql`1`)
-  return rows.map(({ state, count: found }) => ({ state: state as ProblemState, count: Number(found) }))
+    .as('all_problems')
+  return db.select({ state: all.state, count: count() }).from(all).groupBy(all.state)
 }
 
 /** Tags in use, and how many problems bear each. */

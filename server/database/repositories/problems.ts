@@ -1,4 +1,4 @@
-import { and, desc, eq, getTableColumns, isNull } from 'drizzle-orm'
+import { and, eq, getTableColumns, isNull } from 'drizzle-orm'
 import type { Db } from '../client'
 import { problems, problemVersions, users } from '../schema'
 
@@ -43,13 +43,21 @@ export async function findReferredProblem(db: Db, id: string, version: number): 
   return (await rowsAt(db, version).where(eq(problems.id, id)))[0]
 }
 
-/** Problems at their current versions. */
-export async function listProblems(db: Db, workspaceId: string, limit: number, offset: number): Promise<ProblemRow[]> {
-  return rowsAt(db)
-    .where(and(eq(problems.workspaceId, workspaceId), isNull(problems.deletedWith)))
-    .orderBy(desc(problems.changedAt), desc(problems.number))
-    .limit(limit)
-    .offset(offset)
+/** Problems at their current versions, to be narrowed further. */
+export const problemsAtCurrentVersion = (db: Db) => rowsAt(db)
+
+/** Tags of a problem, held until the transaction ends; undefined when it is not there. */
+export async function holdTags(tx: Db, id: string): Promise<string[] | undefined> {
+  const rows = await tx
+    .select({ tags: problems.tags })
+    .from(problems)
+    .where(and(eq(problems.id, id), isNull(problems.deletedWith)))
+    .for('update')
+  return rows[0]?.tags
+}
+
+export async function setTags(tx: Db, id: string, tags: string[]): Promise<void> {
+  await tx.update(problems).set({ tags }).where(eq(problems.id, id))
 }
 
 export async function updateProblem(

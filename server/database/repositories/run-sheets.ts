@@ -47,7 +47,7 @@ export async function runSheetsOfEmbeddings(db: Db, embeddingIds: readonly strin
     .select()
     .from(runSheets)
     .where(and(inArray(runSheets.embeddingId, [...embeddingIds]), isNull(runSheets.deletedWith)))
-    .orderBy(desc(runSheets.createdAt))
+    .orderBy(desc(runSheets.createdAt), desc(runSheets.number))
 }
 
 /**

@@ -22,6 +22,7 @@ import type {
 } from '../../../shared/schemas/embeddings'
 import type { JobKind, JobStatus, JobView } from '../../../shared/schemas/jobs'
 import type { CalibrationSaved, MachineSheet } from '../../../shared/schemas/machines'
+import type { ProblemSource } from '../../../shared/schemas/problem-versions'
 import type { ConstraintGroup, ReadingView, StructureView } from '../../../shared/schemas/problems'
 import type { RunSheetSettings, RunSheetState } from '../../../shared/schemas/run-sheets'
 import type { Family } from '../../../shared/engine/machine/fabric'
@@ -90,7 +91,7 @@ export const problemVersions = pgTable(
       .notNull()
       .references(() => blobs.id),
     fingerprint: text().notNull(),
-    source: jsonb().$type<{ fileName: string; bytes: number; sha256: string }>().notNull(),
+    source: jsonb().$type<ProblemSource>().notNull(),
     reading: jsonb().$type<ReadingView>().notNull(),
     structure: jsonb().$type<StructureView>().notNull(),
     /** Constraint groups as confirmed or entered; null while nobody has looked at them. */

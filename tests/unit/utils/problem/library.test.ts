@@ -1,84 +1,111 @@
 import { describe, expect, it } from 'vitest'
-import type { ProblemItem } from '../../../../shared/schemas/problems'
 import type { RunSheetItem } from '../../../../shared/schemas/run-sheets'
-import { filterProblems, libraryFacts, sortProblems } from '../../../../utils/problem/library'
+import {
+  isNarrowed,
+  libraryAddress,
+  libraryFacts,
+  libraryQuery,
+  libraryView,
+  rowsWords,
+  soughtWords,
+  stateChoices,
+  tagChoices,
+} from '../../../../utils/problem/library'
 
-const item = (number: number, name: string, rest: Partial<ProblemItem> = {}): ProblemItem => ({
-  id: `p${number}`,
-  number,
-  name,
-  form: 'qubo',
-  sense: 'min',
-  variables: 10 * number,
-  interactions: 5,
-  density: 0.1,
-  embedding: null,
-  runSheet: null,
-  best: null,
-  changedAt: `2026-12-0${number}T00:00:00Z`,
-  ...rest,
-})
+const PLAIN = libraryView({})
+const summary = {
+  total: 1234,
+  states: { 'not embedded': 1000, embedded: 200, 'in review': 4, returned: 30 },
+  tags: [
+    { tag: 'Deck', count: 1 },
+    { tag: 'winter', count: 1500 },
+  ],
+}
 
-const berths = item(1, 'Berths against arrivals', {
-  embedding: { id: 'e', number: 4, status: 'found', machine: 'Alder', longestChain: 5 },
-  runSheet: { id: 'r', number: 7, state: 'returned' },
-  best: -188,
-})
-const radio = item(2, 'Deck radio channels', { best: 24 })
-const crews = item(3, 'Two crews', {
-  form: 'ising',
-  embedding: { id: 'f', number: 1, status: 'none found', machine: 'Juniper', longestChain: null },
-})
-const all = [berths, radio, crews]
-const numbers = (items: ProblemItem[]) => items.map(({ number }) => number)
-
-describe('sortProblems', () => {
-  it('sorts both ways without touching what it was given', () => {
-    expect(numbers(sortProblems(all, { field: 'name', direction: 'ascending' }))).toEqual([1, 2, 3])
-    expect(numbers(sortProblems(all, { field: 'changedAt', direction: 'descending' }))).toEqual([3, 2, 1])
-    expect(numbers(all)).toEqual([1, 2, 3])
+describe('the address of the library', () => {
+  it('without anything shows what changed last', () => {
+    expect(PLAIN).toEqual({
+      q: '',
+      tag: [],
+      form: null,
+      state: null,
+      sort: 'changedAt',
+      direction: 'descending',
+      cursor: null,
+    })
+    expect(libraryQuery(PLAIN)).toEqual({})
+    expect(libraryAddress(PLAIN)).toBe('/api/problems?limit=100')
+    expect(isNarrowed(PLAIN)).toBe(false)
   })
 
-  it.each(['ascending', 'descending'] as const)('keeps those without a value last, %s', (direction) => {
-    expect(numbers(sortProblems(all, { field: 'best', direction })).at(-1)).toBe(3)
+  it('keeps search, filters, order and page', () => {
+    const query = {
+      q: 'berth 3',
+      tag: ['winter', 'crew plan'],
+      form: 'ising',
+      state: 'to carry over',
+      sort: 'best',
+      direction: 'descending',
+      cursor: 'MTAw',
+    }
+    const view = libraryView(query)
+    expect(libraryQuery(view)).toEqual(query)
+    expect(libraryView(libraryQuery(view) as never)).toEqual(view)
+    const address = new URL(libraryAddress(view), 'http://x')
+    expect(address.searchParams.getAll('tag')).toEqual(['winter', 'crew plan'])
+    expect(Object.fromEntries(address.searchParams)).toMatchObject({
+      q: 'berth 3',
+      state: 'to carry over',
+      limit: '100',
+    })
+    expect(isNarrowed(view)).toBe(true)
   })
 
-  it('puts equals in the order of their numbers', () => {
-    expect(numbers(sortProblems([crews, radio, berths], { field: 'interactions', direction: 'descending' }))).toEqual([
-      1, 2, 3,
-    ])
+  it('leaves out what goes without saying, by the field sorted by', () => {
+    expect(libraryQuery(libraryView({ sort: 'name', direction: 'ascending' }))).toEqual({ sort: 'name' })
+    expect(libraryQuery(libraryView({ sort: 'changedAt', direction: 'ascending' }))).toEqual({ direction: 'ascending' })
+  })
+
+  it('passes over what means nothing', () => {
+    expect(libraryView({ sort: 'colour', direction: 'up', state: 'lost', form: 'sudoku', q: null, tag: null })).toEqual(
+      PLAIN,
+    )
   })
 })
 
-describe('filterProblems', () => {
-  it.each([
-    ['', [1, 2, 3]],
-    ['P-2', [2]],
-    ['deck CHANNELS', [2]],
-    ['alder', [1]],
-    ['rs-7', [1]],
-    ['returned', [1]],
-    ['ising', [3]],
-    ['deck alder', []],
-  ])('"%s" leaves %j', (typed, expected) => {
-    expect(numbers(filterProblems(all, typed))).toEqual(expected)
+describe('words about it', () => {
+  it('say what was sought', () => {
+    expect(soughtWords({ ...PLAIN, q: 'berth' })).toBe('hold “berth”')
+    expect(soughtWords({ ...PLAIN, q: 'berth', tag: ['winter', 'Deck'], form: 'ising', state: 'embedded' })).toBe(
+      'hold “berth”, are tagged winter, Deck, are in Ising form and are “embedded”',
+    )
+  })
+
+  it('say which rows are shown', () => {
+    expect(rowsWords(0, 3, 3)).toBe('3 problems')
+    expect(rowsWords(0, 1, 1)).toBe('1 problem')
+    expect(rowsWords(100, 100, 10_000)).toBe('101 to 200 of 10\u202f000 problems')
+  })
+
+  it('offer every state with its count, and the tags not sought yet', () => {
+    expect(stateChoices(summary).find(({ value }) => value === 'in review')).toMatchObject({ note: '4' })
+    expect(stateChoices(summary).find(({ value }) => value === 'draft')).toMatchObject({ note: '0' })
+    expect(tagChoices(summary, ['Deck'])).toEqual([{ value: 'winter', label: 'winter', note: '1\u202f500' }])
   })
 })
 
 describe('libraryFacts', () => {
-  it('counts what was never embedded, and names the first run sheet of a state', () => {
-    const sheets = [
-      { number: 9, state: 'in review' },
-      { number: 8, state: 'in review' },
-      { number: 7, state: 'returned' },
-    ] as RunSheetItem[]
-    expect(libraryFacts(7, all, sheets)).toEqual([
-      { label: 'Problems', value: 7 },
-      { label: 'Not embedded yet', value: 1 },
-      { label: 'With a run sheet', value: 1 },
-      { label: 'Waiting for a reviewer', value: 2, note: 'RS-9 and more' },
-      { label: 'Approved, not issued', value: 0, note: undefined },
-      { label: 'Returned', value: 1, note: 'RS-7' },
+  const sheet = (number: number, state: RunSheetItem['state']) => ({ number, state }) as RunSheetItem
+
+  it('counts over the whole library', () => {
+    const facts = libraryFacts(summary, [sheet(7, 'in review'), sheet(6, 'in review'), sheet(5, 'returned')])
+    expect(facts.map(({ label, value, note }) => [label, String(value), note])).toEqual([
+      ['Problems', '1\u202f234', undefined],
+      ['Not embedded yet', '1\u202f000', undefined],
+      ['With a run sheet', '34', undefined],
+      ['Waiting for a reviewer', '2', 'RS-7 and more'],
+      ['Approved, not issued', '0', undefined],
+      ['Returned', '1', 'RS-5'],
     ])
   })
 })

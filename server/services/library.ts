@@ -1,0 +1,45 @@
+import { DomainError } from '../../shared/errors'
+import { firstDirection } from '../../shared/library'
+import type { LibraryPage, LibraryQuery, LibrarySummary } from '../../shared/schemas/library'
+import type { Actor, App } from '../app'
+import { countStates, countTags, problemsInOrder, searchLibrary } from '../database/repositories/library'
+import { cursorOf, positionOf } from '../database/repositories/pages'
+import { contextOf, itemOf } from './problem-items'
+
+/** @throws DomainError for a cursor that no answer gave out */
+function startOf(cursor: string | undefined): number {
+  const start = positionOf(cursor)
+  if (cursor && cursorOf(start) !== cursor)
+    throw new DomainError('not acceptable', 'library.cursor', 'The cursor is not one that a list of problems gave.', [
+      { path: 'cursor', message: 'take nextCursor or previousCursor of the answer before' },
+    ])
+  return start
+}
+
+/** A page of the problems that match, sorted in the database. Pages are counted by position: what changes meanwhile may shift them. */
+export async function libraryPage(app: App, actor: Actor, query: LibraryQuery): Promise<LibraryPage> {
+  const { sort, limit } = query
+  const start = startOf(query.cursor)
+  const direction = query.direction ?? firstDirection(sort)
+  const place = { sort, direction, limit, offset: start }
+  const { ids, total } = await searchLibrary(app.db, actor.workspaceId, query, place)
+  const rows = await problemsInOrder(app.db, ids)
+  const context = await contextOf(app, ids)
+  return {
+    items: rows.map((row) => itemOf(row, context)),
+    nextCursor: start + limit < total ? cursorOf(start + limit) : null,
+    previousCursor: start > 0 ? cursorOf(Math.max(0, start - limit)) : null,
+    total,
+    start,
+  }
+}
+
+/** How many problems have come how far, and the tags in use. */
+export async function librarySummary(app: App, actor: Actor): Promise<LibrarySummary> {
+  const states = await countStates(app.db, actor.workspaceId)
+  return {
+    total: states.reduce((sum, { count }) => sum + count, 0),
+    states: Object.fromEntries(states.map(({ state, count }) => [state, count])),
+    tags: await countTags(app.db, actor.workspaceId),
+  }
+}
