@@ -78,7 +78,7 @@ function compareInteractions(before: Pairs, after: Pairs, labels: readonly strin
     if (found.changes.length < room)
       found.changes.push({ labels: [labels[Math.floor(key / n)]!, labels[key % n]!], before: was, after: is })
   }
-  for (let b = 0, a = 0; b < before.keys.length || a < after.keys.length; ) {
+  for (let b = 0, a = 0; b < before.keys.length || a < after.keys.length;) {
     const [was, is] = [before.keys[b] ?? Infinity, after.keys[a] ?? Infinity]
     if (was < is) {
       found.removed++
