@@ -7,7 +7,7 @@ import type { WorkingProblem } from './working-problem'
  * network (Boros & Hammer, Pseudo-Boolean optimization, Discrete Appl. Math. 123, 2002): node 2k is the literal x of the
  * k-th variable left, 2k + 1 its negation; the source is the literal "true", the sink "false". A term α·u·v gives the arcs
  * u → ¬v and v → ¬u of capacity α/2; a linear term α·u counts as α·u·true. Capacities are doubled here, so that they stay
- * whole. Arcs 4t … 4t + 3 belong to term t: u → ¬v and its opposite, v → ¬u and its opposite; so e ^ 2 is the mirror of e.
+ * whole. Arcs 4t … 4t + 3 belong to term t: u → ¬v and its opposite, v → ¬u and its opposite.
  */
 export interface ImplicationNetwork {
   readonly network: Network

@@ -1,14 +1,16 @@
 /**
  * Roof duality (Hammer, Hansen & Simeone, Math. Programming 28, 1984) through a maximum flow on the implication network
  * (Boros & Hammer, Discrete Appl. Math. 123, 2002). The flow turns the posiform into one with the same values whose
- * constant is the roof dual, a lower bound. Made symmetric (the mean of itself and its mirror), it leaves an arc u → v open
- * exactly if the product u·¬v is still in the posiform. Hence a set of literals with no arc out of it and no literal
- * together with its negation, all set to 1, makes every term vanish that it touches, and leaves the others alone: the
- * energy never rises. Two such sets are used:
+ * constant is the roof dual, a lower bound. Were the flow symmetric (the mean of itself and its mirror), it would leave an
+ * arc u → v open exactly if the product u·¬v is still in the posiform; hence a set of literals with no open arc out of it
+ * and no literal together with its negation, all set to 1, makes every term vanish that it touches, and leaves the others
+ * alone: the energy never rises. Sets without an open arc out of them are the minimum cuts, so they are the same for every
+ * maximum flow (Picard & Queyranne, Math. Programming Study 13, 1980), symmetric or not. Two of them are used:
  * - strong persistency: all literals that can be reached from "true". Each is at the end of a chain of terms one of which
  *   is positive unless all are 1: they are so in every optimum;
- * - weak persistency: strongly connected components, those that lead nowhere first, each set to 1 if all it leads to is:
- *   they are so in some optimum, all together and with the strong ones.
+ * - weak persistency: strongly connected components in an order in which each comes after those it leads to, set to 1
+ *   where it comes before its mirror (as in 2-satisfiability: Aspvall, Plass & Tarjan, Inf. Process. Lett. 8, 1979): they
+ *   are so in some optimum, all together and with the strong ones.
  */
 import { sendExactMaximumFlow } from './exact-flow'
 import { implicationNetworkOf } from './implication-network'
@@ -39,29 +41,14 @@ function reachable({ heads, offsets, arcs, nodes, source }: Network, isOpen: Uin
   return isReached
 }
 
-/** Literals set to 1 by strongly connected components among those not decided. */
+/**
+ * Literals set to 1 by strongly connected components among those not decided: all of a component that comes before its
+ * mirror. It leads to such components only: from C to E means from E's mirror to C's, so a component that comes after its
+ * mirror, or is its own, would have C's mirror before C.
+ */
 function settledByComponents(network: Network, isOpen: Uint8Array, isDecided: Uint8Array): Uint8Array {
-  const { heads, offsets, arcs } = network
-  const { count, componentOf, nodes } = strongComponents(network, isOpen, isDecided)
-  const isTrue = new Uint8Array(count)
-  const isRuledOut = new Uint8Array(count)
-  let at = 0
-  for (let c = 0; c < count; c++) {
-    const from = at
-    while (at < nodes.length && componentOf[nodes[at]!] === c) at++
-    const mirror = componentOf[nodes[from]! ^ 1]!
-    if (mirror === c) isRuledOut[c] = 1
-    for (let k = from; k < at && isRuledOut[c] === 0; k++)
-      for (let p = offsets[nodes[k]!]!; p < offsets[nodes[k]! + 1]!; p++) {
-        const u = heads[arcs[p]!]!
-        if (isOpen[arcs[p]!] === 0 || isDecided[u] === 1 || componentOf[u] === c) continue
-        if (isTrue[componentOf[u]!] === 0) isRuledOut[c] = 1
-      }
-    if (isRuledOut[c] === 1) continue
-    isTrue[c] = 1
-    isRuledOut[mirror] = 1
-  }
-  return Uint8Array.from(componentOf, (c) => (c < count ? isTrue[c]! : 0))
+  const { componentOf } = strongComponents(network, isOpen, isDecided)
+  return Uint8Array.from(componentOf, (component, v) => (component < componentOf[v ^ 1]! ? 1 : 0))
 }
 
 /**
@@ -77,7 +64,7 @@ export function roofDuality(working: WorkingProblem, shouldStop: () => boolean):
     const e = network.arcs[p]!
     flow += capacities[e]! - residual[e]!
   }
-  const isOpen = Uint8Array.from(residual, (value, e) => (value > 0n || residual[e ^ 2]! > 0n ? 1 : 0))
+  const isOpen = Uint8Array.from(residual, (value) => (value > 0n ? 1 : 0))
   const isReached = reachable(network, isOpen)
   const isDecided = isReached.map((reached, v) => reached | isReached[v ^ 1]!)
   isDecided[network.source] = isDecided[network.sink] = 1

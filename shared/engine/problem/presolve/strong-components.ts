@@ -7,8 +7,6 @@ export interface StrongComponents {
   readonly count: number
   /** Component of each node; 0xffffffff where it was left out. */
   readonly componentOf: Uint32Array
-  /** Nodes by component. */
-  readonly nodes: Uint32Array
 }
 
 /**
@@ -22,7 +20,6 @@ export function strongComponents(network: Network, isOpen: Uint8Array, isLeftOut
   const lowest = new Uint32Array(order)
   const next = offsets.slice(0, order)
   const stack: number[] = []
-  const nodes: number[] = []
   const path: number[] = []
   let seen = 0
   let count = 0
@@ -40,7 +37,6 @@ export function strongComponents(network: Network, isOpen: Uint8Array, isLeftOut
     do {
       u = stack.pop()!
       componentOf[u] = count
-      nodes.push(u)
     } while (u !== v)
     count++
   }
@@ -59,5 +55,5 @@ export function strongComponents(network: Network, isOpen: Uint8Array, isLeftOut
     enter(start)
     while (path.length > 0) look(path[path.length - 1]!)
   }
-  return { count, componentOf, nodes: Uint32Array.from(nodes) }
+  return { count, componentOf }
 }

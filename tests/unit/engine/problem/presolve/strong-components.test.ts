@@ -19,12 +19,9 @@ it('puts nodes together that reach each other, and what they lead to first', () 
     })
     for (let via = 0; via < nodes; via++)
       for (const row of leads) if (row[via]) leads[via]!.forEach((leadsOn, b) => (row[b] ||= leadsOn))
-    const { count, componentOf, nodes: listed } = strongComponents(network, isOpen, isLeftOut)
+    const { count, componentOf } = strongComponents(network, isOpen, isLeftOut)
     const taken = [...isLeftOut.keys()].filter((v) => isLeftOut[v] === 0)
-    expect([...listed].sort((a, b) => a - b)).toEqual(taken)
-    expect(Array.from(listed, (v) => componentOf[v])).toEqual(
-      Array.from(listed, (v) => componentOf[v]).sort((a, b) => a! - b!),
-    )
+    componentOf.forEach((c, v) => expect(c < count).toBe(isLeftOut[v] === 0))
     expect(new Set(taken.map((v) => componentOf[v])).size).toBe(count)
     for (const a of taken)
       for (const b of taken) {
