@@ -1,10 +1,8 @@
 import { chainLengths } from '../../shared/engine/readout/breaks'
 import { histogram as energyHistogram, weightsInBins } from '../../shared/engine/readout/energies'
-import { wilson } from '../../shared/engine/readout/intervals'
 import { histogram } from '../../shared/engine/problem/histogram'
 import type { Programmed } from '../../shared/engine/programming/programme'
 import { DomainError } from '../../shared/errors'
-import type { Proportion } from '../../shared/schemas/common'
 import type {
   ChainBreaks,
   CouplerBreaks,
@@ -24,10 +22,12 @@ import type { DecodedSummary, Summary } from '../workers/tasks/summarise'
 import type { Bench, Programming } from './programming'
 import { programmeBench, requireProgrammed } from './programming'
 import { standingOf } from './problem-difference'
+import { proportion } from './proportion'
 import { returnRow } from './returns'
 import { benchOf, runSheetRow } from './run-sheets'
 import { readsIn, unpackSamples } from './samples-data'
 import { signed, signOf } from './sense'
+import { violationsView } from './violations'
 
 const METHODS: readonly Decoding[] = ['majority', 'discard', 'descent']
 const TITLES: Record<Decoding, string> = {
@@ -42,18 +42,6 @@ const PHYSICAL_BINS = 24
 const MAX_VALUES = 4_000_000
 /** Cells of a samples file: three characters each, below the longest text there can be. */
 const MAX_CELLS = 150_000_000
-
-const proportion = (count: number, total: number): Proportion => ({
-  count,
-  total,
-  rate: total > 0 ? count / total : 0,
-  ...wilsonOf(count, total),
-})
-const wilsonOf = (count: number, total: number) => {
-  if (total === 0) return { low: 0, high: 1 }
-  const { low, high } = wilson(count, total)
-  return { low, high }
-}
 
 interface Loaded {
   bench: Bench
@@ -74,9 +62,21 @@ async function load(app: App, actor: Actor, row: ReturnRow, methods: Decoding[],
     seed: row.settings.seed,
     methods,
     solutions,
+    groups: bench.problem.groups ?? [],
   })
   return { bench, programming, programmed, summary }
 }
+
+/** What there is to say before the samples are there. */
+const NOTHING_YET = {
+  breaks: null,
+  decodings: [],
+  energies: null,
+  best: null,
+  solutions: [],
+  physicalEnergies: [],
+  violations: null,
+} satisfies Partial<ReturnView>
 
 /** What the samples say, decoded one way, with the other ways beside it. */
 export async function returnView(app: App, actor: Actor, id: string, decode: Decoding): Promise<ReturnView> {
@@ -85,7 +85,7 @@ export async function returnView(app: App, actor: Actor, id: string, decode: Dec
   const bench = await benchOf(app, actor, sheet)
   const { problem, machine } = bench
   const job = await findJobOfSubject(app.db, id)
-  const base: Omit<ReturnView, 'breaks' | 'decodings' | 'energies' | 'best' | 'solutions' | 'physicalEnergies'> = {
+  const base: Omit<ReturnView, keyof typeof NOTHING_YET> = {
     id,
     number: row.number,
     source: row.source,
@@ -112,8 +112,7 @@ export async function returnView(app: App, actor: Actor, id: string, decode: Dec
     createdBy: await personOf(app.db, row.createdBy),
     createdAt: row.createdAt.toISOString(),
   }
-  if (row.status !== 'ready')
-    return { ...base, breaks: null, decodings: [], energies: null, best: null, solutions: [], physicalEnergies: [] }
+  if (row.status !== 'ready') return { ...base, ...NOTHING_YET }
   const loaded = await load(app, actor, row, [...METHODS], SHOWN_SOLUTIONS)
   const shown = loaded.summary.decoded.find(({ method }) => method === decode)!
   const solutions = solutionViews(bench, shown)
@@ -125,6 +124,7 @@ export async function returnView(app: App, actor: Actor, id: string, decode: Dec
     best: solutions[0] ?? null,
     solutions,
     physicalEnergies: histogram(loaded.summary.physical, PHYSICAL_BINS),
+    violations: violationsView(problem.groups, shown),
   }
 }
 

@@ -8,8 +8,11 @@ import { planSearch } from './tasks/plan-search'
 import { proveInfeasible } from './tasks/prove-infeasible'
 import { readProblemFile } from './tasks/read-problem'
 import { readSamplesFile } from './tasks/read-samples'
+import { recogniseGroups } from './tasks/recognise-groups'
 import { rehearse } from './tasks/rehearse'
 import { runTry } from './tasks/run-try'
+import { sparsity } from './tasks/sparsity'
+import { structureDetails } from './tasks/structure-details'
 import { summarise } from './tasks/summarise'
 import { writeProblemFile } from './tasks/write-problem'
 import { writeSamplesFile } from './tasks/write-samples'
@@ -25,8 +28,11 @@ export const TASKS = {
   proveInfeasible,
   readProblemFile,
   readSamplesFile,
+  recogniseGroups,
   rehearse,
   runTry,
+  sparsity,
+  structureDetails,
   summarise,
   writeProblemFile,
   writeSamplesFile,

@@ -1,5 +1,6 @@
 import { z } from 'zod'
 import type { HistogramBin, Person, Proportion } from './common'
+import type { ConstraintGroup } from './problems'
 import type { VersionStanding } from './problem-versions'
 
 export const decodeSchema = z.enum(['majority', 'discard', 'descent'])
@@ -68,6 +69,14 @@ export interface SolutionView extends SolutionRow {
   parts: { linear: number; interactions: number; offset: number }
 }
 
+/** Reads, decoded, that break a constraint group of the problem. */
+export interface GroupViolations extends Proportion {
+  name: string
+  kind: ConstraintGroup['kind']
+  k: number
+  members: number
+}
+
 export interface ReturnView {
   id: string
   number: number
@@ -108,6 +117,8 @@ export interface ReturnView {
   best: SolutionView | null
   solutions: SolutionView[]
   physicalEnergies: HistogramBin[]
+  /** Of the reads kept by the decoding shown; null while the problem has no confirmed groups. */
+  violations: { any: Proportion; groups: GroupViolations[] } | null
   createdBy: Person
   createdAt: string
 }

@@ -1,4 +1,5 @@
 import type { Control } from '../../../shared/engine/control'
+import type { VariableGroup } from '../../../shared/engine/problem/groups/group'
 import type { Problem } from '../../../shared/engine/problem/problem'
 import type { Programmed } from '../../../shared/engine/programming/programme'
 import type { BreakStatistics } from '../../../shared/engine/readout/breaks'
@@ -6,6 +7,8 @@ import { breakStatistics } from '../../../shared/engine/readout/breaks'
 import type { DecodeMethod } from '../../../shared/engine/readout/decode'
 import { decode } from '../../../shared/engine/readout/decode'
 import { distinctSolutions, logicalEnergies, physicalEnergies } from '../../../shared/engine/readout/energies'
+import type { Violations } from '../../../shared/engine/readout/violations'
+import { violationsOf } from '../../../shared/engine/readout/violations'
 import type { Samples } from '../../../shared/engine/sampling/samples'
 import { spinOf } from '../../../shared/engine/sampling/samples'
 
@@ -18,6 +21,8 @@ export interface SummariseInput {
   methods: DecodeMethod[]
   /** How many of the best distinct solutions to answer for each method. */
   solutions: number
+  /** Constraint groups whose violations are counted. */
+  groups?: VariableGroup[]
 }
 
 export interface DecodedSummary {
@@ -27,6 +32,7 @@ export interface DecodedSummary {
   energies: Float64Array
   counts: Uint32Array
   solutions: { energy: number; count: number; distance: number; spins: Int8Array }[]
+  violations: Violations
 }
 
 export interface Summary {
@@ -37,7 +43,7 @@ export interface Summary {
 
 /** Break statistics, energies and best solutions of a set of samples. */
 export function summarise(input: SummariseInput, _control: Control<never>): Summary {
-  const { samples, programmed, ising, seed, methods, solutions } = input
+  const { samples, programmed, ising, seed, methods, solutions, groups = [] } = input
   return {
     breaks: breakStatistics({ samples, programmed }),
     physical: physicalEnergies(programmed, samples),
@@ -50,6 +56,7 @@ export function summarise(input: SummariseInput, _control: Control<never>): Summ
         ties,
         energies,
         counts: states.counts,
+        violations: violationsOf(states, groups),
         solutions: best.map(({ row, energy, count, distance }) => ({
           energy,
           count,

@@ -27,8 +27,9 @@ export interface Sparsity {
   /** order[place] is a variable. */
   readonly order: Uint32Array
   readonly raster: SparsityRaster
-  /** Greatest distance from the diagonal, in places. */
+  /** Greatest distance from the diagonal, in places; in this order, and in the order given. */
   readonly bandwidth: number
+  readonly givenBandwidth: number
   /** Interactions by their distance from the diagonal: upper ends 1, 2, 4, 8, …, the last the greatest there can be. */
   readonly distances: readonly { readonly from: number; readonly to: number; readonly count: number }[]
 }
@@ -98,13 +99,14 @@ function distancesOf(problem: Problem, places: Uint32Array): Sparsity['distances
 export function sparsityOf(problem: Problem, options: SparsityOptions): Sparsity {
   if (!(options.bins >= 1 && options.budget >= 1)) throw new RangeError('a raster has at least one bin and one byte')
   const graph = interactionGraph(problem)
-  const order =
-    options.order === 'banded' ? reverseCuthillMcKee(graph) : Uint32Array.from({ length: problem.n }, (_, v) => v)
+  const given = Uint32Array.from({ length: problem.n }, (_, v) => v)
+  const order = options.order === 'banded' ? reverseCuthillMcKee(graph) : given
   const places = placesOf(order)
   return {
     order,
     raster: rasterOf(problem, places, options),
     bandwidth: bandwidthOf(graph, places),
+    givenBandwidth: bandwidthOf(graph, given),
     distances: distancesOf(problem, places),
   }
 }

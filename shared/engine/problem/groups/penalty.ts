@@ -189,13 +189,17 @@ class Bounds {
   }
 }
 
+/** Whether so many pairs of members can be looked at. */
+export const canAssess = (groups: readonly VariableGroup[]): boolean =>
+  groups.reduce((sum, { members }) => sum + pairsOf(members.length), 0) <= DEFAULTS.maxPairs
+
 /**
  * The penalties of groups in a QUBO to be minimised, in their order, each beside what the rest of the objective can
  * gain. All groups are taken to be written as penalties at once: what belongs to several is taken off several times.
  * @throws RangeError when the groups have more pairs than can be looked at
  */
 export function assessPenalties(qubo: Problem, groups: readonly VariableGroup[]): PenaltyReport[] {
-  if (groups.reduce((sum, { members }) => sum + pairsOf(members.length), 0) > DEFAULTS.maxPairs)
+  if (!canAssess(groups))
     throw new RangeError(`groups with more than ${DEFAULTS.maxPairs} pairs of members are not looked at`)
   const ground = new Ground(qubo)
   const weights = groups.map((group) => (linearOfPenalty(group) === null ? null : weightOf(ground, group.members)))

@@ -124,6 +124,28 @@ describe('the penalty bound', () => {
     expect(report).toMatchObject({ weight: 10, pairs: 6, pairsDeviating: 2, greatestDeviation: 20 })
   })
 
+  it('of groups that share variables counts all that touches them, by hand', () => {
+    // Two groups share x2. Outside: x5 and x6. Left when both penalties are off: 3 x0, −2 x0 x4, 5 x4 x5; not 7 x5 x6.
+    const problem = new Written()
+      .exactly([0, 1, 2], 1, 10)
+      .exactly([2, 3, 4], 1, 10)
+      .add(0, 0, 3)
+      .add(0, 4, -2)
+      .add(4, 5, 5)
+      .add(5, 6, 7)
+      .problem(7)
+    const groups = [
+      { kind: 'exactly' as const, k: 1, members: [0, 1, 2] },
+      { kind: 'exactly' as const, k: 1, members: [2, 3, 4] },
+    ]
+    for (const { sufficient, overlaps, verdict } of assessPenalties(problem, groups))
+      expect({ sufficient, overlaps, verdict }).toEqual({
+        sufficient: 10,
+        overlaps: 1,
+        verdict: 'beats single changes',
+      })
+  })
+
   it('has no weight where none dominates or none is possible', () => {
     const problem = new Written().add(0, 1, 2).add(1, 2, 3).add(0, 2, 4).problem(3)
     const reports = assessPenalties(problem, [
