@@ -21,7 +21,7 @@ export async function problemFileOf(
   id: string,
   query: z.infer<typeof coefficientsQuerySchema>,
 ): Promise<ProblemFile> {
-  const row = await problemRow(app, actor, id)
+  const row = await problemRow(app, actor, id, query.version)
   const { format, ending, title } = PROBLEM_FILES[query.format]
   const form = query.form ?? row.form
   const written = await app.compute.run('writeProblemFile', {
