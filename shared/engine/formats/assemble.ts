@@ -22,9 +22,17 @@ export interface Gathered {
   readonly header: ProblemReading['header']
   readonly rejections: Rejections
   readonly issues: ReadingIssue[]
+  /** What the format knows better than its entries tell. */
+  readonly known?: Partial<Pick<ProblemReading, 'triangle' | 'duplicatesSummed' | 'firstRows' | 'entriesRead'>>
 }
 
-function firstRows({ labels, rows, cols, values }: Gathered): [string, string, number][] {
+/** The first entries, by label. */
+export function firstRowsOf({
+  labels,
+  rows,
+  cols,
+  values,
+}: Pick<Gathered, 'labels' | 'rows' | 'cols' | 'values'>): [string, string, number][] {
   return Array.from({ length: Math.min(values.length, DEFAULTS.firstRows) }, (_, k): [string, string, number] => [
     labels[rows[k]!]!,
     labels[cols[k]!]!,
@@ -44,16 +52,17 @@ export function assembleReading(gathered: Gathered, options: ReadOptions): Probl
   return {
     format: gathered.format,
     ...settings,
-    triangle: triangleOf(labels.length, gathered),
+    triangle: gathered.known?.triangle ?? triangleOf(labels.length, gathered),
     labels,
     problem: built && negateProblem(built.problem, { coefficients: isMax !== isMinus, offset: isMax }),
     duplicatesSummed: gathered.isMatrix ? 0 : (built?.duplicatesSummed ?? 0),
     zerosDropped: built?.zerosDropped ?? 0,
     rejected: rejections.lines,
     rejectedCount: rejections.count,
-    firstRows: firstRows(gathered),
+    firstRows: firstRowsOf(gathered),
     entriesRead: gathered.values.length,
     header: gathered.header,
     issues,
+    ...gathered.known,
   }
 }

@@ -52,6 +52,7 @@ export function* blocksOf(source: Iterable<Uint8Array>): Generator<Block> {
   const isOld = head.includes(CARRIAGE_RETURN) && !head.includes(LINE_FEED)
   let begun: Uint8Array[] = []
   for (const chunk of isOld ? withLineFeeds(unmarked) : unmarked) {
+    if (chunk.length === 0) continue
     const first = chunk.indexOf(LINE_FEED)
     if (first < 0) {
       // The source may use its memory again.

@@ -13,6 +13,8 @@ import {
   type ReadOptions,
 } from './format'
 import { json } from './json'
+import { matrixMarket } from './matrix-market'
+import { maxCut } from './max-cut'
 import { npy } from './npy'
 import { npz } from './npz'
 
@@ -21,7 +23,7 @@ const LINE_FEED = 0x0a
 const FIELD_ENDS = [0x20, 0x09, 0x2c, 0x3b]
 
 /** Every format for problems; where two seem equally likely the earlier one is taken. */
-export const FORMATS: readonly ProblemFormat[] = [coefficients, denseCsv, npy, npz, json]
+export const FORMATS: readonly ProblemFormat[] = [coefficients, denseCsv, matrixMarket, maxCut, npy, npz, json]
 
 /** The beginning of a file, cut after a whole line or else a whole field where more follows. */
 function headOf({ head, isWhole }: Peeked): Uint8Array {
