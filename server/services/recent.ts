@@ -13,6 +13,11 @@ export class Recent<T> {
     return value
   }
 
+  /** The kept value of the key, if there is one. */
+  peek(key: string): T | undefined {
+    return this.kept.get(key)
+  }
+
   /** Forgets the value of the key, unless it is another one by now. */
   drop(key: string, value: T): void {
     if (this.kept.get(key) === value) this.kept.delete(key)

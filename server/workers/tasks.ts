@@ -4,7 +4,9 @@ import { checkEmbedding } from './tasks/check-embedding'
 import { compareProblems } from './tasks/compare-problems'
 import { completeCapacity } from './tasks/complete-capacity'
 import { energies } from './tasks/energies'
+import { liftStates } from './tasks/lift-states'
 import { planSearch } from './tasks/plan-search'
+import { presolve } from './tasks/presolve'
 import { proveInfeasible } from './tasks/prove-infeasible'
 import { readProblemFile } from './tasks/read-problem'
 import { readSamplesFile } from './tasks/read-samples'
@@ -24,7 +26,9 @@ export const TASKS = {
   compareProblems,
   completeCapacity,
   energies,
+  liftStates,
   planSearch,
+  presolve,
   proveInfeasible,
   readProblemFile,
   readSamplesFile,

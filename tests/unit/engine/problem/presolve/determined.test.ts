@@ -14,14 +14,14 @@ it('tells only values on which all lifted states agree', () => {
   for (let trial = 0; trial < 300; trial++) {
     const problem = randomProblem(random, 4 + random.below(7), 0.5, () => DRAWS.integers!(random))
     const limits = { ...COMPONENT_LIMITS, variables: 0 }
-    const reduction = presolve(problem, 'qubo', undefined, limits)
+    const reduction = presolve(problem, 'ising', undefined, limits)
     const states = Array.from({ length: 2 ** reduction.kept.length }, (_, code) =>
-      lift(reduction, stateFrom(code, reduction.kept.length, 'qubo')),
+      lift(reduction, stateFrom(code, reduction.kept.length, 'ising')),
     )
     determinedValues(reduction).forEach((value, v) => {
       if (value === OPEN) open++
       else determined++
-      if (value !== OPEN) expect(states.every((state) => state[v] === value)).toBe(true)
+      if (value !== OPEN) expect(states.every((state) => (state[v]! + 1) / 2 === value)).toBe(true)
       else if (reduction.kept.includes(v)) expect(new Set(states.map((state) => state[v])).size).toBe(2)
     })
   }
