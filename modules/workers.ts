@@ -1,4 +1,5 @@
-import { join } from 'node:path'
+import { copyFile, mkdir } from 'node:fs/promises'
+import { dirname, join } from 'node:path'
 import { defineNuxtModule } from '@nuxt/kit'
 import type { BuildOptions } from 'esbuild'
 import { build, context } from 'esbuild'
@@ -10,12 +11,24 @@ const SHARED: BuildOptions = {
   format: 'esm',
   outExtension: { '.js': '.mjs' },
   logLevel: 'warning',
-  // These find their own files at run time; Nitro copies them beside the server because the web process imports them too.
-  external: ['piscina', '@electric-sql/pglite', 'pg-native'],
+  // These find their own files at run time. All but the solver Nitro copies beside the server, because the web process
+  // imports them too.
+  external: ['piscina', '@electric-sql/pglite', 'pg-native', 'highs'],
   // The PostgreSQL driver is CommonJS and asks for Node's modules through require.
   banner: {
     js: `import { createRequire as __createRequire } from 'node:module'; const require = __createRequire(import.meta.url);`,
   },
+}
+
+/** The MIP solver finds its WebAssembly beside itself, and only threads import it: Nitro does not see that it is needed. */
+const SOLVER_FILES = ['package.json', 'LICENSE', 'build/highs.mjs', 'build/highs.wasm']
+
+async function copySolver(from: string, to: string): Promise<void> {
+  for (const file of SOLVER_FILES) {
+    const target = join(to, 'node_modules/highs', file)
+    await mkdir(dirname(target), { recursive: true })
+    await copyFile(join(from, 'node_modules/highs', file), target)
+  }
 }
 
 /**
@@ -38,6 +51,7 @@ export default defineNuxtModule({
           entryPoints: { worker: join(nuxt.options.rootDir, 'server/worker-process.ts') },
           outdir: folder,
         })
+        await copySolver(nuxt.options.rootDir, folder)
       })
     })
     nuxt.hook('build:before', async () => {

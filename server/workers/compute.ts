@@ -32,7 +32,15 @@ export interface ThreadMessage {
 }
 
 /** Tasks of background jobs. They may hold a thread for an hour, so what a person waits for has threads of its own. */
-const LONG: ReadonlySet<TaskName> = new Set<TaskName>(['runTry', 'rehearse'])
+const LONG: ReadonlySet<TaskName> = new Set<TaskName>([
+  'annealPart',
+  'eliminatePart',
+  'enumeratePart',
+  'rehearse',
+  'runTry',
+  'solveProgramme',
+  'solveQuickParts',
+])
 
 /**
  * Two pools of worker threads over the bundled thread entry, each opened at its first use: long tasks, and the others.

@@ -1,18 +1,22 @@
 import type { Control } from '../../shared/engine/control'
 import { advise } from './tasks/advise'
+import { annealPart } from './tasks/anneal-part'
 import { checkEmbedding } from './tasks/check-embedding'
 import { compareProblems } from './tasks/compare-problems'
 import { completeCapacity } from './tasks/complete-capacity'
+import { eliminatePart } from './tasks/eliminate-part'
 import { energies } from './tasks/energies'
-import { liftStates } from './tasks/lift-states'
+import { enumeratePart } from './tasks/enumerate-part'
+import { planOptimum } from './tasks/plan-optimum'
 import { planSearch } from './tasks/plan-search'
-import { presolve } from './tasks/presolve'
 import { proveInfeasible } from './tasks/prove-infeasible'
 import { readProblemFile } from './tasks/read-problem'
 import { readSamplesFile } from './tasks/read-samples'
 import { recogniseGroups } from './tasks/recognise-groups'
 import { rehearse } from './tasks/rehearse'
 import { runTry } from './tasks/run-try'
+import { solveProgramme } from './tasks/solve-programme'
+import { solveQuickParts } from './tasks/solve-quick-parts'
 import { sparsity } from './tasks/sparsity'
 import { structureDetails } from './tasks/structure-details'
 import { summarise } from './tasks/summarise'
@@ -22,19 +26,23 @@ import { writeSamplesFile } from './tasks/write-samples'
 /** Everything a worker thread can do: structured-cloneable input, control, structured-cloneable output. */
 export const TASKS = {
   advise,
+  annealPart,
   checkEmbedding,
   compareProblems,
   completeCapacity,
+  eliminatePart,
   energies,
-  liftStates,
+  enumeratePart,
+  planOptimum,
   planSearch,
-  presolve,
   proveInfeasible,
   readProblemFile,
   readSamplesFile,
   recogniseGroups,
   rehearse,
   runTry,
+  solveProgramme,
+  solveQuickParts,
   sparsity,
   structureDetails,
   summarise,
@@ -45,5 +53,5 @@ export const TASKS = {
 type Tasks = typeof TASKS
 export type TaskName = keyof Tasks
 export type TaskInput<N extends TaskName> = Parameters<Tasks[N]>[0]
-export type TaskOutput<N extends TaskName> = ReturnType<Tasks[N]>
+export type TaskOutput<N extends TaskName> = Awaited<ReturnType<Tasks[N]>>
 export type TaskProgress<N extends TaskName> = Parameters<Tasks[N]>[1] extends Control<infer P> ? P : never

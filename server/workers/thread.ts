@@ -7,7 +7,7 @@ import { TASKS } from './tasks'
 const REPORT_EVERY_SECONDS = 0.1
 
 /** Entry of a worker thread: message → engine → result, with the buffers moved back rather than copied. */
-export default function run({ name, input, port, cancel }: ThreadMessage): unknown {
+export default async function run({ name, input, port, cancel }: ThreadMessage): Promise<unknown> {
   const flags = new Int32Array(cancel)
   Atomics.store(flags, FLAGS.begun, 1)
   const now = (): number => performance.now() / 1000
@@ -22,7 +22,7 @@ export default function run({ name, input, port, cancel }: ThreadMessage): unkno
     },
   }
   const task = TASKS[name] as (input: unknown, control: Control<unknown>) => unknown
-  const output = task(input, control)
+  const output = await task(input, control)
   port.close()
   return move({ [transferableSymbol]: buffersOf(output), [valueSymbol]: output as object })
 }

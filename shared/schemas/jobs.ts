@@ -2,7 +2,7 @@ import type { TracePoint } from './embeddings'
 
 /** States of a job. A job never stays `running` without a living worker: see docs/decisions/jobs.md. */
 export type JobStatus = 'waiting' | 'running' | 'done' | 'failed' | 'cancelled'
-export type JobKind = 'embedding' | 'rehearsal'
+export type JobKind = 'embedding' | 'reference' | 'rehearsal'
 
 export interface JobLogLine {
   at: string
@@ -17,7 +17,10 @@ export interface JobView {
   progress: number
   /** One sentence on where the work stands. */
   message: string
-  /** Kind-specific figures of the moment: `EmbeddingProgress` (embeddings.ts), or the reads of a rehearsal. */
+  /**
+   * Kind-specific figures of the moment: `EmbeddingProgress` (embeddings.ts), `ReferenceProgress` (reference.ts), or the
+   * reads of a rehearsal.
+   */
   detail: Record<string, number | string | null | readonly TracePoint[]>
   /** How often the work was started. */
   attempts: number

@@ -48,7 +48,7 @@ async function bundleThread(): Promise<string> {
     bundle: true,
     platform: 'node',
     format: 'esm',
-    external: ['piscina'],
+    external: ['piscina', 'highs'],
   })
   return outdir
 }

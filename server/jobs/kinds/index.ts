@@ -1,7 +1,12 @@
 import type { JobKind } from '../../../shared/schemas/jobs'
 import type { JobKindHandler } from '../kind'
 import { embeddingJob } from './embedding'
+import { referenceJob } from './reference'
 import { rehearsalJob } from './rehearsal'
 
 /** Every kind of background work. */
-export const JOB_KINDS: Record<JobKind, JobKindHandler> = { embedding: embeddingJob, rehearsal: rehearsalJob }
+export const JOB_KINDS: Record<JobKind, JobKindHandler> = {
+  embedding: embeddingJob,
+  reference: referenceJob,
+  rehearsal: rehearsalJob,
+}
