@@ -7,6 +7,7 @@ export const PROBLEM_FILES = {
     title: 'Dense matrix (.csv)',
     holds: 'Any problem of at most 5,000 variables.',
   },
+  mtx: { format: 'matrix-market', ending: 'mtx', title: 'Matrix Market (.mtx)', holds: 'Any problem.' },
   json: { format: 'json', ending: 'json', title: 'JSON document (.json)', holds: 'Any problem.' },
   npz: {
     format: 'npz',
@@ -19,6 +20,12 @@ export const PROBLEM_FILES = {
     ending: 'npy',
     title: 'NumPy array (.npy)',
     holds: 'A bare matrix: only a QUBO to be minimised, with offset 0 and variables 0 … n − 1, at most 5,000.',
+  },
+  cut: {
+    format: 'max-cut',
+    ending: 'txt',
+    title: 'Max-cut edge list (.txt)',
+    holds: 'Only the weight of a cut, to be maximised.',
   },
 } as const
 

@@ -13,6 +13,16 @@ export interface PageAnswer {
   endedAt: string
 }
 
+/** A file as a browser would save it. */
+export interface FileAnswer {
+  status: number
+  type: string
+  fileName: string
+  bytes: Uint8Array<ArrayBuffer>
+}
+
+const textOf = (bytes: Uint8Array): string => new TextDecoder().decode(bytes)
+
 /** A signed-in caller of the routes, with its session cookie. */
 export class Client {
   private readonly cookies = new Map<string, string>()
@@ -32,12 +42,9 @@ export class Client {
   async call<T = Record<string, unknown>>(method: string, path: string, body?: unknown): Promise<Answer<T>> {
     const form = body instanceof FormData
     const type: Record<string, string> = body && !form ? { 'content-type': 'application/json' } : {}
-    const { status, headers, text } = await this.send(
-      method,
-      path,
-      type,
-      form ? body : body === undefined ? undefined : JSON.stringify(body),
-    )
+    const sent = form ? body : body === undefined ? undefined : JSON.stringify(body)
+    const { status, headers, bytes } = await this.send(method, path, type, sent)
+    const text = textOf(bytes)
     const json = headers.get('content-type')?.includes('json')
     return { status, text, body: (json ? JSON.parse(text) : undefined) as T }
   }
@@ -54,7 +61,7 @@ export class Client {
       const [, name, value] = /^([^=]+)=([^;]*)/.exec(set)!
       this.cookies.set(name!, value!)
     }
-    return { status: response.status, headers: response.headers, text: await response.text() }
+    return { status: response.status, headers: response.headers, bytes: new Uint8Array(await response.arrayBuffer()) }
   }
 
   /** Cookies for a browser that is to go on as this person. */
@@ -65,13 +72,19 @@ export class Client {
   async page(path: string): Promise<PageAnswer> {
     let endedAt = path
     for (let hop = 0; hop < 5; hop++) {
-      const { status, headers, text } = await this.send('GET', endedAt, { accept: 'text/html' })
+      const { status, headers, bytes } = await this.send('GET', endedAt, { accept: 'text/html' })
       const location = headers.get('location')
-      if (status < 300 || status >= 400 || !location) return { status, text, endedAt }
+      if (status < 300 || status >= 400 || !location) return { status, text: textOf(bytes), endedAt }
       const next = new URL(location, this.url)
       endedAt = next.pathname + next.search
     }
     throw new Error(`${path} sends visitors round in circles`)
+  }
+
+  async download(path: string): Promise<FileAnswer> {
+    const { status, headers, bytes } = await this.send('GET', path, {})
+    const fileName = /filename="([^"]*)"/.exec(headers.get('content-disposition') ?? '')?.[1] ?? ''
+    return { status, type: headers.get('content-type') ?? '', fileName, bytes }
   }
 
   get = <T>(path: string) => this.call<T>('GET', path)

@@ -114,7 +114,8 @@ function sniff(head: Uint8Array): number {
     const isWithin = match?.slice(1, 3).every((vertex) => Number(vertex) >= 1 && Number(vertex) <= size!.n)
     if (!isWithin) others++
   })
-  if (!size || edges === 0 || others > 0 || edges > size.m) return 0
+  if (!size || others > 0 || edges > size.m) return 0
+  if (edges === 0) return size.m === 0 ? LIKENESS.cutShort : 0
   return edges < size.m && head.length < DEFAULTS.wholeBytes ? LIKENESS.cutShort : LIKENESS.sure
 }
 

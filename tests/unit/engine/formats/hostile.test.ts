@@ -80,5 +80,5 @@ describe('ten thousand damaged files', () => {
     }
     // Otherwise the damage would be so great that nothing behind the first check is ever reached.
     expect(readable).toBeGreaterThan(500)
-  })
+  }, 240_000)
 })
