@@ -13,12 +13,12 @@ import { signed, signOf } from './sense'
 type LiftRequest = Parameters<typeof packStates>[0]
 
 /** How answers to this version of a problem are lifted; null where it was not reduced from another one. */
-export async function liftingOf(app: App, row: ProblemRow, data: ProblemData): Promise<ReductionRecord | null> {
+export async function liftingOf(app: App, row: ProblemRow, data?: ProblemData): Promise<ReductionRecord | null> {
   const reduction = await findReduction(app.db, row.id)
   if (!reduction) return null
   const record = unpackRecord(await app.blobs.read(reduction.blobId))
   // A later version with other coefficients is another problem.
-  return record.coefficients === coefficientsOf(data) ? record : null
+  return record.coefficients === coefficientsOf(data ?? (await problemData(app, row))) ? record : null
 }
 
 /** States lifted to the first problem, one after the other, and their energies there in its own sense. */
@@ -46,7 +46,7 @@ const MAX_VALUES = 20_000_000
 /** States of a reduced problem as states of the problem that it came from first. */
 export async function liftStates(app: App, actor: Actor, id: string, request: LiftRequest): Promise<LiftedStates> {
   const row = await problemRow(app, actor, id)
-  const record = await liftingOf(app, row, await problemData(app, row))
+  const record = await liftingOf(app, row)
   if (!record)
     throw new DomainError(
       'wrong state',

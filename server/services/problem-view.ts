@@ -9,6 +9,7 @@ import { standingOf } from './problem-difference'
 import type { ProblemContext } from './problem-items'
 import { contextOf, itemOf } from './problem-items'
 import { problemData, problemRow } from './problems'
+import { reductionLinks } from './reductions'
 import { signed, signOf } from './sense'
 
 /** How each version that something was made for stands to the current one. */
@@ -89,6 +90,7 @@ export async function problemView(app: App, actor: Actor, id: string, version?: 
     embeddings: context.embeddings.map((made) =>
       embeddingOf(made, context.sheets, standings.get(made.embedding.problemVersion)!),
     ),
+    ...(await reductionLinks(app, row)),
     createdBy: await personOf(app.db, row.createdBy),
     createdAt: row.createdAt.toISOString(),
   }

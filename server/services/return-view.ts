@@ -9,6 +9,7 @@ import type {
   Decoding,
   DecodingRow,
   EnergySeries,
+  LiftedSolution,
   ReturnView,
   SolutionRow,
   SolutionView,
@@ -19,6 +20,7 @@ import { personOf } from '../database/repositories/problems'
 import type { ReturnRow } from '../database/repositories/run-sheets'
 import { returnToCompare } from '../database/repositories/run-sheets'
 import type { DecodedSummary, Summary } from '../workers/tasks/summarise'
+import { liftedSolutions } from './lifted-solutions'
 import type { Bench, Programming } from './programming'
 import { programmeBench, requireProgrammed } from './programming'
 import { standingOf } from './problem-difference'
@@ -73,6 +75,7 @@ const NOTHING_YET = {
   decodings: [],
   energies: null,
   best: null,
+  liftedTo: null,
   solutions: [],
   physicalEnergies: [],
   violations: null,
@@ -115,13 +118,15 @@ export async function returnView(app: App, actor: Actor, id: string, decode: Dec
   if (row.status !== 'ready') return { ...base, ...NOTHING_YET }
   const loaded = await load(app, actor, row, [...METHODS], SHOWN_SOLUTIONS)
   const shown = loaded.summary.decoded.find(({ method }) => method === decode)!
-  const solutions = solutionViews(bench, shown)
+  const lifted = await liftedSolutions(app, bench, shown.solutions)
+  const solutions = solutionViews(bench, shown, lifted?.rows)
   return {
     ...base,
     breaks: breaksView(loaded),
     decodings: loaded.summary.decoded.map((decoded) => decodingRow(bench, decoded)),
     energies: await energiesView(app, actor, row, bench, shown),
     best: solutions[0] ?? null,
+    liftedTo: lifted?.to ?? null,
     solutions,
     physicalEnergies: histogram(loaded.summary.physical, PHYSICAL_BINS),
     violations: violationsView(problem.groups, shown),
@@ -241,23 +246,32 @@ async function energiesView(
   return { best: best!, bestCount, mean: mean!, median: median!, start, width: step, series }
 }
 
-function solutionRows({ labels, problem }: Bench, { solutions }: DecodedSummary): SolutionRow[] {
+function solutionRows(
+  { labels, problem }: Bench,
+  { solutions }: DecodedSummary,
+  lifted: readonly LiftedSolution[] | undefined,
+): SolutionRow[] {
   const sign = signOf(problem.sense)
-  return solutions.map(({ energy, count, distance, spins }) => ({
+  return solutions.map(({ energy, count, distance, spins }, k) => ({
     energy: signed(sign, energy),
     count,
     distance,
     assignment: Object.fromEntries(
       labels.map((label, i) => [label, problem.form === 'qubo' ? (spins[i]! + 1) / 2 : spins[i]!]),
     ),
+    lifted: lifted?.[k] ?? null,
   }))
 }
 
 /** Solutions with the parts of their energies, in the Ising form. */
-function solutionViews(bench: Bench, decoded: DecodedSummary): SolutionView[] {
+function solutionViews(
+  bench: Bench,
+  decoded: DecodedSummary,
+  lifted: readonly LiftedSolution[] | undefined,
+): SolutionView[] {
   const { linear, rows, cols, values, offset } = bench.ising
   const sign = signOf(bench.problem.sense)
-  return solutionRows(bench, decoded).map((row, k) => {
+  return solutionRows(bench, decoded, lifted).map((row, k) => {
     const { spins } = decoded.solutions[k]!
     const fields = linear.reduce((sum, h, i) => sum + h * spins[i]!, 0)
     const interactions = values.reduce((sum, J, e) => sum + J * spins[rows[e]!]! * spins[cols[e]!]!, 0)
@@ -284,7 +298,8 @@ export async function solutionsOf(
   const shown = summary.decoded[0]!
   if (shown.solutions.length > most)
     throw new DomainError('too large', 'solutions.size', `Ask for at most ${most} solutions of this problem (limit).`)
-  return solutionRows(bench, shown)
+  const lifted = await liftedSolutions(app, bench, shown.solutions)
+  return solutionRows(bench, shown, lifted?.rows)
 }
 
 /** The raw samples as CSV: a header of qubit numbers, one line a row, with counts. */
@@ -319,6 +334,21 @@ async function readyRow(app: App, actor: Actor, id: string): Promise<ReturnRow> 
     `These samples are ${row.status}${row.reason ? `: ${row.reason}` : ''}.`,
   )
 }
+
+/**
+ * Assignments of the problem that this one was reduced from, in place of its own.
+ * @throws DomainError when it was not reduced from another one
+ */
+export const inOriginal = (rows: readonly SolutionRow[]): SolutionRow[] =>
+  rows.map((row) => {
+    if (!row.lifted)
+      throw new DomainError(
+        'not acceptable',
+        'solutions.lifted',
+        'This problem is not what a pre-solve left of another one. Leave `lifted` out.',
+      )
+    return { ...row, energy: row.lifted.energy ?? row.energy, assignment: row.lifted.assignment }
+  })
 
 /** One line per assignment: energy, count, distance, then a column for each variable. */
 export function solutionsCsv(rows: readonly SolutionRow[]): string {

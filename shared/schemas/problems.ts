@@ -6,6 +6,7 @@ import { nameSchema, textSchema, versionNumberSchema } from './common'
 import type { EmbeddingMethod, EmbeddingStats, EmbeddingStatus, MethodUsed, Objective } from './embeddings'
 import { editTagsSchema } from './library'
 import type { ProblemSource, VersionStanding } from './problem-versions'
+import type { ReductionLinks } from './presolve'
 import type { RunSheetState } from './run-sheets'
 
 export const formSchema = z.enum(['qubo', 'ising'])
@@ -177,7 +178,7 @@ export interface EmbeddingOfProblem {
   runSheets: { id: string; number: number; state: RunSheetState }[]
 }
 
-export interface ProblemView extends Omit<ProblemItem, 'embedding' | 'runSheet'> {
+export interface ProblemView extends Omit<ProblemItem, 'embedding' | 'runSheet'>, ReductionLinks {
   note: string
   /** The version shown. */
   version: number

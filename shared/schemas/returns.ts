@@ -10,6 +10,8 @@ export const solutionsQuerySchema = z.object({
   decode: decodeSchema.default('majority'),
   format: z.enum(['json', 'csv']).default('json'),
   limit: z.coerce.number().int().min(1).max(100_000).default(100),
+  /** CSV: assignments of the problem that this one was reduced from, in place of its own. */
+  lifted: z.enum(['true', 'false']).default('false'),
 })
 export const uploadReturnSchema = z.object({
   format: z.enum(['csv']).default('csv'),
@@ -55,6 +57,26 @@ export interface EnergySeries {
   counts: number[]
 }
 
+/** An answer to a reduced problem as an answer to the problem that it came from first. */
+export interface LiftedSolution {
+  /** In that problem's own sense, from its own coefficients; null when it has been deleted. */
+  energy: number | null
+  /** Whether it equals the energy of the answer, as it must; null when there is nothing to compare with. */
+  isEqual: boolean | null
+  assignment: Record<string, number>
+}
+
+/** The problem that answers are lifted to. */
+export interface LiftedTo {
+  id: string
+  number: number
+  name: string
+  version: number
+  variables: number
+  /** False once it was deleted. */
+  isThere: boolean
+}
+
 export interface SolutionRow {
   energy: number
   count: number
@@ -62,6 +84,8 @@ export interface SolutionRow {
   distance: number
   /** 0/1 for a QUBO, −1/+1 for an Ising problem, by label. */
   assignment: Record<string, number>
+  /** Null where the problem was not reduced from another one. */
+  lifted: LiftedSolution | null
 }
 
 /** A solution with the parts that its energy is the sum of, in the Ising form and the problem's own sense. */
@@ -115,6 +139,8 @@ export interface ReturnView {
     series: EnergySeries[]
   } | null
   best: SolutionView | null
+  /** Where the problem was reduced from another one: that one, which `lifted` of the solutions answers. */
+  liftedTo: LiftedTo | null
   solutions: SolutionView[]
   physicalEnergies: HistogramBin[]
   /** Of the reads kept by the decoding shown; null while the problem has no confirmed groups. */
