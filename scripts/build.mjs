@@ -13,6 +13,7 @@ const SOURCES = [
     'assets',
     'components',
     'composables',
+    'docs/problem.schema.json',
     'layouts',
     'middleware',
     'modules',

@@ -71,8 +71,17 @@ describe(`files of NumPy ${versions.numpy} and SciPy ${versions.scipy}`, () => {
     for (const [name, expected] of readable) expectHeld(name, expected)
   })
 
+  it('Matrix Market files hold what SciPy says, to the last bit', () => {
+    const readable = named(/\.mtx(\.gz)?$/).filter(([, { refused }]) => !refused)
+    expect(readable).toHaveLength(5)
+    for (const [name, expected] of readable) {
+      expectHeld(name, expected)
+      expect(readProblem(fileOf(name)).format).toBe('matrix-market')
+    }
+  })
+
   it('what cannot be read is refused with the reason and the place', () => {
-    const refused = named(/\.np[yz]$/).filter((entry) => entry[1].refused)
+    const refused = named(/\.(?:np[yz]|mtx)$/).filter((entry) => entry[1].refused)
     expect(refused.length).toBeGreaterThan(20)
     for (const [name, { refused: reason }] of refused) {
       const { problem, issues } = readProblem(fileOf(name))
