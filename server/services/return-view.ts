@@ -25,6 +25,7 @@ import type { Bench, Programming } from './programming'
 import { programmeBench, requireProgrammed } from './programming'
 import { standingOf } from './problem-difference'
 import { proportion } from './proportion'
+import { referenceOfSamples } from './return-reference'
 import { returnRow } from './returns'
 import { benchOf, runSheetRow } from './run-sheets'
 import { readsIn, unpackSamples } from './samples-data'
@@ -78,6 +79,7 @@ const NOTHING_YET = {
   liftedTo: null,
   solutions: [],
   physicalEnergies: [],
+  reference: null,
   violations: null,
 } satisfies Partial<ReturnView>
 
@@ -129,6 +131,7 @@ export async function returnView(app: App, actor: Actor, id: string, decode: Dec
     liftedTo: lifted?.to ?? null,
     solutions,
     physicalEnergies: histogram(loaded.summary.physical, PHYSICAL_BINS),
+    reference: await referenceOfSamples(app, bench, shown),
     violations: violationsView(problem.groups, shown),
   }
 }

@@ -1,5 +1,5 @@
 import { z } from 'zod'
-import type { Person } from './common'
+import type { Person, Proportion } from './common'
 import { seedSchema } from './common'
 
 /** Ways to an optimum; all but annealing prove it when they come to their end. */
@@ -98,10 +98,14 @@ export interface ReferenceView extends ReferenceItem {
   values: number[]
 }
 
-/** What a set of samples reached of the reference optimum of the version that was programmed. */
+/** The reads of one decoding held against the reference optimum of the version of the problem that was programmed. */
 export interface ReferenceOfSamples {
-  problemId: string
+  /** In the problem's own sense. */
   energy: number
   proved: boolean
   method: string
+  /** How much worse the best read is: below zero where it beats a value that is not proved. Null without reads. */
+  gap: number | null
+  /** Reads that reach the value or better it, of those kept. */
+  success: Proportion
 }

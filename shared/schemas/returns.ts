@@ -2,6 +2,7 @@ import { z } from 'zod'
 import type { HistogramBin, Person, Proportion } from './common'
 import type { ConstraintGroup } from './problems'
 import type { VersionStanding } from './problem-versions'
+import type { ReferenceOfSamples } from './reference'
 
 export const decodeSchema = z.enum(['majority', 'discard', 'descent'])
 export type Decoding = z.infer<typeof decodeSchema>
@@ -143,6 +144,8 @@ export interface ReturnView {
   liftedTo: LiftedTo | null
   solutions: SolutionView[]
   physicalEnergies: HistogramBin[]
+  /** Null where nobody has looked for the optimum of that version of the problem. */
+  reference: ReferenceOfSamples | null
   /** Of the reads kept by the decoding shown; null while the problem has no confirmed groups. */
   violations: { any: Proportion; groups: GroupViolations[] } | null
   createdBy: Person

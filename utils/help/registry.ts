@@ -2,12 +2,20 @@ import { embeddingHelp } from './embedding'
 import type { Explanation, HelpEntry } from './entry'
 import { explainWith } from './entry'
 import { machineHelp } from './machine'
+import { optimumHelp } from './optimum'
 import { problemHelp } from './problem'
 import { programmingHelp } from './programming'
 import { samplesHelp } from './samples'
 
 /** Every number that the product computes and shows, and how. */
-const HELP = { ...problemHelp, ...machineHelp, ...embeddingHelp, ...programmingHelp, ...samplesHelp }
+const HELP = {
+  ...problemHelp,
+  ...optimumHelp,
+  ...machineHelp,
+  ...embeddingHelp,
+  ...programmingHelp,
+  ...samplesHelp,
+}
 
 export type HelpId = keyof typeof HELP
 type GivenOf<Id extends HelpId> = (typeof HELP)[Id] extends HelpEntry<infer Given> ? Given : never

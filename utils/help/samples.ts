@@ -7,7 +7,7 @@ import { formatNumber, formatPercent, type NumberFormat } from '../format'
 /** How the figures of returned samples are computed. */
 
 /** Two-sided 95 % quantile of the standard normal distribution. */
-const Z_95 = 1.959964
+export const Z_95 = 1.959964
 
 interface Rate {
   count: number
@@ -21,7 +21,7 @@ interface Rate {
 }
 
 /** Wilson’s interval of c counts in N trials, without a division by c so that 0 and N need no case of their own. */
-const WILSON_STEPS: readonly HelpStep[] = [
+export const WILSON_STEPS: readonly HelpStep[] = [
   {
     symbol: 'm',
     name: 'middle of the interval',

@@ -71,6 +71,29 @@ export const CAI: Source = {
   venue: 'arXiv:1406.2741',
   year: 2014,
 }
+export const GRAY: Source = {
+  author: 'Gray',
+  title: 'Pulse code communication',
+  venue: 'US patent 2632058',
+  year: 1953,
+}
+export const BERTELE_BRIOSCHI: Source = {
+  author: 'Bertele & Brioschi',
+  title: 'Nonserial dynamic programming',
+  year: 1972,
+}
+export const GLOVER_WOOLSEY: Source = {
+  author: 'Glover & Woolsey',
+  title: 'Converting the 0-1 polynomial programming problem to a 0-1 linear program',
+  venue: 'Oper. Res. 22',
+  year: 1974,
+}
+export const KIRKPATRICK: Source = {
+  author: 'Kirkpatrick, Gelatt & Vecchi',
+  title: 'Optimization by simulated annealing',
+  venue: 'Science 220',
+  year: 1983,
+}
 export const LUCAS: Source = {
   author: 'Lucas',
   title: 'Ising formulations of many NP problems',

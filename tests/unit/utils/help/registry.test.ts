@@ -25,6 +25,21 @@ const EXAMPLES: readonly (readonly [HelpRequest, number | string])[] = [
   [{ id: 'coupling', given: { form: 'qubo', value: 6 } }, 1.5],
   [{ id: 'coupling', given: { form: 'ising', value: 1.5 } }, 6],
   [{ id: 'bestOfProblem', given: { best: -4, sense: 'max' } }, '−4'],
+  [
+    { id: 'referenceValue', given: { energy: -7, proved: true, tolerance: 0, methods: ['enumeration', 'annealing'] } },
+    '−7',
+  ],
+  [{ id: 'referenceBound', given: { bound: -9, sense: 'min', methods: ['integer programme'] } }, '−9'],
+  [{ id: 'referenceGap', given: { energy: -7, bound: -9 } }, 2],
+  [{ id: 'gapToReference', given: { best: -5, reference: -7, sense: 'min', proved: true } }, 2],
+  [{ id: 'gapToReference', given: { best: 5, reference: 7, sense: 'max', proved: false } }, 2],
+  [
+    {
+      id: 'successRate',
+      given: { count: 3, total: 10, reference: -7, proved: true, format: { significant: 3 }, rehearsal: false },
+    },
+    0.3,
+  ],
   [{ id: 'energyOfState', given: { linear: -3, interactions: 1.5, offset: 10, rehearsal: false } }, 8.5],
   [{ id: 'meanEnergy', given: { total: 30, reads: 8 } }, 3.75],
   [{ id: 'medianEnergy', given: { median: 3, reads: 8 } }, '3'],

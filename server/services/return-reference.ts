@@ -1,0 +1,34 @@
+import { enumerationTolerance } from '../../shared/engine/problem/optimum/enumerate-slice'
+import type { ReferenceOfSamples } from '../../shared/schemas/reference'
+import type { App } from '../app'
+import { bestReference } from '../database/repositories/reference-optima'
+import type { DecodedSummary } from '../workers/tasks/summarise'
+import type { Bench } from './programming'
+import { proportion } from './proportion'
+import { signed, signOf } from './sense'
+
+/**
+ * Decoded reads against the best known value of the version that was programmed; null where nobody has looked for it.
+ * Energies that differ by rounding only count as equal.
+ */
+export async function referenceOfSamples(
+  app: App,
+  { problem, ising }: Pick<Bench, 'problem' | 'ising'>,
+  { energies, counts }: Pick<DecodedSummary, 'energies' | 'counts'>,
+): Promise<ReferenceOfSamples | null> {
+  const row = await bestReference(app.db, problem.id, problem.version)
+  if (!row) return null
+  const reference = row.energy!
+  const tolerance = enumerationTolerance(ising) + Number(row.detail.tolerance ?? 0)
+  const total = counts.reduce((sum, count) => sum + count, 0)
+  const hits = counts.reduce((sum, count, k) => sum + (energies[k]! <= reference + tolerance ? count : 0), 0)
+  const best = energies.reduce((least, energy) => Math.min(least, energy), Infinity)
+  const gap = Math.abs(best - reference) <= tolerance ? 0 : best - reference
+  return {
+    energy: signed(signOf(problem.sense), reference),
+    proved: row.proved,
+    method: row.method ?? '',
+    gap: total > 0 ? gap : null,
+    success: proportion(hits, total),
+  }
+}
