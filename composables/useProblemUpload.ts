@@ -1,5 +1,5 @@
 import type { UploadedProblem } from '#shared/schemas/problems'
-import type { ApiFailure } from './useApi'
+import type { ApiFailure, Outcome } from './useApi'
 import type { ProblemUpload } from './useProblems'
 
 /** Time without typing after which the text is read again. */
@@ -16,6 +16,13 @@ async function textOf(file: File | null): Promise<string | null> {
 
 type Draft = ReturnType<typeof useProblemDraft>
 
+/** What is brought in and where it goes: a new problem, or a new version of one. */
+export interface UploadTarget<T extends UploadedProblem> {
+  draft: Draft
+  preview: (upload: ProblemUpload) => Promise<Outcome<T>>
+  save: (upload: ProblemUpload) => Promise<Outcome<T>>
+}
+
 /** The file with what was chosen about it; empty fields are left to the file. */
 function uploadOf({ name, options, skipRejected }: Draft, file: File): ProblemUpload {
   const { format, form, convention, sense } = options
@@ -23,11 +30,15 @@ function uploadOf({ name, options, skipRejected }: Draft, file: File): ProblemUp
   return { file, name: name.trim(), ...given, skipRejected }
 }
 
-/** Reads the draft as soon as it changes, without saving it, and saves it when told to. */
-export function useProblemUpload() {
-  const draft = useProblemDraft()
+/** A problem that is being brought in. */
+export function useNewProblem() {
   const { preview, save } = useProblemActions()
-  const reading = shallowRef<UploadedProblem | null>(null)
+  return useProblemUpload<UploadedProblem>({ draft: useProblemDraft(), preview, save })
+}
+
+/** Reads the draft as soon as it changes, without saving it, and saves it when told to. */
+export function useProblemUpload<T extends UploadedProblem>({ draft, preview, save }: UploadTarget<T>) {
+  const reading = shallowRef<T | null>(null)
   const failure = shallowRef<ApiFailure | null>(null)
   const saveFailure = shallowRef<ApiFailure | null>(null)
   const isReading = ref(false)
@@ -64,7 +75,7 @@ export function useProblemUpload() {
     const text = await textOf(file)
     if (draft.file === file) fileText.value = text
   }
-  async function commit(): Promise<UploadedProblem | null> {
+  async function commit(): Promise<T | null> {
     if (!source.value) return null
     isSaving.value = true
     const outcome = await save(uploadOf(draft, source.value))

@@ -1,4 +1,5 @@
 import type { ApiFailure } from './useApi'
+import type { UploadedVersion } from '#shared/schemas/problem-versions'
 import type { ProblemView, TermsView, UploadedProblem } from '#shared/schemas/problems'
 
 /** `?version=3`, or nothing for the current one. */
@@ -13,11 +14,7 @@ const FIRST_TERMS = { linear: 6, interactions: 8 } as const
 const MOST_TERMS = 500
 
 /** The coefficients in both forms: the first few, and more each time they are asked for. */
-export async function useTerms(
-  id: string,
-  part: TermsView['part'],
-  version: MaybeRefOrGetter<number | null> = null,
-) {
+export async function useTerms(id: string, part: TermsView['part'], version: MaybeRefOrGetter<number | null> = null) {
   const address = (start: number, limit: number) => {
     const shown = toValue(version)
     const of = shown === null ? '' : `&version=${shown}`
@@ -56,21 +53,33 @@ export interface ProblemUpload {
   skipRejected: boolean
 }
 
-/** Uploading and renaming problems. */
+function formOf(upload: ProblemUpload, dryRun: boolean): FormData {
+  const body = new FormData()
+  const { file, skipRejected, ...fields } = upload
+  for (const [name, value] of Object.entries(fields)) if (value) body.append(name, value)
+  if (skipRejected) body.append('skipRejected', 'true')
+  if (dryRun) body.append('dryRun', 'true')
+  body.append('file', file, file.name)
+  return body
+}
+
+/** Uploading a new version of a problem, with what it is for. */
+export function useVersionActions(id: string) {
+  const api = useApi()
+  const send = ({ name: _name, ...upload }: ProblemUpload & { remark?: string }, dryRun: boolean) =>
+    api.post<UploadedVersion>(`/api/problems/${id}/versions`, formOf(upload as ProblemUpload, dryRun))
+  return {
+    preview: (upload: ProblemUpload) => send(upload, true),
+    save: (upload: ProblemUpload, remark: string) => send({ ...upload, remark }, false),
+  }
+}
+
+/** Uploading, renaming, filing and copying problems. */
 export function useProblemActions() {
   const api = useApi()
-  const form = (upload: ProblemUpload, dryRun: boolean): FormData => {
-    const body = new FormData()
-    const { file, skipRejected, ...fields } = upload
-    for (const [name, value] of Object.entries(fields)) if (value) body.append(name, value)
-    if (skipRejected) body.append('skipRejected', 'true')
-    if (dryRun) body.append('dryRun', 'true')
-    body.append('file', file, file.name)
-    return body
-  }
   return {
-    preview: (upload: ProblemUpload) => api.post<UploadedProblem>('/api/problems', form(upload, true)),
-    save: (upload: ProblemUpload) => api.post<UploadedProblem>('/api/problems', form(upload, false)),
+    preview: (upload: ProblemUpload) => api.post<UploadedProblem>('/api/problems', formOf(upload, true)),
+    save: (upload: ProblemUpload) => api.post<UploadedProblem>('/api/problems', formOf(upload, false)),
     edit: (id: string, change: { name?: string; note?: string }) => api.patch(`/api/problems/${id}`, change),
     tag: (id: string, tags: { add?: string[]; remove?: string[] }) => api.patch(`/api/problems/${id}`, { tags }),
     duplicate: (id: string, version: number) =>

@@ -1,4 +1,8 @@
+import type { LibrarySummary } from '#shared/schemas/library'
 import type { ApiFailure } from './useApi'
+
+/** Tags of the workspace with how many problems bear each. */
+export const useTagsInUse = () => useResource<LibrarySummary['tags']>('/api/problems/tags')
 
 /** Adding and taking away tags of problems, one change after the other. */
 export function useTags(refresh: () => Promise<unknown>) {

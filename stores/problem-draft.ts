@@ -8,8 +8,7 @@ export interface ReadingOptions {
 
 const asTheFileSays = (): ReadingOptions => ({ format: null, form: null, convention: null, sense: null })
 
-/** A problem that is being brought in: outlives leaving the page, so that nothing typed or chosen is lost. */
-export const useProblemDraft = defineStore('problem draft', () => {
+function newDraft() {
   const text = ref('')
   /** Name under which the pasted text is handed in. */
   const textName = ref('pasted.txt')
@@ -28,4 +27,10 @@ export const useProblemDraft = defineStore('problem draft', () => {
     skipRejected.value = false
   }
   return { text, textName, file, name, options, skipRejected, isEmpty, clear }
-})
+}
+
+/** A problem that is being brought in: outlives leaving the page, so that nothing typed or chosen is lost. */
+export const useProblemDraft = defineStore('problem draft', newDraft)
+
+/** A version of a problem that is being brought in: outlives leaving the page too, for each problem its own. */
+export const useVersionDraft = (problemId: string) => defineStore(`version draft ${problemId}`, newDraft)()

@@ -34,12 +34,16 @@ export async function libraryPage(app: App, actor: Actor, query: LibraryQuery): 
   }
 }
 
+/** Tags in use, in alphabetical order, with how many problems bear each. */
+export const tagsInUse = (app: App, actor: Actor): Promise<LibrarySummary['tags']> =>
+  countTags(app.db, actor.workspaceId)
+
 /** How many problems have come how far, and the tags in use. */
 export async function librarySummary(app: App, actor: Actor): Promise<LibrarySummary> {
   const states = await countStates(app.db, actor.workspaceId)
   return {
     total: states.reduce((sum, { count }) => sum + count, 0),
     states: Object.fromEntries(states.map(({ state, count }) => [state, count])),
-    tags: await countTags(app.db, actor.workspaceId),
+    tags: await tagsInUse(app, actor),
   }
 }

@@ -4,10 +4,12 @@ import { embeddingView } from '../../server/services/embedding-view'
 import { chooseEmbedding, startEmbedding } from '../../server/services/embeddings'
 import { cancelJob, jobOf } from '../../server/services/jobs'
 import { calibrateMachine } from '../../server/services/machines'
-import { problemsOf, problemView } from '../../server/services/problems'
+import { libraryPage } from '../../server/services/library'
+import { problemView } from '../../server/services/problem-view'
 import { JOB_KINDS } from '../../server/jobs/kinds'
 import type { CreateEmbedding, EmbeddingProgress } from '../../shared/schemas/embeddings'
 import { createEmbeddingSchema } from '../../shared/schemas/embeddings'
+import { libraryQuerySchema } from '../../shared/schemas/library'
 import type { TestApp } from '../support/app'
 import { startTestApp } from '../support/app'
 import { until } from '../support/server'
@@ -301,7 +303,7 @@ describe('the chosen embedding', () => {
     expect(await chosenOf(problemId)).toHaveLength(2)
     await choose(elsewhere, false)
     expect(await chosenOf(problemId)).toHaveLength(1)
-    const { items } = await problemsOf(app, actor, { limit: 1 })
+    const { items } = await libraryPage(app, actor, libraryQuerySchema.parse({ limit: 1 }))
     expect(items[0]!.embedding!.id).toBe((await chosenOf(problemId))[0])
   })
 

@@ -17,6 +17,7 @@ const embedding = (number: number, rest: Partial<EmbeddingOfProblem> = {}): Embe
   stats: null,
   longestChain: 4,
   qubitsUsed: 100,
+  ofVersion: { version: 1, current: 1, graph: null },
   seconds: 2,
   createdAt: '2026-12-01T00:00:00Z',
   runSheets: [],
