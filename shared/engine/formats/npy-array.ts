@@ -114,10 +114,10 @@ export const writeWord = (word: string): Uint8Array =>
   joined(writeNpyHeader(`|S${word.length}`, []), new TextEncoder().encode(word))
 
 /** Texts as an array file of four-byte characters, filled up to the longest. */
-export function writeTexts(texts: readonly string[]): Uint8Array {
+export function writeTexts(texts: readonly string[], shape: readonly number[] = [texts.length]): Uint8Array {
   const codes = texts.map((text) => Array.from(text, (character) => character.codePointAt(0)!))
   const longest = codes.reduce((length, text) => Math.max(length, text.length), 1)
   const data = new DataView(new ArrayBuffer(4 * longest * texts.length))
   codes.forEach((text, k) => text.forEach((code, p) => data.setUint32(4 * (k * longest + p), code, true)))
-  return joined(writeNpyHeader(`<U${longest}`, [texts.length]), new Uint8Array(data.buffer))
+  return joined(writeNpyHeader(`<U${longest}`, shape), new Uint8Array(data.buffer))
 }

@@ -90,8 +90,8 @@ function write({ form, labels, problem, sense }: ProblemDocument): Uint8Array {
     ['format', writeWord('coo')],
     ['shape', writeIntegers([n, n])],
     ['data', writeDoubles(Float64Array.from([...diagonal.map((i) => linear[i]!), ...values]))],
-    ['form', writeWord(form)],
-    ['sense', writeWord(sense)],
+    ['form', writeTexts([form], [])],
+    ['sense', writeTexts([sense], [])],
     ['offset', writeDoubles(Float64Array.of(offset), [])],
   ])
   if (!isCounted(labels)) arrays.set('labels', writeTexts(labels))
