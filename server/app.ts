@@ -1,6 +1,7 @@
 import type { Database, Db } from './database/client'
 import type { BlobStore } from './database/repositories/blobs'
 import type { Queue } from './jobs/queue'
+import type { KeptUploads } from './services/kept-uploads'
 import type { Compute } from './workers/compute'
 
 /** What every use case is given. Made once per process by `startApp`; services never see an HTTP event. */
@@ -10,6 +11,7 @@ export interface App {
   readonly blobs: BlobStore
   readonly compute: Compute
   readonly queue: Queue
+  readonly uploads: KeptUploads
   readonly now: () => Date
   readonly version: string
   readonly demo: boolean

@@ -5,6 +5,7 @@ import { createBlobStore } from './database/repositories/blobs'
 import { startQueue } from './jobs/queue'
 import { startRunner } from './jobs/runner'
 import { sweepDeletions } from './services/deletions'
+import { KeptUploads } from './services/kept-uploads'
 import { createCompute } from './workers/compute'
 import { VERSION } from './version'
 
@@ -32,6 +33,7 @@ const SWEEP_MS = 30_000
 /** Clears away now and then what was never adopted and what was deleted for good. @returns how to end that */
 async function keepSweeping(app: App): Promise<() => void> {
   const sweep = async (): Promise<void> => {
+    app.uploads.sweep()
     await app.blobs.sweep(new Date(app.now().getTime() - UNADOPTED_KEPT_MS))
     await sweepDeletions(app)
   }
@@ -52,7 +54,9 @@ export async function startApp(options: StartOptions): Promise<StartedApp> {
   const blobs = createBlobStore(database, now)
   const compute = createCompute(options.workersFolder, options.threads)
   const queue = await startQueue(database)
-  const app: App = { database, db: database.db, blobs, compute, queue, now, version: VERSION, demo: options.demo }
+  const uploads = new KeptUploads(now)
+  const held = { database, db: database.db, blobs, compute, queue, uploads }
+  const app: App = { ...held, now, version: VERSION, demo: options.demo }
   const stopSweeping = await keepSweeping(app)
   const runner = options.concurrency > 0 ? await startRunner(app, options.concurrency) : undefined
   return {

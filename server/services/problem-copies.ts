@@ -53,7 +53,8 @@ export async function duplicateProblem(
         dataBlobId,
         fingerprint,
         source,
-        reading,
+        // The list of rejected lines goes with the problem that it was made for.
+        reading: { ...reading, rejectedBlobId: undefined },
         structure,
         groups,
         ...stamp,

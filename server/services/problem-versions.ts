@@ -64,6 +64,7 @@ export async function addVersion(
     const isSaved = await app.db.transaction(async (tx) => {
       if (!(await advanceVersion(tx, problemId, row.version, app.now()))) return false
       await app.blobs.adopt(tx, blobId)
+      if (draft.reading.rejectedBlobId) await app.blobs.adopt(tx, draft.reading.rejectedBlobId)
       await insertVersion(tx, problemId, row.version + 1, version)
       return true
     })

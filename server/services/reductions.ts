@@ -74,6 +74,7 @@ function versionOf(row: ProblemRow, { structure }: PresolvedProblem, made: Probl
       firstRows,
       rejected: [],
       rejectedCount: 0,
+      rejectedBlobId: undefined,
     },
     structure: {
       ...structure,

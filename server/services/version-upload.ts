@@ -3,16 +3,24 @@ import type { Actor, App } from '../app'
 import type { ProblemRow } from '../database/repositories/problems'
 import { packProblem } from './problem-data'
 import { differenceBetween } from './problem-difference'
-import type { ReadUpload, UploadedFile } from './problem-upload'
+import type { ReadingWatch, ReadUpload, UploadedFile } from './problem-upload'
 import { readProblemUpload } from './problem-upload'
 import { addVersion } from './problem-versions'
 import { problemData, problemRow } from './problems'
+import { keepRejected } from './rejected-lines'
 
 /** A file that does not say its form is read in the form of the version before. */
-async function readForVersion(app: App, row: ProblemRow, file: UploadedFile, options: UploadVersion) {
-  const upload = await readProblemUpload(app, file, options)
+async function readForVersion(
+  app: App,
+  actor: Actor,
+  row: ProblemRow,
+  file: UploadedFile,
+  options: UploadVersion,
+  watch: ReadingWatch,
+) {
+  const upload = await readProblemUpload(app, actor, file, options, watch)
   if (upload.view.reading.formSource !== 'default' || upload.view.form === row.form) return upload
-  return readProblemUpload(app, file, { ...options, form: row.form })
+  return readProblemUpload(app, actor, file, { ...options, form: row.form }, watch)
 }
 
 const isSame = (row: ProblemRow, { view, data }: ReadUpload): boolean =>
@@ -25,9 +33,10 @@ export async function uploadVersion(
   id: string,
   file: UploadedFile,
   options: UploadVersion,
+  watch: ReadingWatch = {},
 ): Promise<UploadedVersion> {
   const row = await problemRow(app, actor, id)
-  const upload = await readForVersion(app, row, file, options)
+  const upload = await readForVersion(app, actor, row, file, options, watch)
   const { data, source, incomplete } = upload
   const view = { ...upload.view, name: row.name }
   if (options.dryRun) {
@@ -36,8 +45,9 @@ export async function uploadVersion(
     return { ...view, version: null, before: row.version, difference, isSame: isSame(row, upload) }
   }
   if (incomplete && !options.skipRejected) throw incomplete
-  const { form, sense, variables, interactions, reading, structure } = view
+  const { form, sense, variables, interactions, structure } = view
+  const reading = await keepRejected(app, upload)
   const draft = { remark: options.remark, form, sense, variables, interactions, source, reading, structure }
   const { version, difference } = await addVersion(app, actor, id, data, draft)
-  return { ...view, id, number: row.number, version, before: version - 1, difference, isSame: false }
+  return { ...view, kept: null, id, number: row.number, version, before: version - 1, difference, isSame: false }
 }

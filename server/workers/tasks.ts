@@ -8,9 +8,11 @@ import { eliminatePart } from './tasks/eliminate-part'
 import { energies } from './tasks/energies'
 import { enumeratePart } from './tasks/enumerate-part'
 import { planOptimum } from './tasks/plan-optimum'
+import { liftStates } from './tasks/lift-states'
 import { planSearch } from './tasks/plan-search'
+import { presolve } from './tasks/presolve'
 import { proveInfeasible } from './tasks/prove-infeasible'
-import { readProblemFile } from './tasks/read-problem'
+import { listRejectedLines, readProblemFile } from './tasks/read-problem'
 import { readSamplesFile } from './tasks/read-samples'
 import { recogniseGroups } from './tasks/recognise-groups'
 import { rehearse } from './tasks/rehearse'
@@ -32,9 +34,12 @@ export const TASKS = {
   completeCapacity,
   eliminatePart,
   energies,
+  listRejectedLines,
   enumeratePart,
   planOptimum,
+  liftStates,
   planSearch,
+  presolve,
   proveInfeasible,
   readProblemFile,
   readSamplesFile,

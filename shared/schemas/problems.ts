@@ -1,6 +1,7 @@
 import { z } from 'zod'
 import type { ProblemState } from '../library'
 import { PROBLEM_FILE_KEYS } from '../problem-files'
+import { PROBLEM_FORMAT_IDS } from '../problem-formats'
 import type { HistogramBin, Person } from './common'
 import { nameSchema, textSchema, versionNumberSchema } from './common'
 import type { EmbeddingMethod, EmbeddingStats, EmbeddingStatus, MethodUsed, Objective } from './embeddings'
@@ -12,7 +13,7 @@ import type { RunSheetState } from './run-sheets'
 export const formSchema = z.enum(['qubo', 'ising'])
 export const senseSchema = z.enum(['min', 'max'])
 export const conventionSchema = z.enum(['plus', 'minus'])
-export const problemFormatSchema = z.enum(['coefficients', 'dense-csv', 'npy', 'npz', 'json'])
+export const problemFormatSchema = z.enum(PROBLEM_FORMAT_IDS)
 
 const flag = z.preprocess((value) => value === true || value === 'true' || value === '1' || value === 'on', z.boolean())
 
@@ -23,6 +24,8 @@ export const uploadProblemSchema = z.object({
   format: problemFormatSchema.optional(),
   convention: conventionSchema.optional(),
   sense: senseSchema.optional(),
+  /** Names the file of an earlier dry run that is still kept (`kept` of its answer), in place of `file`. */
+  kept: z.uuid().optional(),
   /** Read and report without saving. */
   dryRun: flag.default(false),
   /** Save even though some lines could not be read; they are listed with the problem. */
@@ -70,6 +73,12 @@ export interface RejectedLine {
 export interface ReadingView {
   format: z.infer<typeof problemFormatSchema>
   formatTitle: string
+  /** Left out, as the two after it, in readings of before they were kept. */
+  formatSource?: 'given' | 'detected'
+  /** What the beginning of the file looks like, the likeliest first, 0 … 1. */
+  likenesses?: { format: z.infer<typeof problemFormatSchema>; score: number }[]
+  /** What the file was packed in. */
+  container?: 'gzip' | null
   form: z.infer<typeof formSchema>
   formSource: 'given' | 'file' | 'default'
   convention: z.infer<typeof conventionSchema>
@@ -79,8 +88,11 @@ export interface ReadingView {
   duplicatesSummed: number
   zerosDropped: number
   firstRows: [string, string, number][]
+  /** The first 100 of them. */
   rejected: RejectedLine[]
   rejectedCount: number
+  /** Where all of them are kept, when there are more; see `GET /api/problems/:id/rejected`. */
+  rejectedBlobId?: string
 }
 
 export interface StructureView {
@@ -115,6 +127,8 @@ export interface ConstraintGroup {
 export interface UploadedProblem {
   id: string | null
   number: number | null
+  /** Of a large file that was only looked at: what to send in place of it, for ten minutes. */
+  kept: string | null
   name: string
   form: z.infer<typeof formSchema>
   variables: number

@@ -136,11 +136,14 @@ export async function deleteForGood(
 /** What a problem itself keeps: its versions, the record of its reduction, its reference optima. */
 async function dataOf(tx: Db, problemId: string) {
   const versions = tx
-    .select({ blobId: problemVersions.dataBlobId })
+    .select({ blobId: problemVersions.dataBlobId, reading: problemVersions.reading })
     .from(problemVersions)
     .where(eq(problemVersions.problemId, problemId))
   const reduction = tx.select({ blobId: reductions.blobId }).from(reductions).where(eq(reductions.problemId, problemId))
-  const blobs = [...(await versions), ...(await reduction)]
+  const kept = await versions
+  // Versions that differ in labels alone share the list of rejected lines.
+  const rejected = [...new Set(kept.map(({ reading }) => reading.rejectedBlobId))].map((blobId) => ({ blobId }))
+  const blobs = [...kept, ...rejected, ...(await reduction)]
   const references = await tx
     .select({ id: referenceOptima.id, blobId: referenceOptima.stateBlobId })
     .from(referenceOptima)

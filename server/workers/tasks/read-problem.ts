@@ -22,3 +22,8 @@ export function readProblemFile(
   const reading = readProblem(bytes, { ...options, control })
   return { reading, structure: reading.problem ? structureOf(reading.problem) : null }
 }
+
+/** The rejected lines of an uploaded file alone, as CSV. */
+export function listRejectedLines({ bytes, ...options }: ReadProblemInput, control: Control<ReadingProgress>) {
+  return { list: readProblem(bytes, { ...options, control }).rejectedList }
+}

@@ -59,6 +59,7 @@ export function assembleReading(gathered: Gathered, options: ReadOptions): Probl
     zerosDropped: built?.zerosDropped ?? 0,
     rejected: rejections.lines,
     rejectedCount: rejections.count,
+    rejectedList: rejections.list(),
     firstRows: firstRowsOf(gathered),
     entriesRead: gathered.values.length,
     header: gathered.header,

@@ -1,4 +1,5 @@
 import type { Terms } from '../problem/build'
+import { ReadingFault } from './format'
 
 const DEFAULTS = { capacity: 16_384 }
 
@@ -7,6 +8,9 @@ function grown<T extends Uint32Array | Float64Array>(from: T, to: T): T {
   return to
 }
 
+/** 256 MiB of entries; putting them in order takes as much again, twice. */
+const MOST_ENTRIES = 2 ** 24
+
 /** Entries gathered one by one, in typed arrays that grow fourfold when they are full. */
 export class Entries {
   count = 0
@@ -14,6 +18,7 @@ export class Entries {
   private cols = new Uint32Array(DEFAULTS.capacity)
   private weights = new Float64Array(DEFAULTS.capacity)
 
+  /** @throws ReadingFault when there are too many to be held */
   add(row: number, col: number, value: number): void {
     if (this.count === this.weights.length) this.grow()
     this.rows[this.count] = row
@@ -31,7 +36,9 @@ export class Entries {
   }
 
   private grow(): void {
-    const capacity = 4 * this.count
+    if (this.count >= MOST_ENTRIES)
+      throw new ReadingFault(`the file has more than the ${MOST_ENTRIES} entries that are taken here`)
+    const capacity = Math.min(4 * this.count, MOST_ENTRIES)
     this.rows = grown(this.rows, new Uint32Array(capacity))
     this.cols = grown(this.cols, new Uint32Array(capacity))
     this.weights = grown(this.weights, new Float64Array(capacity))

@@ -76,6 +76,8 @@ export interface ProblemReading {
   /** The first 100 rejected lines. */
   readonly rejected: RejectedLine[]
   readonly rejectedCount: number
+  /** The first 100,000 rejected lines as CSV `line,reason,text`; empty when there are none. */
+  readonly rejectedList: string
   /** The first 8 entries: labels and value as the file states them, in its own convention and sense. */
   readonly firstRows: [string, string, number][]
   /** Entries accepted; of a matrix, its cells that are not zero. */
