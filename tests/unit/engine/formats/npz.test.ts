@@ -115,7 +115,7 @@ describe('a sparse matrix of SciPy', () => {
   })
 
   it('refuses labels that would take too much room', () => {
-    const many = Array.from({ length: 400_000 }, (_, i) => `${'v'.repeat(190)}${i}`)
+    const many = ['v'.repeat(1_000_000), ...Array.from({ length: 99 }, (_, i) => String(i))]
     const problem = { ...plain.problem, n: many.length, linear: new Float64Array(many.length) }
     expect(() => npz.write({ ...plain, labels: many, problem })).toThrow('the labels are too long for a .npz file')
   })
