@@ -1,6 +1,7 @@
 import type { UploadedProblem } from '#shared/schemas/problems'
 import type { ApiFailure, Outcome } from './useApi'
 import type { ProblemUpload } from './useProblems'
+import type { UploadWatch } from './useUploads'
 
 /** Time without typing after which the text is read again. */
 const PAUSE_MILLISECONDS = 400
@@ -14,20 +15,11 @@ async function textOf(file: File | null): Promise<string | null> {
   return /[\0\uFFFD]/.test(text) ? null : text
 }
 
-type Draft = ReturnType<typeof useProblemDraft>
-
 /** What is brought in and where it goes: a new problem, or a new version of one. */
 export interface UploadTarget<T extends UploadedProblem> {
-  draft: Draft
-  preview: (upload: ProblemUpload) => Promise<Outcome<T>>
+  draft: ReturnType<typeof useProblemDraft>
+  preview: (upload: ProblemUpload, watch?: UploadWatch) => Promise<Outcome<T>>
   save: (upload: ProblemUpload) => Promise<Outcome<T>>
-}
-
-/** The file with what was chosen about it; empty fields are left to the file. */
-function uploadOf({ name, options, skipRejected }: Draft, file: File): ProblemUpload {
-  const { format, form, convention, sense } = options
-  const given = { format: format ?? '', form: form ?? '', convention: convention ?? '', sense: sense ?? '' }
-  return { file, name: name.trim(), ...given, skipRejected }
 }
 
 /** A problem that is being brought in. */
@@ -38,64 +30,53 @@ export function useNewProblem() {
 
 /** Reads the draft as soon as it changes, without saving it, and saves it when told to. */
 export function useProblemUpload<T extends UploadedProblem>({ draft, preview, save }: UploadTarget<T>) {
-  const reading = shallowRef<T | null>(null)
-  const failure = shallowRef<ApiFailure | null>(null)
+  const { reading, failure, isReading, progress, upload, readSoon, stop } = useDraftReading(draft, preview)
   const saveFailure = shallowRef<ApiFailure | null>(null)
-  const isReading = ref(false)
   const isSaving = ref(false)
+  const isDownloading = ref(false)
   const fileText = ref<string | null>(null)
 
-  const source = computed(() => {
-    if (draft.file) return draft.file
-    return draft.text.trim() === '' ? null : new File([draft.text], draft.textName, { type: 'text/plain' })
-  })
-  let turn = 0
-  let timer: ReturnType<typeof setTimeout> | undefined
-  async function read(): Promise<void> {
-    const mine = ++turn
-    const file = source.value
-    const outcome = file && (await preview({ ...uploadOf(draft, file), name: '' }))
-    // A newer text may have been sent meanwhile: only the last answer counts.
-    if (mine !== turn) return
-    reading.value = outcome?.ok ? outcome.value : null
-    failure.value = outcome && !outcome.ok ? outcome.failure : null
-    isReading.value = false
-  }
-  function readSoon(delay: number): void {
-    clearTimeout(timer)
-    turn++
-    isReading.value = source.value !== null
+  function changed(delay: number): void {
     saveFailure.value = null
     draft.skipRejected = false
-    timer = setTimeout(read, delay)
+    readSoon(delay)
   }
   async function take(file: File | null): Promise<void> {
-    readSoon(0)
+    changed(0)
     if (file && !draft.name) draft.name = file.name.replace(/\.[^.]*$/, '').slice(0, 120)
     const text = await textOf(file)
     if (draft.file === file) fileText.value = text
   }
   async function commit(): Promise<T | null> {
-    if (!source.value) return null
+    const sent = upload()
+    if (!sent) return null
     isSaving.value = true
-    const outcome = await save(uploadOf(draft, source.value))
+    const outcome = await save(sent)
     isSaving.value = false
     saveFailure.value = outcome.ok ? null : outcome.failure
     return outcome.ok ? outcome.value : null
   }
+  async function download(): Promise<void> {
+    const sent = upload()
+    if (!sent) return
+    isDownloading.value = true
+    failure.value = await downloadRejected(sent)
+    isDownloading.value = false
+  }
 
   watch(
     () => draft.text,
-    () => draft.file ?? readSoon(PAUSE_MILLISECONDS),
+    () => draft.file ?? changed(PAUSE_MILLISECONDS),
   )
   watch(
     () => draft.options,
-    () => readSoon(PAUSE_MILLISECONDS / 2),
+    () => changed(PAUSE_MILLISECONDS / 2),
     { deep: true },
   )
   watch(() => draft.file, take)
   onMounted(() => draft.isEmpty || take(draft.file))
-  onBeforeUnmount(() => clearTimeout(timer))
 
-  return { draft, reading, failure, saveFailure, isReading, isSaving, fileText, commit }
+  const again = (): void => changed(0)
+  const shown = { reading, failure, saveFailure, isReading, isSaving, isDownloading, fileText, progress }
+  return { draft, ...shown, commit, download, stop, again }
 }

@@ -1,4 +1,5 @@
-import type { ApiFailure } from './useApi'
+import type { ApiFailure, Outcome } from './useApi'
+import type { UploadWatch } from './useUploads'
 import type { UploadedVersion } from '#shared/schemas/problem-versions'
 import type { ProblemView, TermsView, UploadedProblem } from '#shared/schemas/problems'
 
@@ -44,6 +45,8 @@ export async function useTerms(id: string, part: TermsView['part'], version: May
 
 export interface ProblemUpload {
   file: File
+  /** What the server called the file when it kept it; sent in its place. */
+  kept: string | null
   name: string
   /** Empty: as the file says, or detected. */
   form: string
@@ -55,21 +58,36 @@ export interface ProblemUpload {
 
 function formOf(upload: ProblemUpload, dryRun: boolean): FormData {
   const body = new FormData()
-  const { file, skipRejected, ...fields } = upload
+  const { file, kept, skipRejected, ...fields } = upload
   for (const [name, value] of Object.entries(fields)) if (value) body.append(name, value)
   if (skipRejected) body.append('skipRejected', 'true')
   if (dryRun) body.append('dryRun', 'true')
-  body.append('file', file, file.name)
+  if (kept) body.append('kept', kept)
+  else body.append('file', file, file.name)
   return body
+}
+
+/** Sends an upload by the name that the server kept the file under, and the file itself where it is gone. */
+async function deliver<T>(
+  url: string,
+  upload: ProblemUpload,
+  dryRun: boolean,
+  watch?: UploadWatch,
+): Promise<Outcome<T>> {
+  const outcome = await sendForm<T>(url, formOf(upload, dryRun), watch)
+  if (outcome.ok || !upload.kept || outcome.failure.code !== 'problem.file-gone') return outcome
+  return sendForm<T>(url, formOf({ ...upload, kept: null }, dryRun), watch)
 }
 
 /** Uploading a new version of a problem, with what it is for. */
 export function useVersionActions(id: string) {
-  const api = useApi()
-  const send = ({ name: _name, ...upload }: ProblemUpload & { remark?: string }, dryRun: boolean) =>
-    api.post<UploadedVersion>(`/api/problems/${id}/versions`, formOf(upload as ProblemUpload, dryRun))
+  const send = (
+    { name: _name, ...upload }: ProblemUpload & { remark?: string },
+    dryRun: boolean,
+    watch?: UploadWatch,
+  ) => deliver<UploadedVersion>(`/api/problems/${id}/versions`, upload as ProblemUpload, dryRun, watch)
   return {
-    preview: (upload: ProblemUpload) => send(upload, true),
+    preview: (upload: ProblemUpload, watch?: UploadWatch) => send(upload, true, watch),
     save: (upload: ProblemUpload, remark: string) => send({ ...upload, remark }, false),
   }
 }
@@ -78,13 +96,27 @@ export function useVersionActions(id: string) {
 export function useProblemActions() {
   const api = useApi()
   return {
-    preview: (upload: ProblemUpload) => api.post<UploadedProblem>('/api/problems', formOf(upload, true)),
-    save: (upload: ProblemUpload) => api.post<UploadedProblem>('/api/problems', formOf(upload, false)),
+    preview: (upload: ProblemUpload, watch?: UploadWatch) =>
+      deliver<UploadedProblem>('/api/problems', upload, true, watch),
+    save: (upload: ProblemUpload) => deliver<UploadedProblem>('/api/problems', upload, false),
     edit: (id: string, change: { name?: string; note?: string }) => api.patch(`/api/problems/${id}`, change),
     tag: (id: string, tags: { add?: string[]; remove?: string[] }) => api.patch(`/api/problems/${id}`, { tags }),
     duplicate: (id: string, version: number) =>
       api.post<{ id: string; number: number }>(`/api/problems/${id}/duplicate`, { version }),
     relabel: (id: string, version: number, renames: { from: string; to: string }[]) =>
       api.post<{ version: number }>(`/api/problems/${id}/labels`, { version, renames }),
+  }
+}
+
+/** Saves all lines of an upload that cannot be read as a file of the person's; answers why it could not. */
+export async function downloadRejected(upload: ProblemUpload): Promise<ApiFailure | null> {
+  const request = (body: FormData) =>
+    $fetch<Blob>('/api/problems/rejected', { method: 'POST', body, responseType: 'blob' })
+  try {
+    const bytes = await request(formOf(upload, true)).catch(() => request(formOf({ ...upload, kept: null }, true)))
+    saveAs(`${upload.file.name.replace(/\.[^.]*$/, '')}-rejected.csv`, bytes)
+    return null
+  } catch (error) {
+    return failureOf(error)
   }
 }

@@ -1,3 +1,4 @@
+import { PROBLEM_FORMATS } from '#shared/problem-formats'
 import type { ProblemView, ReadingView, StructureView, UploadedProblem } from '#shared/schemas/problems'
 import type { Fact } from '../ui/parts'
 import { formatNumber, formatPercent, formatSignificant } from '../format'
@@ -18,13 +19,37 @@ const TRIANGLES: Record<string, string> = {
 }
 const ENERGIES = { plus: 'E = Σ h s + Σ J s s', minus: 'E = −Σ h s − Σ J s s' } as const
 
+/** How sure the detection is, and what else it could be. */
+export function guessWords({ formatSource, likenesses = [] }: ReadingView): string {
+  if (formatSource === 'given') return 'As chosen here.'
+  const [best, ...others] = likenesses.map(
+    ({ format, score }) => `${PROBLEM_FORMATS[format].name}, ${formatPercent(score, { decimals: 0 })} like it`,
+  )
+  if (!best) return 'It looks like no format; taken for a coefficient list.'
+  return others.length > 0 ? `A guess: ${best}. Else ${others[0]}.` : `A guess: ${best}.`
+}
+
+/** How the format was found, in a word. */
+function formatNote({ formatSource, likenesses = [], container }: ReadingView): string | undefined {
+  const packed = container === 'gzip' ? 'in gzip' : ''
+  const found =
+    formatSource === 'given' ? 'as chosen' : formatSource === 'detected' ? sureness(likenesses[0]?.score ?? 0) : ''
+  return [found, packed].filter(Boolean).join(', ') || undefined
+}
+
+const SURE = 0.9
+const LIKELY = 0.6
+
+const sureness = (score: number): string =>
+  score >= SURE ? 'a sure guess' : score >= LIKELY ? 'a likely guess' : 'a guess'
+
 export const senseWord = (sense: 'min' | 'max'): string => (sense === 'min' ? 'minimise' : 'maximise')
 
 /** What the reader took the file for. */
 export function readingFacts({ reading, variables, interactions, offset }: UploadedProblem): Fact[] {
   const energy = reading.form === 'ising' ? ENERGIES[reading.convention] : undefined
   return [
-    { label: 'Format', value: reading.formatTitle, word: true },
+    { label: 'Format', value: reading.formatTitle, word: true, note: formatNote(reading) },
     { label: 'Form', value: FORM_NAMES[reading.form], word: true, note: HOW_KNOWN[reading.formSource] },
     { label: 'Triangle', value: TRIANGLES[reading.triangle] ?? reading.triangle, word: true },
     { label: 'Convention', value: reading.convention, word: true, note: energy },
