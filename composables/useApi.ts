@@ -31,7 +31,7 @@ export function failureOf(error: unknown): ApiFailure {
 }
 
 type Body = Record<string, unknown> | FormData
-type Method = 'POST' | 'PATCH' | 'DELETE'
+type Method = 'POST' | 'PUT' | 'PATCH' | 'DELETE'
 
 /** The outcome of an action: a value or a failure, never an exception. */
 export type Outcome<T> = { ok: true; value: T } | { ok: false; failure: ApiFailure }
@@ -58,6 +58,7 @@ export function useApi() {
   }
   return {
     post: <T>(url: string, body: Body = {}) => send<T>('POST', url, body),
+    put: <T>(url: string, body: Body) => send<T>('PUT', url, body),
     patch: <T>(url: string, body: Body) => send<T>('PATCH', url, body),
     remove: <T = unknown>(url: string) => send<T>('DELETE', url),
   }

@@ -6,6 +6,7 @@ import { optimumHelp } from './optimum'
 import { problemHelp } from './problem'
 import { programmingHelp } from './programming'
 import { samplesHelp } from './samples'
+import { structureHelp } from './structure'
 
 /** Every number that the product computes and shows, and how. */
 const HELP = {
@@ -15,6 +16,7 @@ const HELP = {
   ...embeddingHelp,
   ...programmingHelp,
   ...samplesHelp,
+  ...structureHelp,
 }
 
 export type HelpId = keyof typeof HELP

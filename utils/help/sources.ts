@@ -100,3 +100,15 @@ export const LUCAS: Source = {
   venue: 'Front. Phys. 2:5',
   year: 2014,
 }
+export const GOGATE_DECHTER: Source = {
+  author: 'Gogate & Dechter; Bodlaender, Koster & Wolle',
+  title: 'A complete anytime algorithm for treewidth; Contraction and treewidth lower bounds',
+  venue: 'UAI; ESA',
+  year: 2004,
+}
+export const CUTHILL_MCKEE: Source = {
+  author: 'Cuthill & McKee; George',
+  title: 'Reducing the bandwidth of sparse symmetric matrices; Computer implementation of the finite element method',
+  venue: 'ACM National Conference 1969; thesis, Stanford',
+  year: 1971,
+}

@@ -10,6 +10,7 @@ const degrees = [
 ]
 const size = { variables: 5, interactions: 4 }
 const timing = { programmingMicroseconds: 14_200, readoutMicroseconds: 123, delayMicroseconds: 21 }
+const noise = { name: 'Alder', fieldsUnder: 2, interactionsUnder: 3, sigmaH: 0.01, sigmaJ: 0.02, scale: 0.5 }
 const rate = { count: 3, total: 10, counted: 'reads with a broken chain', of: 'reads', format: { significant: 3 } }
 const show = (value: number) => String(value)
 
@@ -22,6 +23,13 @@ const EXAMPLES: readonly (readonly [HelpRequest, number | string])[] = [
   [{ id: 'components', given: { ...size, components: 2 } }, '2'],
   [{ id: 'isolated', given: { degrees, isolated: 1 } }, '1'],
   [{ id: 'problemTreewidth', given: { ...size, bound: 3 } }, '≤ 3'],
+  [{ id: 'treewidthBelow', given: { ...size, bound: 2 } }, '≥ 2'],
+  [{ id: 'bandwidth', given: { bandwidth: 4, order: 'banded', interactions: 9 } }, '4'],
+  [{ id: 'underNoise', given: { ...noise, coefficients: 12 } }, 5],
+  [{ id: 'underNoise', given: { ...noise, fieldsUnder: 0, interactionsUnder: 0, coefficients: 0 } }, 0],
+  [{ id: 'penaltyWeight', given: { coupling: 20, deviating: 1, pairs: 6, greatest: 3 } }, 10],
+  [{ id: 'penaltyEnough', given: { weight: 10, needed: 4.5, overlaps: 0 } }, '4.5'],
+  [{ id: 'penaltySingle', given: { weight: 10, needed: 18, overlaps: 4 } }, '18'],
   [{ id: 'coupling', given: { form: 'qubo', value: 6 } }, 1.5],
   [{ id: 'coupling', given: { form: 'ising', value: 1.5 } }, 6],
   [{ id: 'bestOfProblem', given: { best: -4, sense: 'max' } }, '−4'],
