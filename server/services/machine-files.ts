@@ -44,10 +44,12 @@ export async function machineGraphFile(
   return { fileName: `${machine.name}.mtx`, text: head + pairs.map(([a, b]) => `${b + 1} ${a + 1}\n`).join('') }
 }
 
-/** What the lattice view draws, as packed arrays: numbers, segments, working qubits, couplers and where they attach. */
+/** What the lattice view draws, as packed arrays: numbers, segments, working qubits, couplers and where they attach, missing couplers between working qubits. */
 export async function latticeOf(app: App, actor: Actor, id: string, calibration?: number): Promise<Uint8Array> {
   const { graph, usable, fabric, sheet, indexOf } = await calibratedMachine(app, actor, id, calibration)
-  const missingCouplers = Uint32Array.from(sheet.defects.couplers.flat(), indexOf)
+  // Couplers of a missing qubit go without saying.
+  const between = sheet.defects.couplers.filter((pair) => pair.every((id) => usable[indexOf(id)]))
+  const missingCouplers = Uint32Array.from(between.flat(), indexOf)
   const places = new Float32Array(4 * sizeOf(graph))
   const drawing = { graph, segments: fabric.segments }
   for (let k = 0; k < sizeOf(graph); k++) couplerPlace(drawing, k, places.subarray(4 * k, 4 * k + 4))

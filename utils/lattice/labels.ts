@@ -44,6 +44,10 @@ export const TAG_DEFAULTS = {
 /** As bad as hiding so many cells of other bands. */
 const HIDDEN_BAND_COST = 12
 
+const ONE_LINE = 1
+/** Half heights of a tag from the middle of a disc at which it is clear of the largest. */
+const CLEAR_OF_DISC = 2.3
+
 /** Spots on and beside a band: its middle first, then quarters, then beyond its ends. */
 export function spotsOf(band: Pick<Band, 'x1' | 'y1' | 'x2' | 'y2'>): TagSpot[] {
   const length = Math.hypot(band.x2 - band.x1, band.y2 - band.y1)
@@ -56,6 +60,8 @@ export function spotsOf(band: Pick<Band, 'x1' | 'y1' | 'x2' | 'y2'>): TagSpot[] 
   })
   const upright = Math.abs(band.x2 - band.x1) < Math.abs(band.y2 - band.y1)
   const ends = upright ? [at(0, 0, -1.2), at(1, 0, 1.2)] : [at(0, -1.1, 0), at(1, 1.1, 0)]
+  // A single disc has room above and below it as well, where its neighbours along the row are not covered.
+  if (length < ONE_LINE) ends.push(at(0.5, 0, -CLEAR_OF_DISC), at(0.5, 0, CLEAR_OF_DISC))
   return [at(0.5), at(0.3), at(0.7), at(0.14), at(0.86), ...ends]
 }
 

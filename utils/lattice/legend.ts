@@ -58,9 +58,10 @@ export function legendEntries({
   if (hasFocus && lens !== null && lens !== 'breaks')
     entries.push({ sign: 'ring', words: 'coupler carrying an interaction', kind: 'couplers' })
   if (lens) entries.push({ sign: 'label', words: 'labels', kind: 'labels' })
-  entries.push({ sign: 'free', words: lens ? 'free' : 'qubit', kind: 'free' })
-  if (missing) entries.push({ sign: 'missing', words: 'missing', kind: 'missing' })
-  if (missingCouplers) entries.push({ sign: 'missing-coupler', words: 'missing coupler', kind: 'missingCouplers' })
+  entries.push({ sign: 'free', words: lens ? 'free qubit' : 'qubit', kind: 'free' })
+  if (missing) entries.push({ sign: 'missing', words: 'missing qubit', kind: 'missing' })
+  if (missingCouplers)
+    entries.push({ sign: 'missing-coupler', words: 'missing coupler between working qubits', kind: 'missingCouplers' })
   if (marks) entries.push({ sign: 'marked', words: marks, kind: 'marks' })
   return entries
 }

@@ -21,7 +21,7 @@ export function legendOf({ data, chains }: StageSource, look: StageLook): Legend
   if (!hidden('free')) items.push({ words: hasChains ? 'free qubit' : 'qubit', paint: paintDot })
   if (data.usable.includes(0) && !hidden('missing')) items.push({ words: 'missing qubit', paint: paintSquare })
   if (data.missingCouplers?.length && !hidden('missingCouplers'))
-    items.push({ words: 'missing coupler', paint: paintDiamond })
+    items.push({ words: 'missing coupler between working qubits', paint: paintDiamond })
   if (look.marks && !hidden('marks')) items.push({ words: look.marks.words, paint: paintMark })
   return items
 }

@@ -7,7 +7,7 @@ describe('legendEntries', () => {
   it('lists what is drawn and no more', () => {
     expect(legendEntries(plain).map(({ words }) => words)).toEqual(['qubit'])
     const words = legendEntries({ ...plain, lens: 'occupancy', hasFocus: true, missing: true }).map((e) => e.words)
-    expect(words).toEqual(['chain', 'coupler carrying an interaction', 'labels', 'free', 'missing'])
+    expect(words).toEqual(['chain', 'coupler carrying an interaction', 'labels', 'free qubit', 'missing qubit'])
   })
 
   it('lets everything be hidden that is a thing and not an explanation', () => {
