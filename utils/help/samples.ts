@@ -57,6 +57,14 @@ export const samplesHelp = {
     sources: () => [WILSON],
     caution: rehearsalCaution,
   }),
+  bestOfDecoding: entry<{ best: number; reads: number; sense: 'min' | 'max'; rehearsal: boolean }>({
+    inputs: ({ reads }) => [{ symbol: 'N', name: 'reads kept', value: reads, unit: 'reads' }],
+    method: ({ sense }) =>
+      `Each read kept is decoded to one value a variable and its energy worked out from the problem, offset included. This is the ${sense === 'min' ? 'lowest' : 'highest'} of them.`,
+    result: ({ best }) => formatNumber(best),
+    sources: () => [DEFINITION],
+    caution: ({ rehearsal }) => (rehearsal ? `${CAUTIONS.samples} ${CAUTIONS.rehearsal}` : CAUTIONS.samples),
+  }),
   bestCount: entry<{ best: number; count: number; reads: number; rehearsal: boolean }>({
     inputs: ({ best, reads }) => [
       { symbol: 'E', name: 'best energy', value: best },

@@ -41,7 +41,7 @@ const byDecoding = (
   })
 
 /** The computed columns of the decodings, explained decoding by decoding. */
-export function decodingColumns({ decodings, breaks, reads, source }: ReturnView) {
+export function decodingColumns({ decodings, breaks, reads, source, problem: { sense } }: ReturnView) {
   const broken = breaks?.readsWithBreak.count ?? 0
   const rehearsal = source === 'rehearsal'
   return [
@@ -49,6 +49,14 @@ export function decodingColumns({ decodings, breaks, reads, source }: ReturnView
       label: 'Reads kept',
       name: 'the number of reads kept',
       cases: () => byDecoding(decodings, ({ decoding }) => ({ id: 'readsKept', given: { reads, broken, decoding } })),
+    },
+    {
+      label: 'Best',
+      name: 'the best energy',
+      cases: () =>
+        byDecoding(decodings, ({ best, readsKept }) =>
+          best === null ? null : { id: 'bestOfDecoding', given: { best, reads: readsKept, sense, rehearsal } },
+        ),
     },
     {
       label: 'Reads at best',

@@ -10,6 +10,8 @@ import type { ChartAxis, ChartInput, ChartLook, ChartPoint, ChartSeries } from '
 const SANS = '"IBM Plex Sans", sans-serif'
 const MONO = '"IBM Plex Mono", monospace'
 /** Bars stand apart by one pixel, as ruled columns do. */
+/** A few bars stand on the axis as bars: as wide as their bins they would be slabs of ink. */
+const WIDEST_BAR = 72
 const BAR_GAP = 1
 /** Width of one digit or letter of a label in a chart of rates. */
 const LABEL_LETTER = 7.6
@@ -41,7 +43,8 @@ function barDataset(input: ChartInput, index: number, palette: Palette): ChartDa
     }) => {
       const scale = context.chart.scales.x
       if (!scale) return 1
-      return Math.max(1, Math.abs(scale.getPixelForValue(width) - scale.getPixelForValue(0)) - BAR_GAP)
+      const room = Math.abs(scale.getPixelForValue(width) - scale.getPixelForValue(0)) - BAR_GAP
+      return Math.min(WIDEST_BAR, Math.max(1, room))
     }) as unknown as number,
     grouped: false,
     order: 2,

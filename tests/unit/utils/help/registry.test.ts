@@ -32,6 +32,8 @@ const EXAMPLES: readonly (readonly [HelpRequest, number | string])[] = [
   [{ id: 'penaltySingle', given: { weight: 10, needed: 18, overlaps: 4 } }, '18'],
   [{ id: 'coupling', given: { form: 'qubo', value: 6 } }, 1.5],
   [{ id: 'coupling', given: { form: 'ising', value: 1.5 } }, 6],
+  [{ id: 'presolveBound', given: { bound: -3.5, rounds: 2, sense: 'min', isSolved: false } }, '−3.5'],
+  [{ id: 'presolveBound', given: { bound: 4, rounds: 1, sense: 'max', isSolved: true } }, '4'],
   [{ id: 'bestOfProblem', given: { best: -4, sense: 'max' } }, '−4'],
   [
     { id: 'referenceValue', given: { energy: -7, proved: true, tolerance: 0, methods: ['enumeration', 'annealing'] } },
@@ -91,6 +93,7 @@ const EXAMPLES: readonly (readonly [HelpRequest, number | string])[] = [
   [{ id: 'machineTime', given: { gauges: 2, reads: 100, anneal: 72, timing, show, unit: 'ms' } }, 28.4 + 21.6],
   [{ id: 'load', given: { what: 'sum', value: -4, limit: -16, show } }, 0.25],
   [{ id: 'rate', given: { ...rate, rehearsal: true } }, 0.3],
+  [{ id: 'bestOfDecoding', given: { best: -4.5, reads: 10, sense: 'min', rehearsal: true } }, '−4.5'],
   [{ id: 'bestCount', given: { best: 0, count: 3, reads: 10, rehearsal: true } }, '3'],
   [{ id: 'readsKept', given: { reads: 10, broken: 4, decoding: 'discard' } }, 6],
   [{ id: 'readsKept', given: { reads: 10, broken: 4, decoding: 'majority' } }, 10],
