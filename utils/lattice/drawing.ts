@@ -1,5 +1,4 @@
 import Sigma from 'sigma'
-import type { MouseCoords } from 'sigma/types'
 import type { SDFShape } from 'sigma/rendering'
 import { pathLine, sdfCircle, sdfSquare } from 'sigma/rendering'
 import { bandLayer, glyphLayer } from './band-layer'
@@ -7,6 +6,18 @@ import type { EdgeVariable } from './band-layer'
 import { bandWidth } from './framing'
 import { sceneGraph } from './to-graph'
 import type { Scene } from './scene-types'
+import {
+  CAMERA_SETTINGS,
+  clickTo,
+  hasRoom,
+  hideIf,
+  MARK_STYLE,
+  MARK_VARIABLES,
+  moveCamera,
+  unitScaleOf,
+  viewOf,
+} from './sigma-camera'
+import type { CameraEvents } from './sigma-camera'
 import type { Box, View } from './types'
 import type { Tokens } from './tokens'
 
@@ -20,13 +31,6 @@ export interface Drawing {
   kill(): void
 }
 
-export interface DrawingEvents {
-  /** After every frame, and whenever the camera moved. */
-  onFrame(view: View): void
-  /** A click or tap that was no drag, in pixels of the viewport. */
-  onClick(x: number, y: number, additive: boolean): void
-}
-
 export const DRAWING_DEFAULTS = {
   /** Largest line spacing in pixels, and how far out one may zoom beyond the whole machine. */
   largestScale: 64,
@@ -37,7 +41,7 @@ export interface DrawingOptions {
   readonly bounds: Box
   readonly tokens: Tokens
   readonly scene: Scene
-  readonly events: DrawingEvents
+  readonly events: CameraEvents
 }
 
 /** @throws Error when the browser offers no WebGL 2 */
@@ -48,7 +52,7 @@ export function createDrawing(container: HTMLElement, { bounds, tokens, scene, e
   )
   const sigma = new Sigma(sceneGraph(scene), container, {
     primitives: {
-      nodes: { shapes: [sdfCircle(), sdfSquare(), UP, DOWN], layers: [glyphLayer(tokens)], variables: NODE_VARIABLES },
+      nodes: { shapes: [sdfCircle(), sdfSquare(), UP, DOWN], layers: [glyphLayer(tokens)], variables: MARK_VARIABLES },
       edges: { paths: [pathLine()], extremities: [], layers: [bandLayer(tokens)], variables: EDGE_VARIABLE_TYPES },
     },
     styles: { nodes: NODE_STYLE, edges: EDGE_STYLE },
@@ -60,87 +64,41 @@ export function createDrawing(container: HTMLElement, { bounds, tokens, scene, e
   sigma.setCustomBBox({ x: [bounds.x1, bounds.x2], y: [-bounds.y2, -bounds.y1] })
   sigma.refresh()
 
-  const view = (): View => {
-    const origin = sigma.graphToViewport({ x: 0, y: 0 })
-    return { scale: sigma.graphToViewport({ x: 1, y: 0 }).x - origin.x, x: origin.x, y: origin.y }
-  }
   const measure = () => {
-    unitScale = view().scale * sigma.getCamera().ratio
+    if (!hasRoom(container)) return
+    unitScale = unitScaleOf(sigma)
     sigma.setSetting('minCameraRatio', Math.min(1, unitScale / DRAWING_DEFAULTS.largestScale))
   }
   measure()
   sigma.on('resize', measure)
-  sigma.on('afterRender', () => events.onFrame(view()))
-  const onClick = ({ event: { x, y, original } }: { event: MouseCoords }) => {
-    const { shiftKey, ctrlKey, metaKey } = original
-    events.onClick(x, y, shiftKey || ctrlKey || metaKey)
-  }
-  sigma.on('clickStage', onClick)
-  sigma.on('clickNode', onClick)
+  sigma.on('afterRender', () => hasRoom(container) && events.onFrame(viewOf(sigma)))
+  sigma.on('clickStage', clickTo(events.onClick))
+  sigma.on('clickNode', clickTo(events.onClick))
 
-  hideIfEmpty(sigma, scene)
+  hideIf(isEmpty(scene), sigma)
 
   return {
     show(next) {
       sigma.setGraph(sceneGraph(next))
-      hideIfEmpty(sigma, next)
+      hideIf(isEmpty(next), sigma)
     },
-    view,
-    moveTo(target, milliseconds = 0) {
-      const { width, height } = sigma.getDimensions()
-      const centre = sigma.graphToFramedGraph({
-        x: (width / 2 - target.x) / target.scale,
-        y: -(height / 2 - target.y) / target.scale,
-      })
-      const state = { ...centre, angle: 0, ratio: unitScale / target.scale }
-      if (milliseconds > 0) void sigma.getCamera().animate(state, { duration: milliseconds })
-      else sigma.getCamera().setState(state)
-    },
+    view: () => viewOf(sigma),
+    moveTo: (target, milliseconds = 0) => moveCamera(sigma, target, milliseconds),
     refresh: () => void sigma.refresh(),
     kill: () => sigma.kill(),
   }
 }
 
-/** An empty layer of the size of the viewport still costs a quarter of every frame where no graphics card blends it. */
-function hideIfEmpty(sigma: { getWebGLContext(): WebGL2RenderingContext }, { edges, nodes }: Scene): void {
-  const { canvas } = sigma.getWebGLContext()
-  if (canvas instanceof HTMLCanvasElement) canvas.style.opacity = edges.length + nodes.length > 0 ? '1' : '0'
-}
+const isEmpty = ({ edges, nodes }: Scene): boolean => edges.length + nodes.length === 0
 
 const SETTINGS = {
-  itemSizesReference: 'screen',
-  stagePadding: 0,
+  ...CAMERA_SETTINGS,
   antialiasEdges: false,
   minEdgeThickness: 2.2,
-  renderLabels: false,
-  renderEdgeLabels: false,
-  // Which band lies under the pointer is read off the geometry: a picking pass would double the work of every frame.
-  enableEdgeEvents: false,
-  pickingDownSizingRatio: 8,
-  enableCameraRotation: false,
   maxCameraRatio: DRAWING_DEFAULTS.furthest,
-  zoomingRatio: 1.35,
-  inertiaDuration: 160,
-  allowInvalidContainer: true,
 } as const
 
-const NODE_VARIABLES = {
-  rim: { type: 'color', default: '#000000' },
-  rimWidth: { type: 'number', default: 0 },
-  halo: { type: 'number', default: 0 },
-} as const
-
-const NODE_STYLE = {
-  x: { attribute: 'x' },
-  y: { attribute: 'y' },
-  size: { attribute: 'size' },
-  color: { attribute: 'color' },
-  shape: { attribute: 'shape' },
-  zIndex: { attribute: 'z' },
-  rim: { attribute: 'rim' },
-  rimWidth: { attribute: 'rimWidth' },
-  halo: { attribute: 'halo' },
-} as const
+const NODE_STYLE = { ...MARK_STYLE, shape: { attribute: 'shape' } } as const
 
 const number = { type: 'number', default: 0 } as const
 const EDGE_VARIABLE_TYPES = {

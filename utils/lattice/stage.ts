@@ -209,6 +209,8 @@ export class LatticeStage {
   /** @returns whether the size has changed */
   private measure(): boolean {
     const { clientWidth: width, clientHeight: height } = this.layers.container
+    // Hidden for a moment: what was in view is kept.
+    if (width === 0 || height === 0) return false
     if (width === this.size.width && height === this.size.height) return false
     this.size = { width, height }
     this.raster.resize(width, height)

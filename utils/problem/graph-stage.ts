@@ -7,7 +7,7 @@ import { paintLabels } from './graph-label-paint'
 import type { GraphLabels } from './graph-label-paint'
 import { lookOfLines, paintLines } from './graph-lines'
 import type { GraphLines } from './graph-lines'
-import { marksOf, shrinkOf } from './graph-marks'
+import { isPaintedWithLines, marksOf, paintMarks, shrinkOf } from './graph-marks'
 import type { MarksInput } from './graph-marks'
 
 /** The layers of the drawing from the ground up: all lines, those of the focus, the marks, the labels. */
@@ -51,6 +51,7 @@ export function createGraphStage(
     if (!picture) return
     const { lines, marks } = picture
     yield* paintLines(ctx, lines, view, lookOfLines(lines.interactions.length, tokens, shrinkOf(marks.steps.length)))
+    if (isPaintedWithLines(marks)) yield* paintMarks(ctx, marks, view, drawing.growth())
   })
   const near = canvasOfViewport(elements.near, size)
   const labels = canvasOfViewport(elements.labels, size)
@@ -60,7 +61,8 @@ export function createGraphStage(
     all.follow(view)
     const { lines, near: interactions } = picture
     const look = { tokens, thickness: 1, dashed: true, opacity: 1 }
-    near((ctx) => Array.from(paintLines(ctx, { ...lines, interactions }, view, look)))
+    elements.near.style.visibility = interactions.length > 0 ? 'visible' : 'hidden'
+    if (interactions.length > 0) near((ctx) => Array.from(paintLines(ctx, { ...lines, interactions }, view, look)))
     labels((ctx) => paintLabels(ctx, picture!.labels, { view, ...size, tokens }))
   }
 
@@ -69,10 +71,10 @@ export function createGraphStage(
 
   return {
     give(next) {
-      const isSame = picture !== null && hasSameLines(picture.lines, next.lines)
+      const isSame = picture !== null && isSamePainting(picture, next)
       picture = next
       elements.lines.style.opacity = next.marks.focused === null ? '1' : DIMMED
-      drawing.show(marksOf(next.marks))
+      drawing.show(marksOf(next.marks, isPaintedWithLines(next.marks) ? 'raised' : 'all'))
       if (!isSame) all.repaint()
       onFrame(drawing.view())
     },
@@ -81,6 +83,7 @@ export function createGraphStage(
     size: () => size,
     resize() {
       const { clientWidth, clientHeight } = elements.marks
+      if (clientWidth === 0 || clientHeight === 0) return
       if (clientWidth === size.width && clientHeight === size.height) return
       size.width = clientWidth
       size.height = clientHeight
@@ -95,8 +98,9 @@ export function createGraphStage(
   }
 }
 
-const hasSameLines = (a: GraphLines, b: GraphLines): boolean =>
-  a.positions === b.positions && a.steps === b.steps && a.interactions === b.interactions
+/** Whether the lines are the same, and with them the marks: what hides or measures one does so with the other. */
+const isSamePainting = ({ lines: a, marks: { steps } }: GraphPicture, { lines: b, marks }: GraphPicture): boolean =>
+  a.positions === b.positions && a.steps === b.steps && a.interactions === b.interactions && steps === marks.steps
 
 /** Paints into a canvas as large as the viewport, cleared and sharp. */
 function canvasOfViewport(canvas: HTMLCanvasElement, size: { readonly width: number; readonly height: number }) {
