@@ -6,11 +6,11 @@ export interface ArchiveLimits {
   readonly maxBytes: number
   /** Bytes out for each byte in, allowed beyond `freeBytes`: what grows faster was made to fill the memory. */
   readonly maxRatio: number
-  /** Bytes that may come out whatever the ratio. */
+  /** Bytes that may come out whatever the ratio: the largest dense matrix, which may be nearly all zeros, has 200 MB. */
   readonly freeBytes: number
 }
 
-export const ARCHIVE_LIMITS: ArchiveLimits = { maxBytes: 512 * 2 ** 20, maxRatio: 200, freeBytes: 64 * 2 ** 20 }
+export const ARCHIVE_LIMITS: ArchiveLimits = { maxBytes: 512 * 2 ** 20, maxRatio: 200, freeBytes: 256 * 2 ** 20 }
 
 const mebibytes = (bytes: number): string => `${Math.floor(bytes / 2 ** 20)} MiB`
 
