@@ -13,7 +13,7 @@ export interface PlannedTry {
 
 export const PLAN = {
   /** Mean number of interactions from which lines are worth a try, and beyond which searching chains is not … */
-  linesFromDegree: 4.5,
+  linesFromDegree: 4,
   searchToDegree: 9,
   /** … unless the problem is so small that it costs next to nothing. */
   alwaysSearched: 30,

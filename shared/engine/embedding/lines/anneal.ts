@@ -28,19 +28,6 @@ export interface Schedule {
 /** Moves between two looks at the watch: a few milliseconds. */
 const MOVES_PER_LOOK = 1024
 
-/** Puts every variable on a random line of either side, and lets a random one of the two serve each interaction. */
-export function scatter(assignment: Assignment, coin: Coin): void {
-  const { problem, crossings } = assignment
-  for (let part = 0; part < 2 * problem.order; part++) {
-    assignment.begin()
-    assignment.move(part, coin.below(crossings.counts[part & 1]!))
-  }
-  for (let k = 0; k < problem.ends.length / 2; k++) {
-    assignment.begin()
-    if (coin.below(2) === 0) assignment.flip(k)
-  }
-}
-
 /**
  * Simulated annealing (Kirkpatrick, Gelatt & Vecchi, Science 220, 1983) of line intervals, for problems that have
  * interactions. Returns false when it was stopped.

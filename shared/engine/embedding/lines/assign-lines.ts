@@ -3,19 +3,22 @@ import { sizeOf } from '../../graph/graph'
 import type { Watch } from '../progress'
 import { shortenEmbedding } from '../rework'
 import type { EmbeddingTask } from '../task'
-import { anneal, scatter } from './anneal'
+import { anneal } from './anneal'
 import type { Schedule } from './anneal'
 import { Assignment } from './assignment'
 import { Coin } from './coin'
 import { crossingsOf } from './crossings'
 import { isWhole, lacks, mendOnce } from './repair'
 import type { Mended } from './repair'
+import { seat } from './seat'
 
 const DEFAULTS = {
   /** Moves for each variable: of a first, quick anneal, of a patient one where that does not do, and of that for quality. */
   quickMoves: 2500,
   patientMoves: 5500,
   qualityMoves: 7000,
+  /** Largest distance of a line from where it was placed, as a share of all lines. */
+  firstReach: 0.25,
   /** Largest share of the working qubits in intervals at which a machine is roomy. */
   roomyShare: 0.65,
   /** Largest overuse that mending is tried at, and how often when one thing is lacking; the less often the more are. */
@@ -23,16 +26,16 @@ const DEFAULTS = {
   mendings: 400,
 }
 
-/** From anywhere to intervals that hardly overlap: length counts little, overuse more and more. */
+/** From the placement to intervals that hardly overlap: length counts little, overuse more and more. */
 const quickSchedule = (moves: number, lines: number): Schedule => ({
   moves,
   ramp: 1,
-  hottest: 0.8,
+  hottest: 0.6,
   coldest: 0.2,
   firstPairWeight: 0.25,
   lastPairWeight: 1.5,
   lengthWeight: 0.1,
-  firstRadius: lines,
+  firstRadius: lines * DEFAULTS.firstReach,
   lastRadius: 3,
   endsWhenValid: true,
 })
@@ -97,7 +100,8 @@ export const assignLines: Runner = (task, attempt) => {
     if (isWhole(mended)) offer(mended.chains.toEmbedding())
     return mended
   }
-  scatter(assignment, coin)
+  watch.phase = 'placing'
+  seat(assignment, random, coin, () => watch.shouldStop(assignment.pairs))
   let valid = annealAndMend(quickSchedule(DEFAULTS.quickMoves * problem.order, lines), 0, 0.2)
   if (!isWhole(valid)) valid = annealAndMend(patientSchedule(DEFAULTS.patientMoves * problem.order, lines), 0.2, 0.5)
   if (!isWhole(valid)) return partialOf(valid)

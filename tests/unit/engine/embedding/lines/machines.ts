@@ -1,3 +1,5 @@
+import type { Assignment } from '../../../../../shared/engine/embedding/lines/assignment'
+import type { Coin } from '../../../../../shared/engine/embedding/lines/coin'
 import type { EmbeddingTask } from '../../../../../shared/engine/embedding/task'
 import type { Graph } from '../../../../../shared/engine/graph/graph'
 import { keepEdges } from '../../../../../shared/engine/graph/subgraph'
@@ -22,4 +24,17 @@ export function taskOn(family: Family, problem: Graph, missing: number, random: 
     return works && random.float() >= missing ? 1 : 0
   })
   return { problem, machine: keepEdges(graph, keep), usable, segments, family, start: null }
+}
+
+/** Puts every variable on a random line of either side, and lets a random one of the two serve each interaction. */
+export function scatter(assignment: Assignment, coin: Coin): void {
+  const { problem, crossings } = assignment
+  for (let part = 0; part < 2 * problem.order; part++) {
+    assignment.begin()
+    assignment.move(part, coin.below(crossings.counts[part & 1]!))
+  }
+  for (let k = 0; k < problem.ends.length / 2; k++) {
+    assignment.begin()
+    if (coin.below(2) === 0) assignment.flip(k)
+  }
 }

@@ -2,12 +2,11 @@ import { describe, expect, it } from 'vitest'
 import { Assignment } from '../../../../../shared/engine/embedding/lines/assignment'
 import { Coin } from '../../../../../shared/engine/embedding/lines/coin'
 import { crossingsOf } from '../../../../../shared/engine/embedding/lines/crossings'
-import { scatter } from '../../../../../shared/engine/embedding/lines/anneal'
 import { isWhole, lacks, mendOnce } from '../../../../../shared/engine/embedding/lines/repair'
 import { verifyEmbedding } from '../../../../../shared/engine/embedding/verify'
 import { createRandom } from '../../../../../shared/engine/random'
 import { randomGraph } from '../../../../fixtures/graphs'
-import { SMALL_FAMILIES, taskOn } from './machines'
+import { scatter, SMALL_FAMILIES, taskOn } from './machines'
 
 describe('mendOnce', () => {
   it('makes disjoint connected chains of any intervals, and lists just what they lack', () => {
