@@ -29,8 +29,10 @@ function newDraft() {
   return { text, textName, file, name, options, skipRejected, isEmpty, clear }
 }
 
+const draftStore = (id: string) => defineStore(id, newDraft)
+
 /** A problem that is being brought in: outlives leaving the page, so that nothing typed or chosen is lost. */
-export const useProblemDraft = defineStore('problem draft', newDraft)
+export const useProblemDraft = draftStore('problem draft')
 
 /** A version of a problem that is being brought in: outlives leaving the page too, for each problem its own. */
-export const useVersionDraft = (problemId: string) => defineStore(`version draft ${problemId}`, newDraft)()
+export const useVersionDraft = (problemId: string) => draftStore(`version draft ${problemId}`)()
