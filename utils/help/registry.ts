@@ -3,6 +3,7 @@ import type { Explanation, HelpEntry } from './entry'
 import { explainWith } from './entry'
 import { machineHelp } from './machine'
 import { optimumHelp } from './optimum'
+import { presolveHelp } from './presolve'
 import { problemHelp } from './problem'
 import { programmingHelp } from './programming'
 import { samplesHelp } from './samples'
@@ -11,12 +12,13 @@ import { structureHelp } from './structure'
 /** Every number that the product computes and shows, and how. */
 const HELP = {
   ...problemHelp,
+  ...presolveHelp,
   ...optimumHelp,
+  ...structureHelp,
   ...machineHelp,
   ...embeddingHelp,
   ...programmingHelp,
   ...samplesHelp,
-  ...structureHelp,
 }
 
 export type HelpId = keyof typeof HELP

@@ -112,3 +112,15 @@ export const CUTHILL_MCKEE: Source = {
   venue: 'ACM National Conference 1969; thesis, Stanford',
   year: 1971,
 }
+export const HAMMER_HANSEN_SIMEONE: Source = {
+  author: 'Hammer, Hansen & Simeone',
+  title: 'Roof duality, complementation and persistency in quadratic 0–1 optimization',
+  venue: 'Math. Programming 28',
+  year: 1984,
+}
+export const BOROS_HAMMER: Source = {
+  author: 'Boros & Hammer',
+  title: 'Pseudo-Boolean optimization',
+  venue: 'Discrete Appl. Math. 123',
+  year: 2002,
+}
