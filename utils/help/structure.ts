@@ -47,8 +47,8 @@ export const structureHelp = {
       { symbol: 'σ_h', name: 'control error of h', value: sigmaH, from: `sheet of ${name}` },
       { symbol: 'σ_J', name: 'control error of J', value: sigmaJ, from: `sheet of ${name}` },
       { symbol: 'α', name: 'scale that fits the largest into its range, at most 1', value: scale },
-      { symbol: 'F', name: 'fields with α |h| below 2 σ_h', value: fieldsUnder },
-      { symbol: 'C', name: 'interactions with α |J| below 2 σ_J', value: interactionsUnder },
+      { symbol: 'F', name: 'fields scaled below twice the σ of h', value: fieldsUnder },
+      { symbol: 'C', name: 'interactions scaled below twice the σ of J', value: interactionsUnder },
       { symbol: 'N', name: 'fields and interactions that are not zero', value: coefficients },
     ],
     steps: ({ coefficients }) => [
