@@ -27,7 +27,7 @@ export interface SolvedPart extends PartOutcome {
   readonly seconds: number
 }
 
-export interface SolvingInput {
+interface SolvingInput {
   readonly plan: OptimumPlan
   readonly seed: number
   readonly limitSeconds: number

@@ -124,7 +124,7 @@ export function treewidthUpperBound(graph: Graph, limits = DEFAULTS): number | n
 }
 
 /** An order in which vertices are eliminated, and the most neighbours that any has when its turn comes. */
-export interface EliminationOrder {
+interface EliminationOrder {
   readonly order: Uint32Array
   readonly width: number
 }

@@ -45,7 +45,7 @@ export interface AnnealedBest {
 }
 
 /** Temperatures of the first and the last sweep. */
-export function temperatureRange({ n, h, offsets, weights }: SamplerModel): { first: number; last: number } {
+function temperatureRange({ n, h, offsets, weights }: SamplerModel): { first: number; last: number } {
   let usual = 0
   const smallest: number[] = []
   for (let i = 0; i < n; i++) {

@@ -4,7 +4,7 @@ import { interactionGraph } from '../interaction-graph'
 import type { Problem } from '../problem'
 
 /** A connected component of a problem as a problem of its own, in the same form, without offset. */
-export interface Component {
+interface Component {
   /** Its variables in the whole problem, ascending. */
   readonly variables: Uint32Array
   readonly problem: Problem

@@ -34,7 +34,7 @@ const DEFAULTS = {
   mostOffers: 2e10,
 }
 
-export interface AnnealPlan {
+interface AnnealPlan {
   readonly restarts: number
   readonly sweeps: number
 }
