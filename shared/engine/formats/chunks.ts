@@ -49,6 +49,9 @@ export function peek(source: Iterable<Uint8Array>, length: number): Peeked {
   const taken: Uint8Array[] = []
   let isWhole = false
   for (let bytes = 0; bytes < length && !isWhole;) {
+    // The source may use its memory again for the next chunk.
+    const last = taken.at(-1)
+    if (last) taken[taken.length - 1] = last.slice()
     const next = iterator.next()
     if (next.done) isWhole = true
     else {

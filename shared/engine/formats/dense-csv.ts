@@ -8,30 +8,27 @@
  */
 import { negateProblem } from '../problem/negate'
 import { assembleReading } from './assemble'
-import { collected } from './chunks'
 import { writeDirectives } from './directives'
 import type { ProblemDocument, ProblemFormat, ProblemReading, ReadingIssue, ReadOptions } from './format'
 import { checkLabels, labelClashes, labelFault, quoteLabel } from './labels'
-import { LABEL_CORNER, type MatrixShape } from './matrix-shape'
-import { cellsOf, gatherRows, shapeOf, type Table, type TableRow } from './matrix-table'
-import { formatNumber, isDecimal, numberFault, parseNumber } from './numbers'
-import { bytesOf, holdsText, textOf } from './text'
+import { MatrixRows, type MatrixRow } from './matrix-rows'
+import { LABEL_CORNER, shapeOf, type MatrixShape } from './matrix-shape'
+import { formatNumber, isDecimal } from './numbers'
+import { bytesOf, holdsText } from './text'
 
 const ID = 'dense-csv'
 const DEFAULTS = { maxVariables: 5000 }
 
+/** Sorts out labels and numbers once the shape is known. */
 class MatrixReader {
-  readonly rows: number[] = []
-  readonly cols: number[] = []
-  readonly values: number[] = []
   readonly issues: ReadingIssue[] = []
   labels: string[]
   header: ProblemReading['header'] = null
-  private readonly body: readonly TableRow[]
+  private readonly body: readonly MatrixRow[]
   private labelLines: number[]
 
   constructor(
-    private readonly table: Table,
+    private readonly table: MatrixRows,
     private readonly shape: MatrixShape,
   ) {
     this.labels = Array.from({ length: shape.n }, (_, i) => String(i))
@@ -40,7 +37,7 @@ class MatrixReader {
   }
 
   read(): void {
-    if (this.shape.hasHeader) this.readHeader(this.table.rows[0]!)
+    if (this.shape.hasHeader) this.readHeader()
     this.body.forEach((row, index) => this.readRow(row, index))
     this.labels.forEach((label, i) => {
       const fault = labelFault(label)
@@ -49,66 +46,75 @@ class MatrixReader {
     this.issues.push(...labelClashes(this.labels, this.labelLines))
   }
 
-  private readHeader(row: TableRow): void {
-    const cells = cellsOf(this.table, row)
+  private readHeader(): void {
+    const { firstRow: cells, rows } = this.table
+    const { line, text } = rows[0]!
     this.labels = cells.length > this.shape.n ? cells.slice(1) : cells
-    this.labelLines = this.labels.map(() => row.line)
-    this.header = { line: row.line, text: this.table.text.slice(row.start, row.end) }
+    this.labelLines = this.labels.map(() => line)
+    this.header = { line, text: text.trim() }
   }
 
-  private readRow(row: TableRow, index: number): void {
+  private readRow(row: MatrixRow, index: number): void {
     const { n, hasLabelColumn } = this.shape
-    const cells = cellsOf(this.table, row)
     const expected = n + (hasLabelColumn ? 1 : 0)
-    if (cells.length !== expected) {
-      const message = `the matrix is not square: line ${row.line} has ${cells.length} cells, expected ${expected}`
+    if (row.width !== expected) {
+      const message = `the matrix is not square: line ${row.line} has ${row.width} cells, expected ${expected}`
       this.issues.push({ line: row.line, message })
       return
     }
-    if (hasLabelColumn) this.readLabel(cells.shift()!, row, index)
-    this.readCells(row, index, cells)
+    if (hasLabelColumn) this.readLabel(row, index)
+    const skipped = hasLabelColumn ? 1 : 0
+    if (!hasLabelColumn && row.firstFault) this.reject(row, `cell 1: ${row.firstFault}`)
+    else if (row.fault) this.reject(row, `cell ${row.fault.cell + 1 - skipped}: ${row.fault.reason}`)
   }
 
-  private readLabel(label: string, row: TableRow, index: number): void {
-    if (!this.shape.hasHeader) this.labels[index] = label
-    else if (this.labels[index] !== label) {
-      const message = `row "${label}" (line ${row.line}) stands where the columns have "${this.labels[index]}"`
-      this.issues.push({ line: row.line, message })
+  private readLabel({ first, line }: MatrixRow, index: number): void {
+    if (!this.shape.hasHeader) this.labels[index] = first
+    else if (this.labels[index] !== first) {
+      const message = `row "${first}" (line ${line}) stands where the columns have "${this.labels[index]}"`
+      this.issues.push({ line, message })
     }
   }
 
-  private readCells(row: TableRow, index: number, cells: readonly string[]): void {
-    for (let col = 0; col < cells.length; col++) {
-      const value = parseNumber(cells[col]!)
-      if (Number.isNaN(value)) return this.reject(row, `cell ${col + 1}: ${numberFault(cells[col]!)}`)
-      if (value === 0) continue
-      this.rows.push(index)
-      this.cols.push(col)
-      this.values.push(value)
-    }
+  private reject({ line, text }: MatrixRow, reason: string): void {
+    const { rejections } = this.table
+    if (rejections.count === 0) this.issues.push({ line, message: `the matrix is incomplete: line ${line}, ${reason}` })
+    const end = text.trimEnd().length
+    rejections.add(text, text.length - text.trimStart().length, end, line, reason)
   }
 
-  private reject(row: TableRow, reason: string): void {
-    const { rejections, text } = this.table
-    if (rejections.count === 0)
-      this.issues.push({ line: row.line, message: `the matrix is incomplete: line ${row.line}, ${reason}` })
-    rejections.add(text, row.start, row.end, row.line, reason)
+  /** The cells by variable: numbers among the labels are none. */
+  terms(): ReturnType<MatrixRows['entries']['terms']> {
+    const { rows, cols, values } = this.table.entries.terms()
+    const top = this.shape.hasHeader ? 1 : 0
+    const left = this.shape.hasLabelColumn ? 1 : 0
+    let count = 0
+    for (let k = 0; k < values.length; k++) {
+      if (rows[k]! < top || cols[k]! < left) continue
+      rows[count] = rows[k]! - top
+      cols[count] = cols[k]! - left
+      values[count++] = values[k]!
+    }
+    return { rows: rows.subarray(0, count), cols: cols.subarray(0, count), values: values.subarray(0, count) }
   }
 }
 
 const NOTHING = { labels: [], rows: [], cols: [], values: [], header: null }
 
 /** Reads a dense matrix; see the head of this file. */
-function readText(text: string, options: ReadOptions): ProblemReading {
-  const table = gatherRows(text)
+function read(chunks: Iterable<Uint8Array>, options: ReadOptions): ProblemReading {
+  const table = new MatrixRows(DEFAULTS.maxVariables)
+  table.read(chunks)
   const { directives, rejections } = table
   const common = { format: ID, isMatrix: true, directives, rejections }
-  const shape = shapeOf(table, DEFAULTS.maxVariables)
+  const shape = table.issue ?? shapeOf(table.rows, table.firstRow)
   if ('message' in shape) return assembleReading({ ...common, ...NOTHING, issues: [shape] }, options)
   const reader = new MatrixReader(table, shape)
   reader.read()
-  const { labels, rows, cols, values, header, issues } = reader
-  return assembleReading({ ...common, labels, rows, cols, values, header, issues }, options)
+  const { labels, header, issues } = reader
+  // Rows of another width would put numbers outside the matrix.
+  const terms = issues.length > 0 ? NOTHING : reader.terms()
+  return assembleReading({ ...common, ...terms, labels, header, issues }, options)
 }
 
 /** Writes the upper triangle with a row and a column of labels. */
@@ -135,18 +141,20 @@ function writeText({ form, labels, problem, sense }: ProblemDocument): string {
 const CONFIDENCE = { corner: 0.9, regular: 0.7, threeColumns: 0.5, oneRow: 0.3 }
 
 /** The share of rows of one width that hold numbers behind their first cell, weighed by what else they could be. */
-function sniffText(head: string): number {
-  const table = gatherRows(head)
+function sniff(head: Uint8Array): number {
+  if (!holdsText(head)) return 0
+  const table = new MatrixRows(Number.POSITIVE_INFINITY)
+  table.read([head])
   const { layout } = table.directives
   if (layout) return layout === 'matrix' ? 1 : 0
-  const [first, second, ...others] = table.rows.map((row) => cellsOf(table, row))
-  if (first === undefined) return 0
+  const { firstRow: first } = table
+  const [, second, ...others] = table.rows
+  if (table.issue || first.length === 0) return 0
   if (second === undefined) return first.every(isDecimal) ? CONFIDENCE.oneRow : 0
-  const width = second.length
   const body = [second, ...others]
-  const regular = body.filter((cells) => cells.length === width && cells.slice(1).every(isDecimal))
-  const hasCorner = first[0] === '' || first[0]?.toLowerCase() === LABEL_CORNER
-  const wide = width === 3 ? CONFIDENCE.threeColumns : CONFIDENCE.regular
+  const regular = body.filter(({ width, fault }) => width === second.width && fault === null)
+  const hasCorner = first[0] === '' || first[0]!.toLowerCase() === LABEL_CORNER
+  const wide = second.width === 3 ? CONFIDENCE.threeColumns : CONFIDENCE.regular
   return (regular.length / body.length) * (hasCorner ? CONFIDENCE.corner : wide)
 }
 
@@ -155,7 +163,7 @@ export const denseCsv: ProblemFormat = {
   title: 'Dense matrix (CSV)',
   extensions: ['csv', 'tsv', 'txt'],
   mediaType: 'text/csv',
-  sniff: (head) => (holdsText(head) ? sniffText(textOf(head)) : 0),
-  read: (chunks, options) => readText(textOf(collected(chunks)), options),
+  sniff,
+  read,
   write: (document) => bytesOf(writeText(document)),
 }

@@ -8,8 +8,8 @@ function grown<T extends Uint32Array | Float64Array>(from: T, to: T): T {
   return to
 }
 
-/** 256 MiB of entries; putting them in order takes as much again, twice. */
-const MOST_ENTRIES = 2 ** 24
+/** 512 MiB of entries, enough for every cell of the largest dense matrix; putting them in order takes as much again, twice. */
+const MOST_ENTRIES = 2 ** 25
 
 /** Entries gathered one by one, in typed arrays that grow fourfold when they are full. */
 export class Entries {

@@ -1,3 +1,5 @@
+import type { ReadingIssue } from './format'
+import type { MatrixRow } from './matrix-rows'
 import { isDecimal } from './numbers'
 
 /** How a table of cells holds a square matrix. */
@@ -46,4 +48,28 @@ export function matrixShape(
   if (width === rows + 1 && holdsWord([first[0]!, ...firstColumn]))
     return { n: rows, hasHeader: false, hasLabelColumn: true }
   return null
+}
+
+/** The number of cells that most rows have; of equally common ones, the one that comes first. */
+function commonWidth(widths: readonly number[]): number {
+  const counts = new Map<number, number>()
+  for (const width of widths) counts.set(width, (counts.get(width) ?? 0) + 1)
+  return [...counts].reduce((best, entry) => (entry[1] > best[1] ? entry : best))[0]
+}
+
+function notSquare(rows: readonly MatrixRow[], widths: readonly number[], width: number): ReadingIssue {
+  const odd = widths.findIndex((count) => count !== width)
+  const { line } = rows[Math.max(0, odd)]!
+  const finding =
+    odd < 0 ? `${rows.length} rows of ${width} cells` : `line ${line} has ${widths[odd]} cells, most have ${width}`
+  return { line, message: `the matrix is not square: ${finding}` }
+}
+
+/** The shape of a table, or what keeps it from being a square matrix. */
+export function shapeOf(rows: readonly MatrixRow[], firstRow: readonly string[]): MatrixShape | ReadingIssue {
+  if (rows.length === 0) return { message: 'there are no coefficients: expected the rows of a square matrix' }
+  const widths = rows.map((row) => row.width)
+  const width = commonWidth(widths)
+  const firstColumn = rows.slice(1).map((row) => row.first)
+  return matrixShape(firstRow, firstColumn, rows.length, width) ?? notSquare(rows, widths, width)
 }
