@@ -57,6 +57,15 @@ describe('placeTags', () => {
     const [placed] = placeTags([request(0, { x1: 20, y1: 20, x2: 22, y2: 20 })], view, viewport, null)
     expect(placed!.box.x2 <= 200 || placed!.box.x1 >= 220).toBe(true)
   })
+
+  it('sets the tag of a disc above or below it where both neighbours in its row are chains', () => {
+    const wide = { scale: 30, x: 0, y: 0 }
+    const discs = [9, 10, 11].map((x, chain) => ({ chain, qubits: [], x1: x - 0.3, y1: 10, x2: x + 0.3, y2: 10 }))
+    const coverage = coverageOf(discs, { x1: 0, y1: 0, x2: 20, y2: 20 })
+    const [placed] = placeTags([request(1, discs[1]!, { width: 15 })], wide, viewport, coverage)
+    expect(Math.abs(placed!.box.y1 + placed!.box.y2 - 600) / 2).toBeGreaterThan(15)
+    expect((placed!.box.x1 + placed!.box.x2) / 2).toBeCloseTo(300)
+  })
 })
 
 describe('coverage', () => {
