@@ -2,13 +2,19 @@ import { afterAll, beforeAll, describe, expect, it } from 'vitest'
 import { findProblem } from '../../server/database/repositories/problems'
 import { deleteForGood, hide } from '../../server/database/repositories/deletions'
 import { insertReduction } from '../../server/database/repositories/reductions'
+import { startEmbedding } from '../../server/services/embeddings'
 import { liftStates } from '../../server/services/lifting'
 import { presolveFile, presolveState, presolveView } from '../../server/services/presolve'
 import { energiesOf, problemData } from '../../server/services/problems'
 import { uploadProblem } from '../../server/services/problem-upload'
 import { coefficientsOf, packRecord } from '../../server/services/reduction-record'
+import { startRehearsal } from '../../server/services/rehearsals'
+import { inOriginal, returnView, solutionsCsv, solutionsOf } from '../../server/services/return-view'
+import { createRunSheet } from '../../server/services/run-sheets'
 import { reductionLinks, saveReduced } from '../../server/services/reductions'
 import { packSteps, TABLES } from '../../shared/engine/problem/presolve/record'
+import { createEmbeddingSchema } from '../../shared/schemas/embeddings'
+import { createRunSheetSchema, rehearseSchema } from '../../shared/schemas/run-sheets'
 import { uploadProblemSchema } from '../../shared/schemas/problems'
 import { createRandom } from '../../shared/engine/random'
 import type { TestApp } from '../support/app'
@@ -192,6 +198,31 @@ describe('pre-solve', () => {
     await app.db.transaction((tx) => hide(tx, 'problem', between, at))
     await app.db.transaction((tx) => deleteForGood(tx, 'problem', between, new Date(at.getTime() + 1)))
     expect(await liftStates(app, actor, last.id, { form: 'ising', states })).toEqual(lifted)
+  })
+
+  it('lifts the answers of returned samples, with energies worked out anew from the original', async () => {
+    const { app, actor } = test
+    const id = await upload(mixedProblem(9), { form: 'ising', sense: 'max' })
+    const saved = await saveReduced(app, actor, id, {})
+    const machineId = await test.machine({ kind: 'zephyr', m: 3, t: 4 })
+    const embedding = await startEmbedding(app, actor, createEmbeddingSchema.parse({ problemId: saved.id, machineId }))
+    await test.finished(embedding.jobId)
+    const sheet = await createRunSheet(app, actor, createRunSheetSchema.parse({ embeddingId: embedding.id, reads: 20 }))
+    const run = await startRehearsal(app, actor, sheet.id, rehearseSchema.parse({ reads: 20, sweeps: 50 }))
+    await test.finished(run.jobId)
+    const view = await returnView(app, actor, run.returnId, 'majority')
+    expect(view.liftedTo).toMatchObject({ id, variables: 39, isThere: true })
+    expect(view.solutions.length).toBeGreaterThan(0)
+    const states = view.solutions.map(({ lifted }) => Object.values(lifted!.assignment))
+    const energies = await energiesOf(app, actor, id, { form: 'ising', states })
+    view.solutions.forEach(({ energy, lifted }, k) => {
+      expect(lifted).toMatchObject({ energy, isEqual: true })
+      expect(energies[k]).toBe(energy)
+    })
+    const rows = await solutionsOf(app, actor, run.returnId, 'majority', 3)
+    const [head, first] = solutionsCsv(inOriginal(rows)).split('\n')
+    expect(head!.split(',')).toEqual(['energy', 'count', 'distance', ...Object.keys(rows[0]!.lifted!.assignment)])
+    expect(first!.split(',').slice(3).map(Number)).toEqual(Object.values(rows[0]!.lifted!.assignment))
   })
 
   it('has no more to give on what it left, and nothing to lift where nothing was reduced', async () => {
