@@ -3,13 +3,17 @@ import { afterAll, beforeAll, describe, expect, it } from 'vitest'
 import { PROBLEM_FILE_KEYS, PROBLEM_FILES, type ProblemFileKey } from '../../shared/problem-files'
 import type { ProblemView, UploadedProblem } from '../../shared/schemas/problems'
 import { Client } from '../support/client'
-import { startServer, temporaryFolder, type RunningServer } from '../support/server'
+import { startServer, temporaryFolder, until, type RunningServer } from '../support/server'
 
 let server: RunningServer
 let developer: Client
 beforeAll(async () => {
-  server = await startServer({ DEMO: 'true', DATA_DIR: temporaryFolder() })
-  developer = await Client.signedIn(server.url, 'developer')
+  const NUXT_SESSION_PASSWORD = 'a-password-of-at-least-thirty-two-characters'
+  server = await startServer({ NUXT_SESSION_PASSWORD, ALLOW_PLAIN_HTTP: 'true', DATA_DIR: temporaryFolder() })
+  const code = await until(() => /one-time code: (\S+)/.exec(server.output())?.[1], 10, 'the code')
+  developer = new Client(server.url)
+  const person = { workspace: 'Brackwater', name: 'Ann', email: 'ann@example.org', password: 'long enough a password' }
+  expect((await developer.post('/api/setup', { ...person, code })).status).toBe(201)
 })
 afterAll(() => server.stop())
 
@@ -24,7 +28,7 @@ const PROBLEMS = {
 type Name = keyof typeof PROBLEMS
 
 /** What not every problem can be written as, and what can be. */
-const ONLY: Partial<Record<ProblemFileKey, Name[]>> = { npy: ['bare'] }
+const ONLY: Partial<Record<ProblemFileKey, Name[]>> = { npy: ['bare'], cut: ['cut'] }
 
 async function uploaded(contents: string | Uint8Array<ArrayBuffer>, fileName: string) {
   const { status, body } = await developer.upload<UploadedProblem>('/api/problems', contents, fileName)
@@ -76,7 +80,7 @@ describe.each(Object.keys(PROBLEMS) as Name[])('the %s problem', (name) => {
 
 it('a format that does not exist is refused', async () => {
   const problem = await uploaded(PROBLEMS.bare, 'bare.txt')
-  expect((await developer.download(`/api/problems/${problem.id}/coefficients?format=tarot`)).status).toBe(400)
+  expect((await developer.download(`/api/problems/${problem.id}/coefficients?format=tarot`)).status).toBe(422)
 })
 
 it('the JSON Schema of problem documents is there for everybody', async () => {

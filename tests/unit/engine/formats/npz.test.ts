@@ -47,12 +47,12 @@ const plain: ProblemDocument = {
   sense: 'min',
 }
 
-/** A compressed matrix of three rows: elements 1, 2, 3 in row 0, row 0 and row 2. */
+/** A matrix compressed by rows: elements 1, 2, 3 at (0, 1), (0, 2) and (1, 2). */
 const csr = {
   format: writeWord('csr'),
   data: writeDoubles(Float64Array.of(1, 2, 3)),
-  indices: writeIntegers([1, 2, 0]),
-  indptr: writeIntegers([0, 2, 2, 3]),
+  indices: writeIntegers([1, 2, 2]),
+  indptr: writeIntegers([0, 2, 3, 3]),
 }
 
 describe('a sparse matrix of SciPy', () => {
@@ -70,11 +70,11 @@ describe('a sparse matrix of SciPy', () => {
 
   it('is read by row and by column', () => {
     const rows = npz.read([changed(csr, plain)], {})
-    expect(rows.problem).toMatchObject({ rows: Uint32Array.of(0, 0), cols: Uint32Array.of(1, 2) })
-    expect(rows.problem!.values).toEqual(Float64Array.of(1, 5))
+    expect(rows.problem).toMatchObject({ rows: Uint32Array.of(0, 0, 1), cols: Uint32Array.of(1, 2, 2) })
+    expect(rows.problem!.values).toEqual(Float64Array.of(1, 2, 3))
     const cols = npz.read([changed({ ...csr, format: writeWord('csc') }, plain)], {})
     expect(cols.problem).toEqual(rows.problem)
-    expect([rows.triangle, cols.triangle]).toEqual(['both', 'both'])
+    expect([rows.triangle, cols.triangle]).toEqual(['upper', 'lower'])
   })
 
   it.each<[string, Record<string, Uint8Array | null>]>([
