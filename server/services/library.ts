@@ -41,9 +41,12 @@ export const tagsInUse = (app: App, actor: Actor): Promise<LibrarySummary['tags'
 /** How many problems have come how far, and the tags in use. */
 export async function librarySummary(app: App, actor: Actor): Promise<LibrarySummary> {
   const states = await countStates(app.db, actor.workspaceId)
+  const first = { sort: 'changedAt', direction: 'descending', limit: 1, offset: 0 } as const
+  const { ids } = await searchLibrary(app.db, actor.workspaceId, { q: '', tag: [] }, first)
   return {
     total: states.reduce((sum, { count }) => sum + count, 0),
     states: Object.fromEntries(states.map(({ state, count }) => [state, count])),
     tags: await tagsInUse(app, actor),
+    newest: ids[0] ?? null,
   }
 }

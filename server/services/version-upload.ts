@@ -20,7 +20,10 @@ async function readForVersion(
 ) {
   const upload = await readProblemUpload(app, actor, file, options, watch)
   if (upload.view.reading.formSource !== 'default' || upload.view.form === row.form) return upload
-  return readProblemUpload(app, actor, file, { ...options, form: row.form }, watch)
+  const again = await readProblemUpload(app, actor, file, { ...options, form: row.form }, watch)
+  // Nobody chose it: it follows from the version before.
+  const reading = { ...again.view.reading, formSource: 'default' as const }
+  return { ...again, view: { ...again.view, reading } }
 }
 
 const isSame = (row: ProblemRow, { view, data }: ReadUpload): boolean =>

@@ -42,4 +42,6 @@ export interface LibrarySummary {
   states: Partial<Record<ProblemState, number>>
   /** Tags in use, in alphabetical order, with how many problems bear them. */
   tags: { tag: string; count: number }[]
+  /** Id of the problem that changed last. */
+  newest: string | null
 }

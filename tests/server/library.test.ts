@@ -135,7 +135,8 @@ describe('the library', () => {
 
   it('sums up states and tags of the workspace alone', async () => {
     const everything = await all({ limit: 200 })
-    const { total, states, tags } = await librarySummary(app, actor)
+    const { total, states, tags, newest } = await librarySummary(app, actor)
+    expect(newest).toBe((await ask({ limit: 1 })).items[0]!.id)
     expect(total).toBe(PROBLEMS)
     for (const state of PROBLEM_STATES)
       expect(states[state] ?? 0, state).toBe(everything.filter((item) => item.state === state).length)

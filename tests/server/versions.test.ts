@@ -117,8 +117,9 @@ describe('a new version', () => {
   it('is read in the form of the one before where the file does not say', async () => {
     const id = await test.problem('# form: ising\na b -1\nb c -2\n')
     expect((await view(id)).form).toBe('ising')
-    const { form, difference } = await upload(id, 'a b -1\nb c -3\n')
+    const { form, reading, difference } = await upload(id, 'a b -1\nb c -3\n')
     expect([form, difference.formChanged, difference.interactionsChanged]).toEqual(['ising', false, 1])
+    expect(reading.formSource).toBe('default')
     expect(await upload(id, 'a b -1\nb c -3\n', { form: 'qubo' })).toMatchObject({ difference: { formChanged: true } })
   })
 

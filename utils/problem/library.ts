@@ -97,13 +97,22 @@ function sheetFact(label: string, sheets: readonly RunSheetItem[]): Fact {
 }
 
 /** The strip above the table, over all problems of the workspace. */
-export function libraryFacts({ total, states }: LibrarySummary, sheets: readonly RunSheetItem[]): Fact[] {
+export function libraryFacts(
+  { total, states }: Pick<LibrarySummary, 'total' | 'states'>,
+  sheets: readonly RunSheetItem[],
+): Fact[] {
   const inState = (state: RunSheetItem['state']) => sheets.filter((sheet) => sheet.state === state)
   const withSheet = RUN_SHEET_STATES.reduce((sum, state) => sum + (states[state] ?? 0), 0)
+  const toCarry = states['to carry over'] ?? 0
   return [
     { label: 'Problems', value: formatNumber(total) },
     { label: 'Not embedded yet', value: formatNumber(states['not embedded'] ?? 0) },
-    { label: 'With a run sheet', value: formatNumber(withSheet) },
+    ...(toCarry > 0 ? [{ label: 'To carry over', value: formatNumber(toCarry), note: 'to the current version' }] : []),
+    {
+      label: 'With a run sheet',
+      value: formatNumber(withSheet),
+      note: toCarry > 0 ? 'for the current version' : undefined,
+    },
     sheetFact('Waiting for a reviewer', inState('in review')),
     sheetFact('Approved, not issued', inState('approved')),
     sheetFact('Returned', inState('returned')),

@@ -95,6 +95,14 @@ describe('words about it', () => {
 })
 
 describe('libraryFacts', () => {
+  it('says how many are to be carried over, where there are any', () => {
+    const facts = libraryFacts({ total: 3, states: { 'to carry over': 2, draft: 1 } }, [])
+    expect(facts.slice(2, 4)).toEqual([
+      { label: 'To carry over', value: '2', note: 'to the current version' },
+      { label: 'With a run sheet', value: '1', note: 'for the current version' },
+    ])
+  })
+
   const sheet = (number: number, state: RunSheetItem['state']) => ({ number, state }) as RunSheetItem
 
   it('counts over the whole library', () => {
