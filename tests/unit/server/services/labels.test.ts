@@ -21,13 +21,19 @@ describe('renaming variables', () => {
   })
 
   it.each([
-    ['an unknown variable', [rename('x', 'y')], 'renames.0.from', /no variable x/],
+    ['an unknown variable', [rename('x', 'y')], 'renames.0.from', /no variable “x”/],
+    ['nothing', [rename('', 'y')], 'renames.0.from', /name the variable/],
     ['an empty label', [rename('a', '  ')], 'renames.0.to', /empty/],
     ['a control character', [rename('a', 'x\u0007')], 'renames.0.to', /control/],
     ['the label it has', [rename('a', 'a')], 'renames.0.to', /already/],
-    ['another’s label', [rename('a', 'B')], 'renames.0.to', /too like b/],
-    ['the same number written otherwise', [rename('a', '7.0')], 'renames.0.to', /too like 7/],
-    ['a label that its bearer gives up', [rename('a', 'b'), rename('b', 'c')], 'renames.0.to', /too like b/],
+    ['another’s label', [rename('a', 'B')], 'renames.0.to', /too like “b”/],
+    ['the same number written otherwise', [rename('a', '7.0')], 'renames.0.to', /too like “7”/],
+    [
+      'a label that its bearer gives up',
+      [rename('a', 'b'), rename('b', 'c')],
+      'renames.0.to',
+      /“b” is the label of another/,
+    ],
     ['one label for two', [rename('a', 'c'), rename('b', 'C')], 'renames.1.to', /cannot both/],
     ['a variable renamed twice', [rename('a', 'c'), rename('a', 'd')], 'renames.1.from', /twice/],
   ])('refuses %s', (_, renames, path, message) => {
