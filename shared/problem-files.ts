@@ -19,7 +19,7 @@ export const PROBLEM_FILES = {
     format: 'npy',
     ending: 'npy',
     title: 'NumPy array (.npy)',
-    holds: 'A bare matrix: only a QUBO to be minimised, with offset 0 and variables 0 … n − 1, at most 5,000.',
+    holds: 'A bare matrix: only a QUBO to be minimised, with offset 0 and variables 0 … n − 1, at most 5,000.',
   },
   cut: {
     format: 'max-cut',
