@@ -42,6 +42,8 @@ export function useProblemUpload<T extends UploadedProblem>({ draft, preview, sa
     readSoon(delay)
   }
   async function take(file: File | null): Promise<void> {
+    // What was understood of another file says nothing about this one.
+    reading.value = null
     changed(0)
     if (file && !draft.name) draft.name = file.name.replace(/\.[^.]*$/, '').slice(0, 120)
     const text = await textOf(file)

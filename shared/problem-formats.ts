@@ -23,7 +23,8 @@ export const PROBLEM_FORMATS = {
     title: 'Dense matrix (CSV)',
     name: 'dense matrix',
     endings: ['csv', 'tsv', 'txt'],
-    about: 'Square, with or without labels. Q_ij + Q_ji belongs to the pair, so every triangle is read by one rule.',
+    about:
+      'Square, with or without labels. The two cells of a pair are added up, so that an upper, a lower and a symmetric matrix are read by one rule.',
     example: '-1.5,2\n0,3',
   },
   'matrix-market': {

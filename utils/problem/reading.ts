@@ -23,10 +23,10 @@ const ENERGIES = { plus: 'E = Σ h s + Σ J s s', minus: 'E = −Σ h s − Σ J
 export function guessWords({ formatSource, likenesses = [] }: ReadingView): string {
   if (formatSource === 'given') return 'As chosen here.'
   const [best, ...others] = likenesses.map(
-    ({ format, score }) => `${PROBLEM_FORMATS[format].name}, ${formatPercent(score, { decimals: 0 })} like it`,
+    ({ format, score }) => `${PROBLEM_FORMATS[format].name} (${formatPercent(score, { decimals: 0 })} alike)`,
   )
   if (!best) return 'It looks like no format; taken for a coefficient list.'
-  return others.length > 0 ? `A guess: ${best}. Else ${others[0]}.` : `A guess: ${best}.`
+  return others.length > 0 ? `A guess: ${best}, else ${others[0]}.` : `A guess: ${best}.`
 }
 
 /** How the format was found, in a word. */
