@@ -2,12 +2,7 @@ import type { z } from 'zod'
 import { convertForm } from '../../shared/engine/problem/convert'
 import { DomainError } from '../../shared/errors'
 import type { DeletionView } from '../../shared/schemas/deletions'
-import type {
-  editProblemSchema,
-  energyRequestSchema,
-  TermsView,
-  termsQuerySchema,
-} from '../../shared/schemas/problems'
+import type { editProblemSchema, energyRequestSchema, TermsView, termsQuerySchema } from '../../shared/schemas/problems'
 import type { Actor, App } from '../app'
 import type { ProblemRow } from '../database/repositories/problems'
 import { findProblem, updateProblem } from '../database/repositories/problems'

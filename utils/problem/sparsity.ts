@@ -29,8 +29,6 @@ export interface CellTable {
   readonly values: Float64Array
 }
 
-export const isSmall = (picture: SparsityPicture): boolean => picture.values !== undefined
-
 export function cellTable({ variables: n, rows, cols, values, linear }: SparsityPicture): CellTable | null {
   if (!values) return null
   const table = new Float64Array(n * n)

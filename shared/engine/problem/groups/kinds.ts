@@ -1,4 +1,4 @@
-import { linearOfPenalty, type VariableGroup } from './group'
+import type { VariableGroup } from './group'
 
 /** Pairs of these members are coupled by 2P. */
 export interface PenaltySet {
@@ -74,6 +74,3 @@ export function kindsOf(linear: Float64Array, sets: readonly PenaltySet[]): Foun
     }
   })
 }
-
-/** What a group of this kind puts on the linear coefficient of each member, in units of P. */
-export const termOf = (kind: Pick<VariableGroup, 'kind' | 'k'>): number => linearOfPenalty(kind) ?? 0

@@ -52,6 +52,8 @@ it('takes the method asked for, and says why it cannot', () => {
   expect(planOptimum(spread(12, 1), 'qubo', 'integer programme').parts[0]!.method).toBe('integer programme')
   expect(planOptimum(spread(12, 1), 'qubo', 'annealing').parts[0]!.anneal).not.toBeNull()
   expect(() => planOptimum(spread(40, 1), 'qubo', 'enumeration')).toThrow(UnsuitableMethod)
-  expect(() => planOptimum(spread(60, 1), 'qubo', 'tree decomposition')).toThrow(/60 variables and \d+ interactions; no tree decomposition/)
+  expect(() => planOptimum(spread(60, 1), 'qubo', 'tree decomposition')).toThrow(
+    /60 variables and \d+ interactions; no tree decomposition/,
+  )
   expect(() => planOptimum(spread(250, 0.8), 'qubo', 'integer programme')).toThrow(/at most 2000/)
 })
