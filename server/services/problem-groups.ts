@@ -68,10 +68,7 @@ export async function groupsOf(app: App, actor: Actor, id: string, version?: num
     ),
     source: 'recognised' as const,
   }))
-  const confirmed = row.groups && {
-    groups: row.groups,
-    ...(await app.compute.run('recogniseGroups', { problem, form, groups: row.groups })),
-  }
+  const confirmed = row.groups && (await app.compute.run('recogniseGroups', { problem, form, groups: row.groups }))
   return {
     problemVersion: row.version,
     variables: row.variables,
