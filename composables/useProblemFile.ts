@@ -19,15 +19,11 @@ export function useProblemFile(id: string) {
   const take = async ({ form, format, gzip }: ProblemFileWish, version?: number): Promise<void> => {
     isBusy.value = true
     failure.value = null
-    const query = { form, format, gzip: gzip ? '1' : undefined, version }
+    const query = new URLSearchParams({ form, format, ...(gzip && { gzip: '1' }) })
+    if (version !== undefined) query.set('version', String(version))
     try {
-      const address = `/api/problems/${id}/coefficients`
-      const response = await $fetch.raw<Blob, 'blob'>(address, {
-        query,
-        responseType: 'blob',
-        ignoreResponseError: true,
-      })
-      const blob = response._data ?? new Blob()
+      const response = await fetch(`/api/problems/${id}/coefficients?${query}`)
+      const blob = await response.blob()
       if (response.ok) saveBlob(blob, NAME.exec(response.headers.get('content-disposition') ?? '')?.[1] ?? format)
       else failure.value = failureOf({ statusCode: response.status, data: await errorOf(blob) })
     } catch (error) {
