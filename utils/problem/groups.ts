@@ -114,10 +114,13 @@ export const labelsOf = (text: string): string[] =>
 export function groupsSentence({ recognised, confirmed, complete }: GroupsView): string {
   const shown = confirmed ?? recognised
   const weak = shown.filter(({ penalty }) => penalty?.verdict === 'may be too weak').length
+  const found =
+    recognised.length > 0
+      ? `${formatCount(recognised.length, 'group')} recognised in the coefficients; nobody has confirmed them yet.`
+      : 'None is recognised in the coefficients.'
+  const kept = confirmed?.length ? `${formatCount(confirmed.length, 'group')} confirmed.` : 'None is confirmed.'
   const parts = [
-    confirmed
-      ? `${formatCount(confirmed.length, 'group')} confirmed.`
-      : `${formatCount(recognised.length, 'group')} recognised in the coefficients; nobody has confirmed them yet.`,
+    confirmed ? kept : found,
     weak > 0 && `${formatNumber(weak)} with a penalty that may be too weak.`,
     !complete && 'Not all couplings were looked at: there are too many.',
   ]
