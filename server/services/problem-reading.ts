@@ -59,14 +59,14 @@ export function rejectedLines(fileName: string, reading: FileReading): DomainErr
   )
 }
 
-/** Why no problem came of a file. */
+/** Why no problem came of a file: it is not what a format makes of bytes at all, or what it says cannot be accepted. */
 export function unreadable(fileName: string, reading: FileReading): DomainError {
   const issues = [
     ...reading.issues,
     ...reading.rejected.slice(0, SHOWN_LINES).map(({ line, reason }) => ({ line, message: reason })),
   ]
   return new DomainError(
-    'not acceptable',
+    reading.isReadToEnd ? 'not acceptable' : 'unreadable',
     'problem.unreadable',
     `${fileName}: ${reading.issues[0]?.message ?? 'nothing could be read'}`,
     issues,

@@ -125,4 +125,6 @@ export interface FileReading extends ProblemReading {
   readonly likenesses: readonly Likeness[]
   /** What the file was packed in; undone before the format saw it. */
   readonly container: 'gzip' | null
+  /** Whether the bytes were read to the end; where they were not, the only issue says why. */
+  readonly isReadToEnd: boolean
 }

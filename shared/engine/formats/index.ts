@@ -80,10 +80,10 @@ export function readProblem(
     const likenesses = likenessesOf(headOf(peeked))
     found = { ...found, likenesses }
     format = formatById(given ?? likenesses[0]?.format ?? coefficients.id)
-    return { ...format.read(peeked.chunks, options), formatSource, ...found }
+    return { ...format.read(peeked.chunks, options), formatSource, ...found, isReadToEnd: true }
   } catch (error) {
     if (!(error instanceof ReadingFault)) throw error
-    return { ...emptyReading(format.id, options, error.message), formatSource, ...found }
+    return { ...emptyReading(format.id, options, error.message), formatSource, ...found, isReadToEnd: false }
   }
 }
 

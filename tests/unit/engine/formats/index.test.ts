@@ -43,6 +43,17 @@ describe('readProblem and writeProblem', () => {
     }
   })
 
+  it.each([
+    [Uint8Array.of(0xff, 0xfe, 0x00, 0xc0), false],
+    [Uint8Array.of(0x1f, 0x8b, 8, 0, 1), false],
+    [bytesOf('a b c d\n'), true],
+  ])('%# tell bytes that are no such file from a file that is wrong', (bytes, isReadToEnd) => {
+    const reading = readProblem(bytes)
+    expect(reading.problem).toBeNull()
+    expect(reading.isReadToEnd).toBe(isReadToEnd)
+    expect(reading.issues.length).toBeGreaterThan(0)
+  })
+
   it('name the formats there are', () => {
     expect(() => readProblem(bytesOf(''), { format: 'tarot' })).toThrow(
       /^unknown format "tarot": expected coefficients, dense-csv, .* or \S+$/,
