@@ -1,3 +1,4 @@
+import { FINDING } from './baseline'
 import type { FileCase } from './files'
 import type { Measured } from './measure'
 
@@ -13,22 +14,36 @@ export interface ReadingRow {
   /** Seconds of processor time: of the first reading, before anything is compiled, and the least. */
   readonly firstSeconds: number
   readonly leastSeconds: number
-  readonly loop: string
-  readonly loopSeconds: number
-  readonly ratio: number
+  /** The fastest loop that finds the ends of lines. */
+  readonly finding: LoopFigures
+  /** The fastest loop that makes each line a string or a view. */
+  readonly making: LoopFigures
   readonly peakMebibytes: number
   readonly startMebibytes: number
   readonly isMet: boolean
   readonly rounds: Measured
 }
 
+export interface LoopFigures {
+  readonly loop: string
+  readonly seconds: number
+  /** Times of this that reading takes. */
+  readonly ratio: number
+}
+
+/** The fastest of some loops. */
+function fastest(measured: Measured, isChosen: (loop: string) => boolean, reading: number): LoopFigures {
+  return Object.entries(measured.loops)
+    .filter(([loop]) => isChosen(loop))
+    .map(([loop, rounds]) => ({ loop, seconds: Math.min(...rounds), ratio: reading / Math.min(...rounds) }))
+    .reduce((best, figures) => (figures.seconds < best.seconds ? figures : best))
+}
+
 export function rowOf({ name, about }: FileCase, measured: Measured): ReadingRow {
   if (measured.rejected > 0) throw new Error(`${name}: ${measured.rejected} lines were rejected`)
   const leastSeconds = Math.min(...measured.reading)
-  const [loop, loopSeconds] = Object.entries(measured.loops)
-    .map(([loopName, rounds]) => [loopName, Math.min(...rounds)] as const)
-    .reduce((best, entry) => (entry[1] < best[1] ? entry : best))
-  const ratio = leastSeconds / loopSeconds
+  const finding = fastest(measured, (loop) => FINDING.includes(loop), leastSeconds)
+  const making = fastest(measured, (loop) => !FINDING.includes(loop), leastSeconds)
   return {
     name,
     about,
@@ -37,12 +52,11 @@ export function rowOf({ name, about }: FileCase, measured: Measured): ReadingRow
     interactions: measured.interactions,
     firstSeconds: measured.reading[0]!,
     leastSeconds,
-    loop,
-    loopSeconds,
-    ratio,
+    finding,
+    making,
     peakMebibytes: measured.peakMebibytes,
     startMebibytes: measured.startMebibytes,
-    isMet: ratio <= BARS.ratio && measured.peakMebibytes <= BARS.mebibytes,
+    isMet: finding.ratio <= BARS.ratio && measured.peakMebibytes <= BARS.mebibytes,
     rounds: measured,
   }
 }
@@ -51,22 +65,19 @@ const ms = (seconds: number): string => (1000 * seconds).toFixed(0)
 
 export function tableOf(rows: readonly ReadingRow[]): string {
   const lines = [
-    ['file', 'MB', 'interactions', 'first ms', 'least ms', 'fastest loop', 'ms', 'ratio', 'peak MiB', ''],
+    ['file', 'MB', 'first ms', 'least ms', 'finds lines', 'ms', 'ratio', 'makes lines', 'ms', 'ratio', 'peak MiB', ''],
     ...rows.map((row) => [
       row.name,
       row.megabytes.toFixed(1),
-      String(row.interactions),
       ms(row.firstSeconds),
       ms(row.leastSeconds),
-      row.loop,
-      ms(row.loopSeconds),
-      row.ratio.toFixed(1),
+      ...[row.finding, row.making].flatMap(({ loop, seconds, ratio }) => [loop, ms(seconds), ratio.toFixed(1)]),
       row.peakMebibytes.toFixed(0),
       row.isMet ? 'met' : 'NOT MET',
     ]),
   ]
   const widths = lines[0]!.map((_, column) => Math.max(...lines.map((line) => line[column]!.length)))
-  const isText = (column: number): boolean => column === 0 || column === 5 || column === 9
+  const isText = (column: number): boolean => [0, 4, 7, 11].includes(column)
   return lines
     .map((line) =>
       line

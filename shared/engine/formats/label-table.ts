@@ -12,16 +12,23 @@ export const MOST_NUMBER = 2 ** 22
 /** Digits of the largest of them. */
 export const NUMBER_DIGITS = 7
 
-const FNV_BASIS = 0x811c9dc5 | 0
-const FNV_PRIME = 0x01000193
+/** Of a hash to which nothing was added yet. */
+export const HASH_BASIS = 0x811c9dc5 | 0
+const HASH_PRIME = 0x01000193
 const CANONICAL = /^(?:0|[1-9]\d{0,6})$/
 const NONE = -1
 
+/** The hash of one byte more. */
+export const addToHash = (hash: number, code: number): number => Math.imul(hash ^ code, HASH_PRIME)
+
 function hashOf(bytes: Uint8Array, start: number, end: number): number {
-  let hash = FNV_BASIS
-  for (let p = start; p < end; p++) hash = Math.imul(hash ^ bytes[p]!, FNV_PRIME)
-  return (hash ^ (hash >>> 15)) >>> 0
+  let hash = HASH_BASIS
+  for (let p = start; p < end; p++) hash = addToHash(hash, bytes[p]!)
+  return hash
 }
+
+/** The bits that choose the place hold something of all bits. */
+const mixed = (hash: number): number => hash ^ (hash >>> 15)
 
 export class LabelTable {
   readonly labels: string[] = []
@@ -59,9 +66,8 @@ export class LabelTable {
     return known > 0 ? known - 1 : this.addNumber(value, line)
   }
 
-  /** The index of the label bytes[start, end), which is no such number; added when it is new. */
-  name(bytes: Uint8Array, start: number, end: number, line: number): number {
-    const hash = hashOf(bytes, start, end)
+  /** The index of the label bytes[start, end), which is no such number and has this hash; added when it is new. */
+  name(bytes: Uint8Array, start: number, end: number, hash: number, line: number): number {
     const known = this.find(bytes, start, end, hash)
     return known === NONE ? this.addName(bytes, start, end, hash, line) : known
   }
@@ -79,7 +85,7 @@ export class LabelTable {
   add(label: string, line: number): number {
     if (CANONICAL.test(label) && Number(label) < MOST_NUMBER) return this.number(Number(label), line)
     const bytes = bytesOf(label)
-    return this.name(bytes, 0, bytes.length, line)
+    return this.name(bytes, 0, bytes.length, hashOf(bytes, 0, bytes.length), line)
   }
 
   private push(label: string, line: number): number {
@@ -100,7 +106,7 @@ export class LabelTable {
 
   private find(bytes: Uint8Array, start: number, end: number, hash: number): number {
     const mask = this.slots.length - 1
-    for (let probe = 0, slot = hash & mask; probe < DEFAULTS.mostProbes; probe++, slot = (slot + 1) & mask) {
+    for (let probe = 0, slot = mixed(hash) & mask; probe < DEFAULTS.mostProbes; probe++, slot = (slot + 1) & mask) {
       const index = this.slots[slot]! - 1
       if (index < 0) break
       if (this.hashes[index] === hash && this.isAt(index, bytes, start, end)) return index
@@ -133,7 +139,7 @@ export class LabelTable {
 
   private freeSlot(hash: number): number {
     const mask = this.slots.length - 1
-    for (let probe = 0, slot = hash & mask; probe < DEFAULTS.mostProbes; probe++, slot = (slot + 1) & mask)
+    for (let probe = 0, slot = mixed(hash) & mask; probe < DEFAULTS.mostProbes; probe++, slot = (slot + 1) & mask)
       if (this.slots[slot] === 0) return slot
     return NONE
   }

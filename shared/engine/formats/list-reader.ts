@@ -10,7 +10,7 @@ import { Entries } from './entries'
 import { splitFields, surveyLine, type LineSurvey } from './fields'
 import type { ProblemReading } from './format'
 import { labelFault } from './labels'
-import { LabelTable, MOST_NUMBER, NUMBER_DIGITS } from './label-table'
+import { addToHash, HASH_BASIS, LabelTable, MOST_NUMBER, NUMBER_DIGITS } from './label-table'
 import { numberFault, parseNumber } from './numbers'
 import { Rejections } from './rejections'
 import { LineDecoder, textOf } from './text'
@@ -103,14 +103,16 @@ export class ListReader {
   /** The same for labels of plain characters. */
   private readNamed(bytes: Uint8Array, from: number): number {
     let p = from
-    while (PLAIN[bytes[p]!] === 1) p++
+    let rowHash = HASH_BASIS
+    for (let code = bytes[p]!; PLAIN[code] === 1; code = bytes[++p]!) rowHash = addToHash(rowHash, code)
     const rowEnd = p
     const separator = bytes[p]!
     if (p === from || bytes[from] === HASH || p - from > DEFAULTS.maxLabelBytes) return NONE
     if (separator !== SPACE && separator !== COMMA && separator !== TAB && separator !== SEMICOLON) return NONE
     const second = afterSeparator(bytes, p)
     p = second
-    while (PLAIN[bytes[p]!] === 1) p++
+    let colHash = HASH_BASIS
+    for (let code = bytes[p]!; PLAIN[code] === 1; code = bytes[++p]!) colHash = addToHash(colHash, code)
     const colEnd = p
     if (p === second || bytes[second] === HASH || p - second > DEFAULTS.maxLabelBytes || bytes[p] !== separator)
       return NONE
@@ -119,14 +121,15 @@ export class ListReader {
     const feed = lineFeedAt(bytes, p)
     if (feed < 0) return NONE
     this.dataLines++
-    const a = this.indexAt(bytes, from, rowEnd)
-    this.entries.add(a, this.indexAt(bytes, second, colEnd), this.number.value)
+    const a = this.indexAt(bytes, from, rowEnd, rowHash)
+    this.entries.add(a, this.indexAt(bytes, second, colEnd, colHash), this.number.value)
     return feed
   }
 
-  private indexAt(bytes: Uint8Array, start: number, end: number): number {
+  private indexAt(bytes: Uint8Array, start: number, end: number, hash: number): number {
     const first = bytes[start]! - ZERO
-    if (first < 0 || first > 9 || end - start > NUMBER_DIGITS) return this.table.name(bytes, start, end, this.line)
+    if (first < 0 || first > 9 || end - start > NUMBER_DIGITS)
+      return this.table.name(bytes, start, end, hash, this.line)
     return this.indexOf(textOf(bytes.subarray(start, end)))
   }
 

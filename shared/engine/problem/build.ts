@@ -69,63 +69,72 @@ function emptyRecords(count: number): Records {
   return { indices: new Uint32Array(buffer), values: new Float64Array(buffer) }
 }
 
-/** Sums of counts: where the terms of each key begin once they are in order. */
-function beginnings(counts: Uint32Array): Uint32Array {
-  for (let v = 1; v < counts.length; v++) counts[v]! += counts[v - 1]!
-  return counts
-}
+/** Buckets of one pass: so few that the places written to stay in the caches. */
+const MOST_DIGIT_BITS = 11
 
-/** The terms with rows ≤ columns, in ascending order of columns by one stable counting pass. */
-function uprightByCols({ rows, cols, values }: TypedTerms, n: number): Records {
-  const count = values.length
-  const counts = new Uint32Array(n + 1)
-  for (let k = 0; k < count; k++) counts[Math.max(rows[k]!, cols[k]!) + 1]!++
-  const next = beginnings(counts)
-  const sorted = emptyRecords(count)
-  for (let k = 0; k < count; k++) {
-    const row = rows[k]!
-    const col = cols[k]!
-    const high = row < col ? col : row
-    const place = next[high]!++
-    sorted.indices[4 * place] = row < col ? row : col
-    sorted.indices[4 * place + 1] = high
-    sorted.values[2 * place + 1] = values[k]!
-  }
-  return sorted
-}
-
-/** The terms in ascending order of rows by one stable counting pass. */
-function byRows({ indices, values }: Records, n: number): Records {
-  const counts = new Uint32Array(n + 1)
-  for (let p = 0; p < indices.length; p += 4) counts[indices[p]! + 1]!++
-  const next = beginnings(counts)
-  const sorted = emptyRecords(indices.length / 4)
+/** One stable counting pass over some bits of the rows (`part` 0) or the columns (1). */
+function scatter(from: Records, to: Records, part: 0 | 1, shift: number, bits: number): void {
+  const { indices, values } = from
+  const mask = 2 ** bits - 1
+  const next = new Uint32Array(mask + 2)
+  for (let p = part; p < indices.length; p += 4) next[((indices[p]! >>> shift) & mask) + 1]!++
+  for (let digit = 1; digit <= mask; digit++) next[digit]! += next[digit - 1]!
   for (let p = 0; p < indices.length; p += 4) {
-    const place = next[indices[p]!]!++
-    sorted.indices[4 * place] = indices[p]!
-    sorted.indices[4 * place + 1] = indices[p + 1]!
-    sorted.values[2 * place + 1] = values[p / 2 + 1]!
+    const place = next[(indices[p + part]! >>> shift) & mask]!++
+    to.indices[4 * place] = indices[p]!
+    to.indices[4 * place + 1] = indices[p + 1]!
+    to.values[2 * place + 1] = values[(p >> 1) + 1]!
   }
-  return sorted
 }
 
-/** Whether no term points backwards and all are in order. */
-function isSorted({ rows, cols }: TypedTerms): boolean {
-  for (let k = 0; k < rows.length; k++) {
-    if (rows[k]! > cols[k]!) return false
-    if (k > 0 && (rows[k]! < rows[k - 1]! || (rows[k] === rows[k - 1] && cols[k]! < cols[k - 1]!))) return false
-  }
+/** The records in ascending order of rows, then columns, stable: radix sort from the last digit, over memory of both. */
+function sorted(records: Records, n: number): Records {
+  const bits = Math.max(1, 32 - Math.clz32(n - 1))
+  const passes = Math.ceil(bits / MOST_DIGIT_BITS)
+  const width = Math.ceil(bits / passes)
+  let from = records
+  let to = emptyRecords(records.indices.length / 4)
+  for (const part of [1, 0] as const)
+    for (let pass = 0; pass < passes; pass++) {
+      scatter(from, to, part, pass * width, width)
+      const filled = to
+      to = from
+      from = filled
+    }
+  return from
+}
+
+/** Whether the records are in order. */
+function isSorted({ indices }: Records): boolean {
+  for (let p = 4; p < indices.length; p += 4)
+    if (indices[p]! < indices[p - 4]! || (indices[p] === indices[p - 4] && indices[p + 1]! < indices[p - 3]!))
+      return false
   return true
 }
 
+/** The terms as records with rows ≤ columns. */
 function recordsOf({ rows, cols, values }: TypedTerms): Records {
   const records = emptyRecords(values.length)
   for (let k = 0; k < values.length; k++) {
-    records.indices[4 * k] = rows[k]!
-    records.indices[4 * k + 1] = cols[k]!
+    const row = rows[k]!
+    const col = cols[k]!
+    records.indices[4 * k] = row < col ? row : col
+    records.indices[4 * k + 1] = row < col ? col : row
     records.values[2 * k + 1] = values[k]!
   }
   return records
+}
+
+/** How many pairs have terms, of records in order. */
+function countPairs({ indices }: Records): number {
+  let count = 0
+  for (let p = 0; p < indices.length; p += 4)
+    if (
+      indices[p] !== indices[p + 1] &&
+      (p === 0 || indices[p] !== indices[p - 4] || indices[p + 1] !== indices[p - 3])
+    )
+      count++
+  return count
 }
 
 /**
@@ -136,17 +145,19 @@ function recordsOf({ rows, cols, values }: TypedTerms): Records {
 export function buildProblem(n: number, terms: Terms, offset: number): BuiltProblem {
   const checked = checkedTerms(n, terms)
   if (!Number.isFinite(offset)) throw new RangeError(`the offset ${offset} is not finite`)
-  const sorted = isSorted(checked) ? recordsOf(checked) : byRows(uprightByCols(checked, n), n)
-  return mergeRuns(n, sorted, offset)
+  const records = recordsOf(checked)
+  return mergeRuns(n, isSorted(records) ? records : sorted(records, n), offset)
 }
 
 /** Sums each run of equal pairs of sorted terms. */
-function mergeRuns(n: number, { indices, values: terms }: Records, offset: number): BuiltProblem {
+function mergeRuns(n: number, records: Records, offset: number): BuiltProblem {
+  const { indices, values: terms } = records
   const count = indices.length / 4
   const linear = new Float64Array(n)
-  const rows = new Uint32Array(count)
-  const cols = new Uint32Array(count)
-  const values = new Float64Array(count)
+  const pairs = countPairs(records)
+  const rows = new Uint32Array(pairs)
+  const cols = new Uint32Array(pairs)
+  const values = new Float64Array(pairs)
   const sum = new ExactSum()
   let kept = 0
   let distinct = 0
@@ -170,9 +181,13 @@ function mergeRuns(n: number, { indices, values: terms }: Records, offset: numbe
       values[kept++] = value
     }
   }
-  const pairs =
-    kept === count
+  const interactions =
+    kept === pairs
       ? { rows, cols, values }
       : { rows: rows.slice(0, kept), cols: cols.slice(0, kept), values: values.slice(0, kept) }
-  return { problem: { n, linear, ...pairs, offset: offset + 0 }, duplicatesSummed: count - distinct, zerosDropped }
+  return {
+    problem: { n, linear, ...interactions, offset: offset + 0 },
+    duplicatesSummed: count - distinct,
+    zerosDropped,
+  }
 }

@@ -1,5 +1,5 @@
 import { expect, it } from 'vitest'
-import { LabelTable, MOST_NUMBER } from '../../../../shared/engine/formats/label-table'
+import { addToHash, HASH_BASIS, LabelTable, MOST_NUMBER } from '../../../../shared/engine/formats/label-table'
 import { createRandom } from '../../../../shared/engine/random'
 
 const encode = (text: string): Uint8Array => new TextEncoder().encode(text)
@@ -8,7 +8,8 @@ const encode = (text: string): Uint8Array => new TextEncoder().encode(text)
 function ask(table: LabelTable, label: string, line: number): number {
   if (/^(?:0|[1-9]\d*)$/.test(label) && Number(label) < MOST_NUMBER) return table.number(Number(label), line)
   const bytes = encode(`,${label},`)
-  return table.name(bytes, 1, bytes.length - 1, line)
+  const hash = bytes.subarray(1, -1).reduce(addToHash, HASH_BASIS)
+  return table.name(bytes, 1, bytes.length - 1, hash, line)
 }
 
 it('gives indices in order of first appearance, as a map of strings does', () => {
