@@ -39,7 +39,7 @@ export function warningsOf(reading: FileReading): string[] {
     warnings.push(
       `${plural(reading.zerosDropped, 'pair')} came to zero and ${reading.zerosDropped === 1 ? 'was' : 'were'} dropped.`,
     )
-  if (reading.triangle === 'both')
+  if (reading.triangle === 'both' && reading.format !== 'max-cut')
     warnings.push('Entries stand in both triangles without mirroring each other; each pair was summed.')
   if (reading.header) warnings.push(`Line ${reading.header.line} was taken for column names.`)
   if (reading.sense === 'max') warnings.push('To be maximised: values are negated inside and shown in their own sense.')
