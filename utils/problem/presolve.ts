@@ -57,7 +57,7 @@ export function reasonWords({ rule, table, partners, quantities }: RemovedVariab
     case 'follow': {
       const [atDown, atUp] = isUp ? (['≤', '≥'] as const) : (['≥', '≤'] as const)
       const word = (sign: '≥' | '≤'): string => (sign === '≥' ? 'at least' : 'at most')
-      return `Going up changes E by ${word(atDown)} ${compare(p, atDown)} while ${partners[0]} = ${down}, by ${word(atUp)} ${compare(q, atUp)} while it is ${up}`
+      return `Going up changes E by ${word(atDown)} ${compare(p, atDown)} while ${partners[0]} is at ${down}, by ${word(atUp)} ${compare(q, atUp)} while it is at ${up}`
     }
     case 'fold':
       return `${up} exactly where a + b y + c z < 0: a = ${formatNumber(p)}, b = ${formatNumber(q)} with ${partners[0]}, c = ${formatNumber(r)} with ${partners[1]}`

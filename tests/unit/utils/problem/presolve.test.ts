@@ -27,11 +27,11 @@ describe('reasons', () => {
     expect(reasonWords(row({ rule: 'isolated', table: [1], quantities: [-4, 0, 0] }), 'qubo')).toBe('a = −4 ≤ 0')
     const same = row({ rule: 'leaf', partners: ['x3'], table: [0, 1], quantities: [1, -2, 0] })
     expect(reasonWords(same, 'qubo')).toBe(
-      'Going up changes E by at least 1 ≥ 0 while x3 = 0, by at most −2 ≤ 0 while it is 1',
+      'Going up changes E by at least 1 ≥ 0 while x3 is at 0, by at most −2 ≤ 0 while it is at 1',
     )
     const opposite = row({ rule: 'follow', partners: ['x3'], table: [1, 0], quantities: [-1, 2, 0] })
     expect(reasonWords(opposite, 'ising')).toBe(
-      'Going up changes E by at most −1 ≤ 0 while x3 = −1, by at least 2 ≥ 0 while it is +1',
+      'Going up changes E by at most −1 ≤ 0 while x3 is at −1, by at least 2 ≥ 0 while it is at +1',
     )
     const fold = row({ rule: 'fold', partners: ['y', 'z'], table: [0, 1, 0, 0], quantities: [1, -2, 3] })
     expect(reasonWords(fold, 'qubo')).toBe('1 exactly where a + b y + c z < 0: a = 1, b = −2 with y, c = 3 with z')
