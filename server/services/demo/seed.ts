@@ -4,7 +4,9 @@ import { createRandom } from '../../../shared/engine/random'
 import type { Family } from '../../../shared/engine/machine/fabric'
 import { createEmbeddingSchema } from '../../../shared/schemas/embeddings'
 import { createMachineSchema } from '../../../shared/schemas/machines'
+import { saveGroupsSchema } from '../../../shared/schemas/groups'
 import { uploadProblemSchema } from '../../../shared/schemas/problems'
+import { startReferenceSchema } from '../../../shared/schemas/reference'
 import { createRunSheetSchema } from '../../../shared/schemas/run-sheets'
 import type { Actor, App } from '../../app'
 import { anyUser, keepFact, readFact, removeWorkspace, setFact, takeFact } from '../../database/repositories/people'
@@ -15,9 +17,11 @@ import { fabricOf } from '../machine-graphs'
 import { calibrateMachine, createMachine } from '../machines'
 import type { Passwords } from '../people'
 import { createAccount, createWorkspace } from '../people'
+import { groupsOf, putGroups } from '../problem-groups'
 import { uploadProblem } from '../problem-upload'
 import { editProblem } from '../problems'
 import { programmeBench, requireProgrammed } from '../programming'
+import { startReference } from '../reference-start'
 import { uploadReturn } from '../returns'
 import { handOver } from '../review'
 import { benchOf, createRunSheet, runSheetRow } from '../run-sheets'
@@ -130,13 +134,27 @@ async function seedEmbedding(
 ): Promise<string> {
   const search = createEmbeddingSchema.parse({ problemId, machineId, seed, tries: 4, timeLimitSeconds: 20 })
   const { id, jobId } = await startEmbedding(app, developer, search)
+  await finished(app, jobId)
+  return id
+}
+
+async function finished(app: App, jobId: string): Promise<void> {
   for (;;) {
     const job = await findJob(app.db, jobId)
-    if (job?.status === 'done') return id
+    if (job?.status === 'done') return
     if (!job || job.status === 'failed' || job.status === 'cancelled')
-      throw new Error(`the demo's embedding ended as ${job?.status}: ${job?.message}`)
+      throw new Error(`work for the demo ended as ${job?.status}: ${job?.message}`)
     await new Promise((resolve) => setTimeout(resolve, 100))
   }
+}
+
+/** Confirms the constraint groups as they are recognised, and looks for the reference optimum. */
+async function seedUnderstanding(app: App, developer: Actor, problemId: string): Promise<void> {
+  const { recognised, problemVersion } = await groupsOf(app, developer, problemId)
+  const groups = recognised.map(({ name, kind, k, members, source }) => ({ name, kind, k, members, source }))
+  await putGroups(app, developer, problemId, saveGroupsSchema.parse({ groups, version: problemVersion }))
+  const { jobId } = await startReference(app, developer, problemId, startReferenceSchema.parse({}))
+  await finished(app, jobId)
 }
 
 /** Samples as a machine with control error would give them, held by chains that are too weak. */
@@ -173,6 +191,7 @@ async function seedWork(app: App, { developer, steward, reviewer }: Cast): Promi
   const berths = await seedProblem(app, developer, DEMO_FILES.berths)
   const channels = await seedProblem(app, developer, DEMO_FILES.channels)
   const crews = await seedProblem(app, developer, DEMO_FILES.crews)
+  await seedUnderstanding(app, developer, channels)
   const onAlder = await seedEmbedding(app, developer, channels, alder, 7)
   await seedEmbedding(app, developer, berths, alder, 3)
   const onJuniper = await seedEmbedding(app, developer, crews, juniper, 5)
