@@ -10,11 +10,15 @@ import { problemsAtCurrentVersion } from './problems'
 
 const ofCurrentVersion = eq(embeddings.problemVersion, problems.currentVersion)
 
-/** Of every problem the embedding that stands for it: of the current version, chosen, found, newest, in this order. */
-const shownEmbeddings = (db: Db, workspaceId: string) =>
+/*
+ * What stands beside a problem is looked up for each by itself, step by step through the indices. Joined freely, it takes
+ * a plan that rests on statistics; the embedded database gathers none by itself, and then needs quadratic time.
+ */
+
+/** The embedding that stands for a problem: of the current version, chosen, found, newest, in this order. */
+const shownEmbedding = (db: Db) =>
   db
-    .selectDistinctOn([embeddings.problemId], {
-      problemId: embeddings.problemId,
+    .select({
       number: embeddings.number,
       status: embeddings.status,
       isCurrent: sql<boolean>`${ofCurrentVersion}`.as('embedding_is_current'),
@@ -22,73 +26,91 @@ const shownEmbeddings = (db: Db, workspaceId: string) =>
       longest: sql<number | null>`(${embeddings.stats}->'chainLength'->>'max')::float8`.as('longest'),
     })
     .from(embeddings)
-    .innerJoin(problems, eq(problems.id, embeddings.problemId))
     .innerJoin(machines, eq(machines.id, embeddings.machineId))
-    .where(and(eq(embeddings.workspaceId, workspaceId), isNull(embeddings.deletedWith)))
+    .where(and(eq(embeddings.problemId, problems.id), isNull(embeddings.deletedWith)))
     .orderBy(
-      embeddings.problemId,
       desc(ofCurrentVersion),
       desc(embeddings.chosen),
       desc(eq(embeddings.status, 'found')),
       desc(embeddings.createdAt),
       desc(embeddings.number),
     )
+    .limit(1)
     .as('shown')
 
-/** Of every problem the run sheet that stands for it: of the current version, then the newest. */
-const shownSheets = (db: Db, workspaceId: string) =>
-  db
-    .selectDistinctOn([embeddings.problemId], {
-      problemId: embeddings.problemId,
-      sheet: sql<number>`${runSheets.number}`.as('sheet'),
-      state: runSheets.state,
+/** The run sheet that stands for a problem: of the current version, then the newest. */
+function shownSheet(db: Db) {
+  const newest = db
+    .select({ number: runSheets.number, state: runSheets.state, createdAt: runSheets.createdAt })
+    .from(runSheets)
+    .where(and(eq(runSheets.embeddingId, embeddings.id), isNull(runSheets.deletedWith)))
+    .orderBy(desc(runSheets.createdAt), desc(runSheets.number))
+    .limit(1)
+    .as('newest')
+  return db
+    .select({
+      sheet: sql<number>`${newest.number}`.as('sheet'),
+      state: newest.state,
       isCurrent: sql<boolean>`${ofCurrentVersion}`.as('sheet_is_current'),
     })
-    .from(runSheets)
-    .innerJoin(embeddings, eq(embeddings.id, runSheets.embeddingId))
-    .innerJoin(problems, eq(problems.id, embeddings.problemId))
-    .where(and(eq(runSheets.workspaceId, workspaceId), isNull(runSheets.deletedWith)))
-    .orderBy(embeddings.problemId, desc(ofCurrentVersion), desc(runSheets.createdAt), desc(runSheets.number))
+    .from(embeddings)
+    .crossJoinLateral(newest)
+    .where(eq(embeddings.problemId, problems.id))
+    .orderBy(desc(ofCurrentVersion), desc(newest.createdAt), desc(newest.number))
+    .limit(1)
     .as('sheets')
+}
 
-/** Least and greatest energy of the samples for every problem's current version. */
-const sampled = (db: Db, workspaceId: string) =>
-  db
-    .select({
-      problemId: embeddings.problemId,
-      least: sql<number | null>`min(${returns.best})`.as('least'),
-      greatest: sql<number | null>`max(${returns.best})`.as('greatest'),
-    })
+/** Least and greatest energy of the samples for a problem's current version. */
+function sampled(db: Db) {
+  const ofSheet = db
+    .select({ low: sql`min(${returns.best})`.as('low'), high: sql`max(${returns.best})`.as('high') })
     .from(returns)
-    .innerJoin(runSheets, eq(runSheets.id, returns.runSheetId))
-    .innerJoin(embeddings, eq(embeddings.id, runSheets.embeddingId))
-    .innerJoin(problems, and(eq(problems.id, embeddings.problemId), ofCurrentVersion))
-    .where(and(eq(returns.workspaceId, workspaceId), isNull(returns.deletedWith)))
-    .groupBy(embeddings.problemId)
+    .where(and(eq(returns.runSheetId, runSheets.id), isNull(returns.deletedWith)))
+    .as('of_sheet')
+  const ofEmbedding = db
+    .select({ low: sql`min(${ofSheet.low})`.as('lowest'), high: sql`max(${ofSheet.high})`.as('highest') })
+    .from(runSheets)
+    .crossJoinLateral(ofSheet)
+    .where(eq(runSheets.embeddingId, embeddings.id))
+    .as('of_embedding')
+  return db
+    .select({
+      least: sql<number | null>`min(${ofEmbedding.low})`.as('least'),
+      greatest: sql<number | null>`max(${ofEmbedding.high})`.as('greatest'),
+    })
+    .from(embeddings)
+    .crossJoinLateral(ofEmbedding)
+    .where(and(eq(embeddings.problemId, problems.id), ofCurrentVersion))
     .as('sampled')
+}
 
-/** What a library is sought and sorted by. Joins that a query does not use are left out by the database. */
-function partsOf(db: Db, workspaceId: string) {
-  const shown = shownEmbeddings(db, workspaceId)
-  const sheets = shownSheets(db, workspaceId)
-  const energies = sampled(db, workspaceId)
+type Beside = 'shown' | 'sheets' | 'energies'
+
+/** What the library is sought and sorted by. */
+function partsOf(db: Db) {
+  const [shown, sheets, energies] = [shownEmbedding(db), shownSheet(db), sampled(db)]
   const state = sql<ProblemState>`case
     when ${sheets.isCurrent} then ${sheets.state}
     when ${shown.status} is null then 'not embedded'
     when ${shown.status} = 'found' then case when ${shown.isCurrent} then 'embedded' else 'to carry over' end
     when ${shown.status} = 'running' then 'searching'
     else 'none found' end`
-  const select = () =>
-    db
-      .select({ id: problems.id, state: state.as('problem_state') })
+  /** Problems at their current versions, with what is needed beside them; their state only where it is asked for. */
+  const select = (needed: readonly Beside[], withState = false) => {
+    const beside = { shown, sheets, energies }
+    const told = withState ? state : sql<ProblemState>`null::text`
+    const query = db
+      .select({ id: problems.id, state: told.as('problem_state') })
       .from(problems)
       .innerJoin(
         problemVersions,
         and(eq(problemVersions.problemId, problems.id), eq(problemVersions.version, problems.currentVersion)),
       )
-      .leftJoin(shown, eq(shown.problemId, problems.id))
-      .leftJoin(sheets, eq(sheets.problemId, problems.id))
-      .leftJoin(energies, eq(energies.problemId, problems.id))
+      .$dynamic()
+    for (const name of new Set(needed)) query.leftJoinLateral(beside[name], sql`true`)
+    return query
+  }
   return { shown, sheets, energies, state, select }
 }
 
@@ -96,6 +118,15 @@ type Parts = ReturnType<typeof partsOf>
 
 /** Texts by code point, whatever the server's language: pages and scripts rely on the order. */
 const byCodePoint = (text: unknown): SQL => sql`lower(${text}) collate "C"`
+
+/** What the order by a field rests on. */
+const NEEDED: Partial<Record<LibraryField, Beside>> = {
+  machine: 'shown',
+  embedding: 'shown',
+  longest: 'shown',
+  runSheet: 'sheets',
+  best: 'energies',
+}
 
 function keyOf({ shown, sheets, energies }: Parts, field: LibraryField): SQL {
   const keys: Record<LibraryField, SQL> = {
@@ -139,6 +170,9 @@ function conditionOf(parts: Parts, workspaceId: string, { q, tag, form, state }:
   )
 }
 
+/** What the conditions rest on. */
+const neededFor = ({ q, state }: Filter): Beside[] => (q !== '' || state ? ['shown', 'sheets'] : [])
+
 interface Place {
   sort: LibraryField
   direction: Direction
@@ -156,16 +190,18 @@ export async function searchLibrary(
   filter: Filter,
   { sort, direction, limit, offset }: Place,
 ): Promise<{ ids: string[]; total: number }> {
-  const parts = partsOf(db, workspaceId)
+  const parts = partsOf(db)
   const condition = conditionOf(parts, workspaceId, filter)
   const key = keyOf(parts, sort)
+  const needed = neededFor(filter)
+  const beside = NEEDED[sort]
   const rows = await parts
-    .select()
+    .select(beside ? [...needed, beside] : needed)
     .where(condition)
     .orderBy(direction === 'ascending' ? sql`${key} asc nulls last` : sql`${key} desc nulls last`, asc(problems.number))
     .limit(limit)
     .offset(offset)
-  const matching = parts.select().where(condition).as('matching')
+  const matching = parts.select(needed).where(condition).as('matching')
   const [counted] = await db.select({ total: count() }).from(matching)
   return { ids: rows.map(({ id }) => id), total: counted!.total }
 }
@@ -180,9 +216,9 @@ export async function problemsInOrder(db: Db, ids: readonly string[]): Promise<P
 
 /** How many problems have come to each state. */
 export async function countStates(db: Db, workspaceId: string): Promise<{ state: ProblemState; count: number }[]> {
-  const parts = partsOf(db, workspaceId)
+  const parts = partsOf(db)
   const all = parts
-    .select()
+    .select(['shown', 'sheets'], true)
     .where(conditionOf(parts, workspaceId, { q: '', tag: [] }))
     .as('all_problems')
   return db.select({ state: all.state, count: count() }).from(all).groupBy(all.state)
