@@ -119,10 +119,11 @@ describe('Compare', async () => {
 describe('Improve', async () => {
   const { default: Improve } = await import('../../../components/embedding/Improve.vue')
   const labels = ['a', 'b', 'c']
-  const panel = (holds: boolean) =>
+  const CURRENT: EmbeddingView['ofVersion'] = { version: 2, current: 2, graph: null }
+  const panel = (holds: boolean, ofVersion = CURRENT) =>
     mount(Improve, {
       props: {
-        embedding: { problem: { id: 'p1' }, holdsAtCurrentCalibration: holds } as EmbeddingView,
+        embedding: { problem: { id: 'p1' }, holdsAtCurrentCalibration: holds, ofVersion } as EmbeddingView,
         labels,
         problems: [],
         failure: null,
@@ -154,6 +155,13 @@ describe('Improve', async () => {
     expect(wrapper.emitted('start')?.[0]).toEqual([
       { problemId: 'p1', work: 'repair', frozen: [], timeLimitSeconds: 30 },
     ])
+  })
+
+  it('carries an embedding of an earlier version over, and shortens none whose interactions changed', async () => {
+    const wrapper = panel(true, { version: 1, current: 2, graph: 'changed' })
+    expect(button(wrapper, 'Shorten')).toBeUndefined()
+    await button(wrapper, 'Carry over to version 2')!.trigger('click')
+    expect(wrapper.emitted('start')?.[0]).toMatchObject([{ problemId: 'p1', work: 'repair' }])
   })
 })
 
