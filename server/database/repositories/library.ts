@@ -96,12 +96,15 @@ function partsOf(db: Db) {
     when ${shown.status} = 'found' then case when ${shown.isCurrent} then 'embedded' else 'to carry over' end
     when ${shown.status} = 'running' then 'searching'
     else 'none found' end`
-  /** Problems at their current versions, with what is needed beside them; their state only where it is asked for. */
-  const select = (needed: readonly Beside[], withState = false) => {
+  /** Problems at their current versions, with what is needed beside them: how many there are, or the state of each. */
+  const select = (needed: readonly Beside[], told: 'total' | 'state') => {
     const beside = { shown, sheets, energies }
-    const told = withState ? state : sql<ProblemState>`null::text`
     const query = db
-      .select({ id: problems.id, state: told.as('problem_state') })
+      .select({
+        id: problems.id,
+        state: (told === 'state' ? state : sql<ProblemState>`null::text`).as('problem_state'),
+        total: (told === 'total' ? sql<number>`count(*) over ()` : sql<number>`0`).mapWith(Number).as('total'),
+      })
       .from(problems)
       .innerJoin(
         problemVersions,
@@ -196,14 +199,21 @@ export async function searchLibrary(
   const needed = neededFor(filter)
   const beside = NEEDED[sort]
   const rows = await parts
-    .select(beside ? [...needed, beside] : needed)
+    .select(beside ? [...needed, beside] : needed, 'total')
     .where(condition)
     .orderBy(direction === 'ascending' ? sql`${key} asc nulls last` : sql`${key} desc nulls last`, asc(problems.number))
     .limit(limit)
     .offset(offset)
-  const matching = parts.select(needed).where(condition).as('matching')
-  const [counted] = await db.select({ total: count() }).from(matching)
-  return { ids: rows.map(({ id }) => id), total: counted!.total }
+  return {
+    ids: rows.map(({ id }) => id),
+    total: rows[0]?.total ?? (await countBefore(parts, needed, condition, offset)),
+  }
+}
+
+/** How many match, where the page asked for lies behind all of them. */
+async function countBefore(parts: Parts, needed: readonly Beside[], condition: SQL | undefined, offset: number) {
+  if (offset === 0) return 0
+  return (await parts.select(needed, 'total').where(condition).limit(1))[0]?.total ?? 0
 }
 
 /** Problems at their current versions, in the order of the ids given. */
@@ -218,7 +228,7 @@ export async function problemsInOrder(db: Db, ids: readonly string[]): Promise<P
 export async function countStates(db: Db, workspaceId: string): Promise<{ state: ProblemState; count: number }[]> {
   const parts = partsOf(db)
   const all = parts
-    .select(['shown', 'sheets'], true)
+    .select(['shown', 'sheets'], 'state')
     .where(conditionOf(parts, workspaceId, { q: '', tag: [] }))
     .as('all_problems')
   return db.select({ state: all.state, count: count() }).from(all).groupBy(all.state)
