@@ -160,6 +160,12 @@ export function readingSentence(reading: ReadingView): string {
     .join(' ')
 }
 
+/** The first line of the note, then form and sense. */
+export function problemSubtitle({ note, form, sense }: Pick<ProblemView, 'note' | 'form' | 'sense'>): string {
+  const how = `${FORM_NAMES[form]}, ${senseWord(sense)}.`
+  return [note.split('\n')[0]?.trim(), how].filter(Boolean).join(' ')
+}
+
 /** The strip of a saved problem. */
 export function problemFacts({ structure, best, sense }: ProblemView): Fact[] {
   return [
