@@ -47,20 +47,20 @@ export interface StandingWords {
   /** `Made for version 1; version 3 is current.` */
   what: string
   /** What it means and what to do. */
-  todo: string
+  next: string
 }
 
 /** What is said of something that was made for an earlier version; null where it is of the current one. */
 export function standingWords({ version, current, graph }: VersionStanding): StandingWords | null {
   if (graph === null) return null
-  const TODO = {
+  const next = {
     same: 'The same variables interact, so the embedding still holds: carried over, it keeps every chain.',
     fewer: 'The current version has fewer interactions, so the embedding still holds: carry it over to use it there.',
     changed: 'Other variables interact now: carry the embedding over by repair, which keeps what can stay.',
   } as const
   return {
     what: `Made for version ${version}; version ${current} is current.`,
-    todo: TODO[graph],
+    next: next[graph],
   }
 }
 

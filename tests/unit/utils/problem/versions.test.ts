@@ -39,9 +39,9 @@ describe('what was made for an earlier version', () => {
     expect(standingWords({ version: 3, current: 3, graph: null })).toBeNull()
     expect(standingWords({ version: 1, current: 3, graph: 'same' })).toEqual({
       what: 'Made for version 1; version 3 is current.',
-      todo: expect.stringMatching(/still holds/),
+      next: expect.stringMatching(/still holds/),
     })
-    expect(standingWords({ version: 1, current: 3, graph: 'changed' })!.todo).toMatch(/by repair/)
+    expect(standingWords({ version: 1, current: 3, graph: 'changed' })!.next).toMatch(/by repair/)
   })
 
   it('is noted in a table', () => {
