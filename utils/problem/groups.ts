@@ -65,7 +65,7 @@ export function groupColumns(groups: Penalised) {
     },
     {
       label: 'Single change',
-      name: 'the weight that outweighs single changes',
+      name: 'the weight that outweighs a single change',
       cases: () =>
         casesOf(groups, ({ weight, single, overlaps }) => ({
           id: 'penaltySingle',

@@ -31,6 +31,7 @@ describe('UiComputed', () => {
     [{ label: 'J under 2σ' }, 'How J under 2σ is computed'],
     [{ label: 'Qubits used', name: 'the number of qubits used' }, 'How the number of qubits used is computed'],
     [{ label: '14.16', name: 'k by Cut bound' }, 'How k by Cut bound is computed: 14.16'],
+    [{ label: 'Read', name: 'the number of reads' }, 'How the number of reads is computed: Read'],
   ])('is named by what it explains, what is seen included: %o', (props, name) => {
     const button = mount(UiComputed, { props: { ...props, help: density } }).get('button')
     expect(button.attributes('aria-label')).toBe(name)
