@@ -10,7 +10,7 @@ import { SERVER_ENTRY, WORKER_ENTRY } from '../../scripts/build.mjs'
 
 export const temporaryFolder = (): string => mkdtempSync(join(tmpdir(), 'espalier-test-'))
 
-async function freePort(): Promise<number> {
+export async function freePort(): Promise<number> {
   const probe = createServer().listen(0, '127.0.0.1')
   await once(probe, 'listening')
   const { port } = probe.address() as AddressInfo
