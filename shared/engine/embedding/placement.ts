@@ -3,6 +3,9 @@ import { annealPlacement } from '../graph/layout/anneal'
 import { packParts } from '../graph/layout/pack'
 import type { Random } from '../random'
 
+/** Estimated qubits that a variable with so many interactions takes, itself included. */
+export const estimatedQubits = (degree: number): number => 0.6 * degree + 1
+
 /** How many sites there are, and how long to work on it. */
 export interface PlacementOptions {
   readonly columns: number

@@ -2,7 +2,7 @@ import type { Graph } from '../../graph/graph'
 import { degreeOf } from '../../graph/graph'
 import type { Random } from '../../random'
 import { connectedParts } from '../parts'
-import { placeProblem } from '../placement'
+import { estimatedQubits, placeProblem } from '../placement'
 import { Ground } from './ground'
 import type { ChainState } from './state'
 
@@ -14,9 +14,6 @@ const STRETCH = 0.3
 
 /** A coordinate in (0, 1), moved away from the middle; rises from 0 to 1. */
 const stretched = (x: number): number => x - (STRETCH * Math.sin(2 * Math.PI * x)) / (2 * Math.PI)
-
-/** Estimated qubits that a variable with so many interactions takes, itself included. */
-const estimatedQubits = (degree: number): number => 0.6 * degree + 1
 
 /**
  * Chooses for each connected part of the problem one of the machine's, largest first and at random in proportion to

@@ -1,25 +1,22 @@
 import { degreeOf } from '../../graph/graph'
 import type { Random } from '../../random'
-import { placeProblem } from '../placement'
+import { estimatedQubits, placeProblem } from '../placement'
 import type { Assignment } from './assignment'
 import type { Coin } from './coin'
 
 const DEFAULTS = {
   /** Factor on the work of placing. */
   effort: 1,
-  /** Estimated qubits of a variable, by interaction and in any case. */
-  qubitsByInteraction: 0.6,
-  qubitsOfVariable: 1,
-  /** Factor on the estimate that decides how much of the machine is taken at first. */
+  /** Factor on the estimated need that decides how much of the machine is taken at first. */
   slack: 1.5,
 }
 
 /** Share of the machine's width and height that the problem is spread over. */
 function spreadOf({ problem, crossings }: Assignment): number {
-  const { qubitsByInteraction, qubitsOfVariable, slack } = DEFAULTS
   const working = crossings.broken.reduce((sum, broken) => sum + 1 - broken, 0)
-  const need = qubitsByInteraction * problem.ends.length + qubitsOfVariable * problem.order
-  return Math.sqrt(Math.min(1, (slack * need) / working))
+  let need = 0
+  for (let v = 0; v < problem.order; v++) need += estimatedQubits(degreeOf(problem, v))
+  return Math.sqrt(Math.min(1, (DEFAULTS.slack * need) / working))
 }
 
 /**
