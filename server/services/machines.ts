@@ -11,6 +11,7 @@ import type {
   Calibrate,
   CalibrationItem,
   CalibrationSaved,
+  EmbeddingDamage,
   CreateMachine,
   MachineItem,
   MachineSheet,
@@ -25,7 +26,9 @@ import {
   advanceCalibration,
   countEmbeddingsOn,
   findCalibration,
+  insertBrokenEmbeddings,
   insertCalibration,
+  listBrokenEmbeddings,
   insertMachine,
   listCalibrations,
   listMachines,
@@ -60,7 +63,6 @@ interface NewCalibration {
   number: number
   sheet: MachineSheet
   working: WorkingGraph
-  broke: CalibrationSaved['invalidated']['embeddings']
 }
 
 async function saveCalibration(app: App, tx: Db, actor: Actor, { working, ...calibration }: NewCalibration) {
@@ -104,7 +106,7 @@ export async function createMachine(app: App, actor: Actor, input: CreateMachine
       createdAt: now,
       changedAt: now,
     })
-    const figures = await saveCalibration(app, tx, actor, { machineId: id, number: 1, sheet, working, broke: [] })
+    const figures = await saveCalibration(app, tx, actor, { machineId: id, number: 1, sheet, working })
     return { id, ...figures, calibration: 1 }
   })
 }
@@ -129,7 +131,12 @@ export async function calibrateMachine(
         'calibration.raced',
         'Somebody saved another calibration meanwhile. Reload the page and apply your change to it.',
       )
-    return saveCalibration(app, tx, actor, { machineId: id, number, sheet, working, broke })
+    const figures = await saveCalibration(app, tx, actor, { machineId: id, number, sheet, working })
+    await insertBrokenEmbeddings(
+      tx,
+      broke.map(({ id: embeddingId, damage }) => ({ machineId: id, calibration: number, embeddingId, damage })),
+    )
+    return figures
   })
   const sheets = await runSheetsOfEmbeddings(
     app.db,
@@ -139,25 +146,44 @@ export async function calibrateMachine(
   return {
     calibration: number,
     ...figures,
-    invalidated: { embeddings: broke, runSheets: open.map((row) => ({ id: row.id, number: row.number })) },
+    invalidated: {
+      embeddings: broke.map(({ damage: _, ...embedding }) => embedding),
+      runSheets: open.map((row) => ({ id: row.id, number: row.number })),
+    },
   }
 }
 
 /** Embeddings that hold on the machine as it was and no longer on the changed one. */
 async function embeddingsBroken(app: App, before: CalibratedMachine, working: WorkingGraph) {
-  const broken: CalibrationSaved['invalidated']['embeddings'] = []
-  for (const { embedding, problem } of await foundEmbeddingsOn(app.db, before.machine.id))
-    if ((await holdsOn(app, embedding, before)) && !(await holdsOn(app, embedding, working)))
-      broken.push({ id: embedding.id, number: embedding.number, problem })
+  const broken: (CalibrationSaved['invalidated']['embeddings'][number] & { damage: EmbeddingDamage })[] = []
+  for (const { embedding, problem } of await foundEmbeddingsOn(app.db, before.machine.id)) {
+    if ((await damageOn(app, embedding, before, before.fabric)) !== null) continue
+    const damage = await damageOn(app, embedding, working, before.fabric)
+    if (damage) broken.push({ id: embedding.id, number: embedding.number, problem, damage })
+  }
   return broken
 }
 
-async function holdsOn(app: App, embedding: EmbeddingRow, working: WorkingGraph): Promise<boolean> {
+/** What of an embedding a working graph does not carry; null where it holds. */
+async function damageOn(
+  app: App,
+  embedding: EmbeddingRow,
+  working: WorkingGraph,
+  { ids }: Fabric,
+): Promise<EmbeddingDamage | null> {
   const problem = await findReferredProblem(app.db, embedding.problemId, embedding.problemVersion)
-  if (!embedding.chainsBlobId || !problem) return false
+  if (!embedding.chainsBlobId || !problem) return null
   const graph = interactionGraph((await problemData(app, problem)).problem)
   const chains = unpackChains(await app.blobs.read(embedding.chainsBlobId))
-  return verifyEmbedding(graph, working.graph, working.usable, chains).length === 0
+  const violations = verifyEmbedding(graph, working.graph, working.usable, chains)
+  if (violations.length === 0) return null
+  const lost = Array.from(chains.qubits).filter((q) => working.usable[q] === 0)
+  return {
+    chains: new Set(violations.flatMap(({ variables }) => variables)).size,
+    ofChains: graph.order,
+    qubitsLost: lost.map((q) => ids[q]!).sort((a, b) => a - b),
+    couplersLost: [],
+  }
 }
 
 function itemOf(machine: MachineRow, figures: { qubits: number; couplers: number }, embeddings: number): MachineItem {
@@ -201,6 +227,7 @@ export async function machineView(app: App, actor: Actor, id: string): Promise<M
 
 /** Every calibration, newest first, with the embeddings that it broke. */
 async function calibrationItems(app: App, machine: MachineRow): Promise<CalibrationItem[]> {
+  const broken = await listBrokenEmbeddings(app.db, machine.id)
   return (await listCalibrations(app.db, machine.id)).map(({ calibration, savedBy }) => ({
     number: calibration.number,
     missingQubits: qubitCount(machine.family) - calibration.qubits,
@@ -210,6 +237,8 @@ async function calibrationItems(app: App, machine: MachineRow): Promise<Calibrat
     remark: calibration.sheet.remark,
     savedBy,
     savedAt: calibration.createdAt.toISOString(),
-    broke: calibration.broke,
+    broke: broken
+      .filter(({ broken }) => broken.calibration === calibration.number)
+      .map(({ embedding, problem }) => ({ id: embedding.id, number: embedding.number, problem })),
   }))
 }

@@ -53,6 +53,7 @@ export async function startRehearsal(
       id: returnId,
       workspaceId: actor.workspaceId,
       runSheetId,
+      embeddingId: sheet.embeddingId,
       number: await nextNumber(tx, runSheetId, 'return'),
       source: 'rehearsal',
       status: 'running',

@@ -54,7 +54,7 @@ interface Loaded {
 }
 
 async function load(app: App, actor: Actor, row: ReturnRow, methods: Decoding[], solutions: number): Promise<Loaded> {
-  const bench = await benchOf(app, actor, await runSheetRow(app, actor, row.runSheetId))
+  const bench = await benchOf(app, actor, row)
   const programming = programmeBench(bench, row.settings)
   const programmed = requireProgrammed(programming)
   const samples = unpackSamples(await app.blobs.read(row.samplesBlobId!))
@@ -87,7 +87,7 @@ const NOTHING_YET = {
 export async function returnView(app: App, actor: Actor, id: string, decode: Decoding): Promise<ReturnView> {
   const row = await returnRow(app, actor, id)
   const sheet = await runSheetRow(app, actor, row.runSheetId)
-  const bench = await benchOf(app, actor, sheet)
+  const bench = await benchOf(app, actor, row)
   const { problem, machine } = bench
   const job = await findJobOfSubject(app.db, id)
   const base: Omit<ReturnView, keyof typeof NOTHING_YET> = {
@@ -313,7 +313,7 @@ export async function samplesFile(
 ): Promise<{ fileName: string; bytes: Uint8Array }> {
   const row = await readyRow(app, actor, id)
   const sheet = await runSheetRow(app, actor, row.runSheetId)
-  const bench = await benchOf(app, actor, sheet)
+  const bench = await benchOf(app, actor, row)
   const { qubits } = requireProgrammed(programmeBench(bench, row.settings))
   const samples = unpackSamples(await app.blobs.read(row.samplesBlobId!))
   const { rows, width } = samples

@@ -91,6 +91,7 @@ export async function uploadReturn(
       id,
       workspaceId: actor.workspaceId,
       runSheetId,
+      embeddingId: sheet.embeddingId,
       number: await nextNumber(tx, runSheetId, 'return'),
       source: 'upload',
       status: 'ready',

@@ -53,8 +53,8 @@ export async function runSheetRow(app: App, actor: Actor, id: string): Promise<R
   return row
 }
 
-/** The run sheet's embedding and everything under it, loaded. */
-export async function benchOf(app: App, actor: Actor, row: RunSheetRow): Promise<Bench> {
+/** The embedding of a run sheet or of a return, and everything under it, loaded. */
+export async function benchOf(app: App, actor: Actor, row: Pick<RunSheetRow, 'embeddingId'>): Promise<Bench> {
   return loadBench(app, await embeddingRow(app, actor, row.embeddingId))
 }
 

@@ -1,4 +1,5 @@
 import { z } from 'zod'
+import { ENERGY_TABLE_LIMITS, energyTableIssues } from '../engine/machine/energy-table'
 import type { Person } from './common'
 import { calibrationNumberSchema, nameSchema, textSchema } from './common'
 
@@ -39,6 +40,10 @@ export const timingSchema = z
     delayMicroseconds: microseconds.default(20),
     annealMinMicroseconds: microseconds.default(1),
     annealMaxMicroseconds: microseconds.default(2000),
+    /** Steepest change of s that a schedule may ask for; null where the machine has no such limit. */
+    slopeMaxPerMicrosecond: z.number().positive().max(1e6).nullable().default(null),
+    /** Most points of a schedule, first and last included; null where schedules cannot be given. */
+    schedulePointsMax: z.number().int().min(2).max(1000).nullable().default(null),
   })
   .refine((timing) => timing.annealMinMicroseconds <= timing.annealMaxMicroseconds, {
     path: ['annealMinMicroseconds'],
@@ -59,12 +64,28 @@ export const defectsSchema = z.object({
     .default([]),
 })
 
+const energies = z.array(z.number()).max(ENERGY_TABLE_LIMITS.rows)
+/** A(s) and B(s) in GHz; every wrong row is named. */
+export const energyTableSchema = z.object({ s: energies, A: energies, B: energies }).superRefine((table, context) => {
+  for (const { row, column, message } of energyTableIssues(table).slice(0, 100))
+    context.addIssue({ code: 'custom', path: [column, row], message: `row ${row + 1}: ${message}` })
+})
+
+/** What machine time costs. */
+export const priceSchema = z.object({
+  perSecond: z.number().min(0).max(1e9),
+  /** Three letters as in ISO 4217. */
+  currency: z.string().regex(/^[A-Z]{3}$/, 'three capital letters, such as EUR'),
+})
+
 const sheetSchema = z.object({
   defects: defectsSchema.prefault({}),
   ranges: rangesSchema.prefault({}),
   controlError: controlErrorSchema.prefault({}),
   timing: timingSchema.prefault({}),
   temperatureMillikelvin: z.number().positive().max(1e6).nullable().default(null),
+  energyTable: energyTableSchema.nullable().default(null),
+  price: priceSchema.nullable().default(null),
   remark: textSchema(2000).default(''),
 })
 export type MachineSheet = z.infer<typeof sheetSchema>
@@ -83,6 +104,8 @@ export const calibrateSchema = z.object({
   controlError: controlErrorSchema.optional(),
   timing: timingSchema.optional(),
   temperatureMillikelvin: z.number().positive().max(1e6).nullable().optional(),
+  energyTable: energyTableSchema.nullable().optional(),
+  price: priceSchema.nullable().optional(),
   remark: textSchema(2000).default(''),
 })
 export type Calibrate = z.infer<typeof calibrateSchema>
@@ -144,6 +167,41 @@ export interface MachineGraph {
   nodes: number[]
   edges: [number, number][]
   positions: [number, number][]
+}
+
+/** How a calibration damages an embedding; qubits and couplers by published number. */
+export interface EmbeddingDamage {
+  /** Chains that lost a qubit, fell apart or lost an interaction's last coupler. */
+  chains: number
+  ofChains: number
+  qubitsLost: number[]
+  /** Couplers of the embedding, inside chains or between them, between working qubits. */
+  couplersLost: [number, number][]
+}
+
+/** How the longest chains at a calibration are measured: random problems of each size and density, embedded by the engine. */
+export interface CapacitySettings {
+  seed: number
+  /** Problems of each size and density. */
+  problems: number
+  timeLimitSeconds: number
+}
+
+/** Random problems of one size and density: how many were embedded, and how. */
+export interface ChainLengthPoint {
+  variables: number
+  density: number
+  problems: number
+  found: number
+  /** Of the embeddings found; null without any. */
+  longestChain: { median: number; least: number; most: number } | null
+  medianQubits: number | null
+  seconds: number
+}
+
+export interface CapacityResult {
+  complete: Omit<MachineCapacity, 'calibration'> | null
+  points: ChainLengthPoint[]
 }
 
 /** What a machine holds at a calibration, whatever the problem. */

@@ -141,6 +141,7 @@ beforeEach(async () => {
     id: returnId,
     workspaceId: 'w',
     runSheetId: sheetId,
+    embeddingId,
     number: 1,
     source: 'upload',
     status: 'ready',

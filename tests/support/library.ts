@@ -129,6 +129,7 @@ function addEmbedding(
       id: `${sheetId}-r${sample}`,
       workspaceId,
       runSheetId: sheetId,
+      embeddingId: id,
       number: sample,
       source: 'upload',
       status: 'ready',

@@ -241,8 +241,12 @@ export function sheetBody(draft: SheetDraft): Required<Calibrate> {
       delayMicroseconds: figure('delay'),
       annealMinMicroseconds: figure('annealMin'),
       annealMaxMicroseconds: figure('annealMax'),
+      slopeMaxPerMicrosecond: null,
+      schedulePointsMax: null,
     },
     temperatureMillikelvin: draft.temperature,
+    energyTable: null,
+    price: null,
     remark: draft.remark,
   }
 }

@@ -140,5 +140,40 @@ export const MIGRATIONS = [
       "\nALTER TABLE \"problems\" DROP COLUMN \"reading\";",
       "\nALTER TABLE \"problems\" DROP COLUMN \"structure\";"
     ]
+  },
+  {
+    "tag": "0004_machines_and_mail",
+    "folderMillis": 1796170765296,
+    "hash": "972c9a70ae7ac5f81d5aea04b3d9e788f1eb5fd4c30d733f7b4ee89dbe75ad78",
+    "bps": true,
+    "sql": [
+      "CREATE TABLE \"broken_embeddings\" (\n\t\"machine_id\" text NOT NULL,\n\t\"calibration\" integer NOT NULL,\n\t\"embedding_id\" text NOT NULL,\n\t\"damage\" jsonb NOT NULL,\n\t\"holds_again\" integer,\n\tCONSTRAINT \"broken_embeddings_machine_id_calibration_embedding_id_pk\" PRIMARY KEY(\"machine_id\",\"calibration\",\"embedding_id\")\n);\n",
+      "\nCREATE TABLE \"capacity_measurements\" (\n\t\"id\" text PRIMARY KEY NOT NULL,\n\t\"workspace_id\" text NOT NULL,\n\t\"machine_id\" text NOT NULL,\n\t\"calibration\" integer NOT NULL,\n\t\"status\" text NOT NULL,\n\t\"settings\" jsonb NOT NULL,\n\t\"result\" jsonb,\n\t\"reason\" text,\n\t\"seconds\" double precision,\n\t\"version\" text NOT NULL,\n\t\"created_by\" text NOT NULL,\n\t\"created_at\" timestamp with time zone NOT NULL\n);\n",
+      "\nCREATE TABLE \"mails\" (\n\t\"id\" text PRIMARY KEY NOT NULL,\n\t\"workspace_id\" text NOT NULL,\n\t\"to_user_id\" text,\n\t\"to_address\" text NOT NULL,\n\t\"kind\" text NOT NULL,\n\t\"subject\" text NOT NULL,\n\t\"text\" text NOT NULL,\n\t\"html\" text NOT NULL,\n\t\"state\" text NOT NULL,\n\t\"attempts\" integer DEFAULT 0 NOT NULL,\n\t\"next_attempt_at\" timestamp with time zone,\n\t\"reason\" text,\n\t\"created_at\" timestamp with time zone NOT NULL,\n\t\"sent_at\" timestamp with time zone\n);\n",
+      "\nALTER TABLE \"embeddings\" ADD COLUMN \"replaces\" boolean DEFAULT false NOT NULL;",
+      "\nALTER TABLE \"machines\" ADD COLUMN \"graph_blob_id\" text;",
+      "\nALTER TABLE \"returns\" ADD COLUMN \"embedding_id\" text;",
+      "\nUPDATE \"returns\" SET \"embedding_id\" = \"run_sheets\".\"embedding_id\" FROM \"run_sheets\" WHERE \"run_sheets\".\"id\" = \"returns\".\"run_sheet_id\";",
+      "\nALTER TABLE \"returns\" ALTER COLUMN \"embedding_id\" SET NOT NULL;",
+      "\nALTER TABLE \"returns\" ADD COLUMN \"breaks_blob_id\" text;",
+      "\nALTER TABLE \"broken_embeddings\" ADD CONSTRAINT \"broken_embeddings_embedding_id_embeddings_id_fk\" FOREIGN KEY (\"embedding_id\") REFERENCES \"public\".\"embeddings\"(\"id\") ON DELETE cascade ON UPDATE no action;",
+      "\nALTER TABLE \"broken_embeddings\" ADD CONSTRAINT \"broken_embeddings_calibration_fk\" FOREIGN KEY (\"machine_id\",\"calibration\") REFERENCES \"public\".\"calibrations\"(\"machine_id\",\"number\") ON DELETE cascade ON UPDATE no action;",
+      "\nALTER TABLE \"capacity_measurements\" ADD CONSTRAINT \"capacity_measurements_workspace_id_workspaces_id_fk\" FOREIGN KEY (\"workspace_id\") REFERENCES \"public\".\"workspaces\"(\"id\") ON DELETE cascade ON UPDATE no action;",
+      "\nALTER TABLE \"capacity_measurements\" ADD CONSTRAINT \"capacity_measurements_created_by_users_id_fk\" FOREIGN KEY (\"created_by\") REFERENCES \"public\".\"users\"(\"id\") ON DELETE no action ON UPDATE no action;",
+      "\nALTER TABLE \"capacity_measurements\" ADD CONSTRAINT \"capacity_measurements_calibration_fk\" FOREIGN KEY (\"machine_id\",\"calibration\") REFERENCES \"public\".\"calibrations\"(\"machine_id\",\"number\") ON DELETE cascade ON UPDATE no action;",
+      "\nALTER TABLE \"mails\" ADD CONSTRAINT \"mails_workspace_id_workspaces_id_fk\" FOREIGN KEY (\"workspace_id\") REFERENCES \"public\".\"workspaces\"(\"id\") ON DELETE cascade ON UPDATE no action;",
+      "\nALTER TABLE \"mails\" ADD CONSTRAINT \"mails_to_user_id_users_id_fk\" FOREIGN KEY (\"to_user_id\") REFERENCES \"public\".\"users\"(\"id\") ON DELETE set null ON UPDATE no action;",
+      "\nCREATE INDEX \"broken_embeddings_embedding_id_index\" ON \"broken_embeddings\" USING btree (\"embedding_id\");",
+      "\nCREATE INDEX \"capacity_measurements_machine_id_calibration_index\" ON \"capacity_measurements\" USING btree (\"machine_id\",\"calibration\");",
+      "\nCREATE INDEX \"mails_workspace_id_created_at_index\" ON \"mails\" USING btree (\"workspace_id\",\"created_at\");",
+      "\nCREATE INDEX \"mails_state_next_attempt_at_index\" ON \"mails\" USING btree (\"state\",\"next_attempt_at\");",
+      "\nALTER TABLE \"machines\" ADD CONSTRAINT \"machines_graph_blob_id_blobs_id_fk\" FOREIGN KEY (\"graph_blob_id\") REFERENCES \"public\".\"blobs\"(\"id\") ON DELETE no action ON UPDATE no action;",
+      "\nALTER TABLE \"returns\" ADD CONSTRAINT \"returns_embedding_id_embeddings_id_fk\" FOREIGN KEY (\"embedding_id\") REFERENCES \"public\".\"embeddings\"(\"id\") ON DELETE cascade ON UPDATE no action;",
+      "\nALTER TABLE \"returns\" ADD CONSTRAINT \"returns_breaks_blob_id_blobs_id_fk\" FOREIGN KEY (\"breaks_blob_id\") REFERENCES \"public\".\"blobs\"(\"id\") ON DELETE no action ON UPDATE no action;",
+      "\nCREATE INDEX \"returns_embedding_id_index\" ON \"returns\" USING btree (\"embedding_id\");",
+      "\nINSERT INTO \"broken_embeddings\" (\"machine_id\", \"calibration\", \"embedding_id\", \"damage\")\nSELECT \"calibrations\".\"machine_id\", \"calibrations\".\"number\", \"embeddings\".\"id\", '{\"chains\":0,\"ofChains\":0,\"qubitsLost\":[],\"couplersLost\":[]}'\nFROM \"calibrations\", jsonb_array_elements(\"calibrations\".\"broke\") AS \"broken\", \"embeddings\" WHERE \"embeddings\".\"id\" = \"broken\"->>'id';",
+      "\nUPDATE \"calibrations\" SET \"sheet\" = jsonb_set(\"sheet\", '{timing}', \"sheet\"->'timing' || '{\"slopeMaxPerMicrosecond\":null,\"schedulePointsMax\":null}') || '{\"energyTable\":null,\"price\":null}';",
+      "\nALTER TABLE \"calibrations\" DROP COLUMN \"broke\";"
+    ]
   }
 ]

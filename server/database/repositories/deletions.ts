@@ -1,4 +1,4 @@
-import { and, eq, gte, inArray, isNull, lt } from 'drizzle-orm'
+import { and, eq, gte, inArray, isNull, lt, or } from 'drizzle-orm'
 import type { DeletableKind } from '../../../shared/schemas/deletions'
 import type { Db } from '../client'
 import { embeddings, problems, problemVersions, reductions, referenceOptima, returns, runSheets } from '../schema'
@@ -22,7 +22,11 @@ function returnsUnder(db: Db, kind: DeletableKind, id: string) {
     .select({ id: runSheets.id })
     .from(runSheets)
     .where(runSheetsUnder(db, kind, id))
-  return inArray(returns.runSheetId, carriers)
+  const ofRunSheet = inArray(returns.runSheetId, carriers)
+  if (kind === 'run sheet') return ofRunSheet
+  // A run sheet may have moved to another embedding since: its earlier returns stay with the one they were made on.
+  const on = db.select({ id: embeddings.id }).from(embeddings).where(embeddingsUnder(kind, id))
+  return or(ofRunSheet, inArray(returns.embeddingId, on))
 }
 
 /**
@@ -123,12 +127,15 @@ export async function deleteForGood(
     .from(embeddings)
     .where(embeddingsUnder(kind, id))
   const samples = await tx
-    .select({ id: returns.id, blobId: returns.samplesBlobId })
+    .select({ id: returns.id, blobId: returns.samplesBlobId, breaksBlobId: returns.breaksBlobId })
     .from(returns)
     .where(returnsUnder(tx, kind, id))
+  const breaks = samples.map(({ breaksBlobId }) => ({ blobId: breaksBlobId }))
   await tx.delete(root).where(eq(root.id, id))
   return {
-    blobIds: [...data.blobs, ...data.references, ...chains, ...samples].flatMap(({ blobId }) => blobId ?? []),
+    blobIds: [...data.blobs, ...data.references, ...chains, ...samples, ...breaks].flatMap(
+      ({ blobId }) => blobId ?? [],
+    ),
     subjectIds: [...data.references, ...chains, ...samples].map((row) => row.id),
   }
 }

@@ -1,6 +1,6 @@
-import { and, count, desc, eq, isNull } from 'drizzle-orm'
+import { and, asc, count, desc, eq, isNull } from 'drizzle-orm'
 import type { Db } from '../client'
-import { calibrations, embeddings, machines, users } from '../schema'
+import { brokenEmbeddings, calibrations, embeddings, machines, problems, users } from '../schema'
 
 export type MachineRow = typeof machines.$inferSelect
 export type CalibrationRow = typeof calibrations.$inferSelect
@@ -71,6 +71,21 @@ export async function listCalibrations(db: Db, machineId: string) {
     .innerJoin(users, eq(users.id, calibrations.createdBy))
     .where(eq(calibrations.machineId, machineId))
     .orderBy(desc(calibrations.number))
+}
+
+export async function insertBrokenEmbeddings(db: Db, rows: (typeof brokenEmbeddings.$inferInsert)[]): Promise<void> {
+  if (rows.length > 0) await db.insert(brokenEmbeddings).values(rows)
+}
+
+/** Embeddings that calibrations of a machine broke, with their problem; deleted ones left out. */
+export async function listBrokenEmbeddings(db: Db, machineId: string) {
+  return db
+    .select({ broken: brokenEmbeddings, embedding: embeddings, problem: problems.name })
+    .from(brokenEmbeddings)
+    .innerJoin(embeddings, eq(embeddings.id, brokenEmbeddings.embeddingId))
+    .innerJoin(problems, eq(problems.id, embeddings.problemId))
+    .where(and(eq(brokenEmbeddings.machineId, machineId), isNull(embeddings.deletedWith)))
+    .orderBy(desc(brokenEmbeddings.calibration), asc(problems.name), asc(embeddings.number))
 }
 
 export async function countEmbeddingsOn(db: Db, machineId: string): Promise<number> {

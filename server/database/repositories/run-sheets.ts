@@ -18,11 +18,6 @@ export async function findRunSheet(db: Db, workspaceId: string, id: string): Pro
   )[0]
 }
 
-/** A run sheet by its id alone, deleted or not, for jobs. */
-export async function findRunSheetOfJob(db: Db, id: string): Promise<RunSheetRow | undefined> {
-  return (await db.select().from(runSheets).where(eq(runSheets.id, id)))[0]
-}
-
 export async function listRunSheets(db: Db, workspaceId: string, limit: number, offset: number) {
   return db
     .select({

@@ -5,7 +5,7 @@ import { joinSamples } from '../../../shared/engine/sampling/merge'
 import type { Samples } from '../../../shared/engine/sampling/samples'
 import type { App } from '../../app'
 import { findEmbeddingOfJob } from '../../database/repositories/embeddings'
-import { findReturnOfJob, findRunSheetOfJob, updateReturn } from '../../database/repositories/run-sheets'
+import { findReturnOfJob, updateReturn } from '../../database/repositories/run-sheets'
 import { loadBench, programmeBench, requireProgrammed } from '../../services/programming'
 import type { RehearsalSettings } from '../../services/rehearsals'
 import { figuresOf } from '../../services/returns'
@@ -21,8 +21,7 @@ const DELETED = 'the run sheet or its embedding was deleted meanwhile'
 export const rehearsalJob: JobKindHandler = {
   async run(app, context) {
     const row = await findReturnOfJob(app.db, context.job.subjectId)
-    const sheet = row && (await findRunSheetOfJob(app.db, row.runSheetId))
-    const embedding = sheet && (await findEmbeddingOfJob(app.db, sheet.embeddingId))
+    const embedding = row && (await findEmbeddingOfJob(app.db, row.embeddingId))
     if (!row || !embedding) throw new Error(DELETED)
     const started = performance.now()
     const bench = await loadBench(app, embedding)

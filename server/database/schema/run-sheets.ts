@@ -1,0 +1,83 @@
+import { doublePrecision, index, integer, jsonb, pgTable, text, uniqueIndex } from 'drizzle-orm/pg-core'
+import type { RunSheetSettings, RunSheetState } from '../../../shared/schemas/run-sheets'
+import { blobs } from './blobs'
+import { createdAt, id, moment } from './columns'
+import { embeddings } from './machines'
+import { users } from './people'
+import { createdBy, deletion, workspaceId } from './references'
+
+export const runSheets = pgTable(
+  'run_sheets',
+  {
+    id: id(),
+    workspaceId: workspaceId(),
+    embeddingId: text()
+      .notNull()
+      .references(() => embeddings.id, { onDelete: 'cascade' }),
+    number: integer().notNull(),
+    name: text().notNull(),
+    state: text().$type<RunSheetState>().notNull(),
+    settings: jsonb().$type<RunSheetSettings>().notNull(),
+    /** SHA-256 of settings and programmed values; set at approval, frozen from then on. */
+    fingerprint: text(),
+    machineTimeMilliseconds: doublePrecision().notNull(),
+    preparedBy: createdBy(),
+    reviewedBy: text().references(() => users.id),
+    createdAt: createdAt(),
+    changedAt: moment().notNull(),
+    ...deletion(),
+  },
+  (table) => [uniqueIndex().on(table.workspaceId, table.number), index().on(table.embeddingId)],
+)
+
+/** Hand-overs and remarks of a run sheet; only ever added to. */
+export const runSheetRemarks = pgTable(
+  'run_sheet_remarks',
+  {
+    id: id(),
+    runSheetId: text()
+      .notNull()
+      .references(() => runSheets.id, { onDelete: 'cascade' }),
+    by: text().references(() => users.id),
+    what: text().notNull(),
+    text: text().notNull(),
+    createdAt: createdAt(),
+  },
+  (table) => [index().on(table.runSheetId, table.createdAt)],
+)
+
+export const returns = pgTable(
+  'returns',
+  {
+    id: id(),
+    workspaceId: workspaceId(),
+    runSheetId: text()
+      .notNull()
+      .references(() => runSheets.id, { onDelete: 'cascade' }),
+    /** The run sheet's embedding when the samples were made: a repair may move the run sheet to another. */
+    embeddingId: text()
+      .notNull()
+      .references(() => embeddings.id, { onDelete: 'cascade' }),
+    number: integer().notNull(),
+    source: text().$type<'rehearsal' | 'upload'>().notNull(),
+    status: text().$type<'running' | 'ready' | 'failed' | 'cancelled'>().notNull(),
+    /** What made the samples: settings of a rehearsal or the uploaded file. */
+    made: jsonb().$type<Record<string, string | number | boolean | null>>().notNull(),
+    /** The run sheet's settings when the samples were made: a draft may change afterwards. */
+    settings: jsonb().$type<RunSheetSettings>().notNull(),
+    samplesBlobId: text().references(() => blobs.id),
+    /** Packed counts of breaks by qubit and chain coupler; made when first asked for. */
+    breaksBlobId: text().references(() => blobs.id),
+    reads: integer().notNull(),
+    readsWithBreak: integer(),
+    /** Best majority-decoded energy in the problem's own sense. */
+    best: doublePrecision(),
+    reason: text(),
+    seconds: doublePrecision(),
+    version: text().notNull(),
+    createdBy: createdBy(),
+    createdAt: createdAt(),
+    ...deletion(),
+  },
+  (table) => [uniqueIndex().on(table.runSheetId, table.number), index().on(table.embeddingId)],
+)
