@@ -21,9 +21,12 @@ export const familySchema = z.discriminatedUnion('kind', [
   z.object({ kind: z.literal('square'), width: gridExtent, height: gridExtent }),
 ])
 
-const rangeSchema = z
-  .tuple([z.number(), z.number()])
-  .refine(([low, high]) => low < 0 && high > 0, 'a range runs from a negative to a positive number')
+/** Lowest and highest value; an end with the wrong sign is named by its place. */
+const rangeSchema = z.tuple([z.number(), z.number()]).superRefine(([low, high], context) => {
+  const refuse = (end: 0 | 1, message: string) => context.addIssue({ code: 'custom', path: [end], message })
+  if (low >= 0) refuse(0, `the lowest value must be below 0, not ${low}`)
+  if (high <= 0) refuse(1, `the highest value must be above 0, not ${high}`)
+})
 
 export const rangesSchema = z.object({
   h: rangeSchema.default([-1, 1]),
@@ -46,8 +49,8 @@ export const timingSchema = z
     schedulePointsMax: z.number().int().min(2).max(1000).nullable().default(null),
   })
   .refine((timing) => timing.annealMinMicroseconds <= timing.annealMaxMicroseconds, {
-    path: ['annealMinMicroseconds'],
-    message: 'the shortest anneal is longer than the longest',
+    path: ['annealMaxMicroseconds'],
+    message: 'the longest anneal is shorter than the shortest',
   })
 
 export const controlErrorSchema = z.object({

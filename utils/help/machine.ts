@@ -1,4 +1,5 @@
 import type { Family } from '#shared/engine/machine/fabric'
+import { GIGAHERTZ_PER_KELVIN } from '#shared/engine/machine/energy-units'
 import { CAUTIONS } from './cautions'
 import { entry, type HelpInput } from './entry'
 import type { Expr } from './formula'
@@ -7,6 +8,7 @@ import {
   BODLAENDER_KOSTER,
   BOOTHBY_2016,
   CHOI_2011,
+  CODATA,
   DEFINITION,
   GILBERT,
   MACHINE_SHEET,
@@ -134,6 +136,25 @@ export const machineHelp = {
       `Not computed: entered with calibration ${calibration}. ${RANGE_RULE[what]} The scale α shrinks all programmed values alike until every one fits.`,
     result: ({ text }) => text,
     sources: () => [MACHINE_SHEET],
+    caution: () => CAUTIONS.sheet,
+  }),
+  thermalEnergy: entry<{ millikelvin: number }>({
+    inputs: ({ millikelvin }) => [
+      { symbol: 'T', name: 'temperature of the chip', value: millikelvin / 1000, unit: 'K', from: 'machine sheet' },
+      { symbol: 'c', name: 'Boltzmann constant over Planck constant', value: GIGAHERTZ_PER_KELVIN, text: '20.8366', unit: 'GHz/K' },
+    ],
+    steps: () => [
+      {
+        symbol: 'E',
+        name: 'thermal energy as a frequency',
+        expr: times('c', 'T'),
+        unit: 'GHz',
+        show: (value) => formatNumber(value, { significant: 4 }),
+      },
+    ],
+    method: () =>
+      'A level that lies several times kT above the lowest is hardly occupied by warmth alone. B(1)/2 is the energy of a programmed coupling or field of 1 at the end of the anneal.',
+    sources: () => [CODATA, MACHINE_SHEET],
     caution: () => CAUTIONS.sheet,
   }),
   capacityBound: entry<{ treewidth: number }>({

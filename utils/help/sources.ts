@@ -10,6 +10,12 @@ export const DEFINITION: Source = { title: 'By definition' }
 export const OWN: Source = { title: 'Espalier’s own: docs/formulas.md' }
 export const MACHINE_SHEET: Source = { title: 'The machine sheet, as its steward entered it' }
 
+export const CODATA: Source = {
+  author: 'Tiesinga et al.',
+  title: 'CODATA recommended values of the fundamental physical constants: 2018',
+  venue: 'Rev. Mod. Phys. 93:025010',
+  year: 2021,
+}
 export const WILSON: Source = {
   author: 'Wilson',
   title: 'Probable inference, the law of succession, and statistical inference',

@@ -79,6 +79,19 @@ function demoDefects(family: Family, seed: number): { qubits: number[]; couplers
   return { qubits, couplers }
 }
 
+/** Invented energies in GHz: A falls exponentially to nothing, B rises as a power of s. */
+function demoEnergies(most: { A: number; B: number }) {
+  const rounded = (value: number) => Number(value.toFixed(4))
+  const steepness = 7
+  const tail = Math.exp(-steepness)
+  const s = Array.from({ length: 51 }, (_, k) => k / 50)
+  return {
+    s,
+    A: s.map((at) => rounded((most.A * (Math.exp(-steepness * at) - tail)) / (1 - tail))),
+    B: s.map((at) => rounded(most.B * at ** 1.6)),
+  }
+}
+
 async function seedMachines(app: App, steward: Actor): Promise<{ alder: string; juniper: string }> {
   const ranges = { h: [-4, 4], J: [-2, 1], couplingSum: [-18, 15] }
   const timing = {
@@ -87,8 +100,10 @@ async function seedMachines(app: App, steward: Actor): Promise<{ alder: string; 
     delayMicroseconds: 21,
     annealMinMicroseconds: 0.5,
     annealMaxMicroseconds: 2000,
+    slopeMaxPerMicrosecond: 2,
+    schedulePointsMax: 12,
   }
-  const create = (name: string, note: string, family: Family, seed: number) =>
+  const create = (name: string, note: string, family: Family, seed: number, most: { A: number; B: number }) =>
     createMachine(
       app,
       steward,
@@ -101,15 +116,18 @@ async function seedMachines(app: App, steward: Actor): Promise<{ alder: string; 
         timing,
         controlError: { h: 0.021, J: 0.015 },
         temperatureMillikelvin: 13.1,
+        energyTable: demoEnergies(most),
+        price: { perSecond: 0.75, currency: 'EUR' },
       }),
     )
   const note = 'Machine of the laboratory at Holm Point, bought by the second. Figures are what the steward entered.'
-  const alder = await create('Alder', note, { kind: 'pegasus', m: 6, trimmed: true }, 11)
+  const alder = await create('Alder', note, { kind: 'pegasus', m: 6, trimmed: true }, 11, { A: 9.2, B: 11.8 })
   await calibrateMachine(app, steward, alder.id, {
     controlError: { h: 0.02, J: 0.015 },
+    energyTable: demoEnergies({ A: 9.05, B: 11.9 }),
     remark: 'The laboratory swapped an amplifier on the left edge.',
   })
-  const juniper = await create('Juniper', note, { kind: 'zephyr', m: 4, t: 4 }, 12)
+  const juniper = await create('Juniper', note, { kind: 'zephyr', m: 4, t: 4 }, 12, { A: 8.4, B: 12.6 })
   return { alder: alder.id, juniper: juniper.id }
 }
 

@@ -60,6 +60,7 @@ const EXAMPLES: readonly (readonly [HelpRequest, number | string])[] = [
   [{ id: 'workingCouplers', given: { made: 17, working: 15 } }, 15],
   [{ id: 'machineDegree', given: { degree: 15, qubits: 10, couplers: 15 } }, '15'],
   [{ id: 'range', given: { what: 'J', text: '−2 to 1', calibration: 3 } }, '−2 to 1'],
+  [{ id: 'thermalEnergy', given: { millikelvin: 13.1 } }, (0.0131 * 1.380649e-23) / 6.62607015e-34 / 1e9],
   [{ id: 'capacityBound', given: { treewidth: 68 } }, 69],
   [{ id: 'capacityTreewidth', given: { treewidth: 68, qubits: 10, couplers: 15 } }, '68'],
   [{ id: 'completeByTemplate', given: { order: 60, chainLength: 7, seed: 1, tries: 6 } }, '60'],
