@@ -4,7 +4,7 @@ import { sizeOf } from '../../shared/engine/graph/graph'
 import type { Graph } from '../../shared/engine/graph/graph'
 import { buildFabric } from '../../shared/engine/machine/build-fabric'
 import { applyDefects } from '../../shared/engine/machine/defects'
-import type { Defects, Fabric, Family } from '../../shared/engine/machine/fabric'
+import type { Defects, Fabric, PublishedFamily } from '../../shared/engine/machine/fabric'
 import { createRandom } from '../../shared/engine/random'
 import type { Random } from '../../shared/engine/random'
 import { completeGraph, latticeGraph, randomGraph, regularGraph, shuffledGraph, tourGraph } from './generators'
@@ -28,7 +28,7 @@ export interface Row {
 
 interface Machine {
   readonly name: string
-  readonly family: Family
+  readonly family: PublishedFamily
   readonly defects?: { readonly qubits: number; readonly couplers: number }
 }
 

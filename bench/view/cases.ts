@@ -4,7 +4,7 @@
  */
 import { adjacency } from './adjacency'
 import { buildFabric } from '../../shared/engine/machine/build-fabric'
-import type { Family } from '../../shared/engine/machine/fabric'
+import type { PublishedFamily } from '../../shared/engine/machine/fabric'
 import { couplerPlace } from '../../shared/engine/machine/layout'
 import { createRandom } from '../../shared/engine/random'
 import type { Random } from '../../shared/engine/random'
@@ -12,7 +12,7 @@ import type { ChainLayer, LatticeData, LoadLayer } from '../../utils/lattice/typ
 
 export interface ViewCase {
   readonly name: string
-  readonly family: Family
+  readonly family: PublishedFamily
   readonly chains: number
   /** Least and most qubits of a chain. */
   readonly lengths: readonly [number, number]

@@ -4,6 +4,7 @@ import { chainOf, packChains } from '../../shared/engine/embedding/embedding'
 import type { Graph } from '../../shared/engine/graph/graph'
 import { convertForm } from '../../shared/engine/problem/convert'
 import { matchVariables } from '../../shared/engine/problem/difference/match-variables'
+import { geometryOf } from '../../shared/engine/machine/geometry'
 import { interactionGraph } from '../../shared/engine/problem/interaction-graph'
 import { DomainError } from '../../shared/errors'
 import type { Actor, App } from '../app'
@@ -58,8 +59,7 @@ export const taskOf = ({ graph, machine }: Subject, start: Start | null): Embedd
   problem: graph,
   machine: machine.graph,
   usable: machine.usable,
-  segments: machine.fabric.segments,
-  family: machine.fabric.family,
+  ...geometryOf(machine.fabric),
   start,
 })
 

@@ -1,3 +1,4 @@
+import { geometryOf } from '../../shared/engine/machine/geometry'
 import type { MachineCapacity } from '../../shared/schemas/machines'
 import type { Actor, App } from '../app'
 import type { CalibratedMachine } from './machine-graphs'
@@ -11,7 +12,7 @@ const SEARCH = { seed: 1, tries: 6, timeLimitSeconds: 60 } as const
 const capacities = new Recent<Promise<MachineCapacity>>(64)
 
 async function workOut(app: App, { graph, usable, fabric, calibration }: CalibratedMachine): Promise<MachineCapacity> {
-  const machine = { machine: graph, usable, segments: fabric.segments, family: fabric.family }
+  const machine = { machine: graph, usable, ...geometryOf(fabric) }
   const capacity = await app.compute.run('completeCapacity', { machine, ...SEARCH })
   return { calibration: calibration.number, ...capacity }
 }

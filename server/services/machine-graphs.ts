@@ -1,20 +1,36 @@
 import { applyDefects } from '../../shared/engine/machine/defects'
 import { buildFabric } from '../../shared/engine/machine/build-fabric'
-import type { Fabric, Family, WorkingGraph } from '../../shared/engine/machine/fabric'
+import type { Fabric, PublishedFamily, WorkingGraph } from '../../shared/engine/machine/fabric'
 import { indexById } from '../../shared/engine/machine/index-of'
 import { DomainError } from '../../shared/errors'
 import type { MachineSheet } from '../../shared/schemas/machines'
 import type { Actor, App } from '../app'
 import type { CalibrationRow, MachineRow } from '../database/repositories/machines'
 import { findCalibration, findMachine } from '../database/repositories/machines'
+import { unpackFabric } from './custom-graphs'
 import { Recent } from './recent'
 
 const fabrics = new Recent<Fabric>(6)
+const customs = new Recent<Promise<Fabric>>(4)
 /** Calibrations never change, so what was worked out from one can be kept. */
 const workings = new Recent<WorkingGraph>(8)
 
 /** The fabric of a family; building one takes up to a second for the largest, so the last few are kept. */
-export const fabricOf = (family: Family): Fabric => fabrics.get(JSON.stringify(family), () => buildFabric(family))
+export const fabricOf = (family: PublishedFamily): Fabric =>
+  fabrics.get(JSON.stringify(family), () => buildFabric(family))
+
+/** The graph that a machine was made as: built from its family, or loaded where it was uploaded. */
+export async function fabricOfMachine(app: App, { family, graphBlobId }: MachineRow): Promise<Fabric> {
+  if (family.kind !== 'custom') return fabricOf(family)
+  if (!graphBlobId) throw new Error('a machine of no family has no graph')
+  const loading = customs.get(graphBlobId, async () => unpackFabric(family, await app.blobs.read(graphBlobId)))
+  try {
+    return await loading
+  } catch (error) {
+    customs.drop(graphBlobId, loading)
+    throw error
+  }
+}
 
 /** A machine as it worked at one calibration. */
 export interface CalibratedMachine extends WorkingGraph {
@@ -48,7 +64,7 @@ export async function calibratedMachine(
       'calibration.unknown',
       `${machine.name} has no calibration ${number}; the one in force is ${machine.calibration}.`,
     )
-  const fabric = fabricOf(machine.family)
+  const fabric = await fabricOfMachine(app, machine)
   const working = workings.get(`${machineId} ${calibration.number}`, () =>
     applyDefects(fabric, calibration.sheet.defects),
   )

@@ -1,4 +1,5 @@
 import { z } from 'zod'
+import type { Family } from '../engine/machine/fabric'
 import { ENERGY_TABLE_LIMITS, energyTableIssues } from '../engine/machine/energy-table'
 import type { Person } from './common'
 import { calibrationNumberSchema, nameSchema, textSchema } from './common'
@@ -19,6 +20,8 @@ export const familySchema = z.discriminatedUnion('kind', [
   z.object({ kind: z.literal('zephyr'), m: extent, t: z.number().int().min(1).max(64).default(4) }),
   z.object({ kind: z.literal('king'), width: gridExtent, height: gridExtent }),
   z.object({ kind: z.literal('square'), width: gridExtent, height: gridExtent }),
+  z.object({ kind: z.literal('cubic'), width: gridExtent, height: gridExtent, depth: gridExtent }),
+  z.object({ kind: z.literal('heavy-hex'), rows: gridExtent, columns: gridExtent }),
 ])
 
 /** Lowest and highest value; an end with the wrong sign is named by its place. */
@@ -148,7 +151,7 @@ export interface CalibrationItem {
 
 export interface MachineView extends MachineItem {
   note: string
-  familySizes: z.infer<typeof familySchema>
+  familySizes: Family
   maxDegree: number
   sheet: MachineSheet
   /** The sheet of the calibration before, to tell what changed; null at the first. */

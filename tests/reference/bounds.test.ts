@@ -4,7 +4,7 @@ import type { EmbeddingTask } from '../../shared/engine/embedding/task'
 import { graphFromEdges } from '../../shared/engine/graph/build'
 import type { Graph } from '../../shared/engine/graph/graph'
 import { buildFabric } from '../../shared/engine/machine/build-fabric'
-import type { Family } from '../../shared/engine/machine/fabric'
+import type { PublishedFamily } from '../../shared/engine/machine/fabric'
 import { treewidthUpperBound } from '../../shared/engine/problem/treewidth'
 import { treewidthLowerBound } from '../../shared/engine/problem/treewidth-lower'
 import { completeGraph, gridGraph, taskOf } from '../fixtures/graphs'
@@ -22,7 +22,7 @@ const petersen = graphFromEdges(
   Array.from({ length: 5 }, (_, i) => [i, (i + 1) % 5, i, i + 5, i + 5, ((i + 2) % 5) + 5]).flat(),
 )
 
-function familyTask(problem: Graph, family: Family): EmbeddingTask {
+function familyTask(problem: Graph, family: PublishedFamily): EmbeddingTask {
   const { graph, segments } = buildFabric(family)
   return { ...taskOf(problem, graph), segments, family }
 }
@@ -66,7 +66,7 @@ describe('complete graphs on Chimera', () => {
   // faults, Quantum Inf. Process. 13, 2014; Boothby, King & Roy, Fast clique minor generation in Chimera qubit
   // connectivity graphs, 15, 2016), so no more than K_{t·m + 1}.
   it.each([1, 2, 4, 8, 16])('C(m, m, 4) with m = %i: K_{4m + 2} is impossible, K_{4m + 1} is not refused', (m) => {
-    const family: Family = { kind: 'chimera', m, n: m, t: 4 }
+    const family: PublishedFamily = { kind: 'chimera', m, n: m, t: 4 }
     expect(machineTreewidthBound(familyTask(completeGraph(2), family)).width).toBe(4 * m)
     expect(provedInfeasible(familyTask(completeGraph(4 * m + 2), family))).not.toBeNull()
     if (m > 1) expect(provedInfeasible(familyTask(completeGraph(4 * m + 1), family))).toBeNull()
@@ -86,13 +86,13 @@ describe('complete graphs on Pegasus and Zephyr', () => {
   // Constructions with short equal chains reach K_{12m − 10} on P(m) (Boothby et al., arXiv:2003.00133, 2020) and
   // K_{16m − 8} on Z(m, 4) (Boothby, King & Raymond, Zephyr topology, 2021): no bound may refuse those.
   it.each([3, 6, 16])('P(%i)', (m) => {
-    const family: Family = { kind: 'pegasus', m, trimmed: true }
+    const family: PublishedFamily = { kind: 'pegasus', m, trimmed: true }
     expect(provedInfeasible(familyTask(completeGraph(12 * m - 10), family))).toBeNull()
     expect(provedInfeasible(familyTask(completeGraph(12 * m - 2), family))).not.toBeNull()
   })
 
   it.each([2, 6, 15])('Z(%i, 4)', (m) => {
-    const family: Family = { kind: 'zephyr', m, t: 4 }
+    const family: PublishedFamily = { kind: 'zephyr', m, t: 4 }
     expect(provedInfeasible(familyTask(completeGraph(16 * m - 8), family))).toBeNull()
     expect(provedInfeasible(familyTask(completeGraph(16 * m + 10), family))).not.toBeNull()
   })
@@ -101,7 +101,7 @@ describe('complete graphs on Pegasus and Zephyr', () => {
 describe('planar machines', () => {
   // Kuratowski 1930, Wagner 1937: K_5 is no minor of a planar graph; a planar graph has at most 3n − 6 edges (Euler).
   it('refuse K_5 and the Petersen graph, and take K_4 and the cube', () => {
-    const family: Family = { kind: 'square', width: 30, height: 30 }
+    const family: PublishedFamily = { kind: 'square', width: 30, height: 30 }
     expect(provedInfeasible(familyTask(completeGraph(5), family))).not.toBeNull()
     expect(provedInfeasible(familyTask(petersen, family))).not.toBeNull()
     expect(provedInfeasible(familyTask(completeGraph(4), family))).toBeNull()

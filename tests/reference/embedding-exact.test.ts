@@ -10,7 +10,7 @@ import { findEmbedding } from '../../shared/engine/embedding/search'
 import { graphFromEdges } from '../../shared/engine/graph/build'
 import type { Graph } from '../../shared/engine/graph/graph'
 import { buildFabric } from '../../shared/engine/machine/build-fabric'
-import type { Family } from '../../shared/engine/machine/fabric'
+import type { PublishedFamily } from '../../shared/engine/machine/fabric'
 import { createRandom } from '../../shared/engine/random'
 import { completeGraph, cycleGraph, gridGraph } from '../fixtures/graphs'
 import { familyTask, UNTIMED } from '../fixtures/methods'
@@ -30,13 +30,13 @@ const bipartite = (a: number, b: number): Graph =>
 const wheel = (n: number): Graph =>
   graphFromEdges(n + 1, Array.from({ length: n }, (_, i) => [i, (i + 1) % n, i, n]).flat())
 
-const CHIMERA: Family = { kind: 'chimera', m: 2, n: 2, t: 2 }
-const HALF_CHIMERA: Family = { kind: 'chimera', m: 2, n: 1, t: 2 }
-const SMALL_SQUARE: Family = { kind: 'square', width: 3, height: 2 }
-const SQUARE: Family = { kind: 'square', width: 3, height: 3 }
-const LARGER_SQUARE: Family = { kind: 'square', width: 4, height: 4 }
-const KING: Family = { kind: 'king', width: 3, height: 3 }
-const LARGER_KING: Family = { kind: 'king', width: 4, height: 4 }
+const CHIMERA: PublishedFamily = { kind: 'chimera', m: 2, n: 2, t: 2 }
+const HALF_CHIMERA: PublishedFamily = { kind: 'chimera', m: 2, n: 1, t: 2 }
+const SMALL_SQUARE: PublishedFamily = { kind: 'square', width: 3, height: 2 }
+const SQUARE: PublishedFamily = { kind: 'square', width: 3, height: 3 }
+const LARGER_SQUARE: PublishedFamily = { kind: 'square', width: 4, height: 4 }
+const KING: PublishedFamily = { kind: 'king', width: 3, height: 3 }
+const LARGER_KING: PublishedFamily = { kind: 'king', width: 4, height: 4 }
 
 const whole = (machine: Graph): Uint8Array => new Uint8Array(machine.order).fill(1)
 
@@ -81,7 +81,7 @@ function leastByProgramming(problem: Graph, machine: Graph, longest: number): nu
 }
 
 describe('the exhaustive search itself', () => {
-  it.each<[string, Graph, Family, number]>([
+  it.each<[string, Graph, PublishedFamily, number]>([
     ['K_4 on the 3 × 3 king’s graph', completeGraph(4), KING, 5],
     ['K_{2,3} on the 3 × 3 king’s graph', bipartite(2, 3), KING, 4],
     ['K_{2,3} on Chimera C(2, 1, 2)', bipartite(2, 3), HALF_CHIMERA, 4],
@@ -109,7 +109,7 @@ const LEAST_SHARE = 0.85
 const SETTINGS = { tries: 4, timeLimitSeconds: 2, objective: 'total qubits' } as const
 
 /** Problem, machine. */
-const CASES: readonly (readonly [string, Graph, Family])[] = [
+const CASES: readonly (readonly [string, Graph, PublishedFamily])[] = [
   ['K_3 on Chimera C(2, 2, 2)', completeGraph(3), CHIMERA],
   ['K_4 on Chimera C(2, 2, 2)', completeGraph(4), CHIMERA],
   ['K_5 on Chimera C(2, 2, 2)', completeGraph(5), CHIMERA],

@@ -9,7 +9,7 @@ import { afterAll, describe, expect, it } from 'vitest'
 import { qualityOf } from '../../shared/engine/embedding/objective'
 import { findEmbedding } from '../../shared/engine/embedding/search'
 import type { Graph } from '../../shared/engine/graph/graph'
-import type { Family } from '../../shared/engine/machine/fabric'
+import type { PublishedFamily } from '../../shared/engine/machine/fabric'
 import { createRandom } from '../../shared/engine/random'
 import { completeGraph, gridGraph, permutation, randomGraph, regularGraph, relabelled } from '../fixtures/graphs'
 import { familyTask, UNTIMED } from '../fixtures/methods'
@@ -26,10 +26,10 @@ const SEEDS = [1, 2, 3]
 /** Worst allowed figure as a multiple of the stored one. */
 const ALLOWED = 1.05
 
-const C6: Family = { kind: 'chimera', m: 6, n: 6, t: 4 }
-const P4: Family = { kind: 'pegasus', m: 4, trimmed: true }
-const Z3: Family = { kind: 'zephyr', m: 3, t: 4 }
-const KING: Family = { kind: 'king', width: 16, height: 16 }
+const C6: PublishedFamily = { kind: 'chimera', m: 6, n: 6, t: 4 }
+const P4: PublishedFamily = { kind: 'pegasus', m: 4, trimmed: true }
+const Z3: PublishedFamily = { kind: 'zephyr', m: 3, t: 4 }
+const KING: PublishedFamily = { kind: 'king', width: 16, height: 16 }
 const INTACT = { qubits: 0, couplers: 0 }
 const WORN = { qubits: 0.03, couplers: 0.02 }
 
@@ -37,7 +37,7 @@ type Make = (seed: number) => Graph
 const random = (seed: number) => createRandom(seed, 70)
 const shuffled = (graph: Graph, seed: number): Graph => relabelled(graph, permutation(graph.order, random(seed)))
 
-const INSTANCES: readonly (readonly [string, Make, Family, typeof INTACT])[] = [
+const INSTANCES: readonly (readonly [string, Make, PublishedFamily, typeof INTACT])[] = [
   ['3-regular 40 on C6', (seed) => regularGraph(40, 3, random(seed)), C6, INTACT],
   ['3-regular 60 on P4', (seed) => regularGraph(60, 3, random(seed)), P4, INTACT],
   ['3-regular 40 on P4 with defects', (seed) => regularGraph(40, 3, random(seed)), P4, WORN],

@@ -9,7 +9,7 @@ import { provedInfeasible, THOROUGH } from '../../shared/engine/embedding/feasib
 import { findEmbedding } from '../../shared/engine/embedding/search'
 import type { EmbeddingTask } from '../../shared/engine/embedding/task'
 import { verifyEmbedding } from '../../shared/engine/embedding/verify'
-import type { Family } from '../../shared/engine/machine/fabric'
+import type { PublishedFamily } from '../../shared/engine/machine/fabric'
 import { createRandom } from '../../shared/engine/random'
 import type { Random } from '../../shared/engine/random'
 import { permutation, randomGraph, relabelled, taskOf, usableExcept } from '../fixtures/graphs'
@@ -24,7 +24,7 @@ const MISSED_SHARE = 0.05
 const DEFECTS = { qubits: 0.08, couplers: 0.06 }
 
 const onFamily =
-  (family: Family, variables = 6) =>
+  (family: PublishedFamily, variables = 6) =>
   (random: Random): EmbeddingTask =>
     familyTask(smallProblem(random, variables), family, DEFECTS, random)
 

@@ -7,7 +7,7 @@ import { verifyEmbedding } from '../../shared/engine/embedding/verify'
 import type { Graph } from '../../shared/engine/graph/graph'
 import { keepEdges } from '../../shared/engine/graph/subgraph'
 import { buildFabric } from '../../shared/engine/machine/build-fabric'
-import type { Family } from '../../shared/engine/machine/fabric'
+import type { PublishedFamily } from '../../shared/engine/machine/fabric'
 import { createRandom } from '../../shared/engine/random'
 import type { Random } from '../../shared/engine/random'
 import {
@@ -101,12 +101,12 @@ describe.each(INSTANCES)(
   },
 )
 
-const C6: Family = { kind: 'chimera', m: 6, n: 6, t: 4 }
-const P4: Family = { kind: 'pegasus', m: 4, trimmed: true }
-const Z3: Family = { kind: 'zephyr', m: 3, t: 4 }
+const C6: PublishedFamily = { kind: 'chimera', m: 6, n: 6, t: 4 }
+const P4: PublishedFamily = { kind: 'pegasus', m: 4, trimmed: true }
+const Z3: PublishedFamily = { kind: 'zephyr', m: 3, t: 4 }
 const WORN = { qubits: 0.02, couplers: 0.01 }
 
-const WORN_MACHINES: readonly (readonly [string, (random: Random) => Graph, Family])[] = [
+const WORN_MACHINES: readonly (readonly [string, (random: Random) => Graph, PublishedFamily])[] = [
   ['K_10 on C6', () => completeGraph(10), C6],
   ['K_16 on P4', () => completeGraph(16), P4],
   ['K_16 on Z3', () => completeGraph(16), Z3],

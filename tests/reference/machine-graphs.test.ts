@@ -1,7 +1,7 @@
 import { describe, expect, it } from 'vitest'
 import { buildFabric } from '../../shared/engine/machine/build-fabric'
 import { applyDefects } from '../../shared/engine/machine/defects'
-import type { Fabric, Family } from '../../shared/engine/machine/fabric'
+import type { Fabric, PublishedFamily } from '../../shared/engine/machine/fabric'
 import { couplerCount, qubitCount } from '../../shared/engine/machine/family'
 
 /** Couplers of a fabric as sorted `a-b` texts of published numbers, lower first. */
@@ -94,7 +94,7 @@ function zephyrByDefinition(m: number, t: number): string[] {
 }
 
 describe('published counts', () => {
-  it.each<[Family, number, number]>([
+  it.each<[PublishedFamily, number, number]>([
     // Bunyk et al. 2014: the machine of 16 by 16 cells.
     [{ kind: 'chimera', m: 16, n: 16, t: 4 }, 2048, 6016],
     // The machines of 8 by 8 and of 12 by 12 cells before it: 512 and 1152 qubits; couplers from the closed form.
@@ -111,6 +111,14 @@ describe('published counts', () => {
     [{ kind: 'king', width: 320, height: 320 }, 102400, 407682],
     // Square grid W×H: WH vertices, 2WH − W − H edges.
     [{ kind: 'square', width: 70, height: 33 }, 2310, 4517],
+    // Cubic grid n×n×n: n³ vertices, 3n²(n − 1) edges; the box 12×10×8 by lines along each axis: 11·80 + 9·96 + 7·120.
+    [{ kind: 'cubic', width: 15, height: 15, depth: 15 }, 3375, 9450],
+    [{ kind: 'cubic', width: 46, height: 46, depth: 46 }, 97336, 285660],
+    [{ kind: 'cubic', width: 12, height: 10, depth: 8 }, 960, 2584],
+    // Honeycombs of benzene, naphthalene, pyrene's outline 2×2: 6, 10, 16 corners and 6, 11, 19 sides, with a qubit each.
+    [{ kind: 'heavy-hex', rows: 1, columns: 1 }, 12, 12],
+    [{ kind: 'heavy-hex', rows: 1, columns: 2 }, 21, 22],
+    [{ kind: 'heavy-hex', rows: 2, columns: 2 }, 35, 38],
   ])('%o has the published size', (family, qubits, couplers) => {
     const { graph } = buildFabric(family)
     expect([graph.order, graph.ends.length / 2]).toEqual([qubits, couplers])
@@ -127,6 +135,14 @@ describe('published counts', () => {
     for (const t of [1, 2, 4, 6]) expect(Math.max(...degrees(buildFabric({ kind: 'zephyr', m: 4, t })))).toBe(4 * t + 4)
     const king = degrees(buildFabric({ kind: 'king', width: 9, height: 7 }))
     expect([3, 5, 8].map((degree) => king.filter((d) => d === degree).length)).toEqual([4, 2 * 7 + 2 * 5, 7 * 5])
+    // Cubic grid: 3 at corners, 4 along edges, 5 on faces, 6 inside. Heavy hexagons: at most 3, on corners alone.
+    const cubic = degrees(buildFabric({ kind: 'cubic', width: 5, height: 6, depth: 7 }))
+    expect([3, 4, 5, 6].map((degree) => cubic.filter((d) => d === degree).length)).toEqual([8, 48, 94, 60])
+    // Corners have two or three sides, so those with three are twice the sides less twice the corners.
+    const hexagons = degrees(buildFabric({ kind: 'heavy-hex', rows: 4, columns: 5 }))
+    const [corners, sides] = [2 * 5 * 6 - 2, 3 * 20 + 8 + 10 - 1]
+    expect(hexagons.filter((d) => d === 3).length).toBe(2 * sides - 2 * corners)
+    expect(Math.max(...hexagons)).toBe(3)
   })
 })
 

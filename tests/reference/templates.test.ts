@@ -2,12 +2,12 @@ import { describe, expect, it } from 'vitest'
 import { qualityOf } from '../../shared/engine/embedding/objective'
 import { fitTemplate } from '../../shared/engine/embedding/templates/fit-template'
 import type { Graph } from '../../shared/engine/graph/graph'
-import type { Family } from '../../shared/engine/machine/fabric'
+import type { PublishedFamily } from '../../shared/engine/machine/fabric'
 import { completeGraph } from '../fixtures/graphs'
 import { attemptOn, bipartiteGraph, machineOf, taskOn } from '../unit/engine/embedding/templates/attempts'
 
 /** Longest chain and total of the first valid embedding that the method offers. */
-function first(problem: Graph, family: Family, missing = 0, seed = 1) {
+function first(problem: Graph, family: PublishedFamily, missing = 0, seed = 1) {
   const task = taskOn(problem, machineOf(family, missing, missing / 2, seed))
   const { attempt, offers } = attemptOn(task, seed)
   const stop = (): void => {
@@ -23,9 +23,9 @@ function first(problem: Graph, family: Family, missing = 0, seed = 1) {
   return offers.length > 0 ? qualityOf(offers[0]!) : null
 }
 
-const C16: Family = { kind: 'chimera', m: 16, n: 16, t: 4 }
-const P16: Family = { kind: 'pegasus', m: 16, trimmed: true }
-const Z15: Family = { kind: 'zephyr', m: 15, t: 4 }
+const C16: PublishedFamily = { kind: 'chimera', m: 16, n: 16, t: 4 }
+const P16: PublishedFamily = { kind: 'pegasus', m: 16, trimmed: true }
+const Z15: PublishedFamily = { kind: 'zephyr', m: 15, t: 4 }
 
 describe('complete graphs on whole machines', () => {
   // Choi, Minor-embedding in adiabatic quantum computation II, Quantum Inf. Process. 10 (2011); Boothby, King & Roy, Fast

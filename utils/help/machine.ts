@@ -11,6 +11,7 @@ import {
   CODATA,
   DEFINITION,
   GILBERT,
+  HEAVY_HEX,
   MACHINE_SHEET,
   PEGASUS,
   ZEPHYR,
@@ -47,6 +48,15 @@ function qubitsOf(family: Family): Count {
         expr: times(4, 't', 'm', plus(times(2, 'm'), 1)),
         inputs: [size('m', 'size', family.m), size('t', 'tile', family.t)],
       }
+    case 'cubic':
+      return { expr: times('W', 'H', 'D'), inputs: boxInputs(family) }
+    case 'heavy-hex':
+      return {
+        expr: minus(plus(times(5, 'r', 'c'), times(4, 'r'), times(4, 'c')), 1),
+        inputs: [size('r', 'rows', family.rows), size('c', 'columns', family.columns)],
+      }
+    case 'custom':
+      return { expr: 'N', inputs: [{ ...size('N', 'qubits in the file', family.qubits), from: family.file }] }
     default:
       return { expr: times('W', 'H'), inputs: boardInputs(family) }
   }
@@ -55,6 +65,12 @@ function qubitsOf(family: Family): Count {
 const boardInputs = ({ width, height }: Extract<Family, { kind: 'king' | 'square' }>): HelpInput[] => [
   size('W', 'width', width),
   size('H', 'height', height),
+]
+
+const boxInputs = ({ width, height, depth }: Extract<Family, { kind: 'cubic' }>): HelpInput[] => [
+  size('W', 'width', width),
+  size('H', 'height', height),
+  size('D', 'depth', depth),
 ]
 
 /** Closed forms of the number of couplers, where there are some. */
@@ -72,12 +88,31 @@ function couplersOf(family: Family): Count | null {
       }
     case 'square':
       return { expr: minus(minus(times(2, 'W', 'H'), 'W'), 'H'), inputs: boardInputs(family) }
+    case 'cubic':
+      return {
+        expr: minus(minus(minus(times(3, 'W', 'H', 'D'), times('W', 'H')), times('W', 'D')), times('H', 'D')),
+        inputs: boxInputs(family),
+      }
+    case 'heavy-hex':
+      return {
+        expr: minus(plus(times(6, 'r', 'c'), times(4, 'r'), times(4, 'c')), 2),
+        inputs: qubitsOf(family).inputs,
+      }
     default:
       return null
   }
 }
 
-const FAMILY_SOURCE = { pegasus: PEGASUS, zephyr: ZEPHYR, chimera: BOOTHBY_2016, king: DEFINITION, square: DEFINITION }
+const FAMILY_SOURCE = {
+  pegasus: PEGASUS,
+  zephyr: ZEPHYR,
+  chimera: BOOTHBY_2016,
+  king: DEFINITION,
+  square: DEFINITION,
+  cubic: DEFINITION,
+  'heavy-hex': HEAVY_HEX,
+  custom: DEFINITION,
+}
 
 export const machineHelp = {
   workingQubits: entry<{ family: Family; missing: number }>({
@@ -103,7 +138,7 @@ export const machineHelp = {
       const count = couplersOf(family)
       return count ? [{ symbol: 'E', name: 'couplers made', expr: count.expr }] : []
     },
-    method: ({ family }) => (couplersOf(family) ? '' : COUNTED),
+    method: ({ family }) => (couplersOf(family) ? '' : family.kind === 'custom' ? COUNTED_IN_FILE : COUNTED),
     result: ({ couplers }) => formatNumber(couplers),
     sources: ({ family }) => [FAMILY_SOURCE[family.kind]],
   }),
@@ -224,6 +259,7 @@ export const machineHelp = {
 
 const COUNTED =
   'Counted on the published construction: crossing segments share an internal coupler, successive ones on a line an external one, close parallel ones an odd one.'
+const COUNTED_IN_FILE = 'Counted in the uploaded graph: pairs of qubits that it joins.'
 const RANGE_RULE = {
   h: 'Every programmed field must lie in it.',
   J: 'Every programmed coupling must lie in it, those inside chains too.',

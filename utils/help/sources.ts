@@ -59,6 +59,12 @@ export const PEGASUS: Source = {
   year: 2020,
 }
 export const ZEPHYR: Source = { author: 'Boothby, King & Raymond', title: 'Zephyr topology', year: 2021 }
+export const HEAVY_HEX: Source = {
+  author: 'Chamberland, Zhu, Yoder, Hertzberg & Cross',
+  title: 'Topological and subsystem codes on low-degree graphs with flag qubits',
+  venue: 'Phys. Rev. X 10, 011022',
+  year: 2020,
+}
 export const BODLAENDER_KOSTER: Source = {
   author: 'Bodlaender & Koster',
   title: 'Treewidth computations I. Upper bounds',

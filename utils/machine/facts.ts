@@ -14,11 +14,11 @@ export const sigmaText = (sigma: number): string =>
 
 /** `Pegasus, trimmed`. */
 export function familyTitle(family: Family): string | undefined {
+  if (family.kind === 'custom') return `from ${family.file}`
   const { title } = familyTextOf(family.kind)
-  // The names of boards say all of it: `square grid 20×30`.
-  if (family.kind === 'king' || family.kind === 'square') return undefined
-  if (family.kind !== 'pegasus') return title
-  return `${title}, ${family.trimmed ? 'trimmed' : 'untrimmed'}`
+  if (family.kind === 'pegasus') return `${title}, ${family.trimmed ? 'trimmed' : 'untrimmed'}`
+  // The names of the other lattices say all of it: `square grid 20×30`.
+  return family.kind === 'chimera' || family.kind === 'zephyr' ? title : undefined
 }
 
 /** The strip under the title of a machine. */

@@ -1,18 +1,21 @@
-import type { Family } from '#shared/engine/machine/fabric'
+import type { PublishedFamily } from '#shared/engine/machine/fabric'
 import { couplerCount, familyName, familyProblems, qubitCount } from '#shared/engine/machine/family'
 
 /** A family as it stands in the form: a size that was cleared or cannot be read is null or NaN. */
 export interface FamilyDraft {
-  kind: Family['kind']
+  kind: PublishedFamily['kind']
   m: number | null
   n: number | null
   t: number | null
   trimmed: boolean
   width: number | null
   height: number | null
+  depth: number | null
+  rows: number | null
+  columns: number | null
 }
 
-export type SizeField = 'm' | 'n' | 't' | 'width' | 'height'
+export type SizeField = Exclude<keyof FamilyDraft, 'kind' | 'trimmed'>
 
 export interface SizeText {
   field: SizeField
@@ -21,7 +24,18 @@ export interface SizeText {
   hint: string
 }
 
-export const FAMILY_START: FamilyDraft = { kind: 'pegasus', m: 6, n: 6, t: 4, trimmed: true, width: 24, height: 24 }
+export const FAMILY_START: FamilyDraft = {
+  kind: 'pegasus',
+  m: 6,
+  n: 6,
+  t: 4,
+  trimmed: true,
+  width: 24,
+  height: 24,
+  depth: 6,
+  rows: 8,
+  columns: 8,
+}
 
 const GRID_SIZES: readonly SizeText[] = [
   { field: 'width', label: 'Width', unit: 'qubits', hint: 'Qubits in a row, at least 1.' },
@@ -29,7 +43,12 @@ const GRID_SIZES: readonly SizeText[] = [
 ]
 
 /** The families in the order in which the form offers them, with what sets each apart. */
-export const FAMILIES: readonly { kind: Family['kind']; title: string; what: string; sizes: readonly SizeText[] }[] = [
+export const FAMILIES: readonly {
+  kind: PublishedFamily['kind']
+  title: string
+  what: string
+  sizes: readonly SizeText[]
+}[] = [
   {
     kind: 'chimera',
     title: 'Chimera',
@@ -62,14 +81,29 @@ export const FAMILIES: readonly { kind: Family['kind']; title: string; what: str
     sizes: GRID_SIZES,
   },
   { kind: 'square', title: 'Square grid', what: 'A board of points, each coupled to four.', sizes: GRID_SIZES },
+  {
+    kind: 'cubic',
+    title: 'Cubic grid',
+    what: 'Layers of square grids, each point coupled to those above and below it as well: at most six.',
+    sizes: [...GRID_SIZES, { field: 'depth', label: 'Depth', unit: 'layers', hint: 'Layers, at least 1.' }],
+  },
+  {
+    kind: 'heavy-hex',
+    title: 'Heavy hexagons',
+    what: 'Hexagons with a qubit on every corner and on the middle of every side; at most three couplers a qubit.',
+    sizes: [
+      { field: 'rows', label: 'Rows', unit: 'hexagons', hint: 'Hexagons from top to bottom, at least 1.' },
+      { field: 'columns', label: 'Columns', unit: 'hexagons', hint: 'Hexagons from left to right, at least 1.' },
+    ],
+  },
 ]
 
-export const familyTextOf = (kind: Family['kind']) => FAMILIES.find((family) => family.kind === kind)!
+export const familyTextOf = (kind: PublishedFamily['kind']) => FAMILIES.find((family) => family.kind === kind)!
 
 const size = (value: number | null): number => value ?? Number.NaN
 
 /** The engine's family; sizes that are not given become NaN, which its checks name. */
-export function familyOf(draft: FamilyDraft): Family {
+export function familyOf(draft: FamilyDraft): PublishedFamily {
   const m = size(draft.m)
   switch (draft.kind) {
     case 'chimera':
@@ -81,6 +115,10 @@ export function familyOf(draft: FamilyDraft): Family {
     case 'king':
     case 'square':
       return { kind: draft.kind, width: size(draft.width), height: size(draft.height) }
+    case 'cubic':
+      return { kind: draft.kind, width: size(draft.width), height: size(draft.height), depth: size(draft.depth) }
+    case 'heavy-hex':
+      return { kind: draft.kind, rows: size(draft.rows), columns: size(draft.columns) }
   }
 }
 
@@ -91,7 +129,11 @@ export interface FamilyFigures {
 }
 
 /** Name and counts of the family, or what is wrong with its sizes. */
-export function readFamily(draft: FamilyDraft): { family: Family; figures: FamilyFigures | null; problems: string[] } {
+export function readFamily(draft: FamilyDraft): {
+  family: PublishedFamily
+  figures: FamilyFigures | null
+  problems: string[]
+} {
   const family = familyOf(draft)
   const problems = familyProblems(family).map((problem) => problem.replace('not NaN', 'and is not given'))
   if (problems.length > 0) return { family, figures: null, problems }

@@ -1,7 +1,7 @@
 import { writeSamplesCsv } from '../../../shared/engine/readout/samples-csv'
 import { DEMO_ACCOUNTS, DEMO_PASSWORD } from '../../../shared/demo-accounts'
 import { createRandom } from '../../../shared/engine/random'
-import type { Family } from '../../../shared/engine/machine/fabric'
+import type { PublishedFamily } from '../../../shared/engine/machine/fabric'
 import { createEmbeddingSchema } from '../../../shared/schemas/embeddings'
 import { createMachineSchema } from '../../../shared/schemas/machines'
 import { saveGroupsSchema } from '../../../shared/schemas/groups'
@@ -68,7 +68,7 @@ async function seedPeople(app: App, passwords: Passwords): Promise<Cast> {
 }
 
 /** About one qubit in fifty and a few couplers missing, drawn once. */
-function demoDefects(family: Family, seed: number): { qubits: number[]; couplers: [number, number][] } {
+function demoDefects(family: PublishedFamily, seed: number): { qubits: number[]; couplers: [number, number][] } {
   const { ids, graph } = fabricOf(family)
   const random = createRandom(seed)
   const qubits = [...new Set(Array.from({ length: Math.round(ids.length / 50) }, () => ids[random.below(ids.length)]!))]
@@ -103,7 +103,7 @@ async function seedMachines(app: App, steward: Actor): Promise<{ alder: string; 
     slopeMaxPerMicrosecond: 2,
     schedulePointsMax: 12,
   }
-  const create = (name: string, note: string, family: Family, seed: number, most: { A: number; B: number }) =>
+  const create = (name: string, note: string, family: PublishedFamily, seed: number, most: { A: number; B: number }) =>
     createMachine(
       app,
       steward,

@@ -1,5 +1,5 @@
 import type { Graph } from '../graph/graph'
-import type { Family } from '../machine/fabric'
+import type { PublishedFamily } from '../machine/fabric'
 import type { Embedding } from './embedding'
 
 /** An embedding to begin from, in the indices of the task; variables that are new have an empty chain. */
@@ -19,7 +19,7 @@ export interface EmbeddingTask {
   /** Where the qubits lie in the plane, four numbers each (`Fabric.segments`); null where nobody said. */
   readonly segments: Float32Array | null
   /** The family that the machine was made of; null for custom graphs. Bounds that need one are left out then. */
-  readonly family: Family | null
+  readonly family: PublishedFamily | null
   /** What `repair` and `shorten` begin from; null for the other methods. */
   readonly start: Start | null
 }

@@ -1,12 +1,29 @@
 import type { Graph } from '../graph/graph'
 
 /** The published machine-graph families with their sizes (docs/formulas.md, Machine graphs). */
-export type Family =
+export type PublishedFamily =
   | { readonly kind: 'chimera'; readonly m: number; readonly n: number; readonly t: number }
   | { readonly kind: 'pegasus'; readonly m: number; readonly trimmed: boolean }
   | { readonly kind: 'zephyr'; readonly m: number; readonly t: number }
   | { readonly kind: 'king'; readonly width: number; readonly height: number }
   | { readonly kind: 'square'; readonly width: number; readonly height: number }
+  | { readonly kind: 'cubic'; readonly width: number; readonly height: number; readonly depth: number }
+  | { readonly kind: 'heavy-hex'; readonly rows: number; readonly columns: number }
+
+/** A graph of no family, read from a file; the graph itself is kept beside the machine. */
+export interface CustomGraph {
+  readonly kind: 'custom'
+  /** Name of the file that it came in. */
+  readonly file: string
+  readonly qubits: number
+  readonly couplers: number
+  /** Equal for equal numbers, couplers and positions (`graphFingerprint`). */
+  readonly fingerprint: string
+  /** Whether the file said where the qubits lie; otherwise a drawing was worked out once. */
+  readonly positions: 'given' | 'drawn'
+}
+
+export type Family = PublishedFamily | CustomGraph
 
 /**
  * A family graph as manufactured, before defects. Qubits are dense indices 0 … order − 1, ascending by published

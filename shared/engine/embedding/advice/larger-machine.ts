@@ -1,10 +1,10 @@
-import type { Family } from '../../machine/fabric'
+import type { PublishedFamily } from '../../machine/fabric'
 import { familyProblems, qubitCount } from '../../machine/family'
 import { familyTreewidth } from '../bounds/family-treewidth'
 
 /** A larger machine of the same family that may do. All figures but the family are estimates. */
 export interface LargerMachine {
-  readonly family: Family
+  readonly family: PublishedFamily
   /** Working qubits, if as large a share works as on the present machine. */
   readonly qubits: number
   /** Share of them that the closest state would take up. */
@@ -22,7 +22,7 @@ const DEFAULTS = {
 }
 
 /** The family one size up; both sides of rectangles grow. */
-function nextSize(family: Family): Family {
+function nextSize(family: PublishedFamily): PublishedFamily {
   switch (family.kind) {
     case 'chimera':
       return { ...family, m: family.m + 1, n: family.n + 1 }
@@ -32,6 +32,10 @@ function nextSize(family: Family): Family {
     case 'king':
     case 'square':
       return { ...family, width: family.width + 1, height: family.height + 1 }
+    case 'cubic':
+      return { ...family, width: family.width + 1, height: family.height + 1, depth: family.depth + 1 }
+    case 'heavy-hex':
+      return { ...family, rows: family.rows + 1, columns: family.columns + 1 }
   }
 }
 
@@ -42,7 +46,7 @@ function nextSize(family: Family): Family {
  * @param usable working qubits of the present machine
  * @param treewidth a proved lower bound of the problem's
  */
-export function largerMachine(family: Family, needed: number, usable: number, treewidth: number): LargerMachine | null {
+export function largerMachine(family: PublishedFamily, needed: number, usable: number, treewidth: number): LargerMachine | null {
   const working = usable / qubitCount(family)
   let limitedBy: LargerMachine['limitedBy'] = 'room'
   for (let next = nextSize(family); familyProblems(next).length === 0; next = nextSize(next)) {

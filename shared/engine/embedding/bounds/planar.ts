@@ -9,8 +9,9 @@ import type { Infeasibility } from './infeasibility'
 /** Edges that a planar graph of n ≥ 3 vertices has at most (Euler's formula). */
 export const mostPlanarEdges = (vertices: number): number => 3 * vertices - 6
 
-/** Whether the machine is known to be planar, with or without defects: a square grid is. */
-export const isPlanar = ({ family }: Pick<EmbeddingTask, 'family'>): boolean => family?.kind === 'square'
+/** Whether the machine is known to be planar, with or without defects: square grids and heavy hexagons are. */
+export const isPlanar = ({ family }: Pick<EmbeddingTask, 'family'>): boolean =>
+  family?.kind === 'square' || family?.kind === 'heavy-hex'
 
 /**
  * Minors of a planar machine are planar, and so are the minors of any problem that it holds: contracts the problem, and

@@ -1,9 +1,9 @@
-import type { Family } from '../../machine/fabric'
+import type { PublishedFamily } from '../../machine/fabric'
 import type { Fitter } from './fitter'
 import { emptyTemplate, FIRST_ARM, setMeeting } from './template'
 import type { Template } from './template'
 
-type King = Extract<Family, { kind: 'king' }>
+type King = Extract<PublishedFamily, { kind: 'king' }>
 
 const DEFAULTS = {
   /** Places of the network that are tried, those with fewest broken qubits first. */

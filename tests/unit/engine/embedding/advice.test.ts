@@ -8,7 +8,7 @@ import { verifyEmbedding } from '../../../../shared/engine/embedding/verify'
 import { edgeBetween, graphFromEdges } from '../../../../shared/engine/graph/build'
 import type { Graph } from '../../../../shared/engine/graph/graph'
 import { buildFabric } from '../../../../shared/engine/machine/build-fabric'
-import type { Family } from '../../../../shared/engine/machine/fabric'
+import type { PublishedFamily } from '../../../../shared/engine/machine/fabric'
 import { createRandom } from '../../../../shared/engine/random'
 import { completeGraph, cycleGraph, gridGraph, randomGraph, taskOf } from '../../../fixtures/graphs'
 
@@ -28,7 +28,7 @@ function stateOf({ problem, machine }: EmbeddingTask, lists: readonly (readonly 
   }
 }
 
-function familyTask(problem: Graph, family: Family): EmbeddingTask {
+function familyTask(problem: Graph, family: PublishedFamily): EmbeddingTask {
   const { graph, segments } = buildFabric(family)
   return { ...taskOf(problem, graph), segments, family }
 }
@@ -159,7 +159,7 @@ describe('adviseOn', () => {
 
 describe('largerMachine', () => {
   it('asks for room and for treewidth', () => {
-    const family: Family = { kind: 'square', width: 10, height: 20 }
+    const family: PublishedFamily = { kind: 'square', width: 10, height: 20 }
     expect(largerMachine(family, 190, 200, 3)).toMatchObject({ family: { width: 12, height: 22 }, limitedBy: 'room' })
     expect(largerMachine(family, 100, 200, 15)).toMatchObject({
       family: { width: 15, height: 25 },

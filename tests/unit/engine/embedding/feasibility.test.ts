@@ -5,14 +5,14 @@ import { graphFromEdges } from '../../../../shared/engine/graph/build'
 import type { Graph } from '../../../../shared/engine/graph/graph'
 import { buildFabric } from '../../../../shared/engine/machine/build-fabric'
 import { applyDefects } from '../../../../shared/engine/machine/defects'
-import type { Family } from '../../../../shared/engine/machine/fabric'
+import type { PublishedFamily } from '../../../../shared/engine/machine/fabric'
 import { createRandom } from '../../../../shared/engine/random'
 import { completeGraph, cycleGraph, gridGraph, regularGraph, taskOf, usableExcept } from '../../../fixtures/graphs'
 import { densestMinor, randomMinor } from '../../../fixtures/treewidth'
 
 const allOf = (order: number): Uint8Array => new Uint8Array(order).fill(1)
 
-function familyTask(problem: Graph, family: Family): EmbeddingTask {
+function familyTask(problem: Graph, family: PublishedFamily): EmbeddingTask {
   const { graph, segments } = buildFabric(family)
   return { ...taskOf(problem, graph), segments, family }
 }
@@ -83,7 +83,7 @@ describe('provedInfeasible', () => {
   it('names the clique that is too large', () => {
     const clique = completeGraph(20)
     const problem = graphFromEdges(40, [...clique.ends, ...Array.from({ length: 20 }, (_, i) => [i, 20 + i]).flat()])
-    const family: Family = { kind: 'chimera', m: 4, n: 9, t: 4 }
+    const family: PublishedFamily = { kind: 'chimera', m: 4, n: 9, t: 4 }
     const proof = provedInfeasible(familyTask(problem, family))
     expect(proof).toMatchObject({
       code: 'clique larger than the machine can hold',
@@ -96,16 +96,17 @@ describe('provedInfeasible', () => {
   })
 
   it('counts defects in: a machine that lost its lines holds less', () => {
-    const fabric = buildFabric({ kind: 'king', width: 12, height: 12 })
+    const family = { kind: 'king', width: 12, height: 12 } as const
+    const fabric = buildFabric(family)
     const defects = { qubits: Array.from({ length: 12 }, (_, x) => 12 * 6 + x), couplers: [] }
     const { graph, usable } = applyDefects(fabric, defects)
-    const whole = familyTask(completeGraph(12), fabric.family)
+    const whole = familyTask(completeGraph(12), family)
     expect(provedInfeasible(whole)).toBeNull()
     expect(provedInfeasible({ ...whole, machine: graph, usable })).toMatchObject({ needed: 12, available: 8 })
   })
 
   it('knows that minors of a square grid are planar', () => {
-    const family: Family = { kind: 'square', width: 20, height: 20 }
+    const family: PublishedFamily = { kind: 'square', width: 20, height: 20 }
     expect(provedInfeasible(familyTask(completeGraph(4), family))).toBeNull()
     expect(provedInfeasible(familyTask(completeGraph(5), family))).toMatchObject({
       code: 'too many interactions for a planar machine',
@@ -133,7 +134,7 @@ describe('provedInfeasible', () => {
 
   it('never refuses a minor of the machine, made by contracting, deleting and renaming', () => {
     const random = createRandom(21)
-    const families: Family[] = [
+    const families: PublishedFamily[] = [
       { kind: 'square', width: 6, height: 6 },
       { kind: 'king', width: 5, height: 6 },
       { kind: 'chimera', m: 2, n: 3, t: 3 },
@@ -154,7 +155,7 @@ describe('provedInfeasible', () => {
 
   it('never refuses the densest minors that contraction makes of larger machines', () => {
     const random = createRandom(22)
-    const families: Family[] = [
+    const families: PublishedFamily[] = [
       { kind: 'chimera', m: 6, n: 6, t: 4 },
       { kind: 'pegasus', m: 4, trimmed: true },
       { kind: 'zephyr', m: 3, t: 4 },

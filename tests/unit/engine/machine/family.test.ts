@@ -1,14 +1,22 @@
 import { describe, expect, it } from 'vitest'
 import { buildFabric } from '../../../../shared/engine/machine/build-fabric'
-import type { Family } from '../../../../shared/engine/machine/fabric'
+import type { PublishedFamily } from '../../../../shared/engine/machine/fabric'
 import { couplerCount, familyName, familyProblems, qubitCount } from '../../../../shared/engine/machine/family'
 
-const SMALL: Family[] = [
-  ...[1, 2, 3].flatMap((m) => [1, 2, 4].flatMap((n) => [1, 3, 4].map((t): Family => ({ kind: 'chimera', m, n, t })))),
-  ...[2, 3, 4, 5].flatMap((m) => [true, false].map((trimmed): Family => ({ kind: 'pegasus', m, trimmed }))),
-  ...[1, 2, 3].flatMap((m) => [1, 2, 4, 5].map((t): Family => ({ kind: 'zephyr', m, t }))),
+const SMALL: PublishedFamily[] = [
+  ...[1, 2, 3].flatMap((m) =>
+    [1, 2, 4].flatMap((n) => [1, 3, 4].map((t): PublishedFamily => ({ kind: 'chimera', m, n, t }))),
+  ),
+  ...[2, 3, 4, 5].flatMap((m) => [true, false].map((trimmed): PublishedFamily => ({ kind: 'pegasus', m, trimmed }))),
+  ...[1, 2, 3].flatMap((m) => [1, 2, 4, 5].map((t): PublishedFamily => ({ kind: 'zephyr', m, t }))),
   ...(['king', 'square'] as const).flatMap((kind) =>
-    [1, 2, 5].flatMap((width) => [1, 2, 7].map((height): Family => ({ kind, width, height }))),
+    [1, 2, 5].flatMap((width) => [1, 2, 7].map((height): PublishedFamily => ({ kind, width, height }))),
+  ),
+  ...[1, 2, 5].flatMap((width) =>
+    [1, 3].flatMap((height) => [1, 2, 4].map((depth): PublishedFamily => ({ kind: 'cubic', width, height, depth }))),
+  ),
+  ...[1, 2, 3, 6].flatMap((rows) =>
+    [1, 2, 5].map((columns): PublishedFamily => ({ kind: 'heavy-hex', rows, columns })),
   ),
 ]
 
@@ -30,6 +38,18 @@ describe('familyName', () => {
     expect(familyName({ kind: 'zephyr', m: 15, t: 4 })).toBe('Z(15,4)')
     expect(familyName({ kind: 'king', width: 20, height: 30 })).toBe("king's graph 20×30")
     expect(familyName({ kind: 'square', width: 20, height: 30 })).toBe('square grid 20×30')
+    expect(familyName({ kind: 'cubic', width: 4, height: 5, depth: 6 })).toBe('cubic grid 4×5×6')
+    expect(familyName({ kind: 'heavy-hex', rows: 4, columns: 5 })).toBe('heavy hexagons 4×5')
+  })
+
+  it('says of a graph of no family how large it is, as it says itself', () => {
+    const custom = { kind: 'custom', file: 'lab.csv', couplers: 0, fingerprint: '', positions: 'drawn' } as const
+    expect(familyName({ ...custom, qubits: 1812 })).toBe('graph of 1\u202f812 qubits')
+    expect(familyName({ ...custom, qubits: 1 })).toBe('graph of 1 qubit')
+    expect([
+      qubitCount({ ...custom, qubits: 5, couplers: 7 }),
+      couplerCount({ ...custom, qubits: 5, couplers: 7 }),
+    ]).toEqual([5, 7])
   })
 })
 

@@ -2,13 +2,13 @@ import { describe, expect, it } from 'vitest'
 import { edgeBetween } from '../../../../shared/engine/graph/build'
 import { buildFabric } from '../../../../shared/engine/machine/build-fabric'
 import { applyDefects } from '../../../../shared/engine/machine/defects'
-import type { Fabric, Family } from '../../../../shared/engine/machine/fabric'
+import type { Fabric, PublishedFamily } from '../../../../shared/engine/machine/fabric'
 import { orientationOf } from '../../../../shared/engine/machine/layout'
 import { intactRuns, linesOf } from '../../../../shared/engine/machine/lines'
 import type { Lines, Runs } from '../../../../shared/engine/machine/lines'
 import { createRandom } from '../../../../shared/engine/random'
 
-const FAMILIES: readonly Family[] = [
+const FAMILIES: readonly PublishedFamily[] = [
   { kind: 'chimera', m: 3, n: 5, t: 4 },
   { kind: 'chimera', m: 2, n: 2, t: 1 },
   { kind: 'pegasus', m: 3, trimmed: true },
@@ -17,7 +17,7 @@ const FAMILIES: readonly Family[] = [
   { kind: 'zephyr', m: 1, t: 2 },
 ]
 
-const linesOfFabric = (family: Family): Lines => linesOf(buildFabric(family).segments)!
+const linesOfFabric = (family: PublishedFamily): Lines => linesOf(buildFabric(family).segments)!
 
 const itemsOf = ({ offsets, qubits }: Lines | Runs, i: number): number[] => [
   ...qubits.subarray(offsets[i]!, offsets[i + 1]!),

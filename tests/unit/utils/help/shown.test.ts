@@ -1,7 +1,7 @@
 import { describe, expect, it } from 'vitest'
 import { embeddingStats } from '../../../../shared/engine/embedding/stats'
 import { buildFabric } from '../../../../shared/engine/machine/build-fabric'
-import type { Family } from '../../../../shared/engine/machine/fabric'
+import type { PublishedFamily } from '../../../../shared/engine/machine/fabric'
 import { interactionGraph } from '../../../../shared/engine/problem/interaction-graph'
 import { structureOf } from '../../../../shared/engine/problem/structure'
 import { cutBounds } from '../../../../shared/engine/programming/cut-bounds'
@@ -91,13 +91,15 @@ describe('facts of an embedding', () => {
 })
 
 describe('facts of a machine', () => {
-  const families: Family[] = [
+  const families: PublishedFamily[] = [
     { kind: 'chimera', m: 3, n: 4, t: 2 },
     { kind: 'pegasus', m: 3, trimmed: true },
     { kind: 'pegasus', m: 3, trimmed: false },
     { kind: 'zephyr', m: 2, t: 4 },
     { kind: 'king', width: 5, height: 7 },
     { kind: 'square', width: 4, height: 6 },
+    { kind: 'cubic', width: 4, height: 3, depth: 5 },
+    { kind: 'heavy-hex', rows: 3, columns: 4 },
   ]
 
   it.each(families)('count qubits and couplers as the construction has them: $kind', (family) => {

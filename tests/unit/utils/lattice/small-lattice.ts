@@ -1,10 +1,10 @@
 import { buildFabric } from '../../../../shared/engine/machine/build-fabric'
-import type { Family } from '../../../../shared/engine/machine/fabric'
+import type { PublishedFamily } from '../../../../shared/engine/machine/fabric'
 import { couplerPlace } from '../../../../shared/engine/machine/layout'
 import type { ChainLayer, LatticeData } from '../../../../utils/lattice/types'
 
 /** A whole machine of a family, as the lattice drawing gets it. */
-export function latticeOf(family: Family): LatticeData {
+export function latticeOf(family: PublishedFamily): LatticeData {
   const fabric = buildFabric(family)
   const { ends } = fabric.graph
   const places = new Float32Array(2 * ends.length)

@@ -4,10 +4,10 @@ import type { EmbeddingTask } from '../../../../../shared/engine/embedding/task'
 import type { Graph } from '../../../../../shared/engine/graph/graph'
 import { keepEdges } from '../../../../../shared/engine/graph/subgraph'
 import { buildFabric } from '../../../../../shared/engine/machine/build-fabric'
-import type { Family } from '../../../../../shared/engine/machine/fabric'
+import type { PublishedFamily } from '../../../../../shared/engine/machine/fabric'
 import type { Random } from '../../../../../shared/engine/random'
 
-export const SMALL_FAMILIES: readonly Family[] = [
+export const SMALL_FAMILIES: readonly PublishedFamily[] = [
   { kind: 'chimera', m: 4, n: 3, t: 4 },
   { kind: 'pegasus', m: 3, trimmed: true },
   { kind: 'pegasus', m: 3, trimmed: false },
@@ -16,7 +16,7 @@ export const SMALL_FAMILIES: readonly Family[] = [
 ]
 
 /** A problem on a machine of the family from which a random share of qubits and couplers is missing. */
-export function taskOn(family: Family, problem: Graph, missing: number, random: Random): EmbeddingTask {
+export function taskOn(family: PublishedFamily, problem: Graph, missing: number, random: Random): EmbeddingTask {
   const { graph, segments } = buildFabric(family)
   const usable = Uint8Array.from({ length: graph.order }, () => (random.float() < missing ? 0 : 1))
   const keep = Uint8Array.from({ length: graph.ends.length / 2 }, (_, k) => {

@@ -7,13 +7,13 @@ import type { Graph } from '../../../../../shared/engine/graph/graph'
 import { graphFromEdges } from '../../../../../shared/engine/graph/build'
 import { buildFabric } from '../../../../../shared/engine/machine/build-fabric'
 import { applyDefects } from '../../../../../shared/engine/machine/defects'
-import type { Family } from '../../../../../shared/engine/machine/fabric'
+import type { PublishedFamily } from '../../../../../shared/engine/machine/fabric'
 import { createRandom } from '../../../../../shared/engine/random'
 
 export type MachineOnly = Omit<EmbeddingTask, 'problem' | 'start'>
 
 /** A family's machine without a random share of its qubits and of its couplers. */
-export function machineOf(family: Family, qubitShare = 0, couplerShare = 0, seed = 1): MachineOnly {
+export function machineOf(family: PublishedFamily, qubitShare = 0, couplerShare = 0, seed = 1): MachineOnly {
   const fabric = buildFabric(family)
   const random = createRandom(seed, 77)
   const qubits = [...fabric.ids].filter(() => random.float() < qubitShare)

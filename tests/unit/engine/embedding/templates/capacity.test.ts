@@ -2,12 +2,12 @@ import { describe, expect, it } from 'vitest'
 import { largestCompleteGraph } from '../../../../../shared/engine/embedding/templates/capacity'
 import { qualityOf } from '../../../../../shared/engine/embedding/objective'
 import { verifyEmbedding } from '../../../../../shared/engine/embedding/verify'
-import type { Family } from '../../../../../shared/engine/machine/fabric'
+import type { PublishedFamily } from '../../../../../shared/engine/machine/fabric'
 import { completeGraph } from '../../../../fixtures/graphs'
 import { machineOf } from './attempts'
 
 describe('largestCompleteGraph', () => {
-  const machines: readonly [Family, number, number][] = [
+  const machines: readonly [PublishedFamily, number, number][] = [
     [{ kind: 'chimera', m: 2, n: 2, t: 4 }, 0, 8],
     [{ kind: 'chimera', m: 3, n: 3, t: 4 }, 0.03, 8],
     [{ kind: 'pegasus', m: 2, trimmed: true }, 0.02, 5],

@@ -3,13 +3,13 @@ import { qualityOf } from '../../../../../shared/engine/embedding/objective'
 import { fitTemplate } from '../../../../../shared/engine/embedding/templates/fit-template'
 import { graphFromEdges } from '../../../../../shared/engine/graph/build'
 import type { Graph } from '../../../../../shared/engine/graph/graph'
-import type { Family } from '../../../../../shared/engine/machine/fabric'
+import type { PublishedFamily } from '../../../../../shared/engine/machine/fabric'
 import { createRandom } from '../../../../../shared/engine/random'
 import { completeGraph, cycleGraph, gridGraph, randomGraph, regularGraph } from '../../../../fixtures/graphs'
 import { attemptOn, bipartiteGraph, machineOf, taskOn } from './attempts'
 import type { MachineOnly } from './attempts'
 
-const SMALL: readonly Family[] = [
+const SMALL: readonly PublishedFamily[] = [
   { kind: 'chimera', m: 4, n: 5, t: 4 },
   { kind: 'pegasus', m: 3, trimmed: true },
   { kind: 'pegasus', m: 4, trimmed: false },

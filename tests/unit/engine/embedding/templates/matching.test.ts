@@ -3,7 +3,7 @@ import type { CornerWindow } from '../../../../../shared/engine/embedding/templa
 import { crosses, cutWindow } from '../../../../../shared/engine/embedding/templates/corner-window'
 import { crossingsOf } from '../../../../../shared/engine/embedding/templates/crossings'
 import { matchInOrder } from '../../../../../shared/engine/embedding/templates/matching'
-import type { Family } from '../../../../../shared/engine/machine/fabric'
+import type { PublishedFamily } from '../../../../../shared/engine/machine/fabric'
 import { createRandom } from '../../../../../shared/engine/random'
 import { machineOf } from './attempts'
 
@@ -29,7 +29,7 @@ function largest(window: CornerWindow, endT: number, endU: number, v = 0, h = 0)
   return go(v, h)
 }
 
-const FAMILIES: readonly Family[] = [
+const FAMILIES: readonly PublishedFamily[] = [
   { kind: 'chimera', m: 3, n: 4, t: 4 },
   { kind: 'pegasus', m: 3, trimmed: true },
   { kind: 'zephyr', m: 2, t: 4 },

@@ -1,6 +1,6 @@
 import { describe, expect, it } from 'vitest'
 import { buildFabric } from '../../../../../shared/engine/machine/build-fabric'
-import type { Family } from '../../../../../shared/engine/machine/fabric'
+import type { PublishedFamily } from '../../../../../shared/engine/machine/fabric'
 import type { LineSet } from '../../../../../shared/engine/machine/families/segments'
 import { buildSegments } from '../../../../../shared/engine/machine/families/segments'
 import { familyName } from '../../../../../shared/engine/machine/family'
@@ -26,7 +26,7 @@ function shouldCouple(a: Segment, b: Segment, partners: boolean): boolean {
   return partners && arePartners && Math.min(a.to, b.to) - Math.max(a.from, b.from) > 0.5
 }
 
-const FAMILIES: Family[] = [
+const FAMILIES: PublishedFamily[] = [
   { kind: 'chimera', m: 3, n: 4, t: 4 },
   { kind: 'chimera', m: 2, n: 3, t: 1 },
   { kind: 'pegasus', m: 2, trimmed: true },

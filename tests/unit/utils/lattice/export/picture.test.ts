@@ -1,6 +1,6 @@
 // @vitest-environment happy-dom
 import { afterEach, describe, expect, it, vi } from 'vitest'
-import type { Family } from '../../../../../shared/engine/machine/fabric'
+import type { PublishedFamily } from '../../../../../shared/engine/machine/fabric'
 import { pictureFileName, svgOf } from '../../../../../utils/lattice/export/files'
 import { layoutOf, PICTURE_DEFAULTS } from '../../../../../utils/lattice/export/layout'
 import type { DrawnLattice } from '../../../../../utils/lattice/export/layout'
@@ -169,13 +169,15 @@ describe('an SVG picture', () => {
 })
 
 describe('pictures of every family', () => {
-  const families: Family[] = [
+  const families: PublishedFamily[] = [
     { kind: 'chimera', m: 3, n: 3, t: 4 },
     { kind: 'pegasus', m: 3 },
     { kind: 'zephyr', m: 3, t: 4 },
     { kind: 'king', width: 6, height: 5 },
     { kind: 'square', width: 6, height: 5 },
-  ] as Family[]
+    { kind: 'cubic', width: 3, height: 3, depth: 2 },
+    { kind: 'heavy-hex', rows: 2, columns: 2 },
+  ] as PublishedFamily[]
   it.each(families.map((family) => [family.kind, family] as const))('%s', (_, family) => {
     const data = latticeOf(family)
     const [a, b] = [data.ends[0]!, data.ends[1]!]
