@@ -141,10 +141,13 @@ describe('provedInfeasible', () => {
       { kind: 'chimera', m: 3, n: 3, t: 2 },
       { kind: 'pegasus', m: 2, trimmed: true },
       { kind: 'zephyr', m: 1, t: 2 },
+      { kind: 'cubic', width: 3, height: 4, depth: 3 },
+      { kind: 'heavy-hex', rows: 2, columns: 2 },
     ]
     const fabrics = families.map(buildFabric)
     for (let round = 0; round < 2400; round++) {
-      const { graph, segments, family } = fabrics[round % fabrics.length]!
+      const family = families[round % families.length]!
+      const { graph, segments } = fabrics[round % fabrics.length]!
       const usable = usableExcept(graph.order, 0.2 * random.float(), random)
       const problem = randomMinor(graph, usable, random)
       const known = round % 4 < 2
