@@ -127,7 +127,12 @@ export function programmeBench(bench: Bench, settings: RunSheetSettings): Progra
   const input = layoutInput(bench, settings)
   const { perChain } = strengthsOf(settings.strength, bench, input)
   const { ranges } = bench.machine.sheet
-  return { result: programme({ ...input, strengths: perChain, ranges }), bounds: cutBounds(input), strengths: perChain }
+  const scale = settings.scale ?? 'fit'
+  return {
+    result: programme({ ...input, strengths: perChain, ranges, scale }),
+    bounds: cutBounds(input),
+    strengths: perChain,
+  }
 }
 
 /** The programmed values, or a refusal saying which range they leave. */
@@ -196,7 +201,8 @@ export function compareRules(bench: Bench, settings: RunSheetSettings, bounds: C
     const selected = rule === chosen.rule
     const value = (selected ? chosen.value : undefined) ?? (rule === 'manual' ? undefined : RULE_DEFAULTS[rule])
     const { perChain, summary } = strengthsOf(selected ? chosen : { rule, value }, bench, input)
-    const { programmed } = programme({ ...input, strengths: perChain, ranges: bench.machine.sheet.ranges })
+    const { ranges } = bench.machine.sheet
+    const { programmed } = programme({ ...input, strengths: perChain, ranges, scale: settings.scale ?? 'fit' })
     return {
       rule,
       title: TITLES[rule],

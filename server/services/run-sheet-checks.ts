@@ -1,6 +1,7 @@
 import { verifyEmbedding } from '../../shared/engine/embedding/verify'
 import { interactionGraph } from '../../shared/engine/problem/interaction-graph'
 import { gaugesOutsideRanges } from '../../shared/engine/programming/gauges'
+import { scheduleIssues, straightSchedule } from '../../shared/engine/programming/schedule'
 import type { Programmed } from '../../shared/engine/programming/programme'
 import type { VersionStanding } from '../../shared/schemas/problem-versions'
 import type { CheckView, RunSheetSettings, RunSheetView } from '../../shared/schemas/run-sheets'
@@ -65,12 +66,18 @@ function versionCheck({ version, current }: VersionStanding): CheckView[] {
   return [{ verdict: 'caution', what, figure: `version ${current} is current` }]
 }
 
-function annealCheck({ machine }: Bench, { annealMicroseconds }: RunSheetSettings): CheckView {
+function annealCheck({ machine }: Bench, { annealMicroseconds, schedule }: RunSheetSettings): CheckView {
   const { annealMinMicroseconds: least, annealMaxMicroseconds: most } = machine.sheet.timing
-  const figure = `${least} to ${most} µs`
-  return annealMicroseconds >= least && annealMicroseconds <= most
-    ? { verdict: 'passed', what: 'The anneal time is within the machine’s limits', figure }
-    : { verdict: 'refused', what: `${annealMicroseconds} µs is outside the machine’s limits`, figure }
+  const [issue] = scheduleIssues(schedule ?? straightSchedule(annealMicroseconds), machine.sheet.timing)
+  const what = schedule
+    ? 'The schedule is within the machine’s limits'
+    : 'The anneal time is within the machine’s limits'
+  if (!issue) return { verdict: 'passed', what, figure: `${least} to ${most} µs` }
+  return {
+    verdict: 'refused',
+    what: `The ${schedule ? 'schedule' : 'anneal time'} is outside the machine’s limits`,
+    figure: schedule ? `point ${issue.point + 1}: ${issue.message}` : issue.message,
+  }
 }
 
 function strengthCheck(bench: Bench, { strengths, bounds }: Programming): CheckView {

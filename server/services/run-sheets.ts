@@ -1,6 +1,7 @@
 import { randomUUID } from 'node:crypto'
 import type { z } from 'zod'
 import { machineTimeEstimate } from '../../shared/engine/programming/machine-time'
+import { durationOf } from '../../shared/engine/programming/schedule'
 import { pullsOf, referenceSize } from '../../shared/engine/programming/strength'
 import { DomainError } from '../../shared/errors'
 import type { Page, PageQuery } from '../../shared/schemas/common'
@@ -68,12 +69,17 @@ function estimate(bench: Bench, { gauges, reads, annealMicroseconds }: RunSheetS
   })
 }
 
+/** A schedule says itself how long an anneal takes. */
+const timed = (settings: RunSheetSettings): RunSheetSettings =>
+  settings.schedule ? { ...settings, annealMicroseconds: durationOf(settings.schedule) } : settings
+
 export async function createRunSheet(
   app: App,
   actor: Actor,
   input: z.infer<typeof createRunSheetSchema>,
 ): Promise<{ id: string; number: number }> {
-  const { embeddingId, name, ...settings } = input
+  const { embeddingId, name, ...asked } = input
+  const settings = timed(asked)
   const bench = await loadBench(app, await embeddingRow(app, actor, embeddingId))
   requireProgrammed(programmeBench(bench, settings))
   const id = randomUUID()
@@ -104,7 +110,7 @@ export async function editRunSheet(app: App, actor: Actor, id: string, edit: Edi
   if (!EDITABLE_STATES.includes(row.state)) throw frozen(row)
   const { name, ...changes } = edit
   const given = Object.fromEntries(Object.entries(changes).filter(([, value]) => value !== undefined))
-  const settings: RunSheetSettings = { ...row.settings, ...given }
+  const settings = timed({ ...row.settings, ...given })
   const bench = await benchOf(app, actor, row)
   requireProgrammed(programmeBench(bench, settings))
   const saved = await updateRunSheet(app.db, id, EDITABLE_STATES, {

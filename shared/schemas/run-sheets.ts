@@ -2,6 +2,7 @@ import { z } from 'zod'
 import type { RUN_SHEET_STATES } from '../library'
 import type { HistogramBin, Person } from './common'
 import type { VersionStanding } from './problem-versions'
+import { courseIssues } from '../engine/programming/schedule'
 import { idSchema, nameSchema, seedSchema, textSchema } from './common'
 
 const positive = z.number().positive().max(1e9)
@@ -17,6 +18,16 @@ export const strengthSchema = z.object({
 })
 export type Strength = z.infer<typeof strengthSchema>
 
+/** s over time, from (0, 0) to (T, 1); whether the machine takes it is for the checks to say. */
+export const schedulePointsSchema = z
+  .array(z.object({ microseconds: z.number().min(0).max(1e6), s: z.number().min(0).max(1) }))
+  .min(2, 'a schedule has at least two points')
+  .max(1000, 'a schedule has at most 1000 points')
+  .superRefine((points, context) => {
+    for (const { point, message } of courseIssues(points))
+      context.addIssue({ code: 'custom', path: [point], message: `point ${point + 1}: ${message}` })
+  })
+
 const settings = {
   strength: strengthSchema.default({ rule: 'rms' }),
   fieldSplit: z.enum(['even', 'external coupling']).default('even'),
@@ -24,7 +35,12 @@ const settings = {
   chainCouplers: z.enum(['all', 'spanning tree']).default('all'),
   gauges: z.number().int().min(1).max(1000).default(1),
   reads: z.number().int().min(1).max(100_000).default(1000),
+  /** The duration of the schedule where one is given. */
   annealMicroseconds: z.number().positive().max(1e6).default(20),
+  /** Null: the straight ramp. */
+  schedule: schedulePointsSchema.nullable().default(null),
+  /** The factor from Ising coefficients to programmed values; null: the greatest up to 1 that fits the ranges. */
+  scale: z.number().positive().max(1e9).nullable().default(null),
   seed: seedSchema.default(1),
 }
 export const runSheetSettingsSchema = z.object(settings)
@@ -41,6 +57,8 @@ export const editRunSheetSchema = z.object({
   gauges: settings.gauges.unwrap().optional(),
   reads: settings.reads.unwrap().optional(),
   annealMicroseconds: settings.annealMicroseconds.unwrap().optional(),
+  schedule: settings.schedule.unwrap().optional(),
+  scale: settings.scale.unwrap().optional(),
   seed: seedSchema.optional(),
 })
 export type EditRunSheet = z.infer<typeof editRunSheetSchema>

@@ -175,5 +175,24 @@ export const MIGRATIONS = [
       "\nUPDATE \"calibrations\" SET \"sheet\" = jsonb_set(\"sheet\", '{timing}', \"sheet\"->'timing' || '{\"slopeMaxPerMicrosecond\":null,\"schedulePointsMax\":null}') || '{\"energyTable\":null,\"price\":null}';",
       "\nALTER TABLE \"calibrations\" DROP COLUMN \"broke\";"
     ]
+  },
+  {
+    "tag": "0005_scans",
+    "folderMillis": 1796172341310,
+    "hash": "1503c6f21c9b4f427ba7eb7b8f77606ce6b614d9eea011b7e4e6cb5ebd8acabf",
+    "bps": true,
+    "sql": [
+      "CREATE TABLE \"scans\" (\n\t\"id\" text PRIMARY KEY NOT NULL,\n\t\"workspace_id\" text NOT NULL,\n\t\"run_sheet_id\" text NOT NULL,\n\t\"embedding_id\" text NOT NULL,\n\t\"number\" integer NOT NULL,\n\t\"status\" text NOT NULL,\n\t\"made\" jsonb NOT NULL,\n\t\"settings\" jsonb NOT NULL,\n\t\"points\" jsonb DEFAULT '[]'::jsonb NOT NULL,\n\t\"reason\" text,\n\t\"seconds\" double precision,\n\t\"version\" text NOT NULL,\n\t\"created_by\" text NOT NULL,\n\t\"created_at\" timestamp with time zone NOT NULL,\n\t\"deleted_at\" timestamp with time zone,\n\t\"deleted_with\" text\n);\n",
+      "\nALTER TABLE \"run_sheets\" ADD COLUMN \"made_from_id\" text;",
+      "\nALTER TABLE \"scans\" ADD CONSTRAINT \"scans_workspace_id_workspaces_id_fk\" FOREIGN KEY (\"workspace_id\") REFERENCES \"public\".\"workspaces\"(\"id\") ON DELETE cascade ON UPDATE no action;",
+      "\nALTER TABLE \"scans\" ADD CONSTRAINT \"scans_run_sheet_id_run_sheets_id_fk\" FOREIGN KEY (\"run_sheet_id\") REFERENCES \"public\".\"run_sheets\"(\"id\") ON DELETE cascade ON UPDATE no action;",
+      "\nALTER TABLE \"scans\" ADD CONSTRAINT \"scans_embedding_id_embeddings_id_fk\" FOREIGN KEY (\"embedding_id\") REFERENCES \"public\".\"embeddings\"(\"id\") ON DELETE cascade ON UPDATE no action;",
+      "\nALTER TABLE \"scans\" ADD CONSTRAINT \"scans_created_by_users_id_fk\" FOREIGN KEY (\"created_by\") REFERENCES \"public\".\"users\"(\"id\") ON DELETE no action ON UPDATE no action;",
+      "\nCREATE UNIQUE INDEX \"scans_run_sheet_id_number_index\" ON \"scans\" USING btree (\"run_sheet_id\",\"number\");",
+      "\nCREATE INDEX \"scans_embedding_id_index\" ON \"scans\" USING btree (\"embedding_id\");",
+      "\nALTER TABLE \"run_sheets\" ADD CONSTRAINT \"run_sheets_made_from_id_run_sheets_id_fk\" FOREIGN KEY (\"made_from_id\") REFERENCES \"public\".\"run_sheets\"(\"id\") ON DELETE set null ON UPDATE no action;",
+      "\nUPDATE \"run_sheets\" SET \"settings\" = '{\"scale\":null,\"schedule\":null}'::jsonb || \"settings\";",
+      "\nUPDATE \"returns\" SET \"settings\" = '{\"scale\":null,\"schedule\":null}'::jsonb || \"settings\";\n"
+    ]
   }
 ]

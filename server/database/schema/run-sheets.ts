@@ -1,4 +1,6 @@
+import type { AnyPgColumn } from 'drizzle-orm/pg-core'
 import { doublePrecision, index, integer, jsonb, pgTable, text, uniqueIndex } from 'drizzle-orm/pg-core'
+import type { ScanPoint, ScanRequest } from '../../../shared/schemas/scans'
 import type { RunSheetSettings, RunSheetState } from '../../../shared/schemas/run-sheets'
 import { blobs } from './blobs'
 import { createdAt, id, moment } from './columns'
@@ -23,6 +25,8 @@ export const runSheets = pgTable(
     machineTimeMilliseconds: doublePrecision().notNull(),
     preparedBy: createdBy(),
     reviewedBy: text().references(() => users.id),
+    /** The run sheet that it was copied from. */
+    madeFromId: text().references((): AnyPgColumn => runSheets.id, { onDelete: 'set null' }),
     createdAt: createdAt(),
     changedAt: moment().notNull(),
     ...deletion(),
@@ -72,6 +76,37 @@ export const returns = pgTable(
     readsWithBreak: integer(),
     /** Best majority-decoded energy in the problem's own sense. */
     best: doublePrecision(),
+    reason: text(),
+    seconds: doublePrecision(),
+    version: text().notNull(),
+    createdBy: createdBy(),
+    createdAt: createdAt(),
+    ...deletion(),
+  },
+  (table) => [uniqueIndex().on(table.runSheetId, table.number), index().on(table.embeddingId)],
+)
+
+/** Rehearsals over a range of chain strengths, to see from where on chains hold and answers get better. */
+export const scans = pgTable(
+  'scans',
+  {
+    id: id(),
+    workspaceId: workspaceId(),
+    runSheetId: text()
+      .notNull()
+      .references(() => runSheets.id, { onDelete: 'cascade' }),
+    /** The run sheet's embedding when the scan was made. */
+    embeddingId: text()
+      .notNull()
+      .references(() => embeddings.id, { onDelete: 'cascade' }),
+    number: integer().notNull(),
+    status: text().$type<'running' | 'ready' | 'failed' | 'cancelled'>().notNull(),
+    /** Strengths, reads and what else was asked for. */
+    made: jsonb().$type<ScanRequest>().notNull(),
+    /** The run sheet's settings when the scan was made; only their strength varies. */
+    settings: jsonb().$type<RunSheetSettings>().notNull(),
+    /** What was measured at each strength; as far as it came. */
+    points: jsonb().$type<ScanPoint[]>().notNull().default([]),
     reason: text(),
     seconds: doublePrecision(),
     version: text().notNull(),

@@ -38,7 +38,7 @@ export const durationOf = (schedule: Schedule): number => schedule.at(-1)?.micro
 export const isStraight = (schedule: Schedule): boolean => schedule.length === 2
 
 /** What is wrong with the course by itself, whatever the machine: ends, order, values. */
-function courseIssues(schedule: Schedule): ScheduleIssue[] {
+export function courseIssues(schedule: Schedule): ScheduleIssue[] {
   const last = schedule.length - 1
   const issues: ScheduleIssue[] = []
   schedule.forEach(({ microseconds, s }, point) => {

@@ -136,6 +136,8 @@ const settings: RunSheetSettings = {
   gauges: 4,
   reads: 250,
   annealMicroseconds: 72,
+  schedule: null,
+  scale: null,
   seed: 1,
 }
 const timing = { programmingMicroseconds: 14_200, readoutMicroseconds: 123, delayMicroseconds: 21 }
