@@ -17,6 +17,8 @@ export interface JobOutcome {
   status: 'done' | 'cancelled'
   message: string
   save(tx: Db): Promise<void>
+  /** Works out anew what `save` rests on, after it was Overtaken. */
+  again?: () => Promise<JobOutcome>
 }
 
 /** One kind of background work. */

@@ -12,6 +12,8 @@ import {
   silentJobs,
 } from '../database/repositories/jobs'
 import type { JobLogLine, JobView } from '../../shared/schemas/jobs'
+import { Overtaken } from '../services/overtaken'
+import type { JobOutcome } from './kind'
 import { JOB_KINDS } from './kinds'
 
 /** A heartbeat and a look at the cancel flag this often. */
@@ -82,11 +84,7 @@ async function execute(app: App, job: JobRow, worker: string, controller: AbortC
     await heart.stop()
     if (controller.signal.reason === STOPPING) return await handBackJob(app.db, job.id, worker)
     note(outcome.message)
-    await app.db.transaction(async (tx) => {
-      if (!(await finishJob(tx, job.id, worker, { ...outcome, log }, app.now())))
-        throw new Error(`job ${job.id} was taken over by another worker`)
-      await outcome.save(tx)
-    })
+    await saveOutcome(app, job, worker, outcome, log)
   } catch (error) {
     await heart.stop()
     if (controller.signal.reason === STOPPING) return await handBackJob(app.db, job.id, worker).catch(report)
@@ -98,6 +96,20 @@ async function execute(app: App, job: JobRow, worker: string, controller: AbortC
           await kind.abandon(tx, job, 'failed', message)
       })
       .catch(report)
+  }
+}
+
+/** Ends the job and stores its result, in one transaction. */
+async function saveOutcome(app: App, job: JobRow, worker: string, outcome: JobOutcome, log: JobLogLine[]) {
+  try {
+    await app.db.transaction(async (tx) => {
+      if (!(await finishJob(tx, job.id, worker, { ...outcome, log }, app.now())))
+        throw new Error(`job ${job.id} was taken over by another worker`)
+      await outcome.save(tx)
+    })
+  } catch (error) {
+    if (!(error instanceof Overtaken) || !outcome.again) throw error
+    await saveOutcome(app, job, worker, await outcome.again(), log)
   }
 }
 

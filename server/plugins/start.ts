@@ -5,6 +5,9 @@ import { dirname, join } from 'node:path'
 import { DEMO_ACCOUNTS, DEMO_PASSWORD } from '../../shared/demo-accounts'
 import { seedDemo } from '../services/demo/seed'
 import { setupCode } from '../services/people'
+import { openPost } from '../mail/post'
+import type { MailSettings } from '../mail/settings'
+import { mailSettingsOf } from '../mail/settings'
 import type { StartedApp } from '../start'
 import { dataFolderOf, startApp } from '../start'
 
@@ -35,11 +38,25 @@ function stop(message: string): never {
   process.exit(1)
 }
 
-/** Says where to go, once everything is open and, in the demo, filled. */
-function announce(demo: boolean): void {
+/** Where this process is reached from the same machine. */
+function ownAddress(): string {
   const { NITRO_HOST, HOST, NITRO_PORT, PORT } = process.env
   const host = NITRO_HOST || HOST || 'localhost'
-  console.log(`\nEspalier is ready: http://${host === '0.0.0.0' ? 'localhost' : host}:${NITRO_PORT || PORT || 3000}`)
+  const name = ['0.0.0.0', '::'].includes(host) ? 'localhost' : host.includes(':') ? `[${host}]` : host
+  return `http://${name}:${NITRO_PORT || PORT || 3000}`
+}
+
+function readMailSettings(): MailSettings {
+  try {
+    return mailSettingsOf(process.env, ownAddress())
+  } catch (error) {
+    return stop((error as Error).message)
+  }
+}
+
+/** Says where to go, once everything is open and, in the demo, filled. */
+function announce(demo: boolean): void {
+  console.log(`\nEspalier is ready: ${ownAddress()}`)
   if (!demo) return
   console.log(`Demo accounts, password ${DEMO_PASSWORD}:`)
   for (const { email, roles } of DEMO_ACCOUNTS) console.log(`  ${email.padEnd(32)}${roles.join(', ')}`)
@@ -50,6 +67,7 @@ async function boot(): Promise<StartedApp> {
   const demo = process.env.DEMO === 'true'
   const dataFolder = dataFolderOf(process.env)
   prepareSessions(demo, dataFolder)
+  const mail = readMailSettings()
   const started = await startApp({
     databaseUrl: process.env.DATABASE_URL || undefined,
     dataFolder,
@@ -58,13 +76,21 @@ async function boot(): Promise<StartedApp> {
     concurrency: process.env.JOBS === undefined ? availableParallelism() : Number(process.env.JOBS),
   })
   if (demo) await seedDemo(started.app, PASSWORDS)
+  // After the demo is filled: what is written to its invented people is kept, not sent.
+  const post = await openPost(started.app, mail)
   const code = await setupCode(started.app)
   announce(demo)
   if (code)
     console.log(
       `\nNo account exists yet. Open /setup and create the owner's account with this one-time code: ${code}\n`,
     )
-  return started
+  return {
+    ...started,
+    async close() {
+      await post.stop()
+      await started.close()
+    },
+  }
 }
 
 /** Without this the process would stay, serving nothing, when another program has the port. */

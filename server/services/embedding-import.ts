@@ -9,9 +9,12 @@ import type { Actor, App } from '../app'
 import { nextNumber } from '../database/repositories/counters'
 import { insertEmbedding } from '../database/repositories/embeddings'
 import { changedChains, packEmbedding } from './chains'
+import { storeVerdict } from './broken-embeddings'
+import { damageOfChains } from './embedding-damage'
 import { storedStats } from './embedding-stats'
 import type { Subject } from './embedding-subject'
 import { carriedChains, embeddingRow, identityOf, subjectOf } from './embedding-subject'
+import { untilSaved } from './overtaken'
 
 /** Saves chains given by hand, by variable label, after the checker has passed them. */
 export async function importEmbedding(app: App, actor: Actor, input: ImportEmbedding): Promise<{ id: string }> {
@@ -20,29 +23,35 @@ export async function importEmbedding(app: App, actor: Actor, input: ImportEmbed
   const embedding = verifiedChains(subject, input.chains)
   const { bytes, fingerprint } = packEmbedding(embedding)
   const chainsBlobId = await app.blobs.write(bytes)
-  const id = randomUUID()
-  const method = before ? 'edited' : 'imported'
-  await app.db.transaction(async (tx) => {
-    await app.blobs.adopt(tx, chainsBlobId)
-    await insertEmbedding(tx, {
-      id,
-      ...identityOf(app, actor, subject),
-      number: await nextNumber(tx, subject.problem.id, 'embedding'),
-      status: 'found',
-      method,
-      methodUsed: method,
-      startId: input.editedFrom,
-      changedChains: before && changedChains(before, embedding),
-      seed: 0,
-      tries: 0,
-      timeLimitSeconds: 0,
-      seconds: 0,
-      chainsBlobId,
-      fingerprint,
-      stats: storedStats(embeddingStats(embedding, subject.graph, subject.machine.graph)),
-    })
-  })
-  return { id }
+  const method: 'edited' | 'imported' = before ? 'edited' : 'imported'
+  const row = {
+    id: randomUUID(),
+    ...identityOf(app, actor, subject),
+    status: 'found' as const,
+    method,
+    methodUsed: method,
+    startId: input.editedFrom,
+    changedChains: before && changedChains(before, embedding),
+    seed: 0,
+    tries: 0,
+    timeLimitSeconds: 0,
+    seconds: 0,
+    chainsBlobId,
+    fingerprint,
+    stats: storedStats(embeddingStats(embedding, subject.graph, subject.machine.graph)),
+  }
+  await untilSaved(
+    () => damageOfChains(app, embedding, subject.graph, subject.machine),
+    ({ inForce, damage }) =>
+      app.db.transaction(async (tx) => {
+        await app.blobs.adopt(tx, chainsBlobId)
+        const number = await nextNumber(tx, subject.problem.id, 'embedding')
+        const saved = await insertEmbedding(tx, { ...row, number })
+        const made = { embedding: saved, problem: subject.problem.name }
+        await storeVerdict(app, tx, made, { machine: inForce.machine, damage })
+      }),
+  )
+  return { id: row.id }
 }
 
 /** @throws DomainError naming each broken rule */

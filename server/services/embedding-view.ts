@@ -1,47 +1,46 @@
 import type { Embedding } from '../../shared/engine/embedding/embedding'
-import { chainCount } from '../../shared/engine/embedding/embedding'
+import { chainCount, chainOf } from '../../shared/engine/embedding/embedding'
 import { familyName } from '../../shared/engine/machine/family'
 import type { EmbeddingView, StartView } from '../../shared/schemas/embeddings'
 import type { Actor, App } from '../app'
 import type { EmbeddingRow } from '../database/repositories/embeddings'
-import { findNumbers } from '../database/repositories/embeddings'
+import { findEmbeddingOfJob, findNumbers } from '../database/repositories/embeddings'
 import type { JobRow } from '../database/repositories/jobs'
 import { findJobOfSubject } from '../database/repositories/jobs'
 import { personOf } from '../database/repositories/problems'
 import { runSheetsOfEmbeddings } from '../database/repositories/run-sheets'
+import { brokenView } from './broken-view'
 import { namedChains, unpackChains } from './chains'
 import { statsView } from './embedding-stats'
 import { standingOf } from './problem-difference'
 import type { Subject } from './embedding-subject'
-import { embeddingRow, subjectOf } from './embedding-subject'
-import type { CalibratedMachine } from './machine-graphs'
-import { calibratedMachine } from './machine-graphs'
+import { carriedChains, embeddingRow, subjectOf } from './embedding-subject'
+import { machineRow } from './machine-graphs'
 
-/** True when the embedding still holds at the calibration in force; null when it has no chains. */
-async function holdsNow(
-  app: App,
-  row: EmbeddingRow,
-  subject: Subject,
-  chains: Embedding,
-  current: CalibratedMachine,
-): Promise<boolean | null> {
-  if (row.status !== 'found') return null
-  if (current.calibration.number === row.calibration) return true
-  const { violations } = await app.compute.run('checkEmbedding', {
-    task: { problem: subject.graph, machine: current.graph, usable: current.usable },
-    embedding: chains,
-    labels: subject.labels,
-    ids: current.fabric.ids,
-  })
-  return violations.length === 0
-}
+/** Most labels of changed chains that are told. */
+const CHANGED_TOLD = 200
 
 /** What the embedding was made from; null also where that is deleted by now. */
-async function startView(app: App, row: EmbeddingRow): Promise<StartView | null> {
-  const { method, startId, frozen, changedChains } = row
+async function startView(app: App, row: EmbeddingRow, subject: Subject, chains: Embedding): Promise<StartView | null> {
+  const { method, startId, frozen, changedChains, replaces } = row
   const numbers = startId ? await findNumbers(app.db, startId) : undefined
   if (!numbers || (method !== 'repair' && method !== 'shorten' && method !== 'edited')) return null
-  return { ...numbers, work: method, frozen, changed: changedChains }
+  const start = (await findEmbeddingOfJob(app.db, numbers.id))!
+  const found = row.status === 'found'
+  return {
+    ...numbers,
+    work: method,
+    frozen,
+    changed: changedChains,
+    changedChains: found ? changedLabels(await carriedChains(app, subject, start), chains, subject.labels) : [],
+    before: start.stats && { longestChain: start.stats.chainLength.max, qubitsUsed: start.stats.qubitsUsed },
+    replaces,
+  }
+}
+
+function changedLabels(before: Embedding, after: Embedding, labels: readonly string[]): string[] {
+  const changed = labels.filter((_, i) => String(chainOf(before, i)) !== String(chainOf(after, i)))
+  return changed.slice(0, CHANGED_TOLD)
 }
 
 /** How many chains there are of each length. */
@@ -105,13 +104,14 @@ export async function embeddingView(app: App, actor: Actor, id: string): Promise
   const row = await embeddingRow(app, actor, id)
   const subject = await subjectOf(app, actor, row)
   const { labels, machine } = subject
-  const current = await calibratedMachine(app, row, row.machineId)
+  const current = await machineRow(app, row, row.machineId)
   const chains = row.chainsBlobId ? unpackChains(await app.blobs.read(row.chainsBlobId)) : NO_CHAINS
   const named = row.chainsBlobId ? namedChains(chains, labels, machine.fabric.ids) : {}
   const found = row.status === 'found'
   const stats = statsView(row.stats, machine.calibration.qubits)
   const sheets = await runSheetsOfEmbeddings(app.db, [id])
   const job = await findJobOfSubject(app.db, id)
+  const broken = await brokenView(app, row)
   return {
     id,
     number: row.number,
@@ -119,11 +119,12 @@ export async function embeddingView(app: App, actor: Actor, id: string): Promise
     jobId: job?.id ?? null,
     ...about(subject),
     ofVersion: await standingOf(app, subject.problem),
-    calibrationInForce: current.calibration.number,
-    holdsAtCurrentCalibration: await holdsNow(app, row, subject, chains, current),
+    calibrationInForce: current.calibration,
+    holdsAtCurrentCalibration: found ? broken === null : null,
+    broken,
     ...making(row),
     triesPlanned: triesPlanned(row, job),
-    start: await startView(app, row),
+    start: await startView(app, row, subject, chains),
     chains: found ? named : {},
     stats: stats && { ...stats, lengthHistogram: lengthHistogram(chains) },
     valid: found,

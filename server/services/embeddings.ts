@@ -5,6 +5,7 @@ import type { DeletionView } from '../../shared/schemas/deletions'
 import type { CreateEmbedding } from '../../shared/schemas/embeddings'
 import { EDITABLE_STATES } from '../../shared/schemas/run-sheets'
 import type { Actor, App } from '../app'
+import type { Db } from '../database/client'
 import { nextNumber } from '../database/repositories/counters'
 import { insertEmbedding, markChosen } from '../database/repositories/embeddings'
 import { insertJob } from '../database/repositories/jobs'
@@ -13,19 +14,32 @@ import { deleteFor } from './deletions'
 import { startOf } from './embedding-start'
 import { embeddingRow, identityOf, subjectOf, taskOf } from './embedding-subject'
 
-/** Queues the making of an embedding. Refused at once where a proved bound rules every embedding out. */
+/** What a repair asks for beside what a person may. */
+interface InPlaceOf {
+  /** Of the embedding that is repaired, current or not. */
+  problemVersion: number
+  /** Refuses by an error, in the transaction that stores the new embedding. */
+  guard: (tx: Db) => Promise<void>
+}
+
+/**
+ * Queues the making of an embedding. Refused at once where a proved bound rules every embedding out.
+ * @param inPlace once found, it takes the place of the embedding that it begins from
+ */
 export async function startEmbedding(
   app: App,
   actor: Actor,
   input: CreateEmbedding,
+  inPlace?: InPlaceOf,
 ): Promise<{ id: string; jobId: string }> {
-  const subject = await subjectOf(app, actor, input)
+  const subject = await subjectOf(app, actor, { ...input, problemVersion: inPlace?.problemVersion })
   await requireFeasible(app, taskOf(subject, null))
   const { seed, tries, timeLimitSeconds, objective, target, start } = input
   if (start) await startOf(app, actor, subject, start)
   const id = randomUUID()
   const jobId = randomUUID()
   await app.db.transaction(async (tx) => {
+    await inPlace?.guard(tx)
     await insertEmbedding(tx, {
       id,
       ...identityOf(app, actor, subject),
@@ -39,6 +53,7 @@ export async function startEmbedding(
       target: { longestChain: target.longestChain ?? null, totalQubits: target.totalQubits ?? null },
       startId: start?.embeddingId,
       frozen: start?.frozen,
+      replaces: inPlace !== undefined,
     })
     await insertJob(
       tx,

@@ -1,17 +1,14 @@
 import { randomUUID } from 'node:crypto'
-import { verifyEmbedding } from '../../shared/engine/embedding/verify'
 import { degreeOf, sizeOf } from '../../shared/engine/graph/graph'
 import { applyDefects, defectIssues, normaliseDefects } from '../../shared/engine/machine/defects'
 import type { Fabric, WorkingGraph } from '../../shared/engine/machine/fabric'
 import { couplerCount, familyName, familyProblems, qubitCount } from '../../shared/engine/machine/family'
-import { interactionGraph } from '../../shared/engine/problem/interaction-graph'
 import { DomainError } from '../../shared/errors'
 import type { Page, PageQuery } from '../../shared/schemas/common'
 import type {
   Calibrate,
   CalibrationItem,
   CalibrationSaved,
-  EmbeddingDamage,
   CreateMachine,
   MachineItem,
   MachineSheet,
@@ -19,14 +16,11 @@ import type {
 } from '../../shared/schemas/machines'
 import type { Actor, App } from '../app'
 import type { Db } from '../database/client'
-import type { EmbeddingRow } from '../database/repositories/embeddings'
-import { foundEmbeddingsOn } from '../database/repositories/embeddings'
 import type { MachineRow } from '../database/repositories/machines'
 import {
   advanceCalibration,
   countEmbeddingsOn,
   findCalibration,
-  insertBrokenEmbeddings,
   insertCalibration,
   listBrokenEmbeddings,
   insertMachine,
@@ -35,12 +29,9 @@ import {
   machineNameTaken,
 } from '../database/repositories/machines'
 import { pageOf, positionOf } from '../database/repositories/pages'
-import { findReferredProblem } from '../database/repositories/problems'
-import { runSheetsOfEmbeddings } from '../database/repositories/run-sheets'
-import { unpackChains } from './chains'
-import type { CalibratedMachine } from './machine-graphs'
+import { CalibrationReview, tellBroken } from './broken-embeddings'
 import { calibratedMachine, fabricOf } from './machine-graphs'
-import { problemData } from './problems'
+import { untilSaved } from './overtaken'
 
 /** Checks a defect list against the family and brings it into order. @throws DomainError naming each unknown part */
 function checkedSheet(fabric: Fabric, sheet: MachineSheet): MachineSheet {
@@ -111,7 +102,10 @@ export async function createMachine(app: App, actor: Actor, input: CreateMachine
   })
 }
 
-/** Saves a changed sheet as the next calibration, and answers which embeddings and run sheets it breaks. */
+/**
+ * Saves a changed sheet as the next calibration, answers which embeddings and run sheets it breaks, and tells those who
+ * made them. Embeddings found while it is worked out are judged too before anything is saved.
+ */
 export async function calibrateMachine(
   app: App,
   actor: Actor,
@@ -123,66 +117,30 @@ export async function calibrateMachine(
   const sheet = checkedSheet(before.fabric, { ...before.sheet, ...given })
   const working = applyDefects(before.fabric, sheet.defects)
   const number = before.machine.calibration + 1
-  const broke = await embeddingsBroken(app, before, working)
-  const figures = await app.db.transaction(async (tx) => {
-    if (!(await advanceCalibration(tx, id, number - 1, app.now())))
-      throw new DomainError(
-        'wrong state',
-        'calibration.raced',
-        'Somebody saved another calibration meanwhile. Reload the page and apply your change to it.',
-      )
-    const figures = await saveCalibration(app, tx, actor, { machineId: id, number, sheet, working })
-    await insertBrokenEmbeddings(
-      tx,
-      broke.map(({ id: embeddingId, damage }) => ({ machineId: id, calibration: number, embeddingId, damage })),
-    )
-    return figures
-  })
-  const sheets = await runSheetsOfEmbeddings(
-    app.db,
-    broke.map(({ id: embeddingId }) => embeddingId),
+  const review = new CalibrationReview(app, id, working, before.fabric.ids)
+  const { figures, broken } = await untilSaved(
+    () => review.judgeAll(),
+    () =>
+      app.db.transaction(async (tx) => {
+        if (!(await advanceCalibration(tx, id, number - 1, app.now())))
+          throw new DomainError(
+            'wrong state',
+            'calibration.raced',
+            'Somebody saved another calibration meanwhile. Reload the page and apply your change to it.',
+          )
+        const figures = await saveCalibration(app, tx, actor, { machineId: id, number, sheet, working })
+        const broken = await review.store(tx, number)
+        await tellBroken(app, tx, before.machine, number, broken)
+        return { figures, broken }
+      }),
   )
-  const open = sheets.filter(({ state }) => state !== 'returned' && state !== 'closed')
   return {
     calibration: number,
     ...figures,
     invalidated: {
-      embeddings: broke.map(({ damage: _, ...embedding }) => embedding),
-      runSheets: open.map((row) => ({ id: row.id, number: row.number })),
+      embeddings: broken.map(({ embedding, problem }) => ({ id: embedding.id, number: embedding.number, problem })),
+      runSheets: broken.flatMap(({ runSheets }) => runSheets.map((row) => ({ id: row.id, number: row.number }))),
     },
-  }
-}
-
-/** Embeddings that hold on the machine as it was and no longer on the changed one. */
-async function embeddingsBroken(app: App, before: CalibratedMachine, working: WorkingGraph) {
-  const broken: (CalibrationSaved['invalidated']['embeddings'][number] & { damage: EmbeddingDamage })[] = []
-  for (const { embedding, problem } of await foundEmbeddingsOn(app.db, before.machine.id)) {
-    if ((await damageOn(app, embedding, before, before.fabric)) !== null) continue
-    const damage = await damageOn(app, embedding, working, before.fabric)
-    if (damage) broken.push({ id: embedding.id, number: embedding.number, problem, damage })
-  }
-  return broken
-}
-
-/** What of an embedding a working graph does not carry; null where it holds. */
-async function damageOn(
-  app: App,
-  embedding: EmbeddingRow,
-  working: WorkingGraph,
-  { ids }: Fabric,
-): Promise<EmbeddingDamage | null> {
-  const problem = await findReferredProblem(app.db, embedding.problemId, embedding.problemVersion)
-  if (!embedding.chainsBlobId || !problem) return null
-  const graph = interactionGraph((await problemData(app, problem)).problem)
-  const chains = unpackChains(await app.blobs.read(embedding.chainsBlobId))
-  const violations = verifyEmbedding(graph, working.graph, working.usable, chains)
-  if (violations.length === 0) return null
-  const lost = Array.from(chains.qubits).filter((q) => working.usable[q] === 0)
-  return {
-    chains: new Set(violations.flatMap(({ variables }) => variables)).size,
-    ofChains: graph.order,
-    qubitsLost: lost.map((q) => ids[q]!).sort((a, b) => a - b),
-    couplersLost: [],
   }
 }
 
@@ -239,6 +197,6 @@ async function calibrationItems(app: App, machine: MachineRow): Promise<Calibrat
     savedAt: calibration.createdAt.toISOString(),
     broke: broken
       .filter(({ broken }) => broken.calibration === calibration.number)
-      .map(({ embedding, problem }) => ({ id: embedding.id, number: embedding.number, problem })),
+      .map(({ embedding, problem }) => ({ id: embedding.id, number: embedding.number, problem: problem.name })),
   }))
 }

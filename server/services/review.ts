@@ -4,23 +4,26 @@ import type { RunSheetState } from '../../shared/schemas/run-sheets'
 import type { Actor, App } from '../app'
 import type { RunSheetRow } from '../database/repositories/run-sheets'
 import { insertRemark, updateRunSheet } from '../database/repositories/run-sheets'
+import type { HandedOver } from '../mail/letters'
 import { fingerprintOf, programmeBench, requireProgrammed } from './programming'
+import { tellHandOver } from './run-sheet-letters'
 import { benchOf, runSheetRow, runSheetView } from './run-sheets'
 
 interface HandOver {
   from: readonly RunSheetState[]
   to: RunSheetState
   what: string
+  told: HandedOver
 }
 
 const HAND_OVERS = {
-  submit: { from: ['draft', 'sent back'], to: 'in review', what: 'submitted for review' },
-  approve: { from: ['in review'], to: 'approved', what: 'approved' },
-  sendBack: { from: ['in review'], to: 'sent back', what: 'sent back' },
-  issue: { from: ['approved'], to: 'issued', what: 'issued' },
+  submit: { from: ['draft', 'sent back'], to: 'in review', what: 'submitted for review', told: 'submitted' },
+  approve: { from: ['in review'], to: 'approved', what: 'approved', told: 'approved' },
+  sendBack: { from: ['in review'], to: 'sent back', what: 'sent back', told: 'sent back' },
+  issue: { from: ['approved'], to: 'issued', what: 'issued', told: 'issued' },
 } satisfies Record<string, HandOver>
 
-/** Moves a run sheet on; approval freezes and fingerprints what is programmed. */
+/** Moves a run sheet on and tells those concerned; approval freezes and fingerprints what is programmed. */
 export async function handOver(
   app: App,
   actor: Actor,
@@ -28,7 +31,7 @@ export async function handOver(
   step: keyof typeof HAND_OVERS,
   remark: string,
 ): Promise<{ state: RunSheetState }> {
-  const { from, to, what }: HandOver = HAND_OVERS[step]
+  const { from, to, what, told }: HandOver = HAND_OVERS[step]
   const row = await runSheetRow(app, actor, id)
   if (!from.includes(row.state))
     throw new DomainError(
@@ -63,6 +66,7 @@ export async function handOver(
       text: remark,
       createdAt: app.now(),
     })
+    await tellHandOver(app, tx, { ...row, ...change }, { step: told, by: actor.userId, remark })
   })
   return { state: to }
 }

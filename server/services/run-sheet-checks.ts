@@ -1,31 +1,28 @@
-import { verifyEmbedding } from '../../shared/engine/embedding/verify'
-import { interactionGraph } from '../../shared/engine/problem/interaction-graph'
 import { gaugesOutsideRanges } from '../../shared/engine/programming/gauges'
 import { scheduleIssues, straightSchedule } from '../../shared/engine/programming/schedule'
 import type { Programmed } from '../../shared/engine/programming/programme'
 import type { VersionStanding } from '../../shared/schemas/problem-versions'
+import type { BrokenView } from '../../shared/schemas/repairs'
 import type { CheckView, RunSheetSettings, RunSheetView } from '../../shared/schemas/run-sheets'
-import type { App } from '../app'
-import { calibratedMachine } from './machine-graphs'
 import type { Bench, Programming } from './programming'
 import { chainsBelowBound } from './programming'
 
 const percent = (share: number): string => `${Math.round(share * 100)} %`
 
 /** What a reviewer looks at first: each check passed, with a caution, or refused. */
-export async function checksOf(
-  app: App,
+export function checksOf(
   bench: Bench,
   settings: RunSheetSettings,
   programming: Programming,
   programmed: Programmed,
   precision: RunSheetView['precision'],
   ofVersion: VersionStanding,
-): Promise<CheckView[]> {
+  embedding: { inForce: number; broken: BrokenView | null },
+): CheckView[] {
   return [
     rangesCheck(bench, programmed),
     ...gaugeCheck(bench, settings, programmed),
-    await embeddingCheck(app, bench),
+    embeddingCheck(bench, embedding.inForce, embedding.broken),
     ...versionCheck(ofVersion),
     annealCheck(bench, settings),
     strengthCheck(bench, programming),
@@ -45,18 +42,22 @@ function gaugeCheck({ machine }: Bench, { gauges, seed }: RunSheetSettings, prog
   return [{ verdict: 'caution', what, figure: 'asymmetric ranges: fewer gauges, or another seed' }]
 }
 
-async function embeddingCheck(app: App, { machine, row, ising, embedding }: Bench): Promise<CheckView> {
-  const current = await calibratedMachine(app, row, machine.machine.id)
-  const violations = verifyEmbedding(interactionGraph(ising), current.graph, current.usable, embedding)
-  const { number } = current.calibration
-  if (violations.length > 0)
-    return {
-      verdict: 'refused',
-      what: `Calibration ${number} broke the embedding`,
-      figure: violations.length === 1 ? '1 broken rule' : `${violations.length} broken rules`,
-    }
-  const figure = machine.calibration.number === number ? 'the one in force' : `made at ${machine.calibration.number}`
-  return { verdict: 'passed', what: `The embedding holds at calibration ${number}`, figure }
+/** What is programmed uses every qubit and coupler of the embedding: one that is missing now is refused. */
+function embeddingCheck({ machine }: Bench, inForce: number, broken: BrokenView | null): CheckView {
+  if (!broken) {
+    const figure = machine.calibration.number === inForce ? 'the one in force' : `made at ${machine.calibration.number}`
+    return { verdict: 'passed', what: `The embedding holds at calibration ${inForce}`, figure }
+  }
+  const { chains, ofChains, qubitsLost, couplersLost } = broken.damage
+  const missing = [
+    ...(qubitsLost.length > 0 ? [`${qubitsLost.length} qubit${qubitsLost.length === 1 ? '' : 's'}`] : []),
+    ...(couplersLost.length > 0 ? [`${couplersLost.length} coupler${couplersLost.length === 1 ? '' : 's'}`] : []),
+  ]
+  return {
+    verdict: 'refused',
+    what: `Calibration ${broken.calibration} broke the embedding: ${missing.join(' and ')} of it missing`,
+    figure: `${chains} of ${ofChains} chains damaged`,
+  }
 }
 
 /** Samples answer the version that was programmed, whatever the problem has become since. */

@@ -15,7 +15,7 @@ import type {
   RunSheetSettings,
   RunSheetView,
 } from '../../shared/schemas/run-sheets'
-import { EDITABLE_STATES } from '../../shared/schemas/run-sheets'
+import { EDITABLE_STATES, OPEN_STATES } from '../../shared/schemas/run-sheets'
 import type { Actor, App } from '../app'
 import { nextNumber } from '../database/repositories/counters'
 import { jobsOfSubjects } from '../database/repositories/jobs'
@@ -31,7 +31,10 @@ import {
   updateRunSheet,
 } from '../database/repositories/run-sheets'
 import { deleteFor } from './deletions'
+import { brokenView } from './broken-view'
 import { embeddingRow } from './embedding-subject'
+import type { CalibratedMachine } from './machine-graphs'
+import { machineRow } from './machine-graphs'
 import { standingOf } from './problem-difference'
 import type { Bench, Programming } from './programming'
 import { checksOf } from './run-sheet-checks'
@@ -59,8 +62,12 @@ export async function benchOf(app: App, actor: Actor, row: Pick<RunSheetRow, 'em
   return loadBench(app, await embeddingRow(app, actor, row.embeddingId))
 }
 
-function estimate(bench: Bench, { gauges, reads, annealMicroseconds }: RunSheetSettings) {
-  const { programmingMicroseconds, readoutMicroseconds, delayMicroseconds } = bench.machine.sheet.timing
+/** Machine time of a run with these settings, by the machine's own figures at the embedding's calibration. */
+export function estimate(
+  { machine }: { machine: Pick<CalibratedMachine, 'sheet'> },
+  { gauges, reads, annealMicroseconds }: RunSheetSettings,
+) {
+  const { programmingMicroseconds, readoutMicroseconds, delayMicroseconds } = machine.sheet.timing
   return machineTimeEstimate({
     gauges,
     reads,
@@ -174,6 +181,8 @@ export async function runSheetView(app: App, actor: Actor, id: string): Promise<
   const precision = precisionOf(bench, programmed)
   const time = machineTimeView(bench, row.settings)
   const ofVersion = await standingOf(app, problem)
+  const broken = await brokenView(app, bench.row)
+  const { calibration: inForce } = await machineRow(app, row, machine.machine.id)
   return {
     ...itemOf(row, {
       problem: { id: problem.id, number: problem.number, name: problem.name },
@@ -198,7 +207,8 @@ export async function runSheetView(app: App, actor: Actor, id: string): Promise<
     scaleLimit: scaleLimitOf(bench, programmed),
     precision,
     machineTime: time,
-    checks: await checksOf(app, bench, row.settings, programming, programmed, precision, ofVersion),
+    checks: checksOf(bench, row.settings, programming, programmed, precision, ofVersion, { inForce, broken }),
+    broken: OPEN_STATES.includes(row.state) ? broken : null,
     returns: await returnViews(app, id),
     remarks: (await listRemarks(app.db, id)).map(({ remark, by }) => ({
       at: remark.createdAt.toISOString(),

@@ -8,6 +8,7 @@ import { eliminatePart } from './tasks/eliminate-part'
 import { energies } from './tasks/energies'
 import { enumeratePart } from './tasks/enumerate-part'
 import { planOptimum } from './tasks/plan-optimum'
+import { findDamage } from './tasks/find-damage'
 import { liftStates } from './tasks/lift-states'
 import { planSearch } from './tasks/plan-search'
 import { presolve } from './tasks/presolve'
@@ -36,6 +37,7 @@ export const TASKS = {
   energies,
   listRejectedLines,
   enumeratePart,
+  findDamage,
   planOptimum,
   liftStates,
   planSearch,

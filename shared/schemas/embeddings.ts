@@ -3,6 +3,7 @@ import type { AdviceKind } from '../engine/embedding/advice'
 import type { Person } from './common'
 import { calibrationNumberSchema, idSchema, seedSchema } from './common'
 import type { VersionStanding } from './problem-versions'
+import type { BrokenView } from './repairs'
 
 /** Ways to make an embedding that a person may ask for; `auto` races those that fit the problem and the machine. */
 export const embeddingMethodSchema = z.enum(['auto', 'search', 'lines', 'template'])
@@ -103,6 +104,12 @@ export interface StartView {
   frozen: string[]
   /** Chains that differ from the start's; null unless found. */
   changed: number | null
+  /** Their labels, the first 200; empty unless found. */
+  changedChains: string[]
+  /** Longest chain and qubits of the start. */
+  before: { longestChain: number; qubitsUsed: number } | null
+  /** Whether it was made to take the start's place: open run sheets moved to it. */
+  replaces: boolean
 }
 
 /** Something to do about what stood in the way, the most promising first. */
@@ -148,6 +155,8 @@ export interface EmbeddingView {
   calibrationInForce: number
   /** False when a newer calibration of the machine broke it. */
   holdsAtCurrentCalibration: boolean | null
+  /** Why not, and what becomes of it. */
+  broken: BrokenView | null
   method: EmbeddingMethod
   /** Method and number of the try that gave the embedding; null unless found, and no try where imported. */
   methodUsed: MethodUsed | null

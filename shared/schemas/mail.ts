@@ -1,3 +1,6 @@
+import { z } from 'zod'
+import { pageQuerySchema } from './common'
+
 /** What a message tells: one kind for each reason to write to somebody. */
 export type MailKind = 'embedding broken' | 'run sheet handed over'
 
@@ -5,18 +8,34 @@ export type MailKind = 'embedding broken' | 'run sheet handed over'
  * waiting: to be sent, or tried again; sent: taken by the mail server; kept: there is no mail server, read it in the
  * product; given up: the server refused it for good.
  */
-export type MailState = 'waiting' | 'sent' | 'kept' | 'given up'
+export const MAIL_STATES = ['waiting', 'sent', 'kept', 'given up'] as const
+export type MailState = (typeof MAIL_STATES)[number]
+
+/** `?state&limit&cursor` of the outbox; every state where none is given. */
+export const outboxQuerySchema = pageQuerySchema.extend({ state: z.enum(MAIL_STATES).optional() })
+export type OutboxQuery = z.infer<typeof outboxQuerySchema>
 
 /** A message as the outbox shows it. */
 export interface MailView {
   id: string
+  /** The name is null once the person's account is gone. */
   to: { name: string | null; address: string }
   kind: MailKind
   subject: string
   text: string
   state: MailState
   attempts: number
+  /** When it is tried next; null when it is not. */
+  nextAttemptAt: string | null
+  /** What the mail server said at the last attempt that failed. */
   reason: string | null
   createdAt: string
   sentAt: string | null
+}
+
+export interface OutboxView {
+  items: MailView[]
+  nextCursor: string | null
+  /** Messages in each state. */
+  counts: Record<MailState, number>
 }

@@ -3,6 +3,7 @@ import type { RUN_SHEET_STATES } from '../library'
 import type { HistogramBin, Person } from './common'
 import type { VersionStanding } from './problem-versions'
 import { courseIssues } from '../engine/programming/schedule'
+import type { BrokenView } from './repairs'
 import { idSchema, nameSchema, seedSchema, textSchema } from './common'
 
 const positive = z.number().positive().max(1e9)
@@ -83,6 +84,12 @@ export type RunSheetState = (typeof RUN_SHEET_STATES)[number]
 
 /** States in which the settings may change, and in which a run sheet may be deleted. */
 export const EDITABLE_STATES: readonly RunSheetState[] = ['draft', 'sent back']
+
+/** States in which a run sheet moves to the embedding that its own was repaired as. */
+export const MOVABLE_STATES: readonly RunSheetState[] = ['draft', 'sent back', 'in review', 'approved']
+
+/** States of a run sheet whose samples are not back yet: a broken embedding concerns it. */
+export const OPEN_STATES: readonly RunSheetState[] = [...MOVABLE_STATES, 'issued']
 
 export interface CheckView {
   verdict: 'passed' | 'caution' | 'refused'
@@ -211,6 +218,8 @@ export interface RunSheetView extends RunSheetItem {
     timing: { programmingMicroseconds: number; readoutMicroseconds: number; delayMicroseconds: number }
   }
   checks: CheckView[]
+  /** Its embedding, where that does not hold at the calibration in force and the samples are not back yet. */
+  broken: BrokenView | null
   returns: ReturnOfRunSheet[]
   remarks: RemarkView[]
   preparedBy: Person

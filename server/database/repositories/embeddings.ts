@@ -4,8 +4,8 @@ import { calibrations, embeddings, machines, problems } from '../schema'
 
 export type EmbeddingRow = typeof embeddings.$inferSelect
 
-export async function insertEmbedding(db: Db, row: typeof embeddings.$inferInsert): Promise<void> {
-  await db.insert(embeddings).values(row)
+export async function insertEmbedding(db: Db, row: typeof embeddings.$inferInsert): Promise<EmbeddingRow> {
+  return (await db.insert(embeddings).values(row).returning())[0]!
 }
 
 export async function findEmbedding(db: Db, workspaceId: string, id: string): Promise<EmbeddingRow | undefined> {
@@ -70,11 +70,27 @@ export async function embeddingsOfProblems(db: Db, problemIds: readonly string[]
     .orderBy(desc(embeddings.createdAt), desc(embeddings.number))
 }
 
-/** Found embeddings on a machine with their problem's name. */
+/** Found embeddings on a machine with their problem's name, also those whose deletion can still be undone. */
 export async function foundEmbeddingsOn(db: Db, machineId: string) {
   return db
     .select({ embedding: embeddings, problem: problems.name })
     .from(embeddings)
     .innerJoin(problems, eq(problems.id, embeddings.problemId))
-    .where(and(eq(embeddings.machineId, machineId), eq(embeddings.status, 'found'), isNull(embeddings.deletedWith)))
+    .where(and(eq(embeddings.machineId, machineId), eq(embeddings.status, 'found')))
+    .orderBy(embeddings.createdAt, embeddings.id)
+}
+
+/** Repairs of embeddings that were to take their place, newest first. */
+export async function replacementsOf(db: Db, startIds: readonly string[]): Promise<EmbeddingRow[]> {
+  if (startIds.length === 0) return []
+  return db
+    .select()
+    .from(embeddings)
+    .where(and(inArray(embeddings.startId, [...startIds]), embeddings.replaces, isNull(embeddings.deletedWith)))
+    .orderBy(desc(embeddings.createdAt), desc(embeddings.number))
+}
+
+/** Waits for others who are about to put something in the embedding's place. */
+export async function lockEmbedding(tx: Db, id: string): Promise<void> {
+  await tx.select({ id: embeddings.id }).from(embeddings).where(eq(embeddings.id, id)).for('update')
 }

@@ -77,13 +77,56 @@ export async function insertBrokenEmbeddings(db: Db, rows: (typeof brokenEmbeddi
   if (rows.length > 0) await db.insert(brokenEmbeddings).values(rows)
 }
 
-/** Embeddings that calibrations of a machine broke, with their problem; deleted ones left out. */
+export type BrokenRow = typeof brokenEmbeddings.$inferSelect
+
+const isBroken = ({ machineId, calibration, embeddingId }: Omit<BrokenRow, 'damage' | 'holdsAgain'>) =>
+  and(
+    eq(brokenEmbeddings.machineId, machineId),
+    eq(brokenEmbeddings.calibration, calibration),
+    eq(brokenEmbeddings.embeddingId, embeddingId),
+  )
+
+/** Embeddings of a machine that were broken and have not held since. */
+export async function openBroken(db: Db, machineId: string): Promise<BrokenRow[]> {
+  return db
+    .select()
+    .from(brokenEmbeddings)
+    .where(and(eq(brokenEmbeddings.machineId, machineId), isNull(brokenEmbeddings.holdsAgain)))
+}
+
+/** Notes that an embedding holds again, as it is. */
+export async function endBroken(db: Db, row: BrokenRow, calibration: number): Promise<void> {
+  await db.update(brokenEmbeddings).set({ holdsAgain: calibration }).where(isBroken(row))
+}
+
+/** The damage of an embedding that was broken before is that by the calibration in force. */
+export async function updateDamage(db: Db, row: BrokenRow, damage: BrokenRow['damage']): Promise<void> {
+  await db.update(brokenEmbeddings).set({ damage }).where(isBroken(row))
+}
+
+/** The calibration in force; no other is saved before the transaction ends. */
+export async function lockCalibration(tx: Db, machineId: string): Promise<number | undefined> {
+  const rows = await tx
+    .select({ calibration: machines.calibration })
+    .from(machines)
+    .where(eq(machines.id, machineId))
+    .for('share')
+  return rows[0]?.calibration
+}
+
+/** Embeddings that calibrations of a machine broke, with their problem and who made them; deleted ones left out. */
 export async function listBrokenEmbeddings(db: Db, machineId: string) {
   return db
-    .select({ broken: brokenEmbeddings, embedding: embeddings, problem: problems.name })
+    .select({
+      broken: brokenEmbeddings,
+      embedding: embeddings,
+      problem: { id: problems.id, number: problems.number, name: problems.name },
+      createdBy: { id: users.id, name: users.name },
+    })
     .from(brokenEmbeddings)
     .innerJoin(embeddings, eq(embeddings.id, brokenEmbeddings.embeddingId))
     .innerJoin(problems, eq(problems.id, embeddings.problemId))
+    .innerJoin(users, eq(users.id, embeddings.createdBy))
     .where(and(eq(brokenEmbeddings.machineId, machineId), isNull(embeddings.deletedWith)))
     .orderBy(desc(brokenEmbeddings.calibration), asc(problems.name), asc(embeddings.number))
 }

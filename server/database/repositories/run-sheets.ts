@@ -36,6 +36,18 @@ export async function listRunSheets(db: Db, workspaceId: string, limit: number, 
     .offset(offset)
 }
 
+/** Names of the problem that a run sheet runs and of the machine that it runs on. */
+export async function aboutRunSheet(db: Db, id: string): Promise<{ problem: string; machine: string }> {
+  const rows = await db
+    .select({ problem: problems.name, machine: machines.name })
+    .from(runSheets)
+    .innerJoin(embeddings, eq(embeddings.id, runSheets.embeddingId))
+    .innerJoin(problems, eq(problems.id, embeddings.problemId))
+    .innerJoin(machines, eq(machines.id, embeddings.machineId))
+    .where(eq(runSheets.id, id))
+  return rows[0]!
+}
+
 export async function runSheetsOfEmbeddings(db: Db, embeddingIds: readonly string[]): Promise<RunSheetRow[]> {
   if (embeddingIds.length === 0) return []
   return db
@@ -63,6 +75,22 @@ export async function updateRunSheet(
     .where(and(eq(runSheets.id, id), inArray(runSheets.state, [...states]), isNull(runSheets.deletedWith), unchanged))
     .returning({ id: runSheets.id })
   return rows.length === 1
+}
+
+/** Run sheets on an embedding that are in one of the states given; nobody changes them before the transaction ends. */
+export async function lockRunSheetsOn(
+  tx: Db,
+  embeddingId: string,
+  states: readonly RunSheetRow['state'][],
+): Promise<RunSheetRow[]> {
+  return tx
+    .select()
+    .from(runSheets)
+    .where(
+      and(eq(runSheets.embeddingId, embeddingId), inArray(runSheets.state, [...states]), isNull(runSheets.deletedWith)),
+    )
+    .orderBy(asc(runSheets.number))
+    .for('update')
 }
 
 export async function insertRemark(db: Db, row: typeof runSheetRemarks.$inferInsert): Promise<void> {

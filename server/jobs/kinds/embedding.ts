@@ -7,6 +7,9 @@ import type { App } from '../../app'
 import type { EmbeddingRow } from '../../database/repositories/embeddings'
 import { findEmbeddingOfJob, updateEmbedding } from '../../database/repositories/embeddings'
 import { changedChains, packEmbedding } from '../../services/chains'
+import { storeVerdict } from '../../services/broken-embeddings'
+import { damageOfChains } from '../../services/embedding-damage'
+import { takePlace } from '../../services/repair-moves'
 import { storedStats } from '../../services/embedding-stats'
 import type { Subject } from '../../services/embedding-subject'
 import { carriedChains, frozenMask, subjectOfRow, taskOf } from '../../services/embedding-subject'
@@ -89,10 +92,13 @@ async function runTries(app: App, context: JobContext, search: Search): Promise<
   return outcomeOf(results, plan.length, options, secondsOn(clock))
 }
 
-/** Checks the embedding once more with the separate checker before it is saved. */
+/**
+ * Checks the embedding once more with the separate checker before it is saved, and looks whether a calibration saved since
+ * the search began breaks it; a repair takes the place of what it began from.
+ */
 async function found(
   app: App,
-  { signal }: JobContext,
+  { job, signal }: JobContext,
   { row, subject, task, options }: Search,
   result: SearchResult,
 ): Promise<JobOutcome> {
@@ -112,27 +118,35 @@ async function found(
   const early = !result.stoppedEarly
     ? ''
     : `, stopped early ${signal.aborted ? 'when it was cancelled' : 'at the time limit'} with the best so far`
-  return {
-    status: 'done',
-    message: `found: longest chain ${groupDigits(stats.chainLength.max)}, ${groupDigits(stats.qubitsUsed)} qubits, by ${result.method} in try ${groupDigits(result.tryNumber)} of ${groupDigits(result.tries)}${early}`,
-    async save(tx) {
-      await app.blobs.adopt(tx, chainsBlobId)
-      const kept = await updateEmbedding(tx, row.id, {
-        status: 'found',
-        methodUsed: result.method,
-        tryNumber: result.tryNumber,
-        chainsBlobId,
-        fingerprint,
-        stats: storedStats(stats),
-        seconds: result.seconds,
-        firstSeconds: result.firstSeconds,
-        changedChains: task.start ? changedChains(task.start.chains, embedding) : null,
-        unmet: null,
-        reason: null,
-      })
-      if (!kept) throw new Error(DELETED)
-    },
+  const set = {
+    status: 'found' as const,
+    methodUsed: result.method,
+    tryNumber: result.tryNumber,
+    chainsBlobId,
+    fingerprint,
+    stats: storedStats(stats),
+    seconds: result.seconds,
+    firstSeconds: result.firstSeconds,
+    changedChains: task.start ? changedChains(task.start.chains, embedding) : null,
+    unmet: null,
+    reason: null,
   }
+  const outcome = async (): Promise<JobOutcome> => {
+    const { inForce, damage } = await damageOfChains(app, embedding, subject.graph, subject.machine)
+    return {
+      status: 'done',
+      message: `found: longest chain ${groupDigits(stats.chainLength.max)}, ${groupDigits(stats.qubitsUsed)} qubits, by ${result.method} in try ${groupDigits(result.tryNumber)} of ${groupDigits(result.tries)}${early}`,
+      async save(tx) {
+        await app.blobs.adopt(tx, chainsBlobId)
+        if (!(await updateEmbedding(tx, row.id, set))) throw new Error(DELETED)
+        const made = { embedding: { ...row, ...set }, problem: subject.problem.name }
+        await storeVerdict(app, tx, made, { machine: inForce.machine, damage })
+        if (row.replaces && !damage) await takePlace(app, tx, made.embedding, subject, job.createdBy)
+      },
+      again: outcome,
+    }
+  }
+  return outcome()
 }
 
 /** Why there is none; by a proof where a longer look finds one. */

@@ -1,6 +1,6 @@
 import { degreeOf } from '../graph/graph'
 import type { KernelChoice } from './chains/kernel'
-import { fenceAllBut, negotiate, unmetPartners } from './chains/negotiate'
+import { fenceAllBut, isMet, negotiate, unmetPartners } from './chains/negotiate'
 import { packState, partialOf, placeIsolated } from './chains/outcome'
 import { Router } from './chains/router'
 import { shortenChains } from './chains/shorten'
@@ -73,25 +73,74 @@ function standing(task: EmbeddingTask, chains: Embedding, kernel: KernelChoice):
   return state
 }
 
-/** The chosen chains, all their partners, and all chains that lie beside them. */
-function widen(state: ChainState, chosen: Uint8Array, frozen: Uint8Array): void {
+/** Adds to the chosen chains the partners of the centres, and all chains that lie beside them. */
+function widen(state: ChainState, chosen: Uint8Array, centres: Int32Array, frozen: Uint8Array): void {
   const owner = new Int32Array(state.qubits).fill(-1)
-  const before = chosen.slice()
   const take = (v: number): void => {
     if (!frozen[v]) chosen[v] = 1
   }
   for (let v = 0; v < state.variables; v++)
     for (let record = state.head[v]!; record >= 0; record = state.recordNext[record]!)
       owner[state.recordQubit[record]!] = v
-  before.forEach((is, v) => {
-    if (!is) return
+  for (const v of centres) {
     for (let p = state.partnerOffsets[v]!; p < state.partnerOffsets[v + 1]!; p++) take(state.partners[p]!)
     for (let record = state.head[v]!; record >= 0; record = state.recordNext[record]!) {
       const q = state.recordQubit[record]!
       for (let p = state.offsets[q]!; p < state.offsets[q + 1]!; p++)
         if (owner[state.targets[p]!]! >= 0) take(owner[state.targets[p]!]!)
     }
-  })
+  }
+}
+
+const countOf = (chosen: Uint8Array): number => chosen.reduce((sum, one) => sum + one, 0)
+
+/** Lets go of chains around those that found no way; around all that were let go where that adds none. */
+function widenAround(
+  state: ChainState,
+  intact: ChainState,
+  chosen: Uint8Array,
+  variables: Int32Array,
+  frozen: Uint8Array,
+): void {
+  const stuck = variables.filter(
+    (v) => state.length[v] === 0 || state.isConflicted(v) || unmetPartners(state, v).length > 0,
+  )
+  widen(intact, chosen, stuck, frozen)
+  if (countOf(chosen) === variables.length) widen(intact, chosen, variables, frozen)
+}
+
+/**
+ * Puts chains back as they were in the start where nothing stands in the way: negotiation moves more than it has to.
+ * @param whole chains that the machine still carries
+ * @returns the variables that still differ
+ */
+function putBack(state: ChainState, chains: Embedding, variables: Int32Array, whole: Uint8Array): Int32Array {
+  let differing = variables.filter((v) => !isChain(state, v, chainOf(chains, v)))
+  for (let before = -1; differing.length !== before;) {
+    before = differing.length
+    differing = differing.filter((v) => !whole[v] || !replaced(state, v, chainOf(chains, v)))
+  }
+  return differing
+}
+
+function isChain(state: ChainState, v: number, chain: Uint32Array): boolean {
+  const own = state.saved.slice(0, state.copyChain(v, state.saved)).sort()
+  return own.length === chain.length && own.every((q, k) => q === chain[k])
+}
+
+/** Gives a variable that chain if its qubits are free and it meets all partners; else leaves everything as it is. */
+function replaced(state: ChainState, v: number, chain: Uint32Array): boolean {
+  const own = state.saved.slice(0, state.copyChain(v, state.saved))
+  const lay = (qubits: Iterable<number>): void => {
+    state.drop(v)
+    for (const q of qubits) state.add(v, q)
+  }
+  state.drop(v)
+  const isFree = chain.every((q) => state.use[q] === 0)
+  lay(isFree ? chain : own)
+  if (isFree && isMet(state, v)) return true
+  if (isFree) lay(own)
+  return false
 }
 
 /** Chains that are shorter than they were, empty, or do not meet a partner: what has to change at least. */
@@ -120,7 +169,8 @@ function frozenStand(state: ChainState, chains: Embedding, frozen: Uint8Array): 
 
 /**
  * The method `repair`: keeps every chain of the start that still stands and reroutes the others among free qubits.
- * Where that does not do, the chains around them are let go too, in widening rings; frozen ones never are.
+ * Where that does not do, the chains around those that found no way are let go too, ring by ring, and put back as they
+ * were afterwards where that can be; frozen ones never move.
  */
 export function repairStart(task: EmbeddingTask, attempt: Attempt): PartialEmbedding | null {
   const { random, watch, offer, kernel } = attempt
@@ -129,6 +179,7 @@ export function repairStart(task: EmbeddingTask, attempt: Attempt): PartialEmbed
   const kept = packState(intact)
   if (!frozenStand(intact, chains, frozen)) return partialOf(intact, task.problem)
   const chosen = damaged(intact, chains, frozen)
+  const whole = intact.length.map((length, v) => (length > 0 && length === chainOf(chains, v).length ? 1 : 0))
   let closest: PartialEmbedding | null = null
   watch.phase = 'repairing'
   for (let before = -1; ;) {
@@ -145,14 +196,23 @@ export function repairStart(task: EmbeddingTask, attempt: Attempt): PartialEmbed
     const valid = negotiate(state, router, connected, random, watch)
     if (placeIsolated(state, task.usable) && valid && lacks(partialOf(state, task.problem)) === 0) {
       const give = (): void => offer(packState(state))
+      const differing = putBack(state, chains, variables, Uint8Array.from(whole))
       give()
-      shortenChains(state, router, connected, attempt, give)
+      state.frozen.fill(1)
+      for (const v of differing) state.frozen[v] = 0
+      shortenChains(
+        state,
+        router,
+        differing.filter((v) => state.partnersOf(v) > 0),
+        attempt,
+        give,
+      )
       return null
     }
     const partial = partialOf(state, task.problem)
     if (!closest || lacks(partial) < lacks(closest)) closest = partial
     if (watch.shouldStop(state.overlap)) return closest
-    widen(intact, chosen, frozen)
+    widenAround(state, intact, chosen, variables, frozen)
   }
 }
 

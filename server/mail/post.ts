@@ -1,0 +1,96 @@
+import type { App } from '../app'
+import { claimDueMail, keepWaitingMails, settleMail } from '../database/repositories/mails'
+import type { MailRow } from '../database/repositories/mails'
+import { setFact } from '../database/repositories/people'
+import type { Mailer } from './mailer'
+import { createMailer, MailRefused } from './mailer'
+import type { MailSettings } from './settings'
+
+/**
+ * How mail leaves this installation, kept in the database: a worker process that ends a job writes messages too, and knows
+ * neither the address of the product nor whether there is a mail server.
+ */
+export const POST_FACT = 'post'
+
+interface PostFact {
+  site: string
+  sends: boolean
+}
+
+/** Before any process that serves pages was started: everything is kept. */
+const NO_POST: PostFact = { site: 'http://localhost:3000', sends: false }
+
+export const postOf = (fact: string | undefined): PostFact => (fact ? (JSON.parse(fact) as PostFact) : NO_POST)
+
+const LOOK_MS = 2_000
+/** Minutes from each attempt to the next; given up at the attempt after the last, after some 45 hours. */
+const WAITS = [1, 5, 30, 120, 360, 720, 720, 720] as const
+const MAX_ATTEMPTS = WAITS.length + 1
+const MINUTE_MS = 60_000
+const MAX_REASON = 500
+
+const nextAfter =
+  (now: Date) =>
+  (attempts: number): Date =>
+    new Date(now.getTime() + (WAITS[attempts - 1] ?? WAITS.at(-1)!) * MINUTE_MS)
+
+async function attempt(app: App, mailer: Mailer, mail: MailRow): Promise<void> {
+  try {
+    await mailer.send({ ...mail, to: mail.toAddress })
+  } catch (error) {
+    const reason = (error instanceof Error ? error.message : String(error)).slice(0, MAX_REASON)
+    const over = error instanceof MailRefused || mail.attempts >= MAX_ATTEMPTS
+    const set = over ? { state: 'given up' as const, nextAttemptAt: null, reason } : { reason }
+    return settleMail(app.db, mail.id, set)
+  }
+  await settleMail(app.db, mail.id, { state: 'sent', sentAt: app.now(), nextAttemptAt: null, reason: null })
+}
+
+/**
+ * Sends every message that is due, one after the other. A message is sent at least once: where the process ends between
+ * the server's yes and our note of it, it goes again, with the same Message-ID.
+ * @param stopped asked before each message
+ */
+export async function deliverDue(app: App, mailer: Mailer, stopped: () => boolean = () => false): Promise<void> {
+  while (!stopped()) {
+    const now = app.now()
+    const mail = await claimDueMail(app.db, now, nextAfter(now))
+    if (!mail) return
+    await attempt(app, mailer, mail)
+  }
+}
+
+/** Sends messages as long as this process lives. */
+export interface Post {
+  /** Ends after the message in hand. */
+  stop(): Promise<void>
+}
+
+/** Opens the post of a process that serves pages; without a mail server messages are kept. */
+export async function openPost(app: App, { smtp, site }: MailSettings): Promise<Post> {
+  await setFact(app.db, POST_FACT, JSON.stringify({ site, sends: smtp !== null } satisfies PostFact))
+  if (!smtp) {
+    await keepWaitingMails(app.db)
+    return { stop: async () => undefined }
+  }
+  const mailer = createMailer(smtp)
+  let stopped = false
+  let round: Promise<void> = Promise.resolve()
+  let busy = false
+  const look = async (): Promise<void> => {
+    busy = true
+    await deliverDue(app, mailer, () => stopped).catch((error: Error) => console.error(`mail: ${error.message}`))
+    busy = false
+  }
+  const timer = setInterval(() => {
+    if (!busy) round = look()
+  }, LOOK_MS)
+  timer.unref()
+  return {
+    async stop() {
+      stopped = true
+      clearInterval(timer)
+      await round
+    },
+  }
+}

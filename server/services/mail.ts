@@ -1,0 +1,76 @@
+import { randomUUID } from 'node:crypto'
+import type { MailState, MailView, OutboxQuery, OutboxView } from '../../shared/schemas/mail'
+import { MAIL_STATES } from '../../shared/schemas/mail'
+import type { Actor, App } from '../app'
+import type { Db } from '../database/client'
+import type { MailRow } from '../database/repositories/mails'
+import { addresseesOf, countMails, insertMails, listMails } from '../database/repositories/mails'
+import { pageOf, positionOf } from '../database/repositories/pages'
+import { readFact } from '../database/repositories/people'
+import type { Letter } from '../mail/letter'
+import { writeLetter } from '../mail/letter'
+import { POST_FACT, postOf } from '../mail/post'
+
+/**
+ * Writes to people, in the transaction of what they are told: what is rolled back is never told, what is committed is
+ * never forgotten. Sending is left to the post. Whoever did it is not told, nor is anybody who left the workspace.
+ * @param letters by user id
+ */
+export async function tell(
+  app: App,
+  tx: Db,
+  { workspaceId, by }: { workspaceId: string; by: string | null },
+  letters: ReadonlyMap<string, Letter>,
+): Promise<void> {
+  const ids = [...letters.keys()].filter((id) => id !== by)
+  const addressees = await addresseesOf(tx, workspaceId, ids)
+  const { site, sends } = postOf(await readFact(tx, POST_FACT))
+  const now = app.now()
+  await insertMails(
+    tx,
+    addressees.map(({ id: toUserId, email }) => {
+      const letter = letters.get(toUserId)!
+      return {
+        id: randomUUID(),
+        workspaceId,
+        toUserId,
+        toAddress: email,
+        kind: letter.kind,
+        ...writeLetter(letter, site),
+        state: sends ? ('waiting' as const) : ('kept' as const),
+        nextAttemptAt: sends ? now : null,
+        createdAt: now,
+      }
+    }),
+  )
+}
+
+/** Messages of the workspace, newest first. */
+export async function outboxOf(app: App, actor: Actor, { state, limit, cursor }: OutboxQuery): Promise<OutboxView> {
+  const offset = positionOf(cursor)
+  const rows = await listMails(app.db, actor.workspaceId, { state, limit: limit + 1, offset })
+  const counted = new Map((await countMails(app.db, actor.workspaceId)).map((row) => [row.state, row.n]))
+  const counts = Object.fromEntries(MAIL_STATES.map((name) => [name, counted.get(name) ?? 0]))
+  return {
+    ...pageOf(
+      rows.map(({ mail, name }) => viewOf(mail, name)),
+      limit,
+      offset,
+    ),
+    counts: counts as Record<MailState, number>,
+  }
+}
+
+const viewOf = (mail: MailRow, name: string | null): MailView => ({
+  id: mail.id,
+  to: { name, address: mail.toAddress },
+  kind: mail.kind,
+  subject: mail.subject,
+  text: mail.text,
+  state: mail.state,
+  attempts: mail.attempts,
+  nextAttemptAt: mail.nextAttemptAt?.toISOString() ?? null,
+  reason: mail.reason,
+  createdAt: mail.createdAt.toISOString(),
+  sentAt: mail.sentAt?.toISOString() ?? null,
+})

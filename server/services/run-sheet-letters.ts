@@ -1,0 +1,58 @@
+import type { App } from '../app'
+import type { Db } from '../database/client'
+import { holdersOf } from '../database/repositories/mails'
+import { personOf } from '../database/repositories/problems'
+import type { RunSheetRow } from '../database/repositories/run-sheets'
+import { aboutRunSheet } from '../database/repositories/run-sheets'
+import type { Letter } from '../mail/letter'
+import type { HandedOver, SheetForLetter, SheetReason } from '../mail/letters'
+import { handedOverLetter, movedLetter } from '../mail/letters'
+import { tell } from './mail'
+
+/** Everyone who may review this run sheet: nobody reviews their own. */
+async function reviewersOf(tx: Db, { workspaceId, preparedBy }: RunSheetRow): Promise<string[]> {
+  return (await holdersOf(tx, workspaceId, 'reviewer')).filter((id) => id !== preparedBy)
+}
+
+async function concerned(tx: Db, row: RunSheetRow, step: HandedOver): Promise<Map<string, SheetReason>> {
+  if (step === 'submitted') return new Map((await reviewersOf(tx, row)).map((id) => [id, 'reviewer']))
+  const told = new Map<string, SheetReason>()
+  if (step === 'issued' && row.reviewedBy) told.set(row.reviewedBy, 'approver')
+  return told.set(row.preparedBy, 'preparer')
+}
+
+/**
+ * Tells those concerned of a hand-over: reviewers of a submission, the preparer of an approval and of a return, preparer
+ * and reviewer of an issue.
+ */
+export async function tellHandOver(
+  app: App,
+  tx: Db,
+  row: RunSheetRow,
+  { step, by, remark }: { step: HandedOver; by: string; remark: string },
+): Promise<void> {
+  const sheet = await sheetForLetter(tx, row)
+  const { name } = await personOf(tx, by)
+  const letters = new Map<string, Letter>()
+  for (const [id, reason] of await concerned(tx, row, step))
+    letters.set(id, handedOverLetter(sheet, step, name, remark, reason))
+  await tell(app, tx, { workspaceId: row.workspaceId, by }, letters)
+}
+
+/** Tells preparer and reviewers that a repair took a run sheet back to review. */
+export async function tellMoved(
+  app: App,
+  tx: Db,
+  row: RunSheetRow,
+  { moved, by }: { moved: string; by: string },
+): Promise<void> {
+  const sheet = await sheetForLetter(tx, row)
+  const letters = new Map<string, Letter>()
+  for (const id of await reviewersOf(tx, row)) letters.set(id, movedLetter(sheet, moved, row.state, 'reviewer'))
+  letters.set(row.preparedBy, movedLetter(sheet, moved, row.state, 'preparer'))
+  await tell(app, tx, { workspaceId: row.workspaceId, by }, letters)
+}
+
+async function sheetForLetter(tx: Db, { id, number, name }: RunSheetRow): Promise<SheetForLetter> {
+  return { id, number, name, ...(await aboutRunSheet(tx, id)) }
+}

@@ -1,0 +1,12 @@
+import type { Actor, App } from '../../server/app'
+import { createAccount } from '../../server/services/people'
+import type { Role } from '../../shared/schemas/common'
+
+/** Another member of a workspace, whose address is their name. */
+export async function newMember(app: App, { workspaceId }: Actor, name: string, roles: Role[]): Promise<Actor> {
+  const email = `${name.toLowerCase()}@works.example.org`
+  const userId = await app.db.transaction((tx) =>
+    createAccount(app, tx, { name, email, passwordHash: '-', workspaceId, roles }),
+  )
+  return { userId, workspaceId }
+}
