@@ -38,6 +38,7 @@ const LONG: ReadonlySet<TaskName> = new Set<TaskName>([
   'enumeratePart',
   'rehearse',
   'runTry',
+  'scanStrength',
   'solveProgramme',
   'solveQuickParts',
 ])

@@ -18,6 +18,7 @@ import { readSamplesFile } from './tasks/read-samples'
 import { recogniseGroups } from './tasks/recognise-groups'
 import { rehearse } from './tasks/rehearse'
 import { runTry } from './tasks/run-try'
+import { scanStrength } from './tasks/scan-strength'
 import { solveProgramme } from './tasks/solve-programme'
 import { solveQuickParts } from './tasks/solve-quick-parts'
 import { sparsity } from './tasks/sparsity'
@@ -48,6 +49,7 @@ export const TASKS = {
   recogniseGroups,
   rehearse,
   runTry,
+  scanStrength,
   solveProgramme,
   solveQuickParts,
   sparsity,

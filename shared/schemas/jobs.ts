@@ -2,7 +2,7 @@ import type { TracePoint } from './embeddings'
 
 /** States of a job. A job never stays `running` without a living worker: see docs/decisions/jobs.md. */
 export type JobStatus = 'waiting' | 'running' | 'done' | 'failed' | 'cancelled'
-export type JobKind = 'embedding' | 'reference' | 'rehearsal'
+export type JobKind = 'embedding' | 'reference' | 'rehearsal' | 'scan'
 
 export interface JobLogLine {
   at: string

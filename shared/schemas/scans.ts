@@ -1,5 +1,5 @@
 import { z } from 'zod'
-import type { Proportion } from './common'
+import type { Person, Proportion } from './common'
 import { seedSchema } from './common'
 
 const strength = z.number().positive().max(1e9)
@@ -34,4 +34,24 @@ export interface ScanPoint {
   /** Reads whose decoded answer is the reference optimum; null without one. */
   success: Proportion | null
   seconds: number
+}
+
+export interface ScanView {
+  id: string
+  number: number
+  status: 'running' | 'ready' | 'failed' | 'cancelled'
+  jobId: string | null
+  made: ScanRequest
+  /** In order of rising strength; as far as it came. */
+  points: ScanPoint[]
+  /**
+   * The weakest strength as good as the best one, within two standard errors; `edge` where it lies at an end of the scan.
+   * Null for fewer than two points.
+   */
+  knee: { strength: number; edge: 'weakest' | 'strongest' | null } | null
+  reason: string | null
+  seconds: number | null
+  version: string
+  by: Person
+  createdAt: string
 }

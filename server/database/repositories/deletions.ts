@@ -1,12 +1,21 @@
 import { and, eq, gte, inArray, isNull, lt, or } from 'drizzle-orm'
 import type { DeletableKind } from '../../../shared/schemas/deletions'
 import type { Db } from '../client'
-import { embeddings, problems, problemVersions, reductions, referenceOptima, returns, runSheets } from '../schema'
+import {
+  embeddings,
+  problems,
+  problemVersions,
+  reductions,
+  referenceOptima,
+  returns,
+  runSheets,
+  scans,
+} from '../schema'
 import type { Deleted } from './jobs'
 
 const ROOTS = { problem: problems, embedding: embeddings, 'run sheet': runSheets } as const
 /** From what stands on others to what carries them. */
-const TABLES = [returns, runSheets, embeddings, problems] as const
+const TABLES = [scans, returns, runSheets, embeddings, problems] as const
 
 const embeddingsUnder = (kind: DeletableKind, id: string) =>
   kind === 'problem' ? eq(embeddings.problemId, id) : eq(embeddings.id, kind === 'embedding' ? id : '')
@@ -17,16 +26,17 @@ function runSheetsUnder(db: Db, kind: DeletableKind, id: string) {
   return inArray(runSheets.embeddingId, carriers)
 }
 
-function returnsUnder(db: Db, kind: DeletableKind, id: string) {
+/** Returns or scans of run sheets under a thing, and those made on an embedding under it. */
+function samplesUnder(db: Db, table: typeof returns | typeof scans, kind: DeletableKind, id: string) {
   const carriers = db
     .select({ id: runSheets.id })
     .from(runSheets)
     .where(runSheetsUnder(db, kind, id))
-  const ofRunSheet = inArray(returns.runSheetId, carriers)
+  const ofRunSheet = inArray(table.runSheetId, carriers)
   if (kind === 'run sheet') return ofRunSheet
   // A run sheet may have moved to another embedding since: its earlier returns stay with the one they were made on.
   const on = db.select({ id: embeddings.id }).from(embeddings).where(embeddingsUnder(kind, id))
-  return or(ofRunSheet, inArray(returns.embeddingId, on))
+  return or(ofRunSheet, inArray(table.embeddingId, on))
 }
 
 /**
@@ -50,10 +60,11 @@ export async function hide(tx: Db, kind: DeletableKind, id: string, at: Date): P
     .update(runSheets)
     .set(mark)
     .where(and(runSheetsUnder(tx, kind, id), isNull(runSheets.deletedWith)))
-  await tx
-    .update(returns)
-    .set(mark)
-    .where(and(returnsUnder(tx, kind, id), isNull(returns.deletedWith)))
+  for (const table of [returns, scans])
+    await tx
+      .update(table)
+      .set(mark)
+      .where(and(samplesUnder(tx, table, kind, id), isNull(table.deletedWith)))
   return true
 }
 
@@ -129,14 +140,18 @@ export async function deleteForGood(
   const samples = await tx
     .select({ id: returns.id, blobId: returns.samplesBlobId, breaksBlobId: returns.breaksBlobId })
     .from(returns)
-    .where(returnsUnder(tx, kind, id))
+    .where(samplesUnder(tx, returns, kind, id))
   const breaks = samples.map(({ breaksBlobId }) => ({ blobId: breaksBlobId }))
+  const scanned = await tx
+    .select({ id: scans.id })
+    .from(scans)
+    .where(samplesUnder(tx, scans, kind, id))
   await tx.delete(root).where(eq(root.id, id))
   return {
     blobIds: [...data.blobs, ...data.references, ...chains, ...samples, ...breaks].flatMap(
       ({ blobId }) => blobId ?? [],
     ),
-    subjectIds: [...data.references, ...chains, ...samples].map((row) => row.id),
+    subjectIds: [...data.references, ...chains, ...samples, ...scanned].map((row) => row.id),
   }
 }
 

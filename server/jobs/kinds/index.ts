@@ -3,10 +3,12 @@ import type { JobKindHandler } from '../kind'
 import { embeddingJob } from './embedding'
 import { referenceJob } from './reference'
 import { rehearsalJob } from './rehearsal'
+import { scanJob } from './scan'
 
 /** Every kind of background work. */
 export const JOB_KINDS: Record<JobKind, JobKindHandler> = {
   embedding: embeddingJob,
   reference: referenceJob,
   rehearsal: rehearsalJob,
+  scan: scanJob,
 }
