@@ -6,6 +6,7 @@ import { startDemo } from '../support/demo'
 import type { RunningServer } from '../support/server'
 import type { DeadLink, Shown } from '../support/pages/crawl'
 import { crawl, tellingViews } from '../support/pages/crawl'
+import type { Opened } from '../support/pages/popups'
 import { findRoutes } from '../support/pages/routes'
 import { prepareRunning, prepareStates } from '../support/pages/states'
 import type { Aspect, Finding } from '../support/pages/survey'
@@ -25,11 +26,13 @@ const servers: RunningServer[] = []
 const shown: Shown = new Map()
 const dead: DeadLink[] = []
 const findings: Finding[] = []
+const opened: Opened = new Set()
 
 beforeAll(async () => {
   browser = await launch()
+  const bare = startBare()
   await lookAtDemo()
-  await lookAtBare()
+  await lookAtBare(await bare)
 }, 900_000)
 afterAll(async () => {
   await browser?.close()
@@ -44,12 +47,11 @@ async function lookAtDemo(): Promise<void> {
   await lookAs(visitors)
   const running = await prepareRunning(server.url)
   const { views } = await crawl(routes, visitors[0]!, running.paths, () => false)
-  findings.push(...(await survey(browser, tellingViews(views, shown))))
+  findings.push(...(await survey(browser, tellingViews(views, shown), opened)))
   await running.stop()
 }
 
-async function lookAtBare(): Promise<void> {
-  const { server, stranger, setUp } = await startBare()
+async function lookAtBare({ server, stranger, setUp }: Awaited<ReturnType<typeof startBare>>): Promise<void> {
   servers.push(server)
   await lookAs([stranger])
   await lookAs([await setUp()])
@@ -58,7 +60,7 @@ async function lookAtBare(): Promise<void> {
 async function lookAs(visitors: Parameters<typeof exploreAs>[1]): Promise<void> {
   const found = await exploreAs(routes, visitors, shown)
   dead.push(...found.dead)
-  findings.push(...(await survey(browser, found.views)))
+  findings.push(...(await survey(browser, found.views, opened)))
 }
 
 describe.each(routes)('page $pattern', ({ pattern, file }) => {
@@ -73,6 +75,8 @@ describe.each(routes)('page $pattern', ({ pattern, file }) => {
   it('has one first heading and a title', () => expect(about('naming')).toEqual([]))
   it('has no violation that axe-core finds, in any theme, wide and narrow', () =>
     expect(about('accessibility')).toEqual([]))
+  it('opens menus, dialogs and explanations by key, without a violation, and gives the focus back', () =>
+    expect(about('popups')).toEqual([]))
   it('never scrolls sideways, 360 px wide', () => expect(about('width')).toEqual([]))
   it('leaves the console empty', () => expect(about('console')).toEqual([]))
 })

@@ -37,7 +37,7 @@ function foundFacts(embedding: EmbeddingView): Fact[] {
     {
       label: 'Longest chain',
       value: formatNumber(stats.chainLength.max),
-      unit: 'qubits',
+      unit: stats.chainLength.max === 1 ? 'qubit' : 'qubits',
       help: { id: 'longestChain', given: { histogram } },
       name: 'the length of the longest chain',
     },

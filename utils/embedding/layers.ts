@@ -99,14 +99,17 @@ export function ledgerRows(
   return chains.labels.map((label, variable) => {
     const broke = breaks.get(variable)
     const held = strengths.get(variable)
+    const qubits = chains.offsets[variable + 1]! - chains.offsets[variable]!
+    // A single qubit has no coupler to be held by: neither a strength nor a bound means anything.
+    const isHeld = qubits > 1
     return {
       variable,
       label,
-      qubits: chains.offsets[variable + 1]! - chains.offsets[variable]!,
+      qubits,
       couplers: chains.couplers[variable]!,
       // Samples keep the strength they were taken with, even after the sheet was changed.
-      strength: broke?.strength ?? held?.strength ?? null,
-      bound: broke?.cutBound ?? held?.cutBound ?? null,
+      strength: isHeld ? (broke?.strength ?? held?.strength ?? null) : null,
+      bound: isHeld ? (broke?.cutBound ?? held?.cutBound ?? null) : null,
       boundExact: held?.cutBoundExact,
       breaks: broke && { rate: broke.rate, low: broke.low, high: broke.high, count: broke.count, reads: broke.total },
       load: loads?.[variable] ?? null,

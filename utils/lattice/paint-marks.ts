@@ -1,5 +1,6 @@
 import type { Canvas2D } from './paint-edges'
 import type { SceneNode } from './scene-types'
+import { traceTriangle } from './shapes'
 import type { Tokens } from './tokens'
 import type { View } from './types'
 
@@ -57,12 +58,6 @@ function fillMark(ctx: Canvas2D, shape: SceneNode['shape'], x: number, y: number
     return ctx.fillRect(x - half, y - half, 2 * half, 2 * half)
   ctx.beginPath()
   if (shape === 'circle') ctx.arc(x, y, radius, 0, 2 * Math.PI)
-  else {
-    const tip = shape === 'up' ? -radius : radius
-    ctx.moveTo(x, y + tip)
-    ctx.lineTo(x + 0.866 * radius, y - tip / 2)
-    ctx.lineTo(x - 0.866 * radius, y - tip / 2)
-    ctx.closePath()
-  }
+  else traceTriangle(ctx, x, y, radius, shape)
   ctx.fill()
 }

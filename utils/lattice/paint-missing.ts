@@ -2,6 +2,7 @@ import type { Canvas2D } from './paint-edges'
 import { GROUND_DEFAULTS } from './ground'
 import type { Ground } from './ground'
 import { placesOfPair } from './places'
+import { traceDiamond } from './shapes'
 import type { Tokens } from './tokens'
 import type { LatticeData, View } from './types'
 
@@ -45,11 +46,7 @@ function paintMissingCouplers(ctx: Canvas2D, data: LatticeData, tokens: Tokens, 
     const [x1, y1, x2, y2] = placesOfPair(data.segments, pairs[k]!, pairs[k + 1]!)
     const px = x + (scale * (x1 + x2)) / 2
     const py = y + (scale * (y1 + y2)) / 2
-    ctx.moveTo(px, py - arm)
-    ctx.lineTo(px + arm, py)
-    ctx.lineTo(px, py + arm)
-    ctx.lineTo(px - arm, py)
-    ctx.closePath()
+    traceDiamond(ctx, px, py, arm)
   }
   ctx.fillStyle = tokens.paper
   ctx.fill()

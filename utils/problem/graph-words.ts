@@ -1,5 +1,5 @@
 import type { Form } from '#shared/engine/problem/problem'
-import { formatCount, formatInterval, formatNumber } from '../format'
+import { formatCount, formatNumber } from '../format'
 import type { CoefficientScale } from './coefficient-scale'
 
 /** How the coefficients of a form are written. */
@@ -15,7 +15,7 @@ export function stepWords({ bounds }: CoefficientScale, step: number): string {
   if (bounds.length === 1) return formatNumber(Math.sign(step) * end, { significant: 3, signed: true })
   const start = bounds[Math.abs(step) - 2] ?? 0
   const ends = step < 0 ? [-end, -start] : [start, end]
-  return formatInterval(ends[0], ends[1])
+  return ends.map((value) => formatNumber(value, { significant: 3 })).join(' to ')
 }
 
 /** One variable in a sentence, for what is read out. */

@@ -117,7 +117,7 @@ export function groupsSentence({ recognised, confirmed, complete }: GroupsView):
   const found =
     recognised.length > 0
       ? `${formatCount(recognised.length, 'group')} recognised in the coefficients; nobody has confirmed them yet.`
-      : 'None is recognised in the coefficients.'
+      : 'None was recognised in the coefficients.'
   const kept = confirmed?.length ? `${formatCount(confirmed.length, 'group')} confirmed.` : 'None is confirmed.'
   const parts = [
     confirmed ? kept : found,

@@ -53,7 +53,7 @@ export function referenceFacts(look: ReferenceItem, sense: 'min' | 'max'): Fact[
       name: 'the reference optimum',
     },
     {
-      label: 'Status',
+      label: 'Outcome',
       value: proved ? 'proved' : 'best found',
       mark: proved ? 'passed' : 'caution',
       note: proved && tolerance > 0 ? `within ${formatNumber(tolerance, { significant: 2 })}` : undefined,

@@ -92,7 +92,7 @@ export function structureLines(details: StructureDetailsView, structure: Structu
         }
       : null,
     {
-      label: 'Different values',
+      label: 'Distinct values',
       value: `${formatNumber(distinct.interactions)} of interactions, ${formatNumber(distinct.linear)} of fields`,
     },
     { label: 'Signs of J', value: signsText(couplings) },

@@ -63,6 +63,8 @@ export interface MenuItem {
   /** A file or another site rather than a page. */
   href?: string
   disabled?: boolean
+  /** It opens a dialog and does nothing by itself. */
+  opensDialog?: boolean
   /** Undoes much: shown in clay, after a rule. */
   undo?: boolean
 }

@@ -55,7 +55,7 @@ export const rehearsalJob: JobKindHandler = {
           reads,
           seconds,
           ...figures,
-          reason: cancelled ? `Cancelled after ${reads} reads.` : null,
+          reason: cancelled ? `Cancelled after ${groupDigits(reads)} ${reads === 1 ? 'read' : 'reads'}.` : null,
         })
         if (!kept) throw new Error(DELETED)
       },

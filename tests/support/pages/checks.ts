@@ -14,6 +14,7 @@ export const WIDE = { width: 1280, height: 900 }
 declare global {
   interface Window {
     axe: typeof axe
+    chosenTexts: Element[]
   }
 }
 
@@ -53,11 +54,25 @@ export async function unfold(page: Page): Promise<void> {
   await loaded(page)
 }
 
+/** Unfolds what the page puts behind a button when it is narrow: the way to the other pages. */
+export async function openNarrowMenu(page: Page): Promise<void> {
+  await twoFrames(page)
+  await page.evaluate(() => {
+    const folded = document.querySelectorAll<HTMLButtonElement>('header button[aria-expanded="false"]')
+    for (const button of folded) if (button.checkVisibility() && !button.ariaHasPopup) button.click()
+  })
+  await twoFrames(page)
+}
+
 /** Rules about colours, the only ones that a theme can break. */
 const COLOUR_RULES = ['color-contrast', 'link-in-text-block']
 
-/** Violations, each with the first places that show it. */
-export async function violations(page: Page, about: 'all' | 'colours' | 'all but colours' = 'all'): Promise<string[]> {
+/** Violations on the page or in some of its parts, each with the first places that show it. */
+export async function violations(
+  page: Page,
+  about: 'all' | 'colours' | 'all but colours' = 'all',
+  within?: string,
+): Promise<string[]> {
   if (!(await page.evaluate(() => 'axe' in window))) await page.evaluate(AXE)
   const without = Object.fromEntries(COLOUR_RULES.map((rule) => [rule, { enabled: about === 'all' }]))
   const options: axe.RunOptions = {
@@ -66,13 +81,51 @@ export async function violations(page: Page, about: 'all' | 'colours' | 'all but
       ? { runOnly: { type: 'rule', values: COLOUR_RULES } }
       : { runOnly: { type: 'tag', values: TAGS }, rules: without }),
   }
-  return page.evaluate(async (asked) => {
-    const { violations: found } = await window.axe.run(document, asked)
-    return found.map(({ id, help, nodes }) => {
-      const places = nodes.slice(0, 3).map(({ target, any }) => `${target.join(' ')} (${any[0]?.message ?? ''})`)
-      return `${id}: ${help}, ${nodes.length}×: ${places.join('; ')}`
-    })
-  }, options)
+  if (about === 'colours') await chooseTexts(page, within)
+  return page.evaluate(
+    async ({ asked, where, isChosen }) => {
+      const include = isChosen ? window.chosenTexts : where ? [where] : [document]
+      if (include.length === 0) return []
+      const { violations: found } = await window.axe.run({ include }, asked)
+      return found.map(({ id, help, nodes }) => {
+        const places = nodes.slice(0, 3).map(({ target, any }) => `${target.join(' ')} (${any[0]?.message ?? ''})`)
+        return `${id}: ${help}, ${nodes.length}×: ${places.join('; ')}`
+      })
+    },
+    { asked: options, where: within, isChosen: about === 'colours' },
+  )
+}
+
+/**
+ * Leaves on the window one of all texts that have the same colours: their own, and those of everything they stand on.
+ * A table of a thousand rows is three or four of them.
+ */
+async function chooseTexts(page: Page, within = 'body'): Promise<void> {
+  await page.evaluate((where) => {
+    const stacks = new Map<Element, string>()
+    const stackOf = (element: Element): string => {
+      const known = stacks.get(element)
+      if (known !== undefined) return known
+      const style = getComputedStyle(element)
+      const own = [style.color, style.backgroundColor, style.backgroundImage, style.opacity, style.position]
+      const beneath = element.parentElement ? stackOf(element.parentElement) : ''
+      // What paints nothing of its own changes nothing.
+      const stack = beneath.endsWith(own.join()) ? beneath : `${beneath} > ${own.join()}`
+      stacks.set(element, stack)
+      return stack
+    }
+    const chosen = new Map<string, Element>()
+    for (const element of document.querySelectorAll(`:is(${where}), :is(${where}) *`)) {
+      const hasText = [...element.childNodes].some(
+        (node) => node.nodeType === Node.TEXT_NODE && node.textContent?.trim(),
+      )
+      if (!hasText && !element.matches('input, textarea, select')) continue
+      const { fontSize, fontWeight, textDecorationLine } = getComputedStyle(element)
+      const looks = [element.tagName, fontSize, fontWeight, textDecorationLine, stackOf(element)].join()
+      if (!chosen.has(looks) && element.checkVisibility()) chosen.set(looks, element)
+    }
+    window.chosenTexts = [...chosen.values()]
+  }, within)
 }
 
 /** Elements that reach over the right edge where the page has to be scrolled sideways; none where it has not. */

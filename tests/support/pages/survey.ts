@@ -1,11 +1,14 @@
-import type { Browser, BrowserContext } from 'playwright-core'
+import type { Browser, BrowserContext, Page } from 'playwright-core'
 import { watchPage } from '../browser'
-import { NARROW, naming, settled, sideways, twoFrames, unfold, violations, WIDE } from './checks'
+import type { Client } from '../client'
+import { NARROW, naming, openNarrowMenu, settled, sideways, unfold, violations, WIDE } from './checks'
 import type { View } from './crawl'
+import type { Opened } from './popups'
+import { lookAtPopups } from './popups'
 import { themesOf, wear } from './themes'
 
 /** What is looked for on a page. */
-export type Aspect = 'naming' | 'accessibility' | 'width' | 'console'
+export type Aspect = 'naming' | 'accessibility' | 'popups' | 'width' | 'console'
 
 export interface Finding {
   readonly pattern: string
@@ -30,11 +33,17 @@ export function summaryOf(findings: readonly Finding[], pattern: string, aspect:
 const AT_ONCE = 3
 
 /** Opens every view in a browser of its person and says what is wrong with it. */
-export async function survey(browser: Browser, views: readonly View[]): Promise<Finding[]> {
+export async function survey(browser: Browser, views: readonly View[], opened: Opened = new Set()): Promise<Finding[]> {
   const findings: Finding[] = []
   const waiting = [...views]
   const worker = async (): Promise<void> => {
-    for (let view = waiting.shift(); view; view = waiting.shift()) findings.push(...(await lookAt(browser, view)))
+    const desks = new Map<Client, Desk>()
+    for (let view = waiting.shift(); view; view = waiting.shift()) {
+      const desk = desks.get(view.client) ?? (await openDesk(browser, view))
+      desks.set(view.client, desk)
+      findings.push(...(await lookAt(desk, view, opened)))
+    }
+    await Promise.all([...desks.values()].map(({ page }) => page.context().close()))
   }
   await Promise.all(Array.from({ length: AT_ONCE }, worker))
   return findings
@@ -47,35 +56,56 @@ export async function openWindow(browser: Browser, { client }: Pick<View, 'clien
   return context
 }
 
-async function lookAt(browser: Browser, view: View): Promise<Finding[]> {
+/** One page of one person that goes from view to view: scripts once fetched and compiled stay so. */
+interface Desk {
+  readonly page: Page
+  /** What the view that is open complained about. */
+  readonly complaints: string[]
+}
+
+async function openDesk(browser: Browser, view: View): Promise<Desk> {
+  const page = await (await openWindow(browser, view)).newPage()
+  return { page, complaints: watchPage(page, view.client.url) }
+}
+
+/** The next view begins as on the first visit, with nothing remembered of the one before. */
+async function goTo({ page, complaints }: Desk, address: string): Promise<void> {
+  await page.evaluate(() => (localStorage.clear(), sessionStorage.clear())).catch(() => undefined)
+  await page.setViewportSize(WIDE)
+  await page.goto('about:blank')
+  complaints.length = 0
+  await page.goto(address)
+  await settled(page)
+}
+
+async function lookAt(desk: Desk, view: View, opened: Opened): Promise<Finding[]> {
   const { route, path, person, client, headings } = view
+  const { page, complaints } = desk
   const findings: Finding[] = []
   const add = (aspect: Aspect, problems: string[], how = ''): void => {
     const where = `${path} as ${person ?? 'a stranger'}${how}`
     for (const problem of problems) findings.push({ pattern: route.pattern, aspect, problem, where })
   }
   if (headings !== 1) add('naming', [`${headings} headings of the first level`], ' as served')
-  const context = await openWindow(browser, view)
-  const page = await context.newPage()
-  const complaints = watchPage(page, client.url)
   try {
-    await page.goto(client.url + path)
-    await settled(page)
+    await goTo(desk, client.url + path)
     add('naming', await naming(page))
     await unfold(page)
     add('accessibility', await violations(page))
-    for (const theme of (await themesOf(page)).filter((name) => name !== 'light')) {
+    const themes = await themesOf(page)
+    for (const theme of themes.filter((name) => name !== 'light')) {
       await wear(page, theme)
       add('accessibility', await violations(page, 'colours'), `, ${theme}`)
     }
+    await wear(page, 'light')
+    add('popups', await lookAtPopups(page, { pattern: route.pattern, themes, opened }))
     await page.setViewportSize(NARROW)
-    await twoFrames(page)
+    await openNarrowMenu(page)
     add('width', await sideways(page))
     add('accessibility', await violations(page, 'all but colours'), ', narrow')
   } catch (error) {
-    add('console', [error instanceof Error ? error.message : String(error)])
+    add('console', [(error instanceof Error ? error.message : String(error)).split('\n')[0]!])
   }
   add('console', complaints)
-  await context.close()
   return findings
 }

@@ -112,7 +112,7 @@ describe('Compare', async () => {
     ])
     const readers = table(false)
     expect(readers.findAll('input:not(:disabled)')).toHaveLength(0)
-    expect(readers.text()).not.toContain('Take the mark away')
+    expect(readers.text()).not.toContain('Remove the mark')
   })
 })
 

@@ -1,5 +1,6 @@
 import { percent } from '../figures'
 import { SCENE_DEFAULTS } from '../scene-types'
+import { traceBand, traceDiamond, traceTriangle } from '../shapes'
 import type { StageLook, StageSource } from '../stage-types'
 import type { Tokens } from '../tokens'
 import type { Canvas2D } from '../paint-edges'
@@ -35,8 +36,8 @@ const LENS_ITEMS: Record<StageLook['lens'], (look: StageLook) => LegendItem[]> =
   breaks: ({ read }) =>
     read
       ? [
-          { words: 'up', paint: (ctx, tokens) => paintGlyph(ctx, tokens, -1) },
-          { words: 'down', paint: (ctx, tokens) => paintGlyph(ctx, tokens, 1) },
+          { words: 'up', paint: (ctx, tokens) => paintGlyph(ctx, tokens, 'up') },
+          { words: 'down', paint: (ctx, tokens) => paintGlyph(ctx, tokens, 'down') },
           { words: 'disagree in this read', paint: paintDashes },
         ]
       : [
@@ -63,11 +64,7 @@ const paintDashes: LegendItem['paint'] = (ctx, { clay }) => paintLine(ctx, clay,
 
 function paintBand(ctx: Canvas2D, { ink2 }: Tokens) {
   ctx.beginPath()
-  ctx.moveTo(4, 4)
-  ctx.arc(4, 0, 4, Math.PI / 2, 1.5 * Math.PI)
-  ctx.lineTo(24, -4)
-  ctx.arc(24, 0, 4, -Math.PI / 2, Math.PI / 2)
-  ctx.closePath()
+  traceBand(ctx, 4, 24, 0, 4)
   ctx.fillStyle = ink2
   ctx.fill()
 }
@@ -105,14 +102,10 @@ function paintFullTube(ctx: Canvas2D, { paper, ink, ochre }: Tokens) {
   ctx.stroke()
 }
 
-/** @param tip side on which the tip lies, −1 above */
-function paintGlyph(ctx: Canvas2D, { ink, paper }: Tokens, tip: -1 | 1) {
+function paintGlyph(ctx: Canvas2D, { ink, paper }: Tokens, points: 'up' | 'down') {
   ctx.beginPath()
-  ctx.moveTo(14, 5 * tip)
-  ctx.lineTo(19, -4 * tip)
-  ctx.lineTo(9, -4 * tip)
-  ctx.closePath()
-  ctx.fillStyle = tip < 0 ? ink : paper
+  traceTriangle(ctx, 14, points === 'up' ? 1 : -1, 5.5, points)
+  ctx.fillStyle = points === 'up' ? ink : paper
   ctx.fill()
   ctx.strokeStyle = ink
   ctx.lineWidth = 1.2
@@ -132,11 +125,7 @@ function paintRing(ctx: Canvas2D, { paper, ink }: Tokens) {
 
 function paintOutline(ctx: Canvas2D, { ink }: Tokens) {
   ctx.beginPath()
-  ctx.moveTo(4, 4)
-  ctx.arc(4, 0, 4, Math.PI / 2, 1.5 * Math.PI)
-  ctx.lineTo(24, -4)
-  ctx.arc(24, 0, 4, -Math.PI / 2, Math.PI / 2)
-  ctx.closePath()
+  traceBand(ctx, 4, 24, 0, 4)
   ctx.strokeStyle = ink
   ctx.lineWidth = 2
   ctx.stroke()
@@ -154,11 +143,7 @@ const paintSquare: LegendItem['paint'] = (ctx, { paper, ink2 }) => box(ctx, [10.
 
 function paintDiamond(ctx: Canvas2D, { paper, edge }: Tokens) {
   ctx.beginPath()
-  ctx.moveTo(14, -3.5)
-  ctx.lineTo(17.5, 0)
-  ctx.lineTo(14, 3.5)
-  ctx.lineTo(10.5, 0)
-  ctx.closePath()
+  traceDiamond(ctx, 14, 0, 3.5)
   ctx.fillStyle = paper
   ctx.fill()
   ctx.strokeStyle = edge

@@ -226,11 +226,12 @@ class SvgPen {
   }
   fillText(text: string, x: number, y: number): void {
     const { font, textAlign, textBaseline, fillStyle } = this.pen
-    const { weight, size, family } = fontOf(font)
+    const { weight, size, family, isMono } = fontOf(font)
     const base = textBaseline === 'middle' ? y + MIDDLE * size : y
     const anchor = ANCHORS[textAlign] ? ` text-anchor="${ANCHORS[textAlign]}"` : ''
+    const width = isMono ? ` textLength="${at(this.measureText(text).width)}" lengthAdjust="spacingAndGlyphs"` : ''
     this.lines.push(
-      `<text x="${at(x)}" y="${at(base)}" font-family="${escapeXml(family)}" font-size="${at(size)}" font-weight="${weight}"${anchor} fill="${String(fillStyle)}"${this.placing()}>${escapeXml(text)}</text>`,
+      `<text x="${at(x)}" y="${at(base)}" font-family="${escapeXml(family)}" font-size="${at(size)}" font-weight="${weight}"${anchor}${width} fill="${String(fillStyle)}"${this.placing()}>${escapeXml(text)}</text>`,
     )
   }
 
@@ -247,8 +248,18 @@ class SvgPen {
   }
 }
 
-/** Weight, size in pixels and family of a canvas font such as `600 13px "IBM Plex Mono", monospace`. */
+/**
+ * The file is read where our fonts may be missing: what comes close follows, and the mono face keeps its width by
+ * `textLength`, so that no label grows out of its tag.
+ */
+const FAMILIES = {
+  mono: "'IBM Plex Mono', ui-monospace, 'DejaVu Sans Mono', Menlo, Consolas, monospace",
+  sans: "'IBM Plex Sans', system-ui, 'Segoe UI', Helvetica, Arial, sans-serif",
+}
+
+/** Weight, size in pixels and families of a canvas font such as `600 13px "IBM Plex Mono", monospace`. */
 function fontOf(font: string): { weight: string; size: number; family: string; isMono: boolean } {
   const [, weight = '400', size = '10', family = 'sans-serif'] = /^(\d+) ([\d.]+)px (.*)$/.exec(font) ?? []
-  return { weight, size: Number(size), family, isMono: /mono/i.test(family) }
+  const isMono = /mono/i.test(family)
+  return { weight, size: Number(size), family: FAMILIES[isMono ? 'mono' : 'sans'], isMono }
 }

@@ -9,9 +9,9 @@ import type { ChartAxis, ChartInput, ChartLook, ChartPoint, ChartSeries } from '
 
 const SANS = '"IBM Plex Sans", sans-serif'
 const MONO = '"IBM Plex Mono", monospace'
-/** Bars stand apart by one pixel, as ruled columns do. */
-/** A few bars stand on the axis as bars: as wide as their bins they would be slabs of ink. */
+/** A few bars of single values stand on the axis as bars: as wide as there is room they would be slabs of ink. */
 const WIDEST_BAR = 72
+/** Bars stand apart by one pixel, as ruled columns do. */
 const BAR_GAP = 1
 /** Width of one digit or letter of a label in a chart of rates. */
 const LABEL_LETTER = 7.6
@@ -44,7 +44,7 @@ function barDataset(input: ChartInput, index: number, palette: Palette): ChartDa
       const scale = context.chart.scales.x
       if (!scale) return 1
       const room = Math.abs(scale.getPixelForValue(width) - scale.getPixelForValue(0)) - BAR_GAP
-      return Math.min(WIDEST_BAR, Math.max(1, room))
+      return Math.min(input.binned ? Infinity : WIDEST_BAR, Math.max(1, room))
     }) as unknown as number,
     grouped: false,
     order: 2,

@@ -73,6 +73,8 @@ export interface ChartInput {
   series: ChartSeries[]
   /** Width of one bar in units of x; without it the smallest distance between bars. */
   binWidth?: number
+  /** Bars stand for stretches of the x axis and fill them, however few they are. */
+  binned?: boolean
   rules?: ChartRule[]
   spans?: ChartSpan[]
 }

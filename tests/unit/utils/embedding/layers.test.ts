@@ -71,7 +71,8 @@ describe('ledgerRows', () => {
     expect(a).toMatchObject({ strength: 1.5, bound: 2.5, breaks: { rate: 0.05, count: 5, reads: 100 } })
     expect(a!.load).toMatchObject({ field: 0.5, coupling: -1.8 })
     expect(a!.load!.sum).toBeCloseTo(0.1, 6)
-    expect(b).toMatchObject({ strength: 1.8, boundExact: false, breaks: undefined })
+    // A single qubit is held by no coupler.
+    expect(b).toMatchObject({ strength: null, bound: null, breaks: undefined })
     expect(b!.load).toMatchObject({ field: 3, coupling: 0.6 })
   })
 })

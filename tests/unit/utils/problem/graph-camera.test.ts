@@ -101,7 +101,13 @@ describe('lines', () => {
 describe('words', () => {
   it('name the coefficients of a step', () => {
     const scale = { bounds: [2, 4, 6, 8] }
-    expect([-4, -1, 0, 1, 4].map((step) => stepWords(scale, step))).toEqual(['−8 to −6', '−2 to 0', '0', '0–2', '6–8'])
+    expect([-4, -1, 0, 1, 4].map((step) => stepWords(scale, step))).toEqual([
+      '−8 to −6',
+      '−2 to 0',
+      '0',
+      '0 to 2',
+      '6 to 8',
+    ])
     expect([-1, 1].map((step) => stepWords({ bounds: [3] }, step))).toEqual(['−3', '+3'])
   })
 

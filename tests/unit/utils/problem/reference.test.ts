@@ -73,12 +73,12 @@ describe('looks for an optimum', () => {
 
 describe('the strip', () => {
   it('has a bound and a gap only where the value is not proved', () => {
-    expect(referenceFacts(look(), 'min').map(({ label }) => label)).toEqual(['Lowest energy', 'Status', 'Took'])
+    expect(referenceFacts(look(), 'min').map(({ label }) => label)).toEqual(['Lowest energy', 'Outcome', 'Took'])
     const open = look({ status: 'best found', bound: -230, gap: 29, optima: 4 })
     const facts = referenceFacts(open, 'max')
     expect(facts.map(({ label, value }) => [label, value])).toEqual([
       ['Highest value', '−201'],
-      ['Status', 'best found'],
+      ['Outcome', 'best found'],
       ['Not above', '−230'],
       ['Gap', '29'],
       ['States that have it', '4'],

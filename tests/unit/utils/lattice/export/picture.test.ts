@@ -97,6 +97,20 @@ describe('an SVG picture', () => {
     expect(svg.querySelector('path')!.getAttribute('fill')).toBe(light.paper)
   })
 
+  it('keeps each label within its tag where the fonts are missing', () => {
+    const long = { ...TWO, labels: ['a longer label', 'b'] }
+    const labels = [...group(open(drawn(HAND_DRAWN, long)), 'labels').querySelectorAll('text')]
+    expect(labels.length).toBeGreaterThan(0)
+    for (const label of labels) {
+      expect(label.getAttribute('font-family')).toMatch(/^'IBM Plex Mono', ui-monospace, .*, monospace$/)
+      const size = Number(label.getAttribute('font-size'))
+      // Every sign of the mono face is 0.6 of its size wide.
+      expect(Number(label.getAttribute('textLength'))).toBeCloseTo(0.6 * size * label.textContent!.length, 1)
+      expect(label.getAttribute('lengthAdjust')).toBe('spacingAndGlyphs')
+    }
+    expect(open(drawn(HAND_DRAWN, long)).querySelector('g[id="legend"] text')!.getAttribute('textLength')).toBe(null)
+  })
+
   it('draws the free qubits of the machine, and marks the missing ones', () => {
     const usable = Uint8Array.of(1, 0, 1, 1, 1)
     const svg = open(drawn({ ...HAND_DRAWN, usable }, layerOf([[0, 3]], [])))
