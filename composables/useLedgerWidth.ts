@@ -1,4 +1,7 @@
-/** Width of the ledger in pixels, and whether it is worked with fingers. */
+/** Size of the root's letters that the pixels of the ledger's columns are meant for. */
+const ROOT_PIXELS = 16
+
+/** Width of the ledger in pixels of letters of the usual size, and whether it is worked with fingers. */
 export function useLedgerWidth(element: Ref<HTMLElement | undefined>) {
   const width = ref(480)
   const isTouch = ref(false)
@@ -9,7 +12,11 @@ export function useLedgerWidth(element: Ref<HTMLElement | undefined>) {
     pointer = matchMedia('(pointer: coarse)')
     pointer.addEventListener('change', readPointer)
     readPointer()
-    observer = new ResizeObserver(([entry]) => (width.value = entry!.contentRect.width))
+    observer = new ResizeObserver(([entry]) => {
+      // On very large screens letters are larger: so must the columns be, and fewer of them fit.
+      const root = Number.parseFloat(getComputedStyle(document.documentElement).fontSize) || ROOT_PIXELS
+      width.value = (ROOT_PIXELS * entry!.contentRect.width) / root
+    })
     if (element.value) observer.observe(element.value)
   })
   onBeforeUnmount(() => {

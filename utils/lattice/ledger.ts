@@ -86,7 +86,7 @@ export function columnsFor(rows: readonly LedgerRow[], lens: Lens, width: number
   const hasBar = lens === 'occupancy' && needed(columns) + LEDGER_DEFAULTS.barWidth <= width
   const template = columns.map((column) => {
     const least = widthOfColumn(column, longestLabel) + (hasBar && column === 'qubits' ? LEDGER_DEFAULTS.barWidth : 0)
-    return `minmax(${least}px, ${column === 'variable' ? 1.4 : 1}fr)`
+    return `minmax(${least / 16}rem, ${column === 'variable' ? 1.4 : 1}fr)`
   })
   return { columns, hasBar, template: template.join(' ') }
 }
