@@ -26,11 +26,18 @@ export function useRepairs(machineId: MaybeRefOrGetter<string>, refresh: () => P
   return { repairing, refused, repair }
 }
 
-/** Embeddings that calibrations of a machine broke, followed as long as a repair runs. */
-export async function useBroken(machineId: MaybeRefOrGetter<string>) {
-  const { data: list, refresh } = await useResource<BrokenList>(() => `/api/machines/${toValue(machineId)}/broken`)
+/** Embeddings that calibrations of a machine broke. */
+export const useBrokenList = (machineId: MaybeRefOrGetter<string>) =>
+  useResource<BrokenList>(() => `/api/machines/${toValue(machineId)}/broken`)
+
+/** Repairing those of a machine, followed as long as a repair runs. */
+export function useBroken(
+  machineId: MaybeRefOrGetter<string>,
+  list: Ref<BrokenList | undefined>,
+  refresh: () => Promise<unknown>,
+) {
   useRefreshWhile(() => list.value?.items.some(({ state }) => state === 'running') ?? false, refresh)
-  return { list, refresh, ...useRepairs(machineId, refresh) }
+  return useRepairs(machineId, refresh)
 }
 
 /** Repairing the one broken embedding of a page, followed as long as that runs. */

@@ -2,14 +2,20 @@ import type { MailState, OutboxView } from '#shared/schemas/mail'
 
 const PER_PAGE = 50
 
-/** Messages to the people of the workspace, looked at again as long as one waits. */
-export async function useOutbox(state: MaybeRefOrGetter<MailState | null>) {
-  const address = computed(() => {
-    const chosen = toValue(state)
-    return `/api/outbox?limit=${PER_PAGE}${chosen ? `&state=${encodeURIComponent(chosen)}` : ''}`
-  })
-  const { data: outbox, failure, refresh, status } = await useResource<OutboxView>(address)
+function addressOf(state: MailState | null): string {
+  return `/api/outbox?limit=${PER_PAGE}${state ? `&state=${encodeURIComponent(state)}` : ''}`
+}
+
+/** Messages to the people of the workspace, the first page. */
+export const useOutbox = (state: MaybeRefOrGetter<MailState | null>) =>
+  useResource<OutboxView>(() => addressOf(toValue(state)))
+
+/** Further pages; all is looked at again as long as a message waits. */
+export function useOutboxPages(
+  state: MaybeRefOrGetter<MailState | null>,
+  outbox: Ref<OutboxView | undefined>,
+  refresh: () => Promise<unknown>,
+) {
   useRefreshWhile(() => (outbox.value?.counts.waiting ?? 0) > 0, refresh)
-  const later = useLaterPages(outbox, (cursor) => `${address.value}&cursor=${cursor}`)
-  return { outbox, failure, refresh, status, ...later }
+  return useLaterPages(outbox, (cursor) => `${addressOf(toValue(state))}&cursor=${cursor}`)
 }
