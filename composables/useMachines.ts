@@ -1,12 +1,33 @@
 import type { Page } from '#shared/schemas/common'
-import type { CalibrationSaved, MachineCapacity, MachineItem, MachineView } from '#shared/schemas/machines'
+import type {
+  CalibrationComparison,
+  CalibrationSaved,
+  MachineCapacity,
+  MachineItem,
+  MachineView,
+} from '#shared/schemas/machines'
 import { unpackArrays } from '#shared/packed-arrays'
 import type { ApiFailure } from './useApi'
 
 export const useMachines = () => useResource<Page<MachineItem>>('/api/machines?limit=200')
 
-export const useMachine = (id: MaybeRefOrGetter<string>) =>
-  useResource<MachineView>(() => `/api/machines/${toValue(id)}`)
+/** A machine at a calibration; without a number, at the one in force. */
+export const useMachine = (id: MaybeRefOrGetter<string>, calibration?: MaybeRefOrGetter<string | undefined>) =>
+  useResource<MachineView>(() => {
+    const number = toValue(calibration)
+    const query = number === undefined ? '' : `?calibration=${encodeURIComponent(number)}`
+    return `/api/machines/${toValue(id)}${query}`
+  })
+
+/** What differs between two calibrations of a machine. */
+export const useCalibrationComparison = (
+  id: MaybeRefOrGetter<string>,
+  numbers: MaybeRefOrGetter<{ from: number; to: number }>,
+) =>
+  useResource<CalibrationComparison>(() => {
+    const { from, to } = toValue(numbers)
+    return `/api/machines/${toValue(id)}/calibrations/compare?from=${from}&to=${to}`
+  })
 
 /** Typed arrays of the lattice view; see GET /api/machines/:id/lattice. */
 export interface LatticeArrays {
@@ -16,6 +37,8 @@ export interface LatticeArrays {
   ends: Uint32Array
   places: Float32Array
   missingCouplers: Uint32Array
+  /** Qubit pairs whose coupler cannot be used since one of the two is missing. */
+  couplersOfMissing: Uint32Array
 }
 
 /** The machine's geometry at a calibration, loaded in the browser only. */

@@ -14,6 +14,7 @@ import type {
   MachineSheet,
   MachineView,
 } from '../../shared/schemas/machines'
+import { sheetDifference } from '../../shared/sheet-difference'
 import type { Actor, App } from '../app'
 import type { Db } from '../database/client'
 import type { MachineRow } from '../database/repositories/machines'
@@ -167,8 +168,10 @@ export async function machinesOf(app: App, actor: Actor, query: PageQuery): Prom
   return pageOf(items, query.limit, position)
 }
 
-export async function machineView(app: App, actor: Actor, id: string): Promise<MachineView> {
-  const { machine, calibration, sheet, graph } = await calibratedMachine(app, actor, id)
+/** A machine at a calibration; without a number, at the one in force. */
+export async function machineView(app: App, actor: Actor, id: string, number?: number): Promise<MachineView> {
+  const { machine, calibration, sheet, graph } = await calibratedMachine(app, actor, id, number)
+  const earlier = await findCalibration(app.db, id, calibration.number - 1)
   const calibrations = await calibrationItems(app, machine)
   let maxDegree = 0
   for (let v = 0; v < graph.order; v++) maxDegree = Math.max(maxDegree, degreeOf(graph, v))
@@ -177,8 +180,9 @@ export async function machineView(app: App, actor: Actor, id: string): Promise<M
     note: machine.note,
     familySizes: machine.family,
     maxDegree,
+    shown: calibration.number,
     sheet,
-    previousSheet: (await findCalibration(app.db, id, machine.calibration - 1))?.sheet ?? null,
+    changes: earlier ? sheetDifference(earlier.sheet, sheet) : null,
     calibrations,
   }
 }
@@ -186,17 +190,13 @@ export async function machineView(app: App, actor: Actor, id: string): Promise<M
 /** Every calibration, newest first, with the embeddings that it broke. */
 async function calibrationItems(app: App, machine: MachineRow): Promise<CalibrationItem[]> {
   const broken = await listBrokenEmbeddings(app.db, machine.id)
-  return (await listCalibrations(app.db, machine.id)).map(({ calibration, savedBy }) => ({
-    number: calibration.number,
-    missingQubits: qubitCount(machine.family) - calibration.qubits,
-    missingCouplers: couplerCount(machine.family) - calibration.couplers,
-    controlError: calibration.sheet.controlError,
-    temperatureMillikelvin: calibration.sheet.temperatureMillikelvin,
-    remark: calibration.sheet.remark,
-    savedBy,
-    savedAt: calibration.createdAt.toISOString(),
+  return (await listCalibrations(app.db, machine.id)).map(({ qubits, couplers, createdAt, ...item }) => ({
+    ...item,
+    missingQubits: qubitCount(machine.family) - qubits,
+    missingCouplers: couplerCount(machine.family) - couplers,
+    savedAt: createdAt.toISOString(),
     broke: broken
-      .filter(({ broken }) => broken.calibration === calibration.number)
+      .filter(({ broken }) => broken.calibration === item.number)
       .map(({ embedding, problem }) => ({ id: embedding.id, number: embedding.number, problem: problem.name })),
   }))
 }

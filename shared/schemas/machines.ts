@@ -1,6 +1,7 @@
 import { z } from 'zod'
 import type { Family } from '../engine/machine/fabric'
 import { ENERGY_TABLE_LIMITS, energyTableIssues } from '../engine/machine/energy-table'
+import type { SheetDifference } from '../sheet-difference'
 import type { Person } from './common'
 import { calibrationNumberSchema, nameSchema, textSchema } from './common'
 
@@ -119,6 +120,13 @@ export type Calibrate = z.infer<typeof calibrateSchema>
 export const calibrationQuerySchema = z.object({
   calibration: z.coerce.number().pipe(calibrationNumberSchema).optional(),
 })
+/** Two calibrations of a machine, in any order. */
+export const compareCalibrationsSchema = z.object({
+  from: z.coerce.number().pipe(calibrationNumberSchema),
+  to: z.coerce.number().pipe(calibrationNumberSchema),
+  format: z.enum(['json', 'csv']).default('json'),
+})
+
 export const graphQuerySchema = calibrationQuerySchema.extend({
   format: z.enum(['json', 'csv', 'mtx']).default('json'),
 })
@@ -153,10 +161,32 @@ export interface MachineView extends MachineItem {
   note: string
   familySizes: Family
   maxDegree: number
+  /** The calibration that sheet, counts and changes are of; `calibration` is the one in force. */
+  shown: number
   sheet: MachineSheet
-  /** The sheet of the calibration before, to tell what changed; null at the first. */
-  previousSheet: MachineSheet | null
+  /** Against the calibration before; null at the first. */
+  changes: SheetDifference | null
   calibrations: CalibrationItem[]
+}
+
+/** One side of a comparison. */
+export interface ComparedCalibration {
+  number: number
+  savedBy: Person
+  savedAt: string
+  remark: string
+  /** Working ones. */
+  qubits: number
+  couplers: number
+  temperatureMillikelvin: number | null
+  energyTable: MachineSheet['energyTable']
+}
+
+export interface CalibrationComparison {
+  machine: { id: string; name: string; calibration: number }
+  from: ComparedCalibration
+  to: ComparedCalibration
+  difference: SheetDifference
 }
 
 export interface CalibrationSaved {

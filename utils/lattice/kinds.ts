@@ -4,7 +4,8 @@ import type { BreakLayer, ChainLayer, Lens, LoadLayer } from './types'
  * Kinds of thing that the legend of the lattice can hide. `couplers` are the rings on the chain in focus, `breaks` the
  * couplers that disagreed with their rates, `labels` the tags on the bands.
  */
-export type LatticeKind = 'free' | 'missing' | 'missingCouplers' | 'marks' | 'labels' | 'couplers' | 'breaks'
+export type LatticeKind =
+  'free' | 'missing' | 'missingCouplers' | 'marks' | 'regained' | 'labels' | 'couplers' | 'breaks'
 
 /** Chains that are alike in the lens that is on. */
 export interface ChainClass {

@@ -15,6 +15,7 @@ export type LegendSign =
   | 'missing'
   | 'missing-coupler'
   | 'marked'
+  | 'regained'
   | 'label'
 
 export interface LegendEntry {
@@ -32,6 +33,7 @@ export interface LegendInput {
   readonly missing: boolean
   readonly missingCouplers: boolean
   readonly marks: string | null
+  readonly regained?: string | null
 }
 
 /** What the lattice shows at the moment, the lens first. */
@@ -42,6 +44,7 @@ export function legendEntries({
   missing,
   missingCouplers,
   marks,
+  regained,
 }: LegendInput): LegendEntry[] {
   const entries: LegendEntry[] = []
   if (lens === 'occupancy') entries.push({ sign: 'band', words: 'chain' })
@@ -63,6 +66,7 @@ export function legendEntries({
   if (missingCouplers)
     entries.push({ sign: 'missing-coupler', words: 'missing coupler between working qubits', kind: 'missingCouplers' })
   if (marks) entries.push({ sign: 'marked', words: marks, kind: 'marks' })
+  if (regained) entries.push({ sign: 'regained', words: regained, kind: 'regained' })
   return entries
 }
 
@@ -77,6 +81,7 @@ export function kindCounts(
     free: working - new Set(chains?.qubits).size,
     missing: usable.length - working,
     missingCouplers: (missingCouplers?.length ?? 0) / 2,
-    marks: marks?.qubits.length ?? 0,
+    marks: (marks?.qubits.length ?? 0) + (marks?.couplers?.length ?? 0) / 2,
+    regained: (marks?.regained?.qubits.length ?? 0) + (marks?.regained?.couplers.length ?? 0) / 2,
   }
 }

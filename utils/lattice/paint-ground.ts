@@ -4,7 +4,7 @@ import type { Ground } from './ground'
 import type { Canvas2D } from './paint-edges'
 import { isOfPoints } from './scene'
 import { SCENE_DEFAULTS } from './scene-types'
-import { paintMissing } from './paint-missing'
+import { paintMissing, paintPointedOut } from './paint-missing'
 import type { View } from './types'
 
 /**
@@ -29,6 +29,7 @@ export function* paintGround(
   yield
   // From afar the holes in the field tell where qubits are missing: squares around them would be all that one sees.
   if (!points || !isFar) paintMissing(ctx, ground, view, width, height)
+  paintPointedOut(ctx, ground, view, { width, height })
 }
 
 /** The qubits alone: lines, or a field of points. */

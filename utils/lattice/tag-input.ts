@@ -36,10 +36,13 @@ function rateNotes(data: LatticeData, geometry: ChainGeometry, look: StageLook):
   }))
 }
 
-/** Numbers of the marked qubits, unless they are so many that they would be all one sees. */
+/** Numbers of the qubits pointed out, unless they are so many that they would be all one sees. */
 function markNotes({ ids, segments }: LatticeData, { marks, hiddenKinds }: StageLook): Note[] {
-  if (!marks || marks.qubits.length > MOST_MARKS_NUMBERED || hiddenKinds?.has('marks')) return []
-  return Array.from(marks.qubits, (qubit) => ({
+  if (!marks) return []
+  const lost = hiddenKinds?.has('marks') ? [] : [...marks.qubits]
+  const regained = hiddenKinds?.has('regained') ? [] : [...(marks.regained?.qubits ?? [])]
+  if (lost.length + regained.length > MOST_MARKS_NUMBERED) return []
+  return [...lost, ...regained].map((qubit) => ({
     text: String(ids[qubit]),
     x: (segments[4 * qubit]! + segments[4 * qubit + 2]!) / 2,
     y: (segments[4 * qubit + 1]! + segments[4 * qubit + 3]!) / 2,

@@ -44,10 +44,14 @@ export interface ReadLayer {
   readonly spins: Int8Array
 }
 
-/** Qubits to point out, for instance those missing since the last calibration, with the words for the legend. */
+/** Parts to point out, for instance those missing since the last calibration, with the words for the legend. */
 export interface MarkLayer {
   readonly qubits: Uint32Array
   readonly words: string
+  /** Couplers likewise, as pairs of qubits. */
+  readonly couplers?: Uint32Array
+  /** Parts that work again. */
+  readonly regained?: { readonly qubits: Uint32Array; readonly couplers: Uint32Array; readonly words: string }
 }
 
 /** Qubits and couplers (pairs of qubits) to be outlined, for instance a found path or what was picked. */

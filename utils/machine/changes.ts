@@ -1,56 +1,64 @@
-import type { MachineSheet } from '#shared/schemas/machines'
-import { formatNumber } from '../format'
+import type { EnergyChange, FigureChange, FigureValue, SheetDifference } from '#shared/sheet-difference'
+import { formatCount, formatNumber } from '../format'
 import { rangeText, sigmaText } from './facts'
 
-/** What one calibration changed against the one before. */
-export interface SheetChanges {
-  qubitsLost: number[]
-  qubitsBack: number[]
-  couplersLost: string[]
-  couplersBack: string[]
-  /** `σ of h 0.021 → 0.020`. */
-  figures: { label: string; from: string; to: string; unit: string }[]
+/** How a change of a calibration reads. */
+
+/** A moved figure in words: `σ of h`, `0.021`, `0.020`. */
+export interface FigureText {
+  label: string
+  from: string
+  to: string
+  unit: string
 }
 
-const difference = <T>(from: readonly T[], taken: readonly T[]): T[] => {
-  const without = new Set(taken)
-  return from.filter((one) => !without.has(one))
+function valueText(value: FigureValue, { field, none }: FigureChange): string {
+  if (value === null) return none
+  if (typeof value === 'string') return value
+  if (typeof value === 'number') return field.startsWith('controlError') ? sigmaText(value) : formatNumber(value)
+  return rangeText(value)
 }
 
-const couplersOf = ({ defects }: MachineSheet): string[] => defects.couplers.map(([a, b]) => `${a}\u2013${b}`)
+export const figureText = (change: FigureChange): FigureText => ({
+  label: change.label,
+  unit: change.unit,
+  from: valueText(change.from, change),
+  to: valueText(change.to, change),
+})
 
-const temperature = (value: number | null): string => (value === null ? 'not measured' : formatNumber(value))
+/** `17–42`. */
+export const couplerText = ([a, b]: readonly [number, number]): string => `${a}\u2013${b}`
 
-function figuresOf({ ranges, controlError, timing, temperatureMillikelvin }: MachineSheet) {
-  return [
-    ['h', rangeText(ranges.h), ''],
-    ['J', rangeText(ranges.J), ''],
-    ['Coupling sum', ranges.couplingSum ? rangeText(ranges.couplingSum) : 'not limited', ''],
-    ['σ of h', sigmaText(controlError.h), ''],
-    ['σ of J', sigmaText(controlError.J), ''],
-    ['Programming', formatNumber(timing.programmingMicroseconds), 'µs'],
-    ['Read-out', formatNumber(timing.readoutMicroseconds), 'µs'],
-    ['Delay', formatNumber(timing.delayMicroseconds), 'µs'],
-    ['Shortest anneal', formatNumber(timing.annealMinMicroseconds), 'µs'],
-    ['Longest anneal', formatNumber(timing.annealMaxMicroseconds), 'µs'],
-    ['Temperature', temperature(temperatureMillikelvin), 'mK'],
-  ] as const
+/** Parts lost and regained, those of which there are any, with their names. */
+export const partChanges = (change: SheetDifference) =>
+  [
+    { what: `${formatCount(change.qubitsLost.length, 'qubit')} lost`, names: change.qubitsLost },
+    { what: `${formatCount(change.qubitsRegained.length, 'qubit')} regained`, names: change.qubitsRegained },
+    {
+      what: `${formatCount(change.couplersLost.length, 'coupler')} lost`,
+      names: change.couplersLost.map(couplerText),
+    },
+    {
+      what: `${formatCount(change.couplersRegained.length, 'coupler')} regained`,
+      names: change.couplersRegained.map(couplerText),
+    },
+  ].filter(({ names }) => names.length > 0)
+
+/** What the energy table did, a sentence or clause each. */
+export function energyTexts(change: EnergyChange | null): string[] {
+  if (change === null) return []
+  if (change.kind === 'given') return ['Energy table given']
+  if (change.kind === 'withdrawn') return ['Energy table withdrawn']
+  return (['A', 'B'] as const).flatMap((column) => {
+    const most = change[column]
+    if (!most) return []
+    const ends = `${formatNumber(most.from, { significant: 4 })} → ${formatNumber(most.to, { significant: 4 })} GHz`
+    return [`${column} differs most at s = ${formatNumber(most.s, { significant: 3 })}: ${ends}`]
+  })
 }
 
-/** Compares two sheets part by part. */
-export function sheetChanges(before: MachineSheet, now: MachineSheet): SheetChanges {
-  const earlier = figuresOf(before)
-  return {
-    qubitsLost: difference(now.defects.qubits, before.defects.qubits),
-    qubitsBack: difference(before.defects.qubits, now.defects.qubits),
-    couplersLost: difference(couplersOf(now), couplersOf(before)),
-    couplersBack: difference(couplersOf(before), couplersOf(now)),
-    figures: figuresOf(now).flatMap(([label, to, unit], k) => {
-      const from = earlier[k]![1]
-      return from === to ? [] : [{ label, from, to, unit }]
-    }),
-  }
-}
+export const isUnchanged = (change: SheetDifference): boolean =>
+  partChanges(change).length === 0 && change.figures.length === 0 && change.energies === null
 
 /** `139, 399 and 3 more`. */
 export function listText(names: readonly (number | string)[], shown = 8): string {

@@ -1,7 +1,7 @@
 import type { Family } from '#shared/engine/machine/fabric'
 import type { MachineView } from '#shared/schemas/machines'
 import type { Fact } from '../ui/parts'
-import { formatNumber } from '../format'
+import { formatCount, formatNumber } from '../format'
 import { familyTextOf } from './family'
 
 /** `±4` for a range that is even about nought, else `−2 to 1`. */
@@ -26,7 +26,7 @@ export function machineFacts(machine: MachineView): Fact[] {
   const { ranges, defects, temperatureMillikelvin } = machine.sheet
   const missing = new Set(defects.qubits).size
   const rangeHelp = (what: 'h' | 'J' | 'coupling sum', text: string): Pick<Fact, 'help' | 'name'> => ({
-    help: { id: 'range', given: { what, text, calibration: machine.calibration } },
+    help: { id: 'range', given: { what, text, calibration: machine.shown } },
     name: `the range of ${what}`,
   })
   return [
@@ -67,4 +67,11 @@ export function machineFacts(machine: MachineView): Fact[] {
       ? { label: 'Temperature', value: 'not measured', word: true }
       : { label: 'Temperature', value: formatNumber(temperatureMillikelvin, { significant: 4 }), unit: 'mK' },
   ]
+}
+
+/** How many qubits are missing, and how many of them are new. */
+export function latticeNote({ qubits, qubitsMade, changes }: MachineView): string {
+  const missing = qubitsMade - qubits
+  const all = missing === 0 ? 'no qubit missing' : `${formatCount(missing, 'qubit')} missing`
+  return changes?.qubitsLost.length ? `${all}, ${changes.qubitsLost.length} of them new` : all
 }

@@ -1,4 +1,5 @@
-import { and, asc, count, desc, eq, isNull } from 'drizzle-orm'
+import { and, asc, count, desc, eq, isNull, sql } from 'drizzle-orm'
+import type { MachineSheet } from '../../../shared/schemas/machines'
 import type { Db } from '../client'
 import { brokenEmbeddings, calibrations, embeddings, machines, problems, users } from '../schema'
 
@@ -64,13 +65,35 @@ export async function listMachines(db: Db, workspaceId: string, limit: number, o
     .offset(offset)
 }
 
+/** Every calibration, newest first: of the sheets only what the list shows, since tables and defects may be long. */
 export async function listCalibrations(db: Db, machineId: string) {
+  const { sheet } = calibrations
   return db
-    .select({ calibration: calibrations, savedBy: { id: users.id, name: users.name } })
+    .select({
+      number: calibrations.number,
+      qubits: calibrations.qubits,
+      couplers: calibrations.couplers,
+      createdAt: calibrations.createdAt,
+      controlError: sql<MachineSheet['controlError']>`${sheet} -> 'controlError'`,
+      temperatureMillikelvin: sql<number | null>`(${sheet} ->> 'temperatureMillikelvin')::double precision`,
+      remark: sql<string>`coalesce(${sheet} ->> 'remark', '')`,
+      savedBy: { id: users.id, name: users.name },
+    })
     .from(calibrations)
     .innerJoin(users, eq(users.id, calibrations.createdBy))
     .where(eq(calibrations.machineId, machineId))
     .orderBy(desc(calibrations.number))
+}
+
+/** One calibration with who saved it. */
+export async function findSavedCalibration(db: Db, machineId: string, number: number) {
+  return (
+    await db
+      .select({ calibration: calibrations, savedBy: { id: users.id, name: users.name } })
+      .from(calibrations)
+      .innerJoin(users, eq(users.id, calibrations.createdBy))
+      .where(and(eq(calibrations.machineId, machineId), eq(calibrations.number, number)))
+  )[0]
 }
 
 export async function insertBrokenEmbeddings(db: Db, rows: (typeof brokenEmbeddings.$inferInsert)[]): Promise<void> {

@@ -21,6 +21,7 @@ const qubitIssue = (fabric: Fabric, indexOf: IndexOf, id: number): string | null
 function couplerIssue(fabric: Fabric, indexOf: IndexOf, [a, b]: readonly [number, number]): string | null {
   const unknown = qubitIssue(fabric, indexOf, a) ?? qubitIssue(fabric, indexOf, b)
   if (unknown !== null) return unknown
+  if (a === b) return `${a}-${b}: a coupler joins two different qubits`
   if (edgeBetween(fabric.graph, indexOf(a), indexOf(b)) >= 0) return null
   return `${familyName(fabric.family)} has no coupler ${a}-${b}`
 }

@@ -23,7 +23,10 @@ export function legendOf({ data, chains }: StageSource, look: StageLook): Legend
   if (data.usable.includes(0) && !hidden('missing')) items.push({ words: 'missing qubit', paint: paintSquare })
   if (data.missingCouplers?.length && !hidden('missingCouplers'))
     items.push({ words: 'missing coupler between working qubits', paint: paintDiamond })
-  if (look.marks && !hidden('marks')) items.push({ words: look.marks.words, paint: paintMark })
+  const { marks } = look
+  if (marks && !hidden('marks') && marks.qubits.length + (marks.couplers?.length ?? 0) > 0)
+    items.push({ words: marks.words, paint: paintMark })
+  if (marks?.regained && !hidden('regained')) items.push({ words: marks.regained.words, paint: paintRegained })
   return items
 }
 
@@ -159,4 +162,13 @@ function paintMark(ctx: Canvas2D, { clay }: Tokens) {
   ctx.lineWidth = 1.4
   ctx.stroke()
   ctx.setLineDash([])
+}
+
+function paintRegained(ctx: Canvas2D, { leaf }: Tokens) {
+  ctx.beginPath()
+  ctx.moveTo(20, 0)
+  ctx.arc(14, 0, 6, 0, 2 * Math.PI)
+  ctx.strokeStyle = leaf
+  ctx.lineWidth = 1.4
+  ctx.stroke()
 }

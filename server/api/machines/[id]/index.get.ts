@@ -1,4 +1,7 @@
+import { calibrationQuerySchema } from '../../../../shared/schemas/machines'
 import { machineView } from '../../../services/machines'
 
-/** A machine's sheet at the calibration in force, and every calibration. */
-export default defineRoute('member', (event, { app, ...actor }) => machineView(app, actor, partOf(event, 'id')))
+/** A machine's sheet at a calibration (`?calibration=`, else the one in force), and every calibration. */
+export default defineRoute('member', (event, { app, ...actor }) =>
+  machineView(app, actor, partOf(event, 'id'), queryOf(event, calibrationQuerySchema).calibration),
+)

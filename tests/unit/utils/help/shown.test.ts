@@ -114,6 +114,7 @@ describe('facts of a machine', () => {
       couplersMade: couplers,
       maxDegree: 6,
       calibration: 2,
+      shown: 2,
       sheet: {
         ranges: { h: [-4, 4], J: [-2, 1], couplingSum: [-9, 9] },
         defects: { qubits: [0, 1, 1], couplers: [] },

@@ -11,7 +11,8 @@ describe('legendEntries', () => {
   })
 
   it('lets everything be hidden that is a thing and not an explanation', () => {
-    const entries = legendEntries({ ...plain, lens: 'breaks', missingCouplers: true, marks: 'lost since' })
+    const pointedOut = { marks: 'lost since', regained: 'back since' }
+    const entries = legendEntries({ ...plain, lens: 'breaks', missingCouplers: true, ...pointedOut })
     expect(entries.map(({ sign, kind }) => [sign, kind])).toEqual([
       ['broken', 'breaks'],
       ['held', undefined],
@@ -19,6 +20,7 @@ describe('legendEntries', () => {
       ['free', 'free'],
       ['missing-coupler', 'missingCouplers'],
       ['marked', 'marks'],
+      ['regained', 'regained'],
     ])
     const signs = legendEntries({ ...plain, lens: 'breaks', oneRead: true }).map(({ sign }) => sign)
     expect(signs.slice(0, 3)).toEqual(['up', 'down', 'broken'])
@@ -33,7 +35,15 @@ describe('kindCounts', () => {
       missing: 1,
       missingCouplers: 1,
       marks: 0,
+      regained: 0,
     })
+    const marks = {
+      qubits: Uint32Array.of(0),
+      words: '',
+      couplers: Uint32Array.of(0, 1, 1, 2),
+      regained: { qubits: Uint32Array.of(3, 4), couplers: new Uint32Array(0), words: '' },
+    }
+    expect(kindCounts(data, null, marks)).toMatchObject({ marks: 3, regained: 2 })
     expect(kindCounts({ usable: Uint8Array.of(1) }, null, { qubits: Uint32Array.of(0), words: '' }).free).toBe(1)
   })
 })

@@ -87,4 +87,19 @@ describe('the picture of the lattice', () => {
     expect([at(5).of(tokens.hair), at(5).of(tokens.edge), at(5).of(tokens.rule)]).toEqual([0, 24, 0])
     expect([at(9).of(tokens.edge), at(9).of(tokens.rule)]).toEqual([24, 1])
   })
+
+  it('points out what was lost and what works again, each by a shape of its own, at any distance', () => {
+    const marks = {
+      qubits: Uint32Array.of(1),
+      words: 'lost',
+      couplers: Uint32Array.of(0, 3, 2, 4),
+      regained: { qubits: Uint32Array.of(0), couplers: Uint32Array.of(1, 4), words: 'regained' },
+    }
+    for (const scale of [20, 1.2]) {
+      const { of } = paint({ marks }, { scale })
+      expect([of(tokens.clay), of(tokens.leaf)]).toEqual([3, 2])
+    }
+    const hidden = paint({ marks, hiddenKinds: new Set(['marks', 'regained'] as const) })
+    expect([hidden.of(tokens.clay), hidden.of(tokens.leaf)]).toEqual([0, 0])
+  })
 })
