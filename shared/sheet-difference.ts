@@ -1,5 +1,5 @@
-import { largestChange } from './engine/machine/energy-curve'
-import type { LargestChange } from './engine/machine/energy-curve'
+import { largestChange } from './engine/machine/energy-change'
+import type { LargestChange } from './engine/machine/energy-change'
 import type { MachineSheet } from './schemas/machines'
 
 /** A figure of a sheet: one number, the two ends of a range, a word; null where it is not given. */

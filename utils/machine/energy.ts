@@ -1,4 +1,3 @@
-import { energyAt } from '#shared/engine/machine/energy-curve'
 import type { EnergyTable } from '#shared/engine/machine/energy-table'
 import { thermalGigahertz } from '#shared/engine/machine/energy-units'
 import type { ChartRule, ChartSeries } from '../ui/chart/types'
@@ -53,7 +52,7 @@ export const gigahertzText = (value: number): string => formatNumber(value, { si
 export function thermalFigures(table: EnergyTable, millikelvin: number | null) {
   if (millikelvin === null) return null
   const thermal = thermalGigahertz(millikelvin)
-  const half = energyAt(table, 'B', 1) / 2
+  const half = table.B.at(-1)! / 2
   return { thermal, half, ratio: half / thermal, crossing: crossingOf(table) }
 }
 

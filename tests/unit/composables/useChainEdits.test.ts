@@ -17,7 +17,12 @@ for (const name of ['computed', 'onBeforeUnmount', 'onMounted', 'ref', 'shallowR
   vi.stubGlobal(name, vue[name])
 
 /** A triangle on a grid of 3 × 3 points: the chain of v2 joins qubits 3 and 4. */
-const GRID = { ...latticeOf({ kind: 'square', width: 3, height: 3 }), missingCouplers: new Uint32Array() }
+const NO_PAIRS = new Uint32Array()
+const GRID = {
+  ...latticeOf({ kind: 'square', width: 3, height: 3 }),
+  missingCouplers: NO_PAIRS,
+  couplersOfMissing: NO_PAIRS,
+}
 const LAYER = layerOf(
   [[0], [1], [3, 4]],
   [

@@ -1,16 +1,10 @@
 import fc from 'fast-check'
 import { describe, expect, it } from 'vitest'
-import { energyAt, largestChange } from '../../../../shared/engine/machine/energy-curve'
+import { energiesAt } from '../../../../shared/engine/machine/energies-at'
+import { largestChange } from '../../../../shared/engine/machine/energy-change'
 import { energyUnit, GIGAHERTZ_PER_KELVIN, thermalGigahertz } from '../../../../shared/engine/machine/energy-units'
 
 const table = (s: number[], A: number[], B: number[] = s) => ({ s, A, B })
-
-describe('energyAt', () => {
-  it('is linear between rows and exact at them', () => {
-    const given = table([0, 0.25, 1], [8, 4, 1])
-    expect([0, 0.125, 0.25, 0.625, 1].map((s) => energyAt(given, 'A', s))).toEqual([8, 6, 4, 2.5, 1])
-  })
-})
 
 describe('largestChange', () => {
   it('finds nothing between samplings of the same curve', () => {
@@ -40,7 +34,7 @@ describe('largestChange', () => {
         const most = largestChange(before, now, 'A')
         const size = most ? Math.abs(most.to - most.from) : 0
         for (let k = 0; k <= 200; k++) {
-          const gap = Math.abs(energyAt(before, 'A', k / 200) - energyAt(now, 'A', k / 200))
+          const gap = Math.abs(energiesAt(before, k / 200).A - energiesAt(now, k / 200).A)
           expect(gap).toBeLessThanOrEqual(size + 1e-8)
         }
       }),
