@@ -36,6 +36,7 @@ const LONG: ReadonlySet<TaskName> = new Set<TaskName>([
   'annealPart',
   'eliminatePart',
   'enumeratePart',
+  'measureChains',
   'rehearse',
   'runTry',
   'scanStrength',

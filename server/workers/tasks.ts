@@ -7,6 +7,8 @@ import { completeCapacity } from './tasks/complete-capacity'
 import { eliminatePart } from './tasks/eliminate-part'
 import { energies } from './tasks/energies'
 import { enumeratePart } from './tasks/enumerate-part'
+import { countPartBreaks, judgeBreaks } from './tasks/part-breaks'
+import { measureChains } from './tasks/measure-chains'
 import { planOptimum } from './tasks/plan-optimum'
 import { findDamage } from './tasks/find-damage'
 import { liftStates } from './tasks/lift-states'
@@ -34,11 +36,14 @@ export const TASKS = {
   checkEmbedding,
   compareProblems,
   completeCapacity,
+  countPartBreaks,
   eliminatePart,
   energies,
+  judgeBreaks,
   listRejectedLines,
   enumeratePart,
   findDamage,
+  measureChains,
   planOptimum,
   liftStates,
   planSearch,

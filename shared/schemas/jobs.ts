@@ -2,7 +2,7 @@ import type { TracePoint } from './embeddings'
 
 /** States of a job. A job never stays `running` without a living worker: see docs/decisions/jobs.md. */
 export type JobStatus = 'waiting' | 'running' | 'done' | 'failed' | 'cancelled'
-export type JobKind = 'embedding' | 'reference' | 'rehearsal' | 'scan'
+export type JobKind = 'capacity' | 'embedding' | 'reference' | 'rehearsal' | 'scan'
 
 export interface JobLogLine {
   at: string
@@ -18,8 +18,8 @@ export interface JobView {
   /** One sentence on where the work stands. */
   message: string
   /**
-   * Kind-specific figures of the moment: `EmbeddingProgress` (embeddings.ts), `ReferenceProgress` (reference.ts), or the
-   * reads of a rehearsal.
+   * Kind-specific figures of the moment: `EmbeddingProgress` (embeddings.ts), `ReferenceProgress` (reference.ts), the
+   * reads of a rehearsal, or the points of a capacity measurement.
    */
   detail: Record<string, number | string | null | readonly TracePoint[]>
   /** How often the work was started. */

@@ -1,5 +1,6 @@
 import type { JobKind } from '../../../shared/schemas/jobs'
 import type { JobKindHandler } from '../kind'
+import { capacityJob } from './capacity'
 import { embeddingJob } from './embedding'
 import { referenceJob } from './reference'
 import { rehearsalJob } from './rehearsal'
@@ -7,6 +8,7 @@ import { scanJob } from './scan'
 
 /** Every kind of background work. */
 export const JOB_KINDS: Record<JobKind, JobKindHandler> = {
+  capacity: capacityJob,
   embedding: embeddingJob,
   reference: referenceJob,
   rehearsal: rehearsalJob,

@@ -1,7 +1,13 @@
 import { calibrationQuerySchema } from '../../../../shared/schemas/machines'
+import { newestMeasurement } from '../../../services/capacity-measurements'
 import { machineCapacity } from '../../../services/machine-capacity'
 
-/** The largest complete graph placed by template, and a bound on treewidth: `?calibration=`; it may take a minute. */
-export default defineRoute(['developer', 'steward', 'owner'], (event, { app, ...actor }) =>
-  machineCapacity(app, actor, partOf(event, 'id'), queryOf(event, calibrationQuerySchema).calibration),
-)
+/**
+ * The largest complete graph placed by template, a bound on treewidth, and the newest measured chain lengths:
+ * `?calibration=`; it may take a minute.
+ */
+export default defineRoute(['developer', 'steward', 'owner'], async (event, { app, ...actor }) => {
+  const id = partOf(event, 'id')
+  const capacity = await machineCapacity(app, actor, id, queryOf(event, calibrationQuerySchema).calibration)
+  return { ...capacity, measured: await newestMeasurement(app, id, capacity.calibration) }
+})
