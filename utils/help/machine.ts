@@ -5,6 +5,7 @@ import { entry, type HelpInput } from './entry'
 import type { Expr } from './formula'
 import { minus, over, plus, square, times } from './formula'
 import {
+  BENJAMINI_HOCHBERG,
   BODLAENDER_KOSTER,
   BOOTHBY_2016,
   CHOI_2011,
@@ -13,10 +14,12 @@ import {
   GILBERT,
   HEAVY_HEX,
   MACHINE_SHEET,
+  MANTEL_HAENSZEL,
+  OWN,
   PEGASUS,
   ZEPHYR,
 } from './sources'
-import { formatNumber } from '../format'
+import { formatNumber, formatPercent } from '../format'
 
 /** How the figures of a machine are computed. */
 
@@ -176,7 +179,13 @@ export const machineHelp = {
   thermalEnergy: entry<{ millikelvin: number }>({
     inputs: ({ millikelvin }) => [
       { symbol: 'T', name: 'temperature of the chip', value: millikelvin / 1000, unit: 'K', from: 'machine sheet' },
-      { symbol: 'c', name: 'Boltzmann constant over Planck constant', value: GIGAHERTZ_PER_KELVIN, text: '20.8366', unit: 'GHz/K' },
+      {
+        symbol: 'c',
+        name: 'Boltzmann constant over Planck constant',
+        value: GIGAHERTZ_PER_KELVIN,
+        text: '20.8366',
+        unit: 'GHz/K',
+      },
     ],
     steps: () => [
       {
@@ -223,6 +232,66 @@ export const machineHelp = {
     result: ({ order }) => formatNumber(order),
     sources: () => [CHOI_2011, BOOTHBY_2016],
     caution: () => CAUTIONS.noneFound,
+  }),
+  partRatio: entry<{
+    neighbours: number
+    neighbourRate: number
+    ratio: number | null
+    q: number
+    tested: number
+    spread: number
+    rehearsal: boolean
+  }>({
+    inputs: ({ neighbours, neighbourRate, tested, spread }) => [
+      { symbol: 'm', name: 'neighbours, over all returns', value: neighbours },
+      {
+        symbol: 'r',
+        name: 'rate of the neighbours',
+        value: neighbourRate,
+        text: formatPercent(neighbourRate, { significant: 3 }),
+      },
+      { symbol: 'T', name: 'parts compared', value: tested },
+      {
+        symbol: 'τ',
+        name: 'how much like parts differ anyway, in ln',
+        value: spread,
+        text: formatNumber(spread, { significant: 2 }),
+      },
+    ],
+    method: ({ q }) =>
+      `In each return, the twelve nearest of the parts that their surroundings pull about as hard; ratio of the two rates over all returns, each a stratum. A part is a suspect from twice its neighbours’ rate on, with at least ten broken reads, when the false ones among all suspects are expected to be at most 1 %: by the stratified test, and beyond how much like parts differ anyway. Here q is ${q < 1e-6 ? 'below 0.000001' : formatNumber(q, { significant: 2 })}.`,
+    result: ({ ratio }) => (ratio === null ? 'neighbours never broke' : formatNumber(ratio, { significant: 2 })),
+    sources: () => [MANTEL_HAENSZEL, BENJAMINI_HOCHBERG, OWN],
+    caution: ({ rehearsal }) =>
+      rehearsal ? CAUTIONS.rehearsal : 'A reason to look at the part, no proof that it is bad.',
+  }),
+  expectedChain: entry<{ median: number; variables: number; density: number }>({
+    inputs: ({ variables, density }) => [
+      { symbol: 'n', name: 'variables', value: variables },
+      { symbol: 'd', name: 'density', value: density },
+    ],
+    method: () =>
+      'Between the measured points around: evenly in the logarithm of n, then evenly in d. Nothing is said outside of what was measured and found.',
+    result: ({ median }) => formatNumber(median, { decimals: 1 }),
+    unit: () => 'qubits',
+    sources: () => [OWN],
+    caution: () => 'Random problems; one with structure may need shorter or longer chains.',
+  }),
+  missingShare: entry<{ made: number; working: number; what: string }>({
+    inputs: ({ made, working, what }) => [
+      { symbol: 'M', name: `${what} made`, value: made },
+      { symbol: 'w', name: `working ${what}`, value: working },
+    ],
+    steps: () => [
+      {
+        symbol: 'x',
+        name: 'share missing',
+        expr: over(minus('M', 'w'), 'M'),
+        show: (value) => formatPercent(value, { significant: 3 }),
+      },
+    ],
+    sources: () => [MACHINE_SHEET],
+    caution: () => CAUTIONS.sheet,
   }),
   qubitsEach: entry<{ qubits: number; variables: number }>({
     inputs: ({ qubits, variables }) => [

@@ -22,6 +22,16 @@ export const WILSON: Source = {
   venue: 'J. Am. Stat. Assoc. 22:209',
   year: 1927,
 }
+export const MANTEL_HAENSZEL: Source = {
+  author: 'Mantel & Haenszel',
+  title: 'Statistical aspects of the analysis of data from retrospective studies of disease',
+  year: 1959,
+}
+export const BENJAMINI_HOCHBERG: Source = {
+  author: 'Benjamini & Hochberg',
+  title: 'Controlling the false discovery rate',
+  year: 1995,
+}
 export const CHOI_2008: Source = {
   author: 'Choi',
   title: 'Minor-embedding in adiabatic quantum computation: I. The parameter setting problem',

@@ -2,7 +2,7 @@ import type { ChainHues } from '~/utils/hues'
 import type { ChainGeometry } from './geometry'
 import type { LatticeKind } from './kinds'
 import type { Tokens } from './tokens'
-import type { BreakLayer, LatticeData, Lens, LoadLayer, ReadLayer } from './types'
+import type { BreakLayer, HeatLayer, LatticeData, Lens, LoadLayer, ReadLayer } from './types'
 
 /** What an edge of the drawing looks like; the numbers are those the shader switches on. */
 export const EDGE_KINDS = { line: 0, band: 1, tube: 2, dash: 3 } as const
@@ -77,6 +77,7 @@ export interface SceneInput {
   readonly breaks?: BreakLayer | null
   readonly load?: LoadLayer | null
   readonly read?: ReadLayer | null
+  readonly heat?: HeatLayer | null
   /** Only the chain in focus, or only all that is not: the two are drawn apart. */
   readonly part?: 'focus' | 'rest'
 }

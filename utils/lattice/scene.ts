@@ -1,5 +1,6 @@
 import { addBands, addDiscs, addHeldChains, addTubes } from './scene-chains'
 import { addBreaks, addGlyphs, addJoints, addRings } from './scene-couplers'
+import { addHeat } from './scene-heat'
 import type { Draft, Scene, SceneInput } from './scene-types'
 import { tiersOf } from './tiers'
 import type { LatticeData } from './types'
@@ -19,6 +20,7 @@ export function buildScene(input: SceneInput): Scene {
   else if (lens === 'breaks') addHeldChains(input, tiers, draft)
   else addBands(input, tiers, draft)
   addJoints(input, tiers, draft)
+  if (input.heat && input.part !== 'focus') addHeat(input, input.heat, points, draft)
   if (lens === 'breaks') {
     if (read) addGlyphs(input, read, tiers, draft)
     if (!hiddenKinds?.has('breaks')) addBreaks(input, points, draft)

@@ -44,6 +44,14 @@ export interface ReadLayer {
   readonly spins: Int8Array
 }
 
+/** Rates at which parts of the machine broke, 0 … 1: dense qubits, and couplers by index, each beside its rate. */
+export interface HeatLayer {
+  readonly qubits: Uint32Array
+  readonly qubitRates: Float64Array
+  readonly couplers: Uint32Array
+  readonly couplerRates: Float64Array
+}
+
 /** Parts to point out, for instance those missing since the last calibration, with the words for the legend. */
 export interface MarkLayer {
   readonly qubits: Uint32Array

@@ -6,7 +6,17 @@ import type { ChainClass } from './kinds'
 import type { StageLook } from './stage-types'
 import { calmed } from './tokens'
 import type { Tokens } from './tokens'
-import type { BreakLayer, ChainLayer, LatticeData, Lens, LoadLayer, MarkLayer, OverlayLayer, ReadLayer } from './types'
+import type {
+  BreakLayer,
+  ChainLayer,
+  HeatLayer,
+  LatticeData,
+  Lens,
+  LoadLayer,
+  MarkLayer,
+  OverlayLayer,
+  ReadLayer,
+} from './types'
 import type { ChainView } from './use-chain-view'
 
 export interface LookProps {
@@ -15,6 +25,7 @@ export interface LookProps {
   readonly breaks: BreakLayer | null
   readonly load: LoadLayer | null
   readonly read: ReadLayer | null
+  readonly heat: HeatLayer | null
   readonly marks: MarkLayer | null
   readonly overlay: OverlayLayer | null
 }
@@ -61,6 +72,7 @@ export function useLatticeLook(
     breaks: props.breaks,
     load: props.load,
     read: props.read,
+    heat: props.heat,
     marks: props.marks,
     overlay: props.overlay,
     hovered: selection.hovered,
