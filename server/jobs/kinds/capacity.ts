@@ -1,5 +1,6 @@
 import { groupDigits } from '../../../shared/engine/digits'
 import { CHAIN_LENGTH_GRID, median, sizesAt } from '../../../shared/engine/embedding/chain-lengths'
+import { geometryOf } from '../../../shared/engine/machine/geometry'
 import type { CapacityResult, ChainLengthPoint } from '../../../shared/schemas/machines'
 import type { App } from '../../app'
 import type { CapacityRow } from '../../database/repositories/capacity-measurements'
@@ -70,7 +71,7 @@ async function measure(
   const actor = { workspaceId: row.workspaceId, userId: row.createdBy }
   const { calibration: _, ...complete } = await machineCapacity(app, actor, machineId, row.calibration)
   const { graph, usable, fabric } = machine
-  const shared = shareArrays({ machine: graph, usable, segments: fabric.segments, family: fabric.family })
+  const shared = shareArrays({ machine: graph, usable, ...geometryOf(fabric) })
   const points: ChainLengthPoint[] = [...(row.result?.points ?? [])]
   const { densities } = CHAIN_LENGTH_GRID
   for (const [d, density] of densities.entries()) {

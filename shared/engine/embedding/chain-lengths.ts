@@ -1,3 +1,5 @@
+import { THIN_SPACE } from '../digits'
+
 /*
  * The longest chains that the engine needs on a machine, by size and density of the problem: which problems are tried, and
  * what is to be expected in between.
@@ -52,7 +54,7 @@ const blend = (a: Expectation, b: Expectation, share: number): Expectation => ({
   most: mix(a.most, b.most, share),
 })
 
-const percent = (density: number): string => `${Number((100 * density).toPrecision(3))}\u202f%`
+const percent = (density: number): string => `${Number((100 * density).toPrecision(3))}${THIN_SPACE}%`
 
 /** Between the two sizes around n at one density, evenly in log n. */
 function alongSizes(points: readonly MeasuredPoint[], density: number, n: number): Expected {

@@ -58,6 +58,15 @@ const EXAMPLES: readonly (readonly [HelpRequest, number | string])[] = [
   [{ id: 'qubitsMade', given: { family: { kind: 'zephyr', m: 2, t: 4 } } }, 160],
   [{ id: 'couplersMade', given: { family: { kind: 'square', width: 3, height: 4 }, couplers: 17 } }, 17],
   [{ id: 'workingCouplers', given: { made: 17, working: 15 } }, 15],
+  [{ id: 'missingShare', given: { made: 20, working: 15, what: 'qubits' } }, 0.25],
+  [{ id: 'expectedChain', given: { median: 7.5, variables: 30, density: 0.2 } }, '7.5'],
+  [
+    {
+      id: 'partRatio',
+      given: { neighbours: 12, neighbourRate: 0.05, ratio: 2.34, q: 0.001, tested: 90, spread: 0.8, rehearsal: false },
+    },
+    '2.3',
+  ],
   [{ id: 'machineDegree', given: { degree: 15, qubits: 10, couplers: 15 } }, '15'],
   [{ id: 'range', given: { what: 'J', text: '−2 to 1', calibration: 3 } }, '−2 to 1'],
   [{ id: 'thermalEnergy', given: { millikelvin: 13.1 } }, (0.0131 * 1.380649e-23) / 6.62607015e-34 / 1e9],
