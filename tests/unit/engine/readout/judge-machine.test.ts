@@ -2,6 +2,7 @@ import { describe, expect, it } from 'vitest'
 import { findEmbedding } from '../../../../shared/engine/embedding/search'
 import { graphFromEdges } from '../../../../shared/engine/graph/build'
 import { buildFabric } from '../../../../shared/engine/machine/build-fabric'
+import { geometryOf } from '../../../../shared/engine/machine/geometry'
 import { programme } from '../../../../shared/engine/programming/programme'
 import type { Programmed } from '../../../../shared/engine/programming/programme'
 import { createRandom } from '../../../../shared/engine/random'
@@ -25,14 +26,7 @@ function programmedAt(seed: number): Programmed {
     n,
     pairs.flatMap(([i, j]) => [i, j]),
   )
-  const task = {
-    problem: graph,
-    machine: fabric.graph,
-    usable,
-    segments: fabric.segments,
-    family: fabric.family,
-    start: null,
-  }
+  const task = { problem: graph, machine: fabric.graph, usable, ...geometryOf(fabric), start: null }
   const { embedding } = findEmbedding(task, { method: 'lines', seed, tries: 1 }, control)
   const strengths = new Float64Array(n).fill(1.6)
   const usual = { fieldSplit: 'even', interactionCouplers: 'all', chainCouplers: 'all', ranges: wideRanges } as const

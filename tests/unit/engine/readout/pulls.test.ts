@@ -54,7 +54,7 @@ describe('chainPulls', () => {
     const density = seed % 2 ? 0.08 : 0.25
     const instance = randomInstance(seed, { order: 40, sizes: [9, 8, 5, 4, 3, 2, 1], density, field: seed % 3 })
     const strengths = Float64Array.from({ length: 7 }, (_, i) => 1 + i / 4)
-    const chainCouplers = seed % 4 === 0 ? 'tree' : 'all'
+    const chainCouplers = seed % 4 === 0 ? 'spanning tree' : 'all'
     const programmed = must(programme({ ...usual, ...instance, chainCouplers, strengths }).programmed)
     const pulls = chainPulls(programmed)
     const expected = pullsByDefinition(programmed)
