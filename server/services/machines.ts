@@ -1,107 +1,31 @@
-import { randomUUID } from 'node:crypto'
-import { degreeOf, sizeOf } from '../../shared/engine/graph/graph'
-import { applyDefects, defectIssues, normaliseDefects } from '../../shared/engine/machine/defects'
-import type { Fabric, WorkingGraph } from '../../shared/engine/machine/fabric'
-import { couplerCount, familyName, familyProblems, qubitCount } from '../../shared/engine/machine/family'
+import { degreeOf } from '../../shared/engine/graph/graph'
+import { applyDefects } from '../../shared/engine/machine/defects'
+import { couplerCount, familyName, qubitCount } from '../../shared/engine/machine/family'
 import { DomainError } from '../../shared/errors'
 import type { Page, PageQuery } from '../../shared/schemas/common'
 import type {
   Calibrate,
   CalibrationItem,
   CalibrationSaved,
-  CreateMachine,
   MachineItem,
-  MachineSheet,
   MachineView,
 } from '../../shared/schemas/machines'
 import { sheetDifference } from '../../shared/sheet-difference'
 import type { Actor, App } from '../app'
-import type { Db } from '../database/client'
 import type { MachineRow } from '../database/repositories/machines'
 import {
   advanceCalibration,
   countEmbeddingsOn,
   findCalibration,
-  insertCalibration,
   listBrokenEmbeddings,
-  insertMachine,
   listCalibrations,
   listMachines,
-  machineNameTaken,
 } from '../database/repositories/machines'
 import { pageOf, positionOf } from '../database/repositories/pages'
 import { CalibrationReview, tellBroken } from './broken-embeddings'
-import { calibratedMachine, fabricOf } from './machine-graphs'
+import { calibratedMachine } from './machine-graphs'
 import { untilSaved } from './overtaken'
-
-/** Checks a defect list against the family and brings it into order. @throws DomainError naming each unknown part */
-function checkedSheet(fabric: Fabric, sheet: MachineSheet): MachineSheet {
-  const issues = defectIssues(fabric, sheet.defects)
-  if (issues.length > 0)
-    throw new DomainError(
-      'not acceptable',
-      'machine.defects',
-      `${issues.length} of the defects ${issues.length === 1 ? 'does' : 'do'} not fit ${familyName(fabric.family)}: ${issues[0]!.message}.`,
-      issues.slice(0, 100).map(({ path, message }) => ({ path: `defects.${path}`, message })),
-    )
-  const { qubits, couplers } = normaliseDefects(fabric, sheet.defects)
-  return { ...sheet, defects: { qubits: [...qubits], couplers: couplers.map(([a, b]) => [a, b]) } }
-}
-
-const workingQubits = (working: WorkingGraph): number => working.usable.reduce((sum, one) => sum + one, 0)
-
-interface NewCalibration {
-  machineId: string
-  number: number
-  sheet: MachineSheet
-  working: WorkingGraph
-}
-
-async function saveCalibration(app: App, tx: Db, actor: Actor, { working, ...calibration }: NewCalibration) {
-  const figures = { qubits: workingQubits(working), couplers: sizeOf(working.graph) }
-  await insertCalibration(tx, { ...calibration, ...figures, createdBy: actor.userId, createdAt: app.now() })
-  return figures
-}
-
-/** Adds a machine with its first calibration. */
-export async function createMachine(app: App, actor: Actor, input: CreateMachine) {
-  const { name, note, family, ...given } = input
-  const problems = familyProblems(family)
-  if (problems.length > 0)
-    throw new DomainError(
-      'not acceptable',
-      'machine.family',
-      problems.join('; '),
-      problems.map((message) => ({ path: 'family', message })),
-    )
-  const fabric = fabricOf(family)
-  const sheet = checkedSheet(fabric, given)
-  const working = applyDefects(fabric, sheet.defects)
-  const id = randomUUID()
-  const now = app.now()
-  return app.db.transaction(async (tx) => {
-    if (await machineNameTaken(tx, actor.workspaceId, name))
-      throw new DomainError(
-        'not acceptable',
-        'machine.name',
-        `There is a machine called ${name} already. Choose another name.`,
-        [{ path: 'name', message: 'taken' }],
-      )
-    await insertMachine(tx, {
-      id,
-      workspaceId: actor.workspaceId,
-      name,
-      note,
-      family,
-      calibration: 1,
-      createdBy: actor.userId,
-      createdAt: now,
-      changedAt: now,
-    })
-    const figures = await saveCalibration(app, tx, actor, { machineId: id, number: 1, sheet, working })
-    return { id, ...figures, calibration: 1 }
-  })
-}
+import { checkedSheet, saveCalibration } from './saved-calibrations'
 
 /**
  * Saves a changed sheet as the next calibration, answers which embeddings and run sheets it breaks, and tells those who

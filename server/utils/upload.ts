@@ -16,6 +16,13 @@ const mebibytes = (bytes: number): string => `${Math.round(bytes / 2 ** 20)} MiB
 const tooLarge = (limit: number): DomainError =>
   new DomainError('too large', 'upload.size', `The file is larger than the ${mebibytes(limit)} that are taken here.`)
 
+const fieldTooLong = (name: string, limit: number): DomainError =>
+  new DomainError(
+    'too large',
+    'upload.field',
+    `The part ${name.slice(0, 40)} is longer than the ${limit} bytes that are taken here.`,
+  )
+
 const malformed = (): DomainError =>
   new DomainError('unreadable', 'upload.form', 'The upload is not a valid multipart form.')
 
@@ -26,26 +33,30 @@ const keptName = (fileName: string | undefined): string =>
     .slice(0, MAX_FILE_NAME)
     .toWellFormed() || 'file'
 
-function parserOf(event: H3Event, type: string, limitBytes: number) {
+function parserOf(event: H3Event, type: string, limitBytes: number, fieldBytes: number) {
   try {
     return busboy({
       headers: { ...event.node.req.headers, 'content-type': type },
-      limits: { fileSize: limitBytes, files: 1, fields: MAX_FIELDS, fieldSize: MAX_FIELD_BYTES },
+      limits: { fileSize: limitBytes, files: 1, fields: MAX_FIELDS, fieldSize: fieldBytes },
     })
   } catch {
     throw malformed()
   }
 }
 
-/** Reads a multipart form with at most one file, streaming, and gives up as soon as it grows past the limit. */
-export async function readUpload(event: H3Event, limitBytes: number): Promise<Upload> {
+/**
+ * Reads a multipart form with at most one file, streaming, and gives up as soon as it grows past the limit.
+ * @param limitBytes of the file
+ * @param fieldBytes of each other part
+ */
+export async function readUpload(event: H3Event, limitBytes: number, fieldBytes = MAX_FIELD_BYTES): Promise<Upload> {
   const type = getHeader(event, 'content-type') ?? ''
   if (!type.startsWith('multipart/form-data'))
     throw new DomainError('unreadable', 'upload.type', 'Send the file as multipart/form-data with a part named “file”.')
   // Parts around the file are small; a declared length beyond the limit is refused before anything is read.
-  if (Number(getHeader(event, 'content-length') ?? 0) > limitBytes + 2 ** 20) throw tooLarge(limitBytes)
+  if (Number(getHeader(event, 'content-length') ?? 0) > limitBytes + fieldBytes + 2 ** 20) throw tooLarge(limitBytes)
   const request = event.node.req
-  const parser = parserOf(event, type, limitBytes)
+  const parser = parserOf(event, type, limitBytes, fieldBytes)
   const upload: Upload = { fields: {}, file: null }
   return new Promise<Upload>((resolve, reject) => {
     const fail = (error: DomainError): void => {
@@ -53,7 +64,10 @@ export async function readUpload(event: H3Event, limitBytes: number): Promise<Up
       request.resume()
       reject(error)
     }
-    parser.on('field', (name, value) => (upload.fields[name] = value))
+    parser.on('field', (name, value, _, isCut) => {
+      if (isCut) fail(fieldTooLong(name, fieldBytes))
+      else upload.fields[name] = value
+    })
     parser.on('file', (part, stream, fileName) => {
       const chunks: Buffer[] = []
       stream.on('data', (chunk: Buffer) => chunks.push(chunk))

@@ -15,6 +15,7 @@ import { liftStates } from './tasks/lift-states'
 import { planSearch } from './tasks/plan-search'
 import { presolve } from './tasks/presolve'
 import { proveInfeasible } from './tasks/prove-infeasible'
+import { readMachineGraph } from './tasks/read-graph'
 import { listRejectedLines, readProblemFile } from './tasks/read-problem'
 import { readSamplesFile } from './tasks/read-samples'
 import { recogniseGroups } from './tasks/recognise-groups'
@@ -49,6 +50,7 @@ export const TASKS = {
   planSearch,
   presolve,
   proveInfeasible,
+  readMachineGraph,
   readProblemFile,
   readSamplesFile,
   recogniseGroups,

@@ -65,3 +65,9 @@ export interface Person {
   id: string
   name: string
 }
+
+/** Yes or no as a form or an address says it; whatever else is said means no. */
+export const flag = z.preprocess(
+  (value) => value === true || value === 'true' || value === '1' || value === 'on',
+  z.boolean(),
+)

@@ -3,7 +3,7 @@ import type { ProblemState } from '../library'
 import { PROBLEM_FILE_KEYS } from '../problem-files'
 import { PROBLEM_FORMAT_IDS } from '../problem-formats'
 import type { HistogramBin, Person } from './common'
-import { nameSchema, textSchema, versionNumberSchema } from './common'
+import { flag, nameSchema, textSchema, versionNumberSchema } from './common'
 import type { EmbeddingMethod, EmbeddingStats, EmbeddingStatus, MethodUsed, Objective } from './embeddings'
 import { editTagsSchema } from './library'
 import type { ProblemSource, VersionStanding } from './problem-versions'
@@ -14,8 +14,6 @@ export const formSchema = z.enum(['qubo', 'ising'])
 export const senseSchema = z.enum(['min', 'max'])
 export const conventionSchema = z.enum(['plus', 'minus'])
 export const problemFormatSchema = z.enum(PROBLEM_FORMAT_IDS)
-
-const flag = z.preprocess((value) => value === true || value === 'true' || value === '1' || value === 'on', z.boolean())
 
 /** The fields beside the `file` of a problem upload. */
 export const uploadProblemSchema = z.object({

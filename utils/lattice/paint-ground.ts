@@ -104,9 +104,10 @@ function paintCouplers(ctx: Canvas2D, { data, tokens }: Ground, { scale, x, y }:
   for (let at = 0; at < places.length; at += 4) {
     const x1 = x + scale * places[at]!
     const y1 = y + scale * places[at + 1]!
-    if (x1 < -scale || y1 < -scale || x1 > width + scale || y1 > height + scale) continue
     const x2 = x + scale * places[at + 2]!
     const y2 = y + scale * places[at + 3]!
+    if (Math.max(x1, x2) < -scale || Math.max(y1, y2) < -scale) continue
+    if (Math.min(x1, x2) > width + scale || Math.min(y1, y2) > height + scale) continue
     if (x1 !== x2 || y1 !== y2) {
       ctx.moveTo(x1, y1)
       ctx.lineTo(x2, y2)

@@ -1,4 +1,5 @@
-import type { Family } from '#shared/engine/machine/fabric'
+import type { Family, PublishedFamily } from '#shared/engine/machine/fabric'
+import { parseDefectText } from '#shared/engine/machine/defects'
 import type { MachineView } from '#shared/schemas/machines'
 import type { Fact } from '../ui/parts'
 import { formatCount, formatNumber } from '../format'
@@ -12,9 +13,12 @@ export const rangeText = ([low, high]: readonly [number, number]): string =>
 export const sigmaText = (sigma: number): string =>
   sigma === 0 || sigma < 0.001 ? formatNumber(sigma) : formatNumber(sigma, { decimals: 3 })
 
-/** `Pegasus, trimmed`. */
+/** A file name for a narrow place: its ending stays. */
+const shortened = (name: string): string => (name.length > 24 ? `${name.slice(0, 13)}…${name.slice(-10)}` : name)
+
+/** `Pegasus, trimmed`; `from lab.csv` of a graph of no family. */
 export function familyTitle(family: Family): string | undefined {
-  if (family.kind === 'custom') return `from ${family.file}`
+  if (family.kind === 'custom') return `from ${shortened(family.file)}`
   const { title } = familyTextOf(family.kind)
   if (family.kind === 'pegasus') return `${title}, ${family.trimmed ? 'trimmed' : 'untrimmed'}`
   // The names of the other lattices say all of it: `square grid 20×30`.
@@ -74,4 +78,35 @@ export function latticeNote({ qubits, qubitsMade, changes }: MachineView): strin
   const missing = qubitsMade - qubits
   const all = missing === 0 ? 'no qubit missing' : `${formatCount(missing, 'qubit')} missing`
   return changes?.qubitsLost.length ? `${all}, ${changes.qubitsLost.length} of them new` : all
+}
+
+/** The graph that a new machine is going to have; family is null where it comes from a file. */
+export interface ChosenGraph {
+  name: string
+  qubits: number
+  couplers: number
+  family: PublishedFamily | null
+}
+
+/** The strip under the title of a machine that is being added. */
+export function newMachineFacts(chosen: ChosenGraph | null, defects: string): Fact[] {
+  const family = chosen?.family ?? null
+  const missing = parseDefectText(defects)
+  return [
+    { label: 'Graph', value: chosen?.name ?? '–', note: family ? familyTitle(family) : undefined },
+    {
+      label: 'Qubits in all',
+      value: formatNumber(chosen?.qubits),
+      help: family ? { id: 'qubitsMade', given: { family } } : undefined,
+      name: 'the number of qubits made',
+    },
+    {
+      label: 'Couplers in all',
+      value: formatNumber(chosen?.couplers),
+      help: chosen && family ? { id: 'couplersMade', given: { family, couplers: chosen.couplers } } : undefined,
+      name: 'the number of couplers made',
+    },
+    { label: 'Missing qubits', value: formatNumber(new Set(missing.qubits).size) },
+    { label: 'Missing couplers', value: formatNumber(missing.couplers.length), note: 'beside those of missing qubits' },
+  ]
 }
