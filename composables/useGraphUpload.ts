@@ -17,6 +17,12 @@ function send<T>({ file, format }: GraphFileDraft, fields: Record<string, string
   return sendForm<T>('/api/machines', body, watch)
 }
 
+/** The sheet travels in a part of the form; its fields are named here as those of a machine of a family are. */
+const withoutPart = (failure: ApiFailure): ApiFailure => ({
+  ...failure,
+  issues: failure.issues.map((issue) => ({ ...issue, path: issue.path?.replace(/^machine\./, '') })),
+})
+
 /** Reads a graph file as soon as it is chosen, without saving it; and saves it as a machine when told to. */
 export function useGraphUpload(draft: Ref<GraphFileDraft>) {
   const graph = shallowRef<UploadedGraph | null>(null)
@@ -41,8 +47,10 @@ export function useGraphUpload(draft: Ref<GraphFileDraft>) {
     if (outcome.ok) graph.value = outcome.value
     else failure.value = outcome.failure
   }
-  const save = (machine: Record<string, unknown>): Promise<Outcome<UploadedMachine>> =>
-    send<UploadedMachine>(draft.value, { machine: JSON.stringify(machine) })
+  const save = async (machine: Record<string, unknown>): Promise<Outcome<UploadedMachine>> => {
+    const outcome = await send<UploadedMachine>(draft.value, { machine: JSON.stringify(machine) })
+    return outcome.ok ? outcome : { ok: false, failure: withoutPart(outcome.failure) }
+  }
 
   watch(draft, read)
   onBeforeUnmount(stop)
