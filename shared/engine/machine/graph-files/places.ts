@@ -7,8 +7,8 @@ import type { ReadGraph } from './graph-file'
 export const PLACES_DEFAULTS = {
   /** Qubits whose nearest neighbour is looked for, to tell how far apart qubits lie. */
   sampled: 512,
-  /** The widest that a drawing may be, in the distance between neighbours, so that single precision tells them apart. */
-  widest: 100_000,
+  /** Square line spacings that a drawing may take up: the pages keep tables of its cells. */
+  mostArea: 2 ** 24,
   /** Sites for each qubit of a drawing that was worked out. */
   room: 2,
   /** From this share of qubits with a site of their own the drawing is kept, and only the others are moved. */
@@ -44,8 +44,9 @@ function pointsAt(order: number, at: (q: number) => readonly [number, number]): 
 }
 
 /**
- * Given positions in line spacings: the corner of their rectangle at 0, the median distance to the nearest other qubit 1.
- * @returns a sentence where they are too far apart for a drawing
+ * Given positions in line spacings: the corner of their rectangle at 0, the median distance to the nearest other qubit 1,
+ * or less where the rectangle would become too large to be drawn.
+ * @returns a sentence where the drawing could not tell two qubits apart
  */
 export function segmentsAt(positions: Float64Array): Float32Array | string {
   let [left, top, right, bottom] = [Infinity, Infinity, -Infinity, -Infinity]
@@ -55,14 +56,30 @@ export function segmentsAt(positions: Float64Array): Float32Array | string {
     top = Math.min(top, positions[k + 1]!)
     bottom = Math.max(bottom, positions[k + 1]!)
   }
-  const spacing = medianSpacing(positions)
-  const widest = Math.max(right - left, bottom - top) / spacing
-  if (!(widest <= PLACES_DEFAULTS.widest))
-    return `the positions reach ${widest > 1e15 ? 'far more than' : `${Math.round(widest)} times`} the distance between neighbours; at most ${PLACES_DEFAULTS.widest} times can be drawn`
-  return pointsAt(positions.length / 2, (q) => [
-    (positions[2 * q]! - left) / spacing,
-    (positions[2 * q + 1]! - top) / spacing,
+  const scale = Math.min(1 / medianSpacing(positions), mostScale(right - left, bottom - top))
+  const segments = pointsAt(positions.length / 2, (q) => [
+    (positions[2 * q]! - left) * scale,
+    (positions[2 * q + 1]! - top) * scale,
   ])
+  return areApart(segments)
+    ? segments
+    : 'some positions are too near each other, beside how far the others reach, to be drawn apart'
+}
+
+/** The largest s with (s·width + 1)(s·height + 1) at most `mostArea`: the root of a quadratic, in its stable form. */
+function mostScale(width: number, height: number): number {
+  const room = PLACES_DEFAULTS.mostArea - 1
+  const sides = width + height
+  return (2 * room) / (sides + Math.sqrt(sides * sides + 4 * width * height * room))
+}
+
+/** Whether all points are finite and no two alike, to 1/1024 of a line spacing. */
+function areApart(segments: Float32Array): boolean {
+  if (!segments.every(Number.isFinite)) return false
+  const fine = (value: number): number => Math.round(1024 * value)
+  const seen = new Set<string>()
+  for (let k = 0; k < segments.length; k += 4) seen.add(`${fine(segments[k]!)},${fine(segments[k + 1]!)}`)
+  return seen.size === segments.length / 4
 }
 
 /** A square of sites, at most one qubit each. */

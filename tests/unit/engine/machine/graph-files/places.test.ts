@@ -41,8 +41,18 @@ describe('segmentsAt', () => {
 
   it('takes a single qubit, and refuses places that a drawing cannot tell apart', () => {
     expect([...segmentsAt(Float64Array.of(1e300, -1e300))]).toEqual([0, 0, 0, 0])
-    expect(segmentsAt(Float64Array.of(0, 0, 1, 0, 2, 0, 1e9, 0))).toMatch(/1000000000 times/)
-    expect(segmentsAt(Float64Array.of(-1e308, 0, 1e308, 0))).toMatch(/positions reach/)
+    expect(segmentsAt(Float64Array.of(0, 0, 1, 0, 2, 0, 1e30, 0))).toMatch(/too near each other/)
+    expect(segmentsAt(Float64Array.of(-1e308, 0, 1e308, 0))).toMatch(/too near each other/)
+  })
+
+  it('draws qubits nearer than 1 where the whole would become too large', () => {
+    const positions = Float64Array.of(0, 0, 1, 0, 0, 1, 1, 1, 5e5, 5e5)
+    const points = pointsOf(segmentsAt(positions) as Float32Array)
+    expect(Math.max(...points.flat())).toBeCloseTo(4095, 0)
+    expect(points[1]![0]).toBeGreaterThan(0)
+    // A long row takes no room.
+    const row = Float64Array.from({ length: 200_000 }, (_, k) => (k % 2 ? 0 : k / 2))
+    expect((segmentsAt(row) as Float32Array)[4 * 99_999]).toBe(99_999)
   })
 })
 
