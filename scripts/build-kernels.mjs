@@ -13,11 +13,15 @@ import asc from 'assemblyscript/asc'
 const root = resolve(dirname(fileURLToPath(import.meta.url)), '..')
 
 /** Source and target of each kernel, from the root. */
-export const KERNELS = [{ source: 'kernels/growth.as', target: 'shared/engine/embedding/chains/growth-bytes.ts' }]
+export const KERNELS = [
+  { source: 'kernels/growth.as', target: 'shared/engine/embedding/chains/growth-bytes.ts' },
+  { source: 'kernels/sweep-16.as', target: 'shared/engine/sampling/lanes/sweep-16-bytes.ts' },
+  { source: 'kernels/sweep-32.as', target: 'shared/engine/sampling/lanes/sweep-32-bytes.ts' },
+]
 
 /** The compiled kernel as hexadecimal text. */
 export async function compileKernel(source) {
-  const options = ['-O3', '--noAssert', '--runtime', 'stub', '--initialMemory', '1']
+  const options = ['-O3', '--noAssert', '--runtime', 'stub', '--initialMemory', '1', '--enable', 'simd']
   let bytes = new Uint8Array()
   const { error, stderr } = await asc.main(['kernel.ts', ...options, '--outFile', 'kernel.wasm'], {
     readFile: (name) => (name === 'kernel.ts' ? readFileSync(resolve(root, source), 'utf8') : null),

@@ -1,25 +1,14 @@
 import { randomUUID } from 'node:crypto'
-import type { z } from 'zod'
-import { ANNEAL_DEFAULTS } from '../../shared/engine/sampling/anneal'
 import { strideOf } from '../../shared/engine/sampling/samples'
 import { DomainError } from '../../shared/errors'
-import type { rehearseSchema } from '../../shared/schemas/run-sheets'
+import type { Rehearse } from '../../shared/schemas/run-sheets'
 import type { Actor, App } from '../app'
 import { nextNumber } from '../database/repositories/counters'
 import { insertJob } from '../database/repositories/jobs'
 import { insertReturn } from '../database/repositories/run-sheets'
 import { programmeBench, requireProgrammed } from './programming'
+import { rehearsalSettings } from './rehearsal-settings'
 import { benchOf, runSheetRow } from './run-sheets'
-
-/** What made the samples of a rehearsal, kept with them. */
-export interface RehearsalSettings extends Record<string, string | number | boolean | null> {
-  reads: number
-  sweeps: number
-  /** Final temperature in units of the programmed values. */
-  temperature: number
-  controlError: boolean
-  seed: number
-}
 
 /** What the samples of one rehearsal may take, a bit a qubit and read: as much as an upload of samples. */
 const MAX_SAMPLE_BYTES = 256 * 2 ** 20
@@ -39,12 +28,13 @@ export async function startRehearsal(
   app: App,
   actor: Actor,
   runSheetId: string,
-  input: z.infer<typeof rehearseSchema>,
+  input: Rehearse,
 ): Promise<{ returnId: string; jobId: string }> {
   const sheet = await runSheetRow(app, actor, runSheetId)
-  const { qubits } = requireProgrammed(programmeBench(await benchOf(app, actor, sheet), sheet.settings))
-  requireRoom(input.reads, qubits.length)
-  const made: RehearsalSettings = { ...input, temperature: input.temperature ?? ANNEAL_DEFAULTS.temperature }
+  const bench = await benchOf(app, actor, sheet)
+  const programmed = requireProgrammed(programmeBench(bench, sheet.settings))
+  requireRoom(input.reads, programmed.qubits.length)
+  const made = rehearsalSettings(input, sheet.settings, programmed, bench.machine.sheet)
   const returnId = randomUUID()
   const jobId = randomUUID()
   const now = app.now()

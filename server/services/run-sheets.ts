@@ -37,6 +37,7 @@ import type { CalibratedMachine } from './machine-graphs'
 import { machineRow } from './machine-graphs'
 import { standingOf } from './problem-difference'
 import type { Bench, Programming } from './programming'
+import { rehearsalChoices } from './rehearsal-settings'
 import { checksOf } from './run-sheet-checks'
 import {
   compareRules,
@@ -207,6 +208,7 @@ export async function runSheetView(app: App, actor: Actor, id: string): Promise<
     scaleLimit: scaleLimitOf(bench, programmed),
     precision,
     machineTime: time,
+    rehearsal: rehearsalChoices(programmed, machine.sheet),
     checks: checksOf(bench, row.settings, programming, programmed, precision, ofVersion, { inForce, broken }),
     broken: OPEN_STATES.includes(row.state) ? broken : null,
     returns: await returnViews(app, id),

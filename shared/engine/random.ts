@@ -24,9 +24,17 @@ function splitmix(seed: number): () => number {
 
 /**
  * First streams of the uses of one seed, so far apart that no two uses ever draw the same numbers: the reads of a run, the
+ * groups of sixteen that reads are drawn in, the
  * order in which spins are visited, its gauges, its control error, and the coins that settle ties.
  */
-export const STREAMS = { reads: 0, order: 2 ** 27, gauges: 2 ** 28, controlError: 2 ** 29, coins: 2 ** 30 } as const
+export const STREAMS = {
+  reads: 0,
+  groups: 2 ** 26,
+  order: 2 ** 27,
+  gauges: 2 ** 28,
+  controlError: 2 ** 29,
+  coins: 2 ** 30,
+} as const
 
 const rotateLeft = (x: number, k: number): number => (x << k) | (x >>> (32 - k))
 

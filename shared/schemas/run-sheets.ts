@@ -1,4 +1,6 @@
 import { z } from 'zod'
+import type { Roundings } from '../engine/sampling/arithmetic'
+import { PATH_DEFAULTS } from '../engine/sampling/path-limits'
 import type { RUN_SHEET_STATES } from '../library'
 import type { HistogramBin, Person } from './common'
 import type { VersionStanding } from './problem-versions'
@@ -67,11 +69,34 @@ export type EditRunSheet = z.infer<typeof editRunSheetSchema>
 export const remarkSchema = z.object({ remark: textSchema(2000).default('') })
 export const sendBackSchema = z.object({ remark: textSchema(2000).min(1, 'say what should change') })
 
+/** Points [µs, s], joined by straight lines, from [0, 0] to s = 1; level pieces are pauses, steep ones quenches. */
+export const rehearsalScheduleSchema = z
+  .array(z.tuple([z.number().min(0).max(1e6), z.number().min(0).max(1)]))
+  .min(2)
+  .max(1000)
+  .superRefine((points, context) => {
+    const complain = (k: number, message: string) => context.addIssue({ code: 'custom', path: [k], message })
+    if (points[0]![0] !== 0 || points[0]![1] !== 0) complain(0, 'a schedule starts at 0 µs with s = 0')
+    if (points.at(-1)![1] !== 1) complain(points.length - 1, 'a schedule ends at s = 1')
+    points.forEach(([t], k) => {
+      if (k > 0 && t <= points[k - 1]![0]) complain(k, `${t} µs does not come after ${points[k - 1]![0]} µs`)
+    })
+  })
+export type RehearsalSchedule = z.infer<typeof rehearsalScheduleSchema>
+
 export const rehearseSchema = z.object({
   reads: z.number().int().min(1).max(100_000).default(1000),
   sweeps: z.number().int().min(1).max(1_000_000).default(1000),
   /** Final temperature in units of the programmed values; default 0.1. */
   temperature: z.number().positive().max(100).optional(),
+  /** Simulated annealing, or path-integral Monte Carlo along the machine’s A(s) and B(s) at its own temperature. */
+  model: z.enum(['simulated annealing', 'path-integral']).default('simulated annealing'),
+  /** Of simulated annealing; automatic: 16 bits where their rounding is hidden by control error, else 32. */
+  arithmetic: z.enum(['automatic', '16-bit', '32-bit', '64-bit']).default('automatic'),
+  /** Of path-integral Monte Carlo: Trotter slices. */
+  slices: z.number().int().min(2).max(PATH_DEFAULTS.mostSlices).default(PATH_DEFAULTS.slices),
+  /** Of path-integral Monte Carlo: points [µs, s] of the anneal; default straight from 0 to 1. */
+  schedule: rehearsalScheduleSchema.optional(),
   /** Redraw every programmed value with the machine’s control error. */
   controlError: z.boolean().default(false),
   seed: seedSchema.default(1),
@@ -217,6 +242,7 @@ export interface RunSheetView extends RunSheetItem {
     /** From the machine sheet. */
     timing: { programmingMicroseconds: number; readoutMicroseconds: number; delayMicroseconds: number }
   }
+  rehearsal: RehearsalChoices
   checks: CheckView[]
   /** Its embedding, where that does not hold at the calibration in force and the samples are not back yet. */
   broken: BrokenView | null
@@ -225,6 +251,12 @@ export interface RunSheetView extends RunSheetItem {
   preparedBy: Person
   reviewedBy: Person | null
   createdAt: string
+}
+
+/** What a rehearsal of this run sheet can be made of. */
+export interface RehearsalChoices extends Roundings {
+  /** The machine's temperature in programmed units at s = 1; null without temperature or energy table. */
+  physical: { temperature: number; millikelvin: number; B: number } | null
 }
 
 export interface ProgrammedView {

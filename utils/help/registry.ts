@@ -6,6 +6,7 @@ import { optimumHelp } from './optimum'
 import { presolveHelp } from './presolve'
 import { problemHelp } from './problem'
 import { programmingHelp } from './programming'
+import { rehearsalHelp } from './rehearsal'
 import { samplesHelp } from './samples'
 import { structureHelp } from './structure'
 
@@ -18,6 +19,7 @@ const HELP = {
   ...machineHelp,
   ...embeddingHelp,
   ...programmingHelp,
+  ...rehearsalHelp,
   ...samplesHelp,
 }
 

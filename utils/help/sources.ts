@@ -146,3 +146,16 @@ export const BOROS_HAMMER: Source = {
   venue: 'Discrete Appl. Math. 123',
   year: 2002,
 }
+export const ISAKOV: Source = {
+  author: 'Isakov, Zintchenko, Rønnow & Troyer',
+  title: 'Optimised simulated annealing for Ising spin glasses',
+  venue: 'Comput. Phys. Commun. 192',
+  year: 2015,
+}
+export const MARTONAK: Source = {
+  author: 'Martoňák, Santoro & Tosatti',
+  title: 'Quantum annealing by the path-integral Monte Carlo method: the two-dimensional random Ising model',
+  venue: 'Phys. Rev. B 66:094203',
+  year: 2002,
+}
+export const CODATA: Source = { author: 'CODATA', title: 'Recommended values of the fundamental constants', year: 2018 }

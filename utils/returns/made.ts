@@ -1,22 +1,81 @@
 import type { ReturnView } from '#shared/schemas/returns'
-import { formatNumber } from '../format'
+import type { Arithmetic } from '#shared/engine/sampling/arithmetic'
+import { formatNumber, formatSignificant } from '../format'
 import { formatDuration } from '../formatTime'
+import { STEPS } from '../help/rehearsal'
+import type { HelpRequest } from '../help/registry'
+import { roundingHelp, roundingWords, scheduleWords } from '../run-sheet/rehearsal'
 
 export interface MadeRow {
   label: string
   value: string
   note?: string
+  /** How a computed value came about. */
+  help?: HelpRequest
+  name?: string
 }
 
 const number = (value: ReturnView['made'][string] | undefined): string =>
   typeof value === 'number' ? formatNumber(value) : '–'
 
-function rehearsalRows({ made, seconds }: ReturnView): MadeRow[] {
+/** How numbers were held; nothing of rehearsals from before there was a choice, which were in double precision. */
+function arithmeticRows({ made }: ReturnView): MadeRow[] {
+  if (typeof made.arithmetic !== 'string' || typeof made.rounding !== 'number') return []
+  const arithmetic = made.arithmetic as Arithmetic
+  const sigma = made.controlError ? Math.min(Number(made.sigmaH), Number(made.sigmaJ)) : null
+  const facts = { arithmetic, rounding: made.rounding, sigma }
+  const largestField = arithmetic === '64-bit' ? 0 : 2 * STEPS[arithmetic] * made.rounding
   return [
-    { label: 'Method', value: 'simulated annealing', note: 'of the programmed values, a classical stand-in' },
-    { label: 'Reads asked for', value: number(made.reads) },
+    {
+      label: 'Arithmetic',
+      value: arithmetic,
+      note: roundingWords(facts),
+      ...roundingHelp(facts, largestField),
+    },
+  ]
+}
+
+function annealingRows(samples: ReturnView): MadeRow[] {
+  const { made } = samples
+  return [
     { label: 'Sweeps a read', value: number(made.sweeps) },
     { label: 'Final temperature', value: number(made.temperature), note: 'in units of the programmed values' },
+    ...arithmeticRows(samples),
+  ]
+}
+
+function pathRows({ made }: ReturnView): MadeRow[] {
+  const slices = Number(made.slices)
+  return [
+    { label: 'Sweeps a read', value: number(made.sweeps), note: 'no time of the machine' },
+    {
+      label: 'Slices',
+      value: number(made.slices),
+      help: { id: 'slices', given: { slices } },
+      name: 'the number of slices',
+    },
+    {
+      label: 'Temperature at s = 1',
+      value: formatSignificant(Number(made.temperature), 3),
+      note: 'the machine’s, in units of the programmed values',
+    },
+    { label: 'Schedule', value: scheduleWords(String(made.schedule)) },
+  ]
+}
+
+function rehearsalRows(samples: ReturnView): MadeRow[] {
+  const { made, seconds } = samples
+  const isPath = made.model === 'path-integral'
+  return [
+    isPath
+      ? {
+          label: 'Method',
+          value: 'path-integral Monte Carlo',
+          note: 'along A(s) and B(s) of the machine sheet, a classical stand-in',
+        }
+      : { label: 'Method', value: 'simulated annealing', note: 'of the programmed values, a classical stand-in' },
+    { label: 'Reads asked for', value: number(made.reads) },
+    ...(isPath ? pathRows(samples) : annealingRows(samples)),
     {
       label: 'Control error',
       value: made.controlError ? 'drawn' : 'left out',

@@ -1,23 +1,29 @@
 import { groupDigits } from '../../../shared/engine/digits'
 import { readsPerGauge } from '../../../shared/engine/programming/machine-time'
 import type { Programmed } from '../../../shared/engine/programming/programme'
+import { GIGAHERTZ_PER_KELVIN } from '../../../shared/engine/sampling/anneal-path'
+import { LANES } from '../../../shared/engine/sampling/lanes/lane-model'
 import { joinSamples } from '../../../shared/engine/sampling/merge'
 import type { Samples } from '../../../shared/engine/sampling/samples'
+import type { MachineSheet } from '../../../shared/schemas/machines'
+import type { RunSheetSettings } from '../../../shared/schemas/run-sheets'
+import { rehearsalScheduleSchema } from '../../../shared/schemas/run-sheets'
 import type { App } from '../../app'
 import { findEmbeddingOfJob } from '../../database/repositories/embeddings'
 import { findReturnOfJob, updateReturn } from '../../database/repositories/run-sheets'
 import { loadBench, programmeBench, requireProgrammed } from '../../services/programming'
-import type { RehearsalSettings } from '../../services/rehearsals'
+import type { RehearsalSettings } from '../../services/rehearsal-settings'
 import { figuresOf } from '../../services/returns'
 import { packSamples, readsIn } from '../../services/samples-data'
+import type { RehearseInput } from '../../workers/tasks/rehearse'
 import type { JobContext, JobKindHandler } from '../kind'
 
-/** Blocks per thread: small enough to show progress and share the load, large enough to be worth a message. */
-const BLOCKS_PER_THREAD = 4
+/** Shares per thread: small enough to show progress and share the load, large enough to be worth a message. */
+const SHARES_PER_THREAD = 4
 /** Thrown while saving, it also takes back the adoption of what was written. */
 const DELETED = 'the run sheet or its embedding was deleted meanwhile'
 
-/** Anneals the programmed problem over the worker threads and stores the samples. */
+/** Rehearses the programmed problem over the worker threads and stores the samples. */
 export const rehearsalJob: JobKindHandler = {
   async run(app, context) {
     const row = await findReturnOfJob(app.db, context.job.subjectId)
@@ -27,14 +33,8 @@ export const rehearsalJob: JobKindHandler = {
     const bench = await loadBench(app, embedding)
     const programmed = requireProgrammed(programmeBench(bench, row.settings))
     const settings = row.made as unknown as RehearsalSettings
-    const { h: sigmaH, J: sigmaJ } = bench.machine.sheet.controlError
-    const error = settings.controlError ? { sigmaH, sigmaJ } : null
-    const samples = await annealBlocks(app, context, programmed, {
-      ...settings,
-      gauges: row.settings.gauges,
-      gaugeSeed: row.settings.seed,
-      error,
-    })
+    const shares = sharesOf(programmed, settings, row.settings, bench.machine.sheet, app.compute.threads)
+    const samples = await rehearseShares(app, context, shares, settings.reads)
     const seconds = (performance.now() - started) / 1000
     const cancelled = context.signal.aborted
     const reads = readsIn(samples)
@@ -66,53 +66,75 @@ export const rehearsalJob: JobKindHandler = {
   },
 }
 
-interface BlockSettings extends Pick<RehearsalSettings, 'reads' | 'sweeps' | 'temperature' | 'seed'> {
-  gauges: number
-  gaugeSeed: number
-  error: { sigmaH: number; sigmaJ: number } | null
+/** What samples each read, as the settings say. */
+function methodOf(settings: RehearsalSettings, sheet: MachineSheet): RehearseInput['method'] {
+  // Rehearsals queued before there was a choice say neither model nor arithmetic.
+  const { model, temperature, arithmetic = '64-bit', slices, schedule } = settings
+  if (model !== 'path-integral') return { model: 'simulated annealing', temperature, arithmetic }
+  const points = rehearsalScheduleSchema.parse(JSON.parse(schedule!))
+  return {
+    model,
+    slices: slices!,
+    table: sheet.energyTable!,
+    temperature: sheet.temperatureMillikelvin! * 1e-3 * GIGAHERTZ_PER_KELVIN,
+    schedule: { t: points.map(([t]) => t), s: points.map(([, s]) => s) },
+  }
 }
 
-/** Every read has its own random stream, so the cut into blocks changes nothing in the samples. */
-async function annealBlocks(
+/**
+ * The reads of a rehearsal, gauge by gauge, in shares for the threads. A share begins where a group of reads does and
+ * every group has its own random stream, so how the reads are cut changes nothing in the samples; the reads of a gauge are
+ * numbered from a group's first, so that no group is computed for two gauges.
+ */
+export function sharesOf(
+  programmed: Programmed,
+  settings: RehearsalSettings,
+  { gauges, seed: gaugeSeed }: Pick<RunSheetSettings, 'gauges' | 'seed'>,
+  sheet: MachineSheet,
+  threads: number,
+): RehearseInput[] {
+  const { reads, sweeps, seed, controlError } = settings
+  const { h: sigmaH, J: sigmaJ } = sheet.controlError
+  const wholeGroups = (count: number): number => Math.ceil(count / LANES) * LANES
+  const most = wholeGroups(reads / (threads * SHARES_PER_THREAD))
+  const method = methodOf(settings, sheet)
+  const shares: RehearseInput[] = []
+  let first = 0
+  readsPerGauge(reads, gauges).forEach((count, gauge) => {
+    for (let at = 0; at < count; at += most)
+      shares.push({
+        programmed,
+        gauge: gauges > 1 ? { seed: gaugeSeed, number: gauge } : null,
+        // Programming the machine anew draws its error anew: one draw a gauge.
+        error: controlError ? { sigmaH, sigmaJ, seed: seed + gauge } : null,
+        sweeps,
+        method,
+        firstRead: first + at,
+        reads: Math.min(most, count - at),
+        seed,
+      })
+    first += wholeGroups(count)
+  })
+  return shares
+}
+
+async function rehearseShares(
   app: App,
   context: JobContext,
-  programmed: Programmed,
-  settings: BlockSettings,
+  shares: readonly RehearseInput[],
+  reads: number,
 ): Promise<Samples> {
-  const { reads, sweeps, temperature, seed, gauges, gaugeSeed, error } = settings
-  const blockSize = Math.max(1, Math.ceil(reads / (app.compute.threads * BLOCKS_PER_THREAD)))
-  const blocks: { gauge: number; firstRead: number; reads: number }[] = []
-  let firstRead = 0
-  readsPerGauge(reads, gauges).forEach((count, gauge) => {
-    for (let at = 0; at < count; at += blockSize)
-      blocks.push({ gauge, firstRead: firstRead + at, reads: Math.min(blockSize, count - at) })
-    firstRead += count
-  })
-  const done = new Array<number>(blocks.length).fill(0)
+  const done = new Array<number>(shares.length).fill(0)
   const parts = await Promise.all(
-    blocks.map((block, b) =>
-      app.compute.run(
-        'rehearse',
-        {
-          programmed,
-          gauge: gauges > 1 ? { seed: gaugeSeed, number: block.gauge } : null,
-          // Programming the machine anew draws its error anew: one draw a gauge.
-          error: error ? { ...error, seed: seed + block.gauge } : null,
-          sweeps,
-          temperature,
-          firstRead: block.firstRead,
-          reads: block.reads,
-          seed,
+    shares.map((share, index) =>
+      app.compute.run('rehearse', share, {
+        signal: context.signal,
+        onProgress: ({ readsDone }) => {
+          done[index] = readsDone
+          const sum = done.reduce((total, part) => total + part, 0)
+          context.report(sum / reads, `${groupDigits(sum)} of ${groupDigits(reads)} reads`, { reads: sum })
         },
-        {
-          signal: context.signal,
-          onProgress: ({ readsDone }) => {
-            done[b] = readsDone
-            const sum = done.reduce((total, part) => total + part, 0)
-            context.report(sum / reads, `${groupDigits(sum)} of ${groupDigits(reads)} reads`, { reads: sum })
-          },
-        },
-      ),
+      }),
     ),
   )
   return joinSamples(parts)

@@ -187,7 +187,7 @@ async function seedReturn(app: App, developer: Actor, runSheetId: string): Promi
     gauge: null,
     error: { sigmaH, sigmaJ, seed: 9 },
     sweeps: 64,
-    temperature: 0.08,
+    method: { model: 'simulated annealing', temperature: 0.08, arithmetic: '32-bit' },
     firstRead: 0,
     reads: sheet.settings.reads,
     seed: 4,

@@ -1,5 +1,5 @@
 import type { Random } from '../random'
-import type { KernelChoice } from './chains/kernel'
+import type { KernelChoice } from '../assembly'
 import type { Embedding } from './embedding'
 import type { Objective } from './objective'
 import type { Watch } from './progress'

@@ -1,5 +1,5 @@
 import { degreeOf } from '../graph/graph'
-import type { KernelChoice } from './chains/kernel'
+import type { KernelChoice } from '../assembly'
 import { fenceAllBut, isMet, negotiate, unmetPartners } from './chains/negotiate'
 import { packState, partialOf, placeIsolated } from './chains/outcome'
 import { Router } from './chains/router'

@@ -1,7 +1,7 @@
 import type { Control } from '../control'
 import { createRandom } from '../random'
 import { searchChains } from './chain-search'
-import type { KernelChoice } from './chains/kernel'
+import type { KernelChoice } from '../assembly'
 import type { Embedding } from './embedding'
 import { assignLines } from './lines/assign-lines'
 import type { Method, PartialEmbedding, Runner } from './method'

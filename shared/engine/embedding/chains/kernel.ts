@@ -1,31 +1,9 @@
+import type { KernelChoice, KernelExports } from '../../assembly'
+import { instantiate, PAGE } from '../../assembly'
 import { BYTES } from './growth-bytes'
 
-/** The part of the WebAssembly interface (W3C, WebAssembly JavaScript Interface 1.0) that is used here. */
-interface Memory {
-  readonly buffer: ArrayBuffer
-  grow(pages: number): number
-}
-interface WebAssemblyInterface {
-  readonly Module: new (bytes: Uint8Array) => object
-  readonly Instance: new (module: object) => { readonly exports: object }
-}
-interface GrowthExports {
-  readonly memory: Memory
-  bind(table: number): void
+interface GrowthExports extends KernelExports {
   grow(variable: number, start: number, placed: number, ceiling: number, touchNow: number): number
-}
-
-/** `assembly` where the platform has WebAssembly, else the plain code; both give the same trees. */
-export type KernelChoice = 'assembly' | 'plain'
-
-const PAGE = 65536
-
-let compiled: object | null = null
-
-/** Compiled once a thread; a few hundred microseconds. */
-function compile({ Module }: WebAssemblyInterface): object {
-  compiled ??= new Module(Uint8Array.from(BYTES.match(/../g) ?? [], (pair) => parseInt(pair, 16)))
-  return compiled
 }
 
 /** Arrays by name, in one linear memory when a kernel works on them. */
@@ -33,14 +11,6 @@ export interface Arrays<I extends string, F extends string> {
   readonly ints: Readonly<Record<I, Int32Array>>
   readonly floats: Readonly<Record<F, Float64Array>>
   readonly kernel: GrowthExports | null
-}
-
-function instantiate(choice: KernelChoice, bytes: number): GrowthExports | null {
-  const { WebAssembly: platform } = globalThis as { WebAssembly?: WebAssemblyInterface }
-  if (choice === 'plain' || !platform) return null
-  const { exports } = new platform.Instance(compile(platform)) as { exports: GrowthExports }
-  exports.memory.grow(Math.ceil(bytes / PAGE))
-  return exports
 }
 
 /**
@@ -54,8 +24,8 @@ export function allocate<I extends string, F extends string>(
 ): Arrays<I, F> {
   const sum = (lengths: Readonly<Record<string, number>>): number =>
     Object.values(lengths).reduce((total, length) => total + length, 0)
-  const kernel = instantiate(choice, 4 * sum(intLengths) + 8 * sum(floatLengths))
-  // The first page belongs to the kernel's own data.
+  const room = 4 * sum(intLengths) + 8 * sum(floatLengths)
+  const kernel = choice === 'plain' ? null : instantiate<GrowthExports>(BYTES, room)
   let at = PAGE
   const place = (bytes: number): number => (at += bytes) - bytes
   const floats = {} as Record<F, Float64Array>

@@ -1,8 +1,9 @@
+import type { KernelChoice } from '../../assembly'
 import type { Graph } from '../../graph/graph'
 import { COST_UNIT, FAR } from './costs'
 import { growTree } from './grow'
 import { allocate } from './kernel'
-import type { Arrays, KernelChoice } from './kernel'
+import type { Arrays } from './kernel'
 
 /** Entries of the table that tells the kernel sizes and addresses. */
 const TABLE_LENGTH = 18

@@ -1,22 +1,11 @@
 import { describe, expect, it } from 'vitest'
-import { anneal, annealReads, annealSchedule } from '../../../../shared/engine/sampling/anneal'
+import { anneal, annealReads } from '../../../../shared/engine/sampling/anneal'
+import { annealSchedule } from '../../../../shared/engine/sampling/annealing-schedule'
 import { joinSamples } from '../../../../shared/engine/sampling/merge'
 import { samplerModel } from '../../../../shared/engine/sampling/physical-model'
-import type { CouplingList } from '../../../../shared/engine/sampling/physical-model'
 import { spinOf } from '../../../../shared/engine/sampling/samples'
-import { createRandom } from '../../../../shared/engine/random'
 import { physicalEnergy, statesOf } from '../programming/instances'
-
-function randomModel(n: number, seed: number): CouplingList {
-  const random = createRandom(seed)
-  const ends: number[] = []
-  for (let a = 0; a < n; a++) for (let b = a + 1; b < n; b++) if (random.float() < 0.6) ends.push(a, b)
-  return {
-    h: Float64Array.from({ length: n }, () => random.normal() * 0.5),
-    ends: Uint32Array.from(ends),
-    J: Float64Array.from({ length: ends.length / 2 }, () => random.normal()),
-  }
-}
+import { randomModel } from './models'
 
 const quiet = { cancelled: () => false, report: () => undefined }
 

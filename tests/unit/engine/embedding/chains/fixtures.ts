@@ -1,4 +1,4 @@
-import type { KernelChoice } from '../../../../../shared/engine/embedding/chains/kernel'
+import type { KernelChoice } from '../../../../../shared/engine/assembly'
 import { ChainState } from '../../../../../shared/engine/embedding/chains/state'
 import type { Graph } from '../../../../../shared/engine/graph/graph'
 import type { Random } from '../../../../../shared/engine/random'

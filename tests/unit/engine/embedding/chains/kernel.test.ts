@@ -1,14 +1,5 @@
 import { describe, expect, it } from 'vitest'
-import { KERNELS, compileKernel } from '../../../../../scripts/build-kernels.mjs'
-import { BYTES } from '../../../../../shared/engine/embedding/chains/growth-bytes'
 import { allocate } from '../../../../../shared/engine/embedding/chains/kernel'
-
-describe('the compiled kernel', () => {
-  it('is what its source compiles to', async () => {
-    expect(KERNELS).toHaveLength(1)
-    expect(BYTES).toBe(await compileKernel(KERNELS[0]!.source))
-  }, 60_000)
-})
 
 describe('allocate', () => {
   it.each(['plain', 'assembly'] as const)('gives zeroed arrays that do not overlap (%s)', (choice) => {
