@@ -1,5 +1,6 @@
+import { energyAt } from '../../shared/engine/machine/energy-curve'
 import type { Programmed } from '../../shared/engine/programming/programme'
-import { energiesAt, programmedTemperature } from '../../shared/engine/sampling/anneal-path'
+import { programmedTemperature } from '../../shared/engine/sampling/anneal-path'
 import { ANNEAL_DEFAULTS } from '../../shared/engine/sampling/annealing-schedule'
 import type { Arithmetic } from '../../shared/engine/sampling/arithmetic'
 import { fittingArithmetic, roundingIn, roundingsOf } from '../../shared/engine/sampling/arithmetic'
@@ -34,7 +35,7 @@ export function rehearsalChoices(programmed: Programmed, sheet: MachineSheet): R
   return {
     ...roundingsOf(physicalModel(programmed)),
     physical:
-      temperature === null ? null : { temperature, millikelvin: millikelvin!, B: energiesAt(energyTable!, 1).B },
+      temperature === null ? null : { temperature, millikelvin: millikelvin!, B: energyAt(energyTable!, 'B', 1) },
   }
 }
 

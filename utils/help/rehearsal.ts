@@ -1,3 +1,4 @@
+import { GIGAHERTZ_PER_KELVIN } from '#shared/engine/machine/energy-units'
 import type { Arithmetic } from '#shared/engine/sampling/arithmetic'
 import { CAUTIONS } from './cautions'
 import { entry } from './entry'
@@ -54,7 +55,13 @@ export const rehearsalHelp = {
   physicalTemperature: entry<{ millikelvin: number; B: number }>({
     inputs: ({ millikelvin, B }) => [
       { symbol: 'T', name: 'temperature', value: millikelvin, unit: 'mK', from: 'machine sheet' },
-      { symbol: 'c', name: 'Boltzmann’s constant over Planck’s, k/h', value: 20.836619, unit: 'GHz/K' },
+      {
+        symbol: 'c',
+        name: 'Boltzmann’s constant over Planck’s, k/h',
+        value: GIGAHERTZ_PER_KELVIN,
+        text: '20.8366',
+        unit: 'GHz/K',
+      },
       { symbol: 'B', name: 'B at s = 1', value: B, unit: 'GHz', from: 'machine sheet' },
     ],
     steps: () => [

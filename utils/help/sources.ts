@@ -158,4 +158,3 @@ export const MARTONAK: Source = {
   venue: 'Phys. Rev. B 66:094203',
   year: 2002,
 }
-export const CODATA: Source = { author: 'CODATA', title: 'Recommended values of the fundamental constants', year: 2018 }

@@ -1,7 +1,7 @@
 import { groupDigits } from '../../../shared/engine/digits'
+import { thermalGigahertz } from '../../../shared/engine/machine/energy-units'
 import { readsPerGauge } from '../../../shared/engine/programming/machine-time'
 import type { Programmed } from '../../../shared/engine/programming/programme'
-import { GIGAHERTZ_PER_KELVIN } from '../../../shared/engine/sampling/anneal-path'
 import { LANES } from '../../../shared/engine/sampling/lanes/lane-model'
 import { joinSamples } from '../../../shared/engine/sampling/merge'
 import type { Samples } from '../../../shared/engine/sampling/samples'
@@ -76,7 +76,7 @@ function methodOf(settings: RehearsalSettings, sheet: MachineSheet): RehearseInp
     model,
     slices: slices!,
     table: sheet.energyTable!,
-    temperature: sheet.temperatureMillikelvin! * 1e-3 * GIGAHERTZ_PER_KELVIN,
+    temperature: thermalGigahertz(sheet.temperatureMillikelvin!),
     schedule: { t: points.map(([t]) => t), s: points.map(([, s]) => s) },
   }
 }
