@@ -7,7 +7,7 @@ import { fittingArithmetic, roundingIn, roundingsOf } from '../../shared/engine/
 import { physicalModel } from '../../shared/engine/sampling/physical-model'
 import { DomainError } from '../../shared/errors'
 import type { MachineSheet } from '../../shared/schemas/machines'
-import type { Rehearse, RehearsalChoices, RunSheetSettings } from '../../shared/schemas/run-sheets'
+import type { Rehearse, RehearsalChoices } from '../../shared/schemas/run-sheets'
 
 /** What made the samples of a rehearsal, kept with them. */
 export interface RehearsalSettings extends Record<string, string | number | boolean | null> {
@@ -22,9 +22,8 @@ export interface RehearsalSettings extends Record<string, string | number | bool
   controlError: boolean
   sigmaH: number
   sigmaJ: number
-  /** Of path-integral Monte Carlo, else null: Trotter slices, and points [µs, s] as JSON. */
+  /** Of path-integral Monte Carlo, else null: Trotter slices. Its schedule is the run sheet's. */
   slices: number | null
-  schedule: string | null
   seed: number
 }
 
@@ -43,12 +42,7 @@ const refusal = (code: string, path: string, message: string): DomainError =>
   new DomainError('not acceptable', code, message, [{ path, message }])
 
 /** Everything that decides the samples, worked out once: the job asks nothing but this. */
-export function rehearsalSettings(
-  input: Rehearse,
-  { annealMicroseconds }: Pick<RunSheetSettings, 'annealMicroseconds'>,
-  programmed: Programmed,
-  sheet: MachineSheet,
-): RehearsalSettings {
+export function rehearsalSettings(input: Rehearse, programmed: Programmed, sheet: MachineSheet): RehearsalSettings {
   const { model, reads, sweeps, controlError, seed } = input
   const { h: sigmaH, J: sigmaJ } = sheet.controlError
   const choices = rehearsalChoices(programmed, sheet)
@@ -56,14 +50,8 @@ export function rehearsalSettings(
   if (model === 'path-integral') {
     const message = 'Path-integral Monte Carlo needs the temperature and the energy table of the machine sheet.'
     if (!choices.physical) throw refusal('rehearsal.energy-table', 'model', message)
-    const schedule = JSON.stringify(
-      input.schedule ?? [
-        [0, 0],
-        [annealMicroseconds, 1],
-      ],
-    )
     const { temperature } = choices.physical
-    return { ...common, temperature, arithmetic: '64-bit', rounding: 0, slices: input.slices, schedule }
+    return { ...common, temperature, arithmetic: '64-bit', rounding: 0, slices: input.slices }
   }
   const temperature = input.temperature ?? ANNEAL_DEFAULTS.temperature
   const error = controlError ? { sigmaH, sigmaJ } : null
@@ -72,5 +60,5 @@ export function rehearsalSettings(
   const rounding = roundingIn(choices, arithmetic)
   if (rounding === Infinity)
     throw refusal('rehearsal.arithmetic', 'arithmetic', 'A qubit has too many couplings for 16 bits. Choose 32.')
-  return { ...common, temperature, arithmetic, rounding, slices: null, schedule: null }
+  return { ...common, temperature, arithmetic, rounding, slices: null }
 }

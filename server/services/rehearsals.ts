@@ -34,7 +34,7 @@ export async function startRehearsal(
   const bench = await benchOf(app, actor, sheet)
   const programmed = requireProgrammed(programmeBench(bench, sheet.settings))
   requireRoom(input.reads, programmed.qubits.length)
-  const made = rehearsalSettings(input, sheet.settings, programmed, bench.machine.sheet)
+  const made = rehearsalSettings(input, programmed, bench.machine.sheet)
   const returnId = randomUUID()
   const jobId = randomUUID()
   const now = app.now()

@@ -69,34 +69,17 @@ export type EditRunSheet = z.infer<typeof editRunSheetSchema>
 export const remarkSchema = z.object({ remark: textSchema(2000).default('') })
 export const sendBackSchema = z.object({ remark: textSchema(2000).min(1, 'say what should change') })
 
-/** Points [µs, s], joined by straight lines, from [0, 0] to s = 1; level pieces are pauses, steep ones quenches. */
-export const rehearsalScheduleSchema = z
-  .array(z.tuple([z.number().min(0).max(1e6), z.number().min(0).max(1)]))
-  .min(2)
-  .max(1000)
-  .superRefine((points, context) => {
-    const complain = (k: number, message: string) => context.addIssue({ code: 'custom', path: [k], message })
-    if (points[0]![0] !== 0 || points[0]![1] !== 0) complain(0, 'a schedule starts at 0 µs with s = 0')
-    if (points.at(-1)![1] !== 1) complain(points.length - 1, 'a schedule ends at s = 1')
-    points.forEach(([t], k) => {
-      if (k > 0 && t <= points[k - 1]![0]) complain(k, `${t} µs does not come after ${points[k - 1]![0]} µs`)
-    })
-  })
-export type RehearsalSchedule = z.infer<typeof rehearsalScheduleSchema>
-
 export const rehearseSchema = z.object({
   reads: z.number().int().min(1).max(100_000).default(1000),
   sweeps: z.number().int().min(1).max(1_000_000).default(1000),
   /** Final temperature in units of the programmed values; default 0.1. */
   temperature: z.number().positive().max(100).optional(),
-  /** Simulated annealing, or path-integral Monte Carlo along the machine’s A(s) and B(s) at its own temperature. */
+  /** Simulated annealing, or path-integral Monte Carlo along the machine’s A(s) and B(s) and the run sheet’s schedule, at the machine’s temperature. */
   model: z.enum(['simulated annealing', 'path-integral']).default('simulated annealing'),
   /** Of simulated annealing; automatic: 16 bits where their rounding is hidden by control error, else 32. */
   arithmetic: z.enum(['automatic', '16-bit', '32-bit', '64-bit']).default('automatic'),
   /** Of path-integral Monte Carlo: Trotter slices. */
   slices: z.number().int().min(2).max(PATH_DEFAULTS.mostSlices).default(PATH_DEFAULTS.slices),
-  /** Of path-integral Monte Carlo: points [µs, s] of the anneal; default straight from 0 to 1. */
-  schedule: rehearsalScheduleSchema.optional(),
   /** Redraw every programmed value with the machine’s control error. */
   controlError: z.boolean().default(false),
   seed: seedSchema.default(1),

@@ -4,7 +4,7 @@ import { formatNumber, formatSignificant } from '../format'
 import { formatDuration } from '../formatTime'
 import { STEPS } from '../help/rehearsal'
 import type { HelpRequest } from '../help/registry'
-import { roundingHelp, roundingWords, scheduleWords } from '../run-sheet/rehearsal'
+import { roundingHelp, roundingWords } from '../run-sheet/rehearsal'
 
 export interface MadeRow {
   label: string
@@ -59,7 +59,7 @@ function pathRows({ made }: ReturnView): MadeRow[] {
       value: formatSignificant(Number(made.temperature), 3),
       note: 'the machine’s, in units of the programmed values',
     },
-    { label: 'Schedule', value: scheduleWords(String(made.schedule)) },
+    { label: 'Schedule', value: 'of the run sheet', note: 'as it was then' },
   ]
 }
 

@@ -45,9 +45,3 @@ export const roundingHelp = (
 /** Why path-integral Monte Carlo is not offered. */
 export const NO_PATH_INTEGRAL =
   'Path-integral Monte Carlo is offered where the machine sheet has a temperature and an energy table.'
-
-/** `0 µs s 0, 20 µs s 1`, from points [µs, s] as JSON. */
-export function scheduleWords(json: string): string {
-  const points = JSON.parse(json) as [number, number][]
-  return points.map(([t, s]) => `${formatSignificant(t, 6)} µs s ${formatSignificant(s, 6)}`).join(', ')
-}

@@ -2,12 +2,12 @@ import { groupDigits } from '../../../shared/engine/digits'
 import { thermalGigahertz } from '../../../shared/engine/machine/energy-units'
 import { readsPerGauge } from '../../../shared/engine/programming/machine-time'
 import type { Programmed } from '../../../shared/engine/programming/programme'
-import { LANES } from '../../../shared/engine/sampling/lanes/lane-model'
+import { straightSchedule } from '../../../shared/engine/programming/schedule'
+import { wholeGroups } from '../../../shared/engine/sampling/lanes/lane-model'
 import { joinSamples } from '../../../shared/engine/sampling/merge'
 import type { Samples } from '../../../shared/engine/sampling/samples'
 import type { MachineSheet } from '../../../shared/schemas/machines'
 import type { RunSheetSettings } from '../../../shared/schemas/run-sheets'
-import { rehearsalScheduleSchema } from '../../../shared/schemas/run-sheets'
 import type { App } from '../../app'
 import { findEmbeddingOfJob } from '../../database/repositories/embeddings'
 import { findReturnOfJob, updateReturn } from '../../database/repositories/run-sheets'
@@ -67,17 +67,21 @@ export const rehearsalJob: JobKindHandler = {
 }
 
 /** What samples each read, as the settings say. */
-function methodOf(settings: RehearsalSettings, sheet: MachineSheet): RehearseInput['method'] {
+function methodOf(
+  settings: RehearsalSettings,
+  { schedule, annealMicroseconds }: RunSheetSettings,
+  sheet: MachineSheet,
+): RehearseInput['method'] {
   // Rehearsals queued before there was a choice say neither model nor arithmetic.
-  const { model, temperature, arithmetic = '64-bit', slices, schedule } = settings
+  const { model, temperature, arithmetic = '64-bit', slices } = settings
   if (model !== 'path-integral') return { model: 'simulated annealing', temperature, arithmetic }
-  const points = rehearsalScheduleSchema.parse(JSON.parse(schedule!))
+  const points = schedule ?? straightSchedule(annealMicroseconds)
   return {
     model,
     slices: slices!,
     table: sheet.energyTable!,
     temperature: thermalGigahertz(sheet.temperatureMillikelvin!),
-    schedule: { t: points.map(([t]) => t), s: points.map(([, s]) => s) },
+    schedule: { t: points.map(({ microseconds }) => microseconds), s: points.map(({ s }) => s) },
   }
 }
 
@@ -89,15 +93,15 @@ function methodOf(settings: RehearsalSettings, sheet: MachineSheet): RehearseInp
 export function sharesOf(
   programmed: Programmed,
   settings: RehearsalSettings,
-  { gauges, seed: gaugeSeed }: Pick<RunSheetSettings, 'gauges' | 'seed'>,
+  runSheet: RunSheetSettings,
   sheet: MachineSheet,
   threads: number,
 ): RehearseInput[] {
   const { reads, sweeps, seed, controlError } = settings
+  const { gauges, seed: gaugeSeed } = runSheet
   const { h: sigmaH, J: sigmaJ } = sheet.controlError
-  const wholeGroups = (count: number): number => Math.ceil(count / LANES) * LANES
   const most = wholeGroups(reads / (threads * SHARES_PER_THREAD))
-  const method = methodOf(settings, sheet)
+  const method = methodOf(settings, runSheet, sheet)
   const shares: RehearseInput[] = []
   let first = 0
   readsPerGauge(reads, gauges).forEach((count, gauge) => {

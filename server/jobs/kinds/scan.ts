@@ -1,6 +1,6 @@
 import { groupDigits } from '../../../shared/engine/digits'
 import { enumerationTolerance } from '../../../shared/engine/problem/optimum/enumerate-slice'
-import { ANNEAL_DEFAULTS } from '../../../shared/engine/sampling/anneal'
+import { ANNEAL_DEFAULTS } from '../../../shared/engine/sampling/annealing-schedule'
 import { Z_95 } from '../../../shared/engine/readout/intervals'
 import type { ScanPoint } from '../../../shared/schemas/scans'
 import type { App } from '../../app'

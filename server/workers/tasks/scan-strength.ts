@@ -7,8 +7,11 @@ import { decode } from '../../../shared/engine/readout/decode'
 import { logicalEnergies } from '../../../shared/engine/readout/energies'
 import type { Mean } from '../../../shared/engine/readout/mean'
 import { meanOf } from '../../../shared/engine/readout/mean'
-import type { AnnealProgress } from '../../../shared/engine/sampling/anneal'
+import type { AnnealProgress } from '../../../shared/engine/sampling/annealing-schedule'
+import { fittingArithmetic, roundingsOf } from '../../../shared/engine/sampling/arithmetic'
+import { wholeGroups } from '../../../shared/engine/sampling/lanes/lane-model'
 import { joinSamples } from '../../../shared/engine/sampling/merge'
+import { physicalModel } from '../../../shared/engine/sampling/physical-model'
 import { rehearse } from './rehearse'
 
 export interface ScanStrengthInput {
@@ -41,18 +44,23 @@ export interface StrengthFigures {
 
 /** Rehearses one strength and sums up its samples, which are not kept; null when it was cancelled. */
 export function scanStrength(input: ScanStrengthInput, control: Control<AnnealProgress>): StrengthFigures | null {
-  const { programmed, ising, reads, gauges, gaugeSeed, error, reference, ...anneal } = input
+  const { programmed, ising, reads, gauges, gaugeSeed, error, reference, temperature, ...anneal } = input
+  const arithmetic = fittingArithmetic(roundingsOf(physicalModel(programmed)), error, temperature)
   let done = 0
+  let first = 0
   const parts = readsPerGauge(reads, gauges).map((count, number) => {
     const before = done
+    const firstRead = first
     done += count
+    first += wholeGroups(count)
     return rehearse(
       {
         ...anneal,
         programmed,
         gauge: gauges > 1 ? { seed: gaugeSeed, number } : null,
         error: error ? { ...error, seed: anneal.seed + number } : null,
-        firstRead: before,
+        method: { model: 'simulated annealing', temperature, arithmetic },
+        firstRead,
         reads: count,
       },
       { ...control, report: ({ readsDone }) => control.report({ readsDone: before + readsDone, reads }) },

@@ -7,6 +7,9 @@ import { fitsLanes, stepOf } from './rounding'
 /** Replicas that a kernel anneals at once: reads 16g … 16g + 15 of a run are group g. */
 export const LANES = 16
 
+/** The reads of as many whole groups as so many reads begin. */
+export const wholeGroups = (reads: number): number => Math.ceil(reads / LANES) * LANES
+
 /** A model in whole steps, its spins in the order of visits and cut into levels (visiting-order.ts). */
 export interface LaneModel {
   readonly kind: LaneKind
