@@ -1,4 +1,4 @@
-import { energyAt } from '../../shared/engine/machine/energy-curve'
+import { energiesAt } from '../../shared/engine/machine/energies-at'
 import type { Programmed } from '../../shared/engine/programming/programme'
 import { programmedTemperature } from '../../shared/engine/sampling/anneal-path'
 import { ANNEAL_DEFAULTS } from '../../shared/engine/sampling/annealing-schedule'
@@ -34,7 +34,7 @@ export function rehearsalChoices(programmed: Programmed, sheet: MachineSheet): R
   return {
     ...roundingsOf(physicalModel(programmed)),
     physical:
-      temperature === null ? null : { temperature, millikelvin: millikelvin!, B: energyAt(energyTable!, 'B', 1) },
+      temperature === null ? null : { temperature, millikelvin: millikelvin!, B: energiesAt(energyTable!, 1).B },
   }
 }
 

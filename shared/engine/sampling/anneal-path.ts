@@ -1,4 +1,4 @@
-import { energyAt } from '../machine/energy-curve'
+import { energiesAt } from '../machine/energies-at'
 import type { EnergyTable } from '../machine/energy-table'
 import { thermalGigahertz } from '../machine/energy-units'
 
@@ -42,8 +42,9 @@ export function energiesOfSweeps(
   const B = new Float64Array(sweeps)
   for (let k = 0; k < sweeps; k++) {
     const s = progressAt(schedule, first + ((k + 0.5) / sweeps) * (last - first))
-    A[k] = energyAt(table, 'A', s)
-    B[k] = energyAt(table, 'B', s)
+    const at = energiesAt(table, s)
+    A[k] = at.A
+    B[k] = at.B
   }
   return { A, B }
 }
@@ -53,6 +54,6 @@ export function energiesOfSweeps(
  * H/h = B(1)/2 · (Σ h σz + Σ J σz σz), so programmed energies count in units of B(1)/2. Null where B(1) is 0.
  */
 export function programmedTemperature(temperatureMillikelvin: number, table: EnergyTable): number | null {
-  const B = energyAt(table, 'B', 1)
+  const { B } = energiesAt(table, 1)
   return B > 0 ? thermalGigahertz(temperatureMillikelvin) / (B / 2) : null
 }
