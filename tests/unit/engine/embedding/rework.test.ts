@@ -54,6 +54,27 @@ describe('repair', () => {
     }
   })
 
+  it('moves about as many chains again as were hit, and no more', () => {
+    const wide = regularGraph(60, 3, createRandom(51))
+    const begin = taskOf(wide, machine)
+    const { embedding: before } = run(begin, { method: 'search', seed: 3, tries: 1 })
+    const random = createRandom(7)
+    let [hits, others] = [0, 0]
+    for (let round = 0; round < 15; round++) {
+      const usable = begin.usable.slice()
+      for (let i = 0; i < 8; i++) usable[before!.qubits[random.below(before!.qubits.length)]!] = 0
+      const start = { chains: before!, frozen: none(begin) }
+      const { embedding } = run({ ...begin, usable, start }, { method: 'repair', tries: 1, seed: round })
+      for (let v = 0; v < wide.order; v++) {
+        const chain = chainOf(before!, v)
+        if (chain.some((q) => !usable[q])) hits++
+        else if (String(chain) !== String(chainOf(embedding!, v))) others++
+      }
+    }
+    expect(hits).toBe(112)
+    expect(others).toBeLessThan(160)
+  })
+
   it('takes in new variables and interactions', () => {
     const more = graphFromEdges(42, [...problem.ends, 40, 0, 40, 5, 0, 39])
     const chains = packChains([...Array.from({ length: 40 }, (_, v) => chainOf(first, v)), [], []])
