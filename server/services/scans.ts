@@ -2,15 +2,21 @@ import { randomUUID } from 'node:crypto'
 import { kneeOf } from '../../shared/engine/readout/knee'
 import { DomainError } from '../../shared/errors'
 import type { RunSheetSettings } from '../../shared/schemas/run-sheets'
-import type { ScanRequest, ScanView } from '../../shared/schemas/scans'
+import type { ReturnedAtStrength, RunSheetScans, ScanRequest, ScanView } from '../../shared/schemas/scans'
 import type { Actor, App } from '../app'
 import { nextNumber } from '../database/repositories/counters'
 import { insertJob, jobsOfSubjects } from '../database/repositories/jobs'
 import { findScan, insertScan, scansOfRunSheet } from '../database/repositories/scans'
+import { returnedOnEmbedding } from '../database/repositories/run-sheets'
+import { proportion } from './proportion'
 import { requireRoom } from './rehearsals'
+import type { Bench } from './programming'
 import { programmeBench, requireProgrammed } from './programming'
 import { benchOf, runSheetRow } from './run-sheets'
 import { signOf } from './sense'
+
+/** Closer than this, against their size, strengths are one. */
+const SAME_STRENGTH = 1e-9
 
 /** Settings of a run sheet with one strength for all chains. */
 export const atStrength = (settings: RunSheetSettings, value: number): RunSheetSettings => ({
@@ -100,15 +106,30 @@ export async function scanView(app: App, actor: Actor, id: string): Promise<Scan
   return viewOf(row, jobs.get(id) ?? null, problem.sense)
 }
 
-/** The scans of a run sheet, newest first. */
-export async function scansOf(app: App, actor: Actor, runSheetId: string): Promise<ScanView[]> {
+/** The scans of a run sheet, newest first, and what the machine returned on its embedding. */
+export async function scansOf(app: App, actor: Actor, runSheetId: string): Promise<RunSheetScans> {
   const sheet = await runSheetRow(app, actor, runSheetId)
+  const bench = await benchOf(app, actor, sheet)
   const rows = await scansOfRunSheet(app.db, runSheetId)
-  if (rows.length === 0) return []
-  const { problem } = await benchOf(app, actor, sheet)
   const jobs = await jobsOfSubjects(
     app.db,
     rows.map(({ scan }) => scan.id),
   )
-  return rows.map((row) => viewOf(row, jobs.get(row.scan.id) ?? null, problem.sense))
+  return {
+    items: rows.map((row) => viewOf(row, jobs.get(row.scan.id) ?? null, bench.problem.sense)),
+    returned: await returnedOn(app, bench),
+  }
+}
+
+/** Returned samples whose chains all had one strength: rules that give each chain its own have no place on the axis. */
+async function returnedOn(app: App, bench: Bench): Promise<ReturnedAtStrength[]> {
+  const points: ReturnedAtStrength[] = []
+  for (const { row, runSheet } of await returnedOnEmbedding(app.db, bench.row.id)) {
+    const { strengths } = programmeBench(bench, row.settings)
+    const [least, most] = [Math.min(...strengths), Math.max(...strengths)]
+    if (most - least > SAME_STRENGTH * most || row.readsWithBreak === null || row.best === null) continue
+    const readsWithBreak = proportion(row.readsWithBreak, row.reads)
+    points.push({ returnId: row.id, number: row.number, runSheet, strength: most, readsWithBreak, best: row.best })
+  }
+  return points
 }

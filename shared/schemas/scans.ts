@@ -55,3 +55,20 @@ export interface ScanView {
   by: Person
   createdAt: string
 }
+
+/** Samples that the machine returned on the same embedding, all chains at one strength. */
+export interface ReturnedAtStrength {
+  returnId: string
+  number: number
+  runSheet: number
+  strength: number
+  readsWithBreak: Proportion
+  /** Best majority-decoded energy, in the problem's own sense. */
+  best: number
+}
+
+export interface RunSheetScans {
+  /** Newest first. */
+  items: ScanView[]
+  returned: ReturnedAtStrength[]
+}

@@ -140,6 +140,23 @@ export async function returnsOfRunSheets(db: Db, runSheetIds: readonly string[])
     .orderBy(desc(returns.createdAt))
 }
 
+/** Uploaded samples made on an embedding, each with the number of its run sheet. */
+export async function returnedOnEmbedding(db: Db, embeddingId: string) {
+  return db
+    .select({ row: returns, runSheet: runSheets.number })
+    .from(returns)
+    .innerJoin(runSheets, eq(runSheets.id, returns.runSheetId))
+    .where(
+      and(
+        eq(returns.embeddingId, embeddingId),
+        ne(returns.source, 'rehearsal'),
+        eq(returns.status, 'ready'),
+        isNull(returns.deletedWith),
+      ),
+    )
+    .orderBy(asc(returns.createdAt))
+}
+
 /** Another ready return of the same run sheet to compare with: the newest of the other source, else the newest other one. */
 export async function returnToCompare(db: Db, row: ReturnRow): Promise<ReturnRow | undefined> {
   const others = await db

@@ -1,4 +1,4 @@
 import { scansOf } from '../../../services/scans'
 
-/** The strength scans of a run sheet, newest first, each with its points so far and its knee. */
+/** The strength scans of a run sheet, newest first, and what the machine returned on its embedding: `{items, returned}`. */
 export default defineRoute('member', (event, { app, ...actor }) => scansOf(app, actor, partOf(event, 'id')))
