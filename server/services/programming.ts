@@ -145,6 +145,7 @@ export function requireProgrammed({ result }: Programming): Programmed {
     'not acceptable',
     'programme.ranges',
     `The values leave the machine’s ranges: ${words.join('; ')}.`,
+    [{ path: 'scale', message: words.join('; ') }],
   )
 }
 

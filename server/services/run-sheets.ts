@@ -207,6 +207,7 @@ export async function runSheetView(app: App, actor: Actor, id: string): Promise<
     limitedBy: programmed.limitedBy,
     scaleLimit: scaleLimitOf(bench, programmed),
     precision,
+    anneal: annealView(bench),
     machineTime: time,
     rehearsal: rehearsalChoices(programmed, machine.sheet),
     checks: checksOf(bench, row.settings, programming, programmed, precision, ofVersion, { inForce, broken }),
@@ -241,6 +242,12 @@ function chainRows(bench: Bench, { strengths, bounds }: Programming): ChainRow[]
     pull: pulls[i]!,
     field: bench.ising.linear[i]!,
   }))
+}
+
+function annealView({ machine: { sheet } }: Bench): RunSheetView['anneal'] {
+  const { annealMinMicroseconds, annealMaxMicroseconds, slopeMaxPerMicrosecond, schedulePointsMax } = sheet.timing
+  const limits = { annealMinMicroseconds, annealMaxMicroseconds, slopeMaxPerMicrosecond, schedulePointsMax }
+  return { limits, energyTable: sheet.energyTable, temperatureMillikelvin: sheet.temperatureMillikelvin }
 }
 
 function machineTimeView(bench: Bench, settings: RunSheetSettings): RunSheetView['machineTime'] {

@@ -1,6 +1,8 @@
 import { z } from 'zod'
 import type { Roundings } from '../engine/sampling/arithmetic'
 import { PATH_DEFAULTS } from '../engine/sampling/path-limits'
+import type { EnergyTable } from '../engine/machine/energy-table'
+import type { ScheduleLimits } from '../engine/programming/schedule'
 import type { RUN_SHEET_STATES } from '../library'
 import type { HistogramBin, Person } from './common'
 import type { VersionStanding } from './problem-versions'
@@ -218,6 +220,12 @@ export interface RunSheetView extends RunSheetItem {
     energyNoise: number
     fieldSizes: HistogramBin[]
     couplingSizes: HistogramBin[]
+  }
+  /** What a schedule is held against, and the energies that it goes through. */
+  anneal: {
+    limits: ScheduleLimits
+    energyTable: EnergyTable | null
+    temperatureMillikelvin: number | null
   }
   machineTime: {
     parts: MachineTimePart[]

@@ -12,12 +12,17 @@ export interface StrengthDraft {
 }
 
 /** The settings as the form shows them, with what was typed even where it cannot be saved. */
-export interface RunSheetDraft extends Pick<RunSheetSettings, 'fieldSplit' | 'interactionCouplers' | 'chainCouplers'> {
+export interface RunSheetDraft extends Pick<
+  RunSheetSettings,
+  'fieldSplit' | 'interactionCouplers' | 'chainCouplers' | 'schedule'
+> {
   name: string
   strength: StrengthDraft
   gauges: Typed
   reads: Typed
   annealMicroseconds: Typed
+  /** Null: as large as fits. */
+  scale: Typed
   seed: Typed
 }
 export type DraftField = keyof RunSheetDraft
@@ -31,6 +36,8 @@ export const DRAFT_FIELDS: readonly DraftField[] = [
   'gauges',
   'reads',
   'annealMicroseconds',
+  'schedule',
+  'scale',
   'seed',
 ]
 
@@ -53,8 +60,13 @@ const COMPLAINTS: Record<DraftField, string> = {
   gauges: 'Give a whole number from 1 to 1 000.',
   reads: 'Give a whole number from 1 to 100 000.',
   annealMicroseconds: 'Give a time above 0 and at most 1 000 000 µs.',
+  schedule: 'Correct the points that are marked.',
+  scale: 'Give a number above 0, or leave it empty.',
   seed: 'Give a whole number from 0.',
 }
+
+/** Fields that may be left empty, which says something of itself. */
+const OPTIONAL: readonly DraftField[] = ['strength', 'schedule', 'scale']
 
 function changeOf<F extends DraftField>(field: F, draft: RunSheetDraft): unknown {
   if (field !== 'strength') return draft[field]
@@ -69,6 +81,6 @@ function changeOf<F extends DraftField>(field: F, draft: RunSheetDraft): unknown
 /** The change to send for one field, or what is wrong with it. */
 export function readField(field: DraftField, draft: RunSheetDraft): { change: EditRunSheet } | { complaint: string } {
   const result = editRunSheetSchema.safeParse({ [field]: changeOf(field, draft) })
-  const empty = field !== 'strength' && (draft[field] === null || draft[field] === '')
+  const empty = !OPTIONAL.includes(field) && (draft[field] === null || draft[field] === '')
   return result.success && !empty ? { change: result.data } : { complaint: COMPLAINTS[field] }
 }

@@ -1,14 +1,11 @@
 import type { Control } from '../control'
 import type { EnergyTable } from '../machine/energy-table'
-import { energiesAt } from '../machine/energies-at'
+import { energyAt } from '../machine/energy-curve'
 import { createRandom } from '../random'
 import type { Levels } from './lowest-levels'
 import { lowestLevels } from './lowest-levels'
 import type { SpinModel, SpinOperator } from './spin-operator'
 import { spinOperators } from './spin-operator'
-
-/** k_B / h in GHz per kelvin: 1.380649e−23 J/K over 6.62607015e−34 J s, both exact since the SI of 2019 (CODATA). */
-export const GIGAHERTZ_PER_KELVIN = 20.836619
 
 export interface SpectrumOptions {
   /** Levels shown, 2 … 12; more are worked out where the ground states at the end are more. */
@@ -77,7 +74,7 @@ class Sectors {
 
   /** @param number of the point: its random numbers depend on it alone */
   at(s: number, number: number): Float64Array {
-    const { A, B } = energiesAt(this.table, s)
+    const [A, B] = [energyAt(this.table, 'A', s), energyAt(this.table, 'B', s)]
     const found = this.operators.map((operator, sector): Levels => {
       const random = createRandom(this.seed, 2 * number + sector)
       const levels = lowestLevels(operator, A / 2, B / 2, this.count, this.last[sector]!, random)
