@@ -1,4 +1,4 @@
-import { energyAt } from '#shared/engine/machine/energy-curve'
+import { energiesAt } from '#shared/engine/machine/energies-at'
 import type { EnergyTable } from '#shared/engine/machine/energy-table'
 import { durationOf, sAt } from '#shared/engine/programming/schedule'
 import type { Schedule, SchedulePoint } from '#shared/engine/programming/schedule'
@@ -60,7 +60,7 @@ export function energiesOver(schedule: Schedule, table: EnergyTable): ChartSerie
     stroke: column === 'A' ? 'solid' : 'dashed',
     marker: 'none',
     tone: column === 'A' ? 'slate' : 'leaf',
-    points: order.map((time) => ({ x: time, y: energyAt(table, column, sAt(schedule, time)) })),
+    points: order.map((time) => ({ x: time, y: energiesAt(table, sAt(schedule, time))[column] })),
     labelAt: (column === 'A' ? 0.12 : 0.82) * whole,
   }))
 }

@@ -1,6 +1,6 @@
 import type { Control } from '../control'
 import type { EnergyTable } from '../machine/energy-table'
-import { energyAt } from '../machine/energy-curve'
+import { energiesAt } from '../machine/energies-at'
 import { createRandom } from '../random'
 import type { Levels } from './lowest-levels'
 import { lowestLevels } from './lowest-levels'
@@ -74,7 +74,7 @@ class Sectors {
 
   /** @param number of the point: its random numbers depend on it alone */
   at(s: number, number: number): Float64Array {
-    const [A, B] = [energyAt(this.table, 'A', s), energyAt(this.table, 'B', s)]
+    const { A, B } = energiesAt(this.table, s)
     const found = this.operators.map((operator, sector): Levels => {
       const random = createRandom(this.seed, 2 * number + sector)
       const levels = lowestLevels(operator, A / 2, B / 2, this.count, this.last[sector]!, random)
