@@ -48,7 +48,7 @@ async function returnedOn(machineId: string) {
     gauge: null,
     error: null,
     sweeps: 8,
-    temperature: 1.5,
+    method: { model: 'simulated annealing', temperature: 1.5, arithmetic: '64-bit' },
     firstRead: 0,
     reads: 200,
     seed: 1,

@@ -46,7 +46,12 @@ function nextSize(family: PublishedFamily): PublishedFamily {
  * @param usable working qubits of the present machine
  * @param treewidth a proved lower bound of the problem's
  */
-export function largerMachine(family: PublishedFamily, needed: number, usable: number, treewidth: number): LargerMachine | null {
+export function largerMachine(
+  family: PublishedFamily,
+  needed: number,
+  usable: number,
+  treewidth: number,
+): LargerMachine | null {
   const working = usable / qubitCount(family)
   let limitedBy: LargerMachine['limitedBy'] = 'room'
   for (let next = nextSize(family); familyProblems(next).length === 0; next = nextSize(next)) {

@@ -105,7 +105,10 @@ const EXAMPLES: readonly (readonly [HelpRequest, number | string])[] = [
   [{ id: 'rounding', given: { arithmetic: '16-bit', largestField: 22.4, sigma: 0.02 } }, '0.00035'],
   [{ id: 'rounding', given: { arithmetic: '32-bit', largestField: 2 ** 13, sigma: null } }, '0.00049'],
   [{ id: 'rounding', given: { arithmetic: '64-bit', largestField: 2, sigma: null } }, '0'],
-  [{ id: 'physicalTemperature', given: { millikelvin: 15, B: 10 } }, ((1.380649e-23 / 6.62607015e-34 / 1e9) * 0.015) / 5],
+  [
+    { id: 'physicalTemperature', given: { millikelvin: 15, B: 10 } },
+    ((1.380649e-23 / 6.62607015e-34 / 1e9) * 0.015) / 5,
+  ],
   [{ id: 'slices', given: { slices: 32 } }, '32'],
   [{ id: 'rate', given: { ...rate, rehearsal: true } }, 0.3],
   [{ id: 'bestOfDecoding', given: { best: -4.5, reads: 10, sense: 'min', rehearsal: true } }, '−4.5'],
