@@ -36,16 +36,18 @@ async function readingOf(
   return signal?.aborted ? read : readings.get(key, () => read)
 }
 
-const things = (count: number): string => (count === 1 ? 'One thing is' : `${count} things are`)
-
 function refused(file: UploadedFile, { reading }: Read): DomainError {
   const { format, issues, issueCount } = reading
   const first = issues[0]!
   const where = first.line === undefined ? '' : `line ${first.line}: `
+  const found =
+    issueCount === 1
+      ? `One thing is wrong: ${where}${first.message}.`
+      : `${issueCount} things are wrong; first ${where}${first.message}.`
   return new DomainError(
     'not acceptable',
     'machine.graph',
-    `${file.name} holds no machine graph that can be taken, read as ${GRAPH_FILES[format].name}. ${things(issueCount)} wrong; first ${where}${first.message}.`,
+    `${file.name} holds no machine graph that can be taken, read as ${GRAPH_FILES[format].name}. ${found}`,
     issues,
   )
 }

@@ -128,6 +128,14 @@ export interface FamilyFigures {
   couplers: number
 }
 
+/** What the engine found wrong, with the size named as the form names it. */
+function inFormWords(problem: string, kind: PublishedFamily['kind']): string {
+  const { sizes } = familyTextOf(kind)
+  return problem
+    .replace(/^\w+(?= must be)/, (name) => sizes.find(({ field }) => field === name)?.label ?? name)
+    .replace('not NaN', 'and is not given')
+}
+
 /** Name and counts of the family, or what is wrong with its sizes. */
 export function readFamily(draft: FamilyDraft): {
   family: PublishedFamily
@@ -135,7 +143,7 @@ export function readFamily(draft: FamilyDraft): {
   problems: string[]
 } {
   const family = familyOf(draft)
-  const problems = familyProblems(family).map((problem) => problem.replace('not NaN', 'and is not given'))
+  const problems = familyProblems(family).map((problem) => inFormWords(problem, draft.kind))
   if (problems.length > 0) return { family, figures: null, problems }
   return {
     family,

@@ -3,6 +3,7 @@ import { ReadingFault } from '../../formats/format'
 import type { ReadingIssue } from '../../formats/format'
 import { graphFromEdges } from '../../graph/build'
 import { FAMILY_LIMITS } from '../family'
+import { LARGEST_NUMBER } from './graph-file'
 import type { ReadGraph } from './graph-file'
 
 const KEPT_ISSUES = 100
@@ -24,6 +25,7 @@ export class GraphCollector {
   issueCount = 0
   /** Whether each coupler may be stated once in each direction. */
   isDirected = false
+  private refusedQubits = 0
   private readonly numbers: number[] = []
   private readonly numberAt: number[] = []
   private readonly places: number[] = []
@@ -41,6 +43,7 @@ export class GraphCollector {
   /** Notes what is wrong; a place without line numbers becomes part of the message. */
   reject(what: 'qubit' | 'coupler', at: number, message: string): void {
     this.issueCount++
+    if (what === 'qubit') this.refusedQubits++
     if (this.issues.length >= KEPT_ISSUES) return
     const { line, place } = this.told(what, at)
     const text = place === undefined ? message : `${place}: ${message}`
@@ -84,19 +87,25 @@ export class GraphCollector {
       this.fail(
         `there are ${groupDigits(ids.length)} qubits; at most ${groupDigits(FAMILY_LIMITS.qubits)} are possible`,
       )
-    if (this.issueCount > 0) return null
     const indices = new Map<number, number>()
     ids.forEach((id, index) => indices.set(id, index))
-    const ends = this.denseEnds(indices)
-    if (this.issueCount === 0) this.refuseRepeats(ids.length, ends)
+    this.refuseRepeats()
+    // Where a qubit was refused, couplers of it would only be refused for the same reason.
+    const ends = this.refusedQubits === 0 ? this.denseEnds(indices) : new Float64Array(0)
     const positions = this.issueCount === 0 ? this.sortedPlaces(indices) : null
-    if (this.issueCount > 0) return null
+    if (this.issueCount > 0) return this.inOrder()
     const graph = graphFromEdges(ids.length, ends)
     if (graph.ends.length / 2 > FAMILY_LIMITS.couplers)
       this.fail(
         `there are ${groupDigits(graph.ends.length / 2)} couplers; at most ${groupDigits(FAMILY_LIMITS.couplers)} are possible`,
       )
     return this.issueCount > 0 ? null : { ids, ends: graph.ends, positions }
+  }
+
+  /** What was found in several passes, as it stands in the file. */
+  private inOrder(): null {
+    this.issues.sort((a, b) => (a.line ?? 0) - (b.line ?? 0))
+    return null
   }
 
   private sortedNumbers(): Uint32Array {
@@ -136,12 +145,13 @@ export class GraphCollector {
   }
 
   /** Pairs of couplers are told apart by direction where each direction may stand once. */
-  private refuseRepeats(order: number, ends: Float64Array): void {
+  private refuseRepeats(): void {
+    const order = LARGEST_NUMBER + 1
     const keyOf = (k: number): number => {
-      const [a, b] = [ends[2 * k]!, ends[2 * k + 1]!]
+      const [a, b] = [this.couplerEnds[2 * k]!, this.couplerEnds[2 * k + 1]!]
       return a < b || this.isDirected ? a * order + b : b * order + a
     }
-    const keys = Float64Array.from({ length: ends.length / 2 }, (_, k) => keyOf(k)).sort()
+    const keys = Float64Array.from({ length: this.couplerAt.length }, (_, k) => keyOf(k)).sort()
     let repeats = 0
     for (let k = 1; k < keys.length; k++) if (keys[k] === keys[k - 1]) repeats++
     if (repeats > 0) for (const repeat of this.repeatsAmong(keyOf)) this.tellRepeat(repeat)

@@ -12,7 +12,7 @@ describe('readFamily', () => {
   it('says which size is missing', () => {
     const { figures, problems } = readFamily({ ...FAMILY_START, kind: 'king', width: null })
     expect(figures).toBeNull()
-    expect(problems.join()).toMatch(/width/)
+    expect(problems.join()).toMatch(/^Width must be a whole number/)
     expect(problems.join()).not.toMatch(/NaN/)
   })
 

@@ -108,6 +108,7 @@ describe('Matrix Market', () => {
 
   it('names what is wrong', () => {
     expect(wrong(mtx('pattern symmetric', '3 3 5', '2 1', '1 2', '3 3', '4 1', '2 x'))).toEqual([
+      '4: coupler 0-1 is listed again, after line 3',
       '5: qubit 2 is coupled to itself',
       '6: row and column must be whole numbers from 1 to 3',
       '7: row and column must be whole numbers from 1 to 3',
@@ -177,8 +178,9 @@ describe('GraphML', () => {
       '4: "n0" is no qubit number: qubits have whole numbers from 0, so number them and write the numbers',
       '6: qubit 1 is listed again',
     ])
-    expect(wrong(graphml('<node id="1"/>\n<edge source="1" target="2"/>'))).toEqual([
+    expect(wrong(graphml('<node id="1"/>\n<edge source="1" target="2"/>\n<edge source="1" target="1"/>'))).toEqual([
       '5: qubit 2 is not among the qubits that the file lists',
+      '6: qubit 1 is coupled to itself',
     ])
     expect(wrong(graphml('<node id="1"/><hyperedge/>'))).toEqual(['4: a hyperedge joins more than two qubits'])
     expect(wrong(graphml('<node id="1"><graph><node id="2"/></graph></node>'))).toEqual([
