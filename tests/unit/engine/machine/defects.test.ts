@@ -75,7 +75,7 @@ describe('defectIssues', () => {
       { path: 'qubits.3', message: 'square grid 3×3 has no qubit 0.5' },
       { path: 'couplers.1', message: 'square grid 3×3 has no coupler 0-4' },
       { path: 'couplers.2', message: 'square grid 3×3 has no qubit 12' },
-      { path: 'couplers.3', message: 'square grid 3×3 has no coupler 2-2' },
+      { path: 'couplers.3', message: '2-2: a coupler joins two different qubits' },
     ])
   })
 
