@@ -30,12 +30,13 @@ export function useRepairs(machineId: MaybeRefOrGetter<string>, refresh: () => P
 export const useBrokenList = (machineId: MaybeRefOrGetter<string>) =>
   useResource<BrokenList>(() => `/api/machines/${toValue(machineId)}/broken`)
 
-/** Repairing those of a machine, followed as long as a repair runs. */
+/** Repairing those of a machine, followed as long as a repair runs: the list and whatever else a repair changes. */
 export function useBroken(
   machineId: MaybeRefOrGetter<string>,
   list: Ref<BrokenList | undefined>,
-  refresh: () => Promise<unknown>,
+  ...loads: (() => Promise<unknown>)[]
 ) {
+  const refresh = () => Promise.all(loads.map((load) => load()))
   useRefreshWhile(() => list.value?.items.some(({ state }) => state === 'running') ?? false, refresh)
   return useRepairs(machineId, refresh)
 }

@@ -61,7 +61,11 @@ export function useDefectDrawing(lattice: () => LatticeArrays, text: Ref<string>
       const isDropped = end.value === id
       end.value = isDropped ? null : id
       said.value = isDropped ? 'No qubit is picked.' : `Qubit ${id} is picked. Pick the other end of the coupler.`
-    } else end.value = toggle([end.value, id]) ? null : id
+    } else if (toggle([end.value, id])) end.value = null
+    else {
+      end.value = id
+      said.value += ` Qubit ${id} is picked instead.`
+    }
   }
 
   /** A part named by keys: `17` or `17-42`. @returns whether it was switched */

@@ -5,7 +5,7 @@ import type { Box } from './types'
 export interface TagLook {
   readonly text: string
   readonly kind: 'focus' | 'chain' | 'note'
-  /** Frame of a `chain` tag: the hue of its chain. */
+  /** Frame of a `chain` tag, the hue of its chain; of a `note` the colour of its text. */
   readonly frame: string
 }
 
@@ -53,6 +53,6 @@ export function paintTag(ctx: CanvasRenderingContext2D, look: TagLook, box: Box,
   ctx.font = fontOf(look.kind)
   ctx.textBaseline = 'middle'
   ctx.textAlign = 'center'
-  ctx.fillStyle = look.kind === 'note' ? tokens.claytext : tokens.ink
+  ctx.fillStyle = look.kind === 'note' ? look.frame : tokens.ink
   ctx.fillText(look.text, x + width / 2, y + height / 2 + 0.5)
 }

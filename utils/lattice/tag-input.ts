@@ -33,24 +33,32 @@ function rateNotes(data: LatticeData, geometry: ChainGeometry, look: StageLook):
     x,
     y,
     weight: rate,
+    ink: look.tokens.claytext,
+    clear: 0,
   }))
 }
 
 /** Numbers of the qubits pointed out, unless they are so many that they would be all one sees. */
-function markNotes({ ids, segments }: LatticeData, { marks, hiddenKinds }: StageLook): Note[] {
+function markNotes({ ids, segments }: LatticeData, { marks, hiddenKinds, tokens }: StageLook): Note[] {
   if (!marks) return []
-  const lost = hiddenKinds?.has('marks') ? [] : [...marks.qubits]
-  const regained = hiddenKinds?.has('regained') ? [] : [...(marks.regained?.qubits ?? [])]
+  const inked = (qubits: Iterable<number> | undefined, ink: string) =>
+    Array.from(qubits ?? [], (qubit) => ({ qubit, ink }))
+  const lost = hiddenKinds?.has('marks') ? [] : inked(marks.qubits, tokens.claytext)
+  const regained = hiddenKinds?.has('regained') ? [] : inked(marks.regained?.qubits, tokens.leaf)
   if (lost.length + regained.length > MOST_MARKS_NUMBERED) return []
-  return [...lost, ...regained].map((qubit) => ({
+  return [...lost, ...regained].map(({ qubit, ink }) => ({
     text: String(ids[qubit]),
     x: (segments[4 * qubit]! + segments[4 * qubit + 2]!) / 2,
     y: (segments[4 * qubit + 1]! + segments[4 * qubit + 3]!) / 2,
     weight: 0,
+    ink,
+    clear: MARK_PIXELS,
   }))
 }
 
 const MOST_MARKS_NUMBERED = 24
+/** From the middle of a mark to beyond its rim where it is drawn largest. */
+const MARK_PIXELS = 9
 
 /** `14 %`, or with one decimal under ten. */
 export const rateText = (rate: number): string => `${rate < 0.0995 ? (100 * rate).toFixed(1) : Math.round(100 * rate)}%`

@@ -35,14 +35,21 @@ export function tagBands({ bands, neighbours }: ChainGeometry, most = 3): TagSea
 
 const NOWHERE: Box = { x1: 0, y1: 0, x2: 0, y2: 0 }
 
-const NOTE_SPOTS: readonly [number, number][] = [
-  [1.5, 0],
-  [-1.5, 0],
-  [0, 2.2],
-  [0, -2.2],
-  [1.3, 1.6],
-  [-1.3, -1.6],
-]
+/** Beside, below and above the place of a note, in units of half the tag's own size; its mark of some pixels stays free. */
+function noteSpots({ clear }: Note, { width, height }: { width: number; height: number }): readonly [number, number][] {
+  const beside = Math.max(1.5, 1 + (2 * clear) / width)
+  const clearOf = 1 + (2 * clear) / height
+  const below = Math.max(2.2, clearOf)
+  const aslant = Math.max(1.6, clearOf)
+  return [
+    [beside, 0],
+    [-beside, 0],
+    [0, below],
+    [0, -below],
+    [1.3, aslant],
+    [-1.3, -aslant],
+  ]
+}
 
 const PRIORITY: Record<Tier, number> = { focus: 1000, near: 500, full: 200, far: 0 }
 
@@ -52,6 +59,9 @@ export interface Note {
   readonly y: number
   /** Those of more weight are placed first, 0 … 1. */
   readonly weight: number
+  readonly ink: string
+  /** Pixels around its place that its mark takes up. */
+  readonly clear: number
 }
 
 export interface TagInput {
@@ -108,10 +118,12 @@ export function requestTags(
     if (area && !insist && isTooSmall(box, area.view.scale, measureTag(ctx, look, widths).width)) return
     add(look, { priority: PRIORITY[tier] + Math.min(99, longest) + (isHovered ? 900 : 0), spots, insist })
   })
-  for (const { text, x, y, weight } of input.notes) {
+  for (const note of input.notes) {
+    const { text, x, y, weight, ink } = note
     if (area && !isWithin(area, { x1: x, y1: y, x2: x, y2: y })) continue
-    const spots = NOTE_SPOTS.map(([ox, oy]) => ({ x, y, ox, oy, room: Infinity }))
-    add({ text, kind: 'note', frame: '' }, { priority: 600 + weight, spots, insist: true })
+    const look: TagLook = { text, kind: 'note', frame: ink }
+    const spots = noteSpots(note, measureTag(ctx, look, widths)).map(([ox, oy]) => ({ x, y, ox, oy, room: Infinity }))
+    add(look, { priority: 600 + weight, spots, insist: true })
   }
   return { requests, looks }
 }

@@ -31,7 +31,12 @@ const viewport = { x1: 0, y1: 0, x2: 400, y2: 300 }
 function asked(look: Partial<StageLook>, view: { scale: number; x: number; y: number } | null = null) {
   const input = tagInputOf(source, { ...PLAIN, ...look }, tagBands(geometry))
   const { requests, looks } = requestTags(ctx, input, new Map(), view && { view, viewport })
-  return { requests, texts: looks.map(({ text }) => text), kinds: looks.map(({ kind }) => kind) }
+  return {
+    requests,
+    texts: looks.map(({ text }) => text),
+    kinds: looks.map(({ kind }) => kind),
+    inks: looks.map(({ frame }) => frame),
+  }
 }
 
 describe('which tags are asked for', () => {
@@ -73,6 +78,18 @@ describe('which tags are asked for', () => {
     const marks = { qubits: Uint32Array.of(3), words: 'lost' }
     expect(asked({ marks }).texts.at(-1)).toBe('13')
     expect(asked({ marks }).requests.at(-1)!.spots[0]).toMatchObject({ x: 1, y: 0.5 })
+  })
+
+  it('keeps numbers of marked qubits off their marks, and in the colour of what they mark', () => {
+    const regained = { qubits: Uint32Array.of(2), couplers: new Uint32Array(0), words: 'working again' }
+    const { requests, inks } = asked({ marks: { qubits: Uint32Array.of(3), words: 'lost', regained } })
+    expect(inks.slice(-2)).toEqual([PLAIN.tokens.claytext, PLAIN.tokens.leaf])
+    for (const { width, height, spots } of requests.slice(-2))
+      for (const { ox, oy } of spots) {
+        const beside = ((Math.abs(ox) - 1) * width) / 2
+        const below = ((Math.abs(oy) - 1) * height) / 2
+        expect(Math.max(beside, below)).toBeGreaterThanOrEqual(9)
+      }
   })
 })
 
