@@ -3,8 +3,7 @@ import { withPart } from '#shared/engine/machine/defect-edit'
 import { parseDefectText } from '#shared/engine/machine/defects'
 import type { LatticeArrays } from './useMachines'
 import type { LatticePick, OverlayLayer } from '~/utils/lattice/types'
-import { formatCount } from '~/utils/format'
-import { drawnChange, isListed, listedDefects, partText, refusalOf } from '~/utils/machine/drawn-defects'
+import { drawnChange, isListed, listedDefects, listedText, partText, refusalOf } from '~/utils/machine/drawn-defects'
 import { changeMarks } from '~/utils/machine/marks'
 
 export type DrawnKind = 'qubits' | 'couplers'
@@ -26,12 +25,11 @@ export function useDefectDrawing(lattice: () => LatticeArrays, text: Ref<string>
   )
   watch(kind, () => (end.value = null))
 
-  const total = () =>
-    `${formatCount(listed.value.qubits.size, 'qubit')} and ${formatCount(listed.value.couplers.size, 'coupler')} are listed.`
-
+  /** Told of the list as it will be: a text that belongs to a form is the new one only after its next rendering. */
   function set(part: DefectPart, isMissing: boolean): void {
-    text.value = withPart(text.value, part, isMissing)
-    said.value = `${partText(part)} is ${isMissing ? 'missing' : 'working'} now. ${total()}`
+    const next = withPart(text.value, part, isMissing)
+    text.value = next
+    said.value = `${partText(part)} is ${isMissing ? 'missing' : 'working'} now. ${listedText(next)}`
   }
 
   /** @returns whether the part could be switched; the answer is in `said` */

@@ -1,6 +1,7 @@
 import type { DefectPart } from '#shared/engine/machine/defect-edit'
 import { parseDefectText } from '#shared/engine/machine/defects'
 import type { LatticeArrays } from '~/composables/useMachines'
+import { formatCount } from '../format'
 import { couplerText } from './changes'
 import type { ChangedParts } from './marks'
 
@@ -23,6 +24,12 @@ export const isListed = ({ qubits, couplers }: ListedDefects, [a, b]: DefectPart
 /** `Qubit 17`, `Coupler 17–42`. */
 export const partText = ([a, b]: DefectPart): string =>
   b === undefined ? `Qubit ${a}` : `Coupler ${couplerText([a, b])}`
+
+/** `Listed: 14 qubits and 1 coupler.` */
+export function listedText(text: string): string {
+  const { qubits, couplers } = listedDefects(text)
+  return `Listed: ${formatCount(qubits.size, 'qubit')} and ${formatCount(couplers.size, 'coupler')}.`
+}
 
 type Machine = Pick<LatticeArrays, 'ids' | 'usable' | 'ends' | 'missingCouplers' | 'couplersOfMissing'>
 

@@ -25,11 +25,22 @@ describe('useDefectDrawing', () => {
     const { text, pick, said, marks } = drawing('4 # known')
     pick(click(7))
     expect(text.value).toBe('4 # known\n7')
-    expect(said.value).toBe('Qubit 7 is missing now. 2 qubits and no couplers are listed.')
+    expect(said.value).toBe('Qubit 7 is missing now. Listed: 2 qubits and no couplers.')
     expect([...marks.value!.qubits]).toEqual([4, 7])
     pick(click(4))
     expect(text.value).toBe('# known\n7')
     expect(said.value).toMatch(/^Qubit 4 is working now/)
+  })
+
+  it('counts what is listed from now on, where the form renders the text later', () => {
+    let rendered = '4'
+    const later = vue.customRef<string>(() => ({
+      get: () => rendered,
+      set: (next) => queueMicrotask(() => (rendered = next)),
+    }))
+    const { pick, said } = useDefectDrawing(() => GRID, later)
+    pick(click(7))
+    expect(said.value).toBe('Qubit 7 is missing now. Listed: 2 qubits and no couplers.')
   })
 
   it('switches a coupler by its two ends, and begins anew where there is none', async () => {
@@ -39,7 +50,7 @@ describe('useDefectDrawing', () => {
     pick(click(0))
     expect(overlay.value!.qubits).toEqual([0])
     pick(click(8))
-    expect(said.value).toBe('There is no coupler between qubits 0 and 8.')
+    expect(said.value).toBe('There is no coupler between qubits 0 and 8. Qubit 8 is picked instead.')
     expect(overlay.value!.qubits).toEqual([8])
     pick(click(7))
     expect(text.value).toBe('8-7')
