@@ -149,6 +149,16 @@ export function requireProgrammed({ result }: Programming): Programmed {
   )
 }
 
+/**
+ * What a run sheet is shown with: as programmed, or as it would be at the fitted scale where a chosen one leaves the
+ * ranges, which a repaired embedding can bring about. A page that could not be opened could not be mended either.
+ */
+export function programmeShown(bench: Bench, settings: RunSheetSettings): Programming {
+  const programming = programmeBench(bench, settings)
+  const isChosen = settings.scale !== null
+  return !programming.result.programmed && isChosen ? programmeBench(bench, { ...settings, scale: null }) : programming
+}
+
 /** SHA-256 over the programmed values, hex. */
 export function fingerprintOf({ qubits, h, ends, J, scale, offset }: Programmed): string {
   return createHash('sha256')

@@ -20,7 +20,7 @@ export function checksOf(
   embedding: { inForce: number; broken: BrokenView | null },
 ): CheckView[] {
   return [
-    rangesCheck(bench, programmed),
+    rangesCheck(bench, settings, programmed),
     ...gaugeCheck(bench, settings, programmed),
     embeddingCheck(bench, embedding.inForce, embedding.broken),
     ...versionCheck(ofVersion),
@@ -30,7 +30,13 @@ export function checksOf(
   ]
 }
 
-function rangesCheck({ machine }: Bench, { limitedBy, scale }: Programmed): CheckView {
+function rangesCheck({ machine }: Bench, settings: RunSheetSettings, { limitedBy, scale }: Programmed): CheckView {
+  if (settings.scale !== null && settings.scale !== scale)
+    return {
+      verdict: 'refused',
+      what: `The chosen scale ${settings.scale} leaves ${machine.machine.name}’s ranges`,
+      figure: `at most ${Number(scale.toPrecision(3))} fits: shown with it`,
+    }
   const figure = limitedBy === 'nothing' ? 'scale 1' : `scale ${Number(scale.toPrecision(3))}, limited by ${limitedBy}`
   return { verdict: 'passed', what: `Every programmed value fits ${machine.machine.name}’s ranges`, figure }
 }

@@ -46,6 +46,7 @@ import {
   loadBench,
   precisionOf,
   programmeBench,
+  programmeShown,
   requireProgrammed,
   scaleLimitOf,
 } from './programming'
@@ -176,7 +177,7 @@ const itemOf = (
 export async function runSheetView(app: App, actor: Actor, id: string): Promise<RunSheetView> {
   const row = await runSheetRow(app, actor, id)
   const bench = await benchOf(app, actor, row)
-  const programming = programmeBench(bench, row.settings)
+  const programming = programmeShown(bench, row.settings)
   const programmed = requireProgrammed(programming)
   const { problem, machine } = bench
   const precision = precisionOf(bench, programmed)

@@ -3,10 +3,13 @@ import { JOB_KINDS } from '../../server/jobs/kinds'
 import { deleteFor, restore } from '../../server/services/deletions'
 import { startEmbedding } from '../../server/services/embeddings'
 import { cancelJob, jobOf } from '../../server/services/jobs'
+import { handOver } from '../../server/services/review'
+import { spinsOf } from '../../server/services/spins'
+import { updateRunSheet } from '../../server/database/repositories/run-sheets'
 import { startReference } from '../../server/services/reference-start'
 import { startRehearsal } from '../../server/services/rehearsals'
 import { returnView } from '../../server/services/return-view'
-import { createRunSheet } from '../../server/services/run-sheets'
+import { createRunSheet, editRunSheet, runSheetRow, runSheetView } from '../../server/services/run-sheets'
 import { scansOf, scanView, startScan } from '../../server/services/scans'
 import { createRandom } from '../../shared/engine/random'
 import { createEmbeddingSchema } from '../../shared/schemas/embeddings'
@@ -134,6 +137,20 @@ describe('a scan over chain strengths', () => {
     expect(scanSchema.safeParse({ strengths: [1] }).success).toBe(false)
   })
 
+  it('is of a run sheet that opens even where its chosen scale no longer fits', async () => {
+    const { sheetId } = await runSheet('min', { strength: { rule: 'manual', value: 1 }, scale: 0.2 })
+    const row = await runSheetRow(test.app, test.actor, sheetId)
+    // As when a repair moves a run sheet to an embedding whose values are larger.
+    await updateRunSheet(test.app.db, sheetId, ['draft'], { settings: { ...row.settings, scale: 50 } })
+    const view = await runSheetView(test.app, test.actor, sheetId)
+    expect(view.checks[0]).toMatchObject({ verdict: 'refused', what: expect.stringContaining('chosen scale 50') })
+    expect(view.scale).toBeLessThan(1)
+    await expect(handOver(test.app, test.actor, sheetId, 'submit', '')).rejects.toThrow(/chosen scale 50 leaves/)
+    await expect(editRunSheet(test.app, test.actor, sheetId, { scale: 40 })).rejects.toThrow(/leave the machine/)
+    await editRunSheet(test.app, test.actor, sheetId, { scale: null })
+    expect((await runSheetView(test.app, test.actor, sheetId)).checks[0]!.verdict).toBe('passed')
+  })
+
   it('goes with its run sheet, and comes back with it', async () => {
     const { sheetId } = await runSheet()
     const { view } = await scanned(sheetId, { strengths: [2, 8], reads: 20, sweeps: 10 })
@@ -142,5 +159,28 @@ describe('a scan over chain strengths', () => {
     await expect(scanView(test.app, test.actor, view.id)).rejects.toThrow(/no such scan/)
     await restore(test.app, test.actor, 'run sheet', sheetId)
     expect((await scanView(test.app, test.actor, view.id)).number).toBe(1)
+  })
+})
+
+describe('the spins of a spectrum', () => {
+  it('are the variables times the scale, or the qubits of chains as programmed', async () => {
+    const { sheetId } = await runSheet('min', { strength: { rule: 'manual', value: 5 } })
+    const { scale, chains } = await runSheetView(test.app, test.actor, sheetId)
+    const logical = await spinsOf(test.app, test.actor, sheetId, { variables: null })
+    expect(logical.names).toHaveLength(12)
+    expect(logical.J).toHaveLength(66)
+    expect(Math.max(...logical.J.map(Math.abs))).toBeCloseTo(3 * scale, 12)
+    const [first] = chains
+    const chain = await spinsOf(test.app, test.actor, sheetId, { variables: [first!.label] })
+    expect(chain.names).toHaveLength(first!.qubits)
+    expect(chain.names[0]).toMatch(new RegExp(`^${first!.label} at qubit \\d+$`))
+    for (const J of chain.J) expect(J).toBeCloseTo(-5 * scale, 12)
+  })
+
+  it('are few, and of variables that exist', async () => {
+    const { sheetId } = await runSheet()
+    const all = Array.from({ length: 12 }, (_, i) => `v${i}`)
+    await expect(spinsOf(test.app, test.actor, sheetId, { variables: all })).rejects.toThrow(/at most 14/)
+    await expect(spinsOf(test.app, test.actor, sheetId, { variables: ['v1', 'w'] })).rejects.toThrow(/no variable w/)
   })
 })
