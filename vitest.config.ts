@@ -36,7 +36,7 @@ export default defineConfig({
           globalSetup: 'tests/setup/build.ts',
           testTimeout: 120_000,
           hookTimeout: 120_000,
-          fileParallelism: false,
+          maxWorkers: 2,
         },
       },
       {
