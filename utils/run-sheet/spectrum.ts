@@ -48,6 +48,12 @@ export function spectrumText({ gap, groundStates }: Spectrum, millikelvin: numbe
     : `${least} That is over kT, ${heat} GHz. ${ends}`
 }
 
+/** Why a pause may serve there. */
+export const pauseReason = ({ gap }: Spectrum, millikelvin: number): string =>
+  gap!.gigahertz < thermalGigahertz(millikelvin)
+    ? 'past the least gap, where the gap has opened to kT'
+    : 'at the least gap, which kT does not reach'
+
 /** Where a pause may serve, to three digits; null where the spectrum or the sheet does not say. */
 export function pauseAt({ gap, s }: Spectrum, millikelvin: number | null): number | null {
   const place = gap && millikelvin !== null ? pausePlace(gap, s, thermalGigahertz(millikelvin)) : null

@@ -1,6 +1,6 @@
 import { expect, it } from 'vitest'
 import type { Spectrum } from '../../../../shared/engine/spectrum/spectrum'
-import { levelSeries, pauseAt, spectrumRules, spectrumText } from '../../../../utils/run-sheet/spectrum'
+import { levelSeries, pauseAt, pauseReason, spectrumRules, spectrumText } from '../../../../utils/run-sheet/spectrum'
 
 const spectrum: Spectrum = {
   s: Float64Array.from([0, 0.5, 1]),
@@ -30,6 +30,8 @@ it('says how the least gap stands to kT, and where a pause may serve', () => {
   expect(spectrumText(spectrum, null)).toBe('The least gap is 0.2 GHz, at s = 0.45. 2 ground states at the end.')
   expect(spectrumText({ ...spectrum, gap: null }, 20)).toContain('too many')
   expect(pauseAt(spectrum, 20)).toBe(0.5)
+  expect(pauseReason(spectrum, 20)).toContain('past the least gap')
+  expect(pauseReason(spectrum, 5)).toContain('at the least gap')
   expect(pauseAt(spectrum, 5)).toBe(0.45)
   expect(pauseAt(spectrum, null)).toBeNull()
   expect(spectrumRules(spectrum, 20).map(({ axis }) => axis)).toEqual(['x', 'y'])
