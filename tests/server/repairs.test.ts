@@ -117,9 +117,6 @@ describe('a calibration that takes away twenty used qubits', () => {
       const changed = Object.keys(view.chains).filter(
         (label) => String(view.chains[label]) !== String(before.chains[label]),
       )
-      console.log(
-        `E-${before.number}: ${[...usedBy(before)].filter((q) => lost.has(q)).length} of its qubits lost; repaired as E-${view.number}, ${VARIABLES - changed.length} of ${VARIABLES} chains untouched, longest chain ${before.stats!.chainLength.max} → ${view.stats!.chainLength.max}, qubits ${before.stats!.qubitsUsed} → ${view.stats!.qubitsUsed}`,
-      )
       expect(view).toMatchObject({ status: 'found', calibration: 2, holdsAtCurrentCalibration: true, broken: null })
       expect(view.start).toMatchObject({
         changed: changed.length,
