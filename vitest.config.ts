@@ -4,6 +4,10 @@ import { defineConfig } from 'vitest/config'
 
 const root = fileURLToPath(new URL('.', import.meta.url))
 
+// Projects run one group after another: pages are timed by nobody, but a browser that shares two
+// cores with the server tests runs into its own time limits.
+const inTurn = (groupOrder: number, maxWorkers: number) => ({ maxWorkers, sequence: { groupOrder } })
+
 export default defineConfig({
   resolve: { alias: { '~': root.replace(/\/$/, ''), '#shared': `${root}shared` } },
   test: {
@@ -16,6 +20,7 @@ export default defineConfig({
           environment: 'node',
           include: ['tests/unit/**/*.test.ts'],
           testTimeout: 30_000,
+          ...inTurn(0, 2),
         },
       },
       {
@@ -25,6 +30,7 @@ export default defineConfig({
           environment: 'node',
           include: ['tests/reference/**/*.test.ts'],
           testTimeout: 60_000,
+          ...inTurn(0, 2),
         },
       },
       {
@@ -36,7 +42,7 @@ export default defineConfig({
           globalSetup: 'tests/setup/build.ts',
           testTimeout: 120_000,
           hookTimeout: 120_000,
-          maxWorkers: 2,
+          ...inTurn(1, 2),
         },
       },
       {
@@ -48,7 +54,7 @@ export default defineConfig({
           globalSetup: 'tests/setup/demo.ts',
           testTimeout: 300_000,
           hookTimeout: 300_000,
-          fileParallelism: false,
+          ...inTurn(2, 1),
         },
       },
     ],
