@@ -116,11 +116,17 @@ export default withNuxt(
     },
   },
   {
-    files: ['server/services/**/*.ts', 'server/jobs/**/*.ts', 'server/database/**/*.ts', 'server/workers/**/*.ts'],
+    files: [
+      'server/services/**/*.ts',
+      'server/bundle/**/*.ts',
+      'server/jobs/**/*.ts',
+      'server/database/**/*.ts',
+      'server/workers/**/*.ts',
+    ],
     rules: wall([forbid(['h3', '**/api/**', '**/utils/**', '#imports', '#app'], 'Services and below know no HTTP.')]),
   },
   {
-    files: ['server/workers/tasks/**/*.ts', 'server/workers/thread.ts'],
+    files: ['server/workers/tasks/**/*.ts', 'server/workers/thread.ts', 'server/bundle/**/*.ts'],
     rules: wall([
       forbid(['**/database/**', '**/services/**', 'drizzle-orm', 'drizzle-orm/**'], 'A thread knows no database.'),
     ]),

@@ -27,6 +27,7 @@ import { solveQuickParts } from './tasks/solve-quick-parts'
 import { sparsity } from './tasks/sparsity'
 import { structureDetails } from './tasks/structure-details'
 import { summarise } from './tasks/summarise'
+import { writeBundle } from './tasks/write-bundle'
 import { writeProblemFile } from './tasks/write-problem'
 import { writeSamplesFile } from './tasks/write-samples'
 
@@ -62,6 +63,7 @@ export const TASKS = {
   sparsity,
   structureDetails,
   summarise,
+  writeBundle,
   writeProblemFile,
   writeSamplesFile,
 }

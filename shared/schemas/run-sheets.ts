@@ -98,6 +98,9 @@ export const EDITABLE_STATES: readonly RunSheetState[] = ['draft', 'sent back']
 /** States in which a run sheet moves to the embedding that its own was repaired as. */
 export const MOVABLE_STATES: readonly RunSheetState[] = ['draft', 'sent back', 'in review', 'approved']
 
+/** States from approval on: nothing of a run sheet changes any more, and its bundle can be had. */
+export const FIXED_STATES: readonly RunSheetState[] = ['approved', 'issued', 'returned', 'closed']
+
 /** States of a run sheet whose samples are not back yet: a broken embedding concerns it. */
 export const OPEN_STATES: readonly RunSheetState[] = [...MOVABLE_STATES, 'issued']
 
