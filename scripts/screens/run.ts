@@ -90,7 +90,7 @@ async function pagesOfDemo(session: Session, only: string, url: string, isOurs: 
 }
 
 async function pagesOfBare(session: Session, only: string, servers: RunningServer[]): Promise<void> {
-  const { server, stranger, setUp } = await startBare()
+  const { server, stranger, setUp } = await startBare(temporaryFolder())
   servers.push(server)
   await picturesAs(session, only, [stranger])
   await picturesAs(session, only, [await setUp()])

@@ -1,7 +1,7 @@
 import type { LiftedSolution, LiftedTo } from '../../shared/schemas/returns'
 import type { App } from '../app'
 import { findProblem } from '../database/repositories/problems'
-import type { DecodedSummary } from '../workers/tasks/summarise'
+import type { DistinctState } from '../workers/tasks/list-solutions'
 import { liftingOf, liftPacked } from './lifting'
 import type { Bench } from './programming'
 import { signed, signOf } from './sense'
@@ -13,7 +13,7 @@ const isSame = (a: number, b: number): boolean => Math.abs(a - b) <= 1e-9 * Math
 export async function liftedSolutions(
   app: App,
   { problem, labels }: Bench,
-  solutions: DecodedSummary['solutions'],
+  solutions: readonly DistinctState[],
 ): Promise<{ to: LiftedTo; rows: LiftedSolution[] } | null> {
   const record = await liftingOf(app, problem)
   if (!record) return null

@@ -2,8 +2,8 @@ import { enumerationTolerance } from '../../shared/engine/problem/optimum/enumer
 import type { ReferenceOfSamples } from '../../shared/schemas/reference'
 import type { App } from '../app'
 import { bestReference } from '../database/repositories/reference-optima'
-import type { DecodedSummary } from '../workers/tasks/summarise'
 import type { Bench } from './programming'
+import type { Weighted } from './return-energies'
 import { proportion } from './proportion'
 import { signed, signOf } from './sense'
 
@@ -14,7 +14,7 @@ import { signed, signOf } from './sense'
 export async function referenceOfSamples(
   app: App,
   { problem, ising }: Pick<Bench, 'problem' | 'ising'>,
-  { energies, counts }: Pick<DecodedSummary, 'energies' | 'counts'>,
+  { energies, counts }: Weighted,
 ): Promise<ReferenceOfSamples | null> {
   const row = await bestReference(app.db, problem.id, problem.version)
   if (!row) return null

@@ -1,19 +1,19 @@
-import { createHash, randomUUID } from 'node:crypto'
-import type { z } from 'zod'
-import type { Problem } from '../../shared/engine/problem/problem'
-import type { Programmed } from '../../shared/engine/programming/programme'
-import type { Samples } from '../../shared/engine/sampling/samples'
+import { randomUUID } from 'node:crypto'
+import type { EnergyAgreement } from '../../shared/engine/readout/energy-agreement'
+import type { SampleRows } from '../../shared/engine/sampling/samples'
 import { DomainError } from '../../shared/errors'
-import type { uploadReturnSchema } from '../../shared/schemas/returns'
+import type { UploadReturn } from '../../shared/schemas/returns'
 import type { Actor, App } from '../app'
 import { nextNumber } from '../database/repositories/counters'
 import type { ReturnRow } from '../database/repositories/run-sheets'
 import { findReturn, insertReturn, updateRunSheet } from '../database/repositories/run-sheets'
+import type { ReadSamplesOutput } from '../workers/tasks/read-samples'
 import { programmeBench, requireProgrammed } from './programming'
-import type { UploadedFile } from './problem-upload'
+import type { ReadingWatch } from './problem-upload'
+import { writeSummary } from './return-summary'
 import { benchOf, runSheetRow } from './run-sheets'
 import { packSamples, readsIn } from './samples-data'
-import { signed, signOf } from './sense'
+import type { StoredFile } from './stored-files'
 
 /** A return of the workspace. @throws DomainError not found, also for another workspace's */
 export async function returnRow(app: App, actor: Actor, id: string): Promise<ReturnRow> {
@@ -22,71 +22,88 @@ export async function returnRow(app: App, actor: Actor, id: string): Promise<Ret
   return row
 }
 
-interface Given {
-  samples: Samples
-  programmed: Programmed
-  ising: Problem
-  sense: 'min' | 'max'
-  /** Of the coins that settle ties: the run sheet's, as wherever the samples are shown. */
-  seed: number
+/** @throws DomainError with the reasons when the file holds nothing that can be accepted */
+function requireRows({ reading }: ReadSamplesOutput, fileName: string) {
+  if (reading.rows) return reading.rows
+  throw new DomainError(
+    reading.isReadToEnd ? 'not acceptable' : 'unreadable',
+    reading.isReadToEnd ? 'samples.refused' : 'samples.unreadable',
+    `${fileName}: ${reading.issues[0]?.message ?? 'no samples could be read'}`,
+    [...reading.issues],
+  )
 }
 
-/** The figures kept with a return for lists: reads with a break, and the best majority-decoded energy. */
-export async function figuresOf(
-  app: App,
-  { samples, programmed, ising, sense, seed }: Given,
-): Promise<{ readsWithBreak: number; best: number }> {
-  const summary = await app.compute.run('summarise', {
-    samples,
-    programmed,
-    ising,
-    seed,
-    methods: ['majority'],
-    solutions: 1,
-  })
+/** What is kept of how the energies of the file compare; nothing where it had none. */
+function energiesMade(agreement: EnergyAgreement | null): Record<string, string | number | null> {
+  if (!agreement) return {}
+  const { rows, agreeing, meaning, cause, worst, tolerance } = agreement
   return {
-    readsWithBreak: summary.breaks.readsWithBreak,
-    best: signed(signOf(sense), summary.decoded[0]!.solutions[0]!.energy),
+    energiesMean: meaning,
+    energiesCause: cause,
+    energiesAgreeing: agreeing,
+    energiesLooked: rows,
+    energiesWorst: worst,
+    energiesTolerance: tolerance,
   }
 }
 
-/** Checks and stores returned samples; a run sheet that was approved or issued is returned by it. */
+/** Where uploaded samples come from and what was understood of them. */
+const uploadMade = (
+  file: StoredFile,
+  options: UploadReturn,
+  { reading, agreement }: ReadSamplesOutput,
+  { rows, gauges }: SampleRows,
+): ReturnRow['made'] => ({
+  file: file.name,
+  bytes: file.bytes,
+  sha256: file.sha256,
+  format: reading.format,
+  container: reading.container,
+  values: reading.valueSet,
+  columns: reading.columnsFrom,
+  rows,
+  gauges: options.gauges,
+  gaugesKnown: gauges !== null,
+  machineTimeSeconds: options.machineTimeSeconds ?? reading.machineTimeSeconds,
+  ...energiesMade(agreement),
+})
+
+/**
+ * Checks and stores returned samples; a run sheet that was approved or issued is returned by it.
+ * @throws DomainError with every reason when the file cannot be accepted; nothing is kept then
+ */
 export async function uploadReturn(
   app: App,
   actor: Actor,
   runSheetId: string,
-  file: UploadedFile,
-  options: z.infer<typeof uploadReturnSchema>,
+  file: StoredFile,
+  options: UploadReturn,
+  watch: ReadingWatch = {},
 ) {
   const sheet = await runSheetRow(app, actor, runSheetId)
   const bench = await benchOf(app, actor, sheet)
   const programmed = requireProgrammed(programmeBench(bench, sheet.settings))
-  const qubitIds = Array.from(programmed.qubits, (q) => bench.machine.fabric.ids[q]!)
-  const reading = await app.compute.run('readSamplesFile', { bytes: file.bytes, qubitIds })
-  if (!reading)
-    throw new DomainError(
-      'unreadable',
-      'samples.not-text',
-      `${file.name} is not UTF-8 text. Send the samples as CSV with a header of qubit numbers.`,
-    )
-  const { samples } = reading
-  if (!samples)
-    throw new DomainError(
-      'not acceptable',
-      'samples.refused',
-      `${file.name}: ${reading.issues[0]?.message ?? 'no samples could be read'}`,
-      reading.issues,
-    )
+  const { gauges: count, seed } = sheet.settings
+  const output = await app.compute.run(
+    'readSamplesFile',
+    {
+      path: file.path,
+      format: options.format,
+      qubitIds: Array.from(programmed.qubits, (q) => bench.machine.fabric.ids[q]!),
+      order: options.qubitOrder ?? null,
+      programmed,
+      gauges: { count, seed, areUndone: options.gauges === 'undone' },
+    },
+    { signal: watch.signal, onProgress: ({ bytes }) => watch.onProgress?.(bytes) },
+  )
+  const samples = requireRows(output, file.name)
   const samplesBlobId = await app.blobs.write(packSamples(samples))
-  const { ising, problem } = bench
-  const given = { samples, programmed, ising, sense: problem.sense, seed: sheet.settings.seed }
-  const figures = await figuresOf(app, given)
+  const summary = await writeSummary(app, { samples, programmed, ising: bench.ising, seed }, bench.problem.sense)
   const id = randomUUID()
   const now = app.now()
-  const sha256 = createHash('sha256').update(file.bytes).digest('hex')
-  const machineTimeSeconds = options.machineTimeSeconds ?? null
   await app.db.transaction(async (tx) => {
     await app.blobs.adopt(tx, samplesBlobId)
+    await app.blobs.adopt(tx, summary.blobId)
     await insertReturn(tx, {
       id,
       workspaceId: actor.workspaceId,
@@ -95,16 +112,17 @@ export async function uploadReturn(
       number: await nextNumber(tx, runSheetId, 'return'),
       source: 'upload',
       status: 'ready',
-      made: { file: file.name, sha256, values: reading.valueSet, machineTimeSeconds },
+      made: uploadMade(file, options, output, samples),
       settings: sheet.settings,
       samplesBlobId,
+      summaryBlobId: summary.blobId,
       reads: readsIn(samples),
-      ...figures,
+      ...summary.figures,
       version: app.version,
       createdBy: actor.userId,
       createdAt: now,
     })
     await updateRunSheet(tx, runSheetId, ['approved', 'issued'], { state: 'returned', changedAt: now })
   })
-  return { id, reads: readsIn(samples), rows: samples.rows, ...figures }
+  return { id, reads: readsIn(samples), rows: samples.rows, ...summary.figures, energies: output.agreement }
 }

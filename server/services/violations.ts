@@ -1,12 +1,12 @@
 import type { ConstraintGroup } from '../../shared/schemas/problems'
 import type { ReturnView } from '../../shared/schemas/returns'
-import type { DecodedSummary } from '../workers/tasks/summarise'
+import type { ListedSolutions } from '../workers/tasks/list-solutions'
 import { proportion } from './proportion'
 
 /** How many of the decoded reads break each confirmed group; null where there are none. */
 export function violationsView(
   groups: readonly ConstraintGroup[] | null,
-  { violations }: Pick<DecodedSummary, 'violations'>,
+  { violations }: Pick<ListedSolutions, 'violations'>,
 ): ReturnView['violations'] {
   if (!groups || groups.length === 0) return null
   return {

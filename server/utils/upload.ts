@@ -1,7 +1,10 @@
+import type { Readable } from 'node:stream'
 import busboy from '@fastify/busboy'
 import type { H3Event } from 'h3'
 import { getHeader } from 'h3'
 import { DomainError } from '../../shared/errors'
+import type { StoredFile } from '../services/stored-files'
+import { inTemporaryFolder, storeFile } from '../services/stored-files'
 
 export interface Upload {
   fields: Record<string, string>
@@ -44,12 +47,13 @@ function parserOf(event: H3Event, type: string, limitBytes: number, fieldBytes: 
   }
 }
 
-/**
- * Reads a multipart form with at most one file, streaming, and gives up as soon as it grows past the limit.
- * @param limitBytes of the file
- * @param fieldBytes of each other part
- */
-export async function readUpload(event: H3Event, limitBytes: number, fieldBytes = MAX_FIELD_BYTES): Promise<Upload> {
+/** Reads a multipart form with at most one file, which is handed on as it comes. */
+async function receive(
+  event: H3Event,
+  limitBytes: number,
+  fieldBytes: number,
+  onFile: (stream: Readable, name: string) => void,
+): Promise<{ fields: Record<string, string> }> {
   const type = getHeader(event, 'content-type') ?? ''
   if (!type.startsWith('multipart/form-data'))
     throw new DomainError('unreadable', 'upload.type', 'Send the file as multipart/form-data with a part named “file”.')
@@ -57,24 +61,26 @@ export async function readUpload(event: H3Event, limitBytes: number, fieldBytes 
   if (Number(getHeader(event, 'content-length') ?? 0) > limitBytes + fieldBytes + 2 ** 20) throw tooLarge(limitBytes)
   const request = event.node.req
   const parser = parserOf(event, type, limitBytes, fieldBytes)
-  const upload: Upload = { fields: {}, file: null }
-  return new Promise<Upload>((resolve, reject) => {
+  const fields: Record<string, string> = {}
+  return new Promise((resolve, reject) => {
+    let open: Readable | null = null
     const fail = (error: DomainError): void => {
       request.unpipe(parser)
       request.resume()
+      open?.destroy(error)
       reject(error)
     }
+    // A sender that goes away ends the request without an end of the form.
+    request.on('close', () => request.complete || fail(malformed()))
     parser.on('field', (name, value, _, isCut) => {
       if (isCut) fail(fieldTooLong(name, fieldBytes))
-      else upload.fields[name] = value
+      else fields[name] = value
     })
     parser.on('file', (part, stream, fileName) => {
-      const chunks: Buffer[] = []
-      stream.on('data', (chunk: Buffer) => chunks.push(chunk))
       stream.on('limit', () => fail(tooLarge(limitBytes)))
-      stream.on('end', () => {
-        if (part === 'file') upload.file = { name: keptName(fileName), bytes: Buffer.concat(chunks) }
-      })
+      open = stream
+      if (part === 'file') onFile(stream, keptName(fileName))
+      else stream.resume()
     })
     parser.on('filesLimit', () =>
       fail(
@@ -86,13 +92,50 @@ export async function readUpload(event: H3Event, limitBytes: number, fieldBytes 
       ),
     )
     parser.on('error', () => fail(malformed()))
-    parser.on('finish', () => resolve(upload))
+    parser.on('finish', () => resolve({ fields }))
     request.pipe(parser)
   })
 }
 
+/**
+ * Reads a multipart form with at most one file, streaming, and gives up as soon as it grows past the limit.
+ * @param limitBytes of the file
+ * @param fieldBytes of each other part
+ */
+export async function readUpload(event: H3Event, limitBytes: number, fieldBytes = MAX_FIELD_BYTES): Promise<Upload> {
+  let file: Upload['file'] = null
+  const { fields } = await receive(event, limitBytes, fieldBytes, (stream, name) => {
+    const chunks: Buffer[] = []
+    stream.on('data', (chunk: Buffer) => chunks.push(chunk))
+    stream.on('end', () => (file = { name, bytes: Buffer.concat(chunks) }))
+  })
+  return { fields, file }
+}
+
 /** The file of an upload. @throws DomainError when the form has none */
-export function requireFile({ file }: Upload): { name: string; bytes: Uint8Array } {
+export function requireFile<T>({ file }: { file: T | null }): T {
   if (file) return file
   throw new DomainError('unreadable', 'upload.file', 'The form has no file. Send it as the part named “file”.')
+}
+
+/**
+ * Reads a multipart form whose file goes to the disk as it comes, so that its size costs no memory; the file is gone once
+ * the work is over.
+ * @param limitBytes of the file
+ * @param fieldBytes of each other part
+ */
+export async function withStoredUpload<T>(
+  event: H3Event,
+  { limitBytes, fieldBytes }: { limitBytes: number; fieldBytes: number },
+  work: (fields: Record<string, string>, file: StoredFile | null) => Promise<T>,
+): Promise<T> {
+  return inTemporaryFolder(async (folder) => {
+    let stored: Promise<StoredFile> | null = null
+    const { fields } = await receive(event, limitBytes, fieldBytes, (stream, name) => {
+      stored = storeFile(stream, name, folder)
+      // What goes wrong with the form is told first; a file cut short by it is no second fault.
+      stored.catch(() => {})
+    })
+    return work(fields, await stored)
+  })
 }

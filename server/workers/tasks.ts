@@ -12,6 +12,7 @@ import { measureChains } from './tasks/measure-chains'
 import { planOptimum } from './tasks/plan-optimum'
 import { findDamage } from './tasks/find-damage'
 import { liftStates } from './tasks/lift-states'
+import { listSolutions } from './tasks/list-solutions'
 import { planSearch } from './tasks/plan-search'
 import { presolve } from './tasks/presolve'
 import { proveInfeasible } from './tasks/prove-infeasible'
@@ -48,6 +49,7 @@ export const TASKS = {
   measureChains,
   planOptimum,
   liftStates,
+  listSolutions,
   planSearch,
   presolve,
   proveInfeasible,

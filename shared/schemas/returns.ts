@@ -6,18 +6,53 @@ import type { ReferenceOfSamples } from './reference'
 
 export const decodeSchema = z.enum(['majority', 'discard', 'descent'])
 export type Decoding = z.infer<typeof decodeSchema>
-export const returnQuerySchema = z.object({ decode: decodeSchema.default('majority') })
+const flag = z.enum(['true', 'false']).default('false')
+export const returnQuerySchema = z.object({
+  decode: decodeSchema.default('majority'),
+  /** List only the assignments that keep every confirmed constraint group. */
+  feasible: flag,
+})
 export const solutionsQuerySchema = z.object({
   decode: decodeSchema.default('majority'),
-  format: z.enum(['json', 'csv']).default('json'),
+  format: z.enum(['json', 'csv', 'npy']).default('json'),
   limit: z.coerce.number().int().min(1).max(100_000).default(100),
   /** CSV: assignments of the problem that this one was reduced from, in place of its own. */
-  lifted: z.enum(['true', 'false']).default('false'),
+  lifted: flag,
+  /** Only the assignments that keep every confirmed constraint group. */
+  feasible: flag,
 })
+/** Numbers apart by commas, blanks or line ends, as a JSON list or not. */
+const qubitOrderSchema = z
+  .string()
+  .transform((text) =>
+    text
+      .replace(/^\s*\[|\]\s*$/g, ' ')
+      .split(/[\s,;]+/)
+      .filter((word) => word !== ''),
+  )
+  .pipe(
+    z
+      .array(
+        z
+          .string()
+          .regex(/^\d{1,9}$/, 'each is a qubit number')
+          .transform(Number),
+      )
+      .min(1)
+      .max(200_000),
+  )
+
 export const uploadReturnSchema = z.object({
-  format: z.enum(['csv']).default('csv'),
+  /** Found from the file where it is left out. */
+  format: z.enum(['csv', 'npy', 'npz', 'json']).optional(),
+  /** Qubit numbers column by column, for files that do not name them; else they stand as in the bundle, ascending. */
+  qubitOrder: qubitOrderSchema.optional(),
+  /** Whether gauges were undone already, or the rows stand as the machine read them. */
+  gauges: z.enum(['undone', 'as read']).default('undone'),
+  /** Of all reads together; what the file says itself is taken where this is left out. */
   machineTimeSeconds: z.coerce.number().positive().max(1e6).optional(),
 })
+export type UploadReturn = z.infer<typeof uploadReturnSchema>
 
 export interface ChainBreaks extends Proportion {
   variable: number
@@ -34,6 +69,12 @@ export interface ChainBreaks extends Proportion {
 export interface CouplerBreaks extends Proportion {
   a: number
   b: number
+  label: string
+}
+
+/** A qubit that disagreed with the majority of its chain. */
+export interface QubitBreaks extends Proportion {
+  qubit: number
   label: string
 }
 
@@ -83,6 +124,8 @@ export interface SolutionRow {
   count: number
   /** Variables that differ from the best solution. */
   distance: number
+  /** Confirmed constraint groups that it breaks; null while there are none. */
+  violated: number | null
   /** 0/1 for a QUBO, −1/+1 for an Ising problem, by label. */
   assignment: Record<string, number>
   /** Null where the problem was not reduced from another one. */
@@ -121,9 +164,12 @@ export interface ReturnView {
   version: string
   reads: number
   decode: Decoding
+  /** Whether only assignments that keep every confirmed group are listed. */
+  feasibleOnly: boolean
   breaks: {
     chains: ChainBreaks[]
     couplers: CouplerBreaks[]
+    qubits: QubitBreaks[]
     readsWithBreak: Proportion
     chainReads: Proportion
     /** perRead[k] reads had exactly k broken chains. */
@@ -143,6 +189,8 @@ export interface ReturnView {
   /** Where the problem was reduced from another one: that one, which `lifted` of the solutions answers. */
   liftedTo: LiftedTo | null
   solutions: SolutionView[]
+  /** Distinct assignments there are, of those that may be listed. */
+  distinct: number
   physicalEnergies: HistogramBin[]
   /** Null where nobody has looked for the optimum of that version of the problem. */
   reference: ReferenceOfSamples | null

@@ -3,6 +3,7 @@ import { fileURLToPath } from 'node:url'
 import { afterAll, beforeAll, describe, expect, it } from 'vitest'
 import { launch } from '../support/browser'
 import { startDemo } from '../support/demo'
+import { emptyFolder } from '../support/folders'
 import type { RunningServer } from '../support/server'
 import type { DeadLink, Shown } from '../support/pages/crawl'
 import { crawl, tellingViews } from '../support/pages/crawl'
@@ -30,7 +31,7 @@ const opened: Opened = new Set()
 
 beforeAll(async () => {
   browser = await launch()
-  const bare = startBare()
+  const bare = startBare(emptyFolder())
   await lookAtDemo()
   await lookAtBare(await bare)
 }, 900_000)

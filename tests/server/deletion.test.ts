@@ -24,9 +24,9 @@ import { libraryPage } from '../../server/services/library'
 import { removeProblem } from '../../server/services/problems'
 import { removeRunSheet, runSheetsOf } from '../../server/services/run-sheets'
 import { libraryQuerySchema } from '../../shared/schemas/library'
-import { temporaryFolder } from '../support/server'
+import { emptyFolder } from '../support/folders'
 
-const folder = temporaryFolder()
+const folder = emptyFolder()
 let later = 0
 /** The clock, which the tests put forward. */
 const now = (): Date => new Date(Date.now() + later)

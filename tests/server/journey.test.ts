@@ -1,8 +1,9 @@
 import Graph from 'graphology'
 import { afterAll, beforeAll, describe, expect, it } from 'vitest'
 import { Client } from '../support/client'
+import { seededFolder } from '../support/folders'
 import type { RunningServer } from '../support/server'
-import { startServer, temporaryFolder } from '../support/server'
+import { startServer } from '../support/server'
 
 /*
  * The whole job through the routes, each figure recomputed here from the definitions (docs/formulas.md), sharing no code
@@ -51,7 +52,7 @@ let runSheetId: string
 let programmed: Programmed
 
 beforeAll(async () => {
-  server = await startServer({ DEMO: 'true', DATA_DIR: temporaryFolder() })
+  server = await startServer({ DEMO: 'true', DATA_DIR: seededFolder() })
   developer = await Client.signedIn(server.url, 'developer')
   steward = await Client.signedIn(server.url, 'steward')
 })

@@ -15,12 +15,12 @@ import { libraryQuerySchema } from '../../shared/schemas/library'
 import { LIBRARY_FIELDS, PROBLEM_STATES } from '../../shared/library'
 import type { ProblemItem } from '../../shared/schemas/problems'
 import { seedLibrary } from '../support/library'
-import { temporaryFolder } from '../support/server'
+import { emptyFolder } from '../support/folders'
 import { matches, sorted } from './library-oracle'
 
 const PROBLEMS = 150
 
-const folder = temporaryFolder()
+const folder = emptyFolder()
 const actor = { userId: 'u', workspaceId: 'w' }
 let database: Database
 let app: App

@@ -2,8 +2,9 @@ import { afterAll, beforeAll, describe, expect, it } from 'vitest'
 import type { UploadedGraph, UploadedMachine } from '../../shared/schemas/machine-uploads'
 import { unpackArrays } from '../../shared/packed-arrays'
 import { Client } from '../support/client'
+import { seededFolder } from '../support/folders'
 import type { RunningServer } from '../support/server'
-import { startServer, temporaryFolder } from '../support/server'
+import { startServer } from '../support/server'
 
 interface Refusal {
   data: { code: string; message: string; issues?: { path?: string; line?: number; message: string }[] }
@@ -17,7 +18,7 @@ interface Graph {
 let server: RunningServer
 let steward: Client
 let developer: Client
-const dataFolder = temporaryFolder()
+const dataFolder = seededFolder()
 beforeAll(async () => {
   server = await startServer({ DEMO: 'true', DATA_DIR: dataFolder })
   steward = await Client.signedIn(server.url, 'steward')

@@ -11,11 +11,13 @@ import { programmeBench, requireProgrammed } from '../../server/services/program
 import { startRehearsal } from '../../server/services/rehearsals'
 import { returnView } from '../../server/services/return-view'
 import { uploadReturn } from '../../server/services/returns'
+import { asStoredFile } from '../../server/services/stored-files'
 import { benchOf, createRunSheet, runSheetRow } from '../../server/services/run-sheets'
-import { writeSamplesCsv } from '../../shared/engine/readout/samples-csv'
+import { writeSamplesCsv } from '../../shared/engine/readout/files/write-csv'
 import { createEmbeddingSchema } from '../../shared/schemas/embeddings'
 import { measureCapacitySchema } from '../../shared/schemas/machine-use'
 
+import { uploadReturnSchema } from '../../shared/schemas/returns'
 import { createRunSheetSchema, rehearseSchema } from '../../shared/schemas/run-sheets'
 import type { TestApp } from '../support/app'
 import { startTestApp } from '../support/app'
@@ -57,8 +59,10 @@ async function returnedOn(machineId: string) {
     samples,
     Array.from(programmed.qubits, (q) => bench.machine.fabric.ids[q]!),
   )
-  const file = { name: 'samples.csv', bytes: Buffer.from(csv) }
-  const returned = await uploadReturn(app, actor, sheet.id, file, { format: 'csv' })
+  const bytes = Buffer.from(csv)
+  const returned = await asStoredFile('samples.csv', bytes, (file) =>
+    uploadReturn(app, actor, sheet.id, file, uploadReturnSchema.parse({})),
+  )
   return { embeddingId, sheetId: sheet.id, returnId: returned.id }
 }
 
@@ -70,7 +74,7 @@ describe('breaks by part', () => {
     const breaks = await machineBreaks(app, actor, machineId, { rehearsals: false })
     expect(breaks).toMatchObject({ calibration: 1, embeddings: 1, reads: 200, leftOut: 0 })
     expect(breaks.returns).toMatchObject([{ id: returnId, embedding: { id: embeddingId }, source: 'upload' }])
-    const view = await returnView(app, actor, returnId, 'majority')
+    const view = await returnView(app, actor, returnId, 'majority', false)
     const broken = breaks.couplers.filter(({ count }) => count > 0)
     expect(broken.length).toBeGreaterThan(0)
     const counts = (rows: readonly { a: number; b: number; count: number }[]) =>

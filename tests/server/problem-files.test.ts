@@ -3,13 +3,14 @@ import { afterAll, beforeAll, describe, expect, it } from 'vitest'
 import { PROBLEM_FILE_KEYS, PROBLEM_FILES, type ProblemFileKey } from '../../shared/problem-files'
 import type { ProblemView, UploadedProblem } from '../../shared/schemas/problems'
 import { Client } from '../support/client'
-import { startServer, temporaryFolder, until, type RunningServer } from '../support/server'
+import { emptyFolder } from '../support/folders'
+import { startServer, until, type RunningServer } from '../support/server'
 
 let server: RunningServer
 let developer: Client
 beforeAll(async () => {
   const NUXT_SESSION_PASSWORD = 'a-password-of-at-least-thirty-two-characters'
-  server = await startServer({ NUXT_SESSION_PASSWORD, ALLOW_PLAIN_HTTP: 'true', DATA_DIR: temporaryFolder() })
+  server = await startServer({ NUXT_SESSION_PASSWORD, ALLOW_PLAIN_HTTP: 'true', DATA_DIR: emptyFolder() })
   const code = await until(() => /one-time code: (\S+)/.exec(server.output())?.[1], 10, 'the code')
   developer = new Client(server.url)
   const person = { workspace: 'Brackwater', name: 'Ann', email: 'ann@example.org', password: 'long enough a password' }

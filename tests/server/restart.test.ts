@@ -1,7 +1,8 @@
 import { afterEach, expect, it } from 'vitest'
 import { Client } from '../support/client'
+import { seededFolder } from '../support/folders'
 import type { RunningServer } from '../support/server'
-import { startServer, temporaryFolder, until } from '../support/server'
+import { startServer, until } from '../support/server'
 
 /** A complete graph is slow enough to embed that a kill lands in the middle of the search. */
 const complete = (n: number): string => {
@@ -20,7 +21,7 @@ interface Job {
 }
 
 it('loses nothing when killed during an embedding, and ends the job after the restart', async () => {
-  const env = { DEMO: 'true', DATA_DIR: temporaryFolder() }
+  const env = { DEMO: 'true', DATA_DIR: seededFolder() }
   server = await startServer(env)
   let developer = await Client.signedIn(server.url, 'developer')
   const steward = await Client.signedIn(server.url, 'steward')
@@ -55,7 +56,7 @@ it('loses nothing when killed during an embedding, and ends the job after the re
 })
 
 it('fails a job with the reason when its process died twice under it', async () => {
-  const env = { DEMO: 'true', DATA_DIR: temporaryFolder() }
+  const env = { DEMO: 'true', DATA_DIR: seededFolder() }
   server = await startServer(env)
   let developer = await Client.signedIn(server.url, 'developer')
   const { body: problems } = await developer.get<{ items: { id: string; name: string }[] }>('/api/problems')
@@ -84,7 +85,7 @@ it('fails a job with the reason when its process died twice under it', async () 
 })
 
 it('cancels a running search and keeps the best', async () => {
-  server = await startServer({ DEMO: 'true', DATA_DIR: temporaryFolder() })
+  server = await startServer({ DEMO: 'true', DATA_DIR: seededFolder() })
   const developer = await Client.signedIn(server.url, 'developer')
   const { body: problems } = await developer.get<{ items: { id: string; name: string }[] }>('/api/problems')
   const { body: machines } = await developer.get<{ items: { id: string; name: string }[] }>('/api/machines')
@@ -109,7 +110,7 @@ it('cancels a running search and keeps the best', async () => {
 })
 
 it('hands a running job back at an orderly stop, without counting the attempt', async () => {
-  const env = { DEMO: 'true', DATA_DIR: temporaryFolder() }
+  const env = { DEMO: 'true', DATA_DIR: seededFolder() }
   server = await startServer(env)
   let developer = await Client.signedIn(server.url, 'developer')
   const { body: problems } = await developer.get<{ items: { id: string }[] }>('/api/problems')

@@ -1,6 +1,7 @@
 import { afterEach, expect, it } from 'vitest'
 import { SERVER_ENTRY } from '../../scripts/build.mjs'
 import { Client } from '../support/client'
+import { seededFolder } from '../support/folders'
 import type { RunningServer } from '../support/server'
 import { startProcess, startServer, temporaryFolder, until } from '../support/server'
 
@@ -37,7 +38,7 @@ it('does not start without a session password outside the demo', async () => {
 })
 
 it('does not stay without a port', async () => {
-  server = await startServer({ DEMO: 'true', DATA_DIR: temporaryFolder() })
+  server = await startServer({ DEMO: 'true', DATA_DIR: seededFolder() })
   const PORT = new URL(server.url).port
   const second = startProcess(SERVER_ENTRY, { DEMO: 'true', DATA_DIR: temporaryFolder(), HOST: '127.0.0.1', PORT })
   await until(() => second.child.exitCode !== null, 30, 'the refusal')
@@ -46,7 +47,7 @@ it('does not stay without a port', async () => {
 })
 
 it('does not start a second process on the same data folder', async () => {
-  const DATA_DIR = temporaryFolder()
+  const DATA_DIR = seededFolder()
   server = await startServer({ DEMO: 'true', DATA_DIR })
   const second = startProcess(SERVER_ENTRY, { DEMO: 'true', DATA_DIR, PORT: '0' })
   await until(() => second.child.exitCode !== null, 30, 'the refusal')

@@ -14,11 +14,13 @@ import { problemView } from '../../server/services/problem-view'
 import { editProblem, energiesOf, removeProblem, termsOf } from '../../server/services/problems'
 import { returnView } from '../../server/services/return-view'
 import { uploadReturn } from '../../server/services/returns'
+import { asStoredFile } from '../../server/services/stored-files'
 import { createRunSheet, runSheetView } from '../../server/services/run-sheets'
 import { uploadVersion } from '../../server/services/version-upload'
 import { createEmbeddingSchema } from '../../shared/schemas/embeddings'
 import { libraryQuerySchema } from '../../shared/schemas/library'
 import { uploadVersionSchema } from '../../shared/schemas/problem-versions'
+import { uploadReturnSchema } from '../../shared/schemas/returns'
 import { createRunSheetSchema } from '../../shared/schemas/run-sheets'
 import { unpackArrays } from '../../shared/packed-arrays'
 import type { TestApp } from '../support/app'
@@ -194,11 +196,13 @@ describe('what was built on an earlier version', () => {
     const id = await test.problem(PATH)
     const { id: embedding } = await importEmbedding(app, actor, { problemId: id, machineId, chains: CHAINS })
     const sheet = await runSheetOn(embedding)
-    const file = { name: 'samples.csv', bytes: Buffer.from('0,1,2\n1,1,1\n') }
-    const { id: samples } = await uploadReturn(app, actor, sheet, file, { format: 'csv' })
+    const bytes = Buffer.from('0,1,2\n1,1,1\n')
+    const { id: samples } = await asStoredFile('samples.csv', bytes, (file) =>
+      uploadReturn(app, actor, sheet, file, uploadReturnSchema.parse({})),
+    )
     expect((await view(id)).best).toBe(-2)
     await upload(id, REWEIGHED)
-    const returned = await returnView(app, actor, samples, 'majority')
+    const returned = await returnView(app, actor, samples, 'majority', false)
     expect(returned).toMatchObject({ ofVersion: { version: 1, current: 2, graph: 'same' }, best: { energy: -2 } })
     // The best of one version says nothing of another.
     expect([(await view(id)).best, (await view(id, 1)).best]).toEqual([null, -2])

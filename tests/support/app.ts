@@ -14,7 +14,8 @@ import type { StartedApp } from '../../server/start'
 import { startApp } from '../../server/start'
 import { createMachineSchema } from '../../shared/schemas/machines'
 import { uploadProblemSchema } from '../../shared/schemas/problems'
-import { temporaryFolder, until } from './server'
+import { emptyFolder } from './folders'
+import { until } from './server'
 
 const OVER = ['done', 'failed', 'cancelled']
 
@@ -54,7 +55,7 @@ async function bundleThread(): Promise<string> {
 }
 
 /** @param threads for background jobs */
-export async function startTestApp(threads: number, dataFolder = temporaryFolder(), member?: Actor): Promise<TestApp> {
+export async function startTestApp(threads: number, dataFolder = emptyFolder(), member?: Actor): Promise<TestApp> {
   const folder = await (bundled ??= bundleThread())
   const started = await startApp({ dataFolder, demo: false, workersFolder: () => folder, concurrency: 2, threads })
   const { app } = started

@@ -194,5 +194,22 @@ export const MIGRATIONS = [
       "\nUPDATE \"run_sheets\" SET \"settings\" = '{\"scale\":null,\"schedule\":null}'::jsonb || \"settings\";",
       "\nUPDATE \"returns\" SET \"settings\" = '{\"scale\":null,\"schedule\":null}'::jsonb || \"settings\";\n"
     ]
+  },
+  {
+    "tag": "0006_answers",
+    "folderMillis": 1796183086967,
+    "hash": "7776b895348813b6f94feaf4e9d0367368ce1d9fee9f2e3cb826227f48e3756f",
+    "bps": true,
+    "sql": [
+      "CREATE TABLE \"answer_sheets\" (\n\t\"id\" text PRIMARY KEY NOT NULL,\n\t\"workspace_id\" text NOT NULL,\n\t\"return_id\" text NOT NULL,\n\t\"decode\" text NOT NULL,\n\t\"solutions\" integer NOT NULL,\n\t\"remark\" text NOT NULL,\n\t\"token_hash\" text NOT NULL,\n\t\"created_by\" text NOT NULL,\n\t\"created_at\" timestamp with time zone NOT NULL,\n\t\"revoked_by\" text,\n\t\"revoked_at\" timestamp with time zone\n);\n",
+      "\nALTER TABLE \"returns\" ADD COLUMN \"summary_blob_id\" text;",
+      "\nALTER TABLE \"answer_sheets\" ADD CONSTRAINT \"answer_sheets_workspace_id_workspaces_id_fk\" FOREIGN KEY (\"workspace_id\") REFERENCES \"public\".\"workspaces\"(\"id\") ON DELETE cascade ON UPDATE no action;",
+      "\nALTER TABLE \"answer_sheets\" ADD CONSTRAINT \"answer_sheets_return_id_returns_id_fk\" FOREIGN KEY (\"return_id\") REFERENCES \"public\".\"returns\"(\"id\") ON DELETE cascade ON UPDATE no action;",
+      "\nALTER TABLE \"answer_sheets\" ADD CONSTRAINT \"answer_sheets_created_by_users_id_fk\" FOREIGN KEY (\"created_by\") REFERENCES \"public\".\"users\"(\"id\") ON DELETE no action ON UPDATE no action;",
+      "\nALTER TABLE \"answer_sheets\" ADD CONSTRAINT \"answer_sheets_revoked_by_users_id_fk\" FOREIGN KEY (\"revoked_by\") REFERENCES \"public\".\"users\"(\"id\") ON DELETE no action ON UPDATE no action;",
+      "\nCREATE UNIQUE INDEX \"answer_sheets_token_hash_index\" ON \"answer_sheets\" USING btree (\"token_hash\");",
+      "\nCREATE INDEX \"answer_sheets_return_id_index\" ON \"answer_sheets\" USING btree (\"return_id\");",
+      "\nALTER TABLE \"returns\" ADD CONSTRAINT \"returns_summary_blob_id_blobs_id_fk\" FOREIGN KEY (\"summary_blob_id\") REFERENCES \"public\".\"blobs\"(\"id\") ON DELETE no action ON UPDATE no action;"
+    ]
   }
 ]

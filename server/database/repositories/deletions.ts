@@ -138,17 +138,24 @@ export async function deleteForGood(
     .from(embeddings)
     .where(embeddingsUnder(kind, id))
   const samples = await tx
-    .select({ id: returns.id, blobId: returns.samplesBlobId, breaksBlobId: returns.breaksBlobId })
+    .select({
+      id: returns.id,
+      blobId: returns.samplesBlobId,
+      breaksBlobId: returns.breaksBlobId,
+      summaryBlobId: returns.summaryBlobId,
+    })
     .from(returns)
     .where(samplesUnder(tx, returns, kind, id))
-  const breaks = samples.map(({ breaksBlobId }) => ({ blobId: breaksBlobId }))
+  const derived = samples
+    .flatMap(({ breaksBlobId, summaryBlobId }) => [breaksBlobId, summaryBlobId])
+    .map((blobId) => ({ blobId }))
   const scanned = await tx
     .select({ id: scans.id })
     .from(scans)
     .where(samplesUnder(tx, scans, kind, id))
   await tx.delete(root).where(eq(root.id, id))
   return {
-    blobIds: [...data.blobs, ...data.references, ...chains, ...samples, ...breaks].flatMap(
+    blobIds: [...data.blobs, ...data.references, ...chains, ...samples, ...derived].flatMap(
       ({ blobId }) => blobId ?? [],
     ),
     subjectIds: [...data.references, ...chains, ...samples, ...scanned].map((row) => row.id),

@@ -130,6 +130,16 @@ export async function updateReturn(db: Db, id: string, set: Partial<typeof retur
   return rows.length === 1
 }
 
+/** Keeps the packed summary of a return that has none yet; false when it has, or is gone. */
+export async function keepSummary(tx: Db, id: string, summaryBlobId: string): Promise<boolean> {
+  const rows = await tx
+    .update(returns)
+    .set({ summaryBlobId })
+    .where(and(eq(returns.id, id), isNull(returns.summaryBlobId)))
+    .returning({ id: returns.id })
+  return rows.length === 1
+}
+
 /** Returns of several run sheets, newest first. */
 export async function returnsOfRunSheets(db: Db, runSheetIds: readonly string[]): Promise<ReturnRow[]> {
   if (runSheetIds.length === 0) return []

@@ -1,5 +1,6 @@
 import type { AnyPgColumn } from 'drizzle-orm/pg-core'
 import { doublePrecision, index, integer, jsonb, pgTable, text, uniqueIndex } from 'drizzle-orm/pg-core'
+import type { Decoding } from '../../../shared/schemas/returns'
 import type { ScanPoint, ScanRequest } from '../../../shared/schemas/scans'
 import type { RunSheetSettings, RunSheetState } from '../../../shared/schemas/run-sheets'
 import { blobs } from './blobs'
@@ -72,6 +73,8 @@ export const returns = pgTable(
     samplesBlobId: text().references(() => blobs.id),
     /** Packed counts of breaks by qubit and chain coupler; made when first asked for. */
     breaksBlobId: text().references(() => blobs.id),
+    /** Packed break statistics, energies and decoded rows; made with the samples, or when first asked for. */
+    summaryBlobId: text().references(() => blobs.id),
     reads: integer().notNull(),
     readsWithBreak: integer(),
     /** Best majority-decoded energy in the problem's own sense. */
@@ -115,4 +118,28 @@ export const scans = pgTable(
     ...deletion(),
   },
   (table) => [uniqueIndex().on(table.runSheetId, table.number), index().on(table.embeddingId)],
+)
+
+/** Answers handed to the person who asked, each behind a link of its own. */
+export const answerSheets = pgTable(
+  'answer_sheets',
+  {
+    id: id(),
+    workspaceId: workspaceId(),
+    returnId: text()
+      .notNull()
+      .references(() => returns.id, { onDelete: 'cascade' }),
+    decode: text().$type<Decoding>().notNull(),
+    /** How many of the best assignments it shows. */
+    solutions: integer().notNull(),
+    /** What the developer says beside them. */
+    remark: text().notNull(),
+    /** SHA-256 of the secret in the link, hex: the link itself is shown once. */
+    tokenHash: text().notNull(),
+    createdBy: createdBy(),
+    createdAt: createdAt(),
+    revokedBy: text().references(() => users.id),
+    revokedAt: moment(),
+  },
+  (table) => [uniqueIndex().on(table.tokenHash), index().on(table.returnId)],
 )

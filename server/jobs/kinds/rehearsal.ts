@@ -5,7 +5,7 @@ import type { Programmed } from '../../../shared/engine/programming/programme'
 import { straightSchedule } from '../../../shared/engine/programming/schedule'
 import { wholeGroups } from '../../../shared/engine/sampling/lanes/lane-model'
 import { joinSamples } from '../../../shared/engine/sampling/merge'
-import type { Samples } from '../../../shared/engine/sampling/samples'
+import type { SampleRows } from '../../../shared/engine/sampling/samples'
 import type { MachineSheet } from '../../../shared/schemas/machines'
 import type { RunSheetSettings } from '../../../shared/schemas/run-sheets'
 import type { App } from '../../app'
@@ -13,7 +13,7 @@ import { findEmbeddingOfJob } from '../../database/repositories/embeddings'
 import { findReturnOfJob, updateReturn } from '../../database/repositories/run-sheets'
 import { loadBench, programmeBench, requireProgrammed } from '../../services/programming'
 import type { RehearsalSettings } from '../../services/rehearsal-settings'
-import { figuresOf } from '../../services/returns'
+import { writeSummary } from '../../services/return-summary'
 import { packSamples, readsIn } from '../../services/samples-data'
 import type { RehearseInput } from '../../workers/tasks/rehearse'
 import type { JobContext, JobKindHandler } from '../kind'
@@ -39,8 +39,8 @@ export const rehearsalJob: JobKindHandler = {
     const cancelled = context.signal.aborted
     const reads = readsIn(samples)
     const samplesBlobId = reads > 0 ? await app.blobs.write(packSamples(samples)) : null
-    const given = { samples, programmed, ising: bench.ising, sense: bench.problem.sense, seed: row.settings.seed }
-    const figures = reads > 0 ? await figuresOf(app, given) : {}
+    const given = { samples, programmed, ising: bench.ising, seed: row.settings.seed }
+    const summary = reads > 0 ? await writeSummary(app, given, bench.problem.sense) : null
     const status = reads > 0 ? 'ready' : 'cancelled'
     return {
       status: cancelled ? 'cancelled' : 'done',
@@ -48,13 +48,14 @@ export const rehearsalJob: JobKindHandler = {
         ? `cancelled; ${groupDigits(reads)} reads were complete and are kept`
         : `${groupDigits(reads)} reads`,
       async save(tx) {
-        if (samplesBlobId) await app.blobs.adopt(tx, samplesBlobId)
+        for (const blobId of [samplesBlobId, summary?.blobId]) if (blobId) await app.blobs.adopt(tx, blobId)
         const kept = await updateReturn(tx, row.id, {
           status,
           samplesBlobId,
+          summaryBlobId: summary?.blobId ?? null,
           reads,
           seconds,
-          ...figures,
+          ...summary?.figures,
           reason: cancelled ? `Cancelled after ${groupDigits(reads)} ${reads === 1 ? 'read' : 'reads'}.` : null,
         })
         if (!kept) throw new Error(DELETED)
@@ -127,7 +128,7 @@ async function rehearseShares(
   context: JobContext,
   shares: readonly RehearseInput[],
   reads: number,
-): Promise<Samples> {
+): Promise<SampleRows> {
   const done = new Array<number>(shares.length).fill(0)
   const parts = await Promise.all(
     shares.map((share, index) =>
@@ -141,5 +142,6 @@ async function rehearseShares(
       }),
     ),
   )
-  return joinSamples(parts)
+  const gauges = parts.flatMap(({ rows }, k) => new Array<number>(rows).fill((shares[k]!.gauge?.number ?? 0) + 1))
+  return { ...joinSamples(parts), gauges: Uint32Array.from(gauges), energies: null }
 }

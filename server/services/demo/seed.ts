@@ -1,4 +1,4 @@
-import { writeSamplesCsv } from '../../../shared/engine/readout/samples-csv'
+import { writeSamplesCsv } from '../../../shared/engine/readout/files/write-csv'
 import { DEMO_ACCOUNTS, DEMO_PASSWORD } from '../../../shared/demo-accounts'
 import { createRandom } from '../../../shared/engine/random'
 import type { PublishedFamily } from '../../../shared/engine/machine/fabric'
@@ -7,6 +7,7 @@ import { createMachineSchema } from '../../../shared/schemas/machines'
 import { saveGroupsSchema } from '../../../shared/schemas/groups'
 import { uploadProblemSchema } from '../../../shared/schemas/problems'
 import { startReferenceSchema } from '../../../shared/schemas/reference'
+import { uploadReturnSchema } from '../../../shared/schemas/returns'
 import { createRunSheetSchema } from '../../../shared/schemas/run-sheets'
 import type { Actor, App } from '../../app'
 import { anyUser, keepFact, readFact, removeWorkspace, setFact, takeFact } from '../../database/repositories/people'
@@ -24,6 +25,7 @@ import { editProblem } from '../problems'
 import { programmeBench, requireProgrammed } from '../programming'
 import { startReference } from '../reference-start'
 import { uploadReturn } from '../returns'
+import { asStoredFile } from '../stored-files'
 import { handOver } from '../review'
 import { benchOf, createRunSheet, runSheetRow } from '../run-sheets'
 import type { DemoFile } from './problems'
@@ -196,12 +198,8 @@ async function seedReturn(app: App, developer: Actor, runSheetId: string): Promi
     samples,
     Array.from(programmed.qubits, (q) => bench.machine.fabric.ids[q]!),
   )
-  await uploadReturn(
-    app,
-    developer,
-    runSheetId,
-    { name: 'holm-point-0412.csv', bytes: Buffer.from(csv) },
-    { format: 'csv', machineTimeSeconds: 0.32 },
+  await asStoredFile('holm-point-0412.csv', Buffer.from(csv), (file) =>
+    uploadReturn(app, developer, runSheetId, file, uploadReturnSchema.parse({ machineTimeSeconds: 0.32 })),
   )
 }
 

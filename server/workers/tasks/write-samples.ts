@@ -1,9 +1,9 @@
 import type { Control } from '../../../shared/engine/control'
-import { writeSamplesCsv } from '../../../shared/engine/readout/samples-csv'
-import type { Samples } from '../../../shared/engine/sampling/samples'
+import { writeSamplesCsv } from '../../../shared/engine/readout/files/write-csv'
+import type { SampleRows } from '../../../shared/engine/sampling/samples'
 
 export interface WriteSamplesInput {
-  samples: Samples
+  samples: SampleRows
   qubitIds: number[]
 }
 

@@ -2,7 +2,7 @@
  * Containers of files: gzip (RFC 1952) and ZIP archives. The one file of the engine that knows the package for DEFLATE.
  * Every size is bounded before memory is taken, and checksums are verified, which the package leaves to its caller.
  */
-import { Gunzip, gzipSync, inflateSync, zipSync } from 'fflate'
+import { Gunzip, gzipSync, Inflate, inflateSync, zipSync } from 'fflate'
 import { ARCHIVE_LIMITS, checkGrowth, type ArchiveLimits } from './archive-limits'
 import { crc32 } from './checksum'
 import { ReadingFault } from './format'
@@ -174,6 +174,54 @@ export function readZip(
     checkGrowth((size += entry.size), bytes.length, limits)
   }
   return new Map(wanted.map((entry) => [entry.name, unpack(bytes, entry)]))
+}
+
+/**
+ * The contents of one entry of a ZIP archive as they are unpacked, for entries too large to hold whole; null when the
+ * archive has none of that name.
+ * @throws ReadingFault, also while iterating, when the entry is damaged or larger than the limits allow
+ */
+export function streamZipEntry(
+  bytes: Uint8Array,
+  name: string,
+  limits: ArchiveLimits,
+): Generator<Uint8Array, void, undefined> | null {
+  const entry = zipDirectory(bytes).find((candidate) => candidate.name === name)
+  if (!entry) return null
+  const fault = entryFault(bytes, entry)
+  if (fault) throw new ReadingFault(`"${name}" in the archive ${fault}`)
+  checkGrowth(entry.size, bytes.length, limits)
+  return checkedPieces(bytes, entry)
+}
+
+/** Pieces of an entry, its size and sum compared with the directory at the end. */
+function* checkedPieces(bytes: Uint8Array, entry: ZipEntry): Generator<Uint8Array, void, undefined> {
+  const damaged = new ReadingFault(`"${entry.name}" in the archive is damaged`)
+  const packed = packedBytes(bytes, entry)
+  let sum = 0
+  let size = 0
+  for (const piece of isDeflated(entry) ? inflatedPieces(packed, damaged) : pieces([packed])) {
+    sum = crc32(piece, sum)
+    size += piece.length
+    if (size > entry.size) throw damaged
+    yield piece
+  }
+  if (size !== entry.size || sum !== entry.sum) throw damaged
+}
+
+function* inflatedPieces(packed: Uint8Array, damaged: ReadingFault): Generator<Uint8Array, void, undefined> {
+  let out: Uint8Array[] = []
+  const stream = new Inflate((bytes) => out.push(bytes))
+  for (let at = 0; at < packed.length; at += SIZES.piece) {
+    const end = Math.min(packed.length, at + SIZES.piece)
+    try {
+      stream.push(packed.subarray(at, end), end === packed.length)
+    } catch {
+      throw damaged
+    }
+    yield* out
+    out = []
+  }
 }
 
 /** A ZIP archive of the contents by name, without times: the same contents make the same archive. */

@@ -109,6 +109,10 @@ export function writeIntegers(values: ArrayLike<number>): Uint8Array {
   return joined(writeNpyHeader('<i4', [values.length]), new Uint8Array(data.buffer))
 }
 
+/** Whole numbers from −128 to 127 as an array file of single bytes. */
+export const writeBytes = (values: Int8Array, shape: readonly number[] = [values.length]): Uint8Array =>
+  joined(writeNpyHeader('|i1', shape), new Uint8Array(values.buffer, values.byteOffset, values.length))
+
 /** One text of ASCII characters as an array file of bytes without dimensions. */
 export const writeWord = (word: string): Uint8Array =>
   joined(writeNpyHeader(`|S${word.length}`, []), new TextEncoder().encode(word))

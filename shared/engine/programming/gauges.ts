@@ -1,6 +1,6 @@
 import { createRandom, STREAMS } from '../random'
 import { strideOf } from '../sampling/samples'
-import type { Samples } from '../sampling/samples'
+import type { SampleRows, Samples } from '../sampling/samples'
 import type { Programmed } from './programme'
 import { excessesOf } from './ranges'
 import type { Ranges } from './ranges'
@@ -39,19 +39,44 @@ export function applyGauge(programmed: Programmed, gauge: Gauge): Programmed {
   }
 }
 
+/** Bits of a packed row that a gauge turns. @throws RangeError for a gauge of another length */
+function reversedBits(gauge: Gauge, width: number): Uint8Array {
+  if (gauge.length !== width) throw new RangeError(`${gauge.length} signs for samples of width ${width}`)
+  const reversed = new Uint8Array(strideOf(width))
+  gauge.forEach((sign, p) => {
+    if (sign < 0) reversed[p >> 3]! |= 1 << (p & 7)
+  })
+  return reversed
+}
+
 /**
  * Samples read under a gauge, turned back to t·s.
  * @throws RangeError for a gauge of another length
  */
 export function undoGauge(samples: Samples, gauge: Gauge): Samples {
-  if (gauge.length !== samples.width)
-    throw new RangeError(`${gauge.length} signs for samples of width ${samples.width}`)
   const stride = strideOf(samples.width)
-  const reversed = new Uint8Array(stride)
-  gauge.forEach((sign, p) => {
-    if (sign < 0) reversed[p >> 3]! |= 1 << (p & 7)
-  })
+  const reversed = reversedBits(gauge, samples.width)
   const bytes = samples.bytes.map((byte, k) => byte ^ reversed[k % stride]!)
+  return { ...samples, bytes }
+}
+
+/**
+ * Rows that were each read under the gauge of their number, turned back.
+ * @param signsOf signs of a gauge by its number in `samples.gauges`
+ * @throws RangeError for a gauge of another length
+ */
+export function undoGauges<T extends SampleRows>(samples: T, signsOf: (gauge: number) => Gauge): T {
+  const { gauges, rows } = samples
+  if (!gauges) return samples
+  const stride = strideOf(samples.width)
+  const reversed = new Map<number, Uint8Array>()
+  const bytes = samples.bytes.slice()
+  for (let r = 0; r < rows; r++) {
+    const number = gauges[r]!
+    const mask = reversed.get(number) ?? reversedBits(signsOf(number), samples.width)
+    reversed.set(number, mask)
+    for (let k = 0; k < stride; k++) bytes[r * stride + k]! ^= mask[k]!
+  }
   return { ...samples, bytes }
 }
 

@@ -17,6 +17,8 @@ export interface BreakStatistics {
   }
   /** Reads in which the ends of each coupler disagree; in the order of the programmed couplers, 0 on interaction couplers. */
   readonly perCoupler: Uint32Array
+  /** Reads in which each qubit disagrees with the majority of its chain; an even split counts against none. */
+  readonly perQubit: Uint32Array
   readonly readsWithBreak: number
   /** Reads × chains of two or more qubits: what a break fraction is taken of. */
   readonly chainReads: number
@@ -67,6 +69,24 @@ function disagreements(samples: Samples, { ends, isChainCoupler }: Programmed): 
   return perCoupler
 }
 
+/** Reads in which each position is on the lesser side of its chain; an even split has none. */
+export function minorities(samples: Samples, programmed: Programmed): Uint32Array {
+  const { chainOf, chainStrength } = programmed
+  const lengths = chainLengths(programmed)
+  const breaks = new Uint32Array(chainOf.length)
+  const ups = new Int32Array(chainStrength.length)
+  for (let r = 0; r < samples.rows; r++) {
+    ups.fill(0)
+    for (let p = 0; p < chainOf.length; p++) if (spinOf(samples, r, p) > 0) ups[chainOf[p]!]!++
+    for (let p = 0; p < chainOf.length; p++) {
+      const [up, length] = [ups[chainOf[p]!]!, lengths[chainOf[p]!]!]
+      if (up === 0 || up === length || 2 * up === length) continue
+      if (spinOf(samples, r, p) > 0 !== 2 * up > length) breaks[p]! += samples.counts[r]!
+    }
+  }
+  return breaks
+}
+
 /**
  * Where chains broke: a chain is broken in a read when its qubits disagree (docs/formulas.md, Returned samples).
  * @param samples physical samples in the order of `programmed.qubits`, with any gauge undone
@@ -95,6 +115,7 @@ export function breakStatistics(input: {
     perChain: { breaks },
     perRead: { brokenChains, histogram },
     perCoupler: disagreements(samples, programmed),
+    perQubit: minorities(samples, programmed),
     readsWithBreak: reads - histogram[0]!,
     chainReads: reads * chains,
   }

@@ -1,7 +1,7 @@
 import type { Programmed } from '../programming/programme'
 import { spinOf } from '../sampling/samples'
 import type { Samples } from '../sampling/samples'
-import { chainLengths } from './breaks'
+import { chainLengths, minorities } from './breaks'
 import { chainPulls } from './pulls'
 
 /** Parts of one kind as one set of samples shows them; the arrays are of the same length. */
@@ -23,22 +23,6 @@ export interface PartBreaks {
   readonly qubits: PartCounts & { readonly qubit: Uint32Array }
   /** Couplers inside chains, as pairs of dense indices, lower first: reads in which the two ends disagree. */
   readonly couplers: PartCounts & { readonly ends: Uint32Array }
-}
-
-/** Reads in which each position is on the lesser side of its chain. */
-function minorities(samples: Samples, { chainOf, chainStrength }: Programmed, lengths: Uint32Array): Uint32Array {
-  const breaks = new Uint32Array(chainOf.length)
-  const ups = new Int32Array(chainStrength.length)
-  for (let r = 0; r < samples.rows; r++) {
-    ups.fill(0)
-    for (let p = 0; p < chainOf.length; p++) if (spinOf(samples, r, p) > 0) ups[chainOf[p]!]!++
-    for (let p = 0; p < chainOf.length; p++) {
-      const [up, length] = [ups[chainOf[p]!]!, lengths[chainOf[p]!]!]
-      if (up === 0 || up === length || 2 * up === length) continue
-      if (spinOf(samples, r, p) > 0 !== 2 * up > length) breaks[p]! += samples.counts[r]!
-    }
-  }
-  return breaks
 }
 
 function couplerBreaks(samples: Samples, { ends }: Programmed, couplers: Uint32Array): Uint32Array {
@@ -63,7 +47,7 @@ export function partBreaks(samples: Samples, programmed: Programmed): PartBreaks
   const lengths = chainLengths(programmed)
   const positions = Uint32Array.from(chainOf.keys()).filter((p) => lengths[chainOf[p]!]! > 2)
   const couplers = Uint32Array.from(isChainCoupler.keys()).filter((c) => isChainCoupler[c])
-  const minority = minorities(samples, programmed, lengths)
+  const minority = minorities(samples, programmed)
   return {
     reads: samples.counts.reduce((sum, count) => sum + count, 0),
     qubits: {

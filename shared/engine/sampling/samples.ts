@@ -10,6 +10,14 @@ export interface Samples {
   readonly counts: Uint32Array
 }
 
+/** Samples with what else is known of each row. */
+export interface SampleRows extends Samples {
+  /** Number of the gauge that each row was read under, from 1; null where nobody said. */
+  readonly gauges: Uint32Array | null
+  /** Energies that came with the rows, as they came; null where none did. */
+  readonly energies: Float64Array | null
+}
+
 /** Bytes in one packed row. */
 export const strideOf = (width: number): number => (width + 7) >> 3
 

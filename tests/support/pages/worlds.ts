@@ -1,6 +1,6 @@
 import { DEMO_ACCOUNTS } from '../../../shared/demo-accounts'
 import { Client } from '../client'
-import { startServer, temporaryFolder, until } from '../server'
+import { startServer, until } from '../server'
 import type { Crawled, DeadLink, Shown, View, Visitor } from './crawl'
 import { crawl, tellingViews } from './crawl'
 import type { Route } from './routes'
@@ -18,9 +18,12 @@ export async function demoVisitors(url: string): Promise<Visitor[]> {
   return [...(await Promise.all(visitors)), { person: null, client: new Client(url) }]
 }
 
-/** An installation that nobody has set up. */
-export async function startBare() {
-  const env = { NUXT_SESSION_PASSWORD: SECRET, ALLOW_PLAIN_HTTP: 'true', DATA_DIR: temporaryFolder() }
+/**
+ * An installation that nobody has set up.
+ * @param folder with nothing in it, or a database that holds nothing yet
+ */
+export async function startBare(folder: string) {
+  const env = { NUXT_SESSION_PASSWORD: SECRET, ALLOW_PLAIN_HTTP: 'true', DATA_DIR: folder }
   const server = await startServer(env)
   const client = new Client(server.url)
   return {

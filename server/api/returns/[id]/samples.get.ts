@@ -1,4 +1,4 @@
-import { samplesFile } from '../../../services/return-view'
+import { samplesFile } from '../../../services/return-files'
 
 /** The raw samples as CSV, as they can be uploaded again. */
 export default defineRoute('member', async (event, { app, ...actor }) => {

@@ -1,13 +1,22 @@
+import { SAMPLES_FILE_LIMITS } from '../../../../shared/samples-files'
 import { uploadReturnSchema } from '../../../../shared/schemas/returns'
 import { uploadReturn } from '../../../services/returns'
 
-const LIMIT_BYTES = 256 * 2 ** 20
-
-/** Multipart upload of returned samples as CSV with a header of qubit numbers: 201 `{id, reads, …}`, or 422 with reasons. */
-export default defineRoute(['developer', 'owner'], async (event, { app, ...actor }) => {
-  const upload = await readUpload(event, LIMIT_BYTES)
-  const options = parse(uploadReturnSchema, upload.fields, 'The upload’s fields cannot be accepted')
-  const result = await uploadReturn(app, actor, partOf(event, 'id'), requireFile(upload), options)
-  setResponseStatus(event, 201)
-  return result
-})
+/**
+ * Multipart upload of returned samples: `file` (CSV, `.npy`, `.npz` or JSON, plain or gzip) with `format`, `qubitOrder`,
+ * `gauges`, `machineTimeSeconds`. 201 `{id, reads, …}`; 422 with reasons. With `Accept: application/x-ndjson` progress in
+ * bytes read comes first, see server/utils/progress.ts.
+ */
+export default defineRoute(['developer', 'owner'], (event, { app, ...actor }) =>
+  withStoredUpload(event, SAMPLES_FILE_LIMITS, async (fields, file) => {
+    const options = parse(uploadReturnSchema, fields, 'The upload’s fields cannot be accepted')
+    const id = partOf(event, 'id')
+    const stored = requireFile({ file })
+    return answerWithProgress<{ bytes: number; of: number }, unknown>(event, async ({ tell, signal }) => {
+      const onProgress = (bytes: number): void => tell({ bytes, of: stored.bytes })
+      const result = await uploadReturn(app, actor, id, stored, options, { onProgress, signal })
+      if (!event.node.res.headersSent) setResponseStatus(event, 201)
+      return result
+    })
+  }),
+)
