@@ -91,14 +91,15 @@ export function useChainFindings(
   const load = async (): Promise<void> => {
     const id = sheetId.value
     if (!id) return void (findings.value = null)
-    const [runSheet, programmed] = await Promise.all([
+    const [runSheet, chains, programmed] = await Promise.all([
       $fetch<RunSheetView>(`/api/run-sheets/${id}`).catch(() => null),
+      fetchRunSheetChains(id).catch(() => []),
       $fetch<ProgrammedView>(`/api/run-sheets/${id}/programmed`).catch(() => null),
     ])
     const ready = runSheet?.returns.filter(({ status }) => status === 'ready').sort((a, b) => b.number - a.number)[0]
     const shown = asked.value?.runSheet.id === id ? asked.value : null
     const samples = shown ?? (ready ? await $fetch<ReturnView>(`/api/returns/${ready.id}`).catch(() => null) : null)
-    if (sheetId.value === id) findings.value = runSheet ? markRaw({ runSheet, samples, programmed }) : null
+    if (sheetId.value === id) findings.value = runSheet ? markRaw({ runSheet, chains, samples, programmed }) : null
   }
   onMounted(async () => {
     if (askedReturn) asked.value = await $fetch<ReturnView>(`/api/returns/${askedReturn}`).catch(() => null)

@@ -1,8 +1,12 @@
 import { defaultRangeExtractor, useVirtualizer } from '@tanstack/vue-virtual'
-import type { LedgerRow } from '~/utils/lattice/types'
 
-export interface LedgerCursorOptions {
-  readonly shown: () => readonly LedgerRow[]
+/** A line of a ledger: it is about one variable. */
+interface Line {
+  readonly variable: number
+}
+
+export interface LedgerCursorOptions<Row extends Line> {
+  readonly shown: () => readonly Row[]
   /** Variables in the order of the rows. */
   readonly order: () => readonly number[]
   readonly rowHeight: () => number
@@ -18,7 +22,7 @@ export interface LedgerCursorOptions {
  * Thousands of rows of which only those in sight exist, and the one of them that the keyboard is on. That row always
  * exists, even scrolled out of sight, so that the browser's focus is never lost with it.
  */
-export function useLedgerCursor(options: LedgerCursorOptions) {
+export function useLedgerCursor<Row extends Line>(options: LedgerCursorOptions<Row>) {
   const selection = useSelectionStore()
   const cursor = ref<number | null>(null)
   const position = computed(() => (cursor.value === null ? -1 : options.order().indexOf(cursor.value)))
@@ -61,7 +65,10 @@ export function useLedgerCursor(options: LedgerCursorOptions) {
 }
 
 /** The rows in sight, and the one at `position` wherever it is. */
-function virtualRows({ shown, order, rowHeight, scroller, padding }: LedgerCursorOptions, position: Ref<number>) {
+function virtualRows<Row extends Line>(
+  { shown, order, rowHeight, scroller, padding }: LedgerCursorOptions<Row>,
+  position: Ref<number>,
+) {
   const virtualizer = useVirtualizer(
     computed(() => {
       const kept = position.value
@@ -92,7 +99,7 @@ function virtualRows({ shown, order, rowHeight, scroller, padding }: LedgerCurso
   return { virtualizer, items }
 }
 
-interface Gestures extends LedgerCursorOptions {
+interface Gestures extends LedgerCursorOptions<Line> {
   readonly cursor: Ref<number | null>
   readonly position: ComputedRef<number>
   readonly moveTo: (index: number, extends_: boolean) => void

@@ -1,11 +1,15 @@
 import type { EnergyTable } from '#shared/engine/machine/energy-table'
 import type { Spectrum } from '#shared/engine/spectrum/spectrum'
-import type { SpinsView } from '#shared/schemas/spins'
+import type { HeldState, SpinsQuery, SpinsView } from '#shared/schemas/spins'
 import type { SpectrumReport, SpectrumRequest } from '~/workers/spectrum'
 
 export interface WorkedSpectrum {
   spectrum: Spectrum
   names: string[]
+  /** Of chains, not of the logical problem. */
+  isOfChains: boolean
+  /** The state at which all other chains were held. */
+  held: HeldState | null
   seconds: number
 }
 
@@ -25,7 +29,7 @@ export function useSpectrum(runSheetId: MaybeRefOrGetter<string>) {
     share.value = null
   }
 
-  function work({ names, h, ends, J }: SpinsView, table: EnergyTable): void {
+  function work({ names, h, ends, J, held }: SpinsView, isOfChains: boolean, table: EnergyTable): void {
     const begun = performance.now()
     worker = new Worker(new URL('../workers/spectrum.ts', import.meta.url), { type: 'module' })
     worker.addEventListener('message', ({ data }: MessageEvent<SpectrumReport>) => {
@@ -34,7 +38,7 @@ export function useSpectrum(runSheetId: MaybeRefOrGetter<string>) {
         return
       }
       if ('spectrum' in data)
-        worked.value = { spectrum: data.spectrum, names, seconds: (performance.now() - begun) / 1000 }
+        worked.value = { spectrum: data.spectrum, names, held, isOfChains, seconds: (performance.now() - begun) / 1000 }
       else failure.value = data.failure
       stop()
     })
@@ -48,14 +52,14 @@ export function useSpectrum(runSheetId: MaybeRefOrGetter<string>) {
     worker.postMessage({ model, table: plain, options: OPTIONS } satisfies SpectrumRequest)
   }
 
-  /** @param variables whose chains are meant; null for the logical problem */
-  async function start(variables: string[] | null, table: EnergyTable): Promise<void> {
+  /** @param query which chains are meant, and what becomes of the others; `variables` null for the logical problem */
+  async function start(query: SpinsQuery, table: EnergyTable): Promise<void> {
     stop()
     worked.value = null
     failure.value = null
     share.value = 0
-    const outcome = await api.post<SpinsView>(`/api/run-sheets/${toValue(runSheetId)}/spins`, { variables })
-    if (outcome.ok) return work(outcome.value, table)
+    const outcome = await api.post<SpinsView>(`/api/run-sheets/${toValue(runSheetId)}/spins`, query)
+    if (outcome.ok) return work(outcome.value, query.variables !== null, table)
     failure.value = outcome.failure.message
     share.value = null
   }

@@ -1,11 +1,11 @@
 import { gaugesOutsideRanges } from '../../shared/engine/programming/gauges'
+import { chainsBelow } from '../../shared/engine/programming/strength-effects'
 import { scheduleIssues, straightSchedule } from '../../shared/engine/programming/schedule'
 import type { Programmed } from '../../shared/engine/programming/programme'
 import type { VersionStanding } from '../../shared/schemas/problem-versions'
 import type { BrokenView } from '../../shared/schemas/repairs'
 import type { CheckView, RunSheetSettings, RunSheetView } from '../../shared/schemas/run-sheets'
 import type { Bench, Programming } from './programming'
-import { chainsBelowBound } from './programming'
 
 const percent = (share: number): string => `${Math.round(share * 100)} %`
 
@@ -25,7 +25,7 @@ export function checksOf(
     embeddingCheck(bench, embedding.inForce, embedding.broken),
     ...versionCheck(ofVersion),
     annealCheck(bench, settings),
-    strengthCheck(bench, programming),
+    strengthCheck(programming),
     ...precisionCheck(precision),
   ]
 }
@@ -87,8 +87,8 @@ function annealCheck({ machine }: Bench, { annealMicroseconds, schedule }: RunSh
   }
 }
 
-function strengthCheck(bench: Bench, { strengths, bounds }: Programming): CheckView {
-  const below = chainsBelowBound(bench, strengths, bounds)
+function strengthCheck({ layout, strengths, bounds }: Programming): CheckView {
+  const below = chainsBelow(layout, strengths, bounds)
   return below > 0
     ? {
         verdict: 'caution',

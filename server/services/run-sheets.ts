@@ -2,12 +2,11 @@ import { randomUUID } from 'node:crypto'
 import type { z } from 'zod'
 import { machineTimeEstimate } from '../../shared/engine/programming/machine-time'
 import { durationOf } from '../../shared/engine/programming/schedule'
-import { pullsOf, referenceSize } from '../../shared/engine/programming/strength'
+import { referenceSize } from '../../shared/engine/programming/strength'
 import { DomainError } from '../../shared/errors'
 import type { Page, PageQuery } from '../../shared/schemas/common'
 import type { DeletionView } from '../../shared/schemas/deletions'
 import type {
-  ChainRow,
   createRunSheetSchema,
   EditRunSheet,
   MachineTimePart,
@@ -36,21 +35,12 @@ import { embeddingRow } from './embedding-subject'
 import type { CalibratedMachine } from './machine-graphs'
 import { machineRow } from './machine-graphs'
 import { standingOf } from './problem-difference'
-import type { Bench, Programming } from './programming'
+import type { Bench } from './programming'
 import { rehearsalChoices } from './rehearsal-settings'
 import { checksOf } from './run-sheet-checks'
-import {
-  compareRules,
-  fingerprintOf,
-  isingSizes,
-  loadBench,
-  precisionOf,
-  programmeBench,
-  programmeShown,
-  requireProgrammed,
-  scaleLimitOf,
-} from './programming'
-import { couplerCountsOf } from './chain-couplers'
+import { fingerprintOf, loadBench, programmeBench, programmeShown, requireProgrammed } from './programming'
+import { precisionOf } from './precision'
+import { compareRules, isingSizes, scaleLimitOf } from './strength-rules'
 
 /** A run sheet of the workspace. @throws DomainError not found, also for another workspace's */
 export async function runSheetRow(app: App, actor: Actor, id: string): Promise<RunSheetRow> {
@@ -202,8 +192,8 @@ export async function runSheetView(app: App, actor: Actor, id: string): Promise<
     },
     maxAbsJ: referenceSize(bench.ising),
     ising: isingSizes(bench),
-    rules: compareRules(bench, row.settings, programming.bounds),
-    chains: chainRows(bench, programming),
+    rules: compareRules(bench, row.settings, programming),
+    chainTotals: chainTotals(bench),
     scale: programmed.scale,
     limitedBy: programmed.limitedBy,
     scaleLimit: scaleLimitOf(bench, programmed),
@@ -226,23 +216,10 @@ export async function runSheetView(app: App, actor: Actor, id: string): Promise<
   }
 }
 
-const qubitsIn = ({ embedding: { offsets } }: Bench, i: number): number => offsets[i + 1]! - offsets[i]!
-
-function chainRows(bench: Bench, { strengths, bounds }: Programming): ChainRow[] {
-  const couplers = couplerCountsOf(bench)
-  const pulls = pullsOf(bench.ising)
-  return bench.labels.map((label, i) => ({
-    variable: i,
-    label,
-    qubits: qubitsIn(bench, i),
-    couplers: couplers[i]!,
-    strength: strengths[i]!,
-    cutBound: bounds.bound[i]!,
-    cutBoundExact: bounds.exact[i] === 1,
-    cutSplit: qubitsIn(bench, i) > 1 ? bounds.splits[i]! : null,
-    pull: pulls[i]!,
-    field: bench.ising.linear[i]!,
-  }))
+function chainTotals({ embedding: { offsets, qubits } }: Bench): RunSheetView['chainTotals'] {
+  let longest = 0
+  for (let i = 0; i + 1 < offsets.length; i++) longest = Math.max(longest, offsets[i + 1]! - offsets[i]!)
+  return { qubits: qubits.length, longest }
 }
 
 function annealView({ machine: { sheet } }: Bench): RunSheetView['anneal'] {

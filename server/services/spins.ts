@@ -1,10 +1,10 @@
-import type { z } from 'zod'
 import { groupDigits } from '../../shared/engine/digits'
 import { MOST_SPINS } from '../../shared/engine/spectrum/spin-operator'
 import { clusterSpins, logicalSpins } from '../../shared/engine/spectrum/spins'
 import { DomainError } from '../../shared/errors'
-import type { spinsSchema, SpinsView } from '../../shared/schemas/spins'
+import type { SpinsQuery, SpinsView } from '../../shared/schemas/spins'
 import type { Actor, App } from '../app'
+import { bestKnownState } from './best-state'
 import { programmeBench, requireProgrammed } from './programming'
 import { benchOf, runSheetRow } from './run-sheets'
 
@@ -16,13 +16,14 @@ function requireFew(spins: number, what: string, remedy: string): void {
 
 /**
  * The spins of a run sheet's problem, or of chosen chains, with what is programmed on them.
- * @throws DomainError for unknown variables, and for more spins than the spectrum is worked out for
+ * @throws DomainError for unknown variables, for more spins than the spectrum is worked out for, and where other chains
+ *   are to be held and no state is known
  */
 export async function spinsOf(
   app: App,
   actor: Actor,
   runSheetId: string,
-  { variables }: z.infer<typeof spinsSchema>,
+  { variables, outside }: SpinsQuery,
 ): Promise<SpinsView> {
   const sheet = await runSheetRow(app, actor, runSheetId)
   const bench = await benchOf(app, actor, sheet)
@@ -31,7 +32,7 @@ export async function spinsOf(
   if (variables === null) {
     requireFew(ising.n, bench.problem.name, 'Choose some of its chains.')
     const { h, ends, J } = logicalSpins(ising, programmed.scale)
-    return { names: labels, h: [...h], ends: [...ends], J: [...J] }
+    return { names: labels, h: [...h], ends: [...ends], J: [...J], held: null }
   }
   const places = variables.map((label) => labels.indexOf(label))
   const unknown = variables.filter((_, k) => places[k]! < 0)
@@ -39,11 +40,12 @@ export async function spinsOf(
     throw new DomainError('not acceptable', 'spins.variable', `The problem has no variable ${unknown.join(', ')}.`, [
       { path: 'variables', message: 'unknown variable' },
     ])
-  const { model, positions } = clusterSpins(programmed, places)
+  const best = outside === 'held' ? await bestKnownState(app, actor, sheet.id, bench) : null
+  const { model, positions } = clusterSpins(programmed, places, best?.spins ?? null)
   requireFew(positions.length, 'These chains', 'Choose fewer or shorter ones.')
   const names = Array.from(positions, (p) => {
     const qubit = machine.fabric.ids[programmed.qubits[p]!]!
     return `${labels[programmed.chainOf[p]!]!} at qubit ${qubit}`
   })
-  return { names, h: [...model.h], ends: [...model.ends], J: [...model.J] }
+  return { names, h: [...model.h], ends: [...model.ends], J: [...model.J], held: best?.held ?? null }
 }

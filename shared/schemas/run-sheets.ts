@@ -4,7 +4,7 @@ import { PATH_DEFAULTS } from '../engine/sampling/path-limits'
 import type { EnergyTable } from '../engine/machine/energy-table'
 import type { ScheduleLimits } from '../engine/programming/schedule'
 import type { RUN_SHEET_STATES } from '../library'
-import type { HistogramBin, Person } from './common'
+import type { Person } from './common'
 import type { VersionStanding } from './problem-versions'
 import { courseIssues } from '../engine/programming/schedule'
 import type { BrokenView } from './repairs'
@@ -118,6 +118,13 @@ export interface ScaleLimitView {
   value: number
 }
 
+/** A coefficient of the Ising form, and the control error of its kind in programmed units. */
+export interface SmallestView {
+  kind: 'field' | 'coupling'
+  value: number
+  sigma: number
+}
+
 /** One strength rule worked out on this embedding, for comparing rules side by side. */
 export interface RuleView {
   rule: Strength['rule']
@@ -130,8 +137,10 @@ export interface RuleView {
   k: { min: number; max: number }
   scale: number
   scaleLimit: ScaleLimitView | null
-  /** Share of programmed couplings below 2σ_J; null when σ_J is zero. */
-  couplingsUnderTwoSigma: number | null
+  /** The smallest nonzero coefficient beside its σ; null where the machine states none for those there are. */
+  smallest: SmallestView | null
+  /** Nonzero coefficients with α·|c| under 2σ, of those whose kind has a control error; null where nothing fits. */
+  coefficients: { under: number; of: number } | null
   chainsBelowCutBound: number
   selected: boolean
 }
@@ -210,7 +219,8 @@ export interface RunSheetView extends RunSheetItem {
     leastShare: number
   }
   rules: RuleView[]
-  chains: ChainRow[]
+  /** The chains themselves are asked for on their own: there may be tens of thousands. */
+  chainTotals: { qubits: number; longest: number }
   scale: number
   limitedBy: string
   scaleLimit: ScaleLimitView | null
@@ -221,8 +231,9 @@ export interface RunSheetView extends RunSheetItem {
     couplingsUnderTwoSigma: number | null
     /** One standard deviation, in units of the problem. */
     energyNoise: number
-    fieldSizes: HistogramBin[]
-    couplingSizes: HistogramBin[]
+    /** Programmed fields that are not 0, and programmed couplings between chains. */
+    fields: number
+    couplings: number
   }
   /** What a schedule is held against, and the energies that it goes through. */
   anneal: {

@@ -3,7 +3,7 @@ import { packChains } from '../../shared/engine/embedding/embedding'
 import { graphFromEdges } from '../../shared/engine/graph/build'
 import { programme } from '../../shared/engine/programming/programme'
 import { chainStrengths, choiBounds, cutBounds } from '../../shared/engine/programming/strength'
-import { precisionReport } from '../../shared/engine/programming/precision'
+import { energyNoise } from '../../shared/engine/programming/precision'
 import { isingOf, must } from '../unit/engine/programming/instances'
 
 const usual = { fieldSplit: 'even', interactionCouplers: 'all', chainCouplers: 'all' } as const
@@ -83,9 +83,9 @@ describe('antiferromagnetic complete graphs on crossing wires', () => {
     const n = 6
     const ising = completeIsing(n, 1)
     const input = { ...crossingWires(n), ising, strengths: new Float64Array(n).fill(2), ranges, ...usual }
-    const report = precisionReport(must(programme(input).programmed), ising, { sigmaH: 0.03, sigmaJ: 0.02 })
+    const noise = energyNoise(must(programme(input).programmed), { sigmaH: 0.03, sigmaJ: 0.02 })
     // 36 qubits, 30 chain couplers, 15 interaction couplers, scale 1/2.
-    expect(report.energyNoise).toBeCloseTo(2 * Math.sqrt(36 * 0.0009 + 45 * 0.0004), 12)
-    expect(report.orderingNoise).toBeCloseTo(2 * Math.sqrt(36 * 0.0009 + 15 * 0.0004), 12)
+    expect(noise.absolute).toBeCloseTo(2 * Math.sqrt(36 * 0.0009 + 45 * 0.0004), 12)
+    expect(noise.ofOrder).toBeCloseTo(2 * Math.sqrt(36 * 0.0009 + 15 * 0.0004), 12)
   })
 })

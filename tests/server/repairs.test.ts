@@ -18,6 +18,9 @@ import { createEmbeddingSchema } from '../../shared/schemas/embeddings'
 import type { EmbeddingView } from '../../shared/schemas/embeddings'
 import { outboxQuerySchema } from '../../shared/schemas/mail'
 import { createRunSheetSchema } from '../../shared/schemas/run-sheets'
+import { unpackArrays } from '../../shared/packed-arrays'
+import { unpackChainRows } from '../../utils/run-sheet/chains'
+import { packedChains } from '../../server/services/run-sheet-chains'
 import type { TestApp } from '../support/app'
 import { startTestApp } from '../support/app'
 import { newMember } from '../support/people'
@@ -194,8 +197,9 @@ describe('run sheets on a broken embedding', () => {
     expect(await now(agreed)).toEqual({ ...there, state: 'in review', said: said('back in review') })
     expect(await now(issued)).toMatchObject({ embedding: embeddingId, state: 'issued', broken: 'repaired' })
     // The strength of single chains means the same chains as before, and the sheet can be agreed to again.
-    const { chains, settings } = await runSheetView(app, actor, agreed)
+    const { settings } = await runSheetView(app, actor, agreed)
     expect(settings.strength.perChain).toEqual({ c: 3 })
+    const chains = unpackChainRows(unpackArrays(await packedChains(app, actor, agreed)))
     expect(chains.map(({ strength }) => strength)).toEqual([2, 2, 3])
     expect(await hand(agreed, 'approve')).toEqual({ state: 'approved' })
   })

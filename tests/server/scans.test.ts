@@ -1,6 +1,7 @@
 import { afterAll, beforeAll, describe, expect, it } from 'vitest'
 import { JOB_KINDS } from '../../server/jobs/kinds'
 import { deleteFor, restore } from '../../server/services/deletions'
+import { importEmbedding } from '../../server/services/embedding-import'
 import { startEmbedding } from '../../server/services/embeddings'
 import { cancelJob, jobOf } from '../../server/services/jobs'
 import { handOver } from '../../server/services/review'
@@ -11,6 +12,9 @@ import { startRehearsal } from '../../server/services/rehearsals'
 import { returnView } from '../../server/services/return-view'
 import { createRunSheet, editRunSheet, runSheetRow, runSheetView } from '../../server/services/run-sheets'
 import { scansOf, scanView, startScan } from '../../server/services/scans'
+import { unpackArrays } from '../../shared/packed-arrays'
+import { unpackChainRows } from '../../utils/run-sheet/chains'
+import { packedChains } from '../../server/services/run-sheet-chains'
 import { createRandom } from '../../shared/engine/random'
 import { createEmbeddingSchema } from '../../shared/schemas/embeddings'
 import { startReferenceSchema } from '../../shared/schemas/reference'
@@ -165,22 +169,60 @@ describe('a scan over chain strengths', () => {
 describe('the spins of a spectrum', () => {
   it('are the variables times the scale, or the qubits of chains as programmed', async () => {
     const { sheetId } = await runSheet('min', { strength: { rule: 'manual', value: 5 } })
-    const { scale, chains } = await runSheetView(test.app, test.actor, sheetId)
-    const logical = await spinsOf(test.app, test.actor, sheetId, { variables: null })
+    const { scale } = await runSheetView(test.app, test.actor, sheetId)
+    const chains = unpackChainRows(unpackArrays(await packedChains(test.app, test.actor, sheetId)))
+    const logical = await spinsOf(test.app, test.actor, sheetId, { variables: null, outside: 'left out' })
     expect(logical.names).toHaveLength(12)
     expect(logical.J).toHaveLength(66)
     expect(Math.max(...logical.J.map(Math.abs))).toBeCloseTo(3 * scale, 12)
     const [first] = chains
-    const chain = await spinsOf(test.app, test.actor, sheetId, { variables: [first!.label] })
+    const chain = await spinsOf(test.app, test.actor, sheetId, { variables: [first!.label], outside: 'left out' })
     expect(chain.names).toHaveLength(first!.qubits)
     expect(chain.names[0]).toMatch(new RegExp(`^${first!.label} at qubit \\d+$`))
     for (const J of chain.J) expect(J).toBeCloseTo(-5 * scale, 12)
   })
 
+  it('of chains hold the others at the best state that is known, and say which', async () => {
+    const problemId = await test.problem('# form: ising\na b 1\nb c -2\nc a 1.5\nc d 1')
+    const machineId = await test.machine({ kind: 'chimera', m: 2, t: 4 })
+    const chains = { a: [0], b: [4], c: [1, 5], d: [6] }
+    const { id: embeddingId } = await importEmbedding(test.app, test.actor, {
+      problemId,
+      machineId,
+      chains,
+    })
+    const strength = { rule: 'manual', value: 3 }
+    const sheet = await createRunSheet(test.app, test.actor, createRunSheetSchema.parse({ embeddingId, strength }))
+    const held = { variables: ['c'], outside: 'held' } as const
+    await expect(spinsOf(test.app, test.actor, sheet.id, held)).rejects.toThrow(/No state of this problem is known/)
+
+    const rehearsal = await startRehearsal(test.app, test.actor, sheet.id, rehearseSchema.parse({ reads: 50 }))
+    await test.finished(rehearsal.jobId)
+    const sampled = await spinsOf(test.app, test.actor, sheet.id, held)
+    // b and c alike, a against both, d against c: −1 − 2 − 1.5 − 1.
+    expect(sampled.held).toEqual({ from: 'the best sample of rehearsal 1', energy: -5.5 })
+
+    const reference = await startReference(test.app, test.actor, problemId, startReferenceSchema.parse({}))
+    await test.finished(reference.jobId)
+    const known = await spinsOf(test.app, test.actor, sheet.id, held)
+    expect(known.held).toEqual({ from: 'the reference optimum, proved', energy: -5.5 })
+    const { scale } = await runSheetView(test.app, test.actor, sheet.id)
+    // With s_c the spin of c, its neighbours pull with 1.5 s_a − 2 s_b + s_d = −4.5 s_c in all.
+    const pull = Math.abs(known.h.reduce((sum, field) => sum + field, 0))
+    expect(pull).toBeCloseTo(4.5 * scale, 12)
+    const alone = await spinsOf(test.app, test.actor, sheet.id, { variables: ['c'], outside: 'left out' })
+    expect(alone.h).toEqual([0, 0])
+    expect(alone.held).toBeNull()
+  })
+
   it('are few, and of variables that exist', async () => {
     const { sheetId } = await runSheet()
     const all = Array.from({ length: 12 }, (_, i) => `v${i}`)
-    await expect(spinsOf(test.app, test.actor, sheetId, { variables: all })).rejects.toThrow(/at most 14/)
-    await expect(spinsOf(test.app, test.actor, sheetId, { variables: ['v1', 'w'] })).rejects.toThrow(/no variable w/)
+    await expect(spinsOf(test.app, test.actor, sheetId, { variables: all, outside: 'left out' })).rejects.toThrow(
+      /at most 14/,
+    )
+    await expect(
+      spinsOf(test.app, test.actor, sheetId, { variables: ['v1', 'w'], outside: 'left out' }),
+    ).rejects.toThrow(/no variable w/)
   })
 })

@@ -1,5 +1,5 @@
 import type { ReturnView } from '#shared/schemas/returns'
-import type { ProgrammedView, RunSheetView } from '#shared/schemas/run-sheets'
+import type { ChainRow, ProgrammedView, RunSheetView } from '#shared/schemas/run-sheets'
 import type { MachineSheet } from '#shared/schemas/machines'
 import type { BreakLayer, ChainLayer, LatticeData, LedgerRow, LoadLayer } from '../lattice/types'
 
@@ -14,6 +14,8 @@ export interface EmbeddingChains extends ChainLayer {
 /** What a run sheet on the embedding says about its chains. */
 export interface ChainFindings {
   readonly runSheet: RunSheetView
+  /** Strength and bound of each chain by that run sheet. */
+  readonly chains: readonly ChainRow[]
   /** The newest samples of that run sheet, if there are any. */
   readonly samples: ReturnView | null
   /** Null where the settings cannot be programmed. */
@@ -92,7 +94,7 @@ export function ledgerRows(
   chains: EmbeddingChains,
   findings: ChainFindings | null,
 ): LedgerRow[] {
-  const strengths = new Map(findings?.runSheet.chains.map((row) => [row.variable, row]))
+  const strengths = new Map(findings?.chains.map((row) => [row.variable, row]))
   const breaks = new Map(findings?.samples?.breaks?.chains.map((row) => [row.variable, row]))
   const canShowLoad = findings?.programmed && chains.ranges.couplingSum
   const loads = canShowLoad ? chainLoads(lattice, chains, findings.programmed!) : null

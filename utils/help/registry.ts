@@ -3,6 +3,7 @@ import type { Explanation, HelpEntry } from './entry'
 import { explainWith } from './entry'
 import { machineHelp } from './machine'
 import { optimumHelp } from './optimum'
+import { precisionHelp } from './precision'
 import { presolveHelp } from './presolve'
 import { problemHelp } from './problem'
 import { programmingHelp } from './programming'
@@ -19,6 +20,7 @@ const HELP = {
   ...machineHelp,
   ...embeddingHelp,
   ...programmingHelp,
+  ...precisionHelp,
   ...rehearsalHelp,
   ...samplesHelp,
 }

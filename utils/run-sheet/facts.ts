@@ -1,4 +1,4 @@
-import type { CheckView, RunSheetView } from '#shared/schemas/run-sheets'
+import type { ChainRow, CheckView, RunSheetView } from '#shared/schemas/run-sheets'
 import type { Fact } from '../ui/parts'
 import { formatNumber } from '../format'
 import { splitDuration } from '../formatTime'
@@ -16,8 +16,8 @@ export function checksText(checks: readonly CheckView[]): string {
   return words.join(', ')
 }
 
-/** The strip under the title of a run sheet. */
-export function runSheetFacts(sheet: RunSheetView): Fact[] {
+/** The strip under the title of a run sheet; `chains` as far as they are loaded. */
+export function runSheetFacts(sheet: RunSheetView, chains: readonly ChainRow[]): Fact[] {
   const { settings, checks } = sheet
   const chosen = sheet.rules.find(({ selected }) => selected)
   const time = splitDuration(sheet.machineTime.totalMilliseconds / 1000)
@@ -26,7 +26,7 @@ export function runSheetFacts(sheet: RunSheetView): Fact[] {
   return [
     { label: 'State', value: sheet.state, mark: sheet.state },
     { label: 'Machine', value: sheet.machine.name, note: `calibration ${sheet.calibration}` },
-    { label: 'Chain strength', value: chosen ? strengthText(chosen.k) : '–', ...chainStrengthHelp(sheet) },
+    { label: 'Chain strength', value: chosen ? strengthText(chosen.k) : '–', ...chainStrengthHelp(sheet, chains) },
     { label: 'Reads', value: formatNumber(settings.reads), note: gauges },
     { label: 'Anneal', value: formatNumber(settings.annealMicroseconds), unit: 'µs' },
     { label: 'Machine time', value: time.value, unit: `${time.unit}, estimate`, ...timeHelp(sheet) },

@@ -1,6 +1,7 @@
 import type { ChainRow, RuleView, RunSheetView } from '#shared/schemas/run-sheets'
 import type { HelpCase, HelpRequest } from '../help/registry'
 import { strengthText } from './strength'
+import { isBreakable } from './chains'
 import { splitDuration } from '../formatTime'
 
 /** How the numbers of a run sheet are computed: what each was reckoned from. */
@@ -12,17 +13,16 @@ export interface Help {
 }
 
 const BY_CHAIN = 'chain'
-const breakable = ({ chains }: Pick<RunSheetView, 'chains'>): ChainRow[] => chains.filter(({ qubits }) => qubits > 1)
 
-/** The strength by one rule; rules that give every chain its own are told chain by chain. */
-export function strengthHelp(sheet: RunSheetView, { rule, value, k }: RuleView): Help {
-  const { ising } = sheet
+/** The strength by one rule; rules that give every chain its own are told chain by chain, once the chains are there. */
+export function strengthHelp({ ising }: RunSheetView, { rule, value, k }: RuleView, chains: readonly ChainRow[]): Help {
   if (rule === 'manual') return { help: { id: 'strengthEntered', given: { text: strengthText(k) } } }
   if (value === null) return {}
   if (rule === 'fixed' || rule === 'rms') return { help: { id: 'strength', given: { rule, value, ising } } }
+  if (chains.length === 0) return {}
   return {
     cases: () =>
-      breakable(sheet).map((chain) => ({
+      chains.filter(isBreakable).map((chain) => ({
         label: chain.label,
         help: { id: 'strength', given: { rule, value, ising, chain } },
       })),
@@ -34,28 +34,39 @@ export const scaleHelp = ({ scaleLimit }: Pick<RuleView, 'scaleLimit'>): Help =>
   help: { id: 'scale', given: { limit: scaleLimit } },
 })
 
-const totalOf = (bins: readonly { count: number }[]): number => bins.reduce((sum, { count }) => sum + count, 0)
-
 /** The share of programmed values under 2σ; nothing where the machine states no control error. */
 export function sigmaHelp(
-  { sigmaH, sigmaJ, fieldSizes, couplingSizes }: RunSheetView['precision'],
+  { sigmaH, sigmaJ, fields, couplings }: RunSheetView['precision'],
   what: 'couplings' | 'fields',
   share: number | null,
 ): Help {
   if (share === null) return {}
-  const total = totalOf(what === 'fields' ? fieldSizes : couplingSizes)
+  const total = what === 'fields' ? fields : couplings
   const sigma = what === 'fields' ? sigmaH : sigmaJ
   return { help: { id: 'underTwoSigma', given: { what, sigma, total, under: Math.round(share * total) } } }
 }
 
-export const belowBoundHelp = ({ chains }: RunSheetView, { chainsBelowCutBound: below }: RuleView): Help => ({
-  help: { id: 'chainsBelowBound', given: { below, chains: chains.length } },
+export const belowBoundHelp = ({ ising }: RunSheetView, { chainsBelowCutBound: below }: RuleView): Help => ({
+  help: { id: 'chainsBelowBound', given: { below, chains: ising.variables } },
 })
 
-export function noiseHelp({ chains, precision, scale }: RunSheetView): Help {
-  const { sigmaH, sigmaJ, couplingSizes } = precision
-  const qubits = chains.reduce((sum, chain) => sum + chain.qubits, 0)
-  return { help: { id: 'energyNoise', given: { qubits, couplers: totalOf(couplingSizes), sigmaH, sigmaJ, scale } } }
+/** The smallest coefficient beside its σ, with the scale of a rule. */
+export const smallestHelp = ({ smallest, scale }: Pick<RuleView, 'smallest' | 'scale'>): Help =>
+  smallest ? { help: { id: 'coefficientOverSigma', given: { ...smallest, scale, smallest: true } } } : {}
+
+/** The share of coefficients under 2σ. */
+export function coefficientsHelp(
+  { sigmaH, sigmaJ }: RunSheetView['precision'],
+  { under, of }: { under: number; of: number },
+): Help {
+  return { help: { id: 'coefficientsUnder', given: { under, of, sigmaH, sigmaJ } } }
+}
+
+/** @param scale of the run sheet itself where it is left out */
+export function noiseHelp({ chainTotals, precision, scale: own }: RunSheetView, scale = own): Help {
+  const { sigmaH, sigmaJ, couplings } = precision
+  const { qubits } = chainTotals
+  return { help: { id: 'energyNoise', given: { qubits, couplers: couplings, sigmaH, sigmaJ, scale } } }
 }
 
 /** @param show the total, given in milliseconds */
@@ -78,9 +89,11 @@ export function timeHelp(sheet: RunSheetView): Help {
 }
 
 export const boundCases = (chains: readonly ChainRow[]): HelpCase[] =>
-  breakable({ chains: [...chains] }).flatMap(({ label, cutSplit, cutBoundExact: exact }) =>
-    cutSplit ? [{ label, help: { id: 'cutBound', given: { ...cutSplit, exact } } }] : [],
-  )
+  chains
+    .filter(isBreakable)
+    .flatMap(({ label, cutSplit, cutBoundExact: exact }) =>
+      cutSplit ? [{ label, help: { id: 'cutBound', given: { ...cutSplit, exact } } }] : [],
+    )
 
 export const ratioCases = (chains: readonly ChainRow[]): HelpCase[] =>
   chains.flatMap(({ label, strength, cutBound: bound, qubits }) =>
@@ -88,7 +101,7 @@ export const ratioCases = (chains: readonly ChainRow[]): HelpCase[] =>
   )
 
 /** The strength of every chain by the rule in force. */
-export function chainStrengthHelp(sheet: RunSheetView): Help {
+export function chainStrengthHelp(sheet: RunSheetView, chains: readonly ChainRow[]): Help {
   const chosen = sheet.rules.find(({ selected }) => selected)
-  return chosen ? strengthHelp(sheet, chosen) : {}
+  return chosen ? strengthHelp(sheet, chosen, chains) : {}
 }

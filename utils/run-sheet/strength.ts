@@ -1,5 +1,5 @@
-import type { Strength } from '#shared/schemas/run-sheets'
-import { formatSignificant } from '../format'
+import type { RuleView, Strength } from '#shared/schemas/run-sheets'
+import { formatPercent, formatSignificant, NO_VALUE } from '../format'
 
 const DIGITS = 4
 /** Closer than this, two strengths are the same number on the page. */
@@ -32,6 +32,17 @@ export const STRENGTH_FIELDS: Record<Strength['rule'], { label: string; unit: st
   manual: {
     label: 'k of every chain',
     unit: 'in units of J',
-    hint: 'Chains named below keep a strength of their own.',
+    hint: 'Chains can have a strength of their own, in the table below.',
   },
 }
+
+/** The smallest scaled coefficient over its σ, and which kind it is: `h, 1.2`. */
+export function smallestText({ smallest, scale }: Pick<RuleView, 'smallest' | 'scale'>): string {
+  if (!smallest) return NO_VALUE
+  const { kind, value, sigma } = smallest
+  return `${kind === 'field' ? 'h' : 'J'}, ${formatSignificant((scale * Math.abs(value)) / sigma)}`
+}
+
+/** A share of coefficients: `4.2 %`; nothing where there are none to count. */
+export const shareText = (counted: { under: number; of: number } | null): string =>
+  counted && counted.of > 0 ? formatPercent(counted.under / counted.of, { significant: 2 }) : NO_VALUE

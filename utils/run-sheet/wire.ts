@@ -14,7 +14,7 @@ export function runSheetWire(sheet: RunSheetView): WireStage[] {
   return [
     {
       label: 'Problem',
-      note: `${formatNumber(sheet.chains.length)} variables`,
+      note: `${formatNumber(sheet.ising.variables)} variables`,
       state: 'done',
       to: `/problems/${sheet.problem.id}`,
     },

@@ -1,17 +1,21 @@
 import { layOut } from './layout'
 import type { Layout, LayoutInput } from './layout'
+import type { Problem } from '../problem/problem'
 import { excessesOf, fittingScale } from './ranges'
 import type { Excess, RangeName, Ranges, Values } from './ranges'
 
 export type { Excess, RangeName, Ranges } from './ranges'
 
-export interface ProgrammeInput extends LayoutInput {
+/** What is put on a problem that is laid out. */
+export interface LayoutProgramme {
   /** Chain strength k_i of every variable, in logical units; `perChain` of `chainStrengths`. */
   readonly strengths: Float64Array
   readonly ranges: Ranges
   /** `fit` (default): the greatest factor ≤ 1 that fits the ranges. A number is taken as it is, also above 1. */
   readonly scale?: 'fit' | number
 }
+
+export type ProgrammeInput = LayoutInput & LayoutProgramme
 
 /**
  * What the machine is given. A *position* is an index into `qubits`.
@@ -79,11 +83,15 @@ function requireStrengths(strengths: Float64Array, n: number): void {
  * @throws RangeError for an embedding that does not fit, negative strengths, a scale ≤ 0 or a range without 0
  */
 export function programme(input: ProgrammeInput): ProgrammeResult {
-  const { ising, strengths, ranges, scale: asked = 'fit' } = input
+  return programmeLayout(layOut(input), input.ising, input)
+}
+
+/** The same for a problem that is laid out already. */
+export function programmeLayout(layout: Layout, ising: Problem, given: LayoutProgramme): ProgrammeResult {
+  const { strengths, ranges, scale: asked = 'fit' } = given
   requireStrengths(strengths, ising.n)
   if (asked !== 'fit' && !(Number.isFinite(asked) && asked > 0))
     throw new RangeError(`the scale must be a positive number, not ${asked}`)
-  const layout = layOut(input)
   const logical = withChainCouplings(layout, strengths)
   const { scale, limitedBy } =
     asked === 'fit' ? fitted(logical, ranges) : { scale: asked, limitedBy: 'nothing' as const }

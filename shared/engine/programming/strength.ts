@@ -1,7 +1,7 @@
 import type { Problem } from '../problem/problem'
 import { cutBoundsOf } from './cut-bounds'
 import { layOut } from './layout'
-import type { LayoutInput } from './layout'
+import type { Layout, LayoutInput } from './layout'
 
 export { cutBounds } from './cut-bounds'
 export type { CutBounds } from './cut-bounds'
@@ -99,8 +99,11 @@ function manualStrengths(n: number, rule: Extract<StrengthRule, { rule: 'manual'
  *   does not fit problem and machine
  */
 export function chainStrengths(rule: StrengthRule, input: LayoutInput): ChainStrengths {
-  const { ising } = input
-  const layout = layOut(input)
+  return chainStrengthsOf(rule, layOut(input), input.ising)
+}
+
+/** The same for a problem that is laid out already. */
+export function chainStrengthsOf(rule: StrengthRule, layout: Layout, ising: Problem): ChainStrengths {
   const isChain = (i: number): boolean => layout.chainLength[i]! > 1
   const uniform = (k: number): Float64Array => new Float64Array(ising.n).fill(k)
   let inexactBounds = 0

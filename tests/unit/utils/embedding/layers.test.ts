@@ -67,7 +67,7 @@ describe('ledgerRows', () => {
   })
 
   it('takes the strength the samples were taken with, and the largest programmed values', () => {
-    const [a, b] = ledgerRows(lattice, chains, { runSheet, samples, programmed })
+    const [a, b] = ledgerRows(lattice, chains, { runSheet, chains: [], samples, programmed })
     expect(a).toMatchObject({ strength: 1.5, bound: 2.5, breaks: { rate: 0.05, count: 5, reads: 100 } })
     expect(a!.load).toMatchObject({ field: 0.5, coupling: -1.8 })
     expect(a!.load!.sum).toBeCloseTo(0.1, 6)

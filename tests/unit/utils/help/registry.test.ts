@@ -95,6 +95,15 @@ const EXAMPLES: readonly (readonly [HelpRequest, number | string])[] = [
   [{ id: 'scale', given: { limit: { range: 'J', limit: -2, value: -16 } } }, 0.125],
   [{ id: 'scale', given: { limit: null } }, 1],
   [{ id: 'underTwoSigma', given: { under: 3, total: 12, sigma: 0.02, what: 'fields' } }, 0.25],
+  [
+    {
+      id: 'coefficientOverSigma',
+      given: { kind: 'field', value: -3, sigma: 0.02, scale: 0.5, smallest: true },
+    },
+    75,
+  ],
+  [{ id: 'coefficientsUnder', given: { under: 3, of: 12, sigmaH: 0.02, sigmaJ: 0 } }, 0.25],
+  [{ id: 'scaleAtFactor', given: { factor: 1.5, text: '0.25' } }, '0.25'],
   [{ id: 'chainsBelowBound', given: { below: 3, chains: 12 } }, '3 of 12'],
   [{ id: 'energyNoise', given: { qubits: 9, couplers: 16, sigmaH: 1, sigmaJ: 1, scale: 0.5 } }, 10],
   [{ id: 'cutBound', given: { up: 9, down: 6, cut: 2, exact: true } }, 3],

@@ -12,24 +12,28 @@ import type { EmbeddingView } from '../../../../shared/schemas/embeddings'
 import type { MachineView } from '../../../../shared/schemas/machines'
 import type { ProblemView, StructureView } from '../../../../shared/schemas/problems'
 import type { ReturnView } from '../../../../shared/schemas/returns'
-import type { RunSheetSettings, RunSheetView } from '../../../../shared/schemas/run-sheets'
+import type { ChainRow, RunSheetSettings, RunSheetView } from '../../../../shared/schemas/run-sheets'
 import type { Bench } from '../../../../server/services/programming'
-import {
-  compareRules,
-  isingSizes,
-  layoutInput,
-  precisionOf,
-  programmeBench,
-  requireProgrammed,
-  scaleLimitOf,
-} from '../../../../server/services/programming'
+import { layoutInput, programmeBench, requireProgrammed } from '../../../../server/services/programming'
+import { precisionOf } from '../../../../server/services/precision'
+import { compareRules, isingSizes, scaleLimitOf } from '../../../../server/services/strength-rules'
 import { embeddingFacts } from '../../../../utils/embedding/facts'
 import { formatPercent, formatSignificant, THIN_SPACE } from '../../../../utils/format'
 import { explain } from '../../../../utils/help/registry'
 import { machineFacts } from '../../../../utils/machine/facts'
 import { problemFacts } from '../../../../utils/problem/reading'
 import { returnFacts } from '../../../../utils/returns/facts'
-import { boundCases, noiseHelp, scaleHelp, sigmaHelp, strengthHelp, timeHelp } from '../../../../utils/run-sheet/help'
+import {
+  boundCases,
+  coefficientsHelp,
+  noiseHelp,
+  scaleHelp,
+  sigmaHelp,
+  smallestHelp,
+  strengthHelp,
+  timeHelp,
+} from '../../../../utils/run-sheet/help'
+import { shareText, smallestText } from '../../../../utils/run-sheet/strength'
 import type { Fact } from '../../../../utils/ui/parts'
 import { randomInstance } from '../../engine/programming/instances'
 
@@ -150,14 +154,15 @@ function runSheetOf(seed: number, couplingSum: readonly [number, number] | null)
   const ranges = { h: [-2, 2], J: [-2, 1], couplingSum }
   const sheet = { ranges, controlError: { h: 0.03, J: 0.015 }, timing }
   const bench = { ...instance, labels, machine: { graph: instance.machine, sheet } } as unknown as Bench
-  const { bounds, strengths, result } = programmeBench(bench, settings)
-  const programmed = requireProgrammed({ bounds, strengths, result })
+  const programming = programmeBench(bench, settings)
+  const { bounds } = programming
+  const programmed = requireProgrammed(programming)
   const pulls = pullsOf(instance.ising)
   const { offsets } = instance.embedding
   const view = {
     settings,
     ising: isingSizes(bench),
-    rules: compareRules(bench, settings, bounds),
+    rules: compareRules(bench, settings, programming),
     scale: programmed.scale,
     scaleLimit: scaleLimitOf(bench, programmed),
     precision: precisionOf(bench, programmed),
@@ -175,18 +180,19 @@ function runSheetOf(seed: number, couplingSum: readonly [number, number] | null)
           },
         }).totalMicroseconds / 1000,
     },
-    chains: labels.map((label, i) => ({
-      variable: i,
-      label,
-      qubits: offsets[i + 1]! - offsets[i]!,
-      cutBound: bounds.bound[i]!,
-      cutBoundExact: bounds.exact[i] === 1,
-      cutSplit: offsets[i + 1]! - offsets[i]! > 1 ? bounds.splits[i]! : null,
-      pull: pulls[i]!,
-      field: instance.ising.linear[i]!,
-    })),
+    chainTotals: { qubits: instance.embedding.qubits.length },
   } as unknown as RunSheetView
-  return { view, bench }
+  const chains = labels.map((label, i) => ({
+    variable: i,
+    label,
+    qubits: offsets[i + 1]! - offsets[i]!,
+    cutBound: bounds.bound[i]!,
+    cutBoundExact: bounds.exact[i] === 1,
+    cutSplit: offsets[i + 1]! - offsets[i]! > 1 ? bounds.splits[i]! : null,
+    pull: pulls[i]!,
+    field: instance.ising.linear[i]!,
+  })) as unknown as ChainRow[]
+  return { view, bench, chains }
 }
 
 /** The values of the number asked about. */
@@ -194,10 +200,10 @@ const valueOf = (help: Parameters<typeof explain>[0]): number => explain(help).s
 
 describe('numbers of a run sheet', () => {
   it.each(SEEDS)('strengths, rule by rule and chain by chain (%d)', (seed) => {
-    const { view } = runSheetOf(seed, null)
+    const { view, chains } = runSheetOf(seed, null)
     expect(view.rules.map(({ rule }) => rule)).toEqual(['fixed', 'rms', 'choi', 'cut'])
     for (const rule of view.rules) {
-      const { help, cases } = strengthHelp(view, rule)
+      const { help, cases } = strengthHelp(view, rule, chains)
       const strengths = help ? [valueOf(help)] : cases!().map((item) => valueOf(item.help))
       expect(Math.min(...strengths)).toBeCloseTo(rule.k.min, 10)
       expect(Math.max(...strengths)).toBeCloseTo(rule.k.max, 10)
@@ -234,10 +240,32 @@ describe('numbers of a run sheet', () => {
     expect(explain(noiseHelp(view).help!).result).toBe(formatSignificant(energyNoise, 3))
   })
 
+  it.each(SEEDS)(
+    'the smallest coefficient over σ, and the share of coefficients under 2σ, rule by rule (%d)',
+    (seed) => {
+      const { view, bench } = runSheetOf(seed, null)
+      const { linear, values } = bench.ising
+      const { sigmaH, sigmaJ } = view.precision
+      for (const rule of view.rules) {
+        const ratios = [
+          ...Array.from(linear, (h) => (rule.scale * Math.abs(h)) / sigmaH),
+          ...Array.from(values, (J) => (rule.scale * Math.abs(J)) / sigmaJ),
+        ].filter((ratio) => ratio > 0)
+        expect(valueOf(smallestHelp(rule).help!)).toBeCloseTo(Math.min(...ratios), 10)
+        expect(smallestText(rule)).toMatch(new RegExp(`^[hJ], ${formatSignificant(Math.min(...ratios))}$`))
+        const under = ratios.filter((ratio) => ratio < 2).length
+        expect(rule.coefficients).toEqual({ under, of: ratios.length })
+        expect(explain(coefficientsHelp(view.precision, rule.coefficients!).help!).result).toBe(
+          shareText(rule.coefficients),
+        )
+      }
+    },
+  )
+
   it.each(SEEDS)('cut bounds, from the split that gives them (%d)', (seed) => {
-    const { view, bench } = runSheetOf(seed, null)
+    const { chains, bench } = runSheetOf(seed, null)
     const { bound } = cutBounds(layoutInput(bench, settings))
-    const explained = new Map(boundCases(view.chains).map(({ label, help }) => [label, valueOf(help)]))
+    const explained = new Map(boundCases(chains).map(({ label, help }) => [label, valueOf(help)]))
     expect(explained.size).toBe(6)
     for (const [label, value] of explained) expect(value).toBeCloseTo(bound[Number(label.slice(1))]!, 10)
   })
