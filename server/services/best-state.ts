@@ -5,7 +5,7 @@ import { bestReference } from '../database/repositories/reference-optima'
 import type { ReturnRow } from '../database/repositories/run-sheets'
 import { returnsOfRunSheets } from '../database/repositories/run-sheets'
 import type { Bench } from './programming'
-import { solutionsOf } from './return-view'
+import { solutionsOf } from './return-solutions'
 import { signed, signOf } from './sense'
 
 export interface KnownState {
@@ -47,7 +47,8 @@ export async function bestKnownState(app: App, actor: Actor, runSheetId: string,
       'spins.no-state',
       'No state of this problem is known yet. Rehearse the run sheet, or look for a reference optimum of the problem.',
     )
-  const [solution] = await solutionsOf(app, actor, sampled.row.id, 'majority', 1)
+  const asked = { decode: 'majority', limit: 1, feasibleOnly: false } as const
+  const [solution] = await solutionsOf(app, actor, sampled.row.id, asked)
   const spins = Int8Array.from(labels, (label) => (solution!.assignment[label] === 1 ? 1 : -1))
   const source = sampled.row.source === 'rehearsal' ? 'rehearsal' : 'return'
   return { spins, held: { from: `the best sample of ${source} ${sampled.row.number}`, energy: solution!.energy } }
