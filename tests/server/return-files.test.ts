@@ -30,7 +30,7 @@ const ROWS = [
   [-1, -1, -1, -1, -1, -1],
   [1, 1, -1, -1, 1, 1],
 ]
-const GAUGES = [1, 2, 3, 3]
+const GAUGES = [0, 1, 2, 2]
 
 let test: TestApp
 let sheetId: string
@@ -99,7 +99,7 @@ describe('returned samples', () => {
   it('have their gauges undone here where they stand as they were read', async () => {
     const { programmed } = await loaded((await upload('a.csv', text([QUBITS, ...ROWS]))).id)
     const read = ROWS.map((row, r) => {
-      const signs = drawGauge(programmed, 5, GAUGES[r]! - 1, 'chain')
+      const signs = drawGauge(programmed, 5, GAUGES[r]!, 'chain')
       return [...row.map((spin, p) => spin * signs[p]!), GAUGES[r]]
     })
     const table = text([[...QUBITS, 'gauge'], ...read])
@@ -125,10 +125,10 @@ describe('returned samples', () => {
       'a gauge that there is none of',
       [
         [...QUBITS, 'gauge'],
-        [...ROWS[0]!, 4],
+        [...ROWS[0]!, 3],
       ],
       {},
-      /gauge 4 .* has 3/,
+      /gauge 3 .* has gauges 0 to 2/,
     ],
     ['gauges to undo that nobody names', [QUBITS, ROWS[0]!], { gauges: 'as read' }, /do not say their gauge/],
     ['an order that does not fit', [ROWS[0]!], { qubitOrder: '0 1 2 3 4 9' }, /does not use: 9/],

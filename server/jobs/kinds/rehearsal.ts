@@ -142,6 +142,6 @@ async function rehearseShares(
       }),
     ),
   )
-  const gauges = parts.flatMap(({ rows }, k) => new Array<number>(rows).fill((shares[k]!.gauge?.number ?? 0) + 1))
+  const gauges = parts.flatMap(({ rows }, k) => new Array<number>(rows).fill(shares[k]!.gauge?.number ?? 0))
   return { ...joinSamples(parts), gauges: Uint32Array.from(gauges), energies: null }
 }

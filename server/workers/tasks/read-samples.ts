@@ -55,8 +55,8 @@ function gaugeFault({ gauges }: SampleRows, { count, areUndone }: ReadSamplesInp
     return !areUndone && count > 1
       ? 'the rows do not say their gauge, so it cannot be undone: add a column "gauge" with the numbers of the bundle'
       : null
-  const beyond = gauges.find((number) => number > count)
-  return beyond === undefined ? null : `gauge ${beyond} is named, but the run sheet has ${count}`
+  const beyond = gauges.find((number) => number >= count)
+  return beyond === undefined ? null : `gauge ${beyond} is named, but the run sheet has gauges 0 to ${count - 1}`
 }
 
 /** Reads returned samples, undoes their gauges where that is still to do, and holds their energies against the programme. */
@@ -66,7 +66,7 @@ export function readSamplesFile(input: ReadSamplesInput, control: Control<Readin
   if (!reading.rows) return { reading, agreement: null }
   const fault = gaugeFault(reading.rows, gauges)
   if (fault) return refused(reading, fault)
-  const signsOf = (number: number): Int8Array => drawGauge(programmed, gauges.seed, number - 1, 'chain')
+  const signsOf = (number: number): Int8Array => drawGauge(programmed, gauges.seed, number, 'chain')
   const isTurned = gauges.count > 1 && reading.rows.gauges !== null
   const rows = isTurned && !gauges.areUndone ? undoGauges(reading.rows, signsOf) : reading.rows
   const turn = isTurned ? { signsOf, isDone: !gauges.areUndone } : null

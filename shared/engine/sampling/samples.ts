@@ -12,7 +12,7 @@ export interface Samples {
 
 /** Samples with what else is known of each row. */
 export interface SampleRows extends Samples {
-  /** Number of the gauge that each row was read under, from 1; null where nobody said. */
+  /** Number of the gauge that each row was read under, from 0; null where nobody said. */
   readonly gauges: Uint32Array | null
   /** Energies that came with the rows, as they came; null where none did. */
   readonly energies: Float64Array | null

@@ -42,9 +42,9 @@ function extrasOf(
     return `count must be a whole number from 1, not "${tokens[countAt]}"`
   const energy = energyAt < 0 ? 0 : Number(tokens[energyAt] || Number.NaN)
   if (!Number.isFinite(energy)) return `energy must be a number, not "${tokens[energyAt]}"`
-  const gauge = gaugeAt < 0 ? 1 : Number(tokens[gaugeAt] || Number.NaN)
-  if (!(Number.isInteger(gauge) && gauge >= 1 && gauge <= SAMPLES_LIMITS.greatestCount))
-    return `gauge must be a whole number from 1, as in the bundle, not "${tokens[gaugeAt]}"`
+  const gauge = gaugeAt < 0 ? 0 : Number(tokens[gaugeAt] || Number.NaN)
+  if (!(Number.isInteger(gauge) && gauge >= 0 && gauge <= SAMPLES_LIMITS.greatestCount))
+    return `gauge must be a whole number from 0, as in the bundle, not "${tokens[gaugeAt]}"`
   return { count, energy, gauge }
 }
 
@@ -119,7 +119,7 @@ const isMarked = (bytes: Uint8Array): boolean => BYTE_ORDER_MARK.every((code, k)
 
 /**
  * Reads a table of samples: a header of qubit numbers in any order, with optional columns `count`, `energy` and `gauge`
- * (from 1, as in the bundle); then one row per read, or per distinct row with its count. Where an order of qubits is given
+ * (from 0, as in the bundle); then one row per read, or per distinct row with its count. Where an order of qubits is given
  * the header may be left out. Separators: comma, semicolon, tab or blanks, as in the first row; CRLF and a byte-order mark
  * are taken; empty lines and lines from `#` are skipped. Spins are all ±1 or all 0/1. Nothing is repaired: any unknown,
  * missing or repeated qubit, any row of another length, any value outside the set, or a mixture of both sets refuses the

@@ -3,7 +3,7 @@
  * also served at `/api/schemas/samples.json`. `kind`, `version` and `samples` are needed, all else may be left out:
  *
  *     { "kind": "espalier.samples", "version": 1, "qubits": [4, 7, 30], "samples": [[1, -1, 1], [-1, -1, 1]],
- *       "counts": [3, 1], "energies": [-2.5, -1], "gauges": [1, 2], "machineTimeSeconds": 0.125 }
+ *       "counts": [3, 1], "energies": [-2.5, -1], "gauges": [0, 1], "machineTimeSeconds": 0.125 }
  */
 import { collected } from '../../formats/chunks'
 import { ReadingFault } from '../../formats/format'
@@ -85,7 +85,7 @@ function listOf(
 
 const isCount = (value: number): boolean =>
   Number.isInteger(value) && value >= 1 && value <= SAMPLES_LIMITS.greatestCount
-const WHOLE = 'a whole number from 1'
+const isGauge = (value: number): boolean => value === 0 || isCount(value)
 
 function columnsOf(members: Members, columns: Columns): Columns {
   const { qubits } = members
@@ -131,13 +131,13 @@ export function readJson(chunks: Iterable<Uint8Array>, columns: Columns): RowsRe
   if (!Array.isArray(samples)) throw new ReadingFault('samples is not a list of rows')
   const own = columnsOf(members, columns)
   const { target, from } = orderedColumns(own)
-  const counts = listOf(members, 'counts', samples.length, isCount, WHOLE)
+  const counts = listOf(members, 'counts', samples.length, isCount, 'a whole number from 1')
   const energies = listOf(members, 'energies', samples.length, Number.isFinite, 'a finite number')
-  const gauges = listOf(members, 'gauges', samples.length, isCount, `${WHOLE}, as in the bundle,`)
+  const gauges = listOf(members, 'gauges', samples.length, isGauge, 'a whole number from 0, as in the bundle,')
   const sink = new RowSink(columns.qubitIds.length)
   samples.forEach((row: unknown, r) => {
     const { zero, minus } = rowOf(row, r, target, sink)
-    const extras = { count: counts?.[r] ?? 1, energy: energies?.[r] ?? 0, gauge: gauges?.[r] ?? 1 }
+    const extras = { count: counts?.[r] ?? 1, energy: energies?.[r] ?? 0, gauge: gauges?.[r] ?? 0 }
     sink.end(extras, zero, minus, `row ${r}`)
   })
   return {

@@ -56,7 +56,7 @@ function readByRows({ source, type, rows, columns: { target } }: Grid, sink: Row
       else if (value === -1) minus = true
       else throw fault(value, r, c)
     }
-    sink.end({ count: 1, energy: 0, gauge: 1 }, zero, minus, `row ${r}`)
+    sink.end({ count: 1, energy: 0, gauge: 0 }, zero, minus, `row ${r}`)
   }
 }
 
@@ -65,7 +65,7 @@ function readByColumns({ source, type, rows, columns: { target } }: Grid, sink: 
   const spinOf = spinReader(type)
   for (let r = 0; r < rows; r++) {
     sink.begin()
-    sink.end({ count: 1, energy: 0, gauge: 1 }, false, false, '')
+    sink.end({ count: 1, energy: 0, gauge: 0 }, false, false, '')
   }
   for (let c = 0; c < target.length; c++) {
     const bytes = source.take(rows * type.size)

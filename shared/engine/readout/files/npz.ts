@@ -52,15 +52,8 @@ function fillBeside(arrays: ReadonlyMap<Beside, NpyArray>, sink: RowSink): Sampl
   if (gauges) fill(sink.gauges, gauges, 'gauges', rows)
   const energies = arrays.get('energies')?.coefficients()
   if (energies) fill(sink.energies, energies, 'energies', rows)
-  const issues: SamplesIssue[] = []
-  for (const [name, list] of [
-    ['counts', counts],
-    ['gauges', gauges],
-  ] as const) {
-    const zero = list?.indexOf(0) ?? -1
-    if (zero >= 0) issues.push({ message: `${name}[${zero}] in the archive is 0: whole numbers from 1 are needed` })
-  }
-  return issues
+  const none = counts?.indexOf(0) ?? -1
+  return none < 0 ? [] : [{ message: `counts[${none}] in the archive is 0: whole numbers from 1 are needed` }]
 }
 
 /** @throws ReadingFault unless it is one number above zero */
@@ -75,7 +68,7 @@ function secondsOf(array: NpyArray | undefined): number | null {
 /**
  * Reads an archive of NumPy arrays (`numpy.savez`, compressed or not): `samples`, a row per read and a column per qubit;
  * and what is there of `qubits` (the number of each column), `counts`, `energies` and `gauges` (a value per row, gauges
- * from 1) and `machine_time_seconds` (one number). Other arrays are left alone.
+ * from 0) and `machine_time_seconds` (one number). Other arrays are left alone.
  * @throws ReadingFault when the bytes are no such archive
  */
 export function readNpz(chunks: Iterable<Uint8Array>, columns: Columns): RowsRead {

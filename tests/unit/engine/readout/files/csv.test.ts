@@ -63,12 +63,12 @@ describe('a table of samples', () => {
   })
 
   it('reads counts, energies and gauges, wherever their columns stand', () => {
-    const result = read('energy,4,count,7,30,Gauge\n-1.5,1,3,-1,1,1\n2e-1,-1, 1,-1,1,"2"\n')
+    const result = read('energy,4,count,7,30,Gauge\n-1.5,1,3,-1,1,0\n2e-1,-1, 1,-1,1,"2"\n')
     expect(result.issues).toEqual([])
     expect([...result.rows!.counts]).toEqual([3, 1])
     expect(result.hasCounts).toBe(true)
     expect([...result.rows!.energies!]).toEqual([-1.5, 0.2])
-    expect([...result.rows!.gauges!]).toEqual([1, 2])
+    expect([...result.rows!.gauges!]).toEqual([0, 2])
     const plain = read('4,7,30\n1,-1,1\n')
     expect([...plain.rows!.counts]).toEqual([1])
     expect(plain).toMatchObject({ hasCounts: false, columnsFrom: 'file', rejectedCount: 0 })
@@ -135,7 +135,7 @@ describe('a table of samples', () => {
     ['count,4,7,30\n,1,1,1\n', /count must/],
     ['energy,4,7,30\nlow,1,1,1\n', /energy must/],
     ['gauge,4,7,30\n-1,1,1,1\n', /gauge must/],
-    ['gauge,4,7,30\n0,1,1,1\n', /gauge must/],
+    ['gauge,4,7,30\n1.5,1,1,1\n', /gauge must/],
     [`energy,4,7,30\n${'1'.repeat(50)}x,1,1,1\n`, /energy must/],
   ])('refuses other columns that are no numbers (%#)', (text, message) => {
     expect(read(text).issues[0]).toMatchObject({ line: 2, message: expect.stringMatching(message) })

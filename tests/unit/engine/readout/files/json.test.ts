@@ -20,7 +20,7 @@ const read = (value: unknown) =>
 
 describe('a document of samples', () => {
   it('is read with all that stands beside the spins', () => {
-    const beside = { counts: [3, 1], energies: [-2.5, 1], gauges: [1, 2], machineTimeSeconds: 0.125 }
+    const beside = { counts: [3, 1], energies: [-2.5, 1], gauges: [0, 1], machineTimeSeconds: 0.125 }
     const reading = read({ ...document, ...beside })
     expect(reading).toMatchObject({ format: 'json', issues: [], hasCounts: true, columnsFrom: 'file' })
     expect(reading.machineTimeSeconds).toBe(0.125)
@@ -32,7 +32,7 @@ describe('a document of samples', () => {
     expect([[...rows.counts], [...rows.energies!], [...rows.gauges!]]).toEqual([
       [3, 1],
       [-2.5, 1],
-      [1, 2],
+      [0, 1],
     ])
   })
 
@@ -60,7 +60,7 @@ describe('a document of samples', () => {
     ['counts of another length', { ...document, counts: [1] }, /counts has 1 values for 2 rows/],
     ['a count of 0', { ...document, counts: [0, 1] }, /counts\[0\] is 0/],
     ['an energy that is none', { ...document, energies: [null, 1] }, /energies\[0\] is null/],
-    ['a gauge of 0', { ...document, gauges: [0, 1] }, /gauges\[0\] is 0/],
+    ['a gauge below 0', { ...document, gauges: [-1, 1] }, /gauges\[0\] is -1/],
     ['no time', { ...document, machineTimeSeconds: 0 }, /machineTimeSeconds is 0/],
   ])('is refused for %s', (_name, value, message) => {
     const { rows, issues } = read(value)
