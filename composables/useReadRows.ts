@@ -19,14 +19,15 @@ export function useReadRows(
     rows.value = null
   })
   const begin = async (): Promise<void> => {
-    const { programmed } = toValue(findings) ?? {}
     const id = returnId.value
-    if (!id || !programmed) return
+    if (!id) return
     if (!rows.value) {
       status.value = 'loading'
-      const text = await $fetch<string>(`/api/returns/${id}/samples`, { responseType: 'text' }).catch(() => '')
+      const packed = await $fetch<ArrayBuffer>(`/api/returns/${id}/samples?format=packed`, {
+        responseType: 'arrayBuffer',
+      }).catch(() => null)
       if (returnId.value !== id) return
-      rows.value = text ? readRows(text, Object.keys(programmed.h).map(Number), toValue(lattice)) : null
+      rows.value = packed ? readRows(new Uint8Array(packed), toValue(lattice)) : null
     }
     status.value = rows.value ? 'idle' : 'failed'
     if (rows.value) row.value = 0

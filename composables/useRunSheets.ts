@@ -1,5 +1,6 @@
 import type { Page } from '#shared/schemas/common'
 import type { Decoding, ReturnView } from '#shared/schemas/returns'
+import type { UploadWatch } from './useUploads'
 import type { EditRunSheet, Rehearse, RunSheetItem, RunSheetSettings, RunSheetView } from '#shared/schemas/run-sheets'
 
 export const useRunSheets = () => useResource<Page<RunSheetItem>>('/api/run-sheets?limit=200')
@@ -7,8 +8,20 @@ export const useRunSheets = () => useResource<Page<RunSheetItem>>('/api/run-shee
 export const useRunSheet = (id: MaybeRefOrGetter<string>) =>
   useResource<RunSheetView>(() => `/api/run-sheets/${toValue(id)}`)
 
-export const useReturn = (id: MaybeRefOrGetter<string>, decode: MaybeRefOrGetter<Decoding>) =>
-  useResource<ReturnView>(() => `/api/returns/${toValue(id)}?decode=${toValue(decode)}`)
+export const useReturn = (
+  id: MaybeRefOrGetter<string>,
+  decode: MaybeRefOrGetter<Decoding>,
+  feasible: MaybeRefOrGetter<boolean>,
+) =>
+  useResource<ReturnView>(() => `/api/returns/${toValue(id)}?decode=${toValue(decode)}&feasible=${toValue(feasible)}`)
+
+/** What is said about a file of samples beside its bytes. */
+export interface SamplesOptions {
+  format?: 'csv' | 'npy' | 'npz' | 'json'
+  gauges: 'undone' | 'as read'
+  qubitOrder?: string
+  machineTimeSeconds?: number
+}
 
 /** Preparing, changing, handing over, rehearsing and returning. */
 export function useRunSheetActions() {
@@ -21,11 +34,11 @@ export function useRunSheetActions() {
       api.post<{ state: string }>(`/api/run-sheets/${id}/${step}`, { remark }),
     rehearse: (id: string, input: Partial<Rehearse>) =>
       api.post<{ returnId: string; jobId: string }>(`/api/run-sheets/${id}/rehearsals`, input),
-    upload: (id: string, file: File, machineTimeSeconds: number | null = null) => {
+    upload: (id: string, file: File, options: SamplesOptions, watch?: UploadWatch) => {
       const body = new FormData()
-      if (machineTimeSeconds !== null) body.append('machineTimeSeconds', String(machineTimeSeconds))
+      for (const [name, value] of Object.entries(options)) if (value !== undefined) body.append(name, String(value))
       body.append('file', file, file.name)
-      return api.post<{ id: string; reads: number }>(`/api/run-sheets/${id}/returns`, body)
+      return sendForm<{ id: string; reads: number }>(`/api/run-sheets/${id}/returns`, body, watch)
     },
   }
 }

@@ -14,6 +14,7 @@ const SOURCES = [
     'components',
     'composables',
     'docs/problem.schema.json',
+    'docs/samples.schema.json',
     'layouts',
     'middleware',
     'modules',

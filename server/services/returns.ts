@@ -9,6 +9,7 @@ import type { ReturnRow } from '../database/repositories/run-sheets'
 import { findReturn, insertReturn, updateRunSheet } from '../database/repositories/run-sheets'
 import type { ReadSamplesOutput } from '../workers/tasks/read-samples'
 import { programmeBench, requireProgrammed } from './programming'
+import { qubitIdsOf } from './qubit-ids'
 import type { ReadingWatch } from './problem-upload'
 import { writeSummary } from './return-summary'
 import { benchOf, runSheetRow } from './run-sheets'
@@ -89,7 +90,7 @@ export async function uploadReturn(
     {
       path: file.path,
       format: options.format,
-      qubitIds: Array.from(programmed.qubits, (q) => bench.machine.fabric.ids[q]!),
+      qubitIds: qubitIdsOf(bench, programmed),
       order: options.qubitOrder ?? null,
       programmed,
       gauges: { count, seed, areUndone: options.gauges === 'undone' },

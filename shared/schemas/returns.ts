@@ -12,6 +12,7 @@ export const returnQuerySchema = z.object({
   /** List only the assignments that keep every confirmed constraint group. */
   feasible: flag,
 })
+export const samplesQuerySchema = z.object({ format: z.enum(['csv', 'packed']).default('csv') })
 export const solutionsQuerySchema = z.object({
   decode: decodeSchema.default('majority'),
   format: z.enum(['json', 'csv', 'npy']).default('json'),

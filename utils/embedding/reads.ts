@@ -1,4 +1,4 @@
-import { readSamplesCsv } from '#shared/engine/readout/samples-csv'
+import { unpackArrays } from '#shared/packed-arrays'
 import { spinOf } from '#shared/engine/sampling/samples'
 import type { Samples } from '#shared/engine/sampling/samples'
 import type { ChainLayer, LatticeData, ReadLayer } from '../lattice/types'
@@ -11,15 +11,21 @@ export interface ReadRows {
 }
 
 /**
- * Reads the CSV of returned samples for the lattice.
- * @param qubits published numbers of the programmed qubits, in any order
- * @returns null when the text does not hold exactly these qubits
+ * Reads packed samples (GET /api/returns/:id/samples?format=packed) for the lattice.
+ * @returns null when a qubit is not on it
  */
-export function readRows(text: string, qubits: readonly number[], lattice: Pick<LatticeData, 'ids'>): ReadRows | null {
-  const { samples } = readSamplesCsv(text, { qubitIds: qubits })
-  if (!samples) return null
+export function readRows(packed: Uint8Array, lattice: Pick<LatticeData, 'ids'>): ReadRows | null {
+  const { meta, arrays } = unpackArrays(packed)
   const index = new Map(Array.from(lattice.ids, (id, q) => [id, q]))
-  return { samples, columns: Uint32Array.from(qubits, (id) => index.get(id)!) }
+  const columns = Array.from(arrays.qubits!, (id) => index.get(id) ?? -1)
+  if (columns.includes(-1)) return null
+  const samples: Samples = {
+    width: columns.length,
+    rows: meta.rows as number,
+    bytes: arrays.bytes as Uint8Array,
+    counts: arrays.counts as Uint32Array,
+  }
+  return { samples, columns: Uint32Array.from(columns) }
 }
 
 /** The spins of one row by qubit, 0 where the qubit is not used. */

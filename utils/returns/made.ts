@@ -86,15 +86,43 @@ function rehearsalRows(samples: ReturnView): MadeRow[] {
   ]
 }
 
+const FORMATS: Record<string, string> = {
+  csv: 'table',
+  npy: 'NumPy array',
+  npz: 'NumPy archive',
+  json: 'JSON document',
+}
+const COLUMNS: Record<string, string> = {
+  file: 'as the file names them',
+  given: 'in the order given with the file',
+  bundle: 'in the order of the bundle, ascending',
+}
+
+/** What was understood of a file; nothing of files from before this was kept. */
+function readingRows({ format, container, columns, gauges, gaugesKnown }: ReturnView['made']): MadeRow[] {
+  if (typeof format !== 'string') return []
+  const packed = container === 'gzip' ? ', gzip' : ''
+  return [
+    { label: 'Format', value: `${FORMATS[format]}${packed}` },
+    { label: 'Qubits', value: COLUMNS[String(columns)] ?? '–' },
+    {
+      label: 'Gauges',
+      value: gauges === 'as read' ? 'undone here' : 'undone before',
+      note: gaugesKnown ? 'the rows say theirs' : 'the rows do not say theirs',
+    },
+  ]
+}
+
 function uploadRows({ made }: ReturnView): MadeRow[] {
   return [
     { label: 'File', value: String(made.file ?? '–') },
     { label: 'SHA-256', value: String(made.sha256 ?? '–') },
     { label: 'Values', value: String(made.values ?? '–'), note: 'as written in the file' },
+    ...readingRows(made),
     {
       label: 'Machine time',
       value: typeof made.machineTimeSeconds === 'number' ? formatDuration(made.machineTimeSeconds) : 'not told',
-      note: 'as entered with the file',
+      note: 'of all reads, as entered with the file or in it',
     },
   ]
 }

@@ -42,7 +42,7 @@ test('what a format cannot hold is a refusal with the reason', () => {
 })
 
 test('samples are written with the numbers of their qubits', () => {
-  const samples = packRows(2, [1, -1, -1, -1])
+  const samples = { ...packRows(2, [1, -1, -1, -1]), gauges: null, energies: null }
   const { bytes } = writeSamplesFile({ samples, qubitIds: [4, 9] }, control)
   expect(new TextDecoder().decode(bytes)).toBe('4,9,count\n1,-1,1\n-1,-1,1\n')
 })
