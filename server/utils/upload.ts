@@ -67,7 +67,7 @@ async function receive(
     const fail = (error: DomainError): void => {
       request.unpipe(parser)
       request.resume()
-      open?.destroy(error)
+      open?.destroy()
       reject(error)
     }
     // A sender that goes away ends the request without an end of the form.
