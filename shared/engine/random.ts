@@ -25,7 +25,8 @@ function splitmix(seed: number): () => number {
 /**
  * First streams of the uses of one seed, so far apart that no two uses ever draw the same numbers: the reads of a run, the
  * groups of sixteen that reads are drawn in, the
- * order in which spins are visited, its gauges, its control error, and the coins that settle ties.
+ * order in which spins are visited, its gauges, its control error, the coins that settle ties, and the
+ * lot that leaves rows out.
  */
 export const STREAMS = {
   reads: 0,
@@ -34,6 +35,7 @@ export const STREAMS = {
   gauges: 2 ** 28,
   controlError: 2 ** 29,
   coins: 2 ** 30,
+  rows: 2 ** 31,
 } as const
 
 const rotateLeft = (x: number, k: number): number => (x << k) | (x >>> (32 - k))

@@ -1,3 +1,4 @@
+import { createRandom, STREAMS } from '../random'
 import type { SamplerModel } from '../sampling/physical-model'
 import { spinOf } from '../sampling/samples'
 import type { Samples } from '../sampling/samples'
@@ -10,9 +11,21 @@ export interface EffectiveTemperature {
   readonly standardError: number | null
   /** 1 / inverseTemperature. */
   readonly temperature: number
+  /** Rows it was worked out from: all that were given, or as many as were drawn of them. */
+  readonly rows: number
 }
 
-const DEFAULTS = { iterations: 100, precision: 1e-10 }
+export interface TemperatureOptions {
+  /** Numbers of the rows to look at; all where left out. */
+  readonly rows?: Uint32Array
+  /** Spins that are looked at, at most: rows beyond that are left out by lot. At least one row is kept. */
+  readonly mostSpins?: number
+  /** Of the lot. */
+  readonly seed?: number
+}
+
+/** `mostSpins`: 16 MB of local fields; the standard error is far under a percent long before. */
+export const TEMPERATURE_DEFAULTS = { iterations: 100, precision: 1e-10, mostSpins: 2_000_000, seed: 1 }
 
 /** Derivatives of the log pseudo-likelihood and the sum of squared row scores, at one β. */
 interface Slopes {
@@ -21,16 +34,31 @@ interface Slopes {
   readonly squaredRowScores: number
 }
 
-/** alignments[r·n + i] = 2·s_i·f_i: log P(s_i | rest) = −ln(1 + e^{β·alignment}). */
-function alignmentsOf(model: SamplerModel, samples: Samples): Float64Array {
+/** The rows to look at, ascending; without replacement where they are too many (Fisher & Yates, in part). */
+function drawnRows(width: number, all: Uint32Array, most: number, seed: number): Uint32Array {
+  const room = Math.max(1, Math.floor(most / Math.max(1, width)))
+  if (all.length <= room) return all
+  const random = createRandom(seed, STREAMS.rows)
+  const order = all.slice()
+  for (let k = 0; k < room; k++) {
+    const other = k + random.below(order.length - k)
+    const row = order[other]!
+    order[other] = order[k]!
+    order[k] = row
+  }
+  return order.slice(0, room).sort()
+}
+
+/** alignments[k·n + i] = 2·s_i·f_i in row rows[k]: log P(s_i | rest) = −ln(1 + e^{β·alignment}). */
+function alignmentsOf(model: SamplerModel, samples: Samples, rows: Uint32Array): Float64Array {
   const spins = new Int8Array(model.n)
   const fields = new Float64Array(model.n)
-  const alignments = new Float64Array(samples.rows * model.n)
-  for (let r = 0; r < samples.rows; r++) {
-    for (let i = 0; i < model.n; i++) spins[i] = spinOf(samples, r, i)
+  const alignments = new Float64Array(rows.length * model.n)
+  rows.forEach((row, k) => {
+    for (let i = 0; i < model.n; i++) spins[i] = spinOf(samples, row, i)
     writeLocalFields(model, spins, fields)
-    for (let i = 0; i < model.n; i++) alignments[r * model.n + i] = 2 * spins[i]! * fields[i]!
-  }
+    for (let i = 0; i < model.n; i++) alignments[k * model.n + i] = 2 * spins[i]! * fields[i]!
+  })
   return alignments
 }
 
@@ -59,13 +87,13 @@ function maximise(slopes: (beta: number) => Slopes): number {
   while (slopes(high).first > 0) high *= 2
   while (slopes(low).first < 0) low *= 2
   let beta = (low + high) / 2
-  for (let k = 0; k < DEFAULTS.iterations; k++) {
+  for (let k = 0; k < TEMPERATURE_DEFAULTS.iterations; k++) {
     const { first, second } = slopes(beta)
     if (first > 0) low = beta
     else high = beta
     const newton = beta - first / second
     const next = newton > low && newton < high ? newton : (low + high) / 2
-    if (Math.abs(next - beta) <= DEFAULTS.precision * Math.max(1, Math.abs(beta))) return next
+    if (Math.abs(next - beta) <= TEMPERATURE_DEFAULTS.precision * Math.max(1, Math.abs(beta))) return next
     beta = next
   }
   return beta
@@ -75,24 +103,34 @@ function maximise(slopes: (beta: number) => Slopes): number {
  * Effective inverse temperature of samples by maximum pseudo-likelihood (Besag, Statistical analysis of non-lattice data,
  * The Statistician 24:179, 1975): β that maximises Σ ln P(s_i | all other spins) under a Boltzmann distribution of the
  * model. The standard error is the sandwich estimate over reads. One parameter cannot tell whether the samples are
- * thermal at all: it is a summary, not a thermometer.
+ * thermal at all: it is a summary, not a thermometer. Memory and time are bounded by `mostSpins`, whatever the samples.
  * @returns null when there is nothing to learn from: no reads, or no field and no coupling anywhere
  * @throws RangeError for samples of another width
  */
-export function effectiveTemperature(model: SamplerModel, samples: Samples): EffectiveTemperature | null {
+export function effectiveTemperature(
+  model: SamplerModel,
+  samples: Samples,
+  options: TemperatureOptions = {},
+): EffectiveTemperature | null {
   if (samples.width !== model.n) throw new RangeError(`samples of ${samples.width} spins for a model of ${model.n}`)
-  const alignments = alignmentsOf(model, samples)
+  const { mostSpins, seed } = { ...TEMPERATURE_DEFAULTS, ...options }
+  const all = options.rows ?? Uint32Array.from({ length: samples.rows }, (_, r) => r)
+  const drawn = drawnRows(model.n, all, mostSpins, seed)
+  const rows = drawn.length
+  const alignments = alignmentsOf(model, samples, drawn)
   const against = alignments.some((x) => x > 0)
   const along = alignments.some((x) => x < 0)
   if (!against && !along) return null
-  if (!against) return { inverseTemperature: Infinity, standardError: null, temperature: 0 }
-  if (!along) return { inverseTemperature: -Infinity, standardError: null, temperature: 0 }
-  const slopes = (beta: number): Slopes => slopesAt(beta, alignments, model.n, samples.counts)
+  if (!against) return { inverseTemperature: Infinity, standardError: null, temperature: 0, rows }
+  if (!along) return { inverseTemperature: -Infinity, standardError: null, temperature: 0, rows }
+  const counts = Uint32Array.from(drawn, (row) => samples.counts[row]!)
+  const slopes = (beta: number): Slopes => slopesAt(beta, alignments, model.n, counts)
   const inverseTemperature = maximise(slopes)
   const { second, squaredRowScores } = slopes(inverseTemperature)
   return {
     inverseTemperature,
     standardError: Math.sqrt(squaredRowScores) / Math.abs(second),
     temperature: 1 / inverseTemperature,
+    rows,
   }
 }

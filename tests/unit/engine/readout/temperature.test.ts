@@ -68,6 +68,26 @@ describe('effectiveTemperature', () => {
     expect(twice.standardError).toBeCloseTo(repeated.standardError!, 8)
   })
 
+  it('leaves rows out by lot where they are too many, the same ones for a seed', () => {
+    const samples = packRows(6, drawExactly(1, 2000).flat())
+    const options = { mostSpins: 6 * 500, seed: 4 }
+    const drawn = effectiveTemperature(model, samples, options)!
+    expect(drawn.rows).toBe(500)
+    expect(effectiveTemperature(model, samples, options)).toEqual(drawn)
+    expect(effectiveTemperature(model, samples, { ...options, seed: 5 })).not.toEqual(drawn)
+    expect(Math.abs(drawn.inverseTemperature - 1)).toBeLessThan(4 * drawn.standardError!)
+    const all = effectiveTemperature(model, samples)!
+    expect(all.rows).toBe(2000)
+    expect(drawn.standardError! / all.standardError!).toBeCloseTo(2, 0)
+  })
+
+  it('looks at the rows it is given only', () => {
+    const rows = [...drawExactly(2, 300), ...drawExactly(0.3, 300)]
+    const half = effectiveTemperature(model, packRows(6, rows.slice(300).flat()))
+    const chosen = Uint32Array.from({ length: 300 }, (_, k) => 300 + k)
+    expect(effectiveTemperature(model, packRows(6, rows.flat()), { rows: chosen })).toEqual(half)
+  })
+
   it('says when there is nothing to learn', () => {
     expect(effectiveTemperature(model, packRows(6, []))).toBeNull()
     const free = samplerModel({ h: new Float64Array(2), ends: new Uint32Array(0), J: new Float64Array(0) })
