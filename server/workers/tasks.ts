@@ -1,5 +1,6 @@
 import type { Control } from '../../shared/engine/control'
 import { advise } from './tasks/advise'
+import { analyse } from './tasks/analyse'
 import { annealPart } from './tasks/anneal-part'
 import { checkEmbedding } from './tasks/check-embedding'
 import { compareProblems } from './tasks/compare-problems'
@@ -35,6 +36,7 @@ import { writeSamplesFile } from './tasks/write-samples'
 /** Everything a worker thread can do: structured-cloneable input, control, structured-cloneable output. */
 export const TASKS = {
   advise,
+  analyse,
   annealPart,
   checkEmbedding,
   compareProblems,

@@ -27,7 +27,8 @@ export interface GroupEvidence {
 /** Everything that rules look at. Null or empty where there is nothing to say: a rule without its evidence is silent. */
 export interface Evidence {
   readonly reads: number
-  readonly readsWithBreak: number
+  /** Reads that the decoding keeps. */
+  readonly readsDecoded: number
   readonly chains: readonly ChainEvidence[]
   readonly scale: {
     readonly value: number

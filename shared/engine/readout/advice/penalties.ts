@@ -15,7 +15,7 @@ const weightFigures = ({ name, weight, sufficient }: GroupEvidence): AdviceFigur
       ]
 
 /** Penalties that the best answer gains by breaking. One that is proved strong enough is not to blame. */
-export function weakPenalties({ groups, reads }: Evidence): AdviceItem[] {
+export function weakPenalties({ groups, readsDecoded }: Evidence): AdviceItem[] {
   const weak = groups.filter(
     ({ isBrokenInBest, weight, sufficient }) =>
       isBrokenInBest && !(weight !== null && sufficient !== null && weight > sufficient),
@@ -30,7 +30,7 @@ export function weakPenalties({ groups, reads }: Evidence): AdviceItem[] {
       evidence: weak
         .slice(0, MOST_SHOWN)
         .flatMap((group) => [
-          shareFigure(`reads that break ${group.name}`, group.violations, reads),
+          shareFigure(`reads that break ${group.name}`, group.violations, readsDecoded),
           ...weightFigures(group),
         ]),
     },
@@ -38,7 +38,7 @@ export function weakPenalties({ groups, reads }: Evidence): AdviceItem[] {
 }
 
 /** Penalties far above what is enough that take the range from the rest, while no read breaks a group. */
-export function strongPenalties({ groups, largest, reads, precision }: Evidence): AdviceItem[] {
+export function strongPenalties({ groups, largest, readsDecoded, precision }: Evidence): AdviceItem[] {
   const { withinGroups, elsewhere } = largest
   const isDominating = elsewhere > 0 && withinGroups > TOO_STRONG.overRest * elsewhere
   if (!isDominating || !precision.isKnown || groups.some(({ violations }) => violations > 0)) return []
@@ -54,7 +54,7 @@ export function strongPenalties({ groups, largest, reads, precision }: Evidence)
       action: { look: 'groups', groups: strong.map(({ name }) => name) },
       sentence: `Lower the ${strong.length === 1 ? 'penalty' : 'penalties'} of ${namesOf(strong.map(({ name }) => name))} in the problem. No read breaks a group, and the penalties take the range that the objective needs.`,
       evidence: [
-        shareFigure('reads that break a group', 0, reads),
+        shareFigure('reads that break a group', 0, readsDecoded),
         { name: 'largest coefficient within a group', value: withinGroups, unit: 'energy' },
         { name: 'largest coefficient elsewhere', value: elsewhere, unit: 'energy' },
         ...strong.slice(0, MOST_SHOWN).flatMap(weightFigures),

@@ -17,7 +17,7 @@ export const chainsWith = (changes: Record<number, Partial<ChainEvidence>>): Cha
 /** A return that nothing is to be advised on. */
 export const quiet: Evidence = {
   reads: 1000,
-  readsWithBreak: 40,
+  readsDecoded: 1000,
   chains,
   scale: { value: 0.5, greatest: 0.5, isLimitedByChains: true, isChosen: false },
   precision: {
