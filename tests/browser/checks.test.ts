@@ -2,7 +2,8 @@ import type { Browser, Page } from 'playwright-core'
 import { afterAll, beforeAll, describe, expect, it } from 'vitest'
 import { launch, watchPage } from '../support/browser'
 import { NARROW, naming, sideways, violations } from '../support/pages/checks'
-import { themesOf, wear } from '../support/pages/themes'
+import { colourProblems } from '../support/pages/looks'
+import { themesOf } from '../support/pages/themes'
 
 /* The checks of pages.test.ts on pages with known faults: each must be found, and nothing else. */
 
@@ -49,14 +50,30 @@ describe('violations', () => {
     expect(ids(await violations(tab))).toEqual(expected)
   })
 
+  /** Theme and rule of what the rules about colours find. */
+  const problemsIn = async (themes: string[], seen: Set<string> = new Set()) =>
+    (await colourProblems(tab, { themes, seen })).map(({ theme, problem }) => `${theme} ${ids([problem])[0]}`)
+
   it('in a theme that only its name brings out', async () => {
-    const style = `[data-theme='night'] p { color: #333; background: #222 }`
+    const style = `@media screen { :root[data-theme='night'] p { color: #333; background: #222 } }`
     await tab.setContent(page('<h1>Fine</h1><p>Unreadable by night.</p>', undefined, style))
     expect(await themesOf(tab)).toEqual(['light', 'dark', 'night'])
     expect(ids(await violations(tab))).toEqual([])
-    await wear(tab, 'night')
-    expect(ids(await violations(tab, 'colours'))).toEqual(['color-contrast'])
+    expect(await problemsIn(['light', 'night'])).toEqual(['night color-contrast'])
     expect(ids(await violations(tab, 'all but colours'))).toEqual([])
+  })
+
+  it('by colour once for all texts that are made alike', async () => {
+    const style = `td, td + td + td { color: #bbb } td + td { color: #222 } .dim { color: #ccc }`
+    const seen = new Set<string>()
+    await tab.setContent(
+      page('<h1>Fine</h1><table><tr><td>pale<td>dark<td>pale<tr><td>pale<td>dark</table>', undefined, style),
+    )
+    const found = await colourProblems(tab, { themes: ['light'], seen })
+    expect(found.map(({ problem }) => problem)).toEqual([expect.stringMatching(/^color-contrast: .*, 1×: .*td/)])
+    expect(await problemsIn(['light'], seen)).toEqual([])
+    await tab.setContent(page('<h1>Fine</h1><table><tr><td>pale<td class="dim">dim</table>', undefined, style))
+    expect(await problemsIn(['light'], seen)).toEqual(['light color-contrast'])
   })
 })
 

@@ -7,11 +7,10 @@ import { emptyFolder } from '../support/folders'
 import type { RunningServer } from '../support/server'
 import type { DeadLink, Shown } from '../support/pages/crawl'
 import { crawl, tellingViews } from '../support/pages/crawl'
-import type { Opened } from '../support/pages/popups'
 import { findRoutes } from '../support/pages/routes'
 import { prepareRunning, prepareStates } from '../support/pages/states'
 import type { Aspect, Finding } from '../support/pages/survey'
-import { summaryOf, survey } from '../support/pages/survey'
+import { nothingKnown, summaryOf, survey } from '../support/pages/survey'
 import { demoVisitors, exploreAs, startBare } from '../support/pages/worlds'
 
 /*
@@ -27,7 +26,7 @@ const servers: RunningServer[] = []
 const shown: Shown = new Map()
 const dead: DeadLink[] = []
 const findings: Finding[] = []
-const opened: Opened = new Set()
+const known = nothingKnown()
 
 beforeAll(async () => {
   browser = await launch()
@@ -48,7 +47,7 @@ async function lookAtDemo(): Promise<void> {
   await lookAs(visitors)
   const running = await prepareRunning(server.url)
   const { views } = await crawl(routes, visitors[0]!, running.paths, () => false)
-  findings.push(...(await survey(browser, tellingViews(views, shown), opened)))
+  findings.push(...(await survey(browser, tellingViews(views, shown), known)))
   await running.stop()
 }
 
@@ -61,7 +60,7 @@ async function lookAtBare({ server, stranger, setUp }: Awaited<ReturnType<typeof
 async function lookAs(visitors: Parameters<typeof exploreAs>[1]): Promise<void> {
   const found = await exploreAs(routes, visitors, shown)
   dead.push(...found.dead)
-  findings.push(...(await survey(browser, found.views, opened)))
+  findings.push(...(await survey(browser, found.views, known)))
 }
 
 describe.each(routes)('page $pattern', ({ pattern, file }) => {

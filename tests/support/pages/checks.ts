@@ -14,6 +14,8 @@ export const WIDE = { width: 1280, height: 900 }
 declare global {
   interface Window {
     axe: typeof axe
+    /** Visible texts, one of each look, and those of them to be checked: see looks.ts. */
+    chosenByLook: Map<string, Element>
     chosenTexts: Element[]
   }
 }
@@ -67,66 +69,31 @@ export async function openNarrowMenu(page: Page): Promise<void> {
 /** Rules about colours, the only ones that a theme can break. */
 const COLOUR_RULES = ['color-contrast', 'link-in-text-block']
 
-/** Violations on the page or in some of its parts, each with the first places that show it. */
-export async function violations(
-  page: Page,
-  about: 'all' | 'colours' | 'all but colours' = 'all',
-  within?: string,
-): Promise<string[]> {
+/** Runs axe-core; each violation with the first places that show it. */
+async function axeOn(page: Page, asked: axe.RunOptions, where: string | undefined, isChosen: boolean) {
   if (!(await page.evaluate(() => 'axe' in window))) await page.evaluate(AXE)
-  const without = Object.fromEntries(COLOUR_RULES.map((rule) => [rule, { enabled: about === 'all' }]))
-  const options: axe.RunOptions = {
-    resultTypes: ['violations'],
-    ...(about === 'colours'
-      ? { runOnly: { type: 'rule', values: COLOUR_RULES } }
-      : { runOnly: { type: 'tag', values: TAGS }, rules: without }),
-  }
-  if (about === 'colours') await chooseTexts(page, within)
   return page.evaluate(
-    async ({ asked, where, isChosen }) => {
-      const include = isChosen ? window.chosenTexts : where ? [where] : [document]
-      if (include.length === 0) return []
-      const { violations: found } = await window.axe.run({ include }, asked)
+    async ({ options, within, chosen }) => {
+      const include = chosen ? window.chosenTexts : within ? [within] : [document]
+      const { violations: found } = await window.axe.run({ include }, { ...options, resultTypes: ['violations'] })
       return found.map(({ id, help, nodes }) => {
         const places = nodes.slice(0, 3).map(({ target, any }) => `${target.join(' ')} (${any[0]?.message ?? ''})`)
         return `${id}: ${help}, ${nodes.length}×: ${places.join('; ')}`
       })
     },
-    { asked: options, where: within, isChosen: about === 'colours' },
+    { options: asked, within: where, chosen: isChosen },
   )
 }
 
-/**
- * Leaves on the window one of all texts that have the same colours: their own, and those of everything they stand on.
- * A table of a thousand rows is three or four of them.
- */
-async function chooseTexts(page: Page, within = 'body'): Promise<void> {
-  await page.evaluate((where) => {
-    const stacks = new Map<Element, string>()
-    const stackOf = (element: Element): string => {
-      const known = stacks.get(element)
-      if (known !== undefined) return known
-      const style = getComputedStyle(element)
-      const own = [style.color, style.backgroundColor, style.backgroundImage, style.opacity, style.position]
-      const beneath = element.parentElement ? stackOf(element.parentElement) : ''
-      // What paints nothing of its own changes nothing.
-      const stack = beneath.endsWith(own.join()) ? beneath : `${beneath} > ${own.join()}`
-      stacks.set(element, stack)
-      return stack
-    }
-    const chosen = new Map<string, Element>()
-    for (const element of document.querySelectorAll(`:is(${where}), :is(${where}) *`)) {
-      const hasText = [...element.childNodes].some(
-        (node) => node.nodeType === Node.TEXT_NODE && node.textContent?.trim(),
-      )
-      if (!hasText && !element.matches('input, textarea, select')) continue
-      const { fontSize, fontWeight, textDecorationLine } = getComputedStyle(element)
-      const looks = [element.tagName, fontSize, fontWeight, textDecorationLine, stackOf(element)].join()
-      if (!chosen.has(looks) && element.checkVisibility()) chosen.set(looks, element)
-    }
-    window.chosenTexts = [...chosen.values()]
-  }, within)
+/** Violations on the page or in some of its parts. */
+export async function violations(page: Page, about: 'all' | 'all but colours' = 'all', within?: string) {
+  const rules = Object.fromEntries(COLOUR_RULES.map((rule) => [rule, { enabled: about === 'all' }]))
+  return axeOn(page, { runOnly: { type: 'tag', values: TAGS }, rules }, within, false)
 }
+
+/** Violations of the rules about colours by the texts that `chooseTexts` left on the window. */
+export const colourViolations = (page: Page): Promise<string[]> =>
+  axeOn(page, { runOnly: { type: 'rule', values: COLOUR_RULES } }, undefined, true)
 
 /** Elements that reach over the right edge where the page has to be scrolled sideways; none where it has not. */
 export async function sideways(page: Page): Promise<string[]> {

@@ -1,6 +1,7 @@
 import type { ElementHandle, Page } from 'playwright-core'
 import { twoFrames, violations } from './checks'
-import { wear } from './themes'
+import type { SeenLooks } from './looks'
+import { colourProblems } from './looks'
 
 /** What opens a menu, a dialog, an explanation or a list of answers, and can be reached now. */
 const TRIGGERS = '[aria-haspopup]:not([aria-haspopup="false"]):not([role="menuitem"])'
@@ -16,19 +17,27 @@ export type Opened = Set<string>
 
 type Trigger = ElementHandle<HTMLElement>
 
+/** What is known while the popups of a page are looked at. */
+interface PopupsOf {
+  readonly pattern: string
+  readonly themes: readonly string[]
+  readonly opened: Opened
+  readonly seen: SeenLooks
+}
+
 /**
  * Opens one popup of each kind with the keyboard, looks at it in every theme, closes it with Escape, and says what is
  * wrong with it. Menus and dialogs are of one kind when their triggers read the same, explanations of numbers always;
  * those outside the main part are the same on every page.
  */
-export async function lookAtPopups(page: Page, about: { pattern: string; themes: string[]; opened: Opened }) {
-  const { pattern, themes, opened } = about
+export async function lookAtPopups(page: Page, about: PopupsOf) {
+  const { pattern, opened } = about
   const problems: string[] = []
   for (const { trigger, kind, isShared } of await triggersOf(page)) {
     const key = isShared ? kind : `${pattern} ${kind}`
     if (opened.has(key)) continue
     opened.add(key)
-    const found = await lookAt(page, trigger, themes).catch((error: Error) => [error.message.split('\n')[0]!])
+    const found = await lookAt(page, trigger, about).catch((error: Error) => [error.message.split('\n')[0]!])
     problems.push(...found.map((problem) => `${problem}, opened by ${kind}`))
   }
   return problems
@@ -54,21 +63,21 @@ async function triggersOf(page: Page): Promise<{ trigger: Trigger; kind: string;
   return [...kinds.values()]
 }
 
-async function lookAt(page: Page, trigger: Trigger, themes: string[]): Promise<string[]> {
+async function lookAt(page: Page, trigger: Trigger, about: PopupsOf): Promise<string[]> {
   await open(page, trigger)
-  const problems = await violationsIn(page, themes)
+  const problems = await violationsIn(page, about)
   const leading = await page.$$eval(LEADING, (items) => items.map((item) => item.textContent!.trim()))
   problems.push(...(await close(page, trigger)))
-  for (const words of leading) problems.push(...(await lookThrough(page, trigger, words, themes)))
+  for (const words of leading) problems.push(...(await lookThrough(page, trigger, words, about)))
   return problems
 }
 
 /** What an entry of the menu leads to; the focus comes back to what opened the menu. */
-async function lookThrough(page: Page, trigger: Trigger, words: string, themes: string[]): Promise<string[]> {
+async function lookThrough(page: Page, trigger: Trigger, words: string, about: PopupsOf): Promise<string[]> {
   await open(page, trigger)
   await page.locator(LEADING, { hasText: words }).first().press('Enter', PATIENCE)
   await page.waitForFunction(() => document.activeElement?.closest('[role$="dialog"]'), undefined, PATIENCE)
-  const found = [...(await violationsIn(page, themes)), ...(await close(page, trigger))]
+  const found = [...(await violationsIn(page, about)), ...(await close(page, trigger))]
   return found.map((problem) => `${problem}, by its entry “${words}”`)
 }
 
@@ -90,15 +99,10 @@ async function askFor(page: Page, box: Trigger): Promise<void> {
   }
 }
 
-async function violationsIn(page: Page, themes: string[]): Promise<string[]> {
-  const problems = await violations(page, 'all', POPUPS)
-  for (const theme of themes.filter((name) => name !== 'light')) {
-    await wear(page, theme)
-    const found = await violations(page, 'colours', POPUPS)
-    problems.push(...found.map((problem) => `${problem}, ${theme}`))
-  }
-  await wear(page, 'light')
-  return problems
+async function violationsIn(page: Page, { themes, seen }: PopupsOf): Promise<string[]> {
+  const problems = await violations(page, 'all but colours', POPUPS)
+  const colours = await colourProblems(page, { themes, seen, within: POPUPS })
+  return [...problems, ...colours.map(({ theme, problem }) => `${problem}, ${theme}`)]
 }
 
 async function close(page: Page, trigger: Trigger): Promise<string[]> {

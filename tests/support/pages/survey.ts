@@ -3,6 +3,8 @@ import { watchPage } from '../browser'
 import type { Client } from '../client'
 import { NARROW, naming, openNarrowMenu, settled, sideways, unfold, violations, WIDE } from './checks'
 import type { View } from './crawl'
+import type { SeenLooks } from './looks'
+import { colourProblems } from './looks'
 import type { Opened } from './popups'
 import { lookAtPopups } from './popups'
 import { themesOf, wear } from './themes'
@@ -32,8 +34,18 @@ export function summaryOf(findings: readonly Finding[], pattern: string, aspect:
 /** Pages looked at side by side: waiting for one leaves time for the others. */
 const AT_ONCE = 3
 
-/** Opens every view in a browser of its person and says what is wrong with it. */
-export async function survey(browser: Browser, views: readonly View[], opened: Opened = new Set()): Promise<Finding[]> {
+/** What needs no second look. */
+export interface Known {
+  readonly opened: Opened
+  readonly seen: SeenLooks
+  /** Patterns of pages of which all texts of one view were looked at. */
+  readonly patterns: Set<string>
+}
+
+export const nothingKnown = (): Known => ({ opened: new Set(), seen: new Set(), patterns: new Set() })
+
+/** Opens every view in a browser of its person and says what is wrong with it; `known` is added to. */
+export async function survey(browser: Browser, views: readonly View[], known: Known): Promise<Finding[]> {
   const findings: Finding[] = []
   const waiting = [...views]
   const worker = async (): Promise<void> => {
@@ -41,7 +53,7 @@ export async function survey(browser: Browser, views: readonly View[], opened: O
     for (let view = waiting.shift(); view; view = waiting.shift()) {
       const desk = desks.get(view.client) ?? (await openDesk(browser, view))
       desks.set(view.client, desk)
-      findings.push(...(await lookAt(desk, view, opened)))
+      findings.push(...(await lookAt(desk, view, known)))
     }
     await Promise.all([...desks.values()].map(({ page }) => page.context().close()))
   }
@@ -78,7 +90,7 @@ async function goTo({ page, complaints }: Desk, address: string): Promise<void> 
   await settled(page)
 }
 
-async function lookAt(desk: Desk, view: View, opened: Opened): Promise<Finding[]> {
+async function lookAt(desk: Desk, view: View, { opened, seen, patterns }: Known): Promise<Finding[]> {
   const { route, path, person, client, headings } = view
   const { page, complaints } = desk
   const findings: Finding[] = []
@@ -91,14 +103,14 @@ async function lookAt(desk: Desk, view: View, opened: Opened): Promise<Finding[]
     await goTo(desk, client.url + path)
     add('naming', await naming(page))
     await unfold(page)
-    add('accessibility', await violations(page))
     const themes = await themesOf(page)
-    for (const theme of themes.filter((name) => name !== 'light')) {
-      await wear(page, theme)
-      add('accessibility', await violations(page, 'colours'), `, ${theme}`)
-    }
-    await wear(page, 'light')
-    add('popups', await lookAtPopups(page, { pattern: route.pattern, themes, opened }))
+    const isFirst = !patterns.has(route.pattern)
+    patterns.add(route.pattern)
+    add('accessibility', await violations(page, isFirst ? 'all' : 'all but colours'))
+    for (const { theme, problem } of await colourProblems(page, { themes, seen }))
+      add('accessibility', [problem], `, ${theme}`)
+    if (isFirst) for (const theme of ['dark', 'light']) await wear(page, theme)
+    add('popups', await lookAtPopups(page, { pattern: route.pattern, themes, opened, seen }))
     await page.setViewportSize(NARROW)
     await openNarrowMenu(page)
     add('width', await sideways(page))
