@@ -20,7 +20,11 @@ export interface CreatedMachine {
 }
 
 /** Adds a machine of a family with its first calibration. @throws DomainError naming what does not fit */
-export function createMachine(app: App, actor: Actor, { family, ...input }: CreateMachine): Promise<CreatedMachine> {
+export async function createMachine(
+  app: App,
+  actor: Actor,
+  { family, ...input }: CreateMachine,
+): Promise<CreatedMachine> {
   const problems = familyProblems(family)
   if (problems.length > 0)
     throw new DomainError(
@@ -29,7 +33,7 @@ export function createMachine(app: App, actor: Actor, { family, ...input }: Crea
       problems.join('; '),
       problems.map((message) => ({ path: 'family', message })),
     )
-  return addMachine(app, actor, input, fabricOf(family), null)
+  return addMachine(app, actor, input, await fabricOf(app, family), null)
 }
 
 /**

@@ -1,6 +1,7 @@
 import { applyDefects } from '../../shared/engine/machine/defects'
 import { buildFabric } from '../../shared/engine/machine/build-fabric'
 import type { Fabric, PublishedFamily, WorkingGraph } from '../../shared/engine/machine/fabric'
+import { qubitCount } from '../../shared/engine/machine/family'
 import { indexById } from '../../shared/engine/machine/index-of'
 import { DomainError } from '../../shared/errors'
 import type { MachineSheet } from '../../shared/schemas/machines'
@@ -10,24 +11,33 @@ import { findCalibration, findMachine } from '../database/repositories/machines'
 import { unpackFabric } from './custom-graphs'
 import { Recent } from './recent'
 
-const fabrics = new Recent<Fabric>(6)
-const customs = new Recent<Promise<Fabric>>(4)
+const fabrics = new Recent<Promise<Fabric>>(8)
 /** Calibrations never change, so what was worked out from one can be kept. */
 const workings = new Recent<WorkingGraph>(8)
 
-/** The fabric of a family; building one takes up to a second for the largest, so the last few are kept. */
-export const fabricOf = (family: PublishedFamily): Fabric =>
-  fabrics.get(JSON.stringify(family), () => buildFabric(family))
+/** Fabrics of more qubits are built in a thread: the largest take a third of a second. */
+const MOST_QUBITS_BUILT_HERE = 10_000
+
+/** The fabric of a family; the last few are kept. */
+export const fabricOf = (app: App, family: PublishedFamily): Promise<Fabric> =>
+  keptFabric(JSON.stringify(family), async () =>
+    qubitCount(family) > MOST_QUBITS_BUILT_HERE ? app.compute.run('makeFabric', { family }) : buildFabric(family),
+  )
 
 /** The graph that a machine was made as: built from its family, or loaded where it was uploaded. */
 export async function fabricOfMachine(app: App, { family, graphBlobId }: MachineRow): Promise<Fabric> {
-  if (family.kind !== 'custom') return fabricOf(family)
+  if (family.kind !== 'custom') return fabricOf(app, family)
   if (!graphBlobId) throw new Error('a machine of no family has no graph')
-  const loading = customs.get(graphBlobId, async () => unpackFabric(family, await app.blobs.read(graphBlobId)))
+  return keptFabric(graphBlobId, async () => unpackFabric(family, await app.blobs.read(graphBlobId)))
+}
+
+/** What failed is not kept. */
+async function keptFabric(key: string, make: () => Promise<Fabric>): Promise<Fabric> {
+  const coming = fabrics.get(key, make)
   try {
-    return await loading
+    return await coming
   } catch (error) {
-    customs.drop(graphBlobId, loading)
+    fabrics.drop(key, coming)
     throw error
   }
 }

@@ -9,6 +9,7 @@ import { eliminatePart } from './tasks/eliminate-part'
 import { energies } from './tasks/energies'
 import { enumeratePart } from './tasks/enumerate-part'
 import { countPartBreaks, judgeBreaks } from './tasks/part-breaks'
+import { makeFabric } from './tasks/make-fabric'
 import { measureChains } from './tasks/measure-chains'
 import { planOptimum } from './tasks/plan-optimum'
 import { findDamage } from './tasks/find-damage'
@@ -30,6 +31,7 @@ import { sparsity } from './tasks/sparsity'
 import { structureDetails } from './tasks/structure-details'
 import { summarise } from './tasks/summarise'
 import { writeBundle } from './tasks/write-bundle'
+import { writeMachineGraph } from './tasks/write-graph'
 import { writeProblemFile } from './tasks/write-problem'
 import { writeSamplesFile } from './tasks/write-samples'
 
@@ -48,6 +50,7 @@ export const TASKS = {
   listRejectedLines,
   enumeratePart,
   findDamage,
+  makeFabric,
   measureChains,
   planOptimum,
   liftStates,
@@ -68,6 +71,7 @@ export const TASKS = {
   structureDetails,
   summarise,
   writeBundle,
+  writeMachineGraph,
   writeProblemFile,
   writeSamplesFile,
 }

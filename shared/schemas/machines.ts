@@ -199,12 +199,6 @@ export interface CalibrationSaved {
   }
 }
 
-export interface MachineGraph {
-  nodes: number[]
-  edges: [number, number][]
-  positions: [number, number][]
-}
-
 /** How a calibration damages an embedding; qubits and couplers by published number. */
 export interface EmbeddingDamage {
   /** Chains that lost a qubit, fell apart or lost an interaction's last coupler. */

@@ -1,7 +1,7 @@
 import { writeSamplesCsv } from '../../../shared/engine/readout/files/write-csv'
 import { DEMO_ACCOUNTS, DEMO_PASSWORD } from '../../../shared/demo-accounts'
 import { createRandom } from '../../../shared/engine/random'
-import type { PublishedFamily } from '../../../shared/engine/machine/fabric'
+import type { Fabric, PublishedFamily } from '../../../shared/engine/machine/fabric'
 import { createEmbeddingSchema } from '../../../shared/schemas/embeddings'
 import { createMachineSchema } from '../../../shared/schemas/machines'
 import { saveGroupsSchema } from '../../../shared/schemas/groups'
@@ -71,8 +71,7 @@ async function seedPeople(app: App, passwords: Passwords): Promise<Cast> {
 }
 
 /** About one qubit in fifty and a few couplers missing, drawn once. */
-function demoDefects(family: PublishedFamily, seed: number): { qubits: number[]; couplers: [number, number][] } {
-  const { ids, graph } = fabricOf(family)
+function demoDefects({ ids, graph }: Fabric, seed: number): { qubits: number[]; couplers: [number, number][] } {
   const random = createRandom(seed)
   const qubits = [...new Set(Array.from({ length: Math.round(ids.length / 50) }, () => ids[random.below(ids.length)]!))]
   const couplers = Array.from({ length: 6 }, (): [number, number] => {
@@ -106,7 +105,13 @@ async function seedMachines(app: App, steward: Actor): Promise<{ alder: string; 
     slopeMaxPerMicrosecond: 2,
     schedulePointsMax: 12,
   }
-  const create = (name: string, note: string, family: PublishedFamily, seed: number, most: { A: number; B: number }) =>
+  const create = async (
+    name: string,
+    note: string,
+    family: PublishedFamily,
+    seed: number,
+    most: { A: number; B: number },
+  ) =>
     createMachine(
       app,
       steward,
@@ -114,7 +119,7 @@ async function seedMachines(app: App, steward: Actor): Promise<{ alder: string; 
         name,
         note,
         family,
-        defects: demoDefects(family, seed),
+        defects: demoDefects(await fabricOf(app, family), seed),
         ranges,
         timing,
         controlError: { h: 0.021, J: 0.015 },
