@@ -9,7 +9,7 @@ export interface LatticeData {
   readonly segments: Float32Array
   /** 1 where the qubit works. */
   readonly usable: Uint8Array
-  /** The two qubits of each working coupler. */
+  /** The two qubits of each working coupler, the lower first, in ascending order as in `Graph`. */
   readonly ends: Uint32Array
   /** The two points at which each coupler meets its qubits; both the same where the qubits cross. */
   readonly places: Float32Array

@@ -30,6 +30,9 @@ interface Names {
   readonly qubit: (qubit: number) => string
 }
 
+/** By qubit, the qubits that it shares a coupler with; nothing for those that no chain has. */
+type Pairs = readonly (ReadonlySet<number> | undefined)[]
+
 /** Most qubits that a message lists by name. */
 const LARGEST_LIST = 6
 
@@ -85,13 +88,20 @@ function checkSharing(chains: readonly number[][], names: Names, found: Violatio
   }
 }
 
-function checkConnection(
-  i: number,
-  chain: readonly number[],
-  pairs: Set<number>[],
-  names: Names,
-  found: Violation[],
-): void {
+/** Only qubits of chains are asked for: on a large machine they are few. */
+function coupledPairs(machine: Graph, chains: readonly (readonly number[])[]): Pairs {
+  const pairs: (Set<number> | undefined)[] = new Array(machine.order).fill(undefined)
+  for (const chain of chains) for (const q of chain) pairs[q] = new Set()
+  for (let k = 0; k < machine.ends.length; k += 2) {
+    const a = machine.ends[k]!
+    const b = machine.ends[k + 1]!
+    pairs[a]?.add(b)
+    pairs[b]?.add(a)
+  }
+  return pairs
+}
+
+function checkConnection(i: number, chain: readonly number[], pairs: Pairs, names: Names, found: Violation[]): void {
   if (chain.length === 0) return
   const waiting = new Set(chain)
   const reached = [chain[0]!]
@@ -111,7 +121,7 @@ function checkConnection(
 function checkInteractions(
   problem: Graph,
   chains: readonly number[][],
-  pairs: Set<number>[],
+  pairs: Pairs,
   names: Names,
   found: Violation[],
 ): void {
@@ -143,13 +153,7 @@ export function verifyEmbedding(
   const names: Names = { label: naming.label ?? ((i) => `variable ${i}`), qubit: naming.qubitName ?? String }
   const found: Violation[] = []
   const good = readChains(problem, chains).map((chain, i) => checkQubits(i, chain, usable, names, found))
-  const pairs = Array.from({ length: machine.order }, () => new Set<number>())
-  for (let k = 0; k < machine.ends.length; k += 2) {
-    const a = machine.ends[k]!
-    const b = machine.ends[k + 1]!
-    pairs[a]!.add(b)
-    pairs[b]!.add(a)
-  }
+  const pairs = coupledPairs(machine, good)
   checkSharing(good, names, found)
   good.forEach((chain, i) => checkConnection(i, chain, pairs, names, found))
   checkInteractions(problem, good, pairs, names, found)
