@@ -39,6 +39,8 @@ export const TAG_DEFAULTS = {
   tolerance: 17,
   /** Most tags at once. */
   most: 90,
+  /** Share of the viewport that tags may cover together; those that insist are placed all the same. */
+  share: 0.1,
 }
 
 /** As bad as hiding so many cells of other bands. */
@@ -77,14 +79,17 @@ export function placeTags(
   viewport: Box,
   coverage: Coverage | null,
   held: readonly Box[] = [],
-  { gap, tolerance, most }: typeof TAG_DEFAULTS = TAG_DEFAULTS,
+  { gap, tolerance, most, share }: typeof TAG_DEFAULTS = TAG_DEFAULTS,
 ): PlacedTag[] {
+  let room = share * (viewport.x2 - viewport.x1) * (viewport.y2 - viewport.y1)
   const taken = new BoxGrid(held)
   const placed: PlacedTag[] = []
   const ordered = [...requests].sort((a, b) => b.priority - a.priority || a.key - b.key)
   for (const request of ordered) {
     if (placed.length >= most) break
-    const limit = request.insist ? Infinity : (tolerance * request.width * request.height) / 1000
+    const area = request.width * request.height
+    if (!request.insist && area > room) continue
+    const limit = request.insist ? Infinity : (tolerance * area) / 1000
     let best: Box | null = null
     let bestSpot: TagSpot | null = null
     let bestCost = Infinity
@@ -101,6 +106,7 @@ export function placeTags(
     }
     if (!best || !bestSpot) continue
     taken.add(best)
+    room -= area
     placed.push({ key: request.key, box: best, spot: bestSpot })
   }
   return placed

@@ -25,7 +25,7 @@ describe('placeTags', () => {
       const band = random() < 0.5 ? { x1: x, y1: y, x2: x + 12, y2: y } : { x1: x, y1: y, x2: x, y2: y + 12 }
       return request(key, band, { priority: random() })
     })
-    const placed = placeTags(requests, view, viewport, null, [], { gap: 3, tolerance: 17, most: 150 })
+    const placed = placeTags(requests, view, viewport, null, [], { gap: 3, tolerance: 17, most: 150, share: 1 })
     expect(placed.length).toBeGreaterThan(60)
     placed.forEach(({ box: a }, i) => {
       expect(Math.min(a.x1, a.y1)).toBeGreaterThanOrEqual(0)
@@ -48,9 +48,23 @@ describe('placeTags', () => {
     const bands = Array.from({ length: 30 }, (_, i) => ({ chain: i, qubits: [], x1: 0, y1: i, x2: 60, y2: i }))
     const coverage = coverageOf(bands, { x1: 0, y1: 0, x2: 60, y2: 30 })
     const crowded = request(0, { x1: 20, y1: 15, x2: 32, y2: 15 }, { width: 60, height: 40 })
-    const strict = { gap: 3, tolerance: 10, most: 90 }
+    const strict = { gap: 3, tolerance: 10, most: 90, share: 1 }
     expect(placeTags([crowded], view, viewport, coverage, [], strict)).toEqual([])
     expect(placeTags([{ ...crowded, insist: true }], view, viewport, coverage, [], strict)).toHaveLength(1)
+  })
+
+  it('covers no more than a share of the viewport, but for tags that insist', () => {
+    const requests = Array.from({ length: 80 }, (_, key) => {
+      const [x, y] = [3 + 6 * (key % 9), 3 + 5 * Math.floor(key / 9)]
+      return request(key, { x1: x, y1: y, x2: x, y2: y }, { priority: -key })
+    })
+    const share = { gap: 3, tolerance: 17, most: 150, share: 0.05 }
+    const placed = placeTags(requests, view, viewport, null, [], share)
+    expect(placed.map(({ key }) => key)).toEqual(
+      Array.from({ length: (0.05 * 600 * 500) / (40 * 15) }, (_, key) => key),
+    )
+    const insisting = requests.map((one) => ({ ...one, insist: true }))
+    expect(placeTags(insisting, view, viewport, null, [], share).length).toBeGreaterThan(60)
   })
 
   it('sets a tag beside a band too short to carry it', () => {
