@@ -82,7 +82,7 @@ async function boot(): Promise<StartedApp> {
   announce(demo)
   if (code)
     console.log(
-      `\nNo account exists yet. Open /setup and create the owner's account with this one-time code: ${code}\n`,
+      `\nNo account exists yet. Open /setup and create the owner’s account with this one-time code: ${code}\n`,
     )
   return {
     ...started,

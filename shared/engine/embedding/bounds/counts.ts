@@ -66,7 +66,7 @@ function byDegrees(problem: Graph, lengths: Float64Array, { largestDegree, qubit
     const message = `A variable has ${groupDigits(most)} interactions, and a chain of qubits with at most ${groupDigits(largestDegree)} couplers each touches no more than two other chains: ${groupDigits(most - 2)} too few.`
     return infeasibility(code, most, 2, message)
   }
-  const message = `With at most ${groupDigits(largestDegree)} couplers a qubit, the problem's chains need at least ${groupDigits(need)} qubits; the machine has ${groupDigits(qubits)} usable ones: ${groupDigits(need - qubits)} too few.`
+  const message = `With at most ${groupDigits(largestDegree)} couplers a qubit, the problem’s chains need at least ${groupDigits(need)} qubits; the machine has ${groupDigits(qubits)} usable ones: ${groupDigits(need - qubits)} too few.`
   return infeasibility(code, need, qubits, message)
 }
 

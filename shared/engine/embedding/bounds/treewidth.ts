@@ -26,7 +26,7 @@ function proofOf(problem: Graph, lower: number, width: number, cliqueWork: numbe
     const message = `The problem contains ${groupDigits(clique)} variables that all interact with each other; by a proved bound the machine holds at most ${groupDigits(width + 1)} such: ${groupDigits(clique - width - 1)} too many.`
     return infeasibility('clique larger than the machine can hold', clique, width + 1, message)
   }
-  const message = `The problem's treewidth is at least ${groupDigits(lower)}, the machine's at most ${groupDigits(width)}: ${groupDigits(lower - width)} too much.`
+  const message = `The problem’s treewidth is at least ${groupDigits(lower)}, the machine’s at most ${groupDigits(width)}: ${groupDigits(lower - width)} too much.`
   return infeasibility('treewidth too large', lower, width, message)
 }
 

@@ -36,7 +36,7 @@ describe('familyName', () => {
     expect(familyName({ kind: 'pegasus', m: 16, trimmed: true })).toBe('P(16)')
     expect(familyName({ kind: 'pegasus', m: 16, trimmed: false })).toBe('P(16) untrimmed')
     expect(familyName({ kind: 'zephyr', m: 15, t: 4 })).toBe('Z(15,4)')
-    expect(familyName({ kind: 'king', width: 20, height: 30 })).toBe("king's graph 20×30")
+    expect(familyName({ kind: 'king', width: 20, height: 30 })).toBe('king’s graph 20×30')
     expect(familyName({ kind: 'square', width: 20, height: 30 })).toBe('square grid 20×30')
     expect(familyName({ kind: 'cubic', width: 4, height: 5, depth: 6 })).toBe('cubic grid 4×5×6')
     expect(familyName({ kind: 'heavy-hex', rows: 4, columns: 5 })).toBe('heavy hexagons 4×5')
