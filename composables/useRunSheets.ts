@@ -1,7 +1,15 @@
+import type { RunSheetComparison } from '#shared/run-sheet-comparison'
 import type { Page } from '#shared/schemas/common'
 import type { Decoding, ReturnView } from '#shared/schemas/returns'
 import type { UploadWatch } from './useUploads'
-import type { EditRunSheet, Rehearse, RunSheetItem, RunSheetSettings, RunSheetView } from '#shared/schemas/run-sheets'
+import type {
+  EditRunSheet,
+  QuenchSeries,
+  Rehearse,
+  RunSheetItem,
+  RunSheetSettings,
+  RunSheetView,
+} from '#shared/schemas/run-sheets'
 
 export const useRunSheets = () => useResource<Page<RunSheetItem>>('/api/run-sheets?limit=200')
 
@@ -23,6 +31,9 @@ export interface SamplesOptions {
   machineTimeSeconds?: number
 }
 
+export const useRunSheetComparison = (sides: MaybeRefOrGetter<{ a: string; b: string }>) =>
+  useResource<RunSheetComparison>(() => `/api/run-sheets/compare?${new URLSearchParams(toValue(sides))}`)
+
 /** Preparing, changing, handing over, rehearsing and returning. */
 export function useRunSheetActions() {
   const api = useApi()
@@ -32,6 +43,10 @@ export function useRunSheetActions() {
     edit: (id: string, change: EditRunSheet) => api.patch<RunSheetView>(`/api/run-sheets/${id}`, change),
     handOver: (id: string, step: 'submit' | 'approve' | 'send-back' | 'issue', remark: string) =>
       api.post<{ state: string }>(`/api/run-sheets/${id}/${step}`, { remark }),
+    remark: (id: string, remark: string) => api.post<{ at: string }>(`/api/run-sheets/${id}/remarks`, { remark }),
+    duplicate: (id: string) => api.post<{ id: string; number: number }>(`/api/run-sheets/${id}/duplicate`),
+    quench: (id: string, series: QuenchSeries) =>
+      api.post<{ items: { id: string; number: number; s: number }[] }>(`/api/run-sheets/${id}/quenches`, series),
     rehearse: (id: string, input: Partial<Rehearse>) =>
       api.post<{ returnId: string; jobId: string }>(`/api/run-sheets/${id}/rehearsals`, input),
     upload: (id: string, file: File, options: SamplesOptions, watch?: UploadWatch) => {

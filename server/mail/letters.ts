@@ -111,6 +111,22 @@ export function handedOverLetter(
   }
 }
 
+/** Somebody wrote a remark on a run sheet. */
+export function remarkLetter(sheet: SheetForLetter, by: string, remark: string, reason: SheetReason): Letter {
+  return {
+    kind: 'run sheet remark',
+    subject: `${oneLine(by)} on RS-${sheet.number}: ${oneLine(sheet.name)}`,
+    parts: [
+      {
+        text: `${oneLine(by)} wrote on RS-${sheet.number}, ${oneLine(sheet.name)}, which runs ${oneLine(sheet.problem)} on ${oneLine(sheet.machine)}:`,
+      },
+      { quote: remark },
+    ],
+    action: { label: `Open RS-${sheet.number}`, path: `/run-sheets/${sheet.id}` },
+    because: REASONS[reason],
+  }
+}
+
 /** A repair moved a run sheet, which has to be reviewed again. */
 export function movedLetter(sheet: SheetForLetter, moved: string, was: RunSheetState, reason: SheetReason): Letter {
   return {

@@ -7,7 +7,8 @@ import type { RunSheetRow } from '../database/repositories/run-sheets'
 import type { Bench } from './programming'
 import { fingerprintOf, programmeBench, requireProgrammed } from './programming'
 import { qubitIdsOf } from './qubit-ids'
-import { benchOf, estimate, runSheetRow } from './run-sheets'
+import { estimate } from './run-sheet-time'
+import { benchOf, runSheetRow } from './run-sheets'
 
 const NEXT: Partial<Record<RunSheetRow['state'], string>> = {
   draft: 'Submit it for review; the bundle is there once it is approved.',

@@ -9,7 +9,7 @@ import type { RunSheetRow } from '../database/repositories/run-sheets'
 import { insertRemark, lockRunSheetsOn, updateRunSheet } from '../database/repositories/run-sheets'
 import type { Subject } from './embedding-subject'
 import { tellMoved } from './run-sheet-letters'
-import { estimate } from './run-sheets'
+import { estimate } from './run-sheet-time'
 
 /**
  * Puts a repaired embedding in the place of the one it began from, in the transaction that stores it: it takes over the

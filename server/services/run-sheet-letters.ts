@@ -6,7 +6,7 @@ import type { RunSheetRow } from '../database/repositories/run-sheets'
 import { aboutRunSheet } from '../database/repositories/run-sheets'
 import type { Letter } from '../mail/letter'
 import type { HandedOver, SheetForLetter, SheetReason } from '../mail/letters'
-import { handedOverLetter, movedLetter } from '../mail/letters'
+import { handedOverLetter, movedLetter, remarkLetter } from '../mail/letters'
 import { tell } from './mail'
 
 /** Everyone who may review this run sheet: nobody reviews their own. */
@@ -50,6 +50,23 @@ export async function tellMoved(
   const letters = new Map<string, Letter>()
   for (const id of await reviewersOf(tx, row)) letters.set(id, movedLetter(sheet, moved, row.state, 'reviewer'))
   letters.set(row.preparedBy, movedLetter(sheet, moved, row.state, 'preparer'))
+  await tell(app, tx, { workspaceId: row.workspaceId, by }, letters)
+}
+
+/** Tells preparer and reviewer of a remark; while nobody has reviewed what is in review, everyone who may. */
+export async function tellRemark(
+  app: App,
+  tx: Db,
+  row: RunSheetRow,
+  { by, remark }: { by: string; remark: string },
+): Promise<void> {
+  const told = new Map<string, SheetReason>()
+  if (row.reviewedBy) told.set(row.reviewedBy, 'approver')
+  else if (row.state === 'in review') for (const id of await reviewersOf(tx, row)) told.set(id, 'reviewer')
+  told.set(row.preparedBy, 'preparer')
+  const sheet = await sheetForLetter(tx, row)
+  const { name } = await personOf(tx, by)
+  const letters = new Map([...told].map(([id, reason]) => [id, remarkLetter(sheet, name, remark, reason)]))
   await tell(app, tx, { workspaceId: row.workspaceId, by }, letters)
 }
 

@@ -1,6 +1,5 @@
 import { randomUUID } from 'node:crypto'
 import type { z } from 'zod'
-import { machineTimeEstimate } from '../../shared/engine/programming/machine-time'
 import { durationOf } from '../../shared/engine/programming/schedule'
 import { referenceSize } from '../../shared/engine/programming/strength'
 import { DomainError } from '../../shared/errors'
@@ -9,22 +8,20 @@ import type { DeletionView } from '../../shared/schemas/deletions'
 import type {
   createRunSheetSchema,
   EditRunSheet,
-  MachineTimePart,
   RunSheetItem,
   RunSheetSettings,
   RunSheetView,
 } from '../../shared/schemas/run-sheets'
 import { EDITABLE_STATES, OPEN_STATES } from '../../shared/schemas/run-sheets'
 import type { Actor, App } from '../app'
+import type { Db } from '../database/client'
 import { nextNumber } from '../database/repositories/counters'
-import { jobsOfSubjects } from '../database/repositories/jobs'
 import { pageOf, positionOf } from '../database/repositories/pages'
 import { personOf } from '../database/repositories/problems'
 import type { RunSheetRow } from '../database/repositories/run-sheets'
 import {
   findRunSheet,
   insertRunSheet,
-  listRemarks,
   listRunSheets,
   returnsOfRunSheets,
   updateRunSheet,
@@ -32,7 +29,6 @@ import {
 import { deleteFor } from './deletions'
 import { brokenView } from './broken-view'
 import { embeddingRow } from './embedding-subject'
-import type { CalibratedMachine } from './machine-graphs'
 import { machineRow } from './machine-graphs'
 import { standingOf } from './problem-difference'
 import type { Bench } from './programming'
@@ -41,6 +37,9 @@ import { checksOf } from './run-sheet-checks'
 import { fingerprintOf, loadBench, programmeBench, programmeShown, requireProgrammed } from './programming'
 import { precisionOf } from './precision'
 import { compareRules, isingSizes, scaleLimitOf } from './strength-rules'
+import { bestReference } from '../database/repositories/reference-optima'
+import { copiesView, madeFromView, remarkViews, returnViews } from './run-sheet-history'
+import { estimate, machineTimeView } from './run-sheet-time'
 
 /** A run sheet of the workspace. @throws DomainError not found, also for another workspace's */
 export async function runSheetRow(app: App, actor: Actor, id: string): Promise<RunSheetRow> {
@@ -54,22 +53,8 @@ export async function benchOf(app: App, actor: Actor, row: Pick<RunSheetRow, 'em
   return loadBench(app, await embeddingRow(app, actor, row.embeddingId))
 }
 
-/** Machine time of a run with these settings, by the machine's own figures at the embedding's calibration. */
-export function estimate(
-  { machine }: { machine: Pick<CalibratedMachine, 'sheet'> },
-  { gauges, reads, annealMicroseconds }: RunSheetSettings,
-) {
-  const { programmingMicroseconds, readoutMicroseconds, delayMicroseconds } = machine.sheet.timing
-  return machineTimeEstimate({
-    gauges,
-    reads,
-    annealMicroseconds,
-    timing: { programMicroseconds: programmingMicroseconds, readoutMicroseconds, delayMicroseconds },
-  })
-}
-
 /** A schedule says itself how long an anneal takes. */
-const timed = (settings: RunSheetSettings): RunSheetSettings =>
+export const timed = (settings: RunSheetSettings): RunSheetSettings =>
   settings.schedule ? { ...settings, annealMicroseconds: durationOf(settings.schedule) } : settings
 
 export async function createRunSheet(
@@ -81,24 +66,42 @@ export async function createRunSheet(
   const settings = timed(asked)
   const bench = await loadBench(app, await embeddingRow(app, actor, embeddingId))
   requireProgrammed(programmeBench(bench, settings))
+  return app.db.transaction((tx) =>
+    insertDraft(app, tx, actor, { bench, name: name ?? bench.problem.name, settings, madeFromId: null }),
+  )
+}
+
+interface Draft {
+  bench: Bench
+  name: string
+  settings: RunSheetSettings
+  /** The run sheet that it is copied from. */
+  madeFromId: string | null
+}
+
+/** Saves a draft, with the next number. What is programmed must have been found to fit before. */
+export async function insertDraft(
+  app: App,
+  tx: Db,
+  actor: Actor,
+  { bench, name, settings, madeFromId }: Draft,
+): Promise<{ id: string; number: number }> {
   const id = randomUUID()
   const now = app.now()
-  const number = await app.db.transaction(async (tx) => {
-    const number = await nextNumber(tx, actor.workspaceId, 'run sheet')
-    await insertRunSheet(tx, {
-      id,
-      workspaceId: actor.workspaceId,
-      embeddingId,
-      number,
-      name: name ?? bench.problem.name,
-      state: 'draft',
-      settings,
-      machineTimeMilliseconds: estimate(bench, settings).totalMicroseconds / 1000,
-      preparedBy: actor.userId,
-      createdAt: now,
-      changedAt: now,
-    })
-    return number
+  const number = await nextNumber(tx, actor.workspaceId, 'run sheet')
+  await insertRunSheet(tx, {
+    id,
+    workspaceId: actor.workspaceId,
+    embeddingId: bench.row.id,
+    number,
+    name,
+    state: 'draft',
+    settings,
+    machineTimeMilliseconds: estimate(bench, settings).totalMicroseconds / 1000,
+    preparedBy: actor.userId,
+    madeFromId,
+    createdAt: now,
+    changedAt: now,
   })
   return { id, number }
 }
@@ -175,23 +178,30 @@ export async function runSheetView(app: App, actor: Actor, id: string): Promise<
   const ofVersion = await standingOf(app, problem)
   const broken = await brokenView(app, bench.row)
   const { calibration: inForce } = await machineRow(app, row, machine.machine.id)
+  const returned = await returnsOfRunSheets(app.db, [id])
+  const checks = checksOf({
+    bench,
+    row,
+    programming,
+    programmed,
+    precision,
+    ofVersion,
+    embedding: { inForce, broken },
+    time,
+    returned,
+    reference: await bestReference(app.db, problem.id, problem.version),
+  })
   return {
     ...itemOf(row, {
       problem: { id: problem.id, number: problem.number, name: problem.name },
       embedding: { id: bench.row.id, number: bench.row.number },
       machine: { id: machine.machine.id, name: machine.machine.name },
     }),
+    madeFrom: await madeFromView(app, row),
+    copies: await copiesView(app, row),
     settings: row.settings,
     ofVersion,
-    calibration: machine.calibration.number,
-    sense: problem.sense,
-    fingerprints: {
-      problem: problem.fingerprint,
-      embedding: bench.row.fingerprint ?? '',
-      programmed: row.fingerprint ?? fingerprintOf(programmed),
-    },
-    maxAbsJ: referenceSize(bench.ising),
-    ising: isingSizes(bench),
+    ...standsOn(bench, row.fingerprint ?? fingerprintOf(programmed)),
     rules: compareRules(bench, row.settings, programming),
     chainTotals: chainTotals(bench),
     scale: programmed.scale,
@@ -201,15 +211,10 @@ export async function runSheetView(app: App, actor: Actor, id: string): Promise<
     anneal: annealView(bench),
     machineTime: time,
     rehearsal: rehearsalChoices(programmed, machine.sheet),
-    checks: checksOf(bench, row.settings, programming, programmed, precision, ofVersion, { inForce, broken }),
+    checks,
     broken: OPEN_STATES.includes(row.state) ? broken : null,
-    returns: await returnViews(app, id),
-    remarks: (await listRemarks(app.db, id)).map(({ remark, by }) => ({
-      at: remark.createdAt.toISOString(),
-      by,
-      what: remark.what,
-      text: remark.text,
-    })),
+    returns: await returnViews(app, returned),
+    remarks: await remarkViews(app, id),
     preparedBy: await personOf(app.db, row.preparedBy),
     reviewedBy: row.reviewedBy ? await personOf(app.db, row.reviewedBy) : null,
     createdAt: row.createdAt.toISOString(),
@@ -222,48 +227,16 @@ function chainTotals({ embedding: { offsets, qubits } }: Bench): RunSheetView['c
   return { qubits: qubits.length, longest }
 }
 
+const standsOn = (bench: Bench, programmed: string) => ({
+  calibration: bench.machine.calibration.number,
+  sense: bench.problem.sense,
+  fingerprints: { problem: bench.problem.fingerprint, embedding: bench.row.fingerprint ?? '', programmed },
+  maxAbsJ: referenceSize(bench.ising),
+  ising: isingSizes(bench),
+})
+
 function annealView({ machine: { sheet } }: Bench): RunSheetView['anneal'] {
   const { annealMinMicroseconds, annealMaxMicroseconds, slopeMaxPerMicrosecond, schedulePointsMax } = sheet.timing
   const limits = { annealMinMicroseconds, annealMaxMicroseconds, slopeMaxPerMicrosecond, schedulePointsMax }
   return { limits, energyTable: sheet.energyTable, temperatureMillikelvin: sheet.temperatureMillikelvin }
-}
-
-function machineTimeView(bench: Bench, settings: RunSheetSettings): RunSheetView['machineTime'] {
-  const { gauges, reads, annealMicroseconds } = settings
-  const { programmingMicroseconds, readoutMicroseconds, delayMicroseconds } = bench.machine.sheet.timing
-  const time = estimate(bench, settings)
-  const parts: MachineTimePart[] = [
-    {
-      part: 'Programming',
-      reckoning: `${gauges} × ${programmingMicroseconds / 1000} ms`,
-      milliseconds: time.programmingMicroseconds / 1000,
-    },
-    { part: 'Anneal', reckoning: `${reads} × ${annealMicroseconds} µs`, milliseconds: time.annealMicroseconds / 1000 },
-    {
-      part: 'Read-out and delay',
-      reckoning: `${reads} × (${readoutMicroseconds} + ${delayMicroseconds}) µs`,
-      milliseconds: (time.readoutMicroseconds + time.delayMicroseconds) / 1000,
-    },
-  ]
-  const timing = { programmingMicroseconds, readoutMicroseconds, delayMicroseconds }
-  return { parts, totalMilliseconds: time.totalMicroseconds / 1000, timing }
-}
-
-async function returnViews(app: App, runSheetId: string): Promise<RunSheetView['returns']> {
-  const rows = await returnsOfRunSheets(app.db, [runSheetId])
-  const jobIds = await jobsOfSubjects(
-    app.db,
-    rows.map((row) => row.id),
-  )
-  return rows.map((row) => ({
-    id: row.id,
-    number: row.number,
-    source: row.source,
-    status: row.status,
-    jobId: jobIds.get(row.id) ?? null,
-    reads: row.reads,
-    readsWithBreak: row.readsWithBreak,
-    best: row.best,
-    createdAt: row.createdAt.toISOString(),
-  }))
 }

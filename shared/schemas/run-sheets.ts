@@ -71,6 +71,21 @@ export type EditRunSheet = z.infer<typeof editRunSheetSchema>
 export const remarkSchema = z.object({ remark: textSchema(2000).default('') })
 export const sendBackSchema = z.object({ remark: textSchema(2000).min(1, 'say what should change') })
 
+export const addRemarkSchema = z.object({ remark: textSchema(2000).min(1, 'write what you want to say') })
+
+/** A run sheet for each s at which to quench; without a time as fast as the machine takes. */
+export const quenchSeriesSchema = z.object({
+  points: z
+    .array(z.number().gt(0, 'between 0 and 1').lt(1, 'between 0 and 1'))
+    .min(1, 'give at least one s')
+    .max(50, 'at most 50 run sheets at once')
+    .refine((points) => new Set(points).size === points.length, 'each s once'),
+  quenchMicroseconds: z.number().positive().max(1e6).optional(),
+})
+export type QuenchSeries = z.infer<typeof quenchSeriesSchema>
+
+export const compareRunSheetsSchema = z.object({ a: idSchema, b: idSchema })
+
 export const rehearseSchema = z.object({
   reads: z.number().int().min(1).max(100_000).default(1000),
   sweeps: z.number().int().min(1).max(1_000_000).default(1000),
@@ -104,10 +119,27 @@ export const FIXED_STATES: readonly RunSheetState[] = ['approved', 'issued', 're
 /** States of a run sheet whose samples are not back yet: a broken embedding concerns it. */
 export const OPEN_STATES: readonly RunSheetState[] = [...MOVABLE_STATES, 'issued']
 
+/** What a check looks at; a run sheet has at most one check of each. */
+export type CheckSubject =
+  | 'ranges'
+  | 'scale'
+  | 'gauges'
+  | 'embedding'
+  | 'version'
+  | 'schedule'
+  | 'strength'
+  | 'precision'
+  | 'rehearsal'
+  | 'reference'
+  | 'price'
+
 export interface CheckView {
+  about: CheckSubject
   verdict: 'passed' | 'caution' | 'refused'
   what: string
   figure: string
+  /** Where what it speaks of can be changed: `#` and an id on the page of the run sheet, or the path of another page. */
+  at: string
 }
 
 /** The value that decides the scale, and the end of the machine's range that it must come down to. */
@@ -200,7 +232,23 @@ export interface RunSheetItem {
   changedAt: string
 }
 
+/** A run sheet that was made from another. */
+export interface MadeFromItem {
+  id: string
+  number: number
+  name: string
+  state: RunSheetState
+  annealMicroseconds: number
+  machineTimeMilliseconds: number
+  /** Where its schedule leaves for the last piece, and how long that takes; null for a straight ramp. */
+  lastPiece: { s: number; microseconds: number } | null
+}
+
 export interface RunSheetView extends RunSheetItem {
+  /** The run sheet that it was copied from. */
+  madeFrom: { id: string; number: number; name: string } | null
+  /** Run sheets that were copied from it, by number. */
+  copies: MadeFromItem[]
   settings: RunSheetSettings
   /** The version of the problem that is programmed. */
   ofVersion: VersionStanding
@@ -246,6 +294,8 @@ export interface RunSheetView extends RunSheetItem {
     totalMilliseconds: number
     /** From the machine sheet. */
     timing: { programmingMicroseconds: number; readoutMicroseconds: number; delayMicroseconds: number }
+    /** The whole estimate at the price of the machine sheet; null where that states none. */
+    price: { perSecond: number; currency: string; amount: number } | null
   }
   rehearsal: RehearsalChoices
   checks: CheckView[]

@@ -5,6 +5,7 @@ import { machineHelp } from './machine'
 import { optimumHelp } from './optimum'
 import { precisionHelp } from './precision'
 import { presolveHelp } from './presolve'
+import { priceHelp } from './price'
 import { problemHelp } from './problem'
 import { programmingHelp } from './programming'
 import { rehearsalHelp } from './rehearsal'
@@ -18,6 +19,7 @@ const HELP = {
   ...optimumHelp,
   ...structureHelp,
   ...machineHelp,
+  ...priceHelp,
   ...embeddingHelp,
   ...programmingHelp,
   ...precisionHelp,

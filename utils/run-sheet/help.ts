@@ -88,6 +88,12 @@ export function timeHelp(sheet: RunSheetView): Help {
   return { help: { id: 'machineTime', given: timeGiven(sheet, show, unit) } }
 }
 
+/** What the whole estimate costs; nothing where the machine sheet states no price. */
+export const priceHelpOf = ({ totalMilliseconds: milliseconds, price }: RunSheetView['machineTime']): Help =>
+  price
+    ? { help: { id: 'machinePrice', given: { milliseconds, perSecond: price.perSecond, currency: price.currency } } }
+    : {}
+
 export const boundCases = (chains: readonly ChainRow[]): HelpCase[] =>
   chains
     .filter(isBreakable)

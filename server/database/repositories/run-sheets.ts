@@ -57,6 +57,15 @@ export async function runSheetsOfEmbeddings(db: Db, embeddingIds: readonly strin
     .orderBy(desc(runSheets.createdAt), desc(runSheets.number))
 }
 
+/** Run sheets that were copied from one, by number. */
+export async function copiesOf(db: Db, { workspaceId, id }: Pick<RunSheetRow, 'workspaceId' | 'id'>) {
+  return db
+    .select()
+    .from(runSheets)
+    .where(and(eq(runSheets.workspaceId, workspaceId), eq(runSheets.madeFromId, id), isNull(runSheets.deletedWith)))
+    .orderBy(asc(runSheets.number))
+}
+
 /**
  * Changes a run sheet only while it is in one of the states given and, where `seen` is given, unchanged since then; false
  * when it no longer is.

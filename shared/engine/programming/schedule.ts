@@ -150,3 +150,20 @@ export function withQuench(schedule: Schedule, s: number, microseconds: number):
   const begun = upTo(schedule, s)
   return [...begun, { microseconds: begun.at(-1)!.microseconds + microseconds, s: 1 }]
 }
+
+/** Times are given to machines to the nanosecond; rounded up, no piece gets steeper than it was asked for. */
+const NANOSECONDS = 1000
+const roundedUp = (microseconds: number): number => Math.ceil(microseconds * NANOSECONDS - ROOM) / NANOSECONDS
+
+/**
+ * `withQuench` with times in whole nanoseconds, rounded up: one of a series that differs in s alone.
+ * @param s 0 < s < 1
+ * @throws RangeError for an s outside or a quench that takes no time
+ */
+export function quenchAt(schedule: Schedule, s: number, microseconds: number): Schedule {
+  const points = withQuench(schedule, s, roundedUp(microseconds))
+  const [turn, end] = [points.at(-2)!, points.at(-1)!]
+  const at = roundedUp(turn.microseconds)
+  const length = roundedUp(microseconds)
+  return [...points.slice(0, -2), { ...turn, microseconds: at }, { ...end, microseconds: roundedUp(at + length) }]
+}

@@ -110,6 +110,7 @@ const EXAMPLES: readonly (readonly [HelpRequest, number | string])[] = [
   [{ id: 'cutBound', given: { up: -1, down: 6, cut: 1, exact: false } }, 0],
   [{ id: 'strengthOverBound', given: { strength: 9, bound: 6 } }, 1.5],
   [{ id: 'machineTime', given: { gauges: 2, reads: 100, anneal: 72, timing, show, unit: 'ms' } }, 28.4 + 21.6],
+  [{ id: 'machinePrice', given: { milliseconds: 298, perSecond: 0.75, currency: 'EUR' } }, 0.2235],
   [{ id: 'load', given: { what: 'sum', value: -4, limit: -16, show } }, 0.25],
   [{ id: 'rounding', given: { arithmetic: '16-bit', largestField: 22.4, sigma: 0.02 } }, '0.00035'],
   [{ id: 'rounding', given: { arithmetic: '32-bit', largestField: 2 ** 13, sigma: null } }, '0.00049'],
