@@ -62,11 +62,11 @@ describe('two run sheets compared', () => {
   })
 
   it('list strengths by label, and chains that only one of them has', () => {
-    const chains = [
+    const strengths = [
       { label: 'y', strength: 4 },
       { label: 'z', strength: 1 },
-    ] as RunSheetView['chains']
-    expect(comparisonOf(sheet(1), sheet(2, { chains })).strengths).toEqual({
+    ]
+    expect(comparisonOf(sheet(1), sheet(2, { strengths })).strengths).toEqual({
       same: 0,
       differing: [
         { label: 'x', a: 2, b: null },
