@@ -51,7 +51,7 @@ function sampleLines({ qubitIds }: BundleInput): string {
   const some = qubitIds.slice(0, 4)
   const more = qubitIds.length > some.length ? ',...' : ''
   return `       ${some.join(',')}${more},gauge
-       ${some.map((_, k) => (k % 2 === 0 ? '1' : '-1')).join(',')}${more},1
+       ${some.map((_, k) => (k % 2 === 0 ? '1' : '-1')).join(',')}${more},0
   5. Load the file on the page of the run sheet, under Rehearsal and samples.`
 }
 

@@ -37,7 +37,7 @@ function energyCheck({ labels, ising, programmed }: BundleInput): string[] {
 function gaugeCheck(input: BundleInput): string[] {
   const { programmed, qubitIds, sheet } = input
   if (programmed.J.length === 0) return []
-  const number = sheet.settings.gauges
+  const number = sheet.settings.gauges - 1
   const signs = gaugeOf(input, number)
   const [a, b] = [programmed.ends[0]!, programmed.ends[1]!]
   const J = programmed.J[0]!

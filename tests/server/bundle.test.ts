@@ -171,7 +171,7 @@ describe('the bundle of a run sheet', () => {
     const qubits = [...problem!.h.keys()].sort((a, b) => a - b)
     const lines = files['gauges.csv']!.trimEnd().split('\n').slice(1)
     expect(lines.map((line) => line.split(',').slice(0, 2).join())).toEqual(
-      [15, 15, 14, 14, 14, 14, 14].map((reads, g) => `${g + 1},${reads}`),
+      [15, 15, 14, 14, 14, 14, 14].map((reads, g) => `${g},${reads}`),
     )
     expect(new Set(lines.map((line) => line.split(',')[2])).size).toBe(7)
     for (const line of lines) {
@@ -201,7 +201,7 @@ describe('the bundle of a run sheet', () => {
     const [, scaled] = /scale \* E_logical {3}= (\S+)/.exec(files['README.txt']!)!
     const [, physical] = /E_physical \+ offset = (\S+)/.exec(files['README.txt']!)!
     expect(Number(physical)).toBeCloseTo(Number(scaled), 8)
-    expect(files['gauges.csv']).toMatch(/^gauge,reads,signs\n1,1000,\++\n$/)
+    expect(files['gauges.csv']).toMatch(/^gauge,reads,signs\n0,1000,\++\n$/)
     expect(files['schedule.csv']).toBe('microseconds,s\n0,0\n20,1\n')
     expect(files['map-back.csv']!.split('\n').length).toBe(Object.keys(JSON.parse(files['problem.json']!).h).length + 2)
   })
