@@ -10,7 +10,8 @@ import { withAdvice } from './apply-advice'
 import type { Bench } from './programming'
 import { programmeBench, requireProgrammed } from './programming'
 import { analysed } from './return-analysis'
-import { estimate, runSheetRow } from './run-sheets'
+import { estimate } from './run-sheet-time'
+import { runSheetRow } from './run-sheets'
 
 const figure = (value: number): string => String(Number(value.toPrecision(4)))
 const ruleText = ({ strength: { rule, value, perChain } }: RunSheetSettings): string => {

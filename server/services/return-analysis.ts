@@ -25,7 +25,7 @@ import { proportion } from './proportion'
 import { Recent } from './recent'
 import { evidenceOf, scaleRoom } from './return-evidence'
 import { decodedBy } from './return-summary'
-import { estimate } from './run-sheets'
+import { estimate } from './run-sheet-time'
 import { unpackSamples } from './samples-data'
 import { signed, signOf } from './sense'
 
