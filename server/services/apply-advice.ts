@@ -6,16 +6,17 @@ import { programmeBench, RULE_DEFAULTS } from './programming'
 
 const lengthOf = ({ embedding: { offsets } }: Bench, i: number): number => offsets[i + 1]! - offsets[i]!
 
-/** Strengths as entered, one value for all where they share it, else one for each chain of two or more qubits. */
+/** Strengths as entered: the value that most chains of two or more qubits share, and those of the others by name. */
 function asEntered(bench: Bench, strengths: Float64Array): Strength {
-  const held = strengths.filter((_, i) => lengthOf(bench, i) > 1)
-  const value = held.reduce((most, k) => Math.max(most, k), 0)
-  const perChain = Object.fromEntries(
-    bench.labels.flatMap((label, i) =>
-      lengthOf(bench, i) > 1 && strengths[i] !== value ? [[label, strengths[i]!]] : [],
-    ),
+  const times = new Map<number, number>()
+  strengths.forEach((k, i) => {
+    if (lengthOf(bench, i) > 1) times.set(k, (times.get(k) ?? 0) + 1)
+  })
+  const [value] = [...times].reduce((most, one) => (one[1] > most[1] ? one : most))
+  const own = bench.labels.flatMap((label, i) =>
+    lengthOf(bench, i) > 1 && strengths[i] !== value ? [[label, strengths[i]!]] : [],
   )
-  return { rule: 'manual', value, ...(Object.keys(perChain).length > 0 ? { perChain } : {}) }
+  return { rule: 'manual', value, ...(own.length > 0 ? { perChain: Object.fromEntries(own) } : {}) }
 }
 
 /** The same rule with another multiple; as entered where a bound would be multiplied by less than 1. */

@@ -9,6 +9,7 @@ import { priceHelp } from './price'
 import { problemHelp } from './problem'
 import { programmingHelp } from './programming'
 import { rehearsalHelp } from './rehearsal'
+import { analysisHelp } from './analysis'
 import { samplesHelp } from './samples'
 import { structureHelp } from './structure'
 
@@ -24,6 +25,7 @@ const HELP = {
   ...programmingHelp,
   ...precisionHelp,
   ...rehearsalHelp,
+  ...analysisHelp,
   ...samplesHelp,
 }
 

@@ -158,3 +158,28 @@ export const MARTONAK: Source = {
   venue: 'Phys. Rev. B 66:094203',
   year: 2002,
 }
+export const RONNOW: Source = {
+  author: 'Rønnow et al.',
+  title: 'Defining and detecting quantum speedup',
+  venue: 'Science 345:420',
+  year: 2014,
+}
+export const BESAG: Source = {
+  author: 'Besag',
+  title: 'Statistical analysis of non-lattice data',
+  venue: 'The Statistician 24:179',
+  year: 1975,
+}
+export const PEARSON: Source = {
+  author: 'Pearson',
+  title:
+    'On the criterion that a given system of deviations … can be reasonably supposed to have arisen from random sampling',
+  venue: 'Phil. Mag. 50:157',
+  year: 1900,
+}
+export const KRUSKAL_WALLIS: Source = {
+  author: 'Kruskal & Wallis',
+  title: 'Use of ranks in one-criterion variance analysis',
+  venue: 'J. Am. Stat. Assoc. 47:583',
+  year: 1952,
+}
