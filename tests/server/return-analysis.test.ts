@@ -1,4 +1,5 @@
 import { afterAll, beforeAll, describe, expect, it } from 'vitest'
+import { withAdvice } from '../../server/services/apply-advice'
 import { startEmbedding } from '../../server/services/embeddings'
 import { nextDraft } from '../../server/services/next-draft'
 import { startReference } from '../../server/services/reference-start'
@@ -161,4 +162,45 @@ describe('the analysis', () => {
     expect(() => nextDraftSchema.parse({ items: [] })).toThrow()
     expect(() => analysisQuerySchema.parse({ gap: -1 })).toThrow()
   }, 60_000)
+})
+
+describe('withAdvice', () => {
+  it('follows each action, and names chains last', async () => {
+    const row = await runSheetRow(test.app, test.actor, await prepared({ strength: { rule: 'cut', value: 1.2 } }))
+    const bench = await benchOf(test.app, test.actor, row)
+    const { settings } = row
+    expect(withAdvice(bench, settings, [{ set: 'gauges', to: 7 }])).toEqual({ ...settings, gauges: 7 })
+    expect(withAdvice(bench, settings, [{ set: 'reads', to: 900 }])).toEqual({ ...settings, reads: 900 })
+    expect(withAdvice(bench, settings, [{ set: 'interaction couplers', to: 'one' }]).interactionCouplers).toBe('one')
+    expect(withAdvice(bench, { ...settings, scale: 0.01 }, [{ set: 'scale', to: 'fit' }]).scale).toBeNull()
+    expect(withAdvice(bench, settings, [{ look: 'coefficients' }])).toEqual(settings)
+    const paused = withAdvice(bench, settings, [{ set: 'pause', s: 0.45678 }])
+    expect(paused.schedule).toHaveLength(4)
+    expect(paused.schedule![1]!.s).toBe(0.457)
+    expect(paused.annealMicroseconds).toBe(2 * settings.annealMicroseconds)
+
+    const strengthsOf = (next: typeof settings) => programmeBench(bench, next).strengths
+    const [cut, before] = [programmeBench(bench, settings).bounds.bound, strengthsOf(settings)]
+    const chain = before.findIndex((k, i) => k > 0 && cut[i]! > 0)
+    expect(withAdvice(bench, settings, [{ set: 'strength of all', factor: 1.5 }]).strength).toEqual({
+      rule: 'cut',
+      value: expect.closeTo(1.8, 12),
+    })
+    const half = withAdvice(bench, settings, [{ set: 'strength of all', factor: 0.5 }])
+    expect(half.strength.rule).toBe('manual')
+    expect(strengthsOf(half)[chain]).toBeCloseTo(before[chain]! / 2, 12)
+    const both = withAdvice(bench, settings, [
+      { set: 'strength of chains', variables: [chain], margin: 1.05 },
+      { set: 'strength of all', factor: 0.5 },
+    ])
+    expect(strengthsOf(both)[chain]).toBeCloseTo(1.05 * cut[chain]!, 12)
+  })
+
+  it('gives a chosen scale up that no longer fits', async () => {
+    const row = await runSheetRow(test.app, test.actor, await prepared({ strength: { rule: 'fixed', value: 1 } }))
+    const bench = await benchOf(test.app, test.actor, row)
+    const scale = programmeBench(bench, row.settings).result.programmed!.scale
+    const next = withAdvice(bench, { ...row.settings, scale }, [{ set: 'strength of all', factor: 2 }])
+    expect(next.scale).toBeNull()
+  })
 })

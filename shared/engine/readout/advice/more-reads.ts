@@ -1,3 +1,4 @@
+import { groupDigits } from '../../digits'
 import { DEFAULT_CONFIDENCE, readsForConfidence, successProbability } from '../intervals'
 import type { Evidence } from './evidence'
 import type { AdviceItem } from './item'
@@ -26,8 +27,8 @@ export function moreReads({ success, asked: { reads: asked } }: Evidence): Advic
       weight: weightOf('more-reads', 1 - successes / trials),
       action: { set: 'reads', to },
       sentence: isSeen
-        ? `Ask for ${to} reads in place of ${asked}. So many reach ${where} at least once with ${wanted} confidence, even at the low end of what its share may be.`
-        : `Ask for ${to} reads in place of ${asked}, at least: no read reached ${where}, and with fewer it need not be seen even if its share is at the high end of what it may be.`,
+        ? `Ask for ${groupDigits(to)} reads in place of ${groupDigits(asked)}. So many reach ${where} at least once with ${wanted} confidence, even at the low end of what its share may be.`
+        : `Ask for ${groupDigits(to)} reads in place of ${groupDigits(asked)}, at least: no read reached ${where}, and with fewer it need not be seen even if its share is at the high end of what it may be.`,
       evidence: [
         shareFigure(`reads at ${where}`, successes, trials),
         { name: `reads for ${wanted} confidence`, value: Math.ceil(needed), unit: 'count' },

@@ -123,7 +123,7 @@ const EXAMPLES: readonly (readonly [HelpRequest, number | string])[] = [
   [{ id: 'rate', given: { ...rate, rehearsal: true } }, 0.3],
   [{ id: 'bestOfDecoding', given: { best: -4.5, reads: 10, sense: 'min', rehearsal: true } }, '−4.5'],
   [{ id: 'r99', given: { p: 0.1, reads: 43.7087, rehearsal: false } }, '43.7'],
-  [{ id: 'timeToSolution', given: { reads: 50, milliseconds: 2, isMeasured: true, rehearsal: false } }, '100\u2009ms'],
+  [{ id: 'timeToSolution', given: { reads: 50, milliseconds: 2, isMeasured: true, rehearsal: false } }, '100\u202fms'],
   [{ id: 'effectiveTemperature', given: { temperature: 0.25, rows: 10, rowsInAll: 10, rehearsal: true } }, '0.25'],
   [{ id: 'gaugeTest', given: { of: 'energies', statistic: 40, degrees: 2, adjusted: 2e-9 } }, 'under 0.0001'],
   [{ id: 'scaleFall', given: { fall: 0.5, beta: 4, rehearsal: false } }, '0.5'],
