@@ -2,11 +2,11 @@ import type { Problem } from '../problem/problem'
 import type { Programmed } from '../programming/programme'
 import { createRandom, STREAMS } from '../random'
 import type { Random } from '../random'
-import type { SamplerModel } from '../sampling/physical-model'
 import { spinOf, strideOf } from '../sampling/samples'
 import type { Samples } from '../sampling/samples'
 import { forEachRowBreaks } from './breaks'
-import { flip, logicalModel, writeLocalFields } from './local-fields'
+import { Descent } from './descend'
+import { logicalModel } from './local-fields'
 
 /**
  * - majority: the sign of most qubits of a chain; a tie is settled by a coin;
@@ -38,21 +38,10 @@ export interface Decoded {
 /** Flips that gain less than this share of the largest coefficient are rounding, not gain: descent always ends. */
 const DEFAULTS = { leastGain: 1e-12 }
 
-/** Flips the spin that lowers the energy most, until none does; the lower index first among equals. */
-function descend(model: SamplerModel, spins: Int8Array, fields: Float64Array, leastGain: number): void {
-  writeLocalFields(model, spins, fields)
-  for (;;) {
-    let best = -1
-    let bestGain = leastGain
-    for (let i = 0; i < model.n; i++) {
-      const gain = spins[i]! * fields[i]!
-      if (gain <= bestGain) continue
-      best = i
-      bestGain = gain
-    }
-    if (best < 0) return
-    flip(model, spins, fields, best)
-  }
+function descentOn(ising: Problem): Descent {
+  const sizeOf = (values: Float64Array): number => values.reduce((most, v) => Math.max(most, Math.abs(v)), 0)
+  const largest = Math.max(sizeOf(ising.linear), sizeOf(ising.values))
+  return new Descent(logicalModel(ising), DEFAULTS.leastGain * largest)
 }
 
 /** Sum of the spins of each chain in one row. */
@@ -106,14 +95,12 @@ export function decode(input: DecodeInput): Decoded {
   const counts = Uint32Array.from(kept, (r) => samples.counts[r]!)
   const sums = new Int32Array(ising.n)
   const spins = new Int8Array(ising.n)
-  const fields = new Float64Array(ising.n)
-  const model = method === 'descent' ? logicalModel(ising) : null
-  const largest = [...ising.linear, ...ising.values].reduce((most, v) => Math.max(most, Math.abs(v)), 0)
+  const descent = method === 'descent' ? descentOn(ising) : null
   let ties = 0
   kept.forEach((r, row) => {
     writeChainSums(samples, r, programmed.chainOf, sums)
     ties += settle(sums, spins, () => createRandom(seed, STREAMS.coins + r)) * counts[row]!
-    if (model) descend(model, spins, fields, DEFAULTS.leastGain * largest)
+    descent?.run(spins)
     for (let i = 0; i < ising.n; i++) if (spins[i]! > 0) bytes[row * stride + (i >> 3)]! |= 1 << (i & 7)
   })
   return { states: { width: ising.n, rows: kept.length, bytes, counts }, kept, ties }

@@ -21,11 +21,3 @@ export function writeLocalFields(model: SamplerModel, spins: Int8Array, fields: 
     fields[i] = field
   }
 }
-
-/** Flips spin i and keeps the local fields true. */
-export function flip(model: SamplerModel, spins: Int8Array, fields: Float64Array, i: number): void {
-  const change = -2 * spins[i]!
-  spins[i] = -spins[i]!
-  for (let p = model.offsets[i]!; p < model.offsets[i + 1]!; p++)
-    fields[model.targets[p]!]! += change * model.weights[p]!
-}
