@@ -193,7 +193,7 @@ describe('the spins of a spectrum', () => {
     })
     const strength = { rule: 'manual', value: 3 }
     const sheet = await createRunSheet(test.app, test.actor, createRunSheetSchema.parse({ embeddingId, strength }))
-    const held = { variables: ['c'], outside: 'held' } as const
+    const held = { variables: ['c'], outside: 'held' as const }
     await expect(spinsOf(test.app, test.actor, sheet.id, held)).rejects.toThrow(/No state of this problem is known/)
 
     const rehearsal = await startRehearsal(test.app, test.actor, sheet.id, rehearseSchema.parse({ reads: 50 }))

@@ -70,6 +70,7 @@ describe('the house', () => {
       'entrance.get.ts',
       'health.get.ts',
       'schemas/problem.json.get.ts',
+      'schemas/samples.json.get.ts',
       'session.delete.ts',
       'session.post.ts',
       'setup.post.ts',

@@ -4,7 +4,6 @@ import { layOut } from './layout'
 import type { Layout, LayoutInput } from './layout'
 
 export { cutBounds } from './cut-bounds'
-export type { CutBounds } from './cut-bounds'
 
 /**
  * How chain strengths are chosen (docs/formulas.md, From embedding to programmed values):

@@ -9,7 +9,7 @@ import { readNpy } from './npy'
 import { readNpz } from './npz'
 import type { Columns, ReadSamplesOptions, RowsRead, SamplesFormat, SamplesReading } from './reading'
 
-export type { ReadSamplesOptions, SamplesFormat, SamplesIssue, SamplesReading, ValueSet } from './reading'
+export type { SamplesFormat, SamplesReading } from './reading'
 
 const DEFAULTS = { headBytes: 4096 }
 const OPENING_BRACE = 0x7b
