@@ -69,6 +69,7 @@ describe('the house', () => {
     const open = [
       'entrance.get.ts',
       'health.get.ts',
+      'answer-sheets/[token].get.ts',
       'schemas/problem.json.get.ts',
       'schemas/samples.json.get.ts',
       'session.delete.ts',

@@ -17,7 +17,7 @@ export async function prepareStates(url: string): Promise<void> {
 }
 
 export interface Running {
-  /** Addresses of pages that show it. */
+  /** Addresses of pages that show it, and of those that no page links to. */
   readonly paths: string[]
   stop(): Promise<void>
 }
@@ -45,16 +45,29 @@ export async function prepareRunning(url: string): Promise<Running> {
     202,
   )
   const jobs = [search.jobId, rehearsal.jobId]
+  const returned = sheets.items.find(({ state }) => state === 'returned')!
+  const shared = await sharedAnswer(developer, returned.id)
   return {
     paths: [
       ...[`/problems/${dense}`, `/embeddings/${search.id}`],
-      ...[`/run-sheets/${approved.id}`, `/returns/${rehearsal.returnId}`],
+      ...[`/run-sheets/${approved.id}`, `/returns/${rehearsal.returnId}`, shared],
     ],
     async stop() {
       for (const id of jobs) await developer.call('DELETE', `/api/jobs/${id}`)
       for (const id of jobs) await developer.finished(id)
     },
   }
+}
+
+/** An answer handed out behind a link, which only who holds it can find. */
+async function sharedAnswer(developer: Client, runSheetId: string): Promise<string> {
+  const { returns } = await created<{ returns: { id: string; source: string }[] }>(
+    developer.get(`/api/run-sheets/${runSheetId}`),
+    200,
+  )
+  const samples = returns.find(({ source }) => source === 'upload')!
+  const body = { remark: 'For the radio office: channel by channel.' }
+  return (await created<{ url: string }>(developer.post(`/api/returns/${samples.id}/answer-sheet`, body))).url
 }
 
 async function created<T>(answer: Promise<{ status: number; body: T; text: string }>, status = 201): Promise<T> {
