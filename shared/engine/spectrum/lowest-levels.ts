@@ -16,6 +16,15 @@ const DEFAULTS = {
   guards: 3,
   degree: 24,
   mostRounds: 60,
+  /** After the last round: levels this close together are not told apart any better, and their residual says so. */
+  lastTolerance: 1e-4,
+  /**
+   * The cut at the uppermost vector parts close levels best, but does nothing for levels that coincide on the cut itself, as
+   * they do by the dozen without couplings. A round that did not bring the residual down by `stalled` is followed by one
+   * whose cut lies `raised` of the spectrum's width higher.
+   */
+  stalled: 0.5,
+  raised: 0.02,
   /** Of a residual, against the width of the spectrum; a level errs by its square over the distance to the next. */
   tolerance: 1e-7,
   /** The first guard must lie this close to a level, or a lower one may still hide in it. */
@@ -162,15 +171,19 @@ export function lowestLevels(
   const images = block.map(() => new Float64Array(size))
   orthonormalise(block, random)
   let energies = rayleighRitz(work, block, images)
+  let before = Infinity
   for (let round = 0; ; round++) {
     const residuals = energies.map((energy, i) => residualOf(block[i]!, images[i]!, energy))
     const residual = Math.max(...residuals.subarray(0, wanted))
-    const settled = residual <= DEFAULTS.tolerance * (top - bottom)
+    const isLast = round === DEFAULTS.mostRounds
+    const settled = residual <= (isLast ? DEFAULTS.lastTolerance : DEFAULTS.tolerance) * (top - bottom)
     const guarded = width === size || residuals[wanted]! <= DEFAULTS.guardTolerance * (top - bottom)
     if (settled && guarded) return { energies: energies.slice(0, wanted), vectors: block, residual }
-    if (round === DEFAULTS.mostRounds) throw new Error(`the lowest levels did not settle in ${round} rounds`)
-    const cut = energies[width - 1]!
-    for (const x of block) filter(work, x, Math.min(cut, top - 1e-9 * (top - bottom)), energies[0]!)
+    if (isLast) throw new Error(`the lowest levels did not settle in ${round} rounds`)
+    const rise = residual > DEFAULTS.stalled * before ? DEFAULTS.raised : 0
+    before = residual
+    const cut = Math.min(energies[width - 1]! + rise * (top - bottom), top - 1e-9 * (top - bottom))
+    for (const x of block) filter(work, x, cut, energies[0]!)
     orthonormalise(block, random)
     energies = rayleighRitz(work, block, images)
   }

@@ -77,7 +77,7 @@ describe('provedInfeasible', () => {
     expect(refused).toMatchObject({ code: 'treewidth too large', available: 20 })
     expect(refused!.needed).toBeGreaterThan(20)
     expect(refused!.by).toBe(refused!.needed - 20)
-    expect(refused!.message).toContain(`at least ${refused!.needed}, the machine's at most 20: ${refused!.by} too much`)
+    expect(refused!.message).toContain(`at least ${refused!.needed}, the machine’s at most 20: ${refused!.by} too much`)
   })
 
   it('names the clique that is too large', () => {

@@ -136,3 +136,41 @@ describe('where to pause', () => {
     expect(pausePlace(gap, s, 20)).toBeNull()
   })
 })
+
+describe('levels that coincide', () => {
+  // Without a problem at s = 0 the second level of n spins is n-fold, the third n(n − 1)/2-fold.
+  const s = Array.from({ length: 21 }, (_, k) => k / 20)
+  const ideal = { s, A: s.map((at) => 8 * (1 - at) ** 2), B: s.map((at) => 10 * at) }
+
+  it.each([
+    [5, 2],
+    [6, 2],
+    [6, 4],
+    [7, 6],
+    [8, 6],
+  ])('of %i spins without couplings settle within their residual, the lowest %i', (n, levels) => {
+    const h = Array.from({ length: n }, (_, i) => 0.11 * (i + 1) * (i % 2 === 0 ? 1 : -1))
+    const found = spectrumOf(model(h, [], []), ideal, { levels, points: 13, seed: 1 }, watch)!
+    found.s.forEach((at, p) => {
+      const [A, B] = [8 * (1 - at) ** 2, 10 * at]
+      // Each spin alone: ±√(A² + B²h²)/2; A between table points is interpolated there, so only those are compared.
+      if (!s.some((point) => Math.abs(point - at) < 1e-12)) return
+      const each = h.map((field) => Math.sqrt(A * A + B * B * field * field) / 2)
+      const all = Array.from({ length: 1 << n }, (_, k) => each.reduce((sum, e, i) => sum + ((k >> i) & 1 ? e : -e), 0))
+      all.sort((x, y) => x - y)
+      for (let k = 0; k < levels; k++)
+        expect(Math.abs(found.levels[k]![p]! - all[k]!)).toBeLessThan(Math.max(1e-6, found.residual))
+    })
+  })
+
+  it.each([6, 7, 8, 9])('of %i spins with random couplings and no fields settle', (n) => {
+    const random = createRandom(n)
+    const pairs = Array.from({ length: n }, (_, i) =>
+      Array.from({ length: i }, (_unused, j): [number, number] => [j, i]),
+    ).flat()
+    const couplings = pairs.map(() => 2 * random.float() - 1)
+    const none = Array.from({ length: n }, () => 0)
+    const found = spectrumOf(model(none, pairs, couplings), ideal, { levels: 4, points: 11, seed: 1 }, watch)!
+    expect(found.residual).toBeLessThan(1e-2)
+  })
+})
