@@ -162,8 +162,8 @@ describe('what cannot be taken', () => {
       machine({ name: 'Wrong' }),
     )
     expect(status).toBe(422)
-    expect(body.data).toMatchObject({ code: 'machine.graph', issues: [{ line: 2 }, { line: 4 }] })
-    expect(body.data.message).toContain('2 things are wrong; first line 2: qubit 1 is coupled to itself')
+    expect(body.data).toMatchObject({ code: 'machine.graph', issues: [{ line: 2 }, { line: 3 }, { line: 4 }] })
+    expect(body.data.message).toContain('3 things are wrong; first line 2: qubit 1 is coupled to itself')
     const { body: list } = await steward.get<{ items: { name: string }[] }>('/api/machines')
     expect(list.items.map(({ name }) => name)).not.toContain('Wrong')
   })

@@ -167,6 +167,8 @@ describe('run sheets on a broken embedding', () => {
       verdict: 'refused',
       what: 'Calibration 2 broke the embedding: 1 qubit of it missing',
       figure: '1 of 3 chains damaged',
+      about: 'embedding',
+      at: '#origin',
     })
     await expect(hand(waiting, 'approve')).rejects.toMatchObject({ code: 'run-sheet.checks' })
 
