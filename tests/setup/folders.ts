@@ -28,7 +28,10 @@ async function prepared(env: Record<string, string>): Promise<string> {
 }
 
 async function prepare(): Promise<Folders> {
-  const [empty, seeded] = await Promise.all([prepared(SESSION), prepared({ DEMO: 'true' })])
+  const [empty, seeded] = await Promise.all([
+    prepared({ ...SESSION, PUBLIC_URL: 'http://localhost:3000' }),
+    prepared({ DEMO: 'true' }),
+  ])
   process.once('exit', () => [empty, seeded].forEach((folder) => rmSync(folder, { recursive: true, force: true })))
   return { empty, seeded }
 }
