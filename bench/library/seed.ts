@@ -13,7 +13,11 @@ export interface Running {
 }
 
 /** Starts the built server on a data folder. @throws Error when it does not become healthy */
-export async function serve(entry: string, folder: string, port: number): Promise<Running & { output(): string }> {
+export async function serve(
+  entry: string,
+  folder: string,
+  port: number,
+): Promise<Running & { output(): string; pid: number }> {
   const env = { HOST: '127.0.0.1', PORT: String(port), DATA_DIR: folder, NUXT_SESSION_PASSWORD: 'x'.repeat(40) }
   const started = startProcess(entry, env)
   const url = `http://127.0.0.1:${port}`
@@ -25,7 +29,7 @@ export async function serve(entry: string, folder: string, port: number): Promis
     )
   }
   await until(isHealthy, 300, 'a healthy server')
-  return { url, output: started.output, stop: () => started.stop() }
+  return { url, pid: started.child.pid!, output: started.output, stop: () => started.stop() }
 }
 
 /** The first account of the installation, with the code that the server prints for it. */
