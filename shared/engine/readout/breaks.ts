@@ -1,5 +1,5 @@
 import type { Programmed } from '../programming/programme'
-import { spinOf } from '../sampling/samples'
+import { unpackRow } from '../sampling/samples'
 import type { Samples } from '../sampling/samples'
 
 /** Every number is of reads: rows weighted by their counts. Only chains of two or more qubits can break. */
@@ -35,13 +35,15 @@ export function forEachRowBreaks(
     throw new RangeError(`samples of ${samples.width} qubits for a programme of ${chainOf.length}`)
   const firstSpin = new Int8Array(chainStrength.length)
   const broken = new Uint8Array(chainStrength.length)
+  const spins = new Int8Array(samples.width)
   for (let r = 0; r < samples.rows; r++) {
     firstSpin.fill(0)
     broken.fill(0)
+    unpackRow(samples, r, spins)
     let brokenCount = 0
     for (let p = 0; p < chainOf.length; p++) {
       const i = chainOf[p]!
-      const spin = spinOf(samples, r, p)
+      const spin = spins[p]!
       if (firstSpin[i] === 0) firstSpin[i] = spin
       else if (firstSpin[i] !== spin && !broken[i]) {
         broken[i] = 1
@@ -62,10 +64,15 @@ export function chainLengths({ chainOf, chainStrength }: Programmed): Uint32Arra
 function disagreements(samples: Samples, { ends, isChainCoupler }: Programmed): Uint32Array {
   const perCoupler = new Uint32Array(isChainCoupler.length)
   const chainCouplers = Uint32Array.from(isChainCoupler.keys()).filter((c) => isChainCoupler[c])
-  for (let r = 0; r < samples.rows; r++)
-    for (const c of chainCouplers)
-      if (spinOf(samples, r, ends[2 * c]!) !== spinOf(samples, r, ends[2 * c + 1]!))
-        perCoupler[c]! += samples.counts[r]!
+  const spins = new Int8Array(samples.width)
+  for (let r = 0; r < samples.rows; r++) {
+    unpackRow(samples, r, spins)
+    const count = samples.counts[r]!
+    for (let k = 0; k < chainCouplers.length; k++) {
+      const c = chainCouplers[k]!
+      if (spins[ends[2 * c]!] !== spins[ends[2 * c + 1]!]) perCoupler[c]! += count
+    }
+  }
   return perCoupler
 }
 
@@ -75,13 +82,16 @@ export function minorities(samples: Samples, programmed: Programmed): Uint32Arra
   const lengths = chainLengths(programmed)
   const breaks = new Uint32Array(chainOf.length)
   const ups = new Int32Array(chainStrength.length)
+  const spins = new Int8Array(samples.width)
   for (let r = 0; r < samples.rows; r++) {
     ups.fill(0)
-    for (let p = 0; p < chainOf.length; p++) if (spinOf(samples, r, p) > 0) ups[chainOf[p]!]!++
+    unpackRow(samples, r, spins)
+    for (let p = 0; p < chainOf.length; p++) if (spins[p]! > 0) ups[chainOf[p]!]!++
     for (let p = 0; p < chainOf.length; p++) {
-      const [up, length] = [ups[chainOf[p]!]!, lengths[chainOf[p]!]!]
+      const up = ups[chainOf[p]!]!
+      const length = lengths[chainOf[p]!]!
       if (up === 0 || up === length || 2 * up === length) continue
-      if (spinOf(samples, r, p) > 0 !== 2 * up > length) breaks[p]! += samples.counts[r]!
+      if (spins[p]! > 0 !== 2 * up > length) breaks[p]! += samples.counts[r]!
     }
   }
   return breaks

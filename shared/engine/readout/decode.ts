@@ -2,7 +2,7 @@ import type { Problem } from '../problem/problem'
 import type { Programmed } from '../programming/programme'
 import { createRandom, STREAMS } from '../random'
 import type { Random } from '../random'
-import { spinOf, strideOf } from '../sampling/samples'
+import { strideOf, unpackRow } from '../sampling/samples'
 import type { Samples } from '../sampling/samples'
 import { forEachRowBreaks } from './breaks'
 import { Descent } from './descend'
@@ -44,10 +44,10 @@ function descentOn(ising: Problem): Descent {
   return new Descent(logicalModel(ising), DEFAULTS.leastGain * largest)
 }
 
-/** Sum of the spins of each chain in one row. */
-function writeChainSums(samples: Samples, row: number, chainOf: Uint32Array, sums: Int32Array): void {
+/** Sum of the spins of each chain. */
+function writeChainSums(spins: Int8Array, chainOf: Uint32Array, sums: Int32Array): void {
   sums.fill(0)
-  for (let p = 0; p < chainOf.length; p++) sums[chainOf[p]!]! += spinOf(samples, row, p)
+  for (let p = 0; p < chainOf.length; p++) sums[chainOf[p]!]! += spins[p]!
 }
 
 /** Signs of the sums; zeros by coin, in order of variables. Returns the number of coins. */
@@ -94,11 +94,13 @@ export function decode(input: DecodeInput): Decoded {
   const bytes = new Uint8Array(kept.length * stride)
   const counts = Uint32Array.from(kept, (r) => samples.counts[r]!)
   const sums = new Int32Array(ising.n)
+  const physical = new Int8Array(samples.width)
   const spins = new Int8Array(ising.n)
   const descent = method === 'descent' ? descentOn(ising) : null
   let ties = 0
   kept.forEach((r, row) => {
-    writeChainSums(samples, r, programmed.chainOf, sums)
+    unpackRow(samples, r, physical)
+    writeChainSums(physical, programmed.chainOf, sums)
     ties += settle(sums, spins, () => createRandom(seed, STREAMS.coins + r)) * counts[row]!
     descent?.run(spins)
     for (let i = 0; i < ising.n; i++) if (spins[i]! > 0) bytes[row * stride + (i >> 3)]! |= 1 << (i & 7)

@@ -1,17 +1,20 @@
 import type { SamplerModel } from '../sampling/physical-model'
 import { writeLocalFields } from './local-fields'
 
+const ABSENT = -1
+
 /**
  * Greedy descent on one model: flips the spin that lowers the energy most, until none does; the lower index first among
- * equals. The gains stand in an indexed binary heap (Williams, Algorithm 232: Heapsort, CACM 7:347, 1964), so that a flip
- * costs O(degree · log n) in place of a look at every spin.
+ * equals. The spins that would lower it stand in an indexed binary heap (Williams, Algorithm 232: Heapsort, CACM 7:347,
+ * 1964), so that a flip costs O(degree · log candidates) in place of a look at every spin.
  */
 export class Descent {
   private readonly fields: Float64Array
   private readonly gains: Float64Array
-  /** Spins in heap order, and the place of each. */
-  private readonly heap: Uint32Array
-  private readonly place: Uint32Array
+  /** Candidates in heap order, and the place of each spin; −1 for those that are none. */
+  private readonly heap: Int32Array
+  private readonly place: Int32Array
+  private size = 0
 
   /** @param leastGain smaller gains are rounding: descent always ends */
   constructor(
@@ -20,33 +23,48 @@ export class Descent {
   ) {
     this.fields = new Float64Array(model.n)
     this.gains = new Float64Array(model.n)
-    this.heap = Uint32Array.from({ length: model.n }, (_, i) => i)
-    this.place = this.heap.slice()
+    this.heap = new Int32Array(model.n)
+    this.place = new Int32Array(model.n).fill(ABSENT)
   }
 
   /** Lowers the energy of the spins in place. */
   run(spins: Int8Array): void {
-    const { model, fields, gains, heap } = this
-    if (model.n === 0) return
-    writeLocalFields(model, spins, fields)
-    for (let i = 0; i < model.n; i++) gains[i] = spins[i]! * fields[i]!
-    for (let p = (model.n >> 1) - 1; p >= 0; p--) this.sink(p)
-    while (gains[heap[0]!]! > this.leastGain) this.flip(spins, heap[0]!)
+    writeLocalFields(this.model, spins, this.fields)
+    for (let i = 0; i < this.model.n; i++) this.update(i, spins[i]! * this.fields[i]!)
+    // A flipped spin is no candidate any more, so the heap is empty again at the end.
+    while (this.size > 0) this.flip(spins, this.heap[0]!)
   }
 
   private flip(spins: Int8Array, i: number): void {
-    const { model, fields, gains } = this
+    const { offsets, targets, weights } = this.model
     const change = -2 * spins[i]!
     spins[i] = -spins[i]!
-    gains[i] = -gains[i]!
-    this.sink(this.place[i]!)
-    for (let p = model.offsets[i]!; p < model.offsets[i + 1]!; p++) {
-      const j = model.targets[p]!
-      fields[j]! += change * model.weights[p]!
-      gains[j] = spins[j]! * fields[j]!
-      this.rise(this.place[j]!)
-      this.sink(this.place[j]!)
+    this.update(i, -this.gains[i]!)
+    for (let p = offsets[i]!; p < offsets[i + 1]!; p++) {
+      const j = targets[p]!
+      const field = this.fields[j]! + change * weights[p]!
+      this.fields[j] = field
+      this.update(j, spins[j]! * field)
     }
+  }
+
+  /** Puts a spin where its gain belongs: into the heap, elsewhere in it, or out of it. */
+  private update(i: number, gain: number): void {
+    this.gains[i] = gain
+    const at = this.place[i]!
+    if (gain > this.leastGain) {
+      if (at === ABSENT) this.rise(i, this.size++)
+      else this.settle(i, at)
+    } else if (at !== ABSENT) {
+      this.place[i] = ABSENT
+      const last = this.heap[--this.size]!
+      if (at < this.size) this.settle(last, at)
+    }
+  }
+
+  private settle(i: number, at: number): void {
+    if (at > 0 && this.isBefore(i, this.heap[(at - 1) >> 1]!)) this.rise(i, at)
+    else this.sink(i, at)
   }
 
   private isBefore(i: number, j: number): boolean {
@@ -59,8 +77,7 @@ export class Descent {
     this.place[i] = at
   }
 
-  private rise(from: number): void {
-    const i = this.heap[from]!
+  private rise(i: number, from: number): void {
     let at = from
     while (at > 0) {
       const above = (at - 1) >> 1
@@ -71,12 +88,11 @@ export class Descent {
     this.put(i, at)
   }
 
-  private sink(from: number): void {
-    const { heap } = this
-    const i = heap[from]!
+  private sink(i: number, from: number): void {
+    const { heap, size } = this
     let at = from
-    for (let child = 2 * at + 1; child < heap.length; child = 2 * at + 1) {
-      if (child + 1 < heap.length && this.isBefore(heap[child + 1]!, heap[child]!)) child++
+    for (let child = 2 * at + 1; child < size; child = 2 * at + 1) {
+      if (child + 1 < size && this.isBefore(heap[child + 1]!, heap[child]!)) child++
       if (!this.isBefore(heap[child]!, i)) break
       this.put(heap[child]!, at)
       at = child

@@ -1,12 +1,8 @@
 import type { Problem } from '../problem/problem'
 import type { CouplingList } from '../sampling/physical-model'
 import { firstEqualRows } from '../sampling/merge'
-import { spinOf, strideOf } from '../sampling/samples'
+import { strideOf, unpackRow } from '../sampling/samples'
 import type { Samples } from '../sampling/samples'
-
-function unpackRow(samples: Samples, row: number, spins: Int8Array): void {
-  for (let c = 0; c < spins.length; c++) spins[c] = spinOf(samples, row, c)
-}
 
 function requireWidth(samples: Samples, n: number): void {
   if (samples.width !== n) throw new RangeError(`states of ${samples.width} spins for a problem of ${n}`)
