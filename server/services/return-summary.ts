@@ -85,9 +85,22 @@ function unpackSummary(packed: Uint8Array): Summary {
 export const decodedBy = ({ decoded }: Summary, method: DecodeMethod): DecodedRows =>
   decoded.find((rows) => rows.method === method)!
 
+/** Sums samples up, over the threads. */
+async function summarise(app: App, input: SummariseInput): Promise<Summary> {
+  const { samples, programmed } = input
+  // The longest first: descent takes more than all the others together.
+  const [descent, majority, discard, counted] = await Promise.all([
+    app.compute.run('decodeRows', { ...input, method: 'descent' }),
+    app.compute.run('decodeRows', { ...input, method: 'majority' }),
+    app.compute.run('decodeRows', { ...input, method: 'discard' }),
+    app.compute.run('countBreaks', { samples, programmed }),
+  ])
+  return { ...counted, decoded: [majority, discard, descent] }
+}
+
 /** Sums samples up and writes what came of it, for the return that they become. */
 export async function writeSummary(app: App, input: SummariseInput, sense: 'min' | 'max'): Promise<WrittenSummary> {
-  const summary = await app.compute.run('summarise', input)
+  const summary = await summarise(app, input)
   const best = decodedBy(summary, 'majority').energies.reduce((least, energy) => Math.min(least, energy), Infinity)
   return {
     blobId: await app.blobs.write(packSummary(summary)),
@@ -103,7 +116,7 @@ export async function summaryOf(
 ): Promise<Summary> {
   if (row.summaryBlobId) return unpackSummary(await app.blobs.read(row.summaryBlobId))
   const samples = unpackSamples(await app.blobs.read(row.samplesBlobId!))
-  const summary = await app.compute.run('summarise', { ...input, samples, seed: row.settings.seed })
+  const summary = await summarise(app, { ...input, samples, seed: row.settings.seed })
   const blobId = await app.blobs.write(packSummary(summary))
   await app.db.transaction(async (tx: Db) => {
     if (await keepSummary(tx, row.id, blobId)) await app.blobs.adopt(tx, blobId)

@@ -29,7 +29,7 @@ import { solveProgramme } from './tasks/solve-programme'
 import { solveQuickParts } from './tasks/solve-quick-parts'
 import { sparsity } from './tasks/sparsity'
 import { structureDetails } from './tasks/structure-details'
-import { summarise } from './tasks/summarise'
+import { countBreaks, decodeRows } from './tasks/summarise'
 import { writeBundle } from './tasks/write-bundle'
 import { writeMachineGraph } from './tasks/write-graph'
 import { writeProblemFile } from './tasks/write-problem'
@@ -69,7 +69,8 @@ export const TASKS = {
   solveQuickParts,
   sparsity,
   structureDetails,
-  summarise,
+  countBreaks,
+  decodeRows,
   writeBundle,
   writeMachineGraph,
   writeProblemFile,

@@ -8,8 +8,6 @@ import { decode } from '../../../shared/engine/readout/decode'
 import { logicalEnergies, physicalEnergies } from '../../../shared/engine/readout/energies'
 import type { Samples } from '../../../shared/engine/sampling/samples'
 
-export const DECODE_METHODS: readonly DecodeMethod[] = ['majority', 'discard', 'descent']
-
 export interface SummariseInput {
   samples: Samples
   programmed: Programmed
@@ -29,6 +27,7 @@ export interface DecodedRows {
   energies: Float64Array
 }
 
+/** What a set of samples holds. */
 export interface Summary {
   breaks: BreakStatistics
   /** Of each row of the samples, in programmed units. */
@@ -36,14 +35,20 @@ export interface Summary {
   decoded: DecodedRows[]
 }
 
-/** What a set of samples holds: breaks, energies, and the rows decoded in every way. */
-export function summarise({ samples, programmed, ising, seed }: SummariseInput, _control: Control<never>): Summary {
-  return {
-    breaks: breakStatistics({ samples, programmed }),
-    physical: physicalEnergies(programmed, samples),
-    decoded: DECODE_METHODS.map((method) => {
-      const decoded = decode({ samples, programmed, method, seed, ising })
-      return { method, ...decoded, energies: logicalEnergies(ising, decoded.states) }
-    }),
-  }
+/** Where chains broke, and the energies of the rows as they are. */
+export const countBreaks = (
+  { samples, programmed }: Pick<SummariseInput, 'samples' | 'programmed'>,
+  _control: Control<never>,
+): Pick<Summary, 'breaks' | 'physical'> => ({
+  breaks: breakStatistics({ samples, programmed }),
+  physical: physicalEnergies(programmed, samples),
+})
+
+/** The rows decoded in one way. */
+export function decodeRows(
+  { samples, programmed, ising, seed, method }: SummariseInput & { method: DecodeMethod },
+  _control: Control<never>,
+): DecodedRows {
+  const decoded = decode({ samples, programmed, method, seed, ising })
+  return { method, ...decoded, energies: logicalEnergies(ising, decoded.states) }
 }

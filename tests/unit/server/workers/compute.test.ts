@@ -32,7 +32,7 @@ test('what a person waits for does not queue behind the tries and rehearsals tha
     run('runTry', {} as never, { signal: cancel.signal }),
     run('rehearse', {} as never, { signal: cancel.signal }),
   ]
-  expect(await run('summarise', { seed: 7 } as never)).toEqual({ name: 'summarise', input: { seed: 7 } })
+  expect(await run('countBreaks', { seed: 7 } as never)).toEqual({ name: 'countBreaks', input: { seed: 7 } })
   cancel.abort()
   expect(await Promise.all(long)).toHaveLength(2)
 })
