@@ -1,3 +1,4 @@
+import { csvCell } from './csv'
 import { largestChange } from './engine/machine/energy-change'
 import type { LargestChange } from './engine/machine/energy-change'
 import type { MachineSheet } from './schemas/machines'
@@ -136,7 +137,6 @@ export function sheetDifference(before: MachineSheet, now: MachineSheet): SheetD
   }
 }
 
-const csvCell = (value: string): string => (/[",\n]/.test(value) ? `"${value.replaceAll('"', '""')}"` : value)
 const csvValue = (value: FigureValue, none: string): string =>
   Array.isArray(value) ? value.join(' to ') : value === null ? none : String(value)
 

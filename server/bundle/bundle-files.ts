@@ -1,3 +1,4 @@
+import { csvCell } from '../../shared/csv'
 import { straightSchedule } from '../../shared/engine/programming/schedule'
 import { gaugesCsv } from './gauges-text'
 import type { BundleInput } from './input'
@@ -8,7 +9,6 @@ const json = (value: unknown): string => `${JSON.stringify(value, null, 2)}\n`
 /** Long lists a line each, without the line a number that indented JSON takes. */
 const jsonLines = (items: readonly unknown[]): string =>
   `[\n${items.map((item) => JSON.stringify(item)).join(',\n')}\n]`
-const csvCell = (text: string): string => (/[",\r\n]/.test(text) ? `"${text.replaceAll('"', '""')}"` : text)
 
 function mapBackCsv({ labels, chains }: BundleInput): string {
   const lines = labels.flatMap((label, i) => chains[i]!.map((qubit) => `${csvCell(label)},${qubit}\n`))

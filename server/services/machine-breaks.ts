@@ -8,7 +8,7 @@ import type { CalibratedMachine } from './machine-graphs'
 import { calibratedMachine } from './machine-graphs'
 import { loadBench, programmeBench, requireProgrammed } from './programming'
 import { proportion } from './proportion'
-import { unpackSamples } from './samples-data'
+import { summaryOf } from './return-summary'
 
 /** Returns that are summed up, the newest. */
 const MOST_RETURNS = 500
@@ -19,8 +19,8 @@ type ReturnAt = Awaited<ReturnType<typeof returnsAt>>[number]
 async function countedBreaks(app: App, { row, embedding }: ReturnAt): Promise<PartBreaks> {
   const bench = await loadBench(app, embedding)
   const programmed = requireProgrammed(programmeBench(bench, row.settings))
-  const samples = unpackSamples(await app.blobs.read(row.samplesBlobId!))
-  const breaks = await app.compute.run('countPartBreaks', { samples, programmed })
+  const summary = await summaryOf(app, row, { programmed, ising: bench.ising })
+  const breaks = await app.compute.run('countPartBreaks', { breaks: summary.breaks, programmed })
   const blobId = await app.blobs.write(packBreaks(breaks, bench.machine.fabric.ids))
   await app.db.transaction(async (tx) => {
     if (await keepBreaks(tx, row.id, blobId)) await app.blobs.adopt(tx, blobId)

@@ -1,17 +1,14 @@
-import { randomUUID } from 'node:crypto'
 import { chainsBelow } from '../../shared/engine/programming/strength-effects'
 import { DomainError } from '../../shared/errors'
 import type { DraftChange, NextDraft, NextDraftView } from '../../shared/schemas/return-analysis'
 import type { RunSheetSettings } from '../../shared/schemas/run-sheets'
 import type { Actor, App } from '../app'
-import { nextNumber } from '../database/repositories/counters'
-import { insertRunSheet } from '../database/repositories/run-sheets'
 import { withAdvice } from './apply-advice'
 import type { Bench } from './programming'
 import { programmeBench, requireProgrammed } from './programming'
 import { analysed } from './return-analysis'
 import { estimate } from './run-sheet-time'
-import { runSheetRow } from './run-sheets'
+import { insertDraft, runSheetRow } from './run-sheets'
 
 const figure = (value: number): string => String(Number(value.toPrecision(4)))
 const ruleText = ({ strength: { rule, value, perChain } }: RunSheetSettings): string => {
@@ -88,25 +85,7 @@ export async function nextDraft(app: App, actor: Actor, id: string, request: Nex
   const changes = changesBetween(bench, row.settings, settings)
   const madeFrom = { id: sheet.id, number: sheet.number }
   if (request.dryRun) return { id: null, number: null, madeFrom, changes }
-  const draftId = randomUUID()
-  const now = app.now()
-  const number = await app.db.transaction(async (tx) => {
-    const number = await nextNumber(tx, actor.workspaceId, 'run sheet')
-    await insertRunSheet(tx, {
-      id: draftId,
-      workspaceId: actor.workspaceId,
-      embeddingId: row.embeddingId,
-      number,
-      name: sheet.name,
-      state: 'draft',
-      settings,
-      machineTimeMilliseconds: estimate(bench, settings).totalMicroseconds / 1000,
-      preparedBy: actor.userId,
-      madeFromId: sheet.id,
-      createdAt: now,
-      changedAt: now,
-    })
-    return number
-  })
-  return { id: draftId, number, madeFrom, changes }
+  const draft = { bench, name: sheet.name, settings, madeFromId: sheet.id }
+  const made = await app.db.transaction((tx) => insertDraft(app, tx, actor, draft))
+  return { ...made, madeFrom, changes }
 }

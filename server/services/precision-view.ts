@@ -1,3 +1,4 @@
+import { csvCell } from '../../shared/csv'
 import { drownedCoefficients, countDrowned, sharesOf } from '../../shared/engine/programming/coefficients'
 import type { ScaledCoefficient, Shares } from '../../shared/engine/programming/coefficients'
 import type { Programmed } from '../../shared/engine/programming/programme'
@@ -88,15 +89,13 @@ export async function precisionView(app: App, actor: Actor, id: string): Promise
   }
 }
 
-const cell = (text: string): string => (/[",\r\n]/.test(text) ? `"${text.replaceAll('"', '""')}"` : text)
-
 /** All coefficients that drown, as CSV: the most drowned first. */
 export async function drownedFile(app: App, actor: Actor, id: string): Promise<{ fileName: string; text: string }> {
   const { number, bench, programmed } = await load(app, actor, id)
   const shares = sharesOf(programmed, bench.ising)
   const lines = drownedCoefficients(bench.ising, programmed.scale, controlErrorOf(bench)).map((coefficient) => {
     const { of, value, size, perSigma, parts } = drownedView(bench, coefficient, shares)
-    return `${[coefficient.kind, cell(of[0]!), cell(of[1] ?? ''), value, size, perSigma, parts].join(',')}\n`
+    return `${[coefficient.kind, csvCell(of[0]!), csvCell(of[1] ?? ''), value, size, perSigma, parts].join(',')}\n`
   })
   const head = 'kind,variable,other variable,value,scaled size,scaled size over sigma,parts\n'
   return { fileName: `RS-${number}-under-2-sigma.csv`, text: head + lines.join('') }

@@ -1,3 +1,4 @@
+import { csvCell } from '../../shared/csv'
 import { determinedValues, OPEN } from '../../shared/engine/problem/presolve/determined'
 import { NONE, RULES } from '../../shared/engine/problem/presolve/record'
 import { DomainError } from '../../shared/errors'
@@ -102,8 +103,6 @@ export async function presolveState(app: App, actor: Actor, id: string, version?
   return result ? { state: 'done', summary: summaryOf(row, result) } : { state: 'not run' }
 }
 
-const cell = (text: string): string => (/[",\n\r]/.test(text) ? `"${text.replaceAll('"', '""')}"` : text)
-
 /** All variables taken out, one a line, in the order in which they were; the quantities are explained in the docs. */
 export async function presolveFile(
   app: App,
@@ -119,11 +118,11 @@ export async function presolveFile(
   const lines = removed.map(({ order, label, rule, value, partners, table, quantities }) =>
     [
       order,
-      cell(label),
+      csvCell(label),
       rule,
       value ?? '',
-      cell(partners[0] ?? ''),
-      cell(partners[1] ?? ''),
+      csvCell(partners[0] ?? ''),
+      csvCell(partners[1] ?? ''),
       table.join(' '),
       ...quantities,
     ].join(','),

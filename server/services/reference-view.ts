@@ -1,3 +1,4 @@
+import { csvCell } from '../../shared/csv'
 import { DomainError } from '../../shared/errors'
 import type { ReferenceItem, ReferencePart, ReferenceStatus, ReferenceView } from '../../shared/schemas/reference'
 import { optimumMethodSchema } from '../../shared/schemas/reference'
@@ -135,8 +136,7 @@ export async function referenceFile(
   version?: number,
 ): Promise<{ fileName: string; text: string }> {
   const { problem, labels, form, values } = await loadBest(app, actor, problemId, version)
-  const cell = (text: string): string => (/[",\r\n]/.test(text) ? `"${text.replaceAll('"', '""')}"` : text)
-  const lines = labels.map((label, i) => `${cell(label)},${values[i]}`)
+  const lines = labels.map((label, i) => `${csvCell(label)},${values[i]}`)
   const text = [`variable,${form === 'qubo' ? 'x' : 's'}`, ...lines, ''].join('\n')
   return { fileName: `P-${problem.number}-optimum.csv`, text }
 }

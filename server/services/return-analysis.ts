@@ -1,5 +1,4 @@
 import { thermalGigahertz } from '../../shared/engine/machine/energy-units'
-import { enumerationTolerance } from '../../shared/engine/problem/optimum/enumerate-slice'
 import { isStraight } from '../../shared/engine/programming/schedule'
 import { adviceFor } from '../../shared/engine/readout/advice/advise'
 import type { AdviceItem } from '../../shared/engine/readout/advice/item'
@@ -15,9 +14,9 @@ import type {
   TemperatureView,
 } from '../../shared/schemas/return-analysis'
 import type { Actor, App } from '../app'
-import { bestReference } from '../database/repositories/reference-optima'
 import type { ReturnRow } from '../database/repositories/run-sheets'
 import type { AnalyseInput, Analysis } from '../workers/tasks/analyse'
+import { knownOptimum } from './known-optimum'
 import { loadReturn, readyRow } from './loaded-return'
 import type { LoadedReturn } from './loaded-return'
 import type { Bench } from './programming'
@@ -61,9 +60,7 @@ export async function analysed(
   const loaded = await loadReturn(app, actor, row)
   const { bench, programming, programmed, summary } = loaded
   const { ising, problem } = bench
-  const known = await bestReference(app.db, problem.id, problem.version)
-  const reference = known ? { energy: known.energy!, proved: known.proved } : null
-  const tolerance = enumerationTolerance(ising) + Number(known?.detail.tolerance ?? 0)
+  const reference = await knownOptimum(app, bench)
   const groups = problem.groups ?? []
   const run = async (): Promise<Analysis> =>
     app.compute.run('analyse', {
@@ -75,7 +72,7 @@ export async function analysed(
       ising,
       bounds: programming.bounds.bound,
       seed: row.settings.seed,
-      reference: reference && { energy: reference.energy, gap, tolerance },
+      reference: reference && { energy: reference.energy, gap, tolerance: reference.tolerance },
       groups,
       greatestScale: scaleRoom(bench, programming).greatest,
       pause: pauseInput(bench, row),

@@ -1,7 +1,6 @@
-import { enumerationTolerance } from '../../shared/engine/problem/optimum/enumerate-slice'
 import type { ReferenceOfSamples } from '../../shared/schemas/reference'
 import type { App } from '../app'
-import { bestReference } from '../database/repositories/reference-optima'
+import { knownOptimum } from './known-optimum'
 import type { Bench } from './programming'
 import type { Weighted } from './return-energies'
 import { proportion } from './proportion'
@@ -13,21 +12,20 @@ import { signed, signOf } from './sense'
  */
 export async function referenceOfSamples(
   app: App,
-  { problem, ising }: Pick<Bench, 'problem' | 'ising'>,
+  bench: Pick<Bench, 'problem' | 'ising'>,
   { energies, counts }: Weighted,
 ): Promise<ReferenceOfSamples | null> {
-  const row = await bestReference(app.db, problem.id, problem.version)
-  if (!row) return null
-  const reference = row.energy!
-  const tolerance = enumerationTolerance(ising) + Number(row.detail.tolerance ?? 0)
+  const known = await knownOptimum(app, bench)
+  if (!known) return null
+  const { energy: reference, proved, method, tolerance } = known
   const total = counts.reduce((sum, count) => sum + count, 0)
   const hits = counts.reduce((sum, count, k) => sum + (energies[k]! <= reference + tolerance ? count : 0), 0)
   const best = energies.reduce((least, energy) => Math.min(least, energy), Infinity)
   const gap = Math.abs(best - reference) <= tolerance ? 0 : best - reference
   return {
-    energy: signed(signOf(problem.sense), reference),
-    proved: row.proved,
-    method: row.method ?? '',
+    energy: signed(signOf(bench.problem.sense), reference),
+    proved,
+    method,
     gap: total > 0 ? gap : null,
     success: proportion(hits, total),
   }

@@ -1,3 +1,4 @@
+import { csvCell } from '../../shared/csv'
 import { writeBytes } from '../../shared/engine/formats/npy-array'
 import { DomainError } from '../../shared/errors'
 import type { Decoding, LiftedSolution, SolutionRow, SolutionView } from '../../shared/schemas/returns'
@@ -106,8 +107,7 @@ export function solutionsNpy(rows: readonly SolutionRow[]): Uint8Array {
 /** One line per assignment: energy, count, distance, then a column for each variable. */
 export function solutionsCsv(rows: readonly SolutionRow[]): string {
   const labels = Object.keys(rows[0]?.assignment ?? {})
-  const cell = (text: string): string => (/[",\n]/.test(text) ? `"${text.replaceAll('"', '""')}"` : text)
-  const head = ['energy', 'count', 'distance', ...labels.map(cell)].join(',')
+  const head = ['energy', 'count', 'distance', ...labels.map(csvCell)].join(',')
   const lines = rows.map(({ energy, count, distance, assignment }) =>
     [energy, count, distance, ...labels.map((label) => assignment[label])].join(','),
   )

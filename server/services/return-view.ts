@@ -3,9 +3,11 @@ import type { Decoding, ReturnView } from '../../shared/schemas/returns'
 import type { Actor, App } from '../app'
 import { findJobOfSubject } from '../database/repositories/jobs'
 import { personOf } from '../database/repositories/problems'
+import type { ReturnRow, RunSheetRow } from '../database/repositories/run-sheets'
 import { liftedSolutions } from './lifted-solutions'
 import { loadReturn } from './loaded-return'
 import { standingOf } from './problem-difference'
+import type { Bench } from './programming'
 import { breaksView } from './return-breaks'
 import { decodingRow, energiesView, weighted } from './return-energies'
 import { referenceOfSamples } from './return-reference'
@@ -32,26 +34,17 @@ const NOTHING_YET = {
   violations: null,
 } satisfies Partial<ReturnView>
 
-/** What the samples say, decoded one way, with the other ways beside it. */
-export async function returnView(
+/** Which samples these are, and of what: all that is known of them whether they are there or not. */
+export async function aboutReturn(
   app: App,
-  actor: Actor,
-  id: string,
-  decode: Decoding,
-  feasibleOnly: boolean,
-): Promise<ReturnView> {
-  const row = await returnRow(app, actor, id)
-  const sheet = await runSheetRow(app, actor, row.runSheetId)
-  const bench = await benchOf(app, actor, row)
-  const { problem, machine } = bench
-  const job = await findJobOfSubject(app.db, id)
-  const base: Omit<ReturnView, keyof typeof NOTHING_YET> = {
-    id,
+  row: ReturnRow,
+  sheet: RunSheetRow,
+  { problem, row: embedding, machine }: Bench,
+) {
+  return {
+    id: row.id,
     number: row.number,
     source: row.source,
-    status: row.status,
-    jobId: job?.id ?? null,
-    reason: row.reason,
     runSheet: { id: sheet.id, number: sheet.number, name: sheet.name, state: sheet.state },
     problem: {
       id: problem.id,
@@ -62,19 +55,39 @@ export async function returnView(
       sense: problem.sense,
     },
     ofVersion: await standingOf(app, problem),
-    embedding: { id: bench.row.id, number: bench.row.number },
+    embedding: { id: embedding.id, number: embedding.number },
     machine: { id: machine.machine.id, name: machine.machine.name, calibration: machine.calibration.number },
     made: row.made,
-    seconds: row.seconds,
     version: row.version,
     reads: row.reads,
+    createdAt: row.createdAt.toISOString(),
+  }
+}
+
+/** What the samples say, decoded one way, with the other ways beside it. */
+export async function returnView(
+  app: App,
+  actor: Actor,
+  id: string,
+  decode: Decoding,
+  feasibleOnly: boolean,
+): Promise<ReturnView> {
+  const row = await returnRow(app, actor, id)
+  const sheet = await runSheetRow(app, actor, row.runSheetId)
+  const loaded = row.status === 'ready' ? await loadReturn(app, actor, row) : null
+  const bench = loaded?.bench ?? (await benchOf(app, actor, row))
+  const job = await findJobOfSubject(app.db, id)
+  const base: Omit<ReturnView, keyof typeof NOTHING_YET> = {
+    ...(await aboutReturn(app, row, sheet, bench)),
+    status: row.status,
+    jobId: job?.id ?? null,
+    reason: row.reason,
+    seconds: row.seconds,
     decode,
     feasibleOnly,
     createdBy: await personOf(app.db, row.createdBy),
-    createdAt: row.createdAt.toISOString(),
   }
-  if (row.status !== 'ready') return { ...base, ...NOTHING_YET }
-  const loaded = await loadReturn(app, actor, row)
+  if (!loaded) return { ...base, ...NOTHING_YET }
   const shown = decodedBy(loaded.summary, decode)
   const listed = await listedSolutions(app, bench, shown, { limit: SHOWN_SOLUTIONS, feasibleOnly })
   const lifted = await liftedSolutions(app, bench, listed.solutions)
@@ -90,6 +103,6 @@ export async function returnView(
     distinct: listed.distinct,
     physicalEnergies: histogram(loaded.summary.physical, PHYSICAL_BINS),
     reference: await referenceOfSamples(app, bench, weighted(shown)),
-    violations: violationsView(problem.groups, listed),
+    violations: violationsView(bench.problem.groups, listed),
   }
 }

@@ -57,7 +57,7 @@ export interface AnswerView {
   /** Chain reads and reads with a break, which say how well the chains held. */
   readsWithBreak: NonNullable<ReturnView['breaks']>['readsWithBreak']
   made: ReturnView['made']
-  runSheet: { number: number; name: string; fingerprint: string | null; reviewedBy: string | null }
+  runSheet: Pick<ReturnView['runSheet'], 'number' | 'name'> & { fingerprint: string | null; reviewedBy: string | null }
   machine: ReturnView['machine']
   embedding: { number: number }
   number: number

@@ -10,7 +10,10 @@ import { uploadProblem } from '../../server/services/problem-upload'
 import { coefficientsOf, packRecord } from '../../server/services/reduction-record'
 import { startRehearsal } from '../../server/services/rehearsals'
 import { inOriginal, solutionsCsv, solutionsOf } from '../../server/services/return-solutions'
+import { answerView } from '../../server/services/answer-view'
+import { putGroups } from '../../server/services/problem-groups'
 import { returnView } from '../../server/services/return-view'
+import { saveGroupsSchema } from '../../shared/schemas/groups'
 import { createRunSheet } from '../../server/services/run-sheets'
 import { reductionLinks, saveReduced } from '../../server/services/reductions'
 import { packSteps, TABLES } from '../../shared/engine/problem/presolve/record'
@@ -220,6 +223,16 @@ describe('pre-solve', () => {
       expect(lifted).toMatchObject({ energy, isEqual: true })
       expect(energies[k]).toBe(energy)
     })
+    // An answer sheet holds lifted assignments against the groups of the original, variables taken out included.
+    const labels = Object.keys(view.solutions[0]!.lifted!.assignment)
+    const groups = [{ name: 'all', kind: 'at most', k: 1, members: labels }]
+    await putGroups(app, actor, id, saveGroupsSchema.parse({ groups }))
+    const answer = await answerView(app, actor, run.returnId, { decode: 'majority', assignments: 2 })
+    const atOne = answer.assignments.map(({ assignment }) => labels.filter((label) => assignment[label] === 1).length)
+    expect(answer.groups).toEqual([
+      { name: 'all', kind: 'at most', k: 1, members: 39, atOne, kept: atOne.map((count) => count <= 1) },
+    ])
+    expect(answer.assignments[0]!.broken).toEqual(atOne[0]! > 1 ? ['all'] : [])
     const rows = await solutionsOf(app, actor, run.returnId, { decode: 'majority', limit: 3, feasibleOnly: false })
     const [head, first] = solutionsCsv(inOriginal(rows)).split('\n')
     expect(head!.split(',')).toEqual(['energy', 'count', 'distance', ...Object.keys(rows[0]!.lifted!.assignment)])

@@ -1,3 +1,4 @@
+import { csvCell } from '#shared/csv'
 import type { GroupsView, GroupView, PenaltyView, SaveGroups } from '#shared/schemas/groups'
 import { formatCount, formatNumber } from '../format'
 import type { HelpCase } from '../help/registry'
@@ -135,9 +136,8 @@ export const requestOf = (groups: readonly DraftGroup[], version: number): SaveG
 
 /** One line a member: group, kind, k, label. */
 export function groupsCsv(groups: readonly DraftGroup[]): string {
-  const cell = (text: string): string => (/[",\n]/.test(text) ? `"${text.replaceAll('"', '""')}"` : text)
   const lines = groups.flatMap(({ name, kind, k, members }) =>
-    members.map((label) => [cell(name), kind, k, cell(label)].join(',')),
+    members.map((label) => [csvCell(name), kind, k, csvCell(label)].join(',')),
   )
   return ['group,kind,k,variable', ...lines, ''].join('\n')
 }

@@ -1,3 +1,4 @@
+import { csvCell } from '#shared/csv'
 import type { ChainRow } from '#shared/schemas/run-sheets'
 import type { Sort } from '../ui/parts'
 import type { StrengthDraft } from './draft'
@@ -69,13 +70,11 @@ export function filteredLines(
   return lines.filter((line) => line.label.toLowerCase().includes(sought) && meets[shown](line))
 }
 
-const quoted = (text: string): string => (/[",\r\n]/.test(text) ? `"${text.replaceAll('"', '""')}"` : text)
-
 /** The lines as a file. Chains of one qubit have neither strength nor bound. */
 export function linesCsv(lines: readonly ChainLine[]): string {
   const rows = lines.map((line) => {
     const figures = isBreakable(line) ? [line.strength, line.cutBound, line.cutBoundExact] : ['', '', '']
-    return `${[quoted(line.label), line.qubits, line.couplers, ...figures].join(',')}\n`
+    return `${[csvCell(line.label), line.qubits, line.couplers, ...figures].join(',')}\n`
   })
   return `variable,qubits,couplers to others,k,cut bound,bound exact\n${rows.join('')}`
 }

@@ -1,13 +1,12 @@
 import { groupDigits } from '../../../shared/engine/digits'
-import { enumerationTolerance } from '../../../shared/engine/problem/optimum/enumerate-slice'
 import { ANNEAL_DEFAULTS } from '../../../shared/engine/sampling/annealing-schedule'
 import { Z_95 } from '../../../shared/engine/readout/intervals'
 import type { ScanPoint } from '../../../shared/schemas/scans'
 import type { App } from '../../app'
 import { findEmbeddingOfJob } from '../../database/repositories/embeddings'
-import { bestReference } from '../../database/repositories/reference-optima'
 import type { ScanRow } from '../../database/repositories/scans'
 import { findScanOfJob, updateScan } from '../../database/repositories/scans'
+import { knownOptimum } from '../../services/known-optimum'
 import type { Bench } from '../../services/programming'
 import { loadBench, programmeBench, requireProgrammed } from '../../services/programming'
 import { proportion } from '../../services/proportion'
@@ -47,9 +46,9 @@ export const scanJob: JobKindHandler = {
 }
 
 /** Energies up to this one are the reference optimum of the version that is programmed. */
-async function referenceOf(app: App, { problem, ising }: Bench): Promise<number | null> {
-  const reference = await bestReference(app.db, problem.id, problem.version)
-  return reference ? reference.energy! + enumerationTolerance(ising) + Number(reference.detail.tolerance ?? 0) : null
+async function referenceOf(app: App, bench: Bench): Promise<number | null> {
+  const known = await knownOptimum(app, bench)
+  return known && known.energy + known.tolerance
 }
 
 async function measure(app: App, context: JobContext, row: ScanRow, bench: Bench): Promise<ScanPoint[]> {

@@ -4,13 +4,13 @@ import type { BreaksOnMachine, JudgedMachine } from '../../../shared/engine/read
 import { judgeMachine } from '../../../shared/engine/readout/judge-machine'
 import type { PartBreaks } from '../../../shared/engine/readout/part-breaks'
 import { partBreaks } from '../../../shared/engine/readout/part-breaks'
-import type { Samples } from '../../../shared/engine/sampling/samples'
+import type { BreakStatistics } from '../../../shared/engine/readout/breaks'
 
 /** Breaks of one set of samples by qubit and coupler. */
 export const countPartBreaks = (
-  { samples, programmed }: { samples: Samples; programmed: Programmed },
+  { breaks, programmed }: { breaks: BreakStatistics; programmed: Programmed },
   _control: Control<never>,
-): PartBreaks => partBreaks(samples, programmed)
+): PartBreaks => partBreaks(breaks, programmed)
 
 /** Breaks of several returns together, each part beside its neighbours. */
 export const judgeBreaks = (input: BreaksOnMachine, _control: Control<never>): JudgedMachine => judgeMachine(input)

@@ -3,6 +3,7 @@ import type { Directives } from './directives'
 import { Entries } from './entries'
 import type { ReadingIssue } from './format'
 import { JSON_KIND, JSON_VERSION } from './json-kind'
+import { shownJson } from './json-text'
 import { labelClashes, labelFault, numericRanks } from './labels'
 import { LIMITS } from './numbers'
 
@@ -19,22 +20,16 @@ const MEMBERS = [
   'interactions',
 ]
 const WORDS = { form: ['qubo', 'ising'], sense: ['min', 'max'], convention: ['plus', 'minus'] } as const
-const DEFAULTS = { maxIssues: 20, shownLength: 40 }
+const DEFAULTS = { maxIssues: 20 }
 
 type Members = Readonly<Record<string, unknown>>
 
 const isObject = (value: unknown): value is Members =>
   typeof value === 'object' && value !== null && !Array.isArray(value)
 
-/** A value as it stands in the file, cut to a readable length. */
-function shown(value: unknown): string {
-  const text = JSON.stringify(value) ?? 'nothing'
-  return text.length > DEFAULTS.shownLength ? `${text.slice(0, DEFAULTS.shownLength)}…` : text
-}
-
 /** Why a value can be no coefficient, or null. */
 function numberFault(value: unknown): string | null {
-  if (typeof value !== 'number') return `${shown(value)} is not a number`
+  if (typeof value !== 'number') return `${shownJson(value)} is not a number`
   const size = Math.abs(value)
   if (size > LIMITS.greatest) return `the value is too large`
   return size > 0 && size < LIMITS.least ? `${value} is too close to zero` : null
@@ -62,7 +57,7 @@ export class DocumentReader {
 
   read(): void {
     const { document } = this
-    if (!isObject(document)) return this.fault('', `${shown(document)} is not an object`)
+    if (!isObject(document)) return this.fault('', `${shownJson(document)} is not an object`)
     this.readHead(document)
     if (this.issues.length > 0) return
     this.readVariables(document.variables)
@@ -82,11 +77,12 @@ export class DocumentReader {
   private readHead(document: Members): void {
     const unknown = Object.keys(document).filter((key) => !MEMBERS.includes(key))
     for (const key of unknown)
-      this.fault(shown(key), `is no member of a problem document: ${MEMBERS.slice(1).join(', ')}`)
+      this.fault(shownJson(key), `is no member of a problem document: ${MEMBERS.slice(1).join(', ')}`)
     const { $schema, kind, version, offset } = document
-    if ($schema !== undefined && typeof $schema !== 'string') this.fault('$schema', `${shown($schema)} is not a text`)
-    if (kind !== JSON_KIND) this.fault('kind', `must be "${JSON_KIND}", not ${shown(kind)}`)
-    if (version !== JSON_VERSION) this.fault('version', `must be ${JSON_VERSION}, not ${shown(version)}`)
+    if ($schema !== undefined && typeof $schema !== 'string')
+      this.fault('$schema', `${shownJson($schema)} is not a text`)
+    if (kind !== JSON_KIND) this.fault('kind', `must be "${JSON_KIND}", not ${shownJson(kind)}`)
+    if (version !== JSON_VERSION) this.fault('version', `must be ${JSON_VERSION}, not ${shownJson(version)}`)
     for (const key of ['form', 'sense', 'convention'] as const) this.readWord(key, document[key])
     if (offset === undefined) return
     const fault = numberFault(offset)
@@ -98,17 +94,17 @@ export class DocumentReader {
     if (value === undefined && key !== 'form') return
     const words: readonly unknown[] = WORDS[key]
     if (words.includes(value)) Object.assign(this.directives, { [key]: value })
-    else this.fault(key, `must be ${words.map(shown).join(' or ')}, not ${shown(value)}`)
+    else this.fault(key, `must be ${words.map(shownJson).join(' or ')}, not ${shownJson(value)}`)
   }
 
   private readVariables(variables: unknown): void {
     if (variables === undefined) return
-    if (!Array.isArray(variables)) return this.fault('variables', `${shown(variables)} is not a list`)
+    if (!Array.isArray(variables)) return this.fault('variables', `${shownJson(variables)} is not a list`)
     this.isListed = true
     variables.forEach((value, k) => {
       const label = this.labelOf(value, `variables[${k}]`)
       if (label === null) return
-      if (this.indices.has(label)) this.fault(`variables[${k}]`, `${shown(label)} stands in the list twice`)
+      if (this.indices.has(label)) this.fault(`variables[${k}]`, `${shownJson(label)} stands in the list twice`)
       else this.add(label)
     })
   }
@@ -123,7 +119,7 @@ export class DocumentReader {
   private labelOf(value: unknown, path: string): string | null {
     const isWhole = Number.isSafeInteger(value)
     if (typeof value !== 'string' && !isWhole) {
-      this.fault(path, `${shown(value)} is no label: a text or a whole number`)
+      this.fault(path, `${shownJson(value)} is no label: a text or a whole number`)
       return null
     }
     const label = String(value)
@@ -138,21 +134,21 @@ export class DocumentReader {
     const index = this.indices.get(label)
     if (index !== undefined) return index
     if (!this.isListed) return this.add(label)
-    this.fault(path, `${shown(label)} is not among the variables`)
+    this.fault(path, `${shownJson(label)} is not among the variables`)
     return null
   }
 
   /** Entries of `width` labels and a value. */
   private readEntries(name: string, list: unknown, width: 1 | 2): void {
     if (list === undefined) return
-    if (!Array.isArray(list)) return this.fault(name, `${shown(list)} is not a list`)
+    if (!Array.isArray(list)) return this.fault(name, `${shownJson(list)} is not a list`)
     for (let k = 0; k < list.length && this.issues.length < DEFAULTS.maxIssues; k++)
       this.readEntry(`${name}[${k}]`, list[k], width)
   }
 
   private readEntry(path: string, entry: unknown, width: 1 | 2): void {
     if (!Array.isArray(entry) || entry.length !== width + 1)
-      return this.fault(path, `expected [${width === 1 ? 'label' : 'label, label'}, value], found ${shown(entry)}`)
+      return this.fault(path, `expected [${width === 1 ? 'label' : 'label, label'}, value], found ${shownJson(entry)}`)
     const row = this.indexOf(entry[0], `${path}[0]`)
     const col = width === 1 ? row : this.indexOf(entry[1], `${path}[1]`)
     const value: unknown = entry[width]
@@ -160,7 +156,7 @@ export class DocumentReader {
     if (fault) return this.fault(`${path}[${width}]`, fault)
     if (row === null || col === null) return
     if (width === 2 && row === col)
-      return this.fault(path, `joins ${shown(entry[0])} with itself: put it under "linear"`)
+      return this.fault(path, `joins ${shownJson(entry[0])} with itself: put it under "linear"`)
     this.entries.add(row, col, value as number)
   }
 

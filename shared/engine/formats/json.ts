@@ -10,40 +10,19 @@
  */
 import { negateProblem } from '../problem/negate'
 import { assembleReading } from './assemble'
-import { collected } from './chunks'
-import { ReadingFault, type ProblemDocument, type ProblemFormat, type ProblemReading, type ReadOptions } from './format'
+import type { ProblemDocument, ProblemFormat, ProblemReading, ReadOptions } from './format'
 import { DocumentReader } from './json-document'
 import { JSON_KIND, JSON_VERSION } from './json-kind'
+import { readJsonText } from './json-text'
 import { checkLabels } from './labels'
 import { formatNumber } from './numbers'
 import { Rejections } from './rejections'
 
 const ID = 'json'
-const LIMITS = { bytes: 256 * 2 ** 20, messageLength: 200 }
-
-function* withinLimit(chunks: Iterable<Uint8Array>): Generator<Uint8Array> {
-  let bytes = 0
-  for (const chunk of chunks) {
-    bytes += chunk.length
-    if (bytes > LIMITS.bytes)
-      throw new ReadingFault(`a JSON document may be ${LIMITS.bytes / 2 ** 20} MiB long: use a coefficient list`)
-    yield chunk
-  }
-}
-
-/** The document, whatever it holds. @throws ReadingFault when the bytes are no JSON in UTF-8 */
-function parse(bytes: Uint8Array): unknown {
-  try {
-    return JSON.parse(new TextDecoder('utf-8', { fatal: true }).decode(bytes))
-  } catch (error) {
-    if (error instanceof TypeError) throw new ReadingFault('the file is not UTF-8 text: save it as UTF-8')
-    const reason = error instanceof Error ? error.message.slice(0, LIMITS.messageLength) : 'unknown reason'
-    throw new ReadingFault(`the file is not valid JSON: ${reason}`)
-  }
-}
+const LIMITS = { bytes: 256 * 2 ** 20 }
 
 function read(chunks: Iterable<Uint8Array>, options: ReadOptions): ProblemReading {
-  const reader = new DocumentReader(parse(collected(withinLimit(chunks))))
+  const reader = new DocumentReader(readJsonText(chunks, LIMITS.bytes, 'use a coefficient list'))
   reader.read()
   const { labels, terms, directives, issues } = reader
   const gathered = { format: ID, labels, ...terms, isMatrix: false, directives }

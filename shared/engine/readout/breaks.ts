@@ -77,7 +77,7 @@ function disagreements(samples: Samples, { ends, isChainCoupler }: Programmed): 
 }
 
 /** Reads in which each position is on the lesser side of its chain; an even split has none. */
-export function minorities(samples: Samples, programmed: Programmed): Uint32Array {
+function minorities(samples: Samples, programmed: Programmed): Uint32Array {
   const { chainOf, chainStrength } = programmed
   const lengths = chainLengths(programmed)
   const breaks = new Uint32Array(chainOf.length)

@@ -1,3 +1,4 @@
+import { csvCell } from '#shared/csv'
 import { formatInterval, formatNumber } from '../../format'
 import { axisName } from './axisName'
 import type { ChartInput } from './types'
@@ -75,7 +76,7 @@ function csvField(value: string | number | null): string {
   if (value === null) return ''
   if (typeof value === 'number') return String(value)
   const safe = /^[=+\-@\t\r]/.test(value) ? `'${value}` : value
-  return /[",\r\n]/.test(safe) ? `"${safe.replaceAll('"', '""')}"` : safe
+  return csvCell(safe)
 }
 
 export function chartCsv(input: ChartInput): string {

@@ -5,8 +5,8 @@
  *     { "kind": "espalier.samples", "version": 1, "qubits": [4, 7, 30], "samples": [[1, -1, 1], [-1, -1, 1]],
  *       "counts": [3, 1], "energies": [-2.5, -1], "gauges": [0, 1], "machineTimeSeconds": 0.125 }
  */
-import { collected } from '../../formats/chunks'
 import { ReadingFault } from '../../formats/format'
+import { readJsonText, shownJson } from '../../formats/json-text'
 import { columnFaults, orderedColumns } from './columns'
 import { SAMPLES_LIMITS } from './reading'
 import type { Columns, RowsRead } from './reading'
@@ -15,7 +15,7 @@ import { RowSink } from './row-sink'
 export const SAMPLES_KIND = 'espalier.samples'
 export const SAMPLES_VERSION = 1
 
-const LIMITS = { bytes: 128 * 2 ** 20, messageLength: 200, shownLength: 40 }
+const LIMITS = { bytes: 128 * 2 ** 20 }
 const MEMBERS = [
   '$schema',
   'kind',
@@ -30,37 +30,14 @@ const MEMBERS = [
 
 type Members = Readonly<Record<string, unknown>>
 
-function* withinLimit(chunks: Iterable<Uint8Array>): Generator<Uint8Array> {
-  let bytes = 0
-  for (const chunk of chunks) {
-    bytes += chunk.length
-    if (bytes > LIMITS.bytes)
-      throw new ReadingFault(`a JSON document may be ${LIMITS.bytes / 2 ** 20} MiB long: send CSV or NumPy arrays`)
-    yield chunk
-  }
-}
-
-function shown(value: unknown): string {
-  const text = JSON.stringify(value) ?? 'nothing'
-  return text.length > LIMITS.shownLength ? `${text.slice(0, LIMITS.shownLength)}…` : text
-}
-
-function documentOf(bytes: Uint8Array): Members {
-  let document: unknown
-  try {
-    document = JSON.parse(new TextDecoder('utf-8', { fatal: true }).decode(bytes))
-  } catch (error) {
-    if (error instanceof TypeError) throw new ReadingFault('the file is not UTF-8 text: save it as UTF-8')
-    const reason = error instanceof Error ? error.message.slice(0, LIMITS.messageLength) : 'unknown reason'
-    throw new ReadingFault(`the file is not valid JSON: ${reason}`)
-  }
+function documentOf(document: unknown): Members {
   if (typeof document !== 'object' || document === null || Array.isArray(document))
     throw new ReadingFault('the document is not a JSON object')
   const members = document as Members
   if (members.kind !== SAMPLES_KIND)
-    throw new ReadingFault(`kind is ${shown(members.kind)}; "${SAMPLES_KIND}" is needed`)
+    throw new ReadingFault(`kind is ${shownJson(members.kind)}; "${SAMPLES_KIND}" is needed`)
   if (members.version !== SAMPLES_VERSION)
-    throw new ReadingFault(`version is ${shown(members.version)}; ${SAMPLES_VERSION} is read here`)
+    throw new ReadingFault(`version is ${shownJson(members.version)}; ${SAMPLES_VERSION} is read here`)
   const unknown = Object.keys(members).filter((name) => !MEMBERS.includes(name))
   if (unknown.length > 0) throw new ReadingFault(`members that are not known: ${unknown.slice(0, 8).join(', ')}`)
   return members
@@ -79,7 +56,7 @@ function listOf(
   if (!Array.isArray(list)) throw new ReadingFault(`${name} is not a list`)
   if (list.length !== rows) throw new ReadingFault(`${name} has ${list.length} values for ${rows} rows`)
   const wrong = list.findIndex((value) => typeof value !== 'number' || !isFit(value))
-  if (wrong >= 0) throw new ReadingFault(`${name}[${wrong}] is ${shown(list[wrong])}: ${needed} is needed`)
+  if (wrong >= 0) throw new ReadingFault(`${name}[${wrong}] is ${shownJson(list[wrong])}: ${needed} is needed`)
   return list as number[]
 }
 
@@ -102,7 +79,7 @@ function rowOf(row: unknown, r: number, target: Int32Array, sink: RowSink): { ze
     throw new ReadingFault(
       Array.isArray(row)
         ? `samples[${r}] has ${row.length} of ${target.length} values`
-        : `samples[${r}] is ${shown(row)}, not a list`,
+        : `samples[${r}] is ${shownJson(row)}, not a list`,
     )
   const base = sink.begin()
   let zero = false
@@ -113,7 +90,7 @@ function rowOf(row: unknown, r: number, target: Int32Array, sink: RowSink): { ze
     if (value === 1) sink.bytes[base + (place >> 3)]! |= 1 << (place & 7)
     else if (value === 0) zero = true
     else if (value === -1) minus = true
-    else throw new ReadingFault(`samples[${r}][${c}] is ${shown(value)}, neither ±1 nor 0/1`)
+    else throw new ReadingFault(`samples[${r}][${c}] is ${shownJson(value)}, neither ±1 nor 0/1`)
   }
   return { zero, minus }
 }
@@ -121,12 +98,12 @@ function rowOf(row: unknown, r: number, target: Int32Array, sink: RowSink): { ze
 function secondsOf({ machineTimeSeconds: seconds }: Members): number | null {
   if (seconds === undefined) return null
   if (typeof seconds === 'number' && seconds > 0 && Number.isFinite(seconds)) return seconds
-  throw new ReadingFault(`machineTimeSeconds is ${shown(seconds)}, not a number above zero`)
+  throw new ReadingFault(`machineTimeSeconds is ${shownJson(seconds)}, not a number above zero`)
 }
 
 /** Reads a document of samples. @throws ReadingFault naming the first member that is wrong */
 export function readJson(chunks: Iterable<Uint8Array>, columns: Columns): RowsRead {
-  const members = documentOf(collected(withinLimit(chunks)))
+  const members = documentOf(readJsonText(chunks, LIMITS.bytes, 'send CSV or NumPy arrays'))
   const { samples } = members
   if (!Array.isArray(samples)) throw new ReadingFault('samples is not a list of rows')
   const own = columnsOf(members, columns)

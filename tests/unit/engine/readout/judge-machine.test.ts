@@ -7,6 +7,7 @@ import { programme } from '../../../../shared/engine/programming/programme'
 import type { Programmed } from '../../../../shared/engine/programming/programme'
 import { createRandom } from '../../../../shared/engine/random'
 import { judgeMachine } from '../../../../shared/engine/readout/judge-machine'
+import { breakStatistics } from '../../../../shared/engine/readout/breaks'
 import { partBreaks } from '../../../../shared/engine/readout/part-breaks'
 import { anneal } from '../../../../shared/engine/sampling/anneal'
 import { physicalModel } from '../../../../shared/engine/sampling/physical-model'
@@ -40,7 +41,8 @@ const control = { now: () => 0, cancelled: () => false, report: () => {} }
 function returned(programmed: Programmed, seed: number, bad?: number) {
   const J = programmed.J.map((value, c) => (c === bad ? 0.25 * value : value))
   const options = { firstRead: 0, reads: 400, sweeps: 40, temperature: 0.35, seed }
-  return partBreaks(anneal(physicalModel({ ...programmed, J }, null), options, control), programmed)
+  const samples = anneal(physicalModel({ ...programmed, J }, null), options, control)
+  return partBreaks(breakStatistics({ samples, programmed }), programmed)
 }
 
 const judged = (returns: ReturnType<typeof returned>[]) =>

@@ -23,7 +23,7 @@ function sampled(seed: number) {
 describe('partBreaks', () => {
   it.each([1, 2, 3, 4, 5])('equals a count on unpacked rows (seed %d)', (seed) => {
     const { programmed, rows, counts, samples } = sampled(seed)
-    const { reads, qubits } = partBreaks(samples, programmed)
+    const { reads, qubits } = partBreaks(breakStatistics({ samples, programmed }), programmed)
     expect(reads).toBe(counts.reduce((a, b) => a + b, 0))
     const lengthOf = (i: number) => programmed.chainOf.filter((j) => j === i).length
     const long = Array.from(programmed.chainOf.keys()).filter((p) => lengthOf(programmed.chainOf[p]!) > 2)
@@ -41,7 +41,7 @@ describe('partBreaks', () => {
 
   it('counts couplers as the statistics of a return do, those inside chains only', () => {
     const { programmed, samples } = sampled(6)
-    const { couplers } = partBreaks(samples, programmed)
+    const { couplers } = partBreaks(breakStatistics({ samples, programmed }), programmed)
     const { perCoupler } = breakStatistics({ samples, programmed })
     const inside = Array.from(programmed.isChainCoupler.keys()).filter((c) => programmed.isChainCoupler[c])
     expect([...couplers.breaks]).toEqual(inside.map((c) => perCoupler[c]))
@@ -52,13 +52,15 @@ describe('partBreaks', () => {
 
   it('leaves chains of two out of the qubits, as neither of the two is a majority', () => {
     const { programmed, samples } = sampled(7)
-    const { qubits, couplers } = partBreaks(samples, programmed)
+    const { qubits, couplers } = partBreaks(breakStatistics({ samples, programmed }), programmed)
     expect([...qubits.chain]).not.toContain(4)
     expect([...couplers.chain]).toContain(4)
   })
 
   it('refuses samples of another width', () => {
     const { programmed } = sampled(1)
-    expect(() => partBreaks(packRows(1, [1], [1]), programmed)).toThrow(/samples of 1 qubits/)
+    expect(() => partBreaks(breakStatistics({ samples: packRows(1, [1], [1]), programmed }), programmed)).toThrow(
+      /samples of 1 qubits/,
+    )
   })
 })
