@@ -38,11 +38,11 @@ export interface RunSheetComparison {
   b: ComparedSide
   groups: ComparedGroup[]
   checks: ComparedCheck[]
-  /** Strengths by variable, in units of J, where they differ or one side has no such variable. */
+  /** Strengths by variable, in units of J, where they differ or one side has no such chain. */
   strengths: { differing: { label: string; a: number | null; b: number | null }[]; same: number }
 }
 
-/** A run sheet, with the strength of every chain in the order of the variables. */
+/** A run sheet, with the strength of every chain of two or more qubits in the order of the variables. */
 export interface ComparedSheet extends RunSheetView {
   strengths: readonly { label: string; strength: number }[]
 }

@@ -8,7 +8,11 @@ async function comparedSheet(app: App, actor: Actor, id: string): Promise<Compar
   const view = await runSheetView(app, actor, id)
   const bench = await benchOf(app, actor, await runSheetRow(app, actor, id))
   const { strengths } = programmeShown(bench, view.settings)
-  return { ...view, strengths: bench.labels.map((label, i) => ({ label, strength: strengths[i]! })) }
+  const { offsets } = bench.embedding
+  // A single qubit has no coupler that a strength could be programmed on.
+  const isChain = (i: number): boolean => offsets[i + 1]! - offsets[i]! > 1
+  const chains = bench.labels.flatMap((label, i) => (isChain(i) ? [{ label, strength: strengths[i]! }] : []))
+  return { ...view, strengths: chains }
 }
 
 /** Two run sheets side by side, each as it stands now. @throws DomainError not found */

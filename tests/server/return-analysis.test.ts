@@ -94,7 +94,7 @@ describe('a planted weak chain', () => {
       isSetting: true,
       action: { set: 'strength of chains', variables: [weak.variable] },
     })
-    expect(advice[0]!.evidence[1]).toMatchObject({ name: `k of ${weak.label} over its bound` })
+    expect(advice[0]!.evidence[1]).toMatchObject({ name: `k of ${weak.label} as a share of its bound` })
     expect(advice[0]!.evidence[1]!.value).toBeCloseTo(0.4, 9)
     expect(scale.outlook).not.toBeNull()
 

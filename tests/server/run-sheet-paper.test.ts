@@ -20,6 +20,7 @@ import { startReferenceSchema } from '../../shared/schemas/reference'
 import type { CheckSubject } from '../../shared/schemas/run-sheets'
 import { createRunSheetSchema, rehearseSchema } from '../../shared/schemas/run-sheets'
 import type { TestApp } from '../support/app'
+import { importEmbedding } from '../../server/services/embedding-import'
 import { startTestApp } from '../support/app'
 
 let test: TestApp
@@ -208,6 +209,16 @@ describe('a duplicate', () => {
     expect(fields.find(({ field }) => field === 'Reads')).toMatchObject({ a: 1000, b: 50 })
     expect(strengths.differing.every(({ b }) => b === 9)).toBe(true)
     expect(strengths.differing.length + strengths.same).toBe(6)
+  })
+
+  it('holds no strength of single qubits against each other, which have none', async () => {
+    const machineId = await test.machine({ kind: 'chimera', m: 1, t: 4 })
+    const pair = await test.problem('# form: ising\na b 1\nb c 1')
+    const chains = { a: [0], b: [4], c: [1, 5] }
+    const { id } = await importEmbedding(test.app, test.actor, { problemId: pair, machineId, chains })
+    const [a, b] = [await sheet({ embeddingId: id }), await sheet({ embeddingId: id, strength: { rule: 'cut' } })]
+    const { strengths } = await compareRunSheets(test.app, test.actor, { a, b })
+    expect([...strengths.differing.map(({ label }) => label), strengths.same]).toEqual(['c', 0])
   })
 })
 

@@ -43,7 +43,7 @@ export function raiseNamed(evidence: Evidence): AdviceItem[] {
           .slice(0, MOST_SHOWN)
           .flatMap(({ label, breaks, strength, bound }) => [
             shareFigure(`reads in which ${label} broke`, breaks, reads),
-            { name: `k of ${label} over its bound`, value: strength / bound, unit: 'share' as const },
+            { name: `k of ${label} as a share of its bound`, value: strength / bound, unit: 'share' as const },
           ]),
         shareFigure('other chains, reads in which one broke', breaksOf(rest), rest.length * reads),
       ],

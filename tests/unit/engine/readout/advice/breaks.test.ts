@@ -17,7 +17,7 @@ describe('raiseNamed', () => {
     expect(item!.sentence).toContain('x7')
     expect(item!.evidence).toMatchObject([
       { name: 'reads in which x7 broke', value: 0.4, unit: 'share' },
-      { name: 'k of x7 over its bound', value: expect.closeTo(0.4, 12) },
+      { name: 'k of x7 as a share of its bound', value: expect.closeTo(0.4, 12) },
       { name: 'other chains, reads in which one broke', value: 0.002 },
     ])
   })
