@@ -74,7 +74,9 @@ async function axeOn(page: Page, asked: axe.RunOptions, where: string | undefine
   if (!(await page.evaluate(() => 'axe' in window))) await page.evaluate(AXE)
   return page.evaluate(
     async ({ options, within, chosen }) => {
-      const include = chosen ? window.chosenTexts : within ? [within] : [document]
+      // A text may have been drawn anew since it was chosen, as while a picture is being painted.
+      const include = chosen ? window.chosenTexts.filter((text) => text.isConnected) : within ? [within] : [document]
+      if (include.length === 0) return []
       const { violations: found } = await window.axe.run({ include }, { ...options, resultTypes: ['violations'] })
       return found.map(({ id, help, nodes }) => {
         const places = nodes.slice(0, 3).map(({ target, any }) => `${target.join(' ')} (${any[0]?.message ?? ''})`)

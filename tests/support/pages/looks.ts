@@ -15,26 +15,28 @@ export async function colourProblems(
   page: Page,
   { themes, seen, within = 'body' }: { themes: readonly string[]; seen: SeenLooks; within?: string },
 ): Promise<{ theme: string; problem: string }[]> {
-  if ((await chooseTexts(page, within, seen)) === 0) return []
+  const fresh = await chooseTexts(page, within, seen)
+  if (fresh.length === 0) return []
   const problems: { theme: string; problem: string }[] = []
   for (const theme of themes) {
     await tint(page, theme === 'light' ? null : theme)
     problems.push(...(await colourViolations(page)).map((problem) => ({ theme, problem })))
   }
   await tint(page, null)
+  const stayed = await page.evaluate(() => window.chosenTexts.map((text) => text.isConnected))
+  for (const [at, look] of fresh.entries()) if (stayed[at]) seen.add(look)
   return problems
 }
 
-/** Leaves on the window one text of each look that is new, adds these looks to `seen`, and answers how many there are. */
-async function chooseTexts(page: Page, within: string, seen: SeenLooks): Promise<number> {
+/** Leaves on the window one text of each look that is new, and answers these looks in the same order. */
+async function chooseTexts(page: Page, within: string, seen: SeenLooks): Promise<string[]> {
   const looks = await page.evaluate(looksOf, within)
   const fresh = looks.filter((look) => !seen.has(look))
-  for (const look of fresh) seen.add(look)
   await page.evaluate((wanted) => {
     const all = window.chosenByLook
     window.chosenTexts = wanted.map((look) => all.get(look)!)
   }, fresh)
-  return fresh.length
+  return fresh
 }
 
 /**
