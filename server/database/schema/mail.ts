@@ -8,9 +8,8 @@ export const mails = pgTable(
   'mails',
   {
     id: id(),
-    workspaceId: text()
-      .notNull()
-      .references(() => workspaces.id, { onDelete: 'cascade' }),
+    /** Null for what belongs to a person only, such as a link for a new password: no outbox shows it. */
+    workspaceId: text().references(() => workspaces.id, { onDelete: 'cascade' }),
     /** Null once the person's account is gone. */
     toUserId: text().references(() => users.id, { onDelete: 'set null' }),
     toAddress: text().notNull(),
