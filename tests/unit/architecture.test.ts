@@ -80,7 +80,7 @@ describe('the house', () => {
       const text = readFileSync(path, 'utf8')
       const name = relative(join(root, 'server/api'), path)
       expect(text, name).toMatch(
-        open.includes(name) ? /export default definePublicRoute\(/ : /export default defineRoute\(/,
+        open.includes(name) ? /export default definePublicRoute\(/ : /export default define(Session)?Route\(/,
       )
     }
   })
