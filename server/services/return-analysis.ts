@@ -2,16 +2,12 @@ import { thermalGigahertz } from '../../shared/engine/machine/energy-units'
 import { isStraight } from '../../shared/engine/programming/schedule'
 import { adviceFor } from '../../shared/engine/readout/advice/advise'
 import type { AdviceItem } from '../../shared/engine/readout/advice/item'
-import { timeToSolution } from '../../shared/engine/readout/intervals'
-import type { EffectiveTemperature } from '../../shared/engine/readout/temperature'
 import type {
   AdviceView,
   AnalysisQuery,
   AnalysisView,
   GaugeView,
-  Needed,
   SuccessView,
-  TemperatureView,
 } from '../../shared/schemas/return-analysis'
 import type { Actor, App } from '../app'
 import type { ReturnRow } from '../database/repositories/run-sheets'
@@ -24,9 +20,9 @@ import { proportion } from './proportion'
 import { Recent } from './recent'
 import { evidenceOf, scaleRoom } from './return-evidence'
 import { decodedBy } from './return-summary'
-import { estimate } from './run-sheet-time'
 import { unpackSamples } from './samples-data'
 import { signed, signOf } from './sense'
+import { successView, temperatureView, timeOfReads } from './success-view'
 
 /** A pause needs two points more than the straight ramp. */
 const POINTS_WITH_PAUSE = 4
@@ -89,33 +85,13 @@ export async function analysed(
   }
 }
 
-const finite = (value: number): number | null => (Number.isFinite(value) ? value : null)
-const needed = (value: number, low: number, high: number): Needed => ({
-  value: finite(value),
-  low: finite(low),
-  high: finite(high),
-})
-
-function successView({ row, bench, reference, analysis: { success } }: Analysed): SuccessView | null {
+function successOf({ row, bench, reference, analysis: { success } }: Analysed): SuccessView | null {
   if (!success || !reference) return null
-  const measured = Number(row.made.machineTimeSeconds ?? 0)
-  const millisecondsPerRead =
-    measured > 0
-      ? (1000 * measured) / row.reads
-      : estimate(bench, row.settings).totalMicroseconds / 1000 / row.settings.reads
-  const { time, low, high } = timeToSolution(success, millisecondsPerRead)
   return {
-    ...proportion(success.successes, success.trials),
+    ...successView(success, timeOfReads(row, bench)),
     reference: { energy: signed(signOf(bench.problem.sense), reference.energy), proved: reference.proved },
-    r99: needed(success.r99, success.r99Interval.low, success.r99Interval.high),
-    millisecondsPerRead,
-    isTimeMeasured: measured > 0,
-    milliseconds: needed(time, low, high),
   }
 }
-
-const temperatureView = (found: EffectiveTemperature | null): TemperatureView | null =>
-  found && { ...found, inverseTemperature: finite(found.inverseTemperature) }
 
 function gaugeViews({ bench, analysis }: Analysed): GaugeView[] {
   const sign = signOf(bench.problem.sense)
@@ -149,7 +125,7 @@ export async function analysisView(app: App, actor: Actor, id: string, query: An
   return {
     ...query,
     reads,
-    success: successView(all),
+    success: successOf(all),
     breaks: analysis.byMeasure,
     gauges: gaugeViews(all),
     gaugeTests: analysis.differences,

@@ -108,13 +108,18 @@ export async function writeSummary(app: App, input: SummariseInput, sense: 'min'
   }
 }
 
+/** The summary of a return that has one, without what it was made from. */
+export async function readSummary(app: App, summaryBlobId: string): Promise<Summary> {
+  return unpackSummary(await app.blobs.read(summaryBlobId))
+}
+
 /** What a ready return holds, as it was summed up once; the input without the samples, which are looked up where needed. */
 export async function summaryOf(
   app: App,
   row: ReturnRow,
   input: Omit<SummariseInput, 'samples' | 'seed'>,
 ): Promise<Summary> {
-  if (row.summaryBlobId) return unpackSummary(await app.blobs.read(row.summaryBlobId))
+  if (row.summaryBlobId) return readSummary(app, row.summaryBlobId)
   const samples = unpackSamples(await app.blobs.read(row.samplesBlobId!))
   const summary = await summarise(app, { ...input, samples, seed: row.settings.seed })
   const blobId = await app.blobs.write(packSummary(summary))

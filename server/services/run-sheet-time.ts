@@ -3,7 +3,8 @@ import type { MachineTimeEstimate } from '../../shared/engine/programming/machin
 import type { MachineTimePart, RunSheetSettings, RunSheetView } from '../../shared/schemas/run-sheets'
 import type { CalibratedMachine } from './machine-graphs'
 
-interface OnMachine {
+/** Something that stands on a machine at a calibration. */
+export interface OnMachine {
   machine: Pick<CalibratedMachine, 'sheet'>
 }
 

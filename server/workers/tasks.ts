@@ -21,6 +21,7 @@ import { proveInfeasible } from './tasks/prove-infeasible'
 import { readMachineGraph } from './tasks/read-graph'
 import { listRejectedLines, readProblemFile } from './tasks/read-problem'
 import { readSamplesFile } from './tasks/read-samples'
+import { readTemperature } from './tasks/read-temperature'
 import { recogniseGroups } from './tasks/recognise-groups'
 import { rehearse } from './tasks/rehearse'
 import { runTry } from './tasks/run-try'
@@ -61,6 +62,7 @@ export const TASKS = {
   readMachineGraph,
   readProblemFile,
   readSamplesFile,
+  readTemperature,
   recogniseGroups,
   rehearse,
   runTry,

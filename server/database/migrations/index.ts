@@ -256,5 +256,14 @@ export const MIGRATIONS = [
       "\nCREATE UNIQUE INDEX \"tokens_token_hash_index\" ON \"tokens\" USING btree (\"token_hash\");",
       "\nCREATE INDEX \"tokens_workspace_id_index\" ON \"tokens\" USING btree (\"workspace_id\");"
     ]
+  },
+  {
+    "tag": "0008_return_measures",
+    "folderMillis": 1796209008841,
+    "hash": "f74cee8d12f81e029707df05f18132b46345ed4a1b67d1d1998bbf73d1c34eb5",
+    "bps": true,
+    "sql": [
+      "ALTER TABLE \"returns\" ADD COLUMN \"measures\" jsonb;"
+    ]
   }
 ]

@@ -1,4 +1,4 @@
-import { and, asc, desc, eq, inArray, isNull, ne } from 'drizzle-orm'
+import { and, asc, count, desc, eq, inArray, isNull, ne } from 'drizzle-orm'
 import type { Db } from '../client'
 import { embeddings, machines, problems, returns, runSheetRemarks, runSheets, users } from '../schema'
 
@@ -147,6 +147,45 @@ export async function keepSummary(tx: Db, id: string, summaryBlobId: string): Pr
     .where(and(eq(returns.id, id), isNull(returns.summaryBlobId)))
     .returning({ id: returns.id })
   return rows.length === 1
+}
+
+/** Keeps what was worked out of samples, which never changes. */
+export async function keepMeasures(db: Db, id: string, measures: NonNullable<ReturnRow['measures']>): Promise<void> {
+  await db.update(returns).set({ measures }).where(eq(returns.id, id))
+}
+
+const readyOfProblem = (workspaceId: string, problemId: string) =>
+  and(
+    eq(returns.workspaceId, workspaceId),
+    eq(embeddings.problemId, problemId),
+    eq(returns.status, 'ready'),
+    isNull(returns.deletedWith),
+  )
+
+/** Samples of all versions of a problem that are there, newest first, each with its run sheet. */
+export async function returnsOfProblem(
+  db: Db,
+  { workspaceId, problemId, limit, offset }: { workspaceId: string; problemId: string; limit: number; offset: number },
+) {
+  return db
+    .select({ row: returns, runSheet: { id: runSheets.id, number: runSheets.number, name: runSheets.name } })
+    .from(returns)
+    .innerJoin(embeddings, eq(embeddings.id, returns.embeddingId))
+    .innerJoin(runSheets, eq(runSheets.id, returns.runSheetId))
+    .where(readyOfProblem(workspaceId, problemId))
+    .orderBy(desc(returns.createdAt), desc(returns.id))
+    .limit(limit)
+    .offset(offset)
+}
+
+/** How many sets of samples of a problem there are, by their source. */
+export async function countReturnsOfProblem(db: Db, workspaceId: string, problemId: string) {
+  return db
+    .select({ source: returns.source, n: count() })
+    .from(returns)
+    .innerJoin(embeddings, eq(embeddings.id, returns.embeddingId))
+    .where(readyOfProblem(workspaceId, problemId))
+    .groupBy(returns.source)
 }
 
 /** Returns of several run sheets, newest first. */

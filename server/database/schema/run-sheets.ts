@@ -1,5 +1,6 @@
 import type { AnyPgColumn } from 'drizzle-orm/pg-core'
 import { doublePrecision, index, integer, jsonb, pgTable, text, uniqueIndex } from 'drizzle-orm/pg-core'
+import type { ReturnMeasures } from '../../../shared/schemas/return-comparison'
 import type { Decoding } from '../../../shared/schemas/returns'
 import type { ScanPoint, ScanRequest } from '../../../shared/schemas/scans'
 import type { RunSheetSettings, RunSheetState } from '../../../shared/schemas/run-sheets'
@@ -75,6 +76,8 @@ export const returns = pgTable(
     breaksBlobId: text().references(() => blobs.id),
     /** Packed break statistics, energies and decoded rows; made with the samples, or when first asked for. */
     summaryBlobId: text().references(() => blobs.id),
+    /** What comparisons show of the samples; worked out when first asked for. */
+    measures: jsonb().$type<ReturnMeasures>(),
     reads: integer().notNull(),
     readsWithBreak: integer(),
     /** Best majority-decoded energy in the problem's own sense. */
