@@ -61,6 +61,25 @@ export function decodingRow({ problem }: Bench, rows: DecodedRows): DecodingRow 
   }
 }
 
+/** Steps of a cumulative curve: more than a screen can show apart. */
+const MOST_STEPS = 240
+
+/**
+ * Reads at each energy or a better one, best first, in the problem's own sense. Of more energies than can be shown apart,
+ * the best, the worst and every so many between.
+ */
+export function cumulativeReads({ energies, counts }: Weighted, sign: 1 | -1): EnergySeries['cumulative'] {
+  const order = Array.from(energies.keys()).sort((a, b) => energies[a]! - energies[b]!)
+  const steps: EnergySeries['cumulative'] = []
+  let reads = 0
+  order.forEach((row, k) => {
+    reads += counts[row]!
+    if (energies[order[k + 1]!] !== energies[row]) steps.push({ energy: signed(sign, energies[row]!), reads })
+  })
+  if (steps.length <= MOST_STEPS) return steps
+  return Array.from({ length: MOST_STEPS }, (_, k) => steps[Math.round((k * (steps.length - 1)) / (MOST_STEPS - 1))]!)
+}
+
 const nameOf = (row: ReturnRow): string =>
   row.source === 'rehearsal' ? `Rehearsal ${row.number}` : `Samples ${row.number}`
 
@@ -96,6 +115,7 @@ export async function energiesView(
       entry.counts,
       { start, step, bins: counts.length },
     ),
+    cumulative: cumulativeReads(entry, sign),
   }))
   const { best, bestCount, mean, median } = decodingRow(bench, decoded)
   return { best: best!, bestCount, mean: mean!, median: median!, start, width: step, series }

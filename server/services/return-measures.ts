@@ -10,9 +10,9 @@ import { temperatureView } from './success-view'
 function strengthOf({ programming: { layout, strengths } }: LoadedReturn): ReturnMeasures['strength'] {
   const held = strengths.filter((_, variable) => layout.chainLength[variable]! > 1)
   if (held.length === 0) return null
-  const low = held.reduce((least, k) => Math.min(least, k), Infinity)
-  const high = held.reduce((most, k) => Math.max(most, k), 0)
-  return { low, mean: held.reduce((sum, k) => sum + k, 0) / held.length, high }
+  const min = held.reduce((least, k) => Math.min(least, k), Infinity)
+  const max = held.reduce((most, k) => Math.max(most, k), 0)
+  return { min, mean: held.reduce((sum, k) => sum + k, 0) / held.length, max }
 }
 
 /** What comparisons show of samples, worked out once; samples, embedding and settings of a return stand still. */
@@ -23,11 +23,12 @@ export async function measuresOf(app: App, actor: Actor, row: ReturnRow): Promis
   const { breaks } = summary
   const samples = unpackSamples(await app.blobs.read(row.samplesBlobId!))
   const { seed } = row.settings
+  const temperature = temperatureView(await app.compute.run('readTemperature', { samples, programmed, seed }))
   const measures: ReturnMeasures = {
     chainReads: { count: breaks.perChain.breaks.reduce((sum, n) => sum + n, 0), total: breaks.chainReads },
     strength: strengthOf(loaded),
     scale: programmed.scale,
-    temperature: temperatureView(await app.compute.run('readTemperature', { samples, programmed, seed })),
+    temperature: temperature && { ...temperature, rowsInAll: samples.rows },
   }
   await keepMeasures(app.db, row.id, measures)
   return measures

@@ -16,10 +16,10 @@ export interface ReturnMeasures {
   /** Chains of two or more qubits that were broken, over all reads, of all of them. */
   chainReads: { count: number; total: number }
   /** Of chains of two or more qubits, in units of the Ising form; null where every chain is a single qubit. */
-  strength: { low: number; mean: number; high: number } | null
+  strength: { min: number; mean: number; max: number } | null
   scale: number
   /** Null where the samples tell none. */
-  temperature: TemperatureView | null
+  temperature: (TemperatureView & { rowsInAll: number }) | null
 }
 
 /** One set of samples beside others of the same problem. */
@@ -51,7 +51,7 @@ export interface ComparedReturn {
   milliseconds: Needed | null
   millisecondsPerRead: number
   isTimeMeasured: boolean
-  temperature: TemperatureView | null
+  temperature: ReturnMeasures['temperature']
 }
 
 /** The samples of a problem, newest first. */

@@ -98,6 +98,8 @@ export interface EnergySeries {
   returnId: string
   reads: number
   counts: number[]
+  /** Best first: energies that occur, each with the reads that are as good or better; thinned where they are very many. */
+  cumulative: { energy: number; reads: number }[]
 }
 
 /** An answer to a reduced problem as an answer to the problem that it came from first. */

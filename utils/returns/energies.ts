@@ -8,6 +8,22 @@ export interface EnergyChart {
   axis: string
 }
 
+/** Share of the reads that are as good as an energy or better, as steps; the samples compared with as a dashed line. */
+export function cumulativeSeries(
+  { series }: Pick<NonNullable<ReturnView['energies']>, 'series'>,
+  sense: 'min' | 'max',
+): ChartSeries[] {
+  return series.map(({ title, cumulative, reads }, index) => ({
+    name: title,
+    kind: 'step' as const,
+    holds: sense === 'min' ? ('from' as const) : ('up to' as const),
+    ...(index === 0 ? {} : { stroke: 'dashed' as const }),
+    points: cumulative
+      .map(({ energy, reads: within }) => ({ x: energy, y: (100 * within) / reads }))
+      .sort((a, b) => a.x - b.x),
+  }))
+}
+
 /**
  * Decoded energies as bars, and those of the samples they are compared with as a dashed outline on the same steps; in
  * per cent of the reads when the two hold different numbers of reads.

@@ -1,4 +1,4 @@
-import type { ChainBreaks, CouplerBreaks, DecodingRow, ReturnView } from '#shared/schemas/returns'
+import type { ChainBreaks, CouplerBreaks, DecodingRow, QubitBreaks, ReturnView } from '#shared/schemas/returns'
 import type { HelpCase, HelpRequest } from '../help/registry'
 
 /** How the numbers in the tables of returned samples are computed, row by row. */
@@ -28,6 +28,22 @@ export const couplerRateCases = (couplers: readonly CouplerBreaks[], rehearsal: 
     help: {
       id: 'rate',
       given: { count, total, counted: 'reads in which its two ends disagreed', of: 'reads', format: FORMAT, rehearsal },
+    },
+  }))
+
+export const qubitRateCases = (qubits: readonly QubitBreaks[], rehearsal: boolean): HelpCase[] =>
+  qubits.map(({ qubit, label, count, total }) => ({
+    label: `${label}, qubit ${qubit}`,
+    help: {
+      id: 'rate',
+      given: {
+        count,
+        total,
+        counted: 'reads in which it disagreed with the majority of its chain',
+        of: 'reads',
+        format: FORMAT,
+        rehearsal,
+      },
     },
   }))
 

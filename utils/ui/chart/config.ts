@@ -13,6 +13,8 @@ const MONO = '"IBM Plex Mono", monospace'
 const WIDEST_BAR = 72
 /** Bars stand apart by one pixel, as ruled columns do. */
 const BAR_GAP = 1
+/** Where the drawing library steps from one value to the next. */
+const STEPS = { from: 'before', 'up to': 'after', around: 'middle' } as const
 /** Width of one digit or letter of a label in a chart of rates. */
 const LABEL_LETTER = 7.6
 
@@ -62,7 +64,7 @@ function lineDataset(input: ChartInput, index: number, palette: Palette): ChartD
     label: series.name,
     data: series.points,
     showLine: kind !== 'points',
-    stepped: kind === 'step' ? 'middle' : false,
+    stepped: kind === 'step' ? STEPS[series.holds ?? 'around'] : false,
     borderColor: colour,
     borderWidth: 1.8,
     borderDash: [...DASHES[series.stroke ?? 'solid']],

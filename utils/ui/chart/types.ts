@@ -39,6 +39,8 @@ export interface ChartSeries {
   /** `hollow` points are drawn as open squares. */
   marker?: 'full' | 'hollow' | 'plus' | 'none'
   tone?: ColourName
+  /** Steps that hold from their point on, or up to it; without it each holds around its point. */
+  holds?: 'from' | 'up to'
   /** Intervals as a shaded band rather than as bars. */
   band?: boolean
   /** Name written at the point whose x is nearest: a direct label in place of a legend. */
