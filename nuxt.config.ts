@@ -5,6 +5,8 @@ export default defineNuxtConfig({
   telemetry: false,
   modules: ['@nuxt/eslint', '@nuxtjs/tailwindcss', '@pinia/nuxt', 'nuxt-auth-utils'],
   components: [{ path: '~/components', pathPrefix: true }],
+  // What the pages need of a session comes from GET /api/session.
+  auth: { loadStrategy: 'none' },
   css: [
     '@fontsource/ibm-plex-sans/latin-400.css',
     '@fontsource/ibm-plex-sans/latin-500.css',

@@ -5,7 +5,6 @@ import type { Role } from '#shared/schemas/common'
 export function useSession() {
   const session = useState<SessionView | null>('session', () => null)
   const fetcher = useRequestFetch()
-  const { fetch: refreshCookie } = useUserSession()
   const api = useApi()
 
   const load = async (): Promise<void> => {
@@ -15,7 +14,7 @@ export function useSession() {
 
   const enter = async (url: string, body: Record<string, unknown>) => {
     const outcome = await api.post(url, body)
-    if (outcome.ok) await Promise.all([load(), refreshCookie()])
+    if (outcome.ok) await load()
     return outcome
   }
   return {

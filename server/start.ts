@@ -6,6 +6,7 @@ import { startQueue } from './jobs/queue'
 import { startRunner } from './jobs/runner'
 import { sweepDeletions } from './services/deletions'
 import { KeptUploads } from './services/kept-uploads'
+import { sweepSessions } from './services/sessions'
 import { createCompute } from './workers/compute'
 import { VERSION } from './version'
 
@@ -30,12 +31,13 @@ export interface StartedApp {
 const UNADOPTED_KEPT_MS = 60 * 60 * 1000
 const SWEEP_MS = 30_000
 
-/** Clears away now and then what was never adopted and what was deleted for good. @returns how to end that */
+/** Clears away now and then what was never adopted, what was deleted for good and what has expired. @returns how to end that */
 async function keepSweeping(app: App): Promise<() => void> {
   const sweep = async (): Promise<void> => {
     app.uploads.sweep()
     await app.blobs.sweep(new Date(app.now().getTime() - UNADOPTED_KEPT_MS))
     await sweepDeletions(app)
+    await sweepSessions(app)
   }
   await sweep()
   const timer = setInterval(

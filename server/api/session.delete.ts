@@ -1,5 +1,5 @@
-/** Signs out. */
-export default definePublicRoute(async (event) => {
-  await clearUserSession(event)
+/** Signs out: the session of this browser ends. */
+export default definePublicRoute(async (event, app) => {
+  await leave(event, app)
   return { ok: true }
 })

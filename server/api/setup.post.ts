@@ -3,8 +3,7 @@ import { setUp } from '../services/people'
 
 /** Creates the first workspace and its owner with the one-time code from the server's console, and signs in. */
 export default definePublicRoute(async (event, app) => {
-  const actor = await setUp(app, PASSWORDS, await bodyOf(event, setupSchema))
-  await setUserSession(event, { user: { id: actor.userId, workspaceId: actor.workspaceId } })
+  await enter(event, app, await setUp(app, PASSWORDS, await bodyOf(event, setupSchema)))
   setResponseStatus(event, 201)
   return { ok: true }
 })

@@ -3,17 +3,20 @@ import { defineEventHandler } from 'h3'
 import type { Role } from '../../shared/schemas/common'
 import { DomainError } from '../../shared/errors'
 import type { Actor, App } from '../app'
-import { rolesIn } from '../services/people'
+import { sessionCaller } from '../services/sessions'
 import { tokenCaller } from '../services/tokens'
 import { useApp } from './app'
 import { bearerOf } from './bearer'
 import { toHttpError } from './http'
+import { addressOf } from './session'
 
 interface Caller extends Actor {
   /** Those of the person, or the one of the token. */
   roles: readonly Role[]
   /** Null where somebody is signed in. */
   tokenId: string | null
+  /** Null where a token is used. */
+  sessionId: string | null
 }
 
 interface RouteContext extends Caller {
@@ -30,22 +33,15 @@ async function mapped<T>(work: () => Promise<T> | T): Promise<T> {
   }
 }
 
-async function sessionCaller(event: H3Event, app: App): Promise<Caller> {
-  const { user } = await getUserSession(event)
-  if (!user) throw new DomainError('unauthenticated', 'session.none', 'Sign in first.')
-  const roles = await rolesIn(app, { userId: user.id, workspaceId: user.workspaceId })
-  if (!roles)
-    throw new DomainError(
-      'unauthenticated',
-      'session.ended',
-      'This account no longer belongs to the workspace. Sign in again.',
-    )
-  return { userId: user.id, workspaceId: user.workspaceId, roles, tokenId: null }
+async function signedInCaller(event: H3Event, app: App): Promise<Caller> {
+  const { secure } = await getUserSession(event)
+  if (!secure?.sessionId) throw new DomainError('unauthenticated', 'session.none', 'Sign in first.')
+  return { ...(await sessionCaller(app, secure.sessionId, addressOf(event))), tokenId: null }
 }
 
 async function callerOf(event: H3Event, app: App): Promise<Caller> {
   const token = bearerOf(event)
-  return token === undefined ? sessionCaller(event, app) : tokenCaller(app, token)
+  return token === undefined ? signedInCaller(event, app) : { ...(await tokenCaller(app, token)), sessionId: null }
 }
 
 type Allowed = readonly Role[] | 'member'
@@ -75,12 +71,18 @@ export function defineRoute<T>(allowed: Allowed, handler: Handler<T>) {
   )
 }
 
+interface SignedInContext extends RouteContext {
+  sessionId: string
+}
+
+type SessionHandler<T> = (event: H3Event<EventHandlerRequest>, context: SignedInContext) => Promise<T> | T
+
 /** A route for people who are signed in, not for tokens: what concerns people, accounts and tokens themselves. */
-export function defineSessionRoute<T>(allowed: Allowed, handler: Handler<T>) {
-  return defineRoute(allowed, (event, context) => {
-    if (context.tokenId)
+export function defineSessionRoute<T>(allowed: Allowed, handler: SessionHandler<T>) {
+  return defineRoute(allowed, (event, { sessionId, ...context }) => {
+    if (sessionId === null)
       throw new DomainError('forbidden', 'token.session-only', 'Tokens may not do this. Sign in and do it yourself.')
-    return handler(event, context)
+    return handler(event, { ...context, sessionId })
   })
 }
 

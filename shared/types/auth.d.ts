@@ -1,7 +1,7 @@
 declare module '#auth-utils' {
-  interface User {
-    id: string
-    workspaceId: string
+  interface SecureSessionData {
+    /** Names the row of the session; pages never see it. */
+    sessionId: string
   }
 }
 
