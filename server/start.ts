@@ -4,6 +4,7 @@ import { migrate, openDatabase } from './database/client'
 import { createBlobStore } from './database/repositories/blobs'
 import { startQueue } from './jobs/queue'
 import { startRunner } from './jobs/runner'
+import { sweepAttempts } from './services/attempts'
 import { sweepDeletions } from './services/deletions'
 import { KeptUploads } from './services/kept-uploads'
 import { sweepSessions } from './services/sessions'
@@ -38,6 +39,7 @@ async function keepSweeping(app: App): Promise<() => void> {
     await app.blobs.sweep(new Date(app.now().getTime() - UNADOPTED_KEPT_MS))
     await sweepDeletions(app)
     await sweepSessions(app)
+    await sweepAttempts(app)
   }
   await sweep()
   const timer = setInterval(

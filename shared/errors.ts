@@ -29,3 +29,14 @@ export class DomainError extends Error {
     this.name = 'DomainError'
   }
 }
+
+/** Refused for a while, because there were too many before. */
+export class TooManyError extends DomainError {
+  constructor(
+    code: string,
+    message: string,
+    readonly retryAfterSeconds: number,
+  ) {
+    super('too many', code, message)
+  }
+}

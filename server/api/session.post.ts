@@ -1,9 +1,12 @@
 import { signInSchema } from '../../shared/schemas/session'
-import { signIn } from '../services/people'
+import { signIn } from '../services/sign-in'
 
-/** Signs in: `{email, password}` → 200 with the session cookie; 401 when they do not belong together. */
+/**
+ * Signs in: `{email, password}` → 200 with the session cookie; 401 when they do not belong together; 429 with `Retry-After`
+ * in seconds after too many attempts.
+ */
 export default definePublicRoute(async (event, app) => {
-  const { email, password } = await bodyOf(event, signInSchema)
-  await enter(event, app, await signIn(app, PASSWORDS, email, password))
+  const input = await bodyOf(event, signInSchema)
+  await enter(event, app, await signIn(app, PASSWORDS, input, addressOf(event)))
   return { ok: true }
 })

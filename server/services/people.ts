@@ -10,9 +10,7 @@ import {
   countThings,
   findRoles,
   findUser,
-  findUserByEmail,
   findWorkspace,
-  firstWorkspaceOf,
   insertMembership,
   insertUser,
   insertWorkspace,
@@ -22,6 +20,7 @@ import {
   readFact,
   takeFact,
 } from '../database/repositories/people'
+import { requireGoodPassword } from './password-rules'
 
 const SETUP_CODE = 'setup code'
 
@@ -35,24 +34,6 @@ export interface Passwords {
 export function rolesIn(app: App, actor: Actor): Promise<Role[] | undefined> {
   return findRoles(app.db, actor.workspaceId, actor.userId)
 }
-
-/** Checks e-mail and password; answers whom to sign in and where. The refusal does not say which of the two was wrong. */
-export async function signIn(app: App, passwords: Passwords, email: string, password: string): Promise<Actor> {
-  const user = await findUserByEmail(app.db, email)
-  // Verify against something even without an account, so that the time taken tells nothing.
-  const matches = await passwords.verify(user?.passwordHash ?? (await decoyHash(passwords)), password)
-  const workspaceId = user && matches ? await firstWorkspaceOf(app.db, user.id) : undefined
-  if (!user || !workspaceId)
-    throw new DomainError(
-      'unauthenticated',
-      'session.refused',
-      'E-mail and password do not belong together. Check both and try again.',
-    )
-  return { userId: user.id, workspaceId }
-}
-
-let decoy: Promise<string> | undefined
-const decoyHash = (passwords: Passwords): Promise<string> => (decoy ??= passwords.hash(randomUUID()))
 
 export async function sessionView(app: App, actor: Actor, roles: readonly Role[]): Promise<SessionView> {
   const [user, workspace, counts] = [
@@ -96,6 +77,7 @@ export async function setUp(app: App, passwords: Passwords, input: z.infer<typeo
       'setup.code',
       'This is not the code on the server’s console, or it was used already.',
     )
+  requireGoodPassword(input.password, input)
   const passwordHash = await passwords.hash(input.password)
   return app.db.transaction(async (tx) => {
     if (!(await takeFact(tx, SETUP_CODE)))

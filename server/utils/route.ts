@@ -1,7 +1,7 @@
 import type { EventHandlerRequest, H3Event } from 'h3'
-import { defineEventHandler } from 'h3'
+import { defineEventHandler, setResponseHeader } from 'h3'
 import type { Role } from '../../shared/schemas/common'
-import { DomainError } from '../../shared/errors'
+import { DomainError, TooManyError } from '../../shared/errors'
 import type { Actor, App } from '../app'
 import { sessionCaller } from '../services/sessions'
 import { tokenCaller } from '../services/tokens'
@@ -25,10 +25,11 @@ interface RouteContext extends Caller {
 
 type Handler<T> = (event: H3Event<EventHandlerRequest>, context: RouteContext) => Promise<T> | T
 
-async function mapped<T>(work: () => Promise<T> | T): Promise<T> {
+async function mapped<T>(event: H3Event, work: () => Promise<T> | T): Promise<T> {
   try {
     return await work()
   } catch (error) {
+    if (error instanceof TooManyError) setResponseHeader(event, 'retry-after', error.retryAfterSeconds)
     throw error instanceof DomainError ? toHttpError(error) : error
   }
 }
@@ -62,7 +63,7 @@ function requireRole(allowed: Allowed, { roles, tokenId }: Caller): void {
  */
 export function defineRoute<T>(allowed: Allowed, handler: Handler<T>) {
   return defineEventHandler((event) =>
-    mapped(async () => {
+    mapped(event, async () => {
       const app = await useApp()
       const caller = await callerOf(event, app)
       requireRole(allowed, caller)
@@ -88,5 +89,5 @@ export function defineSessionRoute<T>(allowed: Allowed, handler: SessionHandler<
 
 /** A route that anyone may call: sign-in, first set-up, health. */
 export function definePublicRoute<T>(handler: (event: H3Event<EventHandlerRequest>, app: App) => Promise<T> | T) {
-  return defineEventHandler((event) => mapped(async () => handler(event, await useApp())))
+  return defineEventHandler((event) => mapped(event, async () => handler(event, await useApp())))
 }

@@ -1,4 +1,5 @@
 import { z } from 'zod'
+import { MAX_PASSWORD_LENGTH } from '../password-rules'
 import type { Role } from './common'
 import { textSchema } from './common'
 
@@ -9,7 +10,13 @@ export const emailSchema = z
   .max(254)
   .pipe(z.email('write an e-mail address such as name@example.org'))
 
-export const signInSchema = z.object({ email: emailSchema, password: z.string().min(1, 'give the password').max(200) })
+/** Its rules are checked together with whose it is. */
+const newPasswordSchema = z.string().min(1, 'give a password').max(MAX_PASSWORD_LENGTH)
+
+export const signInSchema = z.object({
+  email: emailSchema,
+  password: z.string().min(1, 'give the password').max(MAX_PASSWORD_LENGTH),
+})
 
 /** First account of a new installation; the code is printed on the server's console. */
 export const setupSchema = z.object({
@@ -17,7 +24,7 @@ export const setupSchema = z.object({
   workspace: textSchema(80).min(1, 'give the workspace a name'),
   name: textSchema(80).min(1, 'give your name'),
   email: emailSchema,
-  password: z.string().min(10, 'a password has at least 10 characters').max(200),
+  password: newPasswordSchema,
 })
 
 export interface SessionView {

@@ -1,0 +1,50 @@
+import { randomUUID } from 'node:crypto'
+import { DomainError } from '../../shared/errors'
+import type { Actor, App } from '../app'
+import { deleteAttempts, takeAttemptBack } from '../database/repositories/attempts'
+import { findUserByEmail, firstWorkspaceOf } from '../database/repositories/people'
+import { countAttempt } from './attempts'
+import type { Passwords } from './people'
+
+const PER_ADDRESS = { most: 10, withinMinutes: 15 }
+/** More, as a whole office may come from one address of the network. */
+const PER_NETWORK = { most: 60, withinMinutes: 15 }
+
+let decoy: Promise<string> | undefined
+const decoyHash = (passwords: Passwords): Promise<string> => (decoy ??= passwords.hash(randomUUID()))
+
+/**
+ * Checks e-mail and password; answers whom to sign in and where. The refusal does not say which of the two was wrong, takes
+ * as long, and comes after as many attempts, whether there is such an account or not.
+ * @param network address that the attempt comes from
+ * @throws DomainError unauthenticated, or `too many` after ten attempts that failed
+ */
+export async function signIn(
+  app: App,
+  passwords: Passwords,
+  { email, password }: { email: string; password: string },
+  network: string,
+): Promise<Actor> {
+  const keys = { address: `sign-in ${email}`, network: `sign-in from ${network}` }
+  await countAttempt(app, keys.network, PER_NETWORK)
+  await countAttempt(app, keys.address, PER_ADDRESS)
+  const user = await findUserByEmail(app.db, email)
+  // Verify against something even without an account, so that the time taken tells nothing.
+  const matches = await passwords.verify(user?.passwordHash ?? (await decoyHash(passwords)), password)
+  if (!user?.passwordHash || !matches)
+    throw new DomainError(
+      'unauthenticated',
+      'session.refused',
+      'E-mail and password do not belong together. Check both and try again.',
+    )
+  await deleteAttempts(app.db, keys.address)
+  await takeAttemptBack(app.db, keys.network)
+  const workspaceId = await firstWorkspaceOf(app.db, user.id)
+  if (!workspaceId)
+    throw new DomainError(
+      'forbidden',
+      'session.nowhere',
+      'You belong to no workspace any more. Ask an owner of one for an invitation, and open its link.',
+    )
+  return { userId: user.id, workspaceId }
+}
