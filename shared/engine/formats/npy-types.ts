@@ -50,16 +50,29 @@ function halfOf(bits: number): number {
 
 const exactly = (integer: bigint): number => (BigInt(Number(integer)) === integer ? Number(integer) : Number.NaN)
 
+/** Halves of integers of eight bytes: where the upper one is small, a double holds both, without the cost of a BigInt. */
+const SMALL_HIGH = 2 ** 21
+const HALF = 2 ** 32
+
+function longReader(little: boolean, isSigned: boolean): ElementReader {
+  const [high, low] = little ? [4, 0] : [0, 4]
+  return (view, at) => {
+    const upper = isSigned ? view.getInt32(at + high, little) : view.getUint32(at + high, little)
+    if (upper < SMALL_HIGH && upper >= -SMALL_HIGH) return upper * HALF + view.getUint32(at + low, little)
+    return exactly(isSigned ? view.getBigInt64(at, little) : view.getBigUint64(at, little))
+  }
+}
+
 const READERS: Record<string, (little: boolean) => ElementReader> = {
   b1: () => (view, at) => (view.getUint8(at) <= 1 ? view.getUint8(at) : Number.NaN),
   i1: () => (view, at) => view.getInt8(at),
   i2: (little) => (view, at) => view.getInt16(at, little),
   i4: (little) => (view, at) => view.getInt32(at, little),
-  i8: (little) => (view, at) => exactly(view.getBigInt64(at, little)),
+  i8: (little) => longReader(little, true),
   u1: () => (view, at) => view.getUint8(at),
   u2: (little) => (view, at) => view.getUint16(at, little),
   u4: (little) => (view, at) => view.getUint32(at, little),
-  u8: (little) => (view, at) => exactly(view.getBigUint64(at, little)),
+  u8: (little) => longReader(little, false),
   f2: (little) => (view, at) => halfOf(view.getUint16(at, little)),
   f4: (little) => (view, at) => view.getFloat32(at, little),
   f8: (little) => (view, at) => view.getFloat64(at, little),

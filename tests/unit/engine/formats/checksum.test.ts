@@ -14,4 +14,20 @@ describe('crc32', () => {
     for (let cut = 0; cut <= whole.length; cut++)
       expect(crc32(whole.subarray(cut), crc32(whole.subarray(0, cut)))).toBe(crc32(whole))
   })
+
+  it('is the remainder of bit by bit division, whatever the length', () => {
+    const divided = (contents: Uint8Array): number => {
+      let rest = 0xffffffff
+      for (const byte of contents)
+        for (let bit = 0; bit < 8; bit++) {
+          const isOdd = ((rest ^ (byte >>> bit)) & 1) === 1
+          rest = (rest >>> 1) ^ (isOdd ? 0xedb88320 : 0)
+        }
+      return ~rest >>> 0
+    }
+    for (let length = 0; length < 70; length++) {
+      const contents = Uint8Array.from({ length }, (_, k) => (k * 151 + length * 89) & 0xff)
+      expect(crc32(contents)).toBe(divided(contents))
+    }
+  })
 })
