@@ -23,6 +23,7 @@ export function useSession() {
     may,
     signIn: (email: string, password: string) => enter('/api/session', { email, password }),
     setUp: (body: Record<string, unknown>) => enter('/api/setup', body),
+    join: (secret: string, body: { name: string; password: string }) => enter(`/api/invited/${secret}`, body),
     async signOut() {
       await api.remove('/api/session')
       // A whole new page, so that nothing of this person stays in memory.

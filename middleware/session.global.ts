@@ -1,10 +1,10 @@
 const OPEN = ['/sign-in', '/setup']
-/** Answers behind a link are for people without an account. */
-const SHARED = '/answers/'
+/** What is behind a secret link is for people who are not signed in, or have no account. */
+const SHARED = ['/answers/', '/invitations/']
 
 /** Sends visitors without a session to the sign-in page, and back to where they wanted to go afterwards. */
 export default defineNuxtRouteMiddleware(async (to) => {
-  if (OPEN.includes(to.path) || to.path.startsWith(SHARED)) return
+  if (OPEN.includes(to.path) || SHARED.some((folder) => to.path.startsWith(folder))) return
   const { session, load } = useSession()
   if (!session.value) await load()
   if (!session.value) return navigateTo({ path: '/sign-in', query: to.path === '/' ? {} : { next: to.fullPath } })

@@ -1,5 +1,6 @@
 import { groupDigits } from '../../shared/engine/digits'
 import type { EmbeddingDamage } from '../../shared/schemas/machines'
+import type { Role } from '../../shared/schemas/common'
 import type { RunSheetState } from '../../shared/schemas/run-sheets'
 import type { Letter, LetterItem, LetterPart } from './letter'
 import { oneLine } from './letter'
@@ -140,5 +141,23 @@ export function movedLetter(sheet: SheetForLetter, moved: string, was: RunSheetS
     ],
     action: { label: `Open RS-${sheet.number}`, path: `/run-sheets/${sheet.id}` },
     because: REASONS[reason],
+  }
+}
+
+/** Somebody is asked into a workspace. @param path of the page behind the secret link */
+export function invitationLetter(workspace: string, by: string, roles: readonly Role[], path: string): Letter {
+  return {
+    kind: 'invitation',
+    subject: `${oneLine(by)} invites you to ${oneLine(workspace)} on Espalier`,
+    parts: [
+      {
+        text: `${oneLine(by)} asks you into the workspace ${oneLine(workspace)}, where problems are prepared for quantum annealers. You would be: ${roles.join(', ')}.`,
+      },
+      {
+        text: 'The link holds for seven days and can be used once. If you do not know what this is about, do nothing.',
+      },
+    ],
+    action: { label: 'Accept the invitation', path },
+    because: `${oneLine(by)} gave this address for the invitation`,
   }
 }

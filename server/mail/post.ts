@@ -12,7 +12,7 @@ import type { MailSettings } from './settings'
  */
 export const POST_FACT = 'post'
 
-interface PostFact {
+export interface PostFact {
   site: string
   sends: boolean
 }
@@ -34,16 +34,25 @@ const nextAfter =
   (attempts: number): Date =>
     new Date(now.getTime() + (WAITS[attempts - 1] ?? WAITS.at(-1)!) * MINUTE_MS)
 
+/** Links of letters that are in no outbox are secrets: their words are not kept when the letter is done with. */
+const forgotten = ({ workspaceId }: MailRow) => (workspaceId === null ? { text: '', html: '' } : {})
+
 async function attempt(app: App, mailer: Mailer, mail: MailRow): Promise<void> {
   try {
     await mailer.send({ ...mail, to: mail.toAddress })
   } catch (error) {
     const reason = (error instanceof Error ? error.message : String(error)).slice(0, MAX_REASON)
     const over = error instanceof MailRefused || mail.attempts >= MAX_ATTEMPTS
-    const set = over ? { state: 'given up' as const, nextAttemptAt: null, reason } : { reason }
+    const set = over ? { state: 'given up' as const, nextAttemptAt: null, reason, ...forgotten(mail) } : { reason }
     return settleMail(app.db, mail.id, set)
   }
-  await settleMail(app.db, mail.id, { state: 'sent', sentAt: app.now(), nextAttemptAt: null, reason: null })
+  await settleMail(app.db, mail.id, {
+    state: 'sent',
+    sentAt: app.now(),
+    nextAttemptAt: null,
+    reason: null,
+    ...forgotten(mail),
+  })
 }
 
 /**

@@ -9,6 +9,7 @@ import { pageOf, positionOf } from '../database/repositories/pages'
 import { readFact } from '../database/repositories/people'
 import type { Letter } from '../mail/letter'
 import { writeLetter } from '../mail/letter'
+import type { PostFact } from '../mail/post'
 import { POST_FACT, postOf } from '../mail/post'
 
 /**
@@ -24,25 +25,46 @@ export async function tell(
 ): Promise<void> {
   const ids = [...letters.keys()].filter((id) => id !== by)
   const addressees = await addresseesOf(tx, workspaceId, ids)
-  const { site, sends } = postOf(await readFact(tx, POST_FACT))
-  const now = app.now()
+  const post = postOf(await readFact(tx, POST_FACT))
   await insertMails(
     tx,
-    addressees.map(({ id: toUserId, email }) => {
-      const letter = letters.get(toUserId)!
-      return {
-        id: randomUUID(),
-        workspaceId,
-        toUserId,
-        toAddress: email,
-        kind: letter.kind,
-        ...writeLetter(letter, site),
-        state: sends ? ('waiting' as const) : ('kept' as const),
-        nextAttemptAt: sends ? now : null,
-        createdAt: now,
-      }
-    }),
+    addressees.map(({ id, email }) => rowOf(app, post, { workspaceId, userId: id, address: email }, letters.get(id)!)),
   )
+}
+
+interface Receiver {
+  /** Whose outbox shows it; null for none. */
+  workspaceId: string | null
+  userId: string | null
+  address: string
+}
+
+function rowOf(app: App, { site, sends }: PostFact, { workspaceId, userId, address }: Receiver, letter: Letter) {
+  const createdAt = app.now()
+  return {
+    ...{ id: randomUUID(), workspaceId, toUserId: userId, toAddress: address, kind: letter.kind },
+    ...writeLetter(letter, site),
+    state: sends ? ('waiting' as const) : ('kept' as const),
+    nextAttemptAt: sends ? createdAt : null,
+    createdAt,
+  }
+}
+
+/**
+ * Sends a letter whose link is a secret of whoever gets it. No outbox shows it, and its words are forgotten once it is
+ * sent; where this installation sends no mail nothing is kept at all.
+ * @returns the link where no mail is sent, for whom it may be told
+ */
+export async function writeSecretLink(
+  app: App,
+  tx: Db,
+  to: Omit<Receiver, 'workspaceId'>,
+  letter: Letter,
+): Promise<string | null> {
+  const post = postOf(await readFact(tx, POST_FACT))
+  if (!post.sends) return post.site + letter.action.path
+  await insertMails(tx, [rowOf(app, post, { ...to, workspaceId: null }, letter)])
+  return null
 }
 
 /** Messages of the workspace, newest first. */

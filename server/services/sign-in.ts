@@ -2,6 +2,7 @@ import { randomUUID } from 'node:crypto'
 import { DomainError } from '../../shared/errors'
 import type { Actor, App } from '../app'
 import { deleteAttempts, takeAttemptBack } from '../database/repositories/attempts'
+import type { UserRow } from '../database/repositories/people'
 import { findUserByEmail, firstWorkspaceOf } from '../database/repositories/people'
 import { countAttempt } from './attempts'
 import type { Passwords } from './people'
@@ -13,18 +14,23 @@ const PER_NETWORK = { most: 60, withinMinutes: 15 }
 let decoy: Promise<string> | undefined
 const decoyHash = (passwords: Passwords): Promise<string> => (decoy ??= passwords.hash(randomUUID()))
 
+export interface Credentials {
+  email: string
+  password: string
+}
+
 /**
- * Checks e-mail and password; answers whom to sign in and where. The refusal does not say which of the two was wrong, takes
- * as long, and comes after as many attempts, whether there is such an account or not.
+ * Whose e-mail and password these are. The refusal does not say which of the two was wrong, takes as long, and comes after
+ * as many attempts, whether there is such an account or not.
  * @param network address that the attempt comes from
  * @throws DomainError unauthenticated, or `too many` after ten attempts that failed
  */
-export async function signIn(
+export async function requirePassword(
   app: App,
   passwords: Passwords,
-  { email, password }: { email: string; password: string },
+  { email, password }: Credentials,
   network: string,
-): Promise<Actor> {
+): Promise<UserRow> {
   const keys = { address: `sign-in ${email}`, network: `sign-in from ${network}` }
   await countAttempt(app, keys.network, PER_NETWORK)
   await countAttempt(app, keys.address, PER_ADDRESS)
@@ -39,12 +45,18 @@ export async function signIn(
     )
   await deleteAttempts(app.db, keys.address)
   await takeAttemptBack(app.db, keys.network)
-  const workspaceId = await firstWorkspaceOf(app.db, user.id)
+  return user
+}
+
+/** Checks e-mail and password as `requirePassword` does; answers whom to sign in and where. */
+export async function signIn(app: App, passwords: Passwords, given: Credentials, network: string): Promise<Actor> {
+  const { id: userId } = await requirePassword(app, passwords, given, network)
+  const workspaceId = await firstWorkspaceOf(app.db, userId)
   if (!workspaceId)
     throw new DomainError(
       'forbidden',
       'session.nowhere',
       'You belong to no workspace any more. Ask an owner of one for an invitation, and open its link.',
     )
-  return { userId: user.id, workspaceId }
+  return { userId, workspaceId }
 }

@@ -2,7 +2,7 @@ import { z } from 'zod'
 import { pageQuerySchema } from './common'
 
 /** What a message tells: one kind for each reason to write to somebody. */
-export type MailKind = 'embedding broken' | 'run sheet handed over' | 'run sheet remark'
+export type MailKind = 'embedding broken' | 'run sheet handed over' | 'run sheet remark' | 'invitation'
 
 /**
  * waiting: to be sent, or tried again; sent: taken by the mail server; kept: there is no mail server, read it in the

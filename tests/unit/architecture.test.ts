@@ -69,6 +69,8 @@ describe('the house', () => {
     const open = [
       'entrance.get.ts',
       'health.get.ts',
+      'invited/[secret].get.ts',
+      'invited/[secret].post.ts',
       'answer-sheets/[token].get.ts',
       'schemas/problem.json.get.ts',
       'schemas/samples.json.get.ts',

@@ -64,7 +64,7 @@ export async function claimDueMail(
 export async function settleMail(
   db: Db,
   id: string,
-  set: Pick<Partial<MailRow>, 'state' | 'reason' | 'sentAt' | 'nextAttemptAt'>,
+  set: Pick<Partial<MailRow>, 'state' | 'reason' | 'sentAt' | 'nextAttemptAt' | 'text' | 'html'>,
 ): Promise<void> {
   await db
     .update(mails)

@@ -47,10 +47,11 @@ export async function prepareRunning(url: string): Promise<Running> {
   const jobs = [search.jobId, rehearsal.jobId]
   const returned = sheets.items.find(({ state }) => state === 'returned')!
   const shared = await sharedAnswer(developer, returned.id)
+  const invited = await invitation(url)
   return {
     paths: [
       ...[`/problems/${dense}`, `/embeddings/${search.id}`],
-      ...[`/run-sheets/${approved.id}`, `/returns/${rehearsal.returnId}`, shared],
+      ...[`/run-sheets/${approved.id}`, `/returns/${rehearsal.returnId}`, shared, invited],
     ],
     async stop() {
       for (const id of jobs) await developer.call('DELETE', `/api/jobs/${id}`)
@@ -68,6 +69,13 @@ async function sharedAnswer(developer: Client, runSheetId: string): Promise<stri
   const samples = returns.find(({ source }) => source === 'upload')!
   const body = { remark: 'For the radio office: channel by channel.' }
   return (await created<{ url: string }>(developer.post(`/api/returns/${samples.id}/answer-sheet`, body))).url
+}
+
+/** The page of an invitation, which only who gets its link can find. */
+async function invitation(url: string): Promise<string> {
+  const owner = await Client.signedIn(url, 'owner')
+  const body = { email: 'newcomer@brackwater.example', roles: ['reader'] }
+  return new URL((await created<{ link: string }>(owner.post('/api/invitations', body))).link).pathname
 }
 
 async function created<T>(answer: Promise<{ status: number; body: T; text: string }>, status = 201): Promise<T> {

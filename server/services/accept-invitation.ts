@@ -1,0 +1,85 @@
+import { DomainError } from '../../shared/errors'
+import type { Accept, InvitedView } from '../../shared/schemas/invitations'
+import type { Actor, App } from '../app'
+import type { Db } from '../database/client'
+import type { InvitationRow } from '../database/repositories/invitations'
+import { holdInvitation, updateInvitation } from '../database/repositories/invitations'
+import { findRoles, findUserByEmail, insertMembership } from '../database/repositories/people'
+import { requireGoodPassword } from './password-rules'
+import type { Passwords } from './people'
+import { createAccount } from './people'
+import { secretHash } from './secrets'
+import { requirePassword } from './sign-in'
+
+/** The same for a link that is unknown, has expired, was used or taken back. */
+async function openInvitation(app: App, tx: Db, secret: string) {
+  const found = await holdInvitation(tx, secretHash(secret))
+  if (found && found.invitation.expiresAt > app.now()) return found
+  throw new DomainError(
+    'not found',
+    'invitation.gone',
+    'This link leads to no open invitation. It may be older than seven days, used already, or replaced by a newer one. Ask whoever invited you to send it again.',
+  )
+}
+
+/** What an invitation is for, for whoever holds its link. */
+export async function invitedView(app: App, secret: string): Promise<InvitedView> {
+  return app.db.transaction(async (tx) => {
+    const { invitation, workspace } = await openInvitation(app, tx, secret)
+    const { email, roles, expiresAt } = invitation
+    const hasAccount = (await findUserByEmail(tx, email)) !== undefined
+    return { workspace, email, roles, hasAccount, expiresAt: expiresAt.toISOString() }
+  })
+}
+
+/**
+ * Joins the workspace: with the password of the account that the address has, or with a new account.
+ * @param network address that the attempt comes from
+ * @returns whom to sign in and where
+ */
+export async function acceptInvitation(
+  app: App,
+  passwords: Passwords,
+  secret: string,
+  { name, password }: Accept,
+  network: string,
+): Promise<Actor> {
+  const { email, hasAccount } = await invitedView(app, secret)
+  if (hasAccount) {
+    const user = await requirePassword(app, passwords, { email, password }, network)
+    return app.db.transaction(async (tx) => {
+      const { invitation } = await openInvitation(app, tx, secret)
+      return join(app, tx, invitation, user.id)
+    })
+  }
+  if (!name)
+    throw new DomainError('not acceptable', 'invitation.name', 'Give your name.', [
+      { path: 'name', message: 'give your name' },
+    ])
+  requireGoodPassword(password, { name, email })
+  const passwordHash = await passwords.hash(password)
+  return app.db.transaction(async (tx) => {
+    const { invitation } = await openInvitation(app, tx, secret)
+    const { workspaceId, roles } = invitation
+    if (await findUserByEmail(tx, email))
+      throw new DomainError(
+        'wrong state',
+        'invitation.account',
+        'This address has an account by now. Load the page again and give its password.',
+      )
+    const userId = await createAccount(app, tx, { name, email, passwordHash, workspaceId, roles })
+    await settle(app, tx, invitation, userId)
+    return { userId, workspaceId }
+  })
+}
+
+async function join(app: App, tx: Db, invitation: InvitationRow, userId: string): Promise<Actor> {
+  const { workspaceId, roles } = invitation
+  if (!(await findRoles(tx, workspaceId, userId)))
+    await insertMembership(tx, { workspaceId, userId, roles, createdAt: app.now() })
+  await settle(app, tx, invitation, userId)
+  return { userId, workspaceId }
+}
+
+const settle = (app: App, tx: Db, { id }: InvitationRow, acceptedBy: string): Promise<void> =>
+  updateInvitation(tx, id, { acceptedBy, acceptedAt: app.now() })
