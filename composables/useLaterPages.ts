@@ -2,8 +2,8 @@ import type { Page } from '#shared/schemas/common'
 import type { ApiFailure } from './useApi'
 
 /** Joins further pages of a list to its first one; loading the first one anew drops them. */
-export function useLaterPages<T>(first: Ref<Page<T> | undefined>, addressOf: (cursor: string) => string) {
-  const later = shallowRef<{ after?: Page<T>; pages: Page<T>[] }>({ pages: [] })
+export function useLaterPages<T>(first: Ref<Page<T> | null | undefined>, addressOf: (cursor: string) => string) {
+  const later = shallowRef<{ after?: Page<T> | null; pages: Page<T>[] }>({ pages: [] })
   const isLoadingMore = ref(false)
   const moreFailure = shallowRef<ApiFailure | null>(null)
 

@@ -23,16 +23,9 @@ export function useReturnComparison(problemId: string) {
 
   const url = computed(() => `/api/problems/${problemId}/returns?decode=${decode.value}&gap=${gap.value}`)
   // Worked out when first asked for: the page is there before it.
-  const { data, error, status, refresh } = useAsyncData(
-    url,
-    () => ($fetch as (url: string) => Promise<ReturnComparison>)(url.value),
-    { server: false, lazy: true },
-  )
-  /** The last answer stays while the next one is fetched. */
-  const shown = shallowRef<ReturnComparison>()
-  watch(data, (next) => next && (shown.value = next as ReturnComparison), { immediate: true })
-  const pages = useLaterPages(shown, (cursor) => `${url.value}&cursor=${encodeURIComponent(cursor)}`)
-  const failure = computed(() => (error.value ? failureOf(error.value) : null))
+  const late = useLateLoad(() => $fetch<ReturnComparison>(url.value))
+  onMounted(() => watch(url, late.load, { immediate: true }))
+  const pages = useLaterPages(late.data, (cursor) => `${url.value}&cursor=${encodeURIComponent(cursor)}`)
   const csv = computed(() => `${url.value}&format=csv`)
-  return { decode, gap, measure, against, shown, ...pages, failure, status, refresh, csv }
+  return { decode, gap, measure, against, ...pages, ...late, csv }
 }

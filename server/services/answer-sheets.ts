@@ -1,4 +1,4 @@
-import { createHash, randomBytes, randomUUID } from 'node:crypto'
+import { randomUUID } from 'node:crypto'
 import { DomainError } from '../../shared/errors'
 import type { AnswerPage, AnswerView, ShareAnswer, SharedAnswer } from '../../shared/schemas/answers'
 import type { Decoding } from '../../shared/schemas/returns'
@@ -13,10 +13,7 @@ import { answerView } from './answer-view'
 import { readyRow } from './loaded-return'
 import { solutionsCsv } from './return-solutions'
 import { returnRow } from './returns'
-
-const SECRET_BYTES = 24
-
-const hashOf = (secret: string): string => createHash('sha256').update(secret).digest('hex')
+import { newSecret, secretHash } from './secrets'
 
 /** The answer with the links that stand, for members of the workspace. */
 export async function answerPage(
@@ -50,7 +47,8 @@ export async function shareAnswer(
   { decode, assignments, remark }: ShareAnswer,
 ): Promise<{ id: string; url: string }> {
   await readyRow(app, actor, returnId)
-  const [id, secret] = [randomUUID(), randomBytes(SECRET_BYTES).toString('base64url')]
+  const id = randomUUID()
+  const { secret, tokenHash } = newSecret()
   await insertAnswerSheet(app.db, {
     id,
     workspaceId: actor.workspaceId,
@@ -58,7 +56,7 @@ export async function shareAnswer(
     decode,
     solutions: assignments,
     remark,
-    tokenHash: hashOf(secret),
+    tokenHash,
     createdBy: actor.userId,
     createdAt: app.now(),
   })
@@ -73,7 +71,7 @@ export async function revokeAnswer(app: App, actor: Actor, returnId: string): Pr
 
 /** @throws DomainError not found: the same for a link that never was, that was revoked, and whose samples are gone */
 export async function sharedAnswer(app: App, secret: string): Promise<SharedAnswer> {
-  const found = await findAnswerSheet(app.db, hashOf(secret))
+  const found = await findAnswerSheet(app.db, secretHash(secret))
   if (!found)
     throw new DomainError(
       'not found',

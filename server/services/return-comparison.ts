@@ -1,9 +1,6 @@
 import { csvCell } from '../../shared/csv'
-import {
-  successProbability,
-  readsForConfidence,
-  readsForConfidenceInterval,
-} from '../../shared/engine/readout/intervals'
+import type { Success } from '../../shared/engine/readout/success'
+import { successOf, successWithin } from '../../shared/engine/readout/success'
 import type { ComparedReturn, ReturnComparison, ReturnComparisonQuery } from '../../shared/schemas/return-comparison'
 import type { Actor, App } from '../app'
 import { pageOf, positionOf } from '../database/repositories/pages'
@@ -32,17 +29,15 @@ interface Stand {
 type Listed = Awaited<ReturnType<typeof returnsOfProblem>>[number]
 
 /** Reads that come within the gap of the reference, of all reads: those that the decoding drops are no successes. */
-function successOf(
+function successOfAll(
   { reference }: Stand,
-  query: ReturnComparisonQuery,
+  gap: number,
   reads: number,
   decoded: ReturnType<typeof weighted>,
-) {
+): Success | null {
   if (!reference) return null
-  const most = reference.energy + query.gap + reference.tolerance
-  const hits = decoded.counts.reduce((sum, count, k) => sum + (decoded.energies[k]! <= most ? count : 0), 0)
-  const success = successProbability(hits, reads)
-  return { ...success, r99: readsForConfidence(success.p), r99Interval: readsForConfidenceInterval(success) }
+  const { energy, tolerance } = reference
+  return successOf(successWithin({ ...decoded, reference: energy, gap, tolerance }).successes, reads)
 }
 
 function gapOf(best: number | null, { bench, reference }: Stand): number | null {
@@ -66,7 +61,7 @@ async function comparedReturn(
   const decoded = decodedBy(summary, query.decode)
   const { best, mean } = decodingRow(bench, decoded)
   const time = timeOfReads(row, bench)
-  const success = successOf(stand, query, row.reads, weighted(decoded))
+  const success = successOfAll(stand, query.gap, row.reads, weighted(decoded))
   const view = success && successView(success, time)
   return {
     id: row.id,

@@ -1,4 +1,4 @@
-import { createHash, randomBytes, randomUUID } from 'node:crypto'
+import { randomUUID } from 'node:crypto'
 import { DomainError } from '../../shared/errors'
 import type { Page, PageQuery, Role } from '../../shared/schemas/common'
 import type { CreateToken, MadeToken, TokenStanding, TokenView } from '../../shared/schemas/tokens'
@@ -14,15 +14,13 @@ import {
   noteTokenUse,
 } from '../database/repositories/tokens'
 import { rolesIn } from './people'
+import { newSecret, secretHash } from './secrets'
 
 /** Tells what it is to whoever finds one, and to programs that look for secrets in files. */
 const PREFIX = 'espalier_'
-const SECRET_BYTES = 32
 const MOST_TOKENS = 50
 /** Its last use is written down no more often than this. */
 const USE_NOTED_MS = 60_000
-
-const hashOf = (token: string): string => createHash('sha256').update(token).digest('hex')
 
 /** Somebody with the roles they hold. */
 interface Holder extends Actor {
@@ -58,12 +56,12 @@ export async function createToken(app: App, { roles, ...actor }: Holder, input: 
       'token.many',
       `You have ${MOST_TOKENS} tokens, which is as many as one person may have. Revoke one that is used no more.`,
     )
-  const token = PREFIX + randomBytes(SECRET_BYTES).toString('base64url')
+  const { secret: token, tokenHash } = newSecret(PREFIX)
   const id = randomUUID()
   const { name, role } = input
   await insertToken(app.db, {
     ...{ id, workspaceId: actor.workspaceId, userId: actor.userId, name, role, expiresAt },
-    tokenHash: hashOf(token),
+    tokenHash,
     createdAt: app.now(),
     usedAt: null,
   })
@@ -89,7 +87,7 @@ export async function revokeToken(app: App, holder: Holder, id: string): Promise
 }
 
 const REFUSED: Record<Exclude<TokenStanding, 'valid'>, string> = {
-  expired: 'This token has expired. Make a new one under People, Tokens.',
+  expired: 'This token has expired. Sign in and make a new one: POST /api/tokens.',
   'role lost': 'The person who made this token no longer holds its role here, so it opens nothing.',
 }
 
@@ -98,7 +96,7 @@ const REFUSED: Record<Exclude<TokenStanding, 'valid'>, string> = {
  * @throws DomainError unauthenticated, for a token that is unknown, has expired, or whose maker lost the role
  */
 export async function tokenCaller(app: App, token: string): Promise<TokenCaller> {
-  const row = token.startsWith(PREFIX) ? await findTokenByHash(app.db, hashOf(token)) : undefined
+  const row = token.startsWith(PREFIX) ? await findTokenByHash(app.db, secretHash(token)) : undefined
   if (!row)
     throw new DomainError('unauthenticated', 'token.unknown', 'This is no token of this server, or it was revoked.')
   const { userId, workspaceId } = row

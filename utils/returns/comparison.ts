@@ -1,3 +1,4 @@
+import { Z_95 } from '#shared/engine/readout/intervals'
 import type { ComparedReturn } from '#shared/schemas/return-comparison'
 import type { ColourName } from '../../assets/css/tokens'
 import type { ChartAxis, ChartPoint, ChartSeries } from '../ui/chart/types'
@@ -20,7 +21,6 @@ interface Measure {
   of: (item: ComparedReturn) => Value | null
 }
 
-const Z_95 = 1.959964
 const percent = ({ rate, low, high }: { rate: number; low: number; high: number }): Value => ({
   y: 100 * rate,
   low: 100 * low,

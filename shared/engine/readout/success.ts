@@ -25,6 +25,12 @@ export function reaches({ energies, reference, gap, tolerance }: Omit<SuccessInp
   return Uint8Array.from(energies, (energy) => (energy <= reference + gap + tolerance ? 1 : 0))
 }
 
+/** Success of so many reads out of all, with what follows from it. */
+export function successOf(successes: number, trials: number): Success {
+  const success = successProbability(successes, trials)
+  return { ...success, r99: readsForConfidence(success.p), r99Interval: readsForConfidenceInterval(success) }
+}
+
 /**
  * Share of all reads that come within a gap of a reference, with Wilson's interval, and R99 from it. Reads that the
  * decoding drops are no successes: they took their time too.
@@ -37,6 +43,5 @@ export function successWithin(input: SuccessInput): Success {
     trials += count
     successes += count * hit[row]!
   })
-  const success = successProbability(successes, trials)
-  return { ...success, r99: readsForConfidence(success.p), r99Interval: readsForConfidenceInterval(success) }
+  return successOf(successes, trials)
 }
