@@ -87,7 +87,7 @@ export async function revokeToken(app: App, holder: Holder, id: string): Promise
 }
 
 const REFUSED: Record<Exclude<TokenStanding, 'valid'>, string> = {
-  expired: 'This token has expired. Sign in and make a new one: POST /api/tokens.',
+  expired: 'This token has expired. Make a new one on the page People, Tokens.',
   'role lost': 'The person who made this token no longer holds its role here, so it opens nothing.',
 }
 

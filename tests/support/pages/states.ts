@@ -14,6 +14,7 @@ export async function prepareStates(url: string): Promise<void> {
   const { small, machine, embedding } = await prepareEmbeddings(developer, steward)
   await prepareRunSheets(developer, reviewer, embedding)
   await prepareBroken(developer, steward, small, machine)
+  await created(developer.post('/api/tokens', { name: 'nightly rehearsals', role: 'developer' }))
 }
 
 export interface Running {
