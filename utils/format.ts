@@ -73,9 +73,24 @@ export function formatPercent(fraction: Maybe, format: NumberFormat = { signific
   return `${formatNumber(fraction * 100, format)}${THIN_SPACE}%`
 }
 
-/** An interval: `12–17`; with a negative end the dash would read as a minus, so `−4 to 4`. */
+/** Places after the point that both ends of an interval take: the larger one has so many significant digits. */
+function commonPlaces(low: number, high: number, significant: number): number | undefined {
+  const size = Math.max(Math.abs(low), Math.abs(high))
+  if (size === 0 || size >= DEFAULTS.exponentFrom || size < DEFAULTS.exponentBelow) return undefined
+  const places = Math.max(0, significant - Math.ceil(Math.log10(size)))
+  const areWhole = [low, high].every((end) => Number.isInteger(Number(end.toFixed(places))))
+  return areWhole ? 0 : places
+}
+
+/**
+ * An interval: `12–17`, both ends to the same place, `6.0–9.3`; with a negative end the dash would read as a minus, so
+ * `−4 to 4`.
+ */
 export function formatInterval(low: Maybe, high: Maybe, format: NumberFormat = { significant: 3 }): string {
-  const ends = [formatNumber(low, format), formatNumber(high, format)]
+  const { decimals, significant = 3 } = format
+  const places =
+    decimals ?? (Number.isFinite(low) && Number.isFinite(high) ? commonPlaces(low!, high!, significant) : undefined)
+  const ends = [low, high].map((end) => formatNumber(end, { ...format, decimals: places }))
   if (ends[0] === NO_VALUE || ends[1] === NO_VALUE) return NO_VALUE
   return ends.some((end) => end.startsWith(MINUS)) ? ends.join(' to ') : ends.join('–')
 }

@@ -83,13 +83,13 @@ export function provenance(answer: AnswerView): { label: string; value: string; 
     ...(runSheet.fingerprint
       ? [
           {
-            label: 'Programmed values, SHA-256',
+            label: 'SHA-256 of programmed values',
             value: runSheet.fingerprint,
             note: runSheet.reviewedBy ? `approved by ${runSheet.reviewedBy}` : undefined,
           },
         ]
       : [{ label: 'Approved', value: 'no', note: 'the run sheet was not approved, its settings may change' }]),
-    ...(typeof made.sha256 === 'string' ? [{ label: 'File of samples, SHA-256', value: made.sha256 }] : []),
+    ...(typeof made.sha256 === 'string' ? [{ label: 'SHA-256 of the samples’ file', value: made.sha256 }] : []),
     { label: 'Espalier', value: version },
   ]
 }

@@ -14,6 +14,16 @@ export function viewOfBox(box: Box, width: number, height: number, margin: numbe
   }
 }
 
+/**
+ * The view that shows the box as large as `widest` lets it; where the whole of `bounds` has room at that scale, with
+ * that in the middle.
+ */
+export function viewWithin(box: Box, bounds: Box, width: number, height: number, margin: number, widest: number): View {
+  const view = viewOfBox(box, width, height, margin, widest)
+  const whole = viewOfBox(bounds, width, height, margin, view.scale)
+  return whole.scale < view.scale ? view : whole
+}
+
 export const padBox = ({ x1, y1, x2, y2 }: Box, by: number): Box => ({
   x1: x1 - by,
   y1: y1 - by,

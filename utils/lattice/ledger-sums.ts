@@ -8,7 +8,7 @@ export interface LedgerSums {
   readonly longest: number
   /** Couplers to other chains; one between two of these chains counts for both. */
   readonly couplers: number
-  /** Broken chain reads over all chain reads. */
+  /** Broken chain reads over all reads of chains of two or more qubits: a single one cannot break. */
   readonly breakRate: number | null
   /** Fullest coupling sum, as a share of the range. */
   readonly fullest: number | null
@@ -18,7 +18,7 @@ export function sumsOf(rows: readonly LedgerRow[]): LedgerSums {
   const total = (valueOf: (row: LedgerRow) => number) => rows.reduce((sum, row) => sum + valueOf(row), 0)
   const greatest = (valueOf: (row: LedgerRow) => number) => rows.reduce((most, row) => Math.max(most, valueOf(row)), 0)
   const qubits = total((row) => row.qubits)
-  const reads = total((row) => row.breaks?.reads ?? 0)
+  const reads = total((row) => (row.qubits > 1 ? (row.breaks?.reads ?? 0) : 0))
   return {
     chains: rows.length,
     qubits,

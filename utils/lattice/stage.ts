@@ -13,7 +13,7 @@ import {
 import type { Corner } from './camera-moves'
 import { coverageOf, coveredIn } from './coverage'
 import type { Drawing } from './drawing'
-import { viewOfBox } from './framing'
+import { viewOfBox, viewWithin } from './framing'
 import type { Layers } from './layers'
 import type { Painter } from './painter'
 import type { PictureLook } from './picture'
@@ -102,7 +102,7 @@ export class LatticeStage {
    * @param first box to be shown at the start; null keeps the view
    */
   begin(source: StageSource, look: StageLook, first: Box | null): void {
-    const view = first ? this.fitting(first) : this.view()
+    const view = first ? this.fitting(first, source.bounds) : this.view()
     const hadCamera = this.drawing !== null
     const keepsCamera = hadCamera && first === null && this.source?.data === source.data
     this.source = source
@@ -201,9 +201,9 @@ export class LatticeStage {
     this.tags.kill()
   }
 
-  private fitting(box: Box): View {
+  private fitting(box: Box, bounds = this.source?.bounds ?? box): View {
     const { margin, largestFit } = STAGE_DEFAULTS
-    return viewOfBox(box, this.size.width, this.size.height, margin, largestFit)
+    return viewWithin(box, bounds, this.size.width, this.size.height, margin, largestFit)
   }
 
   /** @returns whether the size has changed */

@@ -39,7 +39,7 @@ function annealingRows(samples: ReturnView): MadeRow[] {
   const { made } = samples
   return [
     { label: 'Sweeps a read', value: number(made.sweeps) },
-    { label: 'Final temperature', value: number(made.temperature), note: 'in units of the programmed values' },
+    { label: 'Final temperature', value: number(made.temperature), note: 'In units of the programmed values.' },
     ...arithmeticRows(samples),
   ]
 }

@@ -1,5 +1,5 @@
 import { describe, expect, it } from 'vitest'
-import { bandWidth, padBox, viewOfBox } from '../../../../utils/lattice/framing'
+import { bandWidth, padBox, viewOfBox, viewWithin } from '../../../../utils/lattice/framing'
 import { rulerTicks } from '../../../../utils/lattice/ruler'
 import { boxOfSegments } from '../../../../utils/lattice/segments'
 
@@ -11,6 +11,15 @@ describe('framing', () => {
     expect(view.x + 30 * view.scale).toBe(410)
     expect(view.y + 22 * view.scale).toBe(150)
     expect(viewOfBox({ x1: 1, y1: 1, x2: 1, y2: 1 }, 100, 100, 10, 30).scale).toBe(30)
+  })
+
+  it('shows a small machine whole where its chains would be drawn no larger', () => {
+    const chains = { x1: 1, y1: 4, x2: 3, y2: 6 }
+    const small = { x1: 0, y1: 0, x2: 11, y2: 11 }
+    const view = viewWithin(chains, small, 420, 420, 10, 30)
+    expect(view).toEqual({ scale: 30, x: 210 - 30 * 5.5, y: 210 - 30 * 5.5 })
+    const large = { x1: 0, y1: 0, x2: 40, y2: 11 }
+    expect(viewWithin(chains, large, 420, 420, 10, 30)).toEqual(viewOfBox(chains, 420, 420, 10, 30))
   })
 
   it('keeps bands of neighbouring lines apart from the moment they can be', () => {

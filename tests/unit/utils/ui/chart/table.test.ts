@@ -30,7 +30,7 @@ describe('chartTable', () => {
     const table = chartTable(scan)
     expect(table.headings).toEqual(['k', 'any: reads, %', 'interval', 'chains: reads, %'])
     expect(table.rows).toEqual([
-      ['8', '100', '99.6–100', '14.1'],
+      ['8', '100', '99.6–100.0', '14.1'],
       ['12', '66', '63–69', '–'],
       ['20', '–', '–', '0.1'],
     ])
@@ -112,7 +112,7 @@ describe('chartCsv', () => {
 
 describe('chartSummary', () => {
   it('says range and count, or that there is nothing', () => {
-    expect(chartSummary(scan)).toContain('reads, %: 0.1–100, 4 values. Series: any, chains.')
+    expect(chartSummary(scan)).toContain('reads, %: 0.1–100.0, 4 values. Series: any, chains.')
     expect(chartSummary({ ...scan, series: [] })).toBe('Breaks against strength: no data.')
   })
 })
