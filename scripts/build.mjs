@@ -13,6 +13,7 @@ const SOURCES = [
     'assets',
     'components',
     'composables',
+    'docs/openapi.json',
     'docs/problem.schema.json',
     'docs/samples.schema.json',
     'layouts',

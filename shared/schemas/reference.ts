@@ -26,6 +26,8 @@ export const referenceQuerySchema = z.object({
   format: z.enum(['json', 'csv']).default('json'),
 })
 
+export const referencesQuerySchema = referenceQuerySchema.pick({ version: true })
+
 /** The `detail` of a job that looks for a reference optimum; energies in the problem's own sense. */
 export interface ReferenceProgress {
   /** Null until every component has some state. */

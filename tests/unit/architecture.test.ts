@@ -72,6 +72,7 @@ describe('the house', () => {
       'invited/[secret].get.ts',
       'invited/[secret].post.ts',
       'answer-sheets/[token].get.ts',
+      'openapi.json.get.ts',
       'schemas/problem.json.get.ts',
       'schemas/samples.json.get.ts',
       'session.delete.ts',
