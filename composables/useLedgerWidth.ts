@@ -1,9 +1,13 @@
 /** Size of the root's letters that the pixels of the ledger's columns are meant for. */
 const ROOT_PIXELS = 16
 
-/** Width of the ledger in pixels of letters of the usual size, and whether it is worked with fingers. */
+/**
+ * Width of the ledger in pixels of letters of the usual size, how much larger than those its letters are, and whether it
+ * is worked with fingers.
+ */
 export function useLedgerWidth(element: Ref<HTMLElement | undefined>) {
   const width = ref(480)
+  const scale = ref(1)
   const isTouch = ref(false)
   let observer: ResizeObserver | null = null
   let pointer: MediaQueryList | null = null
@@ -15,7 +19,8 @@ export function useLedgerWidth(element: Ref<HTMLElement | undefined>) {
     observer = new ResizeObserver(([entry]) => {
       // On very large screens letters are larger: so must the columns be, and fewer of them fit.
       const root = Number.parseFloat(getComputedStyle(document.documentElement).fontSize) || ROOT_PIXELS
-      width.value = (ROOT_PIXELS * entry!.contentRect.width) / root
+      scale.value = root / ROOT_PIXELS
+      width.value = entry!.contentRect.width / scale.value
     })
     if (element.value) observer.observe(element.value)
   })
@@ -23,5 +28,5 @@ export function useLedgerWidth(element: Ref<HTMLElement | undefined>) {
     observer?.disconnect()
     pointer?.removeEventListener('change', readPointer)
   })
-  return { width, isTouch }
+  return { width, scale, isTouch }
 }
