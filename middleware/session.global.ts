@@ -1,6 +1,6 @@
-const OPEN = ['/sign-in', '/setup']
+const OPEN = ['/sign-in', '/setup', '/reset']
 /** What is behind a secret link is for people who are not signed in, or have no account. */
-const SHARED = ['/answers/', '/invitations/']
+const SHARED = ['/answers/', '/invitations/', '/reset/', '/address/']
 
 /** Sends visitors without a session to the sign-in page, and back to where they wanted to go afterwards. */
 export default defineNuxtRouteMiddleware(async (to) => {

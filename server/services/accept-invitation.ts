@@ -5,6 +5,7 @@ import type { Db } from '../database/client'
 import type { InvitationRow } from '../database/repositories/invitations'
 import { holdInvitation, updateInvitation } from '../database/repositories/invitations'
 import { findRoles, findUserByEmail, insertMembership } from '../database/repositories/people'
+import { endConfirmations } from './confirmations'
 import { requireGoodPassword } from './password-rules'
 import type { Passwords } from './people'
 import { createAccount } from './people'
@@ -75,6 +76,8 @@ export async function acceptInvitation(
 
 async function join(app: App, tx: Db, invitation: InvitationRow, userId: string): Promise<Actor> {
   const { workspaceId, roles } = invitation
+  // A link for a new password may be in the hands of an owner elsewhere, who must not get in here with it.
+  await endConfirmations(app, tx, userId)
   if (!(await findRoles(tx, workspaceId, userId)))
     await insertMembership(tx, { workspaceId, userId, roles, createdAt: app.now() })
   await settle(app, tx, invitation, userId)

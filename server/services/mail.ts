@@ -50,6 +50,16 @@ function rowOf(app: App, { site, sends }: PostFact, { workspaceId, userId, addre
   }
 }
 
+/** Writes to somebody about what concerns them alone: no outbox shows it; nothing is kept where no mail is sent. */
+export async function writePrivately(
+  app: App,
+  tx: Db,
+  to: Omit<Receiver, 'workspaceId'>,
+  letter: Letter,
+): Promise<void> {
+  await writeSecretLink(app, tx, to, letter)
+}
+
 /**
  * Sends a letter whose link is a secret of whoever gets it. No outbox shows it, and its words are forgotten once it is
  * sent; where this installation sends no mail nothing is kept at all.
@@ -66,6 +76,9 @@ export async function writeSecretLink(
   await insertMails(tx, [rowOf(app, post, { ...to, workspaceId: null }, letter)])
   return null
 }
+
+/** Whether this installation has a mail server. */
+export const sendsMail = async (app: App): Promise<boolean> => postOf(await readFact(app.db, POST_FACT)).sends
 
 /** Messages of the workspace, newest first. */
 export async function outboxOf(app: App, actor: Actor, { state, limit, cursor }: OutboxQuery): Promise<OutboxView> {

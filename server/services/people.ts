@@ -20,6 +20,7 @@ import {
   readFact,
   takeFact,
 } from '../database/repositories/people'
+import { sendsMail } from './mail'
 import { requireGoodPassword } from './password-rules'
 
 const SETUP_CODE = 'setup code'
@@ -51,7 +52,12 @@ export async function sessionView(app: App, actor: Actor, roles: readonly Role[]
 }
 
 export async function entranceView(app: App): Promise<EntranceView> {
-  return { setupNeeded: !(await anyUser(app.db)), demo: app.demo, workspace: await onlyWorkspaceName(app.db) }
+  return {
+    setupNeeded: !(await anyUser(app.db)),
+    demo: app.demo,
+    sendsMail: await sendsMail(app),
+    workspace: await onlyWorkspaceName(app.db),
+  }
 }
 
 export async function membersOf(app: App, actor: Actor): Promise<MemberView[]> {

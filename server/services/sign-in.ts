@@ -3,13 +3,16 @@ import { DomainError } from '../../shared/errors'
 import type { Actor, App } from '../app'
 import { deleteAttempts, takeAttemptBack } from '../database/repositories/attempts'
 import type { UserRow } from '../database/repositories/people'
-import { findUserByEmail, firstWorkspaceOf } from '../database/repositories/people'
+import { findUser, findUserByEmail, firstWorkspaceOf } from '../database/repositories/people'
 import { countAttempt } from './attempts'
 import type { Passwords } from './people'
 
 const PER_ADDRESS = { most: 10, withinMinutes: 15 }
 /** More, as a whole office may come from one address of the network. */
 const PER_NETWORK = { most: 60, withinMinutes: 15 }
+
+/** What attempts at an address are counted under. */
+export const signInAttempts = (email: string): string => `sign-in ${email}`
 
 let decoy: Promise<string> | undefined
 const decoyHash = (passwords: Passwords): Promise<string> => (decoy ??= passwords.hash(randomUUID()))
@@ -31,7 +34,7 @@ export async function requirePassword(
   { email, password }: Credentials,
   network: string,
 ): Promise<UserRow> {
-  const keys = { address: `sign-in ${email}`, network: `sign-in from ${network}` }
+  const keys = { address: signInAttempts(email), network: `sign-in from ${network}` }
   await countAttempt(app, keys.network, PER_NETWORK)
   await countAttempt(app, keys.address, PER_ADDRESS)
   const user = await findUserByEmail(app.db, email)
@@ -46,6 +49,29 @@ export async function requirePassword(
   await deleteAttempts(app.db, keys.address)
   await takeAttemptBack(app.db, keys.network)
   return user
+}
+
+/**
+ * That somebody signed in knows the password of the account too; counted like an attempt to sign in.
+ * @throws DomainError at the path `current`, or `too many`
+ */
+export async function requireOwnPassword(
+  app: App,
+  passwords: Passwords,
+  userId: string,
+  password: string,
+  network: string,
+): Promise<UserRow> {
+  const { email } = (await findUser(app.db, userId))!
+  try {
+    return await requirePassword(app, passwords, { email, password }, network)
+  } catch (error) {
+    if (!(error instanceof DomainError) || error.code !== 'session.refused') throw error
+    const message = 'this is not your password; check it and try again'
+    throw new DomainError('not acceptable', 'password.current', 'The present password is wrong.', [
+      { path: 'current', message },
+    ])
+  }
 }
 
 /** Checks e-mail and password as `requirePassword` does; answers whom to sign in and where. */

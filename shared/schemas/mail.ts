@@ -2,7 +2,15 @@ import { z } from 'zod'
 import { pageQuerySchema } from './common'
 
 /** What a message tells: one kind for each reason to write to somebody. */
-export type MailKind = 'embedding broken' | 'run sheet handed over' | 'run sheet remark' | 'invitation'
+export type MailKind =
+  | 'embedding broken'
+  | 'run sheet handed over'
+  | 'run sheet remark'
+  | 'invitation'
+  | 'new password'
+  | 'password changed'
+  | 'new address'
+  | 'address changed'
 
 /**
  * waiting: to be sent, or tried again; sent: taken by the mail server; kept: there is no mail server, read it in the

@@ -11,7 +11,7 @@ export const emailSchema = z
   .pipe(z.email('write an e-mail address such as name@example.org'))
 
 /** Its rules are checked together with whose it is. */
-const newPasswordSchema = z.string().min(1, 'give a password').max(MAX_PASSWORD_LENGTH)
+export const newPasswordSchema = z.string().min(1, 'give a password').max(MAX_PASSWORD_LENGTH)
 
 export const signInSchema = z.object({
   email: emailSchema,
@@ -38,6 +38,8 @@ export interface SessionView {
 export interface EntranceView {
   setupNeeded: boolean
   demo: boolean
+  /** Whether it has a mail server: links for a new password go by mail, or come from an owner. */
+  sendsMail: boolean
   workspace: string | null
 }
 

@@ -7,18 +7,13 @@ import { deliverDue, openPost } from '../../server/mail/post'
 import { acceptInvitation, invitedView } from '../../server/services/accept-invitation'
 import { invitationsOf, invite, resendInvitation, withdrawInvitation } from '../../server/services/invitations'
 import { outboxOf } from '../../server/services/mail'
-import type { Passwords } from '../../server/services/people'
 import { createWorkspace } from '../../server/services/people'
 import { signIn } from '../../server/services/sign-in'
 import type { TestApp } from '../support/app'
 import { startTestApp } from '../support/app'
 import { startMailServer } from '../support/mail-server'
-import { newMember } from '../support/people'
+import { newMember, plainPasswords as passwords } from '../support/people'
 
-const passwords: Passwords = {
-  hash: async (password) => `hash of ${password}`,
-  verify: async (hash, password) => hash === `hash of ${password}`,
-}
 const GOOD = 'lichen wall ferry north'
 const SITE = 'https://espalier.example'
 let test: TestApp

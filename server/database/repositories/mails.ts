@@ -1,4 +1,4 @@
-import { and, count, desc, eq, inArray, lte, sql } from 'drizzle-orm'
+import { and, count, desc, eq, inArray, isNull, lte, sql } from 'drizzle-orm'
 import type { Role } from '../../../shared/schemas/common'
 import type { MailState } from '../../../shared/schemas/mail'
 import type { Db } from '../client'
@@ -72,8 +72,9 @@ export async function settleMail(
     .where(and(eq(mails.id, id), eq(mails.state, 'waiting')))
 }
 
-/** Keeps what waits, where there is no mail server any more. */
+/** Keeps what waits, where there is no mail server any more; what is in no outbox holds secrets, and goes. */
 export async function keepWaitingMails(db: Db): Promise<void> {
+  await db.delete(mails).where(and(eq(mails.state, 'waiting'), isNull(mails.workspaceId)))
   await db.update(mails).set({ state: 'kept', nextAttemptAt: null }).where(eq(mails.state, 'waiting'))
 }
 

@@ -21,6 +21,14 @@ export async function insertUser(db: Db, user: UserRow): Promise<void> {
   await db.insert(users).values(user)
 }
 
+export async function updateUser(
+  db: Db,
+  id: string,
+  set: Partial<Pick<UserRow, 'email' | 'passwordHash'>>,
+): Promise<void> {
+  await db.update(users).set(set).where(eq(users.id, id))
+}
+
 export async function insertWorkspace(db: Db, workspace: { id: string; name: string; createdAt: Date }): Promise<void> {
   await db.insert(workspaces).values(workspace)
 }
@@ -59,6 +67,10 @@ export async function firstWorkspaceOf(db: Db, userId: string): Promise<string |
     .orderBy(asc(memberships.createdAt))
     .limit(1)
   return rows[0]?.id
+}
+
+export async function countWorkspacesOf(db: Db, userId: string): Promise<number> {
+  return (await db.select({ n: count() }).from(memberships).where(eq(memberships.userId, userId)))[0]!.n
 }
 
 export async function listMembers(db: Db, workspaceId: string) {

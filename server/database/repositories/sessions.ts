@@ -45,6 +45,10 @@ export async function deleteSession(db: Db, userId: string, id: string): Promise
   return rows.length === 1
 }
 
+export async function deleteSessionsOf(db: Db, userId: string): Promise<void> {
+  await db.delete(sessions).where(eq(sessions.userId, userId))
+}
+
 export async function deleteOtherSessions(db: Db, userId: string, keptId: string): Promise<void> {
   await db.delete(sessions).where(and(eq(sessions.userId, userId), ne(sessions.id, keptId)))
 }

@@ -48,11 +48,12 @@ export async function prepareRunning(url: string): Promise<Running> {
   const jobs = [search.jobId, rehearsal.jobId]
   const returned = sheets.items.find(({ state }) => state === 'returned')!
   const shared = await sharedAnswer(developer, returned.id)
-  const invited = await invitation(url)
+  const owner = await Client.signedIn(url, 'owner')
+  const links = [await invitation(owner), await newPassword(owner), '/address/a-link-that-no-longer-holds']
   return {
     paths: [
       ...[`/problems/${dense}`, `/embeddings/${search.id}`],
-      ...[`/run-sheets/${approved.id}`, `/returns/${rehearsal.returnId}`, shared, invited],
+      ...[`/run-sheets/${approved.id}`, `/returns/${rehearsal.returnId}`, shared, ...links],
     ],
     async stop() {
       for (const id of jobs) await developer.call('DELETE', `/api/jobs/${id}`)
@@ -73,10 +74,17 @@ async function sharedAnswer(developer: Client, runSheetId: string): Promise<stri
 }
 
 /** The page of an invitation, which only who gets its link can find. */
-async function invitation(url: string): Promise<string> {
-  const owner = await Client.signedIn(url, 'owner')
+async function invitation(owner: Client): Promise<string> {
   const body = { email: 'newcomer@brackwater.example', roles: ['reader'] }
   return new URL((await created<{ link: string }>(owner.post('/api/invitations', body))).link).pathname
+}
+
+/** The page for a new password of the reader, which only who gets its link can find. */
+async function newPassword(owner: Client): Promise<string> {
+  const { items } = await created<{ items: { id: string; roles: string[] }[] }>(owner.get('/api/people'), 200)
+  const reader = items.find(({ roles }) => roles.join() === 'reader')!
+  const { link } = await created<{ link: string }>(owner.post(`/api/people/${reader.id}/reset-link`))
+  return new URL(link).pathname
 }
 
 async function created<T>(answer: Promise<{ status: number; body: T; text: string }>, status = 201): Promise<T> {
