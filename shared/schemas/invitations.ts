@@ -11,6 +11,8 @@ export const rolesSchema = z
   .max(20)
   .transform((roles) => [...new Set(roles)])
 
+export const changeRolesSchema = z.object({ roles: rolesSchema })
+
 export const inviteSchema = z.object({ email: emailSchema, roles: rolesSchema })
 export type Invite = z.infer<typeof inviteSchema>
 

@@ -54,10 +54,19 @@ async function bundleThread(): Promise<string> {
   return outdir
 }
 
-/** @param threads for background jobs */
-export async function startTestApp(threads: number, dataFolder = emptyFolder(), member?: Actor): Promise<TestApp> {
+/**
+ * @param threads for background jobs
+ * @param databaseUrl of a server, instead of the embedded database
+ */
+export async function startTestApp(
+  threads: number,
+  dataFolder = emptyFolder(),
+  member?: Actor,
+  databaseUrl?: string,
+): Promise<TestApp> {
   const folder = await (bundled ??= bundleThread())
-  const started = await startApp({ dataFolder, demo: false, workersFolder: () => folder, concurrency: 2, threads })
+  const workersFolder = () => folder
+  const started = await startApp({ databaseUrl, dataFolder, demo: false, workersFolder, concurrency: 2, threads })
   const { app } = started
   const actor = member ?? (await firstMember(app))
   return {
@@ -83,7 +92,7 @@ export async function startTestApp(threads: number, dataFolder = emptyFolder(), 
       ),
     restarted: async (again) => {
       await started.close()
-      return startTestApp(again, dataFolder, actor)
+      return startTestApp(again, dataFolder, actor, databaseUrl)
     },
   }
 }

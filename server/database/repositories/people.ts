@@ -58,6 +58,22 @@ export async function findRoles(db: Db, workspaceId: string, userId: string): Pr
   return rows[0]?.roles
 }
 
+export async function updateRoles(tx: Db, workspaceId: string, userId: string, roles: Role[]): Promise<void> {
+  await tx
+    .update(memberships)
+    .set({ roles })
+    .where(and(eq(memberships.workspaceId, workspaceId), eq(memberships.userId, userId)))
+}
+
+export async function deleteMembership(tx: Db, workspaceId: string, userId: string): Promise<void> {
+  await tx.delete(memberships).where(and(eq(memberships.workspaceId, workspaceId), eq(memberships.userId, userId)))
+}
+
+/** Waits for whoever else changes its members, and makes others wait until the transaction ends. */
+export async function lockWorkspace(tx: Db, id: string): Promise<void> {
+  await tx.select({ id: workspaces.id }).from(workspaces).where(eq(workspaces.id, id)).for('update')
+}
+
 /** The workspace that a person joined first. */
 export async function firstWorkspaceOf(db: Db, userId: string): Promise<string | undefined> {
   const rows = await db

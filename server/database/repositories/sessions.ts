@@ -49,6 +49,11 @@ export async function deleteSessionsOf(db: Db, userId: string): Promise<void> {
   await db.delete(sessions).where(eq(sessions.userId, userId))
 }
 
+/** Those that look at a workspace. */
+export async function deleteSessionsIn(tx: Db, workspaceId: string, userId: string): Promise<void> {
+  await tx.delete(sessions).where(and(eq(sessions.userId, userId), eq(sessions.workspaceId, workspaceId)))
+}
+
 export async function deleteOtherSessions(db: Db, userId: string, keptId: string): Promise<void> {
   await db.delete(sessions).where(and(eq(sessions.userId, userId), ne(sessions.id, keptId)))
 }

@@ -50,3 +50,7 @@ export async function deleteToken(db: Db, scope: TokenScope, id: string): Promis
     .returning({ id: tokens.id })
   return rows.length === 1
 }
+
+export async function deleteTokensOf(tx: Db, workspaceId: string, userId: string): Promise<void> {
+  await tx.delete(tokens).where(within({ workspaceId, userId }))
+}

@@ -1,0 +1,69 @@
+import { DomainError } from '../../shared/errors'
+import type { Role } from '../../shared/schemas/common'
+import type { Actor, App } from '../app'
+import type { Db } from '../database/client'
+import { holdersOf } from '../database/repositories/mails'
+import { deleteMembership, findRoles, lockWorkspace, updateRoles } from '../database/repositories/people'
+import { deleteSessionsIn } from '../database/repositories/sessions'
+import { deleteTokensOf } from '../database/repositories/tokens'
+
+/**
+ * Works on the members of a workspace one change at a time, so that each sees the owners that those before it left.
+ * @throws DomainError forbidden for somebody who is no owner any more
+ */
+function asOwner<T>(app: App, { workspaceId, userId }: Actor, work: (tx: Db) => Promise<T>): Promise<T> {
+  return app.db.transaction(async (tx) => {
+    await lockWorkspace(tx, workspaceId)
+    if (!(await findRoles(tx, workspaceId, userId))?.includes('owner'))
+      throw new DomainError('forbidden', 'role.missing', 'This needs the role owner, which you no longer hold.')
+    return work(tx)
+  })
+}
+
+async function requireMember(tx: Db, { workspaceId }: Actor, memberId: string): Promise<void> {
+  if (!(await findRoles(tx, workspaceId, memberId)))
+    throw new DomainError('not found', 'member.missing', 'There is no such member of this workspace.')
+}
+
+async function requireAnotherOwner(tx: Db, workspaceId: string, memberId: string): Promise<void> {
+  const owners = await holdersOf(tx, workspaceId, 'owner')
+  if (owners.some((id) => id !== memberId)) return
+  throw new DomainError(
+    'wrong state',
+    'member.last-owner',
+    'A workspace needs an owner, and there is no other. Make somebody else an owner first.',
+  )
+}
+
+/** Gives a member other roles, from their next request on. The last owner stays one. */
+export async function changeRoles(app: App, actor: Actor, memberId: string, roles: Role[]): Promise<void> {
+  await asOwner(app, actor, async (tx) => {
+    await requireMember(tx, actor, memberId)
+    if (!roles.includes('owner')) await requireAnotherOwner(tx, actor.workspaceId, memberId)
+    await updateRoles(tx, actor.workspaceId, memberId, roles)
+  })
+}
+
+/** Their sessions here end, and their tokens, which would open the workspace again if they came back. */
+async function remove(tx: Db, workspaceId: string, userId: string): Promise<void> {
+  await requireAnotherOwner(tx, workspaceId, userId)
+  await deleteMembership(tx, workspaceId, userId)
+  await deleteTokensOf(tx, workspaceId, userId)
+  await deleteSessionsIn(tx, workspaceId, userId)
+}
+
+/** Takes a member out of the workspace; what they made stays. */
+export async function removeMember(app: App, actor: Actor, memberId: string): Promise<void> {
+  await asOwner(app, actor, async (tx) => {
+    await requireMember(tx, actor, memberId)
+    await remove(tx, actor.workspaceId, memberId)
+  })
+}
+
+/** Leaves the workspace; the last owner cannot. */
+export async function leaveWorkspace(app: App, { workspaceId, userId }: Actor): Promise<void> {
+  await app.db.transaction(async (tx) => {
+    await lockWorkspace(tx, workspaceId)
+    await remove(tx, workspaceId, userId)
+  })
+}
