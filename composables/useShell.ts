@@ -1,9 +1,9 @@
-import type { ComputedRef, Ref } from 'vue'
+import type { ComputedRef } from 'vue'
+import type { Role } from '#shared/schemas/common'
+import type { SessionView } from '#shared/schemas/session'
 
-/** Machine time of the month, in seconds, as the foot of the rail shows it. */
+/** Machine time of the workspace, in seconds, as the foot of the rail shows it. */
 export interface MachineTime {
-  /** `Machine time, Dec.` */
-  label: string
   grantedSeconds: number
   reservedSeconds: number
   spentSeconds: number
@@ -13,6 +13,8 @@ export interface RailLink {
   key: string
   label: string
   to: string
+  /** Shown to these only. */
+  roles?: Role[]
 }
 
 export interface Shell {
@@ -21,7 +23,7 @@ export interface Shell {
   roles: ComputedRef<string[]>
   /** Shown at the end of a rail link; a missing count shows nothing. */
   counts: ComputedRef<Record<string, number | null | undefined>>
-  machineTime: Ref<MachineTime | null>
+  machineTime: ComputedRef<MachineTime | null>
   links: ComputedRef<RailLink[]>
 }
 
@@ -29,18 +31,25 @@ const LINKS: RailLink[] = [
   { key: 'problems', label: 'Problems', to: '/' },
   { key: 'machines', label: 'Machines', to: '/machines' },
   { key: 'runSheets', label: 'Run sheets', to: '/run-sheets' },
+  { key: 'budget', label: 'Budget', to: '/budget', roles: ['owner', 'reviewer'] },
   { key: 'people', label: 'People', to: '/people' },
 ]
 
 /** What the frame around every page shows, taken from whoever is signed in. */
 export function useShell(): Shell {
-  const { session } = useSession()
+  const { session, may } = useSession()
   return {
     workspaceName: computed(() => session.value?.workspace.name ?? ''),
     personName: computed(() => session.value?.person.name ?? ''),
     roles: computed(() => session.value?.roles ?? []),
     counts: computed(() => ({ ...session.value?.counts })),
-    machineTime: useState<MachineTime | null>('shell:machine-time', () => null),
-    links: computed(() => (session.value ? LINKS : [])),
+    machineTime: computed(() => session.value && machineTimeOf(session.value)),
+    links: computed(() => (session.value ? LINKS.filter(({ roles }) => !roles || may(...roles)) : [])),
   }
+}
+
+function machineTimeOf({ budget }: SessionView): MachineTime | null {
+  if (!budget) return null
+  const { grantedSeconds, reservedSeconds, spentSeconds } = budget
+  return { grantedSeconds, reservedSeconds, spentSeconds }
 }

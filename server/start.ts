@@ -5,6 +5,7 @@ import { createBlobStore } from './database/repositories/blobs'
 import { startQueue } from './jobs/queue'
 import { startRunner } from './jobs/runner'
 import { sweepAttempts } from './services/attempts'
+import { sweepReservations } from './services/budget'
 import { sweepConfirmations } from './services/confirmations'
 import { sweepDeletions } from './services/deletions'
 import { KeptUploads } from './services/kept-uploads'
@@ -41,6 +42,7 @@ async function keepSweeping(app: App): Promise<() => void> {
     await sweepDeletions(app)
     await sweepSessions(app)
     await sweepAttempts(app)
+    await sweepReservations(app)
     await sweepConfirmations(app)
   }
   await sweep()

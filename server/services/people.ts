@@ -20,6 +20,7 @@ import {
   readFact,
   takeFact,
 } from '../database/repositories/people'
+import { budgetTotal } from './budget-view'
 import { sendsMail } from './mail'
 import { requireGoodPassword } from './password-rules'
 
@@ -48,6 +49,7 @@ export async function sessionView(app: App, actor: Actor, roles: readonly Role[]
     workspace: { id: workspace.id, name: workspace.name },
     roles: [...roles],
     counts,
+    budget: await budgetTotal(app, actor.workspaceId),
   }
 }
 

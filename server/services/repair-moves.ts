@@ -7,6 +7,7 @@ import type { EmbeddingRow } from '../database/repositories/embeddings'
 import { findEmbeddingOfJob, markChosen } from '../database/repositories/embeddings'
 import type { RunSheetRow } from '../database/repositories/run-sheets'
 import { insertRemark, lockRunSheetsOn, updateRunSheet } from '../database/repositories/run-sheets'
+import { releaseTime } from './budget'
 import type { Subject } from './embedding-subject'
 import { tellMoved } from './run-sheet-letters'
 import { estimate } from './run-sheet-time'
@@ -50,5 +51,6 @@ async function moveSheet(app: App, tx: Db, sheet: RunSheetRow, { row, subject, m
     text: moved,
     createdAt: app.now(),
   })
+  if (sheet.state === 'approved') await releaseTime(app, tx, sheet, { by, remark: 'back in review' })
   if (wasAgreed) await tellMoved(app, tx, sheet, { moved, by })
 }

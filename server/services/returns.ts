@@ -8,6 +8,7 @@ import { nextNumber } from '../database/repositories/counters'
 import type { ReturnRow } from '../database/repositories/run-sheets'
 import { findReturn, insertReturn, updateRunSheet } from '../database/repositories/run-sheets'
 import type { ReadSamplesOutput } from '../workers/tasks/read-samples'
+import { settleTime } from './budget'
 import { programmeBench, requireProgrammed } from './programming'
 import { qubitIdsOf } from './qubit-ids'
 import type { ReadingWatch } from './problem-upload'
@@ -123,7 +124,10 @@ export async function uploadReturn(
       createdBy: actor.userId,
       createdAt: now,
     })
-    await updateRunSheet(tx, runSheetId, ['approved', 'issued'], { state: 'returned', changedAt: now })
+    if (await updateRunSheet(tx, runSheetId, ['approved', 'issued'], { state: 'returned', changedAt: now })) {
+      const seconds = options.machineTimeSeconds ?? output.reading.machineTimeSeconds
+      await settleTime(app, tx, sheet, { seconds, by: actor.userId })
+    }
   })
   return { id, reads: readsIn(samples), rows: samples.rows, ...summary.figures, energies: output.agreement }
 }

@@ -5,6 +5,7 @@ import type { Actor, App } from '../app'
 import type { RunSheetRow } from '../database/repositories/run-sheets'
 import { insertRemark, updateRunSheet } from '../database/repositories/run-sheets'
 import type { HandedOver } from '../mail/letters'
+import { reserveTime } from './budget'
 import { fingerprintOf, programmeBench, requireProgrammed } from './programming'
 import { tellHandOver } from './run-sheet-letters'
 import { benchOf, runSheetRow, runSheetView } from './run-sheets'
@@ -58,6 +59,7 @@ export async function handOver(
         'run-sheet.changed',
         `RS-${row.number} was changed meanwhile. Look at it as it stands now, then decide again.`,
       )
+    if (step === 'approve' || step === 'issue') await reserveTime(app, tx, row, actor.userId)
     await insertRemark(tx, {
       id: randomUUID(),
       runSheetId: id,

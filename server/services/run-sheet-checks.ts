@@ -5,6 +5,7 @@ import type { Programmed } from '../../shared/engine/programming/programme'
 import type { VersionStanding } from '../../shared/schemas/problem-versions'
 import type { BrokenView } from '../../shared/schemas/repairs'
 import type { CheckView, RunSheetView } from '../../shared/schemas/run-sheets'
+import { FIXED_STATES } from '../../shared/schemas/run-sheets'
 import type { ReferenceRow } from '../database/repositories/reference-optima'
 import type { ReturnRow, RunSheetRow } from '../database/repositories/run-sheets'
 import type { Bench, Programming } from './programming'
@@ -24,6 +25,7 @@ export interface Checked {
   ofVersion: VersionStanding
   embedding: { inForce: number; broken: BrokenView | null }
   time: RunSheetView['machineTime']
+  budget: RunSheetView['budget']
   returned: readonly ReturnRow[]
   /** The best known value of the version that is programmed. */
   reference: ReferenceRow | undefined
@@ -42,6 +44,7 @@ export const checksOf = (checked: Checked): CheckView[] => [
   rehearsalCheck(checked.row, checked.returned),
   referenceCheck(checked),
   ...priceCheck(checked),
+  ...budgetCheck(checked),
 ]
 
 function rangesCheck({ bench, row: { settings }, programmed: { limitedBy, scale } }: Checked): CheckView {
@@ -174,4 +177,14 @@ function priceCheck({ time: { price } }: Checked): CheckView[] {
       figure,
     },
   ]
+}
+
+/** From approval on its time is held: only before it is there something to compare. */
+function budgetCheck({ bench: { machine }, row: { state }, time, budget }: Checked): CheckView[] {
+  if (!budget || budget.heldSeconds > 0 || FIXED_STATES.includes(state)) return []
+  const place = { about: 'budget', at: '#machine-time' } as const
+  const figure = `${figureOf(budget.leftSeconds)} s left for ${machine.machine.name}`
+  return time.totalMilliseconds <= 1000 * budget.leftSeconds
+    ? [{ ...place, verdict: 'passed', what: 'The machine time is within the budget', figure }]
+    : [{ ...place, verdict: 'caution', what: 'The budget is too small: it cannot be approved', figure }]
 }

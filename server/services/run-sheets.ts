@@ -26,6 +26,7 @@ import {
   returnsOfRunSheets,
   updateRunSheet,
 } from '../database/repositories/run-sheets'
+import { budgetLeft } from './budget'
 import { deleteFor } from './deletions'
 import { brokenView } from './broken-view'
 import { embeddingRow } from './embedding-subject'
@@ -179,6 +180,7 @@ export async function runSheetView(app: App, actor: Actor, id: string): Promise<
   const broken = await brokenView(app, bench.row)
   const { calibration: inForce } = await machineRow(app, row, machine.machine.id)
   const returned = await returnsOfRunSheets(app.db, [id])
+  const budget = await budgetLeft(app, row, machine.machine.id)
   const checks = checksOf({
     bench,
     row,
@@ -188,6 +190,7 @@ export async function runSheetView(app: App, actor: Actor, id: string): Promise<
     ofVersion,
     embedding: { inForce, broken },
     time,
+    budget,
     returned,
     reference: await bestReference(app.db, problem.id, problem.version),
   })
@@ -210,6 +213,7 @@ export async function runSheetView(app: App, actor: Actor, id: string): Promise<
     precision,
     anneal: annealView(bench),
     machineTime: time,
+    budget,
     rehearsal: rehearsalChoices(programmed, machine.sheet),
     checks,
     broken: OPEN_STATES.includes(row.state) ? broken : null,

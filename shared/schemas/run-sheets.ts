@@ -132,6 +132,7 @@ export type CheckSubject =
   | 'rehearsal'
   | 'reference'
   | 'price'
+  | 'budget'
 
 export interface CheckView {
   about: CheckSubject
@@ -192,6 +193,14 @@ export interface ChainRow {
   /** Σ|J| over the variable's interactions, and its field, of the Ising form. */
   pull: number
   field: number
+}
+
+/** What a run sheet’s machine may still spend, as those see it who prepare and review. */
+export interface BudgetLeft {
+  /** Available for its machine, its own and any machine's time together. */
+  leftSeconds: number
+  /** Held for this run sheet already. */
+  heldSeconds: number
 }
 
 export interface MachineTimePart {
@@ -289,6 +298,8 @@ export interface RunSheetView extends RunSheetItem {
     energyTable: EnergyTable | null
     temperatureMillikelvin: number | null
   }
+  /** What is left of the budget for its machine; null where none is kept. */
+  budget: BudgetLeft | null
   machineTime: {
     parts: MachineTimePart[]
     totalMilliseconds: number

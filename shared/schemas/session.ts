@@ -1,5 +1,6 @@
 import { z } from 'zod'
 import { MAX_PASSWORD_LENGTH } from '../password-rules'
+import type { BudgetBalance } from './budget'
 import type { Role } from './common'
 import { textSchema } from './common'
 
@@ -32,6 +33,8 @@ export interface SessionView {
   workspace: { id: string; name: string }
   roles: Role[]
   counts: { problems: number; machines: number; runSheets: number; people: number }
+  /** Machine time of the workspace; null where no budget is kept. */
+  budget: BudgetBalance | null
 }
 
 /** What the sign-in page needs to know before anyone is signed in. */

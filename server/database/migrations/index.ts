@@ -265,5 +265,20 @@ export const MIGRATIONS = [
     "sql": [
       "ALTER TABLE \"returns\" ADD COLUMN \"measures\" jsonb;"
     ]
+  },
+  {
+    "tag": "0009_budget",
+    "folderMillis": 1796230378574,
+    "hash": "ddff560992e8e8daa9bd450bd182a958c4efe015f22e9005235ceb76f77c3b77",
+    "bps": true,
+    "sql": [
+      "CREATE TABLE \"budget_entries\" (\n\t\"id\" text PRIMARY KEY NOT NULL,\n\t\"workspace_id\" text NOT NULL,\n\t\"number\" integer NOT NULL,\n\t\"move\" text NOT NULL,\n\t\"machine_id\" text,\n\t\"machine_name\" text,\n\t\"microseconds\" bigint NOT NULL,\n\t\"run_sheet_id\" text,\n\t\"about\" jsonb,\n\t\"by\" text,\n\t\"remark\" text NOT NULL,\n\t\"at\" timestamp with time zone NOT NULL\n);\n",
+      "\nALTER TABLE \"budget_entries\" ADD CONSTRAINT \"budget_entries_workspace_id_workspaces_id_fk\" FOREIGN KEY (\"workspace_id\") REFERENCES \"public\".\"workspaces\"(\"id\") ON DELETE cascade ON UPDATE no action;",
+      "\nALTER TABLE \"budget_entries\" ADD CONSTRAINT \"budget_entries_by_users_id_fk\" FOREIGN KEY (\"by\") REFERENCES \"public\".\"users\"(\"id\") ON DELETE no action ON UPDATE no action;",
+      "\nCREATE UNIQUE INDEX \"budget_entries_workspace_id_number_index\" ON \"budget_entries\" USING btree (\"workspace_id\",\"number\");",
+      "\nCREATE INDEX \"budget_entries_workspace_id_run_sheet_id_index\" ON \"budget_entries\" USING btree (\"workspace_id\",\"run_sheet_id\");",
+      "\nCREATE FUNCTION \"refuse_change_of_record\"() RETURNS trigger LANGUAGE plpgsql AS $$\nBEGIN\n\tIF TG_OP = 'DELETE' AND NOT EXISTS (SELECT 1 FROM \"workspaces\" WHERE \"id\" = OLD.\"workspace_id\") THEN\n\t\tRETURN OLD;\n\tEND IF;\n\tRAISE EXCEPTION 'entries of % are only ever added', TG_TABLE_NAME;\nEND\n$$;",
+      "\nCREATE TRIGGER \"budget_entries_only_added\" BEFORE UPDATE OR DELETE ON \"budget_entries\" FOR EACH ROW EXECUTE FUNCTION \"refuse_change_of_record\"();\n"
+    ]
   }
 ]

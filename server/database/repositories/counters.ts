@@ -6,7 +6,7 @@ import { counters } from '../schema'
 export async function nextNumber(
   tx: Db,
   scope: string,
-  kind: 'problem' | 'embedding' | 'run sheet' | 'return' | 'scan',
+  kind: 'problem' | 'embedding' | 'run sheet' | 'return' | 'scan' | 'budget entry',
 ): Promise<number> {
   const rows = await tx
     .insert(counters)

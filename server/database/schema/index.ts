@@ -1,4 +1,5 @@
 export * from './blobs'
+export * from './budget'
 export * from './jobs'
 export * from './machines'
 export * from './mail'

@@ -12,6 +12,7 @@ import { createRunSheetSchema } from '../../../shared/schemas/run-sheets'
 import type { Actor, App } from '../../app'
 import { anyUser, keepFact, readFact, removeWorkspace, setFact, takeFact } from '../../database/repositories/people'
 import { findJob } from '../../database/repositories/jobs'
+import { grantTime } from '../budget'
 import { startEmbedding } from '../embeddings'
 import { SEEDED_AT } from '../first-steps'
 import { fabricOf } from '../machine-graphs'
@@ -214,6 +215,8 @@ async function seedWork(app: App, { developer, steward, reviewer }: Cast): Promi
   const channels = await seedProblem(app, developer, DEMO_FILES.channels)
   const crews = await seedProblem(app, developer, DEMO_FILES.crews)
   await seedUnderstanding(app, developer, channels)
+  await grantTime(app, reviewer, { seconds: 2, machineId: alder, remark: 'Bought from Holm Point for December.' })
+  await grantTime(app, reviewer, { seconds: 1, machineId: null, remark: 'For trials.' })
   const onAlder = await seedEmbedding(app, developer, channels, alder, 7)
   await seedEmbedding(app, developer, berths, alder, 3)
   const onJuniper = await seedEmbedding(app, developer, crews, juniper, 5)
