@@ -1,4 +1,4 @@
-import type { BUDGET_ACCOUNTS} from '../../shared/budget';
+import type { BUDGET_ACCOUNTS } from '../../shared/budget'
 import { BUDGET_MOVES, RESERVATION_DAYS } from '../../shared/budget'
 import { csvCell } from '../../shared/csv'
 import type { BudgetBalance, BudgetEntryView, BudgetView } from '../../shared/schemas/budget'

@@ -2,7 +2,7 @@ import type { BudgetAccount, BudgetMove } from '#shared/budget'
 import type { BudgetBalance, BudgetEntryView, BudgetUse } from '#shared/schemas/budget'
 import type { ChartSeries } from '../ui/chart/types'
 import type { Fact, MarkKind } from '../ui/parts'
-import { formatPercent, MINUS } from '../format'
+import { formatCount, formatPercent, MINUS } from '../format'
 import { formatDuration } from '../formatTime'
 
 /** Machine time, also where more was spent than granted: `230 ms`, `−6 ms`. */
@@ -19,6 +19,14 @@ const MOVES: Record<BudgetMove, { words: string; mark: MarkKind }> = {
   settle: { words: 'spent on', mark: 'passed' },
   release: { words: 'freed from', mark: 'computed' },
   charge: { words: 'spent over the estimate on', mark: 'caution' },
+}
+
+/** The accounts as the page names them. */
+export const ACCOUNT_WORDS: Record<BudgetAccount, string> = {
+  granted: 'granted',
+  available: 'free',
+  reserved: 'held',
+  spent: 'spent',
 }
 
 /** What an entry did, in words before the run sheet that it is about. */
@@ -41,7 +49,7 @@ export function budgetFacts(total: BudgetBalance, holds: number): Fact[] {
     {
       label: 'Held',
       value: machineTime(total.reservedSeconds),
-      note: holds === 1 ? 'for 1 run sheet' : `for ${holds} run sheets`,
+      note: holds > 0 ? `for ${formatCount(holds, 'run sheet')}` : 'for nothing',
     },
     {
       label: 'Free',
