@@ -1,5 +1,6 @@
 import type { FetchError } from 'ofetch'
 import type { Issue } from '#shared/errors'
+import { workspaceHeaders } from '~/utils/team/shownWorkspace'
 
 /** What went wrong with a request, ready to be shown: what, where, what to do. */
 export interface ApiFailure {
@@ -37,7 +38,10 @@ type Method = 'POST' | 'PUT' | 'PATCH' | 'DELETE'
 export type Outcome<T> = { ok: true; value: T } | { ok: false; failure: ApiFailure }
 
 /** $fetch without its inference over every route, which exceeds the checker's depth. */
-const request = $fetch as <T>(url: string, options: { method: Method; body?: Body; keepalive?: boolean }) => Promise<T>
+const request = $fetch as <T>(
+  url: string,
+  options: { method: Method; headers: Record<string, string>; body?: Body; keepalive?: boolean },
+) => Promise<T>
 
 /** A change sent while the page is being left goes on only with `keepalive`, which browsers allow for small bodies. */
 const KEEPALIVE_CHARACTERS = 16_000
@@ -50,7 +54,10 @@ export function useApi() {
     try {
       return {
         ok: true,
-        value: await request<T>(url, { method, body, keepalive: method === 'PATCH' && isSmall(body) }),
+        value: await request<T>(url, {
+          ...{ method, body, headers: workspaceHeaders() },
+          keepalive: method === 'PATCH' && isSmall(body),
+        }),
       }
     } catch (error) {
       return { ok: false, failure: failureOf(error) }

@@ -1,3 +1,4 @@
+import { workspaceHeaders } from '~/utils/team/shownWorkspace'
 import type { ApiFailure } from './useApi'
 
 /** One thing loaded from the server. */
@@ -11,9 +12,11 @@ export interface Resource<T> {
 
 /** Loads one thing from the server, during rendering on the server too. */
 export async function useResource<T>(url: MaybeRefOrGetter<string>): Promise<Resource<T>> {
-  const fetcher = useRequestFetch() as (url: string) => Promise<T>
+  const fetcher = useRequestFetch() as (url: string, options: { headers: Record<string, string> }) => Promise<T>
   const address = computed(() => toValue(url))
-  const { data, error, refresh, status } = await useAsyncData(address, () => fetcher(address.value))
+  const { data, error, refresh, status } = await useAsyncData(address, () =>
+    fetcher(address.value, { headers: workspaceHeaders() }),
+  )
   const failure = computed<ApiFailure | null>(() => (error.value ? failureOf(error.value) : null))
   return { data: data as Ref<T | undefined>, failure, status, refresh: () => refresh() }
 }

@@ -18,7 +18,6 @@ export interface RailLink {
 }
 
 export interface Shell {
-  workspaceName: ComputedRef<string>
   personName: ComputedRef<string>
   roles: ComputedRef<string[]>
   /** Shown at the end of a rail link; a missing count shows nothing. */
@@ -39,7 +38,6 @@ const LINKS: RailLink[] = [
 export function useShell(): Shell {
   const { session, may } = useSession()
   return {
-    workspaceName: computed(() => session.value?.workspace.name ?? ''),
     personName: computed(() => session.value?.person.name ?? ''),
     roles: computed(() => session.value?.roles ?? []),
     counts: computed(() => ({ ...session.value?.counts })),

@@ -1,3 +1,4 @@
+import { workspaceHeaders } from '~/utils/team/shownWorkspace'
 import type { ApiFailure, Outcome } from './useApi'
 
 /** How far an upload is: bytes on their way, or bytes read of those that arrived. */
@@ -62,6 +63,7 @@ export function sendForm<T>(url: string, body: FormData, watch: UploadWatch = {}
     watch.signal?.addEventListener('abort', () => request.abort())
     request.open('POST', url)
     request.setRequestHeader('accept', 'application/x-ndjson, application/json')
+    for (const [name, value] of Object.entries(workspaceHeaders())) request.setRequestHeader(name, value)
     request.send(body)
   })
 }

@@ -3,8 +3,14 @@ import type { Role } from '../../shared/schemas/common'
 import type { Actor, App } from '../app'
 import type { Db } from '../database/client'
 import { holdersOf } from '../database/repositories/mails'
-import { deleteMembership, findRoles, lockWorkspace, updateRoles } from '../database/repositories/people'
-import { deleteSessionsIn } from '../database/repositories/sessions'
+import {
+  deleteMembership,
+  findRoles,
+  firstWorkspaceOf,
+  lockWorkspace,
+  updateRoles,
+} from '../database/repositories/people'
+import { deleteSessionsIn, moveSessions } from '../database/repositories/sessions'
 import { deleteTokensOf } from '../database/repositories/tokens'
 
 /**
@@ -44,12 +50,14 @@ export async function changeRoles(app: App, actor: Actor, memberId: string, role
   })
 }
 
-/** Their sessions here end, and their tokens, which would open the workspace again if they came back. */
+/** Their sessions go on in another workspace of theirs, or end; their tokens for this one end, which would open the workspace again if they came back. */
 async function remove(tx: Db, workspaceId: string, userId: string): Promise<void> {
   await requireAnotherOwner(tx, workspaceId, userId)
   await deleteMembership(tx, workspaceId, userId)
   await deleteTokensOf(tx, workspaceId, userId)
-  await deleteSessionsIn(tx, workspaceId, userId)
+  const next = await firstWorkspaceOf(tx, userId)
+  if (next) await moveSessions(tx, userId, workspaceId, next)
+  else await deleteSessionsIn(tx, workspaceId, userId)
 }
 
 /** Takes a member out of the workspace; what they made stays. */

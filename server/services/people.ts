@@ -16,6 +16,7 @@ import {
   insertWorkspace,
   keepFact,
   listMembers,
+  listWorkspacesOf,
   onlyWorkspaceName,
   readFact,
   takeFact,
@@ -23,6 +24,9 @@ import {
 import { budgetTotal } from './budget-view'
 import { sendsMail } from './mail'
 import { requireGoodPassword } from './password-rules'
+
+/** Of whoever makes a workspace. */
+export const FOUNDER_ROLES = ['owner', 'developer', 'steward', 'reviewer'] as const satisfies readonly Role[]
 
 const SETUP_CODE = 'setup code'
 
@@ -47,6 +51,7 @@ export async function sessionView(app: App, actor: Actor, roles: readonly Role[]
   return {
     person: { id: user.id, name: user.name, email: user.email },
     workspace: { id: workspace.id, name: workspace.name },
+    workspaces: await listWorkspacesOf(app.db, user.id),
     roles: [...roles],
     counts,
     budget: await budgetTotal(app, actor.workspaceId),
@@ -95,7 +100,7 @@ export async function setUp(app: App, passwords: Passwords, input: z.infer<typeo
       ...input,
       passwordHash,
       workspaceId,
-      roles: ['owner', 'developer', 'steward', 'reviewer'],
+      roles: [...FOUNDER_ROLES],
     })
     return { userId, workspaceId }
   })

@@ -1,10 +1,12 @@
 import type { EventHandlerRequest, H3Event } from 'h3'
-import { defineEventHandler, setResponseHeader } from 'h3'
+import { defineEventHandler, getHeader, setResponseHeader } from 'h3'
 import type { Role } from '../../shared/schemas/common'
 import { DomainError, TooManyError } from '../../shared/errors'
+import { WORKSPACE_HEADER } from '../../shared/workspace-header'
 import type { Actor, App } from '../app'
 import { sessionCaller } from '../services/sessions'
 import { tokenCaller } from '../services/tokens'
+import { requireShown } from '../services/workspaces'
 import { useApp } from './app'
 import { bearerOf } from './bearer'
 import { toHttpError } from './http'
@@ -37,7 +39,9 @@ async function mapped<T>(event: H3Event, work: () => Promise<T> | T): Promise<T>
 async function signedInCaller(event: H3Event, app: App): Promise<Caller> {
   const { secure } = await getUserSession(event)
   if (!secure?.sessionId) throw new DomainError('unauthenticated', 'session.none', 'Sign in first.')
-  return { ...(await sessionCaller(app, secure.sessionId, addressOf(event))), tokenId: null }
+  const caller = await sessionCaller(app, secure.sessionId, addressOf(event))
+  requireShown(caller, getHeader(event, WORKSPACE_HEADER))
+  return { ...caller, tokenId: null }
 }
 
 async function callerOf(event: H3Event, app: App): Promise<Caller> {

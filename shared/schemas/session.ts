@@ -2,7 +2,7 @@ import { z } from 'zod'
 import { MAX_PASSWORD_LENGTH } from '../password-rules'
 import type { BudgetBalance } from './budget'
 import type { Role } from './common'
-import { textSchema } from './common'
+import { idSchema, textSchema } from './common'
 
 export const emailSchema = z
   .string()
@@ -28,9 +28,15 @@ export const setupSchema = z.object({
   password: newPasswordSchema,
 })
 
+export const foundWorkspaceSchema = z.object({ name: textSchema(80).min(1, 'give the workspace a name') })
+
+export const goToWorkspaceSchema = z.object({ workspaceId: idSchema })
+
 export interface SessionView {
   person: { id: string; name: string; email: string }
   workspace: { id: string; name: string }
+  /** All that the person belongs to, by name. */
+  workspaces: { id: string; name: string }[]
   roles: Role[]
   counts: { problems: number; machines: number; runSheets: number; people: number }
   /** Machine time of the workspace; null where no budget is kept. */

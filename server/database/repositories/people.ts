@@ -85,6 +85,16 @@ export async function firstWorkspaceOf(db: Db, userId: string): Promise<string |
   return rows[0]?.id
 }
 
+/** Workspaces of a person, by name. */
+export async function listWorkspacesOf(db: Db, userId: string): Promise<{ id: string; name: string }[]> {
+  return db
+    .select({ id: workspaces.id, name: workspaces.name })
+    .from(memberships)
+    .innerJoin(workspaces, eq(workspaces.id, memberships.workspaceId))
+    .where(eq(memberships.userId, userId))
+    .orderBy(asc(workspaces.name), asc(workspaces.createdAt))
+}
+
 export async function countWorkspacesOf(db: Db, userId: string): Promise<number> {
   return (await db.select({ n: count() }).from(memberships).where(eq(memberships.userId, userId)))[0]!.n
 }

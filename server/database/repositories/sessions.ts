@@ -49,6 +49,18 @@ export async function deleteSessionsOf(db: Db, userId: string): Promise<void> {
   await db.delete(sessions).where(eq(sessions.userId, userId))
 }
 
+export async function setSessionWorkspace(db: Db, id: string, workspaceId: string): Promise<void> {
+  await db.update(sessions).set({ workspaceId }).where(eq(sessions.id, id))
+}
+
+/** Lets a person's sessions that look at one workspace look at another. */
+export async function moveSessions(tx: Db, userId: string, from: string, to: string): Promise<void> {
+  await tx
+    .update(sessions)
+    .set({ workspaceId: to })
+    .where(and(eq(sessions.userId, userId), eq(sessions.workspaceId, from)))
+}
+
 /** Those that look at a workspace. */
 export async function deleteSessionsIn(tx: Db, workspaceId: string, userId: string): Promise<void> {
   await tx.delete(sessions).where(and(eq(sessions.userId, userId), eq(sessions.workspaceId, workspaceId)))
