@@ -1,4 +1,5 @@
 import type { MailKind } from '../../shared/schemas/mail'
+import { isChosenMail } from '../../shared/schemas/mail'
 
 /** A line of a list, with the page that it is about and what else belongs to it. */
 export interface LetterItem {
@@ -40,8 +41,11 @@ export function oneLine(text: string): string {
   return characters.length > MAX_SUBJECT ? `${characters.slice(0, MAX_SUBJECT - 1).join('')}…` : line
 }
 
+/** Where a person chooses among the messages of a workspace. */
+const WISHES = { label: 'Choose which messages you get', path: '/account#messages' }
+
 /** The plain text of a message; links stand on lines of their own, so that every reader finds their ends. */
-function textOf({ parts, action, because }: Letter, site: string): string {
+function textOf({ kind, parts, action, because }: Letter, site: string): string {
   const blocks = parts.map((part) => {
     if ('text' in part) return oneLineEach(part.text)
     if ('quote' in part)
@@ -51,7 +55,8 @@ function textOf({ parts, action, because }: Letter, site: string): string {
         .join('\n')
     return part.list.map((item) => listedText(item, site)).join('\n')
   })
-  const end = `-- \nYou get this because ${oneLine(because)}.\nEspalier, ${site}/`
+  const wishes = isChosenMail(kind) ? `\n${WISHES.label}: ${site}${WISHES.path}` : ''
+  const end = `-- \nYou get this because ${oneLine(because)}.${wishes}\nEspalier, ${site}/`
   return `${[...blocks, `${action.label}:\n${site}${action.path}`, end].join('\n\n')}\n`
 }
 
@@ -96,8 +101,9 @@ function partHtml(part: LetterPart, site: string): string {
   return `<ul style="${STYLE.list}">${items.join('')}</ul>`
 }
 
-function htmlOf({ subject, parts, action, because }: Letter, site: string): string {
+function htmlOf({ kind, subject, parts, action, because }: Letter, site: string): string {
   const title = escapeHtml(oneLine(subject))
+  const wishes = isChosenMail(kind) ? `<br>${link(WISHES.label, site + WISHES.path)}` : ''
   const body = parts.map((part) => partHtml(part, site)).join('\n')
   return `<!doctype html>
 <html lang="en"><head><meta charset="utf-8"><meta name="viewport" content="width=device-width, initial-scale=1"><meta name="color-scheme" content="light only"><title>${title}</title></head>
@@ -105,7 +111,7 @@ function htmlOf({ subject, parts, action, because }: Letter, site: string): stri
 <h1 style="${STYLE.title}">${title}</h1>
 ${body}
 <p style="${STYLE.paragraph}">${link(action.label, site + action.path)}</p>
-<p style="${STYLE.end}">You get this because ${inHtml(oneLine(because))}.<br>Espalier, ${link(site, `${site}/`)}</p>
+<p style="${STYLE.end}">You get this because ${inHtml(oneLine(because))}.${wishes}<br>Espalier, ${link(site, `${site}/`)}</p>
 </div></body></html>
 `
 }

@@ -6,6 +6,7 @@ import type { Db } from '../database/client'
 import type { MailRow } from '../database/repositories/mails'
 import { addresseesOf, countMails, insertMails, listMails } from '../database/repositories/mails'
 import { pageOf, positionOf } from '../database/repositories/pages'
+import { listUnwanted } from '../database/repositories/unwanted-mails'
 import { readFact } from '../database/repositories/people'
 import type { Letter } from '../mail/letter'
 import { writeLetter } from '../mail/letter'
@@ -14,7 +15,8 @@ import { POST_FACT, postOf } from '../mail/post'
 
 /**
  * Writes to people, in the transaction of what they are told: what is rolled back is never told, what is committed is
- * never forgotten. Sending is left to the post. Whoever did it is not told, nor is anybody who left the workspace.
+ * never forgotten. Sending is left to the post. Whoever did it is not told, nor is anybody who left the workspace or wants
+ * no messages of that kind.
  * @param letters by user id
  */
 export async function tell(
@@ -24,7 +26,10 @@ export async function tell(
   letters: ReadonlyMap<string, Letter>,
 ): Promise<void> {
   const ids = [...letters.keys()].filter((id) => id !== by)
-  const addressees = await addresseesOf(tx, workspaceId, ids)
+  const unwanted = await listUnwanted(tx, workspaceId, ids)
+  const isWanted = (id: string): boolean =>
+    !unwanted.some(({ userId, kind }) => userId === id && kind === letters.get(id)!.kind)
+  const addressees = await addresseesOf(tx, workspaceId, ids.filter(isWanted))
   const post = postOf(await readFact(tx, POST_FACT))
   await insertMails(
     tx,

@@ -1,16 +1,24 @@
 import { z } from 'zod'
 import { pageQuerySchema } from './common'
 
+/** Messages of a workspace, which each person may want or not. */
+export const CHOSEN_MAIL_KINDS = ['run sheet handed over', 'run sheet remark', 'embedding broken'] as const
+export type ChosenMailKind = (typeof CHOSEN_MAIL_KINDS)[number]
+
 /** What a message tells: one kind for each reason to write to somebody. */
 export type MailKind =
-  | 'embedding broken'
-  | 'run sheet handed over'
-  | 'run sheet remark'
-  | 'invitation'
-  | 'new password'
-  | 'password changed'
-  | 'new address'
-  | 'address changed'
+  ChosenMailKind | 'invitation' | 'new password' | 'password changed' | 'new address' | 'address changed'
+
+export const isChosenMail = (kind: MailKind): kind is ChosenMailKind =>
+  CHOSEN_MAIL_KINDS.some((chosen) => chosen === kind)
+
+/** Kinds that are wanted; all others are not. */
+export const mailWishesSchema = z.object({ wanted: z.array(z.enum(CHOSEN_MAIL_KINDS)).max(CHOSEN_MAIL_KINDS.length) })
+
+/** Which messages of a workspace somebody gets. */
+export interface MailWishes {
+  wanted: ChosenMailKind[]
+}
 
 /**
  * waiting: to be sent, or tried again; sent: taken by the mail server; kept: there is no mail server, read it in the

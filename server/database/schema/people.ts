@@ -1,6 +1,6 @@
 import { bigint, boolean, index, integer, jsonb, pgTable, primaryKey, text, uniqueIndex } from 'drizzle-orm/pg-core'
 import type { Role } from '../../../shared/schemas/common'
-import type { MailKind } from '../../../shared/schemas/mail'
+import type { ChosenMailKind } from '../../../shared/schemas/mail'
 import { createdAt, id, moment } from './columns'
 
 export const users = pgTable(
@@ -151,7 +151,7 @@ export const unwantedMails = pgTable(
     workspaceId: text()
       .notNull()
       .references(() => workspaces.id, { onDelete: 'cascade' }),
-    kind: text().$type<MailKind>().notNull(),
+    kind: text().$type<ChosenMailKind>().notNull(),
   },
   (table) => [primaryKey({ columns: [table.userId, table.workspaceId, table.kind] })],
 )

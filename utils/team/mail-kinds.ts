@@ -1,0 +1,14 @@
+import type { ChosenMailKind } from '#shared/schemas/mail'
+
+/** What each kind of message tells, for whoever chooses. */
+export const MAIL_KIND_WORDS: Record<ChosenMailKind, { label: string; hint: string }> = {
+  'run sheet handed over': {
+    label: 'Run sheets handed over',
+    hint: 'One that waits for your review; one of yours that was approved, sent back, issued, or went back to review.',
+  },
+  'run sheet remark': { label: 'Remarks', hint: 'On run sheets that you prepared or review.' },
+  'embedding broken': {
+    label: 'Embeddings broken by a calibration',
+    hint: 'One that you made, or that a run sheet of yours stands on.',
+  },
+}
