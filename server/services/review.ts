@@ -3,7 +3,7 @@ import { DomainError } from '../../shared/errors'
 import type { RunSheetState } from '../../shared/schemas/run-sheets'
 import type { Actor, App } from '../app'
 import type { RunSheetRow } from '../database/repositories/run-sheets'
-import { insertRemark, updateRunSheet } from '../database/repositories/run-sheets'
+import { insertRemark, SUBMITTED, updateRunSheet } from '../database/repositories/run-sheets'
 import type { HandedOver } from '../mail/letters'
 import { reserveTime } from './budget'
 import { fingerprintOf, programmeBench, requireProgrammed } from './programming'
@@ -18,7 +18,7 @@ interface HandOver {
 }
 
 const HAND_OVERS = {
-  submit: { from: ['draft', 'sent back'], to: 'in review', what: 'submitted for review', told: 'submitted' },
+  submit: { from: ['draft', 'sent back'], to: 'in review', what: SUBMITTED, told: 'submitted' },
   approve: { from: ['in review'], to: 'approved', what: 'approved', told: 'approved' },
   sendBack: { from: ['in review'], to: 'sent back', what: 'sent back', told: 'sent back' },
   issue: { from: ['approved'], to: 'issued', what: 'issued', told: 'issued' },
@@ -66,6 +66,7 @@ export async function handOver(
       by: actor.userId,
       what,
       text: remark,
+      settings: step === 'submit' ? row.settings : null,
       createdAt: app.now(),
     })
     await tellHandOver(app, tx, { ...row, ...change }, { step: told, by: actor.userId, remark })

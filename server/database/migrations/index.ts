@@ -280,5 +280,14 @@ export const MIGRATIONS = [
       "\nCREATE FUNCTION \"refuse_change_of_record\"() RETURNS trigger LANGUAGE plpgsql AS $$\nBEGIN\n\tIF TG_OP = 'DELETE' AND NOT EXISTS (SELECT 1 FROM \"workspaces\" WHERE \"id\" = OLD.\"workspace_id\") THEN\n\t\tRETURN OLD;\n\tEND IF;\n\tRAISE EXCEPTION 'entries of % are only ever added', TG_TABLE_NAME;\nEND\n$$;",
       "\nCREATE TRIGGER \"budget_entries_only_added\" BEFORE UPDATE OR DELETE ON \"budget_entries\" FOR EACH ROW EXECUTE FUNCTION \"refuse_change_of_record\"();\n"
     ]
+  },
+  {
+    "tag": "0010_submitted_settings",
+    "folderMillis": 1796233058752,
+    "hash": "002a022124dad600094932f115a208758958957c256278c759c5c3f709e05d53",
+    "bps": true,
+    "sql": [
+      "ALTER TABLE \"run_sheet_remarks\" ADD COLUMN \"settings\" jsonb;"
+    ]
   }
 ]

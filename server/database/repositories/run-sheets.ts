@@ -3,6 +3,9 @@ import type { Db } from '../client'
 import { embeddings, machines, problems, returns, runSheetRemarks, runSheets, users } from '../schema'
 
 export type RunSheetRow = typeof runSheets.$inferSelect
+/** What a remark says of a submission. */
+export const SUBMITTED = 'submitted for review'
+
 export type ReturnRow = typeof returns.$inferSelect
 
 export async function insertRunSheet(db: Db, row: typeof runSheets.$inferInsert): Promise<void> {
@@ -113,6 +116,26 @@ export async function listRemarks(db: Db, runSheetId: string) {
     .leftJoin(users, eq(users.id, runSheetRemarks.by))
     .where(eq(runSheetRemarks.runSheetId, runSheetId))
     .orderBy(asc(runSheetRemarks.createdAt))
+}
+
+/** Submissions of a run sheet for review, newest first. */
+export async function submissionsOf(db: Db, runSheetId: string) {
+  return db
+    .select()
+    .from(runSheetRemarks)
+    .where(and(eq(runSheetRemarks.runSheetId, runSheetId), eq(runSheetRemarks.what, SUBMITTED)))
+    .orderBy(desc(runSheetRemarks.createdAt))
+}
+
+/** Run sheets in review, the longest unchanged first. */
+export async function listInReview(db: Db, workspaceId: string, limit: number, offset: number): Promise<RunSheetRow[]> {
+  return db
+    .select()
+    .from(runSheets)
+    .where(and(eq(runSheets.workspaceId, workspaceId), eq(runSheets.state, 'in review'), isNull(runSheets.deletedWith)))
+    .orderBy(asc(runSheets.changedAt), asc(runSheets.number))
+    .limit(limit)
+    .offset(offset)
 }
 
 export async function insertReturn(db: Db, row: typeof returns.$inferInsert): Promise<void> {

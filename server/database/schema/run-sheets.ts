@@ -47,6 +47,8 @@ export const runSheetRemarks = pgTable(
     by: text().references(() => users.id),
     what: text().notNull(),
     text: text().notNull(),
+    /** With a submission: the settings that were submitted. */
+    settings: jsonb().$type<RunSheetSettings>(),
     createdAt: createdAt(),
   },
   (table) => [index().on(table.runSheetId, table.createdAt)],
