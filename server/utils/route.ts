@@ -8,6 +8,7 @@ import { sessionCaller } from '../services/sessions'
 import { tokenCaller } from '../services/tokens'
 import { requireShown } from '../services/workspaces'
 import { useApp } from './app'
+import { audited } from './audited'
 import { bearerOf } from './bearer'
 import { toHttpError } from './http'
 import { addressOf } from './session'
@@ -71,7 +72,7 @@ export function defineRoute<T>(allowed: Allowed, handler: Handler<T>) {
       const app = await useApp()
       const caller = await callerOf(event, app)
       requireRole(allowed, caller)
-      return handler(event, { app, ...caller })
+      return audited(event, { app, ...caller }, () => handler(event, { app, ...caller }))
     }),
   )
 }

@@ -289,5 +289,18 @@ export const MIGRATIONS = [
     "sql": [
       "ALTER TABLE \"run_sheet_remarks\" ADD COLUMN \"settings\" jsonb;"
     ]
+  },
+  {
+    "tag": "0011_audit_trail",
+    "folderMillis": 1796234217140,
+    "hash": "7d91d4394f4899cf5c9e64660589449e8d89a522bdc366ccb09df982a151328b",
+    "bps": true,
+    "sql": [
+      "CREATE TABLE \"audit_entries\" (\n\t\"id\" text PRIMARY KEY NOT NULL,\n\t\"workspace_id\" text NOT NULL,\n\t\"at\" timestamp with time zone NOT NULL,\n\t\"by\" text NOT NULL,\n\t\"token\" text,\n\t\"address\" text NOT NULL,\n\t\"what\" text NOT NULL,\n\t\"kind\" text NOT NULL,\n\t\"thing_id\" text,\n\t\"thing\" text NOT NULL\n);\n",
+      "\nALTER TABLE \"audit_entries\" ADD CONSTRAINT \"audit_entries_workspace_id_workspaces_id_fk\" FOREIGN KEY (\"workspace_id\") REFERENCES \"public\".\"workspaces\"(\"id\") ON DELETE cascade ON UPDATE no action;",
+      "\nALTER TABLE \"audit_entries\" ADD CONSTRAINT \"audit_entries_by_users_id_fk\" FOREIGN KEY (\"by\") REFERENCES \"public\".\"users\"(\"id\") ON DELETE no action ON UPDATE no action;",
+      "\nCREATE INDEX \"audit_entries_workspace_id_at_index\" ON \"audit_entries\" USING btree (\"workspace_id\",\"at\");",
+      "\nCREATE TRIGGER \"audit_entries_only_added\" BEFORE UPDATE OR DELETE ON \"audit_entries\" FOR EACH ROW EXECUTE FUNCTION \"refuse_change_of_record\"();\n"
+    ]
   }
 ]

@@ -1,3 +1,4 @@
+export * from './audit'
 export * from './blobs'
 export * from './budget'
 export * from './jobs'

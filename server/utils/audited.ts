@@ -1,0 +1,36 @@
+import type { H3Event } from 'h3'
+import { DEEDS } from '../../shared/audit'
+import type { Actor, App } from '../app'
+import { nameOfThing, record } from '../services/audit'
+import { addressOf } from './session'
+
+interface Caller extends Actor {
+  tokenId: string | null
+}
+
+const idIn = (answer: unknown): string | null => {
+  const id = typeof answer === 'object' && answer !== null && 'id' in answer ? answer.id : null
+  return typeof id === 'string' ? id : null
+}
+
+/** Does the work of a route and, where it changed something, writes down who did it, to what, and from where. */
+export async function audited<T>(
+  event: H3Event,
+  { app, ...caller }: Caller & { app: App },
+  work: () => Promise<T> | T,
+): Promise<T> {
+  const deed = DEEDS[`${event.method} ${event.context.matchedRoute?.path ?? ''}`]
+  if (!deed) return work()
+  const named = deed.isOwn ? null : (event.context.params?.id ?? null)
+  // What is deleted has no name afterwards; what is renamed is called by its new one.
+  const name = event.method === 'DELETE' ? await nameOfThing(app, deed, named) : undefined
+  const answer = await work()
+  const thingId = deed.isOwn ? null : (named ?? idIn(answer))
+  try {
+    await record(app, caller, { deed, thingId, name, tokenId: caller.tokenId, address: addressOf(event) })
+  } catch (error) {
+    // It is done, and saying otherwise would have it done twice.
+    console.error(`audit trail: ${error instanceof Error ? error.message : String(error)}`)
+  }
+  return answer
+}

@@ -1,0 +1,90 @@
+/** What the audit trail tells of each route that changes something, by its address. */
+
+export const AUDIT_KINDS = [
+  'problem',
+  'embedding',
+  'run sheet',
+  'samples',
+  'machine',
+  'budget',
+  'person',
+  'invitation',
+  'token',
+  'workspace',
+] as const
+export type AuditKind = (typeof AUDIT_KINDS)[number]
+
+export interface Deed {
+  /** What was done, after the name of who did it. */
+  what: string
+  /** What it was done to. */
+  kind: AuditKind
+  /** Done to whoever did it: the address names no other thing. */
+  isOwn?: true
+}
+
+const deed = (kind: AuditKind, what: string): Deed => ({ kind, what })
+const own = (what: string): Deed => ({ kind: 'person', what, isOwn: true })
+
+/** Null: the route works something out, or changes only what somebody sees of it. */
+export const DEEDS: Readonly<Record<string, Deed | null>> = {
+  'POST /api/account/address': own('asked for a change of their own address'),
+  'PUT /api/account/mails': null,
+  'DELETE /api/account/membership': { kind: 'workspace', what: 'left', isOwn: true },
+  'PUT /api/account/password': own('changed their own password'),
+  'POST /api/budget/grants': deed('budget', 'granted or took back machine time'),
+  'DELETE /api/embeddings/:id': deed('embedding', 'deleted'),
+  'PATCH /api/embeddings/:id': deed('embedding', 'changed'),
+  'POST /api/embeddings/:id/restore': deed('embedding', 'brought back'),
+  'POST /api/embeddings/import': deed('embedding', 'imported'),
+  'POST /api/embeddings': deed('embedding', 'looked for'),
+  'DELETE /api/invitations/:id': deed('invitation', 'withdrew'),
+  'POST /api/invitations/:id/resend': deed('invitation', 'sent again'),
+  'POST /api/invitations': deed('invitation', 'made'),
+  'DELETE /api/jobs/:id': null,
+  'POST /api/machines/:id/calibrations': deed('machine', 'calibrated'),
+  'POST /api/machines/:id/capacity': null,
+  'POST /api/machines/:id/repairs': deed('machine', 'repaired embeddings on'),
+  'POST /api/machines': deed('machine', 'added'),
+  'DELETE /api/people/:id': deed('person', 'removed'),
+  'PATCH /api/people/:id': deed('person', 'changed the roles of'),
+  'POST /api/people/:id/reset-link': deed('person', 'made a link for a new password of'),
+  'POST /api/problems/:id/duplicate': deed('problem', 'copied'),
+  'POST /api/problems/:id/energy': null,
+  'PUT /api/problems/:id/groups': deed('problem', 'set the constraint groups of'),
+  'DELETE /api/problems/:id': deed('problem', 'deleted'),
+  'PATCH /api/problems/:id': deed('problem', 'changed'),
+  'POST /api/problems/:id/labels': deed('problem', 'renamed variables of'),
+  'POST /api/problems/:id/lift': null,
+  'POST /api/problems/:id/presolve': null,
+  'POST /api/problems/:id/reduced': deed('problem', 'saved the pre-solved form of'),
+  'POST /api/problems/:id/reference': deed('problem', 'looked for the reference optimum of'),
+  'POST /api/problems/:id/restore': deed('problem', 'brought back'),
+  'POST /api/problems/:id/versions': deed('problem', 'uploaded a version of'),
+  'POST /api/problems': deed('problem', 'uploaded'),
+  'POST /api/problems/rejected': null,
+  'DELETE /api/returns/:id/answer-sheet': deed('samples', 'took back the answer link of'),
+  'POST /api/returns/:id/answer-sheet': deed('samples', 'made an answer link of'),
+  'POST /api/returns/:id/next': deed('samples', 'made the next draft from'),
+  'POST /api/run-sheets/:id/approve': deed('run sheet', 'approved'),
+  'POST /api/run-sheets/:id/duplicate': deed('run sheet', 'copied'),
+  'DELETE /api/run-sheets/:id': deed('run sheet', 'deleted'),
+  'PATCH /api/run-sheets/:id': deed('run sheet', 'changed'),
+  'POST /api/run-sheets/:id/issue': deed('run sheet', 'issued'),
+  'POST /api/run-sheets/:id/quenches': deed('run sheet', 'made a series of quenches from'),
+  'POST /api/run-sheets/:id/rehearsals': deed('run sheet', 'rehearsed'),
+  'POST /api/run-sheets/:id/remarks': deed('run sheet', 'wrote a remark on'),
+  'POST /api/run-sheets/:id/restore': deed('run sheet', 'brought back'),
+  'POST /api/run-sheets/:id/returns': deed('run sheet', 'loaded samples of'),
+  'POST /api/run-sheets/:id/scans': deed('run sheet', 'scanned strengths of'),
+  'POST /api/run-sheets/:id/send-back': deed('run sheet', 'sent back'),
+  'POST /api/run-sheets/:id/spins': null,
+  'POST /api/run-sheets/:id/submit': deed('run sheet', 'submitted'),
+  'POST /api/run-sheets': deed('run sheet', 'prepared'),
+  'PUT /api/session/workspace': null,
+  'DELETE /api/sessions/:id': own('ended a session of their own'),
+  'DELETE /api/sessions': own('ended all other sessions of their own'),
+  'DELETE /api/tokens/:id': deed('token', 'revoked'),
+  'POST /api/tokens': deed('token', 'made'),
+  'POST /api/workspaces': null,
+}
