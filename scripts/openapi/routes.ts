@@ -158,7 +158,8 @@ class RouteReader {
   private media(): string[] {
     const sent = this.named('sendFile').flatMap((call) => {
       const given = stringsIn(call.arguments[2])
-      return given.length > 0 ? given : ['application/octet-stream']
+      // Which it is depends on what is asked for.
+      return given.length > 0 ? given : ['*/*']
     })
     const set = this.named('setResponseHeader').flatMap((call) =>
       stringsIn(call.arguments[1])[0] === 'content-type' ? stringsIn(call.arguments[2]) : [],
