@@ -63,9 +63,10 @@ async function addAccounts(folder: string): Promise<void> {
   await app.db.transaction(async (tx) => {
     const other = await createWorkspace(app, tx, 'Elsewhere')
     for (const [place, workspaceId] of Object.entries({ own: demo!.id, elsewhere: other }))
-      for (const role of ROLES) {
-        const email = `${place}.${role}@brackwater.example`
-        await createAccount(app, tx, { name: `${place} ${role}`, email, passwordHash, workspaceId, roles: [role] })
+      for (const name of [...ROLES, 'spare'] as const) {
+        const email = `${place}.${name}@brackwater.example`
+        const roles: Role[] = name === 'spare' ? ['reader'] : [name]
+        await createAccount(app, tx, { name: `${place} ${name}`, email, passwordHash, workspaceId, roles })
       }
   })
   await test.close()
@@ -87,6 +88,7 @@ async function callers(place: string): Promise<Caller[]> {
 
 interface Item {
   id: string
+  name?: string
   isThis?: boolean
   state?: string
 }
@@ -109,8 +111,9 @@ async function thingsOf(owner: Client, developer: Client): Promise<Things> {
   const token = await owner.post<Item>('/api/tokens', { name: 'Nobody’s', role: 'owner' })
   const spare = await Client.signedIn(server.url, 'own.owner')
   const sessions = (await spare.get<{ items: Item[] }>('/api/sessions')).body.items
+  const person = (await list('/api/people')).find(({ name }) => name === 'own spare')!
   return {
-    ...{ problem: problemId, machine: machineId, embedding: embedding.id, runSheet: runSheet.id },
+    ...{ person: person.id, problem: problemId, machine: machineId, embedding: embedding.id, runSheet: runSheet.id },
     ...{ return: sheet.returns[0]!.id, scan: scan.id, job: scan.jobId, invitation: invited.body.id },
     ...{ token: token.body.id, session: sessions.find(({ isThis }) => isThis)!.id },
   }
@@ -198,14 +201,17 @@ describe('every route', () => {
       (route) => changes(route) && (route.allowed === 'member' || route.allowed.includes('reader')),
     )
     expect(open.map(({ name }) => name).sort()).toEqual([
+      'DELETE /api/account/membership',
       'DELETE /api/sessions',
       'DELETE /api/sessions/{id}',
       'DELETE /api/tokens/{id}',
+      'POST /api/account/address',
       'POST /api/problems/{id}/energy',
       'POST /api/problems/{id}/lift',
       'POST /api/problems/{id}/presolve',
       'POST /api/run-sheets/{id}/spins',
       'POST /api/tokens',
+      'PUT /api/account/password',
     ])
   })
 
@@ -264,7 +270,7 @@ describe('every route', () => {
     const found: string[] = []
     for (const name of Object.keys(SAMPLES)) {
       const route = CLOSED.find((one) => one.name === name)
-      if (!route) continue
+      if (!route || SAMPLES[name]!.endsCaller) continue
       const caller = own.find((one) => !one.isToken && one.role === 'owner' && may(route, one))
       const sender = caller ?? own.find((one) => may(route, one))!
       const { status, text } = await ask(route, sender, things, bodyOf(SAMPLES[name]!, things))
@@ -276,6 +282,7 @@ describe('every route', () => {
   it('answers 403 to a role or a token that may not, and lets the others in', async () => {
     expect(
       await complaints(pairs(own), async ({ route, caller }) => {
+        if (SAMPLES[route.name]!.endsCaller && may(route, caller)) return null
         const { ids, body } = harmless(route)
         const { status } = await ask(route, caller, ids, body)
         const isIn = status !== 401 && status !== 403 && (status !== 404 || ids !== things)

@@ -11,6 +11,8 @@ export interface Sample {
   form?: Record<string, string>
   /** What anybody gets from a public route. */
   status?: number
+  /** Its sender is no member afterwards: it is not sent in earnest. */
+  endsCaller?: boolean
 }
 
 const STATES = { form: 'qubo', states: [] }
@@ -22,6 +24,11 @@ const PAIR = { problemId: '$problem', machineId: '$machine' }
  */
 export const SAMPLES: Record<string, Sample> = {
   'GET /api/answer-sheets/{token}': { status: 404 },
+  'GET /api/addresses/{secret}': { status: 404 },
+  'POST /api/addresses/{secret}': { status: 404 },
+  'POST /api/resets': { json: { email: 'nobody@example.org' }, status: 409 },
+  'GET /api/resets/{secret}': { status: 404 },
+  'POST /api/resets/{secret}': { json: { password: 'a long one, not guessed' }, status: 404 },
   'GET /api/entrance': { status: 200 },
   'GET /api/health': { status: 200 },
   'GET /api/invited/{secret}': { status: 404 },
@@ -38,6 +45,9 @@ export const SAMPLES: Record<string, Sample> = {
   'GET /api/first-steps': {},
   'GET /api/session': {},
   'GET /api/people': {},
+  'PATCH /api/people/{id}': { json: { roles: ['steward'] } },
+  'POST /api/people/{id}/reset-link': {},
+  'DELETE /api/people/{id}': {},
   'GET /api/outbox': {},
   'GET /api/problems': {},
   'GET /api/problems/summary': {},
@@ -135,6 +145,9 @@ export const SAMPLES: Record<string, Sample> = {
   'GET /api/sessions': {},
   'DELETE /api/sessions/{id}': {},
   'DELETE /api/sessions': {},
+  'POST /api/account/address': { json: { email: 'other@example.org', current: 'brackwater-demo' } },
+  'PUT /api/account/password': { json: { current: 'brackwater-demo', password: 'a long one, not guessed' } },
+  'DELETE /api/account/membership': { endsCaller: true },
   'GET /api/tokens': {},
   'POST /api/tokens': { json: { name: 'One more', role: 'owner' } },
   'DELETE /api/tokens/{id}': {},
