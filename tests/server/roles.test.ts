@@ -116,6 +116,7 @@ async function thingsOf(owner: Client, developer: Client): Promise<Things> {
     ...{ person: person.id, problem: problemId, machine: machineId, embedding: embedding.id, runSheet: runSheet.id },
     ...{ return: sheet.returns[0]!.id, scan: scan.id, job: scan.jobId, invitation: invited.body.id },
     ...{ token: token.body.id, session: sessions.find(({ isThis }) => isThis)!.id },
+    workspace: (await owner.get<{ workspace: Item }>('/api/session')).body.workspace.id,
   }
 }
 
@@ -211,7 +212,10 @@ describe('every route', () => {
       'POST /api/problems/{id}/presolve',
       'POST /api/run-sheets/{id}/spins',
       'POST /api/tokens',
+      'POST /api/workspaces',
+      'PUT /api/account/mails',
       'PUT /api/account/password',
+      'PUT /api/session/workspace',
     ])
   })
 

@@ -1,6 +1,17 @@
 /** Things of a workspace that requests name, by id. */
 export type Thing =
-  'problem' | 'machine' | 'embedding' | 'runSheet' | 'return' | 'scan' | 'job' | 'invitation' | 'session' | 'token'
+  | 'problem'
+  | 'machine'
+  | 'embedding'
+  | 'runSheet'
+  | 'return'
+  | 'scan'
+  | 'job'
+  | 'invitation'
+  | 'session'
+  | 'token'
+  | 'person'
+  | 'workspace'
 export type Things = Record<Thing, string>
 
 /** A request that a route takes, `$problem` and so on standing for ids. */
@@ -11,7 +22,7 @@ export interface Sample {
   form?: Record<string, string>
   /** What anybody gets from a public route. */
   status?: number
-  /** Its sender is no member afterwards: it is not sent in earnest. */
+  /** Its sender is in another workspace afterwards, or in none: it is not sent in earnest. */
   endsCaller?: boolean
 }
 
@@ -49,6 +60,11 @@ export const SAMPLES: Record<string, Sample> = {
   'POST /api/people/{id}/reset-link': {},
   'DELETE /api/people/{id}': {},
   'GET /api/outbox': {},
+  'GET /api/audit': {},
+  'GET /api/budget': {},
+  'GET /api/budget/entries': {},
+  'POST /api/budget/grants': { json: { seconds: 1 } },
+  'GET /api/reviews': {},
   'GET /api/problems': {},
   'GET /api/problems/summary': {},
   'GET /api/problems/tags': {},
@@ -145,6 +161,10 @@ export const SAMPLES: Record<string, Sample> = {
   'GET /api/sessions': {},
   'DELETE /api/sessions/{id}': {},
   'DELETE /api/sessions': {},
+  'GET /api/account/mails': {},
+  'PUT /api/account/mails': { json: { wanted: [] } },
+  'POST /api/workspaces': { json: { name: 'One more' }, endsCaller: true },
+  'PUT /api/session/workspace': { json: { workspaceId: '$workspace' } },
   'POST /api/account/address': { json: { email: 'other@example.org', current: 'brackwater-demo' } },
   'PUT /api/account/password': { json: { current: 'brackwater-demo', password: 'a long one, not guessed' } },
   'DELETE /api/account/membership': { endsCaller: true },
@@ -165,4 +185,5 @@ export const ID_OF: Record<string, Thing> = {
   invitations: 'invitation',
   sessions: 'session',
   tokens: 'token',
+  people: 'person',
 }
