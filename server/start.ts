@@ -4,6 +4,7 @@ import { migrate, openDatabase } from './database/client'
 import { createBlobStore } from './database/repositories/blobs'
 import { startQueue } from './jobs/queue'
 import { startRunner } from './jobs/runner'
+import { sweepAnswers } from './services/answered-requests'
 import { sweepAttempts } from './services/attempts'
 import { sweepReservations } from './services/budget'
 import { sweepConfirmations } from './services/confirmations'
@@ -43,6 +44,7 @@ async function keepSweeping(app: App): Promise<() => void> {
     await sweepSessions(app)
     await sweepAttempts(app)
     await sweepReservations(app)
+    await sweepAnswers(app)
     await sweepConfirmations(app)
   }
   await sweep()

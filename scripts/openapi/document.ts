@@ -48,6 +48,18 @@ const ERROR: JsonSchema = {
   },
 }
 
+const IDEMPOTENCY_KEY = {
+  name: 'Idempotency-Key',
+  in: 'header',
+  required: false,
+  description: [
+    'Makes it safe to ask again when an answer was lost: the same request with the same key within 24 hours gets the same',
+    'answer, and nothing is done twice. 409 while the first one is being answered, 422 where the key was used for another',
+    'request. What was refused is tried anew. A new random key for every request, such as a UUID.',
+  ].join(' '),
+  schema: { type: 'string', pattern: '^[!-~]{1,200}$' },
+}
+
 const INTRODUCTION = [
   'All that the pages do, for scripts. Sign in with a token (`Authorization: Bearer …`, made under People, Tokens), or with',
   'the session cookie of `POST /api/session`. A token acts in the name of who made it, with its one role, in its workspace;',
@@ -157,7 +169,8 @@ function errorsOf(route: Route) {
     ...(Array.isArray(route.allowed) || route.sessionOnly ? [403] : []),
     ...(route.path.includes('{') ? [404] : []),
     ...(route.body || route.form ? [400, 413] : []),
-    ...(takes ? [422] : []),
+    ...(takes || route.takesKey ? [422] : []),
+    ...(route.takesKey ? [409] : []),
     ...named.filter((status) => ERRORS[status]),
   ])
   return Object.fromEntries(
@@ -173,7 +186,11 @@ async function operation(route: Route, components: Record<string, JsonSchema>) {
     description: `${route.comment}\n\n${accessOf(route)}`,
     'x-allowed': route.allowed,
     security: securityOf(route),
-    parameters: [...pathParameters(route), ...(await queryParameters(route))],
+    parameters: [
+      ...pathParameters(route),
+      ...(await queryParameters(route)),
+      ...(route.takesKey ? [{ $ref: '#/components/parameters/IdempotencyKey' }] : []),
+    ],
     ...(await requestBody(route, components)),
     responses: { ...successes(route), ...errorsOf(route) },
   }
@@ -200,6 +217,7 @@ export async function openApiDocument(root: string) {
         token: { type: 'http', scheme: 'bearer', description: 'Made under People, Tokens.' },
         session: { type: 'apiKey', in: 'cookie', name: 'nuxt-session', description: 'From `POST /api/session`.' },
       },
+      parameters: { IdempotencyKey: IDEMPOTENCY_KEY },
       responses: Object.fromEntries(
         Object.entries(ERRORS).map(([status, description]) => [status, { description, ...error }]),
       ),

@@ -22,6 +22,8 @@ export interface Route {
   body: SchemaSource | null
   query: SchemaSource | null
   form: SchemaSource | null
+  /** Asked again under a key, it answers the same and does nothing. */
+  takesKey: boolean
   /** The form has to have a file, and not something in its place. */
   needsFile: boolean
   /** Statuses of success. */
@@ -90,6 +92,7 @@ class RouteReader {
       comment: this.comment(),
       allowed: definer === 'definePublicRoute' ? 'anybody' : this.allowed(),
       sessionOnly: definer === 'defineSessionRoute',
+      takesKey: definer === 'defineRoute' && file.endsWith('.post.ts') && this.definition.arguments.length === 2,
       body: this.schemaGivenTo('bodyOf', 1),
       query: this.schemaGivenTo('queryOf', 1),
       form: this.schemaGivenTo('parse', 0),
@@ -137,7 +140,7 @@ class RouteReader {
   /** The handler's own, or what work with progress comes to. */
   private answerType(): ts.Type {
     const worker = this.named('answerWithProgress')[0]?.arguments[1]
-    const work = worker ?? this.definition.arguments.at(-1)!
+    const work = worker ?? this.definition.arguments.find((argument) => ts.isArrowFunction(argument))!
     const signature = this.checker.getTypeAtLocation(work).getCallSignatures()[0]!
     const returned = this.checker.getReturnTypeOfSignature(signature)
     return this.checker.getAwaitedType(returned) ?? returned

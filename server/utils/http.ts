@@ -55,7 +55,7 @@ export function parse<T extends z.ZodType>(schema: T, input: unknown, what: stri
 const BODY_LIMIT_BYTES = 16 * 2 ** 20
 
 /** A body is read into memory whole, so its length has to be stated and within the limit before it is read. */
-function requireModestBody(event: H3Event): void {
+export function requireModestBody(event: H3Event): void {
   if (getHeader(event, 'transfer-encoding'))
     throw new DomainError('unreadable', 'request.length', 'State the length of the request body (Content-Length).')
   if (Number(getHeader(event, 'content-length') ?? 0) > BODY_LIMIT_BYTES)

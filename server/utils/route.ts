@@ -11,6 +11,7 @@ import { useApp } from './app'
 import { audited } from './audited'
 import { bearerOf } from './bearer'
 import { toHttpError } from './http'
+import { answeredOnce, keyOf } from './once'
 import { addressOf } from './session'
 
 interface Caller extends Actor {
@@ -62,17 +63,26 @@ function requireRole(allowed: Allowed, { roles, tokenId }: Caller): void {
   )
 }
 
+interface RouteOptions {
+  /** The answer holds a secret: it is never kept, so that `Idempotency-Key` does nothing. */
+  hasSecret?: boolean
+}
+
 /**
  * The one way to define a route behind sign-in: it finds out who asks, by session or by token, in which workspace and with
- * which roles, and refuses unless one of the allowed roles is held. `member` allows every role.
+ * which roles, and refuses unless one of the allowed roles is held. `member` allows every role. A POST with an
+ * `Idempotency-Key` is answered once.
  */
-export function defineRoute<T>(allowed: Allowed, handler: Handler<T>) {
+export function defineRoute<T>(allowed: Allowed, handler: Handler<T>, { hasSecret = false }: RouteOptions = {}) {
   return defineEventHandler((event) =>
     mapped(event, async () => {
       const app = await useApp()
       const caller = await callerOf(event, app)
       requireRole(allowed, caller)
-      return audited(event, { app, ...caller }, () => handler(event, { app, ...caller }))
+      // What is answered from before was done before, and is in the audit trail already.
+      const work = (): Promise<T> => audited(event, { app, ...caller }, () => handler(event, { app, ...caller }))
+      const key = hasSecret ? undefined : keyOf(event)
+      return key === undefined ? work() : answeredOnce(event, { app, actor: caller, key }, work)
     }),
   )
 }
@@ -85,11 +95,12 @@ type SessionHandler<T> = (event: H3Event<EventHandlerRequest>, context: SignedIn
 
 /** A route for people who are signed in, not for tokens: what concerns people, accounts and tokens themselves. */
 export function defineSessionRoute<T>(allowed: Allowed, handler: SessionHandler<T>) {
-  return defineRoute(allowed, (event, { sessionId, ...context }) => {
+  const forPeople: Handler<T> = (event, { sessionId, ...context }) => {
     if (sessionId === null)
       throw new DomainError('forbidden', 'token.session-only', 'Tokens may not do this. Sign in and do it yourself.')
     return handler(event, { ...context, sessionId })
-  })
+  }
+  return defineRoute(allowed, forPeople, { hasSecret: true })
 }
 
 /** A route that anyone may call: sign-in, first set-up, health. */

@@ -5,6 +5,7 @@ import { getHeader } from 'h3'
 import { DomainError } from '../../shared/errors'
 import type { StoredFile } from '../services/stored-files'
 import { inTemporaryFolder, storeFile } from '../services/stored-files'
+import { formRead } from './once'
 
 export interface Upload {
   fields: Record<string, string>
@@ -109,8 +110,12 @@ export async function readUpload(event: H3Event, limitBytes: number, fieldBytes 
     stream.on('data', (chunk: Buffer) => chunks.push(chunk))
     stream.on('end', () => (file = { name, bytes: Buffer.concat(chunks) }))
   })
+  formRead(event, fields, ...partsOf(file))
   return { fields, file }
 }
+
+/** Written so because the compiler does not see that a callback sets the file. */
+const partsOf = (file: Upload['file']): (string | Uint8Array)[] => (file ? [file.name, file.bytes] : [])
 
 /** The file of an upload. @throws DomainError when the form has none */
 export function requireFile<T>({ file }: { file: T | null }): T {
@@ -136,6 +141,8 @@ export async function withStoredUpload<T>(
       // What goes wrong with the form is told first; a file cut short by it is no second fault.
       stored.catch(() => {})
     })
-    return work(fields, await stored)
+    const file = await (stored as Promise<StoredFile> | null)
+    formRead(event, fields, ...(file ? [file.name, file.sha256] : []))
+    return work(fields, file)
   })
 }

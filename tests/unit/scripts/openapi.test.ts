@@ -65,6 +65,13 @@ describe('the OpenAPI document', () => {
     ])
   })
 
+  it('says where a key makes it safe to ask again', () => {
+    const key = { $ref: '#/components/parameters/IdempotencyKey' }
+    expect(paths['/api/run-sheets']!.post!.parameters).toContainEqual(key)
+    expect(paths['/api/returns/{id}/answer-sheet']!.post!.parameters).not.toContainEqual(key)
+    expect(paths['/api/tokens']!.post!.parameters).not.toContainEqual(key)
+  })
+
   it('says what is answered, by status and kind', () => {
     const { responses } = paths['/api/problems']!.post!
     expect(Object.keys(responses)).toEqual(['200', '201', '400', '401', '403', '409', '413', '422'])
