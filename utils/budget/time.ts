@@ -1,5 +1,5 @@
 import type { BudgetAccount, BudgetMove } from '#shared/budget'
-import type { BudgetBalance, BudgetEntryView, BudgetUse } from '#shared/schemas/budget'
+import type { BudgetBalance, BudgetUse } from '#shared/schemas/budget'
 import type { ChartSeries } from '../ui/chart/types'
 import type { Fact, MarkKind } from '../ui/parts'
 import { formatCount, formatPercent, MINUS } from '../format'
@@ -32,12 +32,6 @@ export const ACCOUNT_WORDS: Record<BudgetAccount, string> = {
 /** What an entry did, in words before the run sheet that it is about. */
 export const moveWords = (move: BudgetMove): string => MOVES[move].words
 export const moveMark = (move: BudgetMove): MarkKind => MOVES[move].mark
-
-/** What an entry changed on the account that is free to spend: with its sign, or nothing. */
-export function changeOfAvailable({ from, to, seconds }: BudgetEntryView): number | null {
-  if (to === ('available' satisfies BudgetAccount)) return seconds
-  return from === 'available' ? -seconds : null
-}
 
 /** The strip of facts of the budget. */
 export function budgetFacts(total: BudgetBalance, holds: number): Fact[] {

@@ -1,14 +1,6 @@
 import { describe, expect, it } from 'vitest'
-import type { BudgetEntryView, BudgetUse } from '../../../../shared/schemas/budget'
-import {
-  budgetFacts,
-  changeOfAvailable,
-  machineTime,
-  monthName,
-  monthSeries,
-  monthsOf,
-  useRows,
-} from '../../../../utils/budget/time'
+import type { BudgetUse } from '../../../../shared/schemas/budget'
+import { budgetFacts, machineTime, monthName, monthSeries, monthsOf, useRows } from '../../../../utils/budget/time'
 import { MINUS, THIN_SPACE } from '../../../../utils/format'
 
 const alder = { id: 'a', name: 'Alder' }
@@ -59,11 +51,4 @@ it('says when the budget is overspent', () => {
     'for nothing',
     'overspent',
   ])
-})
-
-it('tells what an entry changes on the time that is free', () => {
-  const entry = (from: string, to: string) => ({ from, to, seconds: 2 }) as BudgetEntryView
-  expect(changeOfAvailable(entry('granted', 'available'))).toBe(2)
-  expect(changeOfAvailable(entry('available', 'reserved'))).toBe(-2)
-  expect(changeOfAvailable(entry('reserved', 'spent'))).toBeNull()
 })
