@@ -1,4 +1,4 @@
-import type { CheckSubject, CheckView, RunSheetState, RunSheetView } from './schemas/run-sheets'
+import type { CheckSubject, CheckView, RunSheetSettings, RunSheetState, RunSheetView } from './schemas/run-sheets'
 
 /** How two run sheets differ, field by field. */
 
@@ -49,7 +49,8 @@ export interface ComparedSheet extends RunSheetView {
 
 type Reading = readonly [field: string, unit: string, of: (sheet: ComparedSheet) => Value]
 
-const scheduleText = ({ settings: { schedule } }: RunSheetView): string =>
+/** A schedule in a line: its points, or that it is the straight ramp. */
+export const scheduleText = ({ schedule }: Pick<RunSheetSettings, 'schedule'>): string =>
   schedule ? schedule.map(({ microseconds, s }) => `s ${s} at ${microseconds} µs`).join(', ') : 'straight ramp'
 
 const strengthEnd = (pick: (...values: number[]) => number) => (sheet: ComparedSheet) =>
@@ -83,7 +84,7 @@ const GROUPS: readonly { title: string; readings: readonly Reading[] }[] = [
       ['Gauges', '', ({ settings }) => settings.gauges],
       ['Reads', '', ({ settings }) => settings.reads],
       ['Anneal time', 'µs', ({ settings }) => settings.annealMicroseconds],
-      ['Schedule', '', scheduleText],
+      ['Schedule', '', ({ settings }) => scheduleText(settings)],
       ['Chosen scale', '', ({ settings }) => settings.scale],
       ['Seed', '', ({ settings }) => settings.seed],
     ],

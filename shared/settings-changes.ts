@@ -1,3 +1,4 @@
+import { scheduleText } from './run-sheet-comparison'
 import type { RunSheetSettings } from './schemas/run-sheets'
 
 /** A setting that was changed, before and after, as it reads. */
@@ -7,14 +8,25 @@ export interface SettingChange {
   after: string
 }
 
-const strengthText = ({ strength }: RunSheetSettings): string => {
-  const { rule, ...rest } = strength
-  const value = 'value' in rest ? ` ${String(rest.value)}` : ''
-  return `${rule}${value}`
-}
+/** Chains that are named; of more the count is told. */
+const MOST_NAMED = 4
 
-const scheduleText = ({ schedule }: RunSheetSettings): string =>
-  schedule ? schedule.map(({ microseconds, s }) => `s ${s} at ${microseconds} µs`).join(', ') : 'straight ramp'
+const strengthText = ({ strength: { rule, value } }: RunSheetSettings): string =>
+  value === undefined ? rule : `${rule} ${value}`
+
+/** Strengths of single chains that differ, as they were or are. */
+function singleChains(before: RunSheetSettings, after: RunSheetSettings): SettingChange[] {
+  const [old, now] = [before.strength.perChain ?? {}, after.strength.perChain ?? {}]
+  const labels = Object.keys({ ...old, ...now }).filter((label) => old[label] !== now[label])
+  if (labels.length === 0) return []
+  const more = labels.length > MOST_NAMED ? ` and ${labels.length - MOST_NAMED} more` : ''
+  const text = (of: Record<string, number>) =>
+    labels
+      .slice(0, MOST_NAMED)
+      .map((label) => `${label} ${of[label] ?? 'as the others'}`)
+      .join(', ') + more
+  return [{ setting: 'strength of single chains', before: text(old), after: text(now) }]
+}
 
 const READINGS: readonly (readonly [setting: string, of: (settings: RunSheetSettings) => string])[] = [
   ['chain strength', strengthText],
@@ -29,14 +41,10 @@ const READINGS: readonly (readonly [setting: string, of: (settings: RunSheetSett
   ['seed', ({ seed }) => String(seed)],
 ]
 
-/** What was changed from one state of a run sheet's settings to another, in the order of the sheet. */
-export function settingChanges(before: RunSheetSettings, after: RunSheetSettings): SettingChange[] {
-  const changes = READINGS.map(([setting, of]) => ({ setting, before: of(before), after: of(after) }))
-  const changed = changes.filter((change) => change.before !== change.after)
-  // A strength may differ in single chains only.
-  const isHidden = JSON.stringify(before.strength) !== JSON.stringify(after.strength)
-  const isShown = changed.some(({ setting }) => setting === 'chain strength')
-  return isHidden && !isShown
-    ? [{ setting: 'chain strength', before: 'other single chains', after: 'single chains changed' }, ...changed]
-    : changed
-}
+/** What was changed from one state of a run sheet’s settings to another, in the order of the sheet. */
+export const settingChanges = (before: RunSheetSettings, after: RunSheetSettings): SettingChange[] => [
+  ...READINGS.map(([setting, of]) => ({ setting, before: of(before), after: of(after) })).filter(
+    (change) => change.before !== change.after,
+  ),
+  ...singleChains(before, after),
+]

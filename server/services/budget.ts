@@ -6,7 +6,7 @@ import type { Grant } from '../../shared/schemas/budget'
 import type { BudgetLeft } from '../../shared/schemas/run-sheets'
 import type { Actor, App } from '../app'
 import type { Db } from '../database/client'
-import type { BudgetSubject } from '../database/repositories/budget'
+import type { BudgetSubject, PoolBalance } from '../database/repositories/budget'
 import {
   budgetBalances,
   budgetHolds,
@@ -88,10 +88,11 @@ export async function grantTime(app: App, actor: Actor, { seconds, machineId, re
   })
 }
 
-const amounts = (
-  pools: readonly ({ machineId: string | null } & Record<'available' | 'reserved', number>)[],
-  account: 'available' | 'reserved',
-): PoolAmount[] => pools.map((pool) => ({ machineId: pool.machineId, microseconds: pool[account] }))
+const amounts = (pools: readonly PoolBalance[], account: 'available' | 'reserved'): PoolAmount[] =>
+  pools.map((pool) => ({ machineId: pool.machineId, microseconds: pool[account] }))
+
+const namesOf = (pools: readonly PoolBalance[]): Entered['names'] =>
+  new Map(pools.map((pool) => [pool.machineId, pool.machineName]))
 
 /** What the ledger holds for one run sheet and has for its machine; null as long as nothing was ever granted. */
 async function standing(tx: Db, sheet: Pick<RunSheetRow, 'id' | 'workspaceId'>) {
@@ -102,7 +103,7 @@ async function standing(tx: Db, sheet: Pick<RunSheetRow, 'id' | 'workspaceId'>) 
     await budgetBalances(tx, sheet.workspaceId, sheet.id),
   ]
   const about = await budgetSubjectOf(tx, sheet.id)
-  const names = new Map(pools.map((pool) => [pool.machineId, pool.machineName]))
+  const names = namesOf(pools)
   // The machine’s own time was taken first and is spent first.
   const ofAny = ({ machineId }: PoolAmount) => Number(machineId === null)
   const held = amounts(own, 'reserved')
@@ -131,7 +132,7 @@ export async function reserveTime(app: App, tx: Db, sheet: RunSheetRow, by: stri
   await enter(app, tx, planned, { workspaceId: sheet.workspaceId, by, remark: '', about, names })
 }
 
-const leftOn = (pools: readonly { machineId: string | null; available: number }[], machineId: string): number =>
+const leftOn = (pools: readonly PoolBalance[], machineId: string): number =>
   pools
     .filter((pool) => pool.machineId === null || pool.machineId === machineId)
     .reduce((sum, { available }) => sum + Math.max(0, available), 0)
@@ -179,8 +180,7 @@ export async function sweepReservations(app: App): Promise<void> {
       await lockBudget(tx, workspaceId)
       const held = amounts(await budgetBalances(tx, workspaceId, runSheetId), 'reserved')
       const about = (await budgetSubjects(tx, [runSheetId])).get(runSheetId)!
-      const pools = await budgetBalances(tx, workspaceId)
-      const names = new Map(pools.map((pool) => [pool.machineId, pool.machineName]))
+      const names = namesOf(await budgetBalances(tx, workspaceId))
       await enter(app, tx, planRelease(held), { workspaceId, by: null, remark, about, names })
     })
   }

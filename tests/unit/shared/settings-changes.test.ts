@@ -17,5 +17,9 @@ it('tells what was changed in the settings, in the order of the sheet', () => {
 
 it('sees that single chains have another strength', () => {
   const of = (a: number) => settings({ strength: { rule: 'manual', value: 2, perChain: { a } } })
-  expect(settingChanges(of(1), of(3)).map(({ setting }) => setting)).toEqual(['chain strength'])
+  expect(settingChanges(of(1), of(3))).toEqual([{ setting: 'strength of single chains', before: 'a 1', after: 'a 3' }])
+  const plain = settings({ strength: { rule: 'manual', value: 2 } })
+  expect(settingChanges(plain, of(3))).toEqual([
+    { setting: 'strength of single chains', before: 'a as the others', after: 'a 3' },
+  ])
 })
