@@ -1,3 +1,4 @@
+import { groupDigits } from './engine/digits'
 import { scheduleText } from './run-sheet-comparison'
 import type { RunSheetSettings } from './schemas/run-sheets'
 
@@ -33,8 +34,8 @@ const READINGS: readonly (readonly [setting: string, of: (settings: RunSheetSett
   ['share of h over a chain', ({ fieldSplit }) => fieldSplit],
   ['share of J over couplers', ({ interactionCouplers }) => interactionCouplers],
   ['couplers inside a chain', ({ chainCouplers }) => chainCouplers],
-  ['gauges', ({ gauges }) => String(gauges)],
-  ['reads', ({ reads }) => String(reads)],
+  ['gauges', ({ gauges }) => groupDigits(gauges)],
+  ['reads', ({ reads }) => groupDigits(reads)],
   ['anneal time', ({ annealMicroseconds }) => `${annealMicroseconds} µs`],
   ['schedule', scheduleText],
   ['scale', ({ scale }) => (scale === null ? 'as fits' : String(scale))],

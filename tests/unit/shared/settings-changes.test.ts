@@ -1,4 +1,5 @@
 import { expect, it } from 'vitest'
+import { THIN_SPACE } from '../../../shared/engine/digits'
 import { runSheetSettingsSchema } from '../../../shared/schemas/run-sheets'
 import { settingChanges } from '../../../shared/settings-changes'
 
@@ -10,7 +11,7 @@ it('tells what was changed in the settings, in the order of the sheet', () => {
   expect(settingChanges(before, before)).toEqual([])
   expect(settingChanges(before, after)).toEqual([
     { setting: 'chain strength', before: 'rms 1', after: 'fixed 1.25' },
-    { setting: 'reads', before: '500', after: '1000' },
+    { setting: 'reads', before: '500', after: `1${THIN_SPACE}000` },
     { setting: 'scale', before: 'as fits', after: '0.5' },
   ])
 })
