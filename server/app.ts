@@ -1,3 +1,4 @@
+import type { Outbound } from './bridge/outbound'
 import type { Database, Db } from './database/client'
 import type { BlobStore } from './database/repositories/blobs'
 import type { Queue } from './jobs/queue'
@@ -12,6 +13,7 @@ export interface App {
   readonly compute: Compute
   readonly queue: Queue
   readonly uploads: KeptUploads
+  readonly outbound: Outbound
   readonly now: () => Date
   readonly version: string
   readonly demo: boolean

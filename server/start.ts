@@ -1,5 +1,7 @@
 import { join } from 'node:path'
 import type { App } from './app'
+import { addressRules } from './bridge/addresses'
+import { createOutbound } from './bridge/outbound'
 import { migrate, openDatabase } from './database/client'
 import { createBlobStore } from './database/repositories/blobs'
 import { startQueue } from './jobs/queue'
@@ -24,6 +26,8 @@ export interface StartOptions {
   concurrency: number
   /** Worker threads for background jobs; as many as there are cores where nothing is said. */
   threads?: number
+  /** Networks that are not public and may be called all the same, apart by commas; none where nothing is said. */
+  privateAddresses?: string
 }
 
 export interface StartedApp {
@@ -65,7 +69,8 @@ export async function startApp(options: StartOptions): Promise<StartedApp> {
   const compute = createCompute(options.workersFolder, options.threads)
   const queue = await startQueue(database)
   const uploads = new KeptUploads(now)
-  const held = { database, db: database.db, blobs, compute, queue, uploads }
+  const outbound = createOutbound(addressRules(options.privateAddresses ?? ''))
+  const held = { database, db: database.db, blobs, compute, queue, uploads, outbound }
   const app: App = { ...held, now, version: VERSION, demo: options.demo }
   const stopSweeping = await keepSweeping(app)
   const runner = options.concurrency > 0 ? await startRunner(app, options.concurrency) : undefined

@@ -73,6 +73,7 @@ async function boot(): Promise<StartedApp> {
     dataFolder,
     demo,
     workersFolder: () => useRuntimeConfig().workersFolder || join(dirname(process.argv[1]!), 'workers'),
+    privateAddresses: process.env.BRIDGE_PRIVATE_ADDRESSES,
     concurrency: process.env.JOBS === undefined ? availableParallelism() : Number(process.env.JOBS),
   })
   if (demo) await seedDemo(started.app, PASSWORDS)

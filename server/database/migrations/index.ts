@@ -302,5 +302,18 @@ export const MIGRATIONS = [
       "\nCREATE INDEX \"audit_entries_workspace_id_at_index\" ON \"audit_entries\" USING btree (\"workspace_id\",\"at\");",
       "\nCREATE TRIGGER \"audit_entries_only_added\" BEFORE UPDATE OR DELETE ON \"audit_entries\" FOR EACH ROW EXECUTE FUNCTION \"refuse_change_of_record\"();\n"
     ]
+  },
+  {
+    "tag": "0012_bridges",
+    "folderMillis": 1796243159401,
+    "hash": "73683f2e25c4e568f0c122fde87351c8cba5fc4c24a995a4691cc010f312d333",
+    "bps": true,
+    "sql": [
+      "CREATE TABLE \"bridges\" (\n\t\"id\" text PRIMARY KEY NOT NULL,\n\t\"workspace_id\" text NOT NULL,\n\t\"machine_id\" text NOT NULL,\n\t\"kind\" text NOT NULL,\n\t\"url\" text,\n\t\"is_on\" boolean NOT NULL,\n\t\"keys\" jsonb NOT NULL,\n\t\"last_test\" jsonb,\n\t\"created_by\" text NOT NULL,\n\t\"created_at\" timestamp with time zone NOT NULL,\n\t\"changed_at\" timestamp with time zone NOT NULL\n);\n",
+      "\nALTER TABLE \"bridges\" ADD CONSTRAINT \"bridges_workspace_id_workspaces_id_fk\" FOREIGN KEY (\"workspace_id\") REFERENCES \"public\".\"workspaces\"(\"id\") ON DELETE cascade ON UPDATE no action;",
+      "\nALTER TABLE \"bridges\" ADD CONSTRAINT \"bridges_machine_id_machines_id_fk\" FOREIGN KEY (\"machine_id\") REFERENCES \"public\".\"machines\"(\"id\") ON DELETE cascade ON UPDATE no action;",
+      "\nALTER TABLE \"bridges\" ADD CONSTRAINT \"bridges_created_by_users_id_fk\" FOREIGN KEY (\"created_by\") REFERENCES \"public\".\"users\"(\"id\") ON DELETE no action ON UPDATE no action;",
+      "\nCREATE UNIQUE INDEX \"bridges_machine_id_index\" ON \"bridges\" USING btree (\"machine_id\");"
+    ]
   }
 ]

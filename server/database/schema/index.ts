@@ -1,5 +1,6 @@
 export * from './audit'
 export * from './blobs'
+export * from './bridges'
 export * from './budget'
 export * from './jobs'
 export * from './machines'
