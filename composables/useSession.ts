@@ -1,3 +1,4 @@
+import type { UsedPasskey } from '#shared/schemas/passkeys'
 import type { EntranceView, SessionView } from '#shared/schemas/session'
 import type { Role } from '#shared/schemas/common'
 
@@ -22,6 +23,7 @@ export function useSession() {
     load,
     may,
     signIn: (email: string, password: string) => enter('/api/session', { email, password }),
+    signInByPasskey: (used: UsedPasskey) => enter('/api/session/passkey', { ...used }),
     setUp: (body: Record<string, unknown>) => enter('/api/setup', body),
     join: (secret: string, body: { name: string; password: string }) => enter(`/api/invited/${secret}`, body),
     async signOut() {

@@ -9,6 +9,7 @@ import { startRunner } from './jobs/runner'
 import { sweepAnswers } from './services/answered-requests'
 import { sweepAttempts } from './services/attempts'
 import { sweepReservations } from './services/budget'
+import { sweepChallenges } from './services/challenges'
 import { sweepConfirmations } from './services/confirmations'
 import { sweepDeletions } from './services/deletions'
 import { KeptUploads } from './services/kept-uploads'
@@ -50,6 +51,7 @@ async function keepSweeping(app: App): Promise<() => void> {
     await sweepReservations(app)
     await sweepAnswers(app)
     await sweepConfirmations(app)
+    await sweepChallenges(app)
   }
   await sweep()
   const timer = setInterval(

@@ -57,3 +57,12 @@ export const addressChangedLetter = (name: string, email: string): Letter => ({
   action: { label: 'Open Espalier', path: '/' },
   because: 'this was the address of the account until now',
 })
+
+/** @param what was done on the page of the account, such as “the passkey Phone was added” */
+export const signInChangedLetter = (what: string): Letter => ({
+  kind: 'sign-in changed',
+  subject: 'Your way to sign in to Espalier was changed',
+  parts: [{ text: `On the page of your account, ${oneLine(what)}.` }, { text: NOT_YOU }],
+  action: { label: 'Look at your account', path: '/account' },
+  because: 'it concerns how your account is opened',
+})

@@ -7,12 +7,13 @@ import { findUser, findUserByEmail, firstWorkspaceOf } from '../database/reposit
 import { countAttempt } from './attempts'
 import type { Passwords } from './people'
 
-const PER_ADDRESS = { most: 10, withinMinutes: 15 }
+export const PER_ADDRESS = { most: 10, withinMinutes: 15 }
 /** More, as a whole office may come from one address of the network. */
-const PER_NETWORK = { most: 60, withinMinutes: 15 }
+export const PER_NETWORK = { most: 60, withinMinutes: 15 }
 
 /** What attempts at an address are counted under. */
 export const signInAttempts = (email: string): string => `sign-in ${email}`
+export const networkAttempts = (network: string): string => `sign-in from ${network}`
 
 let decoy: Promise<string> | undefined
 const decoyHash = (passwords: Passwords): Promise<string> => (decoy ??= passwords.hash(randomUUID()))
@@ -34,7 +35,7 @@ export async function requirePassword(
   { email, password }: Credentials,
   network: string,
 ): Promise<UserRow> {
-  const keys = { address: signInAttempts(email), network: `sign-in from ${network}` }
+  const keys = { address: signInAttempts(email), network: networkAttempts(network) }
   await countAttempt(app, keys.network, PER_NETWORK)
   await countAttempt(app, keys.address, PER_ADDRESS)
   const user = await findUserByEmail(app.db, email)
@@ -76,7 +77,11 @@ export async function requireOwnPassword(
 
 /** Checks e-mail and password as `requirePassword` does; answers whom to sign in and where. */
 export async function signIn(app: App, passwords: Passwords, given: Credentials, network: string): Promise<Actor> {
-  const { id: userId } = await requirePassword(app, passwords, given, network)
+  return entryOf(app, (await requirePassword(app, passwords, given, network)).id)
+}
+
+/** Where somebody is signed in to: the workspace that they joined first. */
+export async function entryOf(app: App, userId: string): Promise<Actor> {
   const workspaceId = await firstWorkspaceOf(app.db, userId)
   if (!workspaceId)
     throw new DomainError(

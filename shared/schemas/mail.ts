@@ -7,7 +7,13 @@ export type ChosenMailKind = (typeof CHOSEN_MAIL_KINDS)[number]
 
 /** What a message tells: one kind for each reason to write to somebody. */
 export type MailKind =
-  ChosenMailKind | 'invitation' | 'new password' | 'password changed' | 'new address' | 'address changed'
+  | ChosenMailKind
+  | 'invitation'
+  | 'new password'
+  | 'password changed'
+  | 'new address'
+  | 'address changed'
+  | 'sign-in changed'
 
 export const isChosenMail = (kind: MailKind): kind is ChosenMailKind =>
   CHOSEN_MAIL_KINDS.some((chosen) => chosen === kind)

@@ -1,5 +1,6 @@
 import Ajv2020 from 'ajv/dist/2020.js'
 import { afterAll, beforeAll, describe, expect, it } from 'vitest'
+import { insertPasskey } from '../../server/database/repositories/passkeys'
 import { users, workspaces } from '../../server/database/schema'
 import { createAccount, createWorkspace } from '../../server/services/people'
 import type { Role } from '../../shared/schemas/common'
@@ -62,11 +63,15 @@ async function addAccounts(folder: string): Promise<void> {
   const passwordHash = (await app.db.select().from(users))[0]!.passwordHash!
   await app.db.transaction(async (tx) => {
     const other = await createWorkspace(app, tx, 'Elsewhere')
+    const passkey = { id: 'tried', credentialId: 'tried', name: 'Tried', publicKey: '', counter: 0, backedUp: false }
     for (const [place, workspaceId] of Object.entries({ own: demo!.id, elsewhere: other }))
       for (const name of [...ROLES, 'spare'] as const) {
         const email = `${place}.${name}@brackwater.example`
         const roles: Role[] = name === 'spare' ? ['reader'] : [name]
-        await createAccount(app, tx, { name: `${place} ${name}`, email, passwordHash, workspaceId, roles })
+        const account = { name: `${place} ${name}`, email, passwordHash, workspaceId, roles }
+        const userId = await createAccount(app, tx, account)
+        if (account.name === 'own owner')
+          await insertPasskey(tx, { ...passkey, userId, transports: [], createdAt: app.now(), usedAt: null })
       }
   })
   await test.close()
@@ -116,6 +121,7 @@ async function thingsOf(owner: Client, developer: Client): Promise<Things> {
     ...{ person: person.id, problem: problemId, machine: machineId, embedding: embedding.id, runSheet: runSheet.id },
     ...{ return: sheet.returns[0]!.id, scan: scan.id, job: scan.jobId, invitation: invited.body.id },
     ...{ token: token.body.id, session: sessions.find(({ isThis }) => isThis)!.id },
+    passkey: (await list('/api/account/passkeys'))[0]!.id,
     workspace: (await owner.get<{ workspace: Item }>('/api/session')).body.workspace.id,
   }
 }
@@ -203,10 +209,14 @@ describe('every route', () => {
     )
     expect(open.map(({ name }) => name).sort()).toEqual([
       'DELETE /api/account/membership',
+      'DELETE /api/account/passkeys/{id}',
       'DELETE /api/sessions',
       'DELETE /api/sessions/{id}',
       'DELETE /api/tokens/{id}',
+      'PATCH /api/account/passkeys/{id}',
       'POST /api/account/address',
+      'POST /api/account/passkeys',
+      'POST /api/account/passkeys/challenge',
       'POST /api/problems/{id}/energy',
       'POST /api/problems/{id}/lift',
       'POST /api/problems/{id}/presolve',

@@ -12,6 +12,7 @@ export type Thing =
   | 'token'
   | 'person'
   | 'workspace'
+  | 'passkey'
 export type Things = Record<Thing, string>
 
 /** A request that a route takes, `$problem` and so on standing for ids. */
@@ -27,6 +28,9 @@ export interface Sample {
 }
 
 const STATES = { form: 'qubo', states: [] }
+const PASSKEY = { id: 'AAAA', rawId: 'AAAA', type: 'public-key' }
+const USED_PASSKEY = { ...PASSKEY, response: { clientDataJSON: '', authenticatorData: '', signature: '' } }
+const MADE_PASSKEY = { ...PASSKEY, response: { clientDataJSON: '', attestationObject: '' } }
 const PAIR = { problemId: '$problem', machineId: '$machine' }
 
 /**
@@ -48,6 +52,8 @@ export const SAMPLES: Record<string, Sample> = {
   'GET /api/schemas/problem.json': { status: 200 },
   'GET /api/schemas/samples.json': { status: 200 },
   'DELETE /api/session': { status: 200 },
+  'POST /api/passkeys/challenge': { status: 200 },
+  'POST /api/session/passkey': { json: { challengeId: 'unknown', credential: USED_PASSKEY }, status: 422 },
   'POST /api/session': { json: { email: 'nobody@example.org', password: 'not one' }, status: 401 },
   'POST /api/setup': {
     json: { code: 'x', workspace: 'W', name: 'N', email: 'n@example.org', password: 'a long one, not guessed' },
@@ -172,6 +178,11 @@ export const SAMPLES: Record<string, Sample> = {
   'PUT /api/session/workspace': { json: { workspaceId: '$workspace' } },
   'POST /api/account/address': { json: { email: 'other@example.org', current: 'brackwater-demo' } },
   'PUT /api/account/password': { json: { current: 'brackwater-demo', password: 'a long one, not guessed' } },
+  'GET /api/account/passkeys': {},
+  'POST /api/account/passkeys/challenge': { json: { current: 'brackwater-demo' } },
+  'POST /api/account/passkeys': { json: { name: 'Phone', challengeId: 'unknown', credential: MADE_PASSKEY } },
+  'PATCH /api/account/passkeys/{id}': { json: { name: 'Old phone' } },
+  'DELETE /api/account/passkeys/{id}': {},
   'DELETE /api/account/membership': { endsCaller: true },
   'GET /api/tokens': {},
   'POST /api/tokens': { json: { name: 'One more', role: 'owner' } },
@@ -191,4 +202,5 @@ export const ID_OF: Record<string, Thing> = {
   sessions: 'session',
   tokens: 'token',
   people: 'person',
+  passkeys: 'passkey',
 }

@@ -315,5 +315,18 @@ export const MIGRATIONS = [
       "\nALTER TABLE \"bridges\" ADD CONSTRAINT \"bridges_created_by_users_id_fk\" FOREIGN KEY (\"created_by\") REFERENCES \"public\".\"users\"(\"id\") ON DELETE no action ON UPDATE no action;",
       "\nCREATE UNIQUE INDEX \"bridges_machine_id_index\" ON \"bridges\" USING btree (\"machine_id\");"
     ]
+  },
+  {
+    "tag": "0013_passkeys",
+    "folderMillis": 1796243804473,
+    "hash": "68592e091113109c1f048dd4888e6d3468eced0ccbb3abae3d56e19b9f7dd79d",
+    "bps": true,
+    "sql": [
+      "CREATE TABLE \"challenges\" (\n\t\"token_hash\" text PRIMARY KEY NOT NULL,\n\t\"purpose\" text NOT NULL,\n\t\"user_id\" text,\n\t\"challenge\" text NOT NULL,\n\t\"expires_at\" timestamp with time zone NOT NULL\n);\n",
+      "\nALTER TABLE \"passkeys\" ADD COLUMN \"credential_id\" text NOT NULL;",
+      "\nALTER TABLE \"challenges\" ADD CONSTRAINT \"challenges_user_id_users_id_fk\" FOREIGN KEY (\"user_id\") REFERENCES \"public\".\"users\"(\"id\") ON DELETE cascade ON UPDATE no action;",
+      "\nCREATE INDEX \"challenges_expires_at_index\" ON \"challenges\" USING btree (\"expires_at\");",
+      "\nCREATE UNIQUE INDEX \"passkeys_credential_id_index\" ON \"passkeys\" USING btree (\"credential_id\");"
+    ]
   }
 ]

@@ -107,8 +107,9 @@ export const confirmations = pgTable(
 export const passkeys = pgTable(
   'passkeys',
   {
-    /** The credential's id, base64url. */
     id: id(),
+    /** The authenticator's own id of it, base64url. */
+    credentialId: text().notNull(),
     userId: text()
       .notNull()
       .references(() => users.id, { onDelete: 'cascade' }),
@@ -123,7 +124,23 @@ export const passkeys = pgTable(
     createdAt: createdAt(),
     usedAt: moment(),
   },
-  (table) => [index().on(table.userId)],
+  (table) => [uniqueIndex().on(table.credentialId), index().on(table.userId)],
+)
+
+/** What a browser has to bring an answer to, once and soon. */
+export const challenges = pgTable(
+  'challenges',
+  {
+    /** SHA-256 of the secret that the browser holds, hex. */
+    tokenHash: text().primaryKey(),
+    purpose: text().$type<'passkey made' | 'passkey used'>().notNull(),
+    /** Whose answer it has to be; null where that is not known before. */
+    userId: text().references(() => users.id, { onDelete: 'cascade' }),
+    /** What was asked. */
+    challenge: text().notNull(),
+    expiresAt: moment().notNull(),
+  },
+  (table) => [index().on(table.expiresAt)],
 )
 
 /** Who a person is to an outside identity provider. */
