@@ -41,8 +41,12 @@ export function useRunSheetActions() {
     create: (input: { embeddingId: string } & Partial<RunSheetSettings>) =>
       api.post<{ id: string; number: number }>('/api/run-sheets', input),
     edit: (id: string, change: EditRunSheet) => api.patch<RunSheetView>(`/api/run-sheets/${id}`, change),
-    handOver: (id: string, step: 'submit' | 'approve' | 'send-back' | 'issue', remark: string) =>
-      api.post<{ state: string }>(`/api/run-sheets/${id}/${step}`, { remark }),
+    handOver: (id: string, step: 'submit' | 'approve' | 'send-back' | 'issue', remark: string, byBridge: boolean) =>
+      api.post<{ state: string }>(`/api/run-sheets/${id}/${step}`, {
+        remark,
+        ...(step === 'issue' ? { byBridge } : {}),
+      }),
+    send: (id: string) => api.post(`/api/run-sheets/${id}/send`),
     remark: (id: string, remark: string) => api.post<{ at: string }>(`/api/run-sheets/${id}/remarks`, { remark }),
     duplicate: (id: string) => api.post<{ id: string; number: number }>(`/api/run-sheets/${id}/duplicate`),
     quench: (id: string, series: QuenchSeries) =>

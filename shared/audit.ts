@@ -85,6 +85,7 @@ export const DEEDS: Readonly<Record<string, Deed | null>> = {
   'POST /api/run-sheets/:id/restore': deed('run sheet', 'brought back'),
   'POST /api/run-sheets/:id/returns': deed('run sheet', 'loaded samples of'),
   'POST /api/run-sheets/:id/scans': deed('run sheet', 'scanned strengths of'),
+  'POST /api/run-sheets/:id/send': deed('run sheet', 'sent to the bridge'),
   'POST /api/run-sheets/:id/send-back': deed('run sheet', 'sent back'),
   'POST /api/run-sheets/:id/spins': null,
   'POST /api/run-sheets/:id/submit': deed('run sheet', 'submitted'),

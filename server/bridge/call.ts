@@ -12,5 +12,5 @@ export function callBridge(app: App, bridge: BridgeRow, callId: string, body: st
     'espalier-call': callId,
     ...signatureHeaders(bridge.keys, app.now(), body),
   }
-  return bridge.url === null ? rehearsalBridge(body) : app.outbound.post(bridge.url, headers, body)
+  return bridge.url === null ? rehearsalBridge(app, body) : app.outbound.post(bridge.url, headers, body)
 }

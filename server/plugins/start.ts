@@ -2,6 +2,7 @@ import { randomBytes } from 'node:crypto'
 import { existsSync, mkdirSync, readFileSync, writeFileSync } from 'node:fs'
 import { availableParallelism } from 'node:os'
 import { dirname, join } from 'node:path'
+import { openSender } from '../bridge/sender'
 import { DEMO_ACCOUNTS, DEMO_PASSWORD } from '../../shared/demo-accounts'
 import { seedDemo } from '../services/demo/seed'
 import { setupCode } from '../services/people'
@@ -79,6 +80,7 @@ async function boot(): Promise<StartedApp> {
   if (demo) await seedDemo(started.app, PASSWORDS)
   // After the demo is filled: what is written to its invented people is kept, not sent.
   const post = await openPost(started.app, mail)
+  const sender = openSender(started.app)
   const code = await setupCode(started.app)
   announce(demo)
   if (code)
@@ -89,6 +91,7 @@ async function boot(): Promise<StartedApp> {
     ...started,
     async close() {
       await post.stop()
+      await sender.stop()
       await started.close()
     },
   }

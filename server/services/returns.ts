@@ -4,6 +4,8 @@ import type { SampleRows } from '../../shared/engine/sampling/samples'
 import { DomainError } from '../../shared/errors'
 import type { UploadReturn } from '../../shared/schemas/returns'
 import type { Actor, App } from '../app'
+import type { Db } from '../database/client'
+import { endCallOf } from '../database/repositories/bridge-calls'
 import { nextNumber } from '../database/repositories/counters'
 import type { ReturnRow } from '../database/repositories/run-sheets'
 import { findReturn, insertReturn, updateRunSheet } from '../database/repositories/run-sheets'
@@ -70,8 +72,24 @@ const uploadMade = (
   ...energiesMade(agreement),
 })
 
+/** How samples came. */
+export interface Arrival {
+  source: ReturnRow['source']
+  /** What else is kept of how they came to be. */
+  made: ReturnRow['made']
+  /** Notes it where samples are awaited, in the transaction that stores them. */
+  note(tx: Db, returnId: string): Promise<void>
+}
+
+const byHand = (runSheetId: string): Arrival => ({
+  ...{ source: 'upload', made: {} },
+  note: (tx) => endCallOf(tx, runSheetId),
+})
+
 /**
- * Checks and stores returned samples; a run sheet that was approved or issued is returned by it.
+ * Checks and stores returned samples; a run sheet that was approved or issued is returned by it, unless they are a
+ * rehearsal.
+ * @param arrival by hand where nothing is said
  * @throws DomainError with every reason when the file cannot be accepted; nothing is kept then
  */
 export async function uploadReturn(
@@ -80,6 +98,7 @@ export async function uploadReturn(
   runSheetId: string,
   file: StoredFile,
   options: UploadReturn,
+  { source, made, note }: Arrival = byHand(runSheetId),
   watch: ReadingWatch = {},
 ) {
   const sheet = await runSheetRow(app, actor, runSheetId)
@@ -112,9 +131,9 @@ export async function uploadReturn(
       runSheetId,
       embeddingId: sheet.embeddingId,
       number: await nextNumber(tx, runSheetId, 'return'),
-      source: 'upload',
+      source,
       status: 'ready',
-      made: uploadMade(file, options, output, samples),
+      made: { ...uploadMade(file, options, output, samples), ...made },
       settings: sheet.settings,
       samplesBlobId,
       summaryBlobId: summary.blobId,
@@ -124,6 +143,8 @@ export async function uploadReturn(
       createdBy: actor.userId,
       createdAt: now,
     })
+    await note(tx, id)
+    if (source !== 'upload') return
     if (await updateRunSheet(tx, runSheetId, ['approved', 'issued'], { state: 'returned', changedAt: now })) {
       const seconds = options.machineTimeSeconds ?? output.reading.machineTimeSeconds
       await settleTime(app, tx, sheet, { seconds, by: actor.userId })

@@ -2,6 +2,7 @@ import { randomUUID } from 'node:crypto'
 import { DomainError } from '../../shared/errors'
 import type { RunSheetState } from '../../shared/schemas/run-sheets'
 import type { Actor, App } from '../app'
+import type { Db } from '../database/client'
 import type { RunSheetRow } from '../database/repositories/run-sheets'
 import { insertRemark, SUBMITTED, updateRunSheet } from '../database/repositories/run-sheets'
 import type { HandedOver } from '../mail/letters'
@@ -24,13 +25,17 @@ const HAND_OVERS = {
   issue: { from: ['approved'], to: 'issued', what: 'issued', told: 'issued' },
 } satisfies Record<string, HandOver>
 
-/** Moves a run sheet on and tells those concerned; approval freezes and fingerprints what is programmed. */
+/**
+ * Moves a run sheet on and tells those concerned; approval freezes and fingerprints what is programmed.
+ * @param also what is done with it, in the same transaction
+ */
 export async function handOver(
   app: App,
   actor: Actor,
   id: string,
   step: keyof typeof HAND_OVERS,
   remark: string,
+  also: (tx: Db) => Promise<void> = async () => {},
 ): Promise<{ state: RunSheetState }> {
   const { from, to, what, told }: HandOver = HAND_OVERS[step]
   const row = await runSheetRow(app, actor, id)
@@ -69,6 +74,7 @@ export async function handOver(
       settings: step === 'submit' ? row.settings : null,
       createdAt: app.now(),
     })
+    await also(tx)
     await tellHandOver(app, tx, { ...row, ...change }, { step: told, by: actor.userId, remark })
   })
   return { state: to }

@@ -49,6 +49,7 @@ export async function returnViews(app: App, rows: readonly ReturnRow[]): Promise
     id: row.id,
     number: row.number,
     source: row.source,
+    byBridge: row.made.byBridge === true,
     status: row.status,
     jobId: jobIds.get(row.id) ?? null,
     reads: row.reads,

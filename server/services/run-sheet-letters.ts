@@ -70,6 +70,7 @@ export async function tellRemark(
   await tell(app, tx, { workspaceId: row.workspaceId, by }, letters)
 }
 
-async function sheetForLetter(tx: Db, { id, number, name }: RunSheetRow): Promise<SheetForLetter> {
+/** What a letter says of a run sheet. */
+export async function sheetForLetter(tx: Db, { id, number, name }: RunSheetRow): Promise<SheetForLetter> {
   return { id, number, name, ...(await aboutRunSheet(tx, id)) }
 }

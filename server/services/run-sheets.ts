@@ -26,6 +26,7 @@ import {
   returnsOfRunSheets,
   updateRunSheet,
 } from '../database/repositories/run-sheets'
+import { bridgeCallView, sheetBridge } from './bridge-call-views'
 import { budgetLeft } from './budget'
 import { deleteFor } from './deletions'
 import { brokenView } from './broken-view'
@@ -216,6 +217,8 @@ export async function runSheetView(app: App, actor: Actor, id: string): Promise<
     budget,
     rehearsal: rehearsalChoices(programmed, machine.sheet),
     checks,
+    bridge: await sheetBridge(app, row, machine.machine.id),
+    call: await bridgeCallView(app, row),
     broken: OPEN_STATES.includes(row.state) ? broken : null,
     returns: await returnViews(app, returned),
     remarks: await remarkViews(app, id),

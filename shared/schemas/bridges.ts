@@ -1,4 +1,5 @@
 import { z } from 'zod'
+import { textSchema } from './common'
 
 /** own: a program of the team's, at an address; rehearsal: built in, it rehearses what it is sent. */
 export const bridgeKindSchema = z.enum(['own', 'rehearsal'])
@@ -79,4 +80,53 @@ export interface BridgeSecret {
 export interface BridgeSaved {
   /** Null where the bridge keeps the one it has, and of the built-in bridge. */
   made: BridgeSecret | null
+}
+
+/**
+ * waiting: to be sent, or tried again; taken: the bridge said yes, its samples are awaited; given up: it is not tried any
+ * more; returned: samples came by it; refused: the bridge said that the machine does not run it; ended: samples came by
+ * hand.
+ */
+export type BridgeCallState = 'waiting' | 'taken' | 'given up' | 'returned' | 'refused' | 'ended'
+
+/** One try to send a run sheet. */
+export interface BridgeTry {
+  at: string
+  milliseconds: number
+  status: number | null
+  /** Why it failed; null where the bridge took it. */
+  reason: string | null
+}
+
+/** A run sheet on its way to a bridge and back. */
+export interface BridgeCallView {
+  kind: BridgeKind
+  state: BridgeCallState
+  /** Newest first. */
+  tries: BridgeTry[]
+  /** When it is tried next; null when it is not. */
+  nextAttemptAt: string | null
+  /** Until when samples are taken from the bridge; null before it was sent. */
+  tokenExpiresAt: string | null
+  /** What the bridge said where the machine does not run it. */
+  refusal: string | null
+  /** The samples that came by it. */
+  returnId: string | null
+  /** It may be sent again. */
+  isResendable: boolean
+}
+
+/** What a run sheet can be issued by. */
+export interface SheetBridge {
+  kind: BridgeKind
+  /** Of the team's own bridge. */
+  host: string | null
+}
+
+export const refuseRunSchema = z.object({ reason: textSchema(2000).min(1, 'say why') })
+
+/** What is answered to samples that a bridge sent: the same when the same are sent again. */
+export interface BridgeReturn {
+  id: string
+  reads: number
 }

@@ -7,6 +7,7 @@ import type { RUN_SHEET_STATES } from '../library'
 import type { Person } from './common'
 import type { VersionStanding } from './problem-versions'
 import { courseIssues } from '../engine/programming/schedule'
+import type { BridgeCallView, SheetBridge } from './bridges'
 import type { BrokenView } from './repairs'
 import { idSchema, nameSchema, seedSchema, textSchema } from './common'
 
@@ -69,6 +70,10 @@ export const editRunSheetSchema = z.object({
 export type EditRunSheet = z.infer<typeof editRunSheetSchema>
 
 export const remarkSchema = z.object({ remark: textSchema(2000).default('') })
+export const issueSchema = remarkSchema.extend({
+  /** Sent to the bridge of its machine; else whoever issues it hands on the bundle. */
+  byBridge: z.boolean().default(false),
+})
 export const sendBackSchema = z.object({ remark: textSchema(2000).min(1, 'say what should change') })
 
 export const addRemarkSchema = z.object({ remark: textSchema(2000).min(1, 'write what you want to say') })
@@ -213,6 +218,8 @@ export interface ReturnOfRunSheet {
   id: string
   number: number
   source: 'rehearsal' | 'upload'
+  /** It came by a bridge. */
+  byBridge: boolean
   status: 'running' | 'ready' | 'failed' | 'cancelled'
   jobId: string | null
   reads: number
@@ -312,6 +319,10 @@ export interface RunSheetView extends RunSheetItem {
   checks: CheckView[]
   /** Its embedding, where that does not hold at the calibration in force and the samples are not back yet. */
   broken: BrokenView | null
+  /** What it can be issued by; null where its machine has no bridge that is on. */
+  bridge: SheetBridge | null
+  /** How far it is on its way to a bridge and back; null where it was not sent to one. */
+  call: BridgeCallView | null
   returns: ReturnOfRunSheet[]
   remarks: RemarkView[]
   preparedBy: Person

@@ -67,6 +67,8 @@ describe('the house', () => {
 
   it('sends every route through the role check, or says that it is public', () => {
     const open = [
+      'bridge-calls/[id]/refusal.post.ts',
+      'bridge-calls/[id]/samples.post.ts',
       'entrance.get.ts',
       'health.get.ts',
       'invited/[secret].get.ts',

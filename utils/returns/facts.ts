@@ -61,7 +61,7 @@ export function returnFacts(samples: ReturnView): Fact[] {
   else
     facts.push({
       label: 'Made by',
-      value: 'upload',
+      value: made.byBridge ? 'bridge' : 'upload',
       word: true,
       note:
         typeof made.machineTimeSeconds === 'number' ? `${formatDuration(made.machineTimeSeconds)} on the machine` : '',

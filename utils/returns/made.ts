@@ -82,6 +82,7 @@ function rehearsalRows(samples: ReturnView): MadeRow[] {
       note: made.controlError ? 'one draw in each gauge' : 'values as programmed, exactly',
     },
     { label: 'Seed', value: number(made.seed) },
+    ...(made.byBridge ? [{ label: 'Sent by', value: 'the built-in bridge' }] : []),
     { label: 'Took', value: formatDuration(seconds), note: 'of computing, not machine time' },
   ]
 }
@@ -116,6 +117,7 @@ function readingRows({ format, container, columns, gauges, gaugesKnown }: Return
 function uploadRows({ made }: ReturnView): MadeRow[] {
   return [
     { label: 'File', value: String(made.file ?? '–') },
+    ...(made.byBridge ? [{ label: 'Sent by', value: 'the bridge of the machine' }] : []),
     { label: 'SHA-256', value: String(made.sha256 ?? '–') },
     { label: 'Values', value: String(made.values ?? '–'), note: 'as written in the file' },
     ...readingRows(made),

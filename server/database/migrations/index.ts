@@ -328,5 +328,20 @@ export const MIGRATIONS = [
       "\nCREATE INDEX \"challenges_expires_at_index\" ON \"challenges\" USING btree (\"expires_at\");",
       "\nCREATE UNIQUE INDEX \"passkeys_credential_id_index\" ON \"passkeys\" USING btree (\"credential_id\");"
     ]
+  },
+  {
+    "tag": "0014_bridge_calls",
+    "folderMillis": 1796243964508,
+    "hash": "d1778e12623d72290a4926acb0b451d1cd7257c4d7f724f26d807eafce92628e",
+    "bps": true,
+    "sql": [
+      "CREATE TABLE \"bridge_calls\" (\n\t\"id\" text PRIMARY KEY NOT NULL,\n\t\"workspace_id\" text NOT NULL,\n\t\"run_sheet_id\" text NOT NULL,\n\t\"kind\" text NOT NULL,\n\t\"state\" text NOT NULL,\n\t\"attempts\" integer DEFAULT 0 NOT NULL,\n\t\"earlier_attempts\" integer DEFAULT 0 NOT NULL,\n\t\"next_attempt_at\" timestamp with time zone,\n\t\"tries\" jsonb DEFAULT '[]'::jsonb NOT NULL,\n\t\"token_hashes\" jsonb DEFAULT '[]'::jsonb NOT NULL,\n\t\"token_expires_at\" timestamp with time zone,\n\t\"returned_digest\" text,\n\t\"return_id\" text,\n\t\"refusal\" text,\n\t\"created_by\" text NOT NULL,\n\t\"created_at\" timestamp with time zone NOT NULL\n);\n",
+      "\nALTER TABLE \"bridge_calls\" ADD CONSTRAINT \"bridge_calls_workspace_id_workspaces_id_fk\" FOREIGN KEY (\"workspace_id\") REFERENCES \"public\".\"workspaces\"(\"id\") ON DELETE cascade ON UPDATE no action;",
+      "\nALTER TABLE \"bridge_calls\" ADD CONSTRAINT \"bridge_calls_run_sheet_id_run_sheets_id_fk\" FOREIGN KEY (\"run_sheet_id\") REFERENCES \"public\".\"run_sheets\"(\"id\") ON DELETE cascade ON UPDATE no action;",
+      "\nALTER TABLE \"bridge_calls\" ADD CONSTRAINT \"bridge_calls_return_id_returns_id_fk\" FOREIGN KEY (\"return_id\") REFERENCES \"public\".\"returns\"(\"id\") ON DELETE set null ON UPDATE no action;",
+      "\nALTER TABLE \"bridge_calls\" ADD CONSTRAINT \"bridge_calls_created_by_users_id_fk\" FOREIGN KEY (\"created_by\") REFERENCES \"public\".\"users\"(\"id\") ON DELETE no action ON UPDATE no action;",
+      "\nCREATE UNIQUE INDEX \"bridge_calls_run_sheet_id_index\" ON \"bridge_calls\" USING btree (\"run_sheet_id\");",
+      "\nCREATE INDEX \"bridge_calls_state_next_attempt_at_index\" ON \"bridge_calls\" USING btree (\"state\",\"next_attempt_at\");"
+    ]
   }
 ]

@@ -1,7 +1,7 @@
-import { remarkSchema } from '../../../../shared/schemas/run-sheets'
-import { handOver } from '../../../services/review'
+import { issueSchema } from '../../../../shared/schemas/run-sheets'
+import { issueRunSheet } from '../../../services/bridge-calls'
 
-/** `{remark?}` → `{state}`; 409 from a wrong state. */
+/** `{remark?, byBridge?}` → `{state}`; by the bridge of its machine the bundle is sent to that. 409 from a wrong state. */
 export default defineRoute(['developer', 'owner'], async (event, { app, ...actor }) =>
-  handOver(app, actor, partOf(event, 'id'), 'issue', (await bodyOf(event, remarkSchema)).remark),
+  issueRunSheet(app, actor, partOf(event, 'id'), await bodyOf(event, issueSchema)),
 )

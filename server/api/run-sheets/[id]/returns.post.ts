@@ -14,7 +14,7 @@ export default defineRoute(['developer', 'owner'], (event, { app, ...actor }) =>
     const stored = requireFile({ file })
     return answerWithProgress<{ bytes: number; of: number }, unknown>(event, async ({ tell, signal }) => {
       const onProgress = (bytes: number): void => tell({ bytes, of: stored.bytes })
-      const result = await uploadReturn(app, actor, id, stored, options, { onProgress, signal })
+      const result = await uploadReturn(app, actor, id, stored, options, undefined, { onProgress, signal })
       if (!event.node.res.headersSent) setResponseStatus(event, 201)
       return result
     })
