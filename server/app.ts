@@ -1,6 +1,7 @@
 import type { Outbound } from './bridge/outbound'
 import type { Database, Db } from './database/client'
 import type { BlobStore } from './database/repositories/blobs'
+import type { Provider } from './identity/provider'
 import type { Queue } from './jobs/queue'
 import type { KeptUploads } from './services/kept-uploads'
 import type { Compute } from './workers/compute'
@@ -14,6 +15,8 @@ export interface App {
   readonly queue: Queue
   readonly uploads: KeptUploads
   readonly outbound: Outbound
+  /** Outside identity provider; null where there is none. */
+  readonly provider: Provider | null
   readonly now: () => Date
   readonly version: string
   readonly demo: boolean

@@ -4,6 +4,8 @@ import { addressRules } from './bridge/addresses'
 import { createOutbound } from './bridge/outbound'
 import { migrate, openDatabase } from './database/client'
 import { createBlobStore } from './database/repositories/blobs'
+import { createProvider } from './identity/provider'
+import type { ProviderSettings } from './identity/settings'
 import { startQueue } from './jobs/queue'
 import { startRunner } from './jobs/runner'
 import { sweepAnswers } from './services/answered-requests'
@@ -29,6 +31,8 @@ export interface StartOptions {
   threads?: number
   /** Networks that are not public and may be called all the same, apart by commas; none where nothing is said. */
   privateAddresses?: string
+  /** Outside identity provider; none where nothing is said. */
+  provider?: ProviderSettings | null
 }
 
 export interface StartedApp {
@@ -72,7 +76,8 @@ export async function startApp(options: StartOptions): Promise<StartedApp> {
   const queue = await startQueue(database)
   const uploads = new KeptUploads(now)
   const outbound = createOutbound(addressRules(options.privateAddresses ?? ''))
-  const held = { database, db: database.db, blobs, compute, queue, uploads, outbound }
+  const provider = options.provider ? createProvider(options.provider) : null
+  const held = { database, db: database.db, blobs, compute, queue, uploads, outbound, provider }
   const app: App = { ...held, now, version: VERSION, demo: options.demo }
   const stopSweeping = await keepSweeping(app)
   const runner = options.concurrency > 0 ? await startRunner(app, options.concurrency) : undefined

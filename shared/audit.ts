@@ -29,6 +29,8 @@ const own = (what: string): Deed => ({ kind: 'person', what, isOwn: true })
 /** Null: the route works something out, or changes only what somebody sees of it. */
 export const DEEDS: Readonly<Record<string, Deed | null>> = {
   'POST /api/account/address': own('asked for a change of their own address'),
+  'DELETE /api/account/identity': own('unlinked their own account from the identity provider'),
+  'POST /api/account/identity': null,
   'PUT /api/account/mails': null,
   'DELETE /api/account/membership': { kind: 'workspace', what: 'left', isOwn: true },
   'POST /api/account/passkeys/challenge': null,

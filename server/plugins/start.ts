@@ -6,8 +6,8 @@ import { openSender } from '../bridge/sender'
 import { DEMO_ACCOUNTS, DEMO_PASSWORD } from '../../shared/demo-accounts'
 import { seedDemo } from '../services/demo/seed'
 import { setupCode } from '../services/people'
+import { providerSettingsOf } from '../identity/settings'
 import { openPost } from '../mail/post'
-import type { MailSettings } from '../mail/settings'
 import { mailSettingsOf } from '../mail/settings'
 import type { StartedApp } from '../start'
 import { dataFolderOf, startApp } from '../start'
@@ -47,9 +47,10 @@ function ownAddress(): string {
   return `http://${name}:${NITRO_PORT || PORT || 3000}`
 }
 
-function readMailSettings(): MailSettings {
+/** What is wrong with the environment ends the start, in words. */
+function read<T>(settings: () => T): T {
   try {
-    return mailSettingsOf(process.env, ownAddress())
+    return settings()
   } catch (error) {
     return stop((error as Error).message)
   }
@@ -68,13 +69,15 @@ async function boot(): Promise<StartedApp> {
   const demo = process.env.DEMO === 'true'
   const dataFolder = dataFolderOf(process.env)
   prepareSessions(demo, dataFolder)
-  const mail = readMailSettings()
+  const mail = read(() => mailSettingsOf(process.env, ownAddress()))
+  const provider = read(() => providerSettingsOf(process.env))
   const started = await startApp({
     databaseUrl: process.env.DATABASE_URL || undefined,
     dataFolder,
     demo,
     workersFolder: () => useRuntimeConfig().workersFolder || join(dirname(process.argv[1]!), 'workers'),
     privateAddresses: process.env.BRIDGE_PRIVATE_ADDRESSES,
+    provider,
     concurrency: process.env.JOBS === undefined ? availableParallelism() : Number(process.env.JOBS),
   })
   if (demo) await seedDemo(started.app, PASSWORDS)

@@ -13,7 +13,7 @@ import { secretHash } from './secrets'
 import { requirePassword } from './sign-in'
 
 /** The same for a link that is unknown, has expired, was used or taken back. */
-async function openInvitation(app: App, tx: Db, secret: string) {
+export async function openInvitation(app: App, tx: Db, secret: string) {
   const found = await holdInvitation(tx, secretHash(secret))
   if (found && found.invitation.expiresAt > app.now()) return found
   throw new DomainError(
@@ -50,7 +50,7 @@ export async function acceptInvitation(
     const user = await requirePassword(app, passwords, { email, password }, network)
     return app.db.transaction(async (tx) => {
       const { invitation } = await openInvitation(app, tx, secret)
-      return join(app, tx, invitation, user.id)
+      return acceptAs(app, tx, invitation, user.id)
     })
   }
   if (!name)
@@ -74,7 +74,8 @@ export async function acceptInvitation(
   })
 }
 
-async function join(app: App, tx: Db, invitation: InvitationRow, userId: string): Promise<Actor> {
+/** Joins with an account that there is. */
+export async function acceptAs(app: App, tx: Db, invitation: InvitationRow, userId: string): Promise<Actor> {
   const { workspaceId, roles } = invitation
   // A link for a new password may be in the hands of an owner elsewhere, who must not get in here with it.
   await endConfirmations(app, tx, userId)
@@ -84,5 +85,6 @@ async function join(app: App, tx: Db, invitation: InvitationRow, userId: string)
   return { userId, workspaceId }
 }
 
-const settle = (app: App, tx: Db, { id }: InvitationRow, acceptedBy: string): Promise<void> =>
+/** Notes that it was accepted, and by whom. */
+export const settle = (app: App, tx: Db, { id }: InvitationRow, acceptedBy: string): Promise<void> =>
   updateInvitation(tx, id, { acceptedBy, acceptedAt: app.now() })

@@ -16,6 +16,8 @@ import { PER_ADDRESS, PER_NETWORK, networkAttempts } from './sign-in'
 
 /** Where the product is reached: passkeys are made for its name alone, and answer to nobody else. */
 export interface Site {
+  /** Of the product, without a slash at its end; the origin with the path under which it is reached. */
+  address: string
   /** Such as `https://espalier.example`. */
   origin: string
   hostname: string

@@ -20,6 +20,7 @@ import type { Site } from './passkey-checks'
 import { checkNewPasskey } from './passkey-checks'
 import type { Passwords } from './people'
 import { requireProof } from './proofs'
+import { requireWayIn } from './ways-in'
 
 const MOST = 20
 
@@ -88,13 +89,8 @@ export async function removePasskey(app: App, userId: string, id: string): Promi
   await app.db.transaction(async (tx) => {
     const removed = await deletePasskey(tx, userId, id)
     if (!removed) throw missing()
+    await requireWayIn(app, tx, userId)
     const user = (await findUser(tx, userId))!
-    if (!user.passwordHash && (await listPasskeys(tx, userId)).length === 0)
-      throw new DomainError(
-        'wrong state',
-        'passkey.last',
-        'Nothing else opens your account. Add another passkey, or ask for a password, before you remove this one.',
-      )
     const letter = signInChangedLetter(`the passkey ${removed.name} was removed`)
     await writePrivately(app, tx, { userId, address: user.email }, letter)
   })

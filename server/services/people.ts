@@ -64,6 +64,7 @@ export async function entranceView(app: App): Promise<EntranceView> {
     demo: app.demo,
     sendsMail: await sendsMail(app),
     workspace: await onlyWorkspaceName(app.db),
+    provider: app.provider?.name ?? null,
   }
 }
 
@@ -115,7 +116,7 @@ export async function createWorkspace(app: App, tx: Db, name: string): Promise<s
 export async function createAccount(
   app: App,
   tx: Db,
-  account: { name: string; email: string; passwordHash: string; workspaceId: string; roles: Role[] },
+  account: { name: string; email: string; passwordHash: string | null; workspaceId: string; roles: Role[] },
 ): Promise<string> {
   const id = randomUUID()
   const { name, email, passwordHash, workspaceId, roles } = account

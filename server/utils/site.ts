@@ -9,6 +9,7 @@ import type { Site } from '../services/passkey-checks'
 export function siteOf(event: H3Event): Site {
   const hasProxy = process.env.TRUST_PROXY === 'true'
   const asked = getRequestURL(event, { xForwardedHost: hasProxy, xForwardedProto: hasProxy })
-  const { origin, hostname } = process.env.PUBLIC_URL ? new URL(process.env.PUBLIC_URL) : asked
-  return { origin, hostname }
+  const { PUBLIC_URL: known } = process.env
+  const { origin, hostname } = known ? new URL(known) : asked
+  return { address: known ? known.replace(/\/+$/, '') : origin, origin, hostname }
 }

@@ -50,6 +50,8 @@ export interface EntranceView {
   /** Whether it has a mail server: links for a new password go by mail, or come from an owner. */
   sendsMail: boolean
   workspace: string | null
+  /** Name of the outside identity provider; null where there is none. */
+  provider: string | null
 }
 
 export interface MemberView {

@@ -13,7 +13,7 @@ import type { Faults } from '../support/authenticator'
 import { authenticator } from '../support/authenticator'
 import { newMember, plainPasswords as passwords } from '../support/people'
 
-const site = { origin: 'https://espalier.example', hostname: 'espalier.example' }
+const site = { address: 'https://espalier.example', origin: 'https://espalier.example', hostname: 'espalier.example' }
 const refused = { kind: 'unauthenticated', code: 'session.passkey' }
 const gone = { kind: 'not acceptable', code: 'challenge.gone' }
 let test: TestApp
@@ -139,7 +139,7 @@ it('renames and removes one’s own alone, and never the last way in', async () 
   await renamePasskey(test.app, own.userId, id, 'Old phone')
   expect((await passkeysOf(test.app, own.userId)).items).toMatchObject([{ name: 'Old phone' }])
   await withoutPassword(own)
-  await expect(removePasskey(test.app, own.userId, id)).rejects.toMatchObject({ code: 'passkey.last' })
+  await expect(removePasskey(test.app, own.userId, id)).rejects.toMatchObject({ code: 'sign-in.last' })
   expect((await enter(device)).id).toBe(own.userId)
   await test.app.db.update(users).set({ passwordHash: 'hash of right' }).where(eq(users.id, own.userId))
   await removePasskey(test.app, own.userId, id)

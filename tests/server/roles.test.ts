@@ -208,6 +208,7 @@ describe('every route', () => {
       (route) => changes(route) && (route.allowed === 'member' || route.allowed.includes('reader')),
     )
     expect(open.map(({ name }) => name).sort()).toEqual([
+      'DELETE /api/account/identity',
       'DELETE /api/account/membership',
       'DELETE /api/account/passkeys/{id}',
       'DELETE /api/sessions',
@@ -215,6 +216,7 @@ describe('every route', () => {
       'DELETE /api/tokens/{id}',
       'PATCH /api/account/passkeys/{id}',
       'POST /api/account/address',
+      'POST /api/account/identity',
       'POST /api/account/passkeys',
       'POST /api/account/passkeys/challenge',
       'POST /api/problems/{id}/energy',

@@ -56,6 +56,8 @@ export const SAMPLES: Record<string, Sample> = {
   'DELETE /api/session': { status: 200 },
   'POST /api/passkeys/challenge': { status: 200 },
   'POST /api/session/passkey': { json: { challengeId: 'unknown', credential: USED_PASSKEY }, status: 422 },
+  'GET /api/provider/callback': { status: 200 },
+  'POST /api/provider': { json: {}, status: 409 },
   'POST /api/session': { json: { email: 'nobody@example.org', password: 'not one' }, status: 401 },
   'POST /api/setup': {
     json: { code: 'x', workspace: 'W', name: 'N', email: 'n@example.org', password: 'a long one, not guessed' },
@@ -181,6 +183,9 @@ export const SAMPLES: Record<string, Sample> = {
   'PUT /api/session/workspace': { json: { workspaceId: '$workspace' } },
   'POST /api/account/address': { json: { email: 'other@example.org', current: 'brackwater-demo' } },
   'PUT /api/account/password': { json: { current: 'brackwater-demo', password: 'a long one, not guessed' } },
+  'GET /api/account/identity': {},
+  'POST /api/account/identity': { json: { current: 'brackwater-demo' } },
+  'DELETE /api/account/identity': {},
   'GET /api/account/passkeys': {},
   'POST /api/account/passkeys/challenge': { json: { current: 'brackwater-demo' } },
   'POST /api/account/passkeys': { json: { name: 'Phone', challengeId: 'unknown', credential: MADE_PASSKEY } },

@@ -78,6 +78,8 @@ describe('the house', () => {
       'answer-sheets/[token].get.ts',
       'openapi.json.get.ts',
       'passkeys/challenge.post.ts',
+      'provider/callback.get.ts',
+      'provider/index.post.ts',
       'resets/[secret].get.ts',
       'resets/[secret].post.ts',
       'resets/index.post.ts',

@@ -1,4 +1,4 @@
-import { and, desc, eq, isNull } from 'drizzle-orm'
+import { and, desc, eq, gt, isNull } from 'drizzle-orm'
 import type { Db } from '../client'
 import { invitations, users, workspaces } from '../schema'
 
@@ -48,4 +48,16 @@ export async function holdInvitation(tx: Db, tokenHash: string) {
 
 export async function updateInvitation(db: Db, id: string, set: Partial<InvitationRow>): Promise<void> {
   await db.update(invitations).set(set).where(eq(invitations.id, id))
+}
+
+/** The newest invitation to an address that is open and has not expired, of any workspace; held until the transaction ends. */
+export async function findOpenInvitationTo(tx: Db, email: string, now: Date): Promise<InvitationRow | undefined> {
+  const rows = await tx
+    .select()
+    .from(invitations)
+    .where(and(eq(invitations.email, email), isOpen, gt(invitations.expiresAt, now)))
+    .orderBy(desc(invitations.createdAt))
+    .limit(1)
+    .for('update')
+  return rows[0]
 }

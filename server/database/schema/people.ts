@@ -133,7 +133,7 @@ export const challenges = pgTable(
   {
     /** SHA-256 of the secret that the browser holds, hex. */
     tokenHash: text().primaryKey(),
-    purpose: text().$type<'passkey made' | 'passkey used'>().notNull(),
+    purpose: text().$type<'passkey made' | 'passkey used' | 'provider'>().notNull(),
     /** Whose answer it has to be; null where that is not known before. */
     userId: text().references(() => users.id, { onDelete: 'cascade' }),
     /** What was asked. */
