@@ -11,6 +11,7 @@ export const AUDIT_KINDS = [
   'invitation',
   'token',
   'workspace',
+  'sign-in',
 ] as const
 export type AuditKind = (typeof AUDIT_KINDS)[number]
 
@@ -99,3 +100,16 @@ export const DEEDS: Readonly<Record<string, Deed | null>> = {
   'POST /api/tokens': deed('token', 'made'),
   'POST /api/workspaces': null,
 }
+
+/** What the trail tells of signing in and out, which no address of a route says. */
+export const SIGN_INS = {
+  password: deed('sign-in', 'signed in with a password'),
+  passkey: deed('sign-in', 'signed in with a passkey'),
+  provider: deed('sign-in', 'signed in through the identity provider'),
+  invitation: deed('sign-in', 'accepted an invitation and signed in'),
+  setup: deed('sign-in', 'set the workspace up and signed in'),
+  out: deed('sign-in', 'signed out'),
+  'wrong password': deed('sign-in', 'was refused at signing in: wrong password'),
+  'wrong passkey': deed('sign-in', 'was refused at signing in: the passkey did not prove itself'),
+} as const satisfies Record<string, Deed>
+export type SignIn = keyof typeof SIGN_INS

@@ -7,6 +7,7 @@ import { signIn } from '../services/sign-in'
  */
 export default definePublicRoute(async (event, app) => {
   const input = await bodyOf(event, signInSchema)
-  await enter(event, app, await signIn(app, PASSWORDS, input, addressOf(event)))
+  const later = (work: Promise<void>): void => event.waitUntil(work)
+  await enter(event, app, await signIn(app, PASSWORDS, input, addressOf(event), later), 'password')
   return { ok: true }
 })

@@ -94,10 +94,11 @@ export async function endSession(app: App, userId: string, id: string): Promise<
     throw new DomainError('not found', 'session.missing', 'There is no such session; it may have ended already.')
 }
 
-/** Ends the session that a browser holds, if it is still there. */
-export async function leaveSession(app: App, id: string): Promise<void> {
+/** Ends the session that a browser holds. @returns whose it was; undefined where it is no longer there */
+export async function leaveSession(app: App, id: string): Promise<Actor | undefined> {
   const row = await findSession(app.db, id, app.now())
-  if (row) await deleteSession(app.db, row.userId, id)
+  if (!row || !(await deleteSession(app.db, row.userId, id))) return undefined
+  return { userId: row.userId, workspaceId: row.workspaceId }
 }
 
 /** Signs a person out everywhere but here. */

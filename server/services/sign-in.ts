@@ -6,6 +6,7 @@ import type { UserRow } from '../database/repositories/people'
 import { findUser, findUserByEmail, firstWorkspaceOf } from '../database/repositories/people'
 import { countAttempt } from './attempts'
 import type { Passwords } from './people'
+import { noteRefusedPassword } from './sign-in-trail'
 
 export const PER_ADDRESS = { most: 10, withinMinutes: 15 }
 /** More, as a whole office may come from one address of the network. */
@@ -75,9 +76,27 @@ export async function requireOwnPassword(
   }
 }
 
-/** Checks e-mail and password as `requirePassword` does; answers whom to sign in and where. */
-export async function signIn(app: App, passwords: Passwords, given: Credentials, network: string): Promise<Actor> {
-  return entryOf(app, (await requirePassword(app, passwords, given, network)).id)
+/** Takes work that goes on after the answer. */
+export type Later = (work: Promise<void>) => void
+
+/**
+ * Checks e-mail and password as `requirePassword` does; answers whom to sign in and where.
+ * @param later what depends on whether there is such an account comes after the answer, so that its time tells nothing
+ */
+export async function signIn(
+  app: App,
+  passwords: Passwords,
+  given: Credentials,
+  network: string,
+  later: Later,
+): Promise<Actor> {
+  try {
+    return await entryOf(app, (await requirePassword(app, passwords, given, network)).id)
+  } catch (error) {
+    if (error instanceof DomainError && error.code === 'session.refused')
+      later(noteRefusedPassword(app, given.email, network))
+    throw error
+  }
 }
 
 /** Where somebody is signed in to: the workspace that they joined first. */

@@ -1,6 +1,8 @@
 import type { H3Event } from 'h3'
 import { getHeader } from 'h3'
+import type { SignIn } from '../../shared/audit'
 import type { Actor, App } from '../app'
+import { noteSignIn } from '../services/sign-in-trail'
 import { leaveSession, openSession } from '../services/sessions'
 
 const MAX_USER_AGENT = 300
@@ -18,15 +20,17 @@ export function addressOf(event: H3Event): string {
 
 async function endHeld(event: H3Event, app: App): Promise<void> {
   const { secure } = await getUserSession(event)
-  if (secure?.sessionId) await leaveSession(app, secure.sessionId)
+  const left = secure?.sessionId ? await leaveSession(app, secure.sessionId) : undefined
+  if (left) await noteSignIn(app, left, 'out', addressOf(event))
 }
 
 /** Signs somebody in with this browser; whoever was signed in with it no longer is. */
-export async function enter(event: H3Event, app: App, actor: Actor): Promise<void> {
+export async function enter(event: H3Event, app: App, actor: Actor, how: SignIn): Promise<void> {
   await endHeld(event, app)
   const userAgent = (getHeader(event, 'user-agent') ?? '').slice(0, MAX_USER_AGENT)
   const sessionId = await openSession(app, actor, { userAgent, address: addressOf(event) })
   await replaceUserSession(event, { secure: { sessionId } })
+  await noteSignIn(app, actor, how, addressOf(event))
 }
 
 /** Ends the session of this browser, if it has one. */

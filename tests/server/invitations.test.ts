@@ -56,7 +56,8 @@ it('lets a newcomer join once, with the roles of the invitation, and keeps a has
   const nora = await accept(secret)
   expect(await rolesOf(nora)).toEqual(['reader', 'steward'])
   await expect(accept(secret)).rejects.toMatchObject(gone)
-  expect(await signIn(test.app, passwords, { email: 'nora@example.org', password: GOOD }, '192.0.2.1')).toEqual(nora)
+  const given = { email: 'nora@example.org', password: GOOD }
+  expect(await signIn(test.app, passwords, given, '192.0.2.1', () => {})).toEqual(nora)
   expect(await invitationsOf(test.app, owner)).toEqual([])
   await expect(invited('nora@example.org')).rejects.toMatchObject({ code: 'invitation.member' })
 })

@@ -2,11 +2,14 @@ import { eq } from 'drizzle-orm'
 import { afterAll, beforeAll, expect, it } from 'vitest'
 import type { App } from '../../server/app'
 import { users } from '../../server/database/schema'
+import { auditTrail } from '../../server/services/audit'
 import { sweepChallenges } from '../../server/services/challenges'
 import { askPasskey, requirePasskey } from '../../server/services/passkey-checks'
+import { signInByPasskey } from '../../server/services/passkey-sign-in'
 import { addPasskey, beginPasskey, passkeysOf, removePasskey, renamePasskey } from '../../server/services/passkeys'
 import { openSession } from '../../server/services/sessions'
 import { entryOf } from '../../server/services/sign-in'
+import { auditQuerySchema } from '../../shared/schemas/audit'
 import type { TestApp } from '../support/app'
 import { startTestApp } from '../support/app'
 import type { Faults } from '../support/authenticator'
@@ -144,6 +147,23 @@ it('renames and removes one’s own alone, and never the last way in', async () 
   await test.app.db.update(users).set({ passwordHash: 'hash of right' }).where(eq(users.id, own.userId))
   await removePasskey(test.app, own.userId, id)
   await expect(enter(device)).rejects.toMatchObject(refused)
+})
+
+it('signs in, and writes down a refusal of a passkey that is known', async () => {
+  const own = await member()
+  const { device } = await added(own)
+  const work: Promise<void>[] = []
+  const asking = () => ({ site, network: network(), later: (done: Promise<void>) => void work.push(done) })
+  const signIn = async (by: typeof device, faults: Faults = {}) =>
+    signInByPasskey(test.app, by.use(await askPasskey(test.app, site, network()), faults), asking())
+  expect(await signIn(device)).toEqual({ userId: own.userId, workspaceId: own.workspaceId })
+  await expect(signIn(device, { origin: 'https://espa1ier.example' })).rejects.toMatchObject(refused)
+  await expect(signIn(authenticator(site), { userHandle: '' })).rejects.toMatchObject(refused)
+  await Promise.all(work)
+  const { items } = await auditTrail(test.app, own, auditQuerySchema.parse({ kind: 'sign-in' }))
+  expect(items).toMatchObject([
+    { by: { id: own.userId }, what: 'was refused at signing in: the passkey did not prove itself' },
+  ])
 })
 
 it('lets nobody try for ever', async () => {

@@ -68,7 +68,8 @@ async function delivered() {
   }))
 }
 
-const enter = (email: string, password: string) => signIn(test.app, passwords, { email, password }, '192.0.2.1')
+const enter = (email: string, password: string) =>
+  signIn(test.app, passwords, { email, password }, '192.0.2.1', () => {})
 const later = (minutes: number) => {
   const now = new Date(Date.now() + minutes * 60_000)
   return { ...test.app, now: () => now }

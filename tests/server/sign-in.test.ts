@@ -1,7 +1,9 @@
 import { afterAll, beforeAll, expect, it } from 'vitest'
+import { auditTrail } from '../../server/services/audit'
 import { createAccount } from '../../server/services/people'
 import type { Passwords } from '../../server/services/people'
 import { signIn } from '../../server/services/sign-in'
+import { auditQuerySchema } from '../../shared/schemas/audit'
 import type { TestApp } from '../support/app'
 import { startTestApp } from '../support/app'
 
@@ -16,11 +18,13 @@ const passwords: Passwords = {
 }
 let test: TestApp
 let network = 0
+/** What went on after the answers. */
+const left: Promise<void>[] = []
 
 beforeAll(async () => {
   test = await startTestApp(1)
   const { workspaceId } = test.actor
-  for (const name of ['ann', 'bea', 'cay'])
+  for (const name of ['ann', 'bea', 'cay', 'dot'])
     await test.app.db.transaction((tx) =>
       createAccount(test.app, tx, {
         ...{ name, email: `${name}@example.org`, passwordHash: 'hash of right', workspaceId },
@@ -31,7 +35,7 @@ beforeAll(async () => {
 afterAll(() => test?.close())
 
 const attempt = (name: string, password: string, from = `192.0.2.${++network}`, app = test.app) =>
-  signIn(app, passwords, { email: `${name}@example.org`, password }, from).then(
+  signIn(app, passwords, { email: `${name}@example.org`, password }, from, (work) => left.push(work)).then(
     () => 'in',
     (error: { code: string; message: string }) => `${error.code}: ${error.message}`,
   )
@@ -46,6 +50,23 @@ it('says and does the same whether there is such an account or not', async () =>
   expect(outcomes.ann[9]).toMatch(/^session.refused/)
   expect(outcomes.ann[10]).toMatch(/^attempts.many: Too many attempts. Wait 15 min/)
   expect(verified.length).toBe(20)
+})
+
+it('writes down, after the answer, whose sign-in was refused, and nothing of nobody', async () => {
+  const told = async () =>
+    (await auditTrail(test.app, test.actor, auditQuerySchema.parse({ kind: 'sign-in' }))).items.map(
+      ({ by, what, address }) => [by.name, what, address],
+    )
+  await Promise.all(left)
+  const before = (await told()).length
+  await attempt('dot', 'wrong', '192.0.2.200')
+  await attempt('nobody else', 'wrong', '192.0.2.200')
+  await Promise.all(left)
+  expect((await told()).slice(0, -before || undefined)).toEqual([
+    ['dot', 'was refused at signing in: wrong password', '192.0.2.200'],
+  ])
+  // The eleventh attempt above was not looked at, and is not in the trail.
+  expect(before).toBe(10)
 })
 
 it('refuses the right password too until the time is over', async () => {

@@ -17,6 +17,12 @@ export function pathOfThing({ kind, thing }: Pick<AuditEntryView, 'kind' | 'thin
 
 /** What comes after the words of the deed: the kind where the label does not say it. */
 export function thingText({ kind, thing }: Pick<AuditEntryView, 'kind' | 'thing'>): string {
-  if (kind === 'budget' || (kind === 'person' && !thing.label)) return ''
+  if (kind === 'budget' || kind === 'sign-in' || (kind === 'person' && !thing.label)) return ''
   return thing.label || `a ${kind}`
+}
+
+/** What it was done with; for signing in, the deed says it. */
+export function meansText({ kind, token }: Pick<AuditEntryView, 'kind' | 'token'>): string {
+  if (kind === 'sign-in') return ''
+  return token ? `token ${token}` : 'signed in'
 }

@@ -14,7 +14,7 @@ export default definePublicRoute(async (event, app) => {
   const back = kept?.next === '/account' && secure?.sessionId ? '/account' : '/sign-in'
   try {
     const { who, userId } = await finishHandshake(app, siteOf(event), kept, getRequestURL(event).search)
-    if (userId === null) await enter(event, app, await enterByProvider(app, who, kept!.invitation))
+    if (userId === null) await enter(event, app, await enterByProvider(app, who, kept!.invitation), 'provider')
     else {
       const caller = await sessionCaller(app, secure?.sessionId ?? '', addressOf(event))
       if (caller.userId !== userId)

@@ -1,6 +1,5 @@
 import { usedPasskeySchema } from '../../../shared/schemas/passkeys'
-import { requirePasskey } from '../../services/passkey-checks'
-import { entryOf } from '../../services/sign-in'
+import { signInByPasskey } from '../../services/passkey-sign-in'
 
 /**
  * Signs in with a passkey: `{challengeId, credential}` → 200 with the session cookie; 401 when it opens no account; 422 when
@@ -8,7 +7,8 @@ import { entryOf } from '../../services/sign-in'
  */
 export default definePublicRoute(async (event, app) => {
   const used = await bodyOf(event, usedPasskeySchema)
-  const { id } = await requirePasskey(app, siteOf(event), used, addressOf(event))
-  await enter(event, app, await entryOf(app, id))
+  const later = (work: Promise<void>): void => event.waitUntil(work)
+  const asking = { site: siteOf(event), network: addressOf(event), later }
+  await enter(event, app, await signInByPasskey(app, used, asking), 'passkey')
   return { ok: true }
 })

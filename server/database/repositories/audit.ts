@@ -92,6 +92,7 @@ const LABELS: Record<AuditKind, (db: Db, id: string) => Promise<string | undefin
   person: async (db, id) => (await db.select().from(users).where(eq(users.id, id)))[0]?.name,
   invitation: async (db, id) => (await db.select().from(invitations).where(eq(invitations.id, id)))[0]?.email,
   token: findTokenName,
+  'sign-in': async () => undefined,
   workspace: async (db, id) => (await db.select().from(workspaces).where(eq(workspaces.id, id)))[0]?.name,
 }
 
