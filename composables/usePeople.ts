@@ -1,7 +1,12 @@
 import type { Page, Role } from '#shared/schemas/common'
 import type { MemberView } from '#shared/schemas/session'
+import { workspaceHeaders } from '~/utils/team/shownWorkspace'
 
 export const usePeople = () => useResource<Page<MemberView>>('/api/people')
+
+/** Members, for whoever may mention them. */
+export const useMentionable = () =>
+  useLateLoad(async () => (await $fetch<Page<MemberView>>('/api/people', { headers: workspaceHeaders() })).items)
 
 /** Changes of who belongs to the workspace, and as what. */
 export function useMembers() {

@@ -86,6 +86,7 @@ const REASONS = {
   reviewer: 'you review run sheets in this workspace',
   preparer: 'you prepared this run sheet',
   approver: 'you reviewed this run sheet',
+  mentioned: 'you are named in the remark',
 }
 export type SheetReason = keyof typeof REASONS
 
@@ -115,8 +116,8 @@ export function handedOverLetter(
 /** Somebody wrote a remark on a run sheet. */
 export function remarkLetter(sheet: SheetForLetter, by: string, remark: string, reason: SheetReason): Letter {
   return {
-    kind: 'run sheet remark',
-    subject: `${oneLine(by)} on RS-${sheet.number}: ${oneLine(sheet.name)}`,
+    kind: reason === 'mentioned' ? 'mention' : 'run sheet remark',
+    subject: `${oneLine(by)}${reason === 'mentioned' ? ' names you' : ''} on RS-${sheet.number}: ${oneLine(sheet.name)}`,
     parts: [
       {
         text: `${oneLine(by)} wrote on RS-${sheet.number}, ${oneLine(sheet.name)}, which runs ${oneLine(sheet.problem)} on ${oneLine(sheet.machine)}:`,

@@ -18,13 +18,14 @@ import { POST_FACT, postOf } from '../mail/post'
  * never forgotten. Sending is left to the post. Whoever did it is not told, nor is anybody who left the workspace or wants
  * no messages of that kind.
  * @param letters by user id
+ * @returns ids of those who were written to
  */
 export async function tell(
   app: App,
   tx: Db,
   { workspaceId, by }: { workspaceId: string; by: string | null },
   letters: ReadonlyMap<string, Letter>,
-): Promise<void> {
+): Promise<string[]> {
   const ids = [...letters.keys()].filter((id) => id !== by)
   const unwanted = await listUnwanted(tx, workspaceId, ids)
   const isWanted = (id: string): boolean =>
@@ -35,6 +36,7 @@ export async function tell(
     tx,
     addressees.map(({ id, email }) => rowOf(app, post, { workspaceId, userId: id, address: email }, letters.get(id)!)),
   )
+  return addressees.map(({ id }) => id)
 }
 
 interface Receiver {

@@ -2,6 +2,7 @@ import type { MadeFromItem, RunSheetView } from '../../shared/schemas/run-sheets
 import type { App } from '../app'
 import { jobsOfSubjects } from '../database/repositories/jobs'
 import type { ReturnRow, RunSheetRow } from '../database/repositories/run-sheets'
+import { personsOf } from '../database/repositories/people'
 import { copiesOf, findRunSheet, listRemarks } from '../database/repositories/run-sheets'
 
 /** The run sheet that one was copied from; null where it was prepared anew, or the other was deleted. */
@@ -32,11 +33,14 @@ export async function copiesView(app: App, row: RunSheetRow): Promise<MadeFromIt
 
 /** Hand-overs and remarks, oldest first. */
 export async function remarkViews(app: App, runSheetId: string): Promise<RunSheetView['remarks']> {
-  return (await listRemarks(app.db, runSheetId)).map(({ remark, by }) => ({
+  const said = await listRemarks(app.db, runSheetId)
+  const people = await personsOf(app.db, [...new Set(said.flatMap(({ remark }) => remark.mentions))])
+  return said.map(({ remark, by }) => ({
     at: remark.createdAt.toISOString(),
     by,
     what: remark.what,
     text: remark.text,
+    mentions: people.filter(({ id }) => remark.mentions.includes(id)),
   }))
 }
 

@@ -53,12 +53,15 @@ export async function tellMoved(
   await tell(app, tx, { workspaceId: row.workspaceId, by }, letters)
 }
 
-/** Tells preparer and reviewer of a remark; while nobody has reviewed what is in review, everyone who may. */
+/**
+ * Tells those whom a remark mentions, and preparer and reviewer; while nobody has reviewed what is in review, everyone who
+ * may. Nobody is told twice: who wants no mentions but remarks on their run sheets is told of it as of any other.
+ */
 export async function tellRemark(
   app: App,
   tx: Db,
   row: RunSheetRow,
-  { by, remark }: { by: string; remark: string },
+  { by, remark, mentioned }: { by: string; remark: string; mentioned: readonly string[] },
 ): Promise<void> {
   const told = new Map<string, SheetReason>()
   if (row.reviewedBy) told.set(row.reviewedBy, 'approver')
@@ -66,8 +69,11 @@ export async function tellRemark(
   told.set(row.preparedBy, 'preparer')
   const sheet = await sheetForLetter(tx, row)
   const { name } = await personOf(tx, by)
-  const letters = new Map([...told].map(([id, reason]) => [id, remarkLetter(sheet, name, remark, reason)]))
-  await tell(app, tx, { workspaceId: row.workspaceId, by }, letters)
+  const from = { workspaceId: row.workspaceId, by }
+  const letterOf = (reason: SheetReason): Letter => remarkLetter(sheet, name, remark, reason)
+  const named = await tell(app, tx, from, new Map(mentioned.map((id) => [id, letterOf('mentioned')])))
+  const others = [...told].filter(([id]) => !named.includes(id))
+  await tell(app, tx, from, new Map(others.map(([id, reason]) => [id, letterOf(reason)])))
 }
 
 /** What a letter says of a run sheet. */

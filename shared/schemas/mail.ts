@@ -2,7 +2,13 @@ import { z } from 'zod'
 import { pageQuerySchema } from './common'
 
 /** Messages of a workspace, which each person may want or not. */
-export const CHOSEN_MAIL_KINDS = ['run sheet handed over', 'run sheet remark', 'embedding broken', 'bridge'] as const
+export const CHOSEN_MAIL_KINDS = [
+  'run sheet handed over',
+  'run sheet remark',
+  'mention',
+  'embedding broken',
+  'bridge',
+] as const
 export type ChosenMailKind = (typeof CHOSEN_MAIL_KINDS)[number]
 
 /** What a message tells: one kind for each reason to write to somebody. */

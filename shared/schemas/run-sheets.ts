@@ -76,7 +76,10 @@ export const issueSchema = remarkSchema.extend({
 })
 export const sendBackSchema = z.object({ remark: textSchema(2000).min(1, 'say what should change') })
 
-export const addRemarkSchema = z.object({ remark: textSchema(2000).min(1, 'write what you want to say') })
+export const addRemarkSchema = z.object({
+  /** Members are mentioned by `@[` and their id, as the list of people has it, and `]`; they are told. */
+  remark: textSchema(2000).min(1, 'write what you want to say'),
+})
 
 /** A run sheet for each s at which to quench; without a time as fast as the machine takes. */
 export const quenchSeriesSchema = z.object({
@@ -232,7 +235,10 @@ export interface RemarkView {
   at: string
   by: Person | null
   what: string
+  /** Who is mentioned stands in it as `@[` id `]`. */
   text: string
+  /** Those who are mentioned, by the names they have now. */
+  mentions: Person[]
 }
 
 export interface RunSheetItem {

@@ -7,6 +7,7 @@ export const MAIL_KIND_WORDS: Record<ChosenMailKind, { label: string; hint: stri
     hint: 'One that waits for your review; one of yours that was approved, sent back, issued, or went back to review.',
   },
   'run sheet remark': { label: 'Remarks', hint: 'On run sheets that you prepared or review.' },
+  mention: { label: 'Mentions', hint: 'Remarks in which somebody names you, on whatever run sheet.' },
   bridge: {
     label: 'Bridges',
     hint: 'A run sheet that you sent to one: its samples came back, it was refused, or it was not taken.',

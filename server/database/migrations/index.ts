@@ -343,5 +343,14 @@ export const MIGRATIONS = [
       "\nCREATE UNIQUE INDEX \"bridge_calls_run_sheet_id_index\" ON \"bridge_calls\" USING btree (\"run_sheet_id\");",
       "\nCREATE INDEX \"bridge_calls_state_next_attempt_at_index\" ON \"bridge_calls\" USING btree (\"state\",\"next_attempt_at\");"
     ]
+  },
+  {
+    "tag": "0015_mentions",
+    "folderMillis": 1796245348654,
+    "hash": "e2d86a1d8947f1e4799613563ffe706ff328eb3f848f59b0684eb4b119eb76e4",
+    "bps": true,
+    "sql": [
+      "ALTER TABLE \"run_sheet_remarks\" ADD COLUMN \"mentions\" text[] DEFAULT '{}' NOT NULL;"
+    ]
   }
 ]

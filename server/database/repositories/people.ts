@@ -1,5 +1,5 @@
-import { and, asc, count, eq, isNull } from 'drizzle-orm'
-import type { Role } from '../../../shared/schemas/common'
+import { and, asc, count, eq, inArray, isNull } from 'drizzle-orm'
+import type { Person, Role } from '../../../shared/schemas/common'
 import type { Db } from '../client'
 import { installation, machines, memberships, problems, runSheets, users, workspaces } from '../schema'
 
@@ -15,6 +15,25 @@ export async function findUserByEmail(db: Db, email: string): Promise<UserRow | 
 
 export async function findUser(db: Db, id: string): Promise<UserRow | undefined> {
   return (await db.select().from(users).where(eq(users.id, id)))[0]
+}
+
+/** Names of the people with these ids. */
+export async function personsOf(db: Db, ids: readonly string[]): Promise<Person[]> {
+  if (ids.length === 0) return []
+  return db
+    .select({ id: users.id, name: users.name })
+    .from(users)
+    .where(inArray(users.id, [...ids]))
+}
+
+/** Those of the people given who belong to the workspace. */
+export async function membersAmong(db: Db, workspaceId: string, ids: readonly string[]): Promise<Person[]> {
+  if (ids.length === 0) return []
+  return db
+    .select({ id: users.id, name: users.name })
+    .from(memberships)
+    .innerJoin(users, eq(users.id, memberships.userId))
+    .where(and(eq(memberships.workspaceId, workspaceId), inArray(users.id, [...ids])))
 }
 
 export async function insertUser(db: Db, user: UserRow): Promise<void> {

@@ -46,7 +46,9 @@ export const runSheetRemarks = pgTable(
       .references(() => runSheets.id, { onDelete: 'cascade' }),
     by: text().references(() => users.id),
     what: text().notNull(),
+    /** People whom it mentions are in it by id; `mentions` has those who were members when it was written. */
     text: text().notNull(),
+    mentions: text().array().notNull().default([]),
     /** With a submission: the settings that were submitted. */
     settings: jsonb().$type<RunSheetSettings>(),
     createdAt: createdAt(),

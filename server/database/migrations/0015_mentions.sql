@@ -1,0 +1,1 @@
+ALTER TABLE "run_sheet_remarks" ADD COLUMN "mentions" text[] DEFAULT '{}' NOT NULL;
