@@ -13,6 +13,9 @@ export function useSession() {
   }
   const may = (...roles: Role[]): boolean => session.value?.roles.some((role) => roles.includes(role)) ?? false
 
+  /** Reviews run sheets: in a role, or in the place of a reviewer who is away. */
+  const mayReview = computed(() => may('reviewer') || (session.value?.reviewsFor.length ?? 0) > 0)
+
   const enter = async (url: string, body: Record<string, unknown>) => {
     const outcome = await api.post(url, body)
     if (outcome.ok) await load()
@@ -22,6 +25,7 @@ export function useSession() {
     session,
     load,
     may,
+    mayReview,
     signIn: (email: string, password: string) => enter('/api/session', { email, password }),
     signInByPasskey: (used: UsedPasskey) => enter('/api/session/passkey', { ...used }),
     setUp: (body: Record<string, unknown>) => enter('/api/setup', body),

@@ -12,6 +12,7 @@ export const AUDIT_KINDS = [
   'token',
   'workspace',
   'sign-in',
+  'stand-in',
 ] as const
 export type AuditKind = (typeof AUDIT_KINDS)[number]
 
@@ -96,6 +97,8 @@ export const DEEDS: Readonly<Record<string, Deed | null>> = {
   'PUT /api/session/workspace': null,
   'DELETE /api/sessions/:id': own('ended a session of their own'),
   'DELETE /api/sessions': own('ended all other sessions of their own'),
+  'DELETE /api/stand-ins/:id': deed('stand-in', 'took back reviews:'),
+  'POST /api/stand-ins': deed('stand-in', 'handed reviews over:'),
   'DELETE /api/tokens/:id': deed('token', 'revoked'),
   'POST /api/tokens': deed('token', 'made'),
   'POST /api/workspaces': null,

@@ -11,6 +11,7 @@ import {
   updateRoles,
 } from '../database/repositories/people'
 import { deleteSessionsIn, moveSessions } from '../database/repositories/sessions'
+import { endStandInsOf } from '../database/repositories/stand-ins'
 import { deleteTokensOf } from '../database/repositories/tokens'
 
 /**
@@ -47,14 +48,20 @@ export async function changeRoles(app: App, actor: Actor, memberId: string, role
     await requireMember(tx, actor, memberId)
     if (!roles.includes('owner')) await requireAnotherOwner(tx, actor.workspaceId, memberId)
     await updateRoles(tx, actor.workspaceId, memberId, roles)
+    if (!roles.includes('reviewer'))
+      await endStandInsOf(tx, actor.workspaceId, memberId, { now: app.now(), asEither: false })
   })
 }
 
-/** Their sessions go on in another workspace of theirs, or end; their tokens for this one end, which would open the workspace again if they came back. */
-async function remove(tx: Db, workspaceId: string, userId: string): Promise<void> {
+/**
+ * Their sessions go on in another workspace of theirs, or end; their tokens for this one end, which would open the workspace
+ * again if they came back, and so do reviews that they handed over or that were handed to them.
+ */
+async function remove(app: App, tx: Db, workspaceId: string, userId: string): Promise<void> {
   await requireAnotherOwner(tx, workspaceId, userId)
   await deleteMembership(tx, workspaceId, userId)
   await deleteTokensOf(tx, workspaceId, userId)
+  await endStandInsOf(tx, workspaceId, userId, { now: app.now(), asEither: true })
   const next = await firstWorkspaceOf(tx, userId)
   if (next) await moveSessions(tx, userId, workspaceId, next)
   else await deleteSessionsIn(tx, workspaceId, userId)
@@ -64,7 +71,7 @@ async function remove(tx: Db, workspaceId: string, userId: string): Promise<void
 export async function removeMember(app: App, actor: Actor, memberId: string): Promise<void> {
   await asOwner(app, actor, async (tx) => {
     await requireMember(tx, actor, memberId)
-    await remove(tx, actor.workspaceId, memberId)
+    await remove(app, tx, actor.workspaceId, memberId)
   })
 }
 
@@ -72,6 +79,6 @@ export async function removeMember(app: App, actor: Actor, memberId: string): Pr
 export async function leaveWorkspace(app: App, { workspaceId, userId }: Actor): Promise<void> {
   await app.db.transaction(async (tx) => {
     await lockWorkspace(tx, workspaceId)
-    await remove(tx, workspaceId, userId)
+    await remove(app, tx, workspaceId, userId)
   })
 }

@@ -21,6 +21,7 @@ import {
   readFact,
   takeFact,
 } from '../database/repositories/people'
+import { awayFor } from '../database/repositories/stand-ins'
 import { budgetTotal } from './budget-view'
 import { sendsMail } from './mail'
 import { requireGoodPassword } from './password-rules'
@@ -53,6 +54,7 @@ export async function sessionView(app: App, actor: Actor, roles: readonly Role[]
     workspace: { id: workspace.id, name: workspace.name },
     workspaces: await listWorkspacesOf(app.db, user.id),
     roles: [...roles],
+    reviewsFor: await awayFor(app.db, actor.workspaceId, user.id, app.now()),
     counts,
     budget: await budgetTotal(app, actor.workspaceId),
   }

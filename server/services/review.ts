@@ -1,5 +1,6 @@
 import { randomUUID } from 'node:crypto'
 import { DomainError } from '../../shared/errors'
+import type { Person } from '../../shared/schemas/common'
 import type { RunSheetState } from '../../shared/schemas/run-sheets'
 import type { Actor, App } from '../app'
 import type { Db } from '../database/client'
@@ -10,6 +11,7 @@ import { reserveTime } from './budget'
 import { fingerprintOf, programmeBench, requireProgrammed } from './programming'
 import { tellHandOver } from './run-sheet-letters'
 import { benchOf, runSheetRow, runSheetView } from './run-sheets'
+import { reviewingFor } from './stand-ins'
 
 interface HandOver {
   from: readonly RunSheetState[]
@@ -25,6 +27,12 @@ const HAND_OVERS = {
   issue: { from: ['approved'], to: 'issued', what: 'issued', told: 'issued' },
 } satisfies Record<string, HandOver>
 
+interface HandedOn {
+  state: RunSheetState
+  /** The reviewer who is away, in whose place it was decided; null for whoever decided as a reviewer, and for other steps. */
+  for: Person | null
+}
+
 /**
  * Moves a run sheet on and tells those concerned; approval freezes and fingerprints what is programmed.
  * @param also what is done with it, in the same transaction
@@ -36,7 +44,7 @@ export async function handOver(
   step: keyof typeof HAND_OVERS,
   remark: string,
   also: (tx: Db) => Promise<void> = async () => {},
-): Promise<{ state: RunSheetState }> {
+): Promise<HandedOn> {
   const { from, to, what, told }: HandOver = HAND_OVERS[step]
   const row = await runSheetRow(app, actor, id)
   if (!from.includes(row.state))
@@ -51,12 +59,14 @@ export async function handOver(
       'run-sheet.own',
       'Nobody approves a run sheet of their own. Ask another reviewer.',
     )
+  const isReview = step === 'approve' || step === 'sendBack'
+  const forWhom = isReview ? await reviewingFor(app, actor, row) : null
   const change: Partial<RunSheetRow> = { state: to, changedAt: app.now() }
   // A calibration saved since the submission may have broken the embedding.
   if (step === 'submit' || step === 'approve') await refuseBroken(app, actor, row, step)
   if (step === 'approve')
     change.fingerprint = fingerprintOf(requireProgrammed(programmeBench(await benchOf(app, actor, row), row.settings)))
-  if (step === 'approve' || step === 'sendBack') change.reviewedBy = actor.userId
+  if (isReview) change.reviewedBy = actor.userId
   await app.db.transaction(async (tx) => {
     if (!(await updateRunSheet(tx, id, from, change, row.changedAt)))
       throw new DomainError(
@@ -69,15 +79,16 @@ export async function handOver(
       id: randomUUID(),
       runSheetId: id,
       by: actor.userId,
+      forUserId: forWhom?.id ?? null,
       what,
       text: remark,
       settings: step === 'submit' ? row.settings : null,
       createdAt: app.now(),
     })
     await also(tx)
-    await tellHandOver(app, tx, { ...row, ...change }, { step: told, by: actor.userId, remark })
+    await tellHandOver(app, tx, { ...row, ...change }, { step: told, by: actor.userId, forWhom, remark })
   })
-  return { state: to }
+  return { state: to, for: forWhom }
 }
 
 async function refuseBroken(app: App, actor: Actor, row: RunSheetRow, step: 'submit' | 'approve'): Promise<void> {

@@ -35,9 +35,10 @@ export async function copiesView(app: App, row: RunSheetRow): Promise<MadeFromIt
 export async function remarkViews(app: App, runSheetId: string): Promise<RunSheetView['remarks']> {
   const said = await listRemarks(app.db, runSheetId)
   const people = await personsOf(app.db, [...new Set(said.flatMap(({ remark }) => remark.mentions))])
-  return said.map(({ remark, by }) => ({
+  return said.map(({ remark, by, forWhom }) => ({
     at: remark.createdAt.toISOString(),
     by,
+    for: forWhom,
     what: remark.what,
     text: remark.text,
     mentions: people.filter(({ id }) => remark.mentions.includes(id)),

@@ -1,7 +1,9 @@
+import type { Person } from '../../shared/schemas/common'
 import type { App } from '../app'
 import type { Db } from '../database/client'
 import { holdersOf } from '../database/repositories/mails'
 import { personOf } from '../database/repositories/problems'
+import { standInsAt } from '../database/repositories/stand-ins'
 import type { RunSheetRow } from '../database/repositories/run-sheets'
 import { aboutRunSheet } from '../database/repositories/run-sheets'
 import type { Letter } from '../mail/letter'
@@ -9,13 +11,16 @@ import type { HandedOver, SheetForLetter, SheetReason } from '../mail/letters'
 import { handedOverLetter, movedLetter, remarkLetter } from '../mail/letters'
 import { tell } from './mail'
 
-/** Everyone who may review this run sheet: nobody reviews their own. */
-async function reviewersOf(tx: Db, { workspaceId, preparedBy }: RunSheetRow): Promise<string[]> {
-  return (await holdersOf(tx, workspaceId, 'reviewer')).filter((id) => id !== preparedBy)
+/** Everyone who may review this run sheet now, in the place of somebody away too: nobody reviews their own. */
+async function reviewersOf(app: App, tx: Db, { workspaceId, preparedBy }: RunSheetRow): Promise<string[]> {
+  const standIns = await standInsAt(tx, workspaceId, app.now())
+  const meanwhile = standIns.filter(({ forWhom }) => forWhom.id !== preparedBy).map(({ by }) => by.id)
+  const all = new Set([...(await holdersOf(tx, workspaceId, 'reviewer')), ...meanwhile])
+  return [...all].filter((id) => id !== preparedBy)
 }
 
-async function concerned(tx: Db, row: RunSheetRow, step: HandedOver): Promise<Map<string, SheetReason>> {
-  if (step === 'submitted') return new Map((await reviewersOf(tx, row)).map((id) => [id, 'reviewer']))
+async function concerned(app: App, tx: Db, row: RunSheetRow, step: HandedOver): Promise<Map<string, SheetReason>> {
+  if (step === 'submitted') return new Map((await reviewersOf(app, tx, row)).map((id) => [id, 'reviewer']))
   const told = new Map<string, SheetReason>()
   if (step === 'issued' && row.reviewedBy) told.set(row.reviewedBy, 'approver')
   return told.set(row.preparedBy, 'preparer')
@@ -29,12 +34,13 @@ export async function tellHandOver(
   app: App,
   tx: Db,
   row: RunSheetRow,
-  { step, by, remark }: { step: HandedOver; by: string; remark: string },
+  { step, by, forWhom, remark }: { step: HandedOver; by: string; forWhom: Person | null; remark: string },
 ): Promise<void> {
   const sheet = await sheetForLetter(tx, row)
-  const { name } = await personOf(tx, by)
+  const person = await personOf(tx, by)
+  const name = forWhom ? `${person.name}, for ${forWhom.name},` : person.name
   const letters = new Map<string, Letter>()
-  for (const [id, reason] of await concerned(tx, row, step))
+  for (const [id, reason] of await concerned(app, tx, row, step))
     letters.set(id, handedOverLetter(sheet, step, name, remark, reason))
   await tell(app, tx, { workspaceId: row.workspaceId, by }, letters)
 }
@@ -48,7 +54,7 @@ export async function tellMoved(
 ): Promise<void> {
   const sheet = await sheetForLetter(tx, row)
   const letters = new Map<string, Letter>()
-  for (const id of await reviewersOf(tx, row)) letters.set(id, movedLetter(sheet, moved, row.state, 'reviewer'))
+  for (const id of await reviewersOf(app, tx, row)) letters.set(id, movedLetter(sheet, moved, row.state, 'reviewer'))
   letters.set(row.preparedBy, movedLetter(sheet, moved, row.state, 'preparer'))
   await tell(app, tx, { workspaceId: row.workspaceId, by }, letters)
 }
@@ -65,7 +71,7 @@ export async function tellRemark(
 ): Promise<void> {
   const told = new Map<string, SheetReason>()
   if (row.reviewedBy) told.set(row.reviewedBy, 'approver')
-  else if (row.state === 'in review') for (const id of await reviewersOf(tx, row)) told.set(id, 'reviewer')
+  else if (row.state === 'in review') for (const id of await reviewersOf(app, tx, row)) told.set(id, 'reviewer')
   told.set(row.preparedBy, 'preparer')
   const sheet = await sheetForLetter(tx, row)
   const { name } = await personOf(tx, by)

@@ -1,5 +1,7 @@
 import type { H3Event } from 'h3'
+import type { Deed } from '../../shared/audit'
 import { DEEDS } from '../../shared/audit'
+import type { Person } from '../../shared/schemas/common'
 import type { Actor, App } from '../app'
 import { nameOfThing, record } from '../services/audit'
 import { addressOf } from './session'
@@ -11,6 +13,12 @@ interface Caller extends Actor {
 const idIn = (answer: unknown): string | null => {
   const id = typeof answer === 'object' && answer !== null && 'id' in answer ? answer.id : null
   return typeof id === 'string' ? id : null
+}
+
+/** Where it was decided in the place of a reviewer who is away, that is part of the deed. */
+function withStandIn(deed: Deed, answer: unknown): Deed {
+  const away = typeof answer === 'object' && answer !== null && 'for' in answer ? (answer.for as Person | null) : null
+  return away ? { ...deed, what: `${deed.what} (for ${away.name})` } : deed
 }
 
 /** Does the work of a route and, where it changed something, writes down who did it, to what, and from where. */
@@ -27,7 +35,13 @@ export async function audited<T>(
   const answer = await work()
   const thingId = deed.isOwn ? null : (named ?? idIn(answer))
   try {
-    await record(app, caller, { deed, thingId, name, tokenId: caller.tokenId, address: addressOf(event) })
+    await record(app, caller, {
+      deed: withStandIn(deed, answer),
+      thingId,
+      name,
+      tokenId: caller.tokenId,
+      address: addressOf(event),
+    })
   } catch (error) {
     // It is done, and saying otherwise would have it done twice.
     console.error(`audit trail: ${error instanceof Error ? error.message : String(error)}`)

@@ -234,6 +234,8 @@ export interface ReturnOfRunSheet {
 export interface RemarkView {
   at: string
   by: Person | null
+  /** The reviewer who was away, in whose place it was decided. */
+  for: Person | null
   what: string
   /** Who is mentioned stands in it as `@[` id `]`. */
   text: string

@@ -1,7 +1,7 @@
 import { z } from 'zod'
 import { MAX_PASSWORD_LENGTH } from '../password-rules'
 import type { BudgetBalance } from './budget'
-import type { Role } from './common'
+import type { Person, Role } from './common'
 import { idSchema, textSchema } from './common'
 
 export const emailSchema = z
@@ -38,6 +38,8 @@ export interface SessionView {
   /** All that the person belongs to, by name. */
   workspaces: { id: string; name: string }[]
   roles: Role[]
+  /** Reviewers who are away, in whose place the person reviews now. */
+  reviewsFor: Person[]
   counts: { problems: number; machines: number; runSheets: number; people: number }
   /** Machine time of the workspace; null where no budget is kept. */
   budget: BudgetBalance | null

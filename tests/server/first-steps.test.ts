@@ -9,6 +9,7 @@ import { createEmbeddingSchema } from '../../shared/schemas/embeddings'
 import { createRunSheetSchema, rehearseSchema } from '../../shared/schemas/run-sheets'
 import type { TestApp } from '../support/app'
 import { startTestApp } from '../support/app'
+import { newMember } from '../support/people'
 
 let test: TestApp
 beforeAll(async () => {
@@ -42,7 +43,8 @@ it('are ticked one by one, by what the person made', async () => {
 
   await handOver(app, actor, sheet.id, 'submit', '')
   expect(await doneNow()).toEqual(['problem', 'embedding', 'runSheet', 'rehearsal', 'submission'])
-  await handOver(app, actor, sheet.id, 'sendBack', 'Fewer reads.')
+  const reviewer = await newMember(app, actor, 'Rita', ['reviewer'])
+  await handOver(app, reviewer, sheet.id, 'sendBack', 'Fewer reads.')
   expect((await firstStepsOf(app, actor)).done.submission).toEqual({ id: sheet.id, number: 1 })
 
   await removeRunSheet(app, actor, sheet.id)

@@ -203,7 +203,7 @@ describe('run sheets on a broken embedding', () => {
     expect(settings.strength.perChain).toEqual({ c: 3 })
     const chains = unpackChainRows(unpackArrays(await packedChains(app, actor, agreed)))
     expect(chains.map(({ strength }) => strength)).toEqual([2, 2, 3])
-    expect(await hand(agreed, 'approve')).toEqual({ state: 'approved' })
+    expect(await hand(agreed, 'approve')).toEqual({ state: 'approved', for: null })
   })
 
   it('stay where they are when there is no repair', async () => {

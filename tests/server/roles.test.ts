@@ -116,8 +116,13 @@ async function thingsOf(owner: Client, developer: Client): Promise<Things> {
   const token = await owner.post<Item>('/api/tokens', { name: 'Nobody’s', role: 'owner' })
   const spare = await Client.signedIn(server.url, 'own.owner')
   const sessions = (await spare.get<{ items: Item[] }>('/api/sessions')).body.items
+  const reviewer = (await list('/api/people')).find(({ name }) => name === 'own reviewer')!
+  const steward = (await list('/api/people')).find(({ name }) => name === 'own steward')!
+  const absence = { forId: reviewer.id, byId: steward.id, startsOn: '2099-02-01', endsOn: '2099-02-02' }
+  const standIn = (await owner.post<Item>('/api/stand-ins', absence)).body
   const person = (await list('/api/people')).find(({ name }) => name === 'own spare')!
   return {
+    ...{ standIn: standIn.id, reviewer: reviewer.id },
     ...{ person: person.id, problem: problemId, machine: machineId, embedding: embedding.id, runSheet: runSheet.id },
     ...{ return: sheet.returns[0]!.id, scan: scan.id, job: scan.jobId, invitation: invited.body.id },
     ...{ token: token.body.id, session: sessions.find(({ isThis }) => isThis)!.id },

@@ -13,6 +13,8 @@ export type Thing =
   | 'person'
   | 'workspace'
   | 'passkey'
+  | 'standIn'
+  | 'reviewer'
 export type Things = Record<Thing, string>
 
 /** A request that a route takes, `$problem` and so on standing for ids. */
@@ -192,6 +194,11 @@ export const SAMPLES: Record<string, Sample> = {
   'PATCH /api/account/passkeys/{id}': { json: { name: 'Old phone' } },
   'DELETE /api/account/passkeys/{id}': {},
   'DELETE /api/account/membership': { endsCaller: true },
+  'GET /api/stand-ins': {},
+  'POST /api/stand-ins': {
+    json: { byId: '$reviewer', startsOn: '2099-01-01', endsOn: '2099-01-02' },
+  },
+  'DELETE /api/stand-ins/{id}': {},
   'GET /api/tokens': {},
   'POST /api/tokens': { json: { name: 'One more', role: 'owner' } },
   'DELETE /api/tokens/{id}': {},
@@ -211,4 +218,5 @@ export const ID_OF: Record<string, Thing> = {
   tokens: 'token',
   people: 'person',
   passkeys: 'passkey',
+  'stand-ins': 'standIn',
 }

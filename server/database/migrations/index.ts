@@ -352,5 +352,21 @@ export const MIGRATIONS = [
     "sql": [
       "ALTER TABLE \"run_sheet_remarks\" ADD COLUMN \"mentions\" text[] DEFAULT '{}' NOT NULL;"
     ]
+  },
+  {
+    "tag": "0016_stand_ins",
+    "folderMillis": 1796246339739,
+    "hash": "725300dc2c22b19355d091aae21895f55bdb0ef18682fdc91ab52de5b92e68db",
+    "bps": true,
+    "sql": [
+      "CREATE TABLE \"stand_ins\" (\n\t\"id\" text PRIMARY KEY NOT NULL,\n\t\"workspace_id\" text NOT NULL,\n\t\"for_user_id\" text NOT NULL,\n\t\"by_user_id\" text NOT NULL,\n\t\"starts_at\" timestamp with time zone NOT NULL,\n\t\"ends_at\" timestamp with time zone NOT NULL,\n\t\"made_by\" text,\n\t\"created_at\" timestamp with time zone NOT NULL,\n\t\"taken_back_at\" timestamp with time zone\n);\n",
+      "\nALTER TABLE \"run_sheet_remarks\" ADD COLUMN \"for_user_id\" text;",
+      "\nALTER TABLE \"stand_ins\" ADD CONSTRAINT \"stand_ins_workspace_id_workspaces_id_fk\" FOREIGN KEY (\"workspace_id\") REFERENCES \"public\".\"workspaces\"(\"id\") ON DELETE cascade ON UPDATE no action;",
+      "\nALTER TABLE \"stand_ins\" ADD CONSTRAINT \"stand_ins_for_user_id_users_id_fk\" FOREIGN KEY (\"for_user_id\") REFERENCES \"public\".\"users\"(\"id\") ON DELETE cascade ON UPDATE no action;",
+      "\nALTER TABLE \"stand_ins\" ADD CONSTRAINT \"stand_ins_by_user_id_users_id_fk\" FOREIGN KEY (\"by_user_id\") REFERENCES \"public\".\"users\"(\"id\") ON DELETE cascade ON UPDATE no action;",
+      "\nALTER TABLE \"stand_ins\" ADD CONSTRAINT \"stand_ins_made_by_users_id_fk\" FOREIGN KEY (\"made_by\") REFERENCES \"public\".\"users\"(\"id\") ON DELETE set null ON UPDATE no action;",
+      "\nCREATE INDEX \"stand_ins_workspace_id_ends_at_index\" ON \"stand_ins\" USING btree (\"workspace_id\",\"ends_at\");",
+      "\nALTER TABLE \"run_sheet_remarks\" ADD CONSTRAINT \"run_sheet_remarks_for_user_id_users_id_fk\" FOREIGN KEY (\"for_user_id\") REFERENCES \"public\".\"users\"(\"id\") ON DELETE no action ON UPDATE no action;"
+    ]
   }
 ]

@@ -1,6 +1,7 @@
 import { and, asc, desc, eq, gte, lt } from 'drizzle-orm'
 import type { AuditKind } from '../../../shared/audit'
 import type { Db } from '../client'
+import { standInLabel } from './stand-ins'
 import {
   auditEntries,
   embeddings,
@@ -93,6 +94,7 @@ const LABELS: Record<AuditKind, (db: Db, id: string) => Promise<string | undefin
   invitation: async (db, id) => (await db.select().from(invitations).where(eq(invitations.id, id)))[0]?.email,
   token: findTokenName,
   'sign-in': async () => undefined,
+  'stand-in': standInLabel,
   workspace: async (db, id) => (await db.select().from(workspaces).where(eq(workspaces.id, id)))[0]?.name,
 }
 

@@ -1,4 +1,4 @@
-import { and, asc, count, desc, eq, inArray, isNull, ne } from 'drizzle-orm'
+import { aliasedTable, and, asc, count, desc, eq, inArray, isNull, ne } from 'drizzle-orm'
 import type { Db } from '../client'
 import { embeddings, machines, problems, returns, runSheetRemarks, runSheets, users } from '../schema'
 
@@ -109,11 +109,18 @@ export async function insertRemark(db: Db, row: typeof runSheetRemarks.$inferIns
   await db.insert(runSheetRemarks).values(row)
 }
 
+const away = aliasedTable(users, 'away')
+
 export async function listRemarks(db: Db, runSheetId: string) {
   return db
-    .select({ remark: runSheetRemarks, by: { id: users.id, name: users.name } })
+    .select({
+      remark: runSheetRemarks,
+      by: { id: users.id, name: users.name },
+      forWhom: { id: away.id, name: away.name },
+    })
     .from(runSheetRemarks)
     .leftJoin(users, eq(users.id, runSheetRemarks.by))
+    .leftJoin(away, eq(away.id, runSheetRemarks.forUserId))
     .where(eq(runSheetRemarks.runSheetId, runSheetId))
     .orderBy(asc(runSheetRemarks.createdAt))
 }

@@ -158,6 +158,32 @@ export const identities = pgTable(
   (table) => [primaryKey({ columns: [table.provider, table.subject] }), index().on(table.userId)],
 )
 
+/** Reviewers who are away, and who reviews in their place meanwhile. */
+export const standIns = pgTable(
+  'stand_ins',
+  {
+    id: id(),
+    workspaceId: text()
+      .notNull()
+      .references(() => workspaces.id, { onDelete: 'cascade' }),
+    /** The reviewer who is away. */
+    forUserId: text()
+      .notNull()
+      .references(() => users.id, { onDelete: 'cascade' }),
+    /** The member who reviews meanwhile. */
+    byUserId: text()
+      .notNull()
+      .references(() => users.id, { onDelete: 'cascade' }),
+    startsAt: moment().notNull(),
+    /** No longer from then on. */
+    endsAt: moment().notNull(),
+    madeBy: text().references(() => users.id, { onDelete: 'set null' }),
+    createdAt: createdAt(),
+    takenBackAt: moment(),
+  },
+  (table) => [index().on(table.workspaceId, table.endsAt)],
+)
+
 /** Kinds of messages that a person does not want from a workspace. */
 export const unwantedMails = pgTable(
   'unwanted_mails',

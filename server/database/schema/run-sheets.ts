@@ -45,6 +45,8 @@ export const runSheetRemarks = pgTable(
       .notNull()
       .references(() => runSheets.id, { onDelete: 'cascade' }),
     by: text().references(() => users.id),
+    /** The reviewer in whose place it was decided. */
+    forUserId: text().references(() => users.id),
     what: text().notNull(),
     /** People whom it mentions are in it by id; `mentions` has those who were members when it was written. */
     text: text().notNull(),

@@ -1,7 +1,13 @@
 import { remarkSchema } from '../../../../shared/schemas/run-sheets'
 import { handOver } from '../../../services/review'
 
-/** `{remark?}` → `{state}`; 409 from a wrong state. */
-export default defineRoute(['reviewer'], async (event, { app, ...actor }) =>
-  handOver(app, actor, partOf(event, 'id'), 'approve', (await bodyOf(event, remarkSchema)).remark),
+/**
+ * `{remark?}` → `{state, for}`; 409 from a wrong state. Also by somebody signed in who reviews in the place of a reviewer who is
+ * away, whom `for` then names.
+ */
+export default defineRoute(
+  ['reviewer'],
+  async (event, { app, ...actor }) =>
+    handOver(app, actor, partOf(event, 'id'), 'approve', (await bodyOf(event, remarkSchema)).remark),
+  { orStandIn: true },
 )

@@ -4,7 +4,14 @@ import { signOffSteps } from '../../../../utils/run-sheet/signOff'
 
 const ida = { id: 'a', name: 'Ida Fenn' }
 const maud = { id: 'b', name: 'Maud Okafor' }
-const said = (what: string, at: string, by: RemarkView['by']): RemarkView => ({ what, at, by, text: '', mentions: [] })
+const said = (what: string, at: string, by: RemarkView['by']): RemarkView => ({
+  what,
+  at,
+  by,
+  for: null,
+  text: '',
+  mentions: [],
+})
 const steps = (state: RunSheetState, remarks: RemarkView[]) =>
   signOffSteps({ state, remarks, preparedBy: ida, createdAt: '2026-12-01T08:00:00Z' })
 
