@@ -1,4 +1,7 @@
+import { DEMO_PASSWORD } from '../../../shared/demo-accounts'
 import { createRandom } from '../../../shared/engine/random'
+import type { PasskeyChallenge } from '../../../shared/schemas/passkeys'
+import { authenticator } from '../authenticator'
 import { Client } from '../client'
 import { until } from '../server'
 
@@ -14,6 +17,7 @@ export async function prepareStates(url: string): Promise<void> {
   const { small, machine, embedding } = await prepareEmbeddings(developer, steward)
   await prepareRunSheets(developer, reviewer, embedding)
   await prepareBroken(developer, steward, small, machine)
+  await preparePeople(url, developer, reviewer)
   await created(developer.post('/api/tokens', { name: 'nightly rehearsals', role: 'developer' }))
 }
 
@@ -159,6 +163,23 @@ async function prepareRunSheets(developer: Client, reviewer: Client, embedding: 
     const { body } = await developer.get<{ status: string }>(`/api/jobs/${stopped.jobId}`)
     return body.status === 'cancelled'
   })
+}
+
+/** A passkey, reviews in other hands, and a remark that names somebody. */
+async function preparePeople(url: string, developer: Client, reviewer: Client): Promise<void> {
+  const { origin, hostname } = new URL(url)
+  const asked = developer.post<PasskeyChallenge>('/api/account/passkeys/challenge', { current: DEMO_PASSWORD })
+  const made = authenticator({ origin, hostname }).make(await created(asked, 200), 'Lock of the laptop')
+  await created(developer.post('/api/account/passkeys', made))
+  const { items } = await created<{ items: { id: string; roles: string[] }[] }>(developer.get('/api/people'), 200)
+  const steward = items.find(({ roles }) => roles.join() === 'steward')!
+  const dayFromNow = (days: number) => new Date(Date.now() + days * 86_400_000).toISOString().slice(0, 10)
+  const absence = { byId: steward.id, startsOn: dayFromNow(0), endsOn: dayFromNow(20) }
+  await created(reviewer.post('/api/stand-ins', absence))
+  const sheets = await created<{ items: { id: string; state: string }[] }>(developer.get('/api/run-sheets'), 200)
+  const draft = sheets.items.find(({ state }) => state === 'draft')!
+  const remark = `Is the qubit back, @[${steward.id}]?`
+  await created(developer.post(`/api/run-sheets/${draft.id}/remarks`, { remark }))
 }
 
 /** A new calibration takes a qubit from an embedding that a run sheet builds on. */
