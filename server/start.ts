@@ -16,6 +16,7 @@ import { sweepConfirmations } from './services/confirmations'
 import { sweepDeletions } from './services/deletions'
 import { KeptUploads } from './services/kept-uploads'
 import { sweepSessions } from './services/sessions'
+import { sweepWorkspaces } from './services/workspace-deletion'
 import { createCompute } from './workers/compute'
 import { VERSION } from './version'
 
@@ -50,6 +51,7 @@ async function keepSweeping(app: App): Promise<() => void> {
     app.uploads.sweep()
     await app.blobs.sweep(new Date(app.now().getTime() - UNADOPTED_KEPT_MS))
     await sweepDeletions(app)
+    await sweepWorkspaces(app)
     await sweepSessions(app)
     await sweepAttempts(app)
     await sweepReservations(app)

@@ -28,12 +28,14 @@ export interface Deed {
 const deed = (kind: AuditKind, what: string): Deed => ({ kind, what })
 const own = (what: string): Deed => ({ kind: 'person', what, isOwn: true })
 
-/** Null: the route works something out, or changes only what somebody sees of it. */
+/** Also of reading, where what is read is everything. Null: the route works something out, or changes only what somebody sees of it. */
 export const DEEDS: Readonly<Record<string, Deed | null>> = {
   'POST /api/account/address': own('asked for a change of their own address'),
   'DELETE /api/account/identity': own('unlinked their own account from the identity provider'),
   'POST /api/account/identity': null,
   'PUT /api/account/mails': null,
+  // Written down by the service, without the address that it came from.
+  'DELETE /api/account': null,
   'DELETE /api/account/membership': { kind: 'workspace', what: 'left', isOwn: true },
   'POST /api/account/passkeys/challenge': null,
   'POST /api/account/passkeys': own('added a passkey of their own'),
@@ -102,6 +104,14 @@ export const DEEDS: Readonly<Record<string, Deed | null>> = {
   'DELETE /api/tokens/:id': deed('token', 'revoked'),
   'POST /api/tokens': deed('token', 'made'),
   'POST /api/workspaces': null,
+  'DELETE /api/workspaces/deletion': {
+    kind: 'workspace',
+    what: 'took back the deletion of the workspace',
+    isOwn: true,
+  },
+  'PUT /api/workspaces/deletion': { kind: 'workspace', what: 'asked for the deletion of the workspace', isOwn: true },
+  'GET /api/workspaces/export': { kind: 'workspace', what: 'exported the workspace', isOwn: true },
+  'POST /api/workspaces/import': { kind: 'workspace', what: 'sent the archive of another workspace', isOwn: true },
 }
 
 /** What the trail tells of signing in and out, which no address of a route says. */

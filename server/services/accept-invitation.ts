@@ -11,6 +11,7 @@ import type { Passwords } from './people'
 import { createAccount } from './people'
 import { secretHash } from './secrets'
 import { requirePassword } from './sign-in'
+import { joinArchivedPerson } from './workspace-import'
 
 /** The same for a link that is unknown, has expired, was used or taken back. */
 export async function openInvitation(app: App, tx: Db, secret: string) {
@@ -85,6 +86,8 @@ export async function acceptAs(app: App, tx: Db, invitation: InvitationRow, user
   return { userId, workspaceId }
 }
 
-/** Notes that it was accepted, and by whom. */
-export const settle = (app: App, tx: Db, { id }: InvitationRow, acceptedBy: string): Promise<void> =>
-  updateInvitation(tx, id, { acceptedBy, acceptedAt: app.now() })
+/** Notes that it was accepted, and by whom; what the archive of the workspace tells of the address is theirs. */
+export async function settle(app: App, tx: Db, { id, workspaceId, email }: InvitationRow, userId: string): Promise<void> {
+  await updateInvitation(tx, id, { acceptedBy: userId, acceptedAt: app.now() })
+  await joinArchivedPerson(tx, { workspaceId, email, userId })
+}

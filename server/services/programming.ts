@@ -61,7 +61,12 @@ export async function loadBench(app: App, row: EmbeddingRow): Promise<Bench> {
   }
 }
 
-export function layoutInput({ ising, embedding, machine }: Bench, settings: RunSheetSettings): LayoutInput {
+/** What is programmed, without what it is called. */
+export type Programmable = Pick<Bench, 'labels' | 'ising' | 'embedding'> & {
+  machine: Pick<CalibratedMachine, 'graph' | 'sheet'>
+}
+
+export function layoutInput({ ising, embedding, machine }: Programmable, settings: RunSheetSettings): LayoutInput {
   const { fieldSplit, chainCouplers, interactionCouplers } = settings
   return { ising, embedding, machine: machine.graph, fieldSplit, chainCouplers, interactionCouplers }
 }
@@ -92,7 +97,11 @@ export function ruleOf(strength: Strength, labels: readonly string[]): StrengthR
 }
 
 /** Chain strengths by a rule. @throws DomainError for a rule that cannot be used */
-export function strengthsOf(strength: Strength, { labels, ising }: Bench, layout: Layout): ChainStrengths {
+export function strengthsOf(
+  strength: Strength,
+  { labels, ising }: Pick<Bench, 'labels' | 'ising'>,
+  layout: Layout,
+): ChainStrengths {
   try {
     return chainStrengthsOf(ruleOf(strength, labels), layout, ising)
   } catch (error) {
@@ -113,7 +122,7 @@ export interface Programming {
 }
 
 /** Programmes an embedding with the settings of a run sheet. A pure function of stored things. */
-export function programmeBench(bench: Bench, settings: RunSheetSettings): Programming {
+export function programmeBench(bench: Programmable, settings: RunSheetSettings): Programming {
   const layout = layOut(layoutInput(bench, settings))
   const { perChain } = strengthsOf(settings.strength, bench, layout)
   const { ranges } = bench.machine.sheet

@@ -2,7 +2,7 @@ import type { TracePoint } from './embeddings'
 
 /** States of a job. A job never stays `running` without a living worker: see docs/decisions/jobs.md. */
 export type JobStatus = 'waiting' | 'running' | 'done' | 'failed' | 'cancelled'
-export type JobKind = 'capacity' | 'embedding' | 'reference' | 'rehearsal' | 'scan'
+export type JobKind = 'capacity' | 'embedding' | 'import' | 'reference' | 'rehearsal' | 'scan'
 
 export interface JobLogLine {
   at: string
@@ -19,7 +19,7 @@ export interface JobView {
   message: string
   /**
    * Kind-specific figures of the moment: `EmbeddingProgress` (embeddings.ts), `ReferenceProgress` (reference.ts), the
-   * reads of a rehearsal, or the points of a capacity measurement.
+   * reads of a rehearsal, the points of a capacity measurement, or `ImportedDetail` (archives.ts).
    */
   detail: Record<string, number | string | null | readonly TracePoint[]>
   /** How often the work was started. */

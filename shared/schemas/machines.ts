@@ -85,7 +85,7 @@ export const priceSchema = z.object({
   currency: z.string().regex(/^[A-Z]{3}$/, 'three capital letters, such as EUR'),
 })
 
-const sheetSchema = z.object({
+export const sheetSchema = z.object({
   defects: defectsSchema.prefault({}),
   ranges: rangesSchema.prefault({}),
   controlError: controlErrorSchema.prefault({}),

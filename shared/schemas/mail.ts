@@ -20,6 +20,7 @@ export type MailKind =
   | 'new address'
   | 'address changed'
   | 'sign-in changed'
+  | 'workspace deletion'
 
 export const isChosenMail = (kind: MailKind): kind is ChosenMailKind =>
   CHOSEN_MAIL_KINDS.some((chosen) => chosen === kind)

@@ -1,6 +1,6 @@
-import { and, eq, gt, isNull, lte } from 'drizzle-orm'
+import { and, eq, getTableColumns, gt, isNull, lte } from 'drizzle-orm'
 import type { Db } from '../client'
-import { confirmations, users } from '../schema'
+import { accountEmail, confirmations, users } from '../schema'
 
 export type ConfirmationRow = typeof confirmations.$inferSelect
 
@@ -12,7 +12,7 @@ export async function insertConfirmation(tx: Db, row: ConfirmationRow): Promise<
 export async function holdConfirmation(tx: Db, kind: ConfirmationRow['kind'], tokenHash: string, now: Date) {
   const isOpen = and(isNull(confirmations.usedAt), gt(confirmations.expiresAt, now))
   const rows = await tx
-    .select({ confirmation: confirmations, user: users })
+    .select({ confirmation: confirmations, user: { ...getTableColumns(users), email: accountEmail } })
     .from(confirmations)
     .innerJoin(users, eq(users.id, confirmations.userId))
     .where(and(eq(confirmations.tokenHash, tokenHash), eq(confirmations.kind, kind), isOpen))

@@ -2,7 +2,7 @@ import { and, count, desc, eq, inArray, isNull, lte, sql } from 'drizzle-orm'
 import type { Role } from '../../../shared/schemas/common'
 import type { MailState } from '../../../shared/schemas/mail'
 import type { Db } from '../client'
-import { mails, memberships, users } from '../schema'
+import { accountEmail, mails, memberships, users } from '../schema'
 
 export type MailRow = typeof mails.$inferSelect
 
@@ -19,7 +19,7 @@ export async function insertMails(tx: Db, rows: (typeof mails.$inferInsert)[]): 
 export async function addresseesOf(db: Db, workspaceId: string, userIds: readonly string[]): Promise<Addressee[]> {
   if (userIds.length === 0) return []
   return db
-    .select({ id: users.id, email: users.email })
+    .select({ id: users.id, email: accountEmail })
     .from(memberships)
     .innerJoin(users, eq(users.id, memberships.userId))
     .where(and(eq(memberships.workspaceId, workspaceId), inArray(users.id, [...userIds])))

@@ -1,6 +1,6 @@
-import { and, asc, eq } from 'drizzle-orm'
+import { and, asc, eq, getTableColumns } from 'drizzle-orm'
 import type { Db } from '../client'
-import { passkeys, users } from '../schema'
+import { accountEmail, passkeys, users } from '../schema'
 
 export type PasskeyRow = typeof passkeys.$inferSelect
 
@@ -20,7 +20,7 @@ export async function listPasskeys(db: Db, userId: string): Promise<PasskeyRow[]
 /** A passkey by the authenticator's id of it, with whose it is. */
 export async function findPasskey(db: Db, credentialId: string) {
   const rows = await db
-    .select({ passkey: passkeys, user: users })
+    .select({ passkey: passkeys, user: { ...getTableColumns(users), email: accountEmail } })
     .from(passkeys)
     .innerJoin(users, eq(users.id, passkeys.userId))
     .where(eq(passkeys.credentialId, credentialId))

@@ -1,20 +1,27 @@
-import { and, asc, count, eq, inArray, isNull } from 'drizzle-orm'
+import { and, asc, count, eq, inArray, isNotNull, isNull, lte } from 'drizzle-orm'
 import type { Person, Role } from '../../../shared/schemas/common'
 import type { Db } from '../client'
-import { installation, machines, memberships, problems, runSheets, users, workspaces } from '../schema'
+import { accountEmail, installation, machines, memberships, problems, runSheets, users, workspaces } from '../schema'
 
-export type UserRow = typeof users.$inferSelect
+/** Somebody with an account. */
+export type UserRow = typeof users.$inferSelect & { email: string }
+
+const isAccount = (row: typeof users.$inferSelect | undefined): row is UserRow =>
+  row !== undefined && row.email !== null
 
 export async function anyUser(db: Db): Promise<boolean> {
-  return (await db.select({ id: users.id }).from(users).limit(1)).length > 0
+  return (await db.select({ id: users.id }).from(users).where(isNotNull(users.email)).limit(1)).length > 0
 }
 
 export async function findUserByEmail(db: Db, email: string): Promise<UserRow | undefined> {
-  return (await db.select().from(users).where(eq(users.email, email)))[0]
+  const row = (await db.select().from(users).where(eq(users.email, email)))[0]
+  return isAccount(row) ? row : undefined
 }
 
+/** The account; undefined also for somebody who has none. */
 export async function findUser(db: Db, id: string): Promise<UserRow | undefined> {
-  return (await db.select().from(users).where(eq(users.id, id)))[0]
+  const row = (await db.select().from(users).where(eq(users.id, id)))[0]
+  return isAccount(row) ? row : undefined
 }
 
 /** Names of the people with these ids. */
@@ -50,6 +57,16 @@ export async function updateUser(
 
 export async function insertWorkspace(db: Db, workspace: { id: string; name: string; createdAt: Date }): Promise<void> {
   await db.insert(workspaces).values(workspace)
+}
+
+export async function setWorkspaceDeletion(tx: Db, id: string, deletesAt: Date | null): Promise<void> {
+  await tx.update(workspaces).set({ deletesAt }).where(eq(workspaces.id, id))
+}
+
+/** Ids of the workspaces whose deletion is due. */
+export async function workspacesDue(db: Db, now: Date): Promise<string[]> {
+  const rows = await db.select({ id: workspaces.id }).from(workspaces).where(lte(workspaces.deletesAt, now))
+  return rows.map(({ id }) => id)
 }
 
 export async function findWorkspace(db: Db, id: string) {
@@ -123,7 +140,7 @@ export async function listMembers(db: Db, workspaceId: string) {
     .select({
       id: users.id,
       name: users.name,
-      email: users.email,
+      email: accountEmail,
       roles: memberships.roles,
       since: memberships.createdAt,
     })
@@ -131,6 +148,16 @@ export async function listMembers(db: Db, workspaceId: string) {
     .innerJoin(users, eq(users.id, memberships.userId))
     .where(eq(memberships.workspaceId, workspaceId))
     .orderBy(asc(users.name))
+}
+
+/** Who people are, members or not. */
+export async function namesOf(db: Db, ids: readonly string[]) {
+  if (ids.length === 0) return []
+  return db
+    .select({ id: users.id, name: users.name, email: users.email })
+    .from(users)
+    .where(inArray(users.id, [...ids]))
+    .orderBy(asc(users.name), asc(users.id))
 }
 
 /** How many of each there are, for the rail. */
@@ -173,16 +200,4 @@ export async function takeFact(db: Db, key: string): Promise<boolean> {
 
 export async function setFact(db: Db, key: string, value: string): Promise<void> {
   await db.insert(installation).values({ key, value }).onConflictDoUpdate({ target: installation.key, set: { value } })
-}
-
-/** Removes a workspace with everything in it, and the accounts that belong nowhere else. */
-export async function removeWorkspace(db: Db, id: string): Promise<void> {
-  await db.transaction(async (tx) => {
-    const members = await tx.select({ id: memberships.userId }).from(memberships).where(eq(memberships.workspaceId, id))
-    // Embeddings refer to machines without cascade, so that a machine in use cannot vanish: problems go first.
-    await tx.delete(problems).where(eq(problems.workspaceId, id))
-    await tx.delete(workspaces).where(eq(workspaces.id, id))
-    for (const { id: userId } of members)
-      if (!(await firstWorkspaceOf(tx, userId))) await tx.delete(users).where(eq(users.id, userId))
-  })
 }

@@ -1,3 +1,4 @@
+import { sql } from 'drizzle-orm'
 import { bigint, boolean, index, integer, jsonb, pgTable, primaryKey, text, uniqueIndex } from 'drizzle-orm/pg-core'
 import type { Role } from '../../../shared/schemas/common'
 import type { ChosenMailKind } from '../../../shared/schemas/mail'
@@ -7,8 +8,8 @@ export const users = pgTable(
   'users',
   {
     id: id(),
-    /** Lower case. */
-    email: text().notNull(),
+    /** Lower case. Null without an account: known from the archive of a workspace only, or removed. */
+    email: text(),
     name: text().notNull(),
     /** Null for somebody who signs in by passkey or through an identity provider only. */
     passwordHash: text(),
@@ -17,7 +18,34 @@ export const users = pgTable(
   (table) => [uniqueIndex().on(table.email)],
 )
 
-export const workspaces = pgTable('workspaces', { id: id(), name: text().notNull(), createdAt: createdAt() })
+/** The address of somebody who can only be a person with an account: a member, whoever a link was sent to. */
+export const accountEmail = sql<string>`${users.email}`
+
+export const workspaces = pgTable('workspaces', {
+  id: id(),
+  name: text().notNull(),
+  createdAt: createdAt(),
+  /** When it is deleted for good; null while nobody asked for that. */
+  deletesAt: moment(),
+})
+
+/** People that the archive of a workspace told of: they have no account until an invitation finds them by their address. */
+export const archivedPeople = pgTable(
+  'archived_people',
+  {
+    userId: text()
+      .primaryKey()
+      .references(() => users.id, { onDelete: 'cascade' }),
+    workspaceId: text()
+      .notNull()
+      .references(() => workspaces.id, { onDelete: 'cascade' }),
+    /** Lower case; null for somebody who had no account there either. */
+    email: text(),
+    /** Of a member at the time; empty for others. */
+    roles: text().array().$type<Role[]>().notNull(),
+  },
+  (table) => [index().on(table.workspaceId, table.email)],
+)
 
 export const memberships = pgTable(
   'memberships',

@@ -10,7 +10,7 @@ import { startReferenceSchema } from '../../../shared/schemas/reference'
 import { uploadReturnSchema } from '../../../shared/schemas/returns'
 import { createRunSheetSchema } from '../../../shared/schemas/run-sheets'
 import type { Actor, App } from '../../app'
-import { anyUser, keepFact, readFact, removeWorkspace, setFact, takeFact } from '../../database/repositories/people'
+import { anyUser, keepFact, readFact, setFact, takeFact } from '../../database/repositories/people'
 import { findJob } from '../../database/repositories/jobs'
 import { grantTime } from '../budget'
 import { startEmbedding } from '../embeddings'
@@ -29,6 +29,7 @@ import { uploadReturn } from '../returns'
 import { asStoredFile } from '../stored-files'
 import { handOver } from '../review'
 import { benchOf, createRunSheet, runSheetRow } from '../run-sheets'
+import { deleteWorkspaceForGood } from '../workspace-deletion'
 import type { DemoFile } from './problems'
 import { DEMO_FILES } from './problems'
 
@@ -44,7 +45,7 @@ export async function seedDemo(app: App, passwords: Passwords): Promise<void> {
   const earlier = await readFact(app.db, FACT)
   if (earlier === 'seeded') return noteSeeded(app)
   await takeFact(app.db, SEEDED_AT)
-  if (earlier) await removeWorkspace(app.db, earlier)
+  if (earlier) await app.db.transaction((tx) => deleteWorkspaceForGood(app, tx, earlier))
   else if (await anyUser(app.db)) return
   const cast = await seedPeople(app, passwords)
   await seedWork(app, cast)
