@@ -67,6 +67,6 @@ export function useApi() {
     post: <T>(url: string, body: Body = {}) => send<T>('POST', url, body),
     put: <T>(url: string, body: Body) => send<T>('PUT', url, body),
     patch: <T>(url: string, body: Body) => send<T>('PATCH', url, body),
-    remove: <T = unknown>(url: string) => send<T>('DELETE', url),
+    remove: <T = unknown>(url: string, body?: Body) => send<T>('DELETE', url, body),
   }
 }

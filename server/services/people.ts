@@ -51,7 +51,7 @@ export async function sessionView(app: App, actor: Actor, roles: readonly Role[]
   if (!user || !workspace) throw new DomainError('unauthenticated', 'session.ended', 'This account no longer exists.')
   return {
     person: { id: user.id, name: user.name, email: user.email },
-    workspace: { id: workspace.id, name: workspace.name },
+    workspace: { id: workspace.id, name: workspace.name, deletesAt: workspace.deletesAt?.toISOString() ?? null },
     workspaces: await listWorkspacesOf(app.db, user.id),
     roles: [...roles],
     reviewsFor: await awayFor(app.db, actor.workspaceId, user.id, app.now()),

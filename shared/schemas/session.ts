@@ -34,7 +34,8 @@ export const goToWorkspaceSchema = z.object({ workspaceId: idSchema })
 
 export interface SessionView {
   person: { id: string; name: string; email: string }
-  workspace: { id: string; name: string }
+  /** `deletesAt`: when it is deleted for good, where that was asked for. */
+  workspace: { id: string; name: string; deletesAt: string | null }
   /** All that the person belongs to, by name. */
   workspaces: { id: string; name: string }[]
   roles: Role[]

@@ -12,7 +12,11 @@ import { bundleOf } from '../../server/services/bundle'
 import { seedDemo } from '../../server/services/demo/seed'
 import { invite } from '../../server/services/invitations'
 import { handOver } from '../../server/services/review'
-import { cancelJob } from '../../server/services/jobs'
+import type { JobRow } from '../../server/database/repositories/jobs'
+import { startRehearsal } from '../../server/services/rehearsals'
+import { duplicateRunSheet } from '../../server/services/run-sheet-copies'
+import { addRemark } from '../../server/services/run-sheet-remarks'
+import { rehearseSchema } from '../../shared/schemas/run-sheets'
 import { asStoredFile } from '../../server/services/stored-files'
 import { exportWorkspace, workspaceView } from '../../server/services/workspace-export'
 import { archivedMembers, startImport } from '../../server/services/workspace-import'
@@ -124,6 +128,11 @@ beforeAll(async () => {
   await seedDemo(from.app, plainPasswords)
   owner = await seededActor(from.app)
   await grantTime(from.app, owner, grantSchema.parse({ seconds: 2, remark: 'December' }))
+  const [sheet] = await rowsOf(from.app, 'run_sheets', `state = 'in review'`)
+  const [developer] = await rowsOf(from.app, 'users', `email = 'developer@brackwater.example'`)
+  const copy = await duplicateRunSheet(from.app, owner, String(sheet!.id))
+  await addRemark(from.app, owner, copy.id, `@[${String(developer!.id)}] shorter, please`)
+  await startRehearsal(from.app, owner, copy.id, rehearseSchema.parse({ reads: 50, sweeps: 10 }))
   for (const { id } of await rowsOf(from.app, 'jobs')) await from.finished(id as string)
   archive = await exported(from.app, owner)
   to = await startTestApp(2)
@@ -229,7 +238,7 @@ describe('a forged or damaged archive is refused, saying why, and nothing of it 
     [
       'an array that is missing',
       /is missing/,
-      (files) => void delete files[blobPathsOf(files, 'returns', 'samplesBlobId')[0]!],
+      (files) => void Reflect.deleteProperty(files, blobPathsOf(files, 'returns', 'samplesBlobId')[0]!),
     ],
     [
       'samples cut short',
@@ -393,14 +402,17 @@ describe('people of an imported workspace', () => {
 it('a cancelled import keeps nothing', async () => {
   const other = await startTestApp(1)
   try {
-    const jobId = await asStoredFile('workspace.zip', readFileSync(archive), (file) =>
-      startImport(other.app, other.actor, file),
-    )
-    await cancelJob(other.app, other.actor, jobId, JOB_KINDS)
-    const job = await other.finished(jobId)
-    expect(job.status).toBe('cancelled')
-    expect(await rowsOf(other.app, 'workspaces')).toHaveLength(1)
-    expect(await rowsOf(other.app, 'blobs', 'adopted')).toEqual([])
+    const { app } = other
+    const subjectId = await app.blobs.writeFile(archive)
+    await app.db.transaction((tx) => app.blobs.adopt(tx, subjectId))
+    const job = { subjectId, createdBy: other.actor.userId } as JobRow
+    const nothing = () => {}
+    const context = { job, signal: AbortSignal.abort(), report: nothing, log: nothing }
+    const outcome = await JOB_KINDS.import.run(app, context)
+    await app.db.transaction((tx) => outcome.save(tx))
+    expect(outcome.status).toBe('cancelled')
+    expect(await rowsOf(app, 'workspaces')).toHaveLength(1)
+    expect(await rowsOf(app, 'blobs', 'adopted')).toEqual([])
   } finally {
     await other.close()
   }

@@ -10,8 +10,11 @@ const FIELD_BYTES = 1000
  */
 export default defineSessionRoute('member', (event, { app, userId, workspaceId }) =>
   withStoredUpload(event, { limitBytes: ARCHIVE_LIMITS.file, fieldBytes: FIELD_BYTES }, async (_fields, file) => {
-    const jobId = await startImport(app, { userId, workspaceId }, requireFile({ file }))
-    setResponseStatus(event, 202)
-    return { jobId }
+    const stored = requireFile({ file })
+    return answerWithProgress<never, { jobId: string }>(event, async () => {
+      const jobId = await startImport(app, { userId, workspaceId }, stored)
+      if (!event.node.res.headersSent) setResponseStatus(event, 202)
+      return { jobId }
+    })
   }),
 )

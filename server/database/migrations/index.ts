@@ -368,5 +368,22 @@ export const MIGRATIONS = [
       "\nCREATE INDEX \"stand_ins_workspace_id_ends_at_index\" ON \"stand_ins\" USING btree (\"workspace_id\",\"ends_at\");",
       "\nALTER TABLE \"run_sheet_remarks\" ADD CONSTRAINT \"run_sheet_remarks_for_user_id_users_id_fk\" FOREIGN KEY (\"for_user_id\") REFERENCES \"public\".\"users\"(\"id\") ON DELETE no action ON UPDATE no action;"
     ]
+  },
+  {
+    "tag": "0017_data_rights",
+    "folderMillis": 1796249461014,
+    "hash": "c8820ebe80554c14ac3399c56861ce0ebf1ef3776fc08d1ee17e09e46f0205dd",
+    "bps": true,
+    "sql": [
+      "CREATE TABLE \"archived_people\" (\n\t\"user_id\" text PRIMARY KEY NOT NULL,\n\t\"workspace_id\" text NOT NULL,\n\t\"email\" text,\n\t\"roles\" text[] NOT NULL\n);\n",
+      "\nALTER TABLE \"users\" ALTER COLUMN \"email\" DROP NOT NULL;",
+      "\nALTER TABLE \"workspaces\" ADD COLUMN \"deletes_at\" timestamp with time zone;",
+      "\nALTER TABLE \"archived_people\" ADD CONSTRAINT \"archived_people_user_id_users_id_fk\" FOREIGN KEY (\"user_id\") REFERENCES \"public\".\"users\"(\"id\") ON DELETE cascade ON UPDATE no action;",
+      "\nALTER TABLE \"archived_people\" ADD CONSTRAINT \"archived_people_workspace_id_workspaces_id_fk\" FOREIGN KEY (\"workspace_id\") REFERENCES \"public\".\"workspaces\"(\"id\") ON DELETE cascade ON UPDATE no action;",
+      "\nCREATE INDEX \"archived_people_workspace_id_email_index\" ON \"archived_people\" USING btree (\"workspace_id\",\"email\");",
+      "\nCREATE FUNCTION \"refuse_change_of_audit_entry\"() RETURNS trigger LANGUAGE plpgsql AS $$\nBEGIN\n\tIF TG_OP = 'DELETE' AND NOT EXISTS (SELECT 1 FROM \"workspaces\" WHERE \"id\" = OLD.\"workspace_id\") THEN\n\t\tRETURN OLD;\n\tEND IF;\n\t-- A person who is removed is no longer named; what they did, to what and when stays as it was.\n\tIF TG_OP = 'UPDATE' AND current_setting('espalier.removing_person', true) = 'on'\n\t\tAND to_jsonb(NEW) - 'thing' - 'address' = to_jsonb(OLD) - 'thing' - 'address' THEN\n\t\tRETURN NEW;\n\tEND IF;\n\tRAISE EXCEPTION 'entries of % are only ever added', TG_TABLE_NAME;\nEND\n$$;",
+      "\nDROP TRIGGER \"audit_entries_only_added\" ON \"audit_entries\";",
+      "\nCREATE TRIGGER \"audit_entries_only_added\" BEFORE UPDATE OR DELETE ON \"audit_entries\" FOR EACH ROW EXECUTE FUNCTION \"refuse_change_of_audit_entry\"();\n"
+    ]
   }
 ]

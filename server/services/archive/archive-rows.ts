@@ -1,7 +1,7 @@
 import type { WorkRow, WorkTable } from '../../database/repositories/workspace-rows'
 import { columnsOf, referencesOf, WORK_TABLE_NAMES } from '../../database/repositories/workspace-rows'
 import type { Archive } from './open-archive'
-import { Presence, refersToItself } from './presence'
+import { mentionsIn, Presence, refersToItself } from './presence'
 import { notReadable } from './read-rows'
 
 export type ArchiveRows = Readonly<Record<WorkTable, readonly WorkRow[]>>
@@ -27,6 +27,8 @@ function requireInside(rows: ArchiveRows, { manifest }: Archive): void {
                 : present.has(reference, row)
         if (!isInside) throw notReadable(`a row of ${name} refers by ${columns.join(', ')} to what is not in it`)
       }
+      if (!mentionsIn(row).every((id) => people.has(id as string)))
+        throw notReadable('a remark mentions somebody who is not in it')
       if (!ofOwn) present.add(name, row)
     }
   }

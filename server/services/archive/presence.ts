@@ -44,4 +44,8 @@ export const peopleIn = (name: WorkTable, row: WorkRow): string[] =>
   referencesOf(name)
     .filter(({ to }) => to === 'users')
     .map(({ columns }) => row[columns[0]!])
+    .concat(mentionsIn(row))
     .filter((id) => typeof id === 'string')
+
+/** Ids of the people whom a remark mentions; other rows mention nobody. */
+export const mentionsIn = ({ mentions }: WorkRow): unknown[] => (Array.isArray(mentions) ? mentions : [])

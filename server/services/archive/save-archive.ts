@@ -17,6 +17,7 @@ import {
 import { FOUNDER_ROLES } from '../people'
 import type { ArchiveRows } from './archive-rows'
 import type { Manifest } from './manifest'
+import { mentionsIn } from './presence'
 
 export interface ReadArchive {
   readonly manifest: Manifest
@@ -58,12 +59,21 @@ async function takePeople(app: App, tx: Db, manifest: Manifest, importerId: stri
 const ownReferences = (name: WorkTable): string[] =>
   referencesOf(name).flatMap(({ to, columns }) => (to === name ? columns : []))
 
+/** A remark with the ids of here in the place of those that it mentions people by. */
+function mentionedHere(remark: WorkRow, people: Map<string, string>): WorkRow {
+  const mentioned = mentionsIn(remark) as string[]
+  const said = String(remark.text)
+  const text = mentioned.reduce((words, id) => words.replaceAll(`@[${id}]`, `@[${people.get(id)!}]`), said)
+  return { text, mentions: mentioned.map((id) => people.get(id)!) }
+}
+
 /** The row as it is here: with the people and the arrays of this database, its references to its own table still open. */
 function rowHere(name: WorkTable, row: WorkRow, blobIds: ReadonlyMap<string, string>, people: Map<string, string>) {
   const here = withBlobs(name, row, blobIds)
   for (const { to, columns } of referencesOf(name))
     if (to === 'users') here[columns[0]!] = people.get(row[columns[0]!] as string) ?? null
   for (const column of ownReferences(name)) here[column] = null
+  if (name === 'runSheetRemarks') Object.assign(here, mentionedHere(here, people))
   if (name === 'auditEntries' && row.kind === 'person') here.thingId = people.get(row.thingId as string) ?? row.thingId
   return here
 }
