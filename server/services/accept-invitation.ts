@@ -87,7 +87,12 @@ export async function acceptAs(app: App, tx: Db, invitation: InvitationRow, user
 }
 
 /** Notes that it was accepted, and by whom; what the archive of the workspace tells of the address is theirs. */
-export async function settle(app: App, tx: Db, { id, workspaceId, email }: InvitationRow, userId: string): Promise<void> {
+export async function settle(
+  app: App,
+  tx: Db,
+  { id, workspaceId, email }: InvitationRow,
+  userId: string,
+): Promise<void> {
   await updateInvitation(tx, id, { acceptedBy: userId, acceptedAt: app.now() })
   await joinArchivedPerson(tx, { workspaceId, email, userId })
 }
