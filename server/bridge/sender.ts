@@ -48,12 +48,15 @@ async function withToken(app: App, call: BridgeCallRow, { bridge }: SheetToSend)
   return { token, expiresAt }
 }
 
+/** The same at every try, another when somebody sends it again: a bridge runs each once. */
+const sendingId = ({ id, earlierAttempts }: BridgeCallRow): string => `${id}-${earlierAttempts}`
+
 /** The body of a call that runs a sheet. */
 function bodyOf(call: BridgeCallRow, { sheet, machine, bundle }: SheetToSend, site: string, token: Token): string {
   const at = `${site}/api/bridge-calls/${call.id}`
   return JSON.stringify({
     event: 'run',
-    call: call.id,
+    call: sendingId(call),
     machine: { name: machine.name },
     runSheet: { id: sheet.id, number: sheet.number, name: sheet.name, reads: sheet.settings.reads },
     return: {
@@ -71,7 +74,7 @@ async function answerOf(app: App, call: BridgeCallRow): Promise<OutboundAnswer |
     const sending = await sheetToSend(app, call)
     const token = await withToken(app, call, sending)
     const { site } = postOf(await readFact(app.db, POST_FACT))
-    return await callBridge(app, sending.bridge, call.id, bodyOf(call, sending, site, token))
+    return await callBridge(app, sending.bridge, sendingId(call), bodyOf(call, sending, site, token))
   } catch (error) {
     if (error instanceof Overtaken) throw error
     return error instanceof Error ? error : new Error(String(error))

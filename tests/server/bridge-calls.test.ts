@@ -90,8 +90,10 @@ interface Run {
 }
 const sent = (index = -1): Run => JSON.parse(bridge.received.at(index)!.body) as Run
 
+const callIn = ({ return: { samplesUrl } }: Run): string => /bridge-calls\/([\w-]+)\/samples$/.exec(samplesUrl)![1]!
+
 async function give(run: Run, bytes = SAMPLES, later = app, options: object = {}): Promise<BridgeReturn> {
-  const call = await callOfToken(later, run.call, run.return.token)
+  const call = await callOfToken(later, callIn(run), run.return.token)
   return asStoredFile('samples.csv', bytes, (file) => takeSamples(later, call, file, uploadReturnSchema.parse(options)))
 }
 /** Letters on bridges that say something. */
@@ -204,6 +206,8 @@ describe('a bridge that does not take it', () => {
     bridge.answer = usual
     await sendDueCalls(at(2))
     expect(await callOf(id)).toMatchObject({ state: 'taken' })
+    expect(sent(1).call).toBe(sent(0).call)
+    expect(sent().call).not.toBe(sent(0).call)
     // Every try has its own token; any of them opens the call, and the first that is used ends it.
     const first = sent(0)
     expect((await give(first)).reads).toBe(2)
@@ -280,7 +284,7 @@ describe('samples that a bridge sends back', () => {
     await sendDueCalls(app)
     const [one, other] = [sent(0), sent(1)]
     for (const token of [undefined, 'x', other.return.token, one.return.token.slice(0, -1)])
-      await expect(callOfToken(app, one.call, token)).rejects.toThrow('no token of this call')
+      await expect(callOfToken(app, callIn(one), token)).rejects.toThrow('no token of this call')
     await expect(callOfToken(app, 'unknown', one.return.token)).rejects.toThrow('no token of this call')
   })
 
@@ -316,7 +320,7 @@ describe('a bridge that refuses a run', () => {
   it('says why, and it can be sent again', async () => {
     const id = await issued()
     await sendDueCalls(app)
-    const call = () => callOfToken(app, sent().call, sent().return.token)
+    const call = () => callOfToken(app, callIn(sent()), sent().return.token)
     await takeRefusal(app, await call(), 'The machine is cooling down.')
     await takeRefusal(app, await call(), 'The machine is cooling down.')
     await expect(takeRefusal(app, await call(), 'Something else.')).rejects.toThrow('refused before')

@@ -1,14 +1,16 @@
-import { execFile, spawnSync } from 'node:child_process'
+import { execFile, spawn, spawnSync } from 'node:child_process'
 import { resolve } from 'node:path'
 import { promisify } from 'node:util'
 import { afterAll, beforeAll, expect, it } from 'vitest'
 import { Client } from '../support/client'
-import { startDemo } from '../support/demo'
+import { seededFolder } from '../support/folders'
 import type { RunningServer } from '../support/server'
+import { freePort, startServer, until } from '../support/server'
 
 const folder = resolve(import.meta.dirname, '../../docs/scripts')
 const runs = (command: string, ...args: string[]): boolean => spawnSync(command, args).status === 0
 const hasCurl = runs('bash', '-c', 'command -v curl awk sed od')
+const hasPython = runs('python3', '-c', '')
 const hasNumPy = runs('python3', '-c', 'import numpy')
 
 let server: RunningServer
@@ -20,7 +22,7 @@ const tokenOf = async (role: string): Promise<string> => {
 }
 
 beforeAll(async () => {
-  server = await startDemo()
+  server = await startServer({ DEMO: 'true', DATA_DIR: seededFolder(), BRIDGE_PRIVATE_ADDRESSES: '127.0.0.1' })
   tokens = { ESPALIER_TOKEN: await tokenOf('developer'), ESPALIER_REVIEWER_TOKEN: await tokenOf('reviewer') }
 })
 afterAll(() => server?.stop())
@@ -72,3 +74,37 @@ it.skipIf(!hasNumPy)('says who has to approve where there is no token of a revie
   expect((await reviewer.post(`/api/run-sheets/${id}/approve`, {})).status).toBe(200)
   expect(await output('python3', 'run.py', { ESPALIER_TOKEN, RUN_SHEET: id! })).toMatch(/^Energy -\d/)
 })
+
+type Sheet = { state: string; call: { state: string } | null; returns: { reads: number; byBridge: boolean }[] }
+type Item = { id: string; state?: string; name: string }
+
+it.skipIf(!hasPython)(
+  'sends a run sheet to docs/scripts/bridge.py and gets its samples back (needs Python 3)',
+  async () => {
+    const [developer, reviewer, steward] = await Promise.all(
+      ['developer', 'reviewer', 'steward'].map((name) => Client.signedIn(server.url, name)),
+    )
+    const { items: machines } = (await steward!.get<{ items: Item[] }>('/api/machines')).body
+    const bridgePath = `/api/machines/${machines.find(({ name }) => name === 'Juniper')!.id}/bridge`
+    const port = await freePort()
+    const own = { kind: 'own', url: `http://127.0.0.1:${port}/` }
+    const { made } = (await steward!.call<{ made: { secret: string } }>('PUT', bridgePath, own)).body
+    const env = { ...process.env, BRIDGE_SECRET: made.secret, BRIDGE_PORT: String(port) }
+    const bridge = spawn('python3', [resolve(folder, 'bridge.py')], { env, stdio: 'ignore' })
+    const tried = async () => (await steward!.post<{ isAnswered: boolean }>(`${bridgePath}/test`)).body.isAnswered
+    try {
+      await until(tried, 20, 'an answer of the bridge')
+      const refused = await fetch(own.url, { method: 'POST', body: '{"event":"test"}' })
+      expect(refused.status).toBe(401)
+      const { items } = (await reviewer!.get<{ items: Item[] }>('/api/run-sheets')).body
+      const { id } = items.find(({ state }) => state === 'in review')!
+      await reviewer!.post(`/api/run-sheets/${id}/approve`, {})
+      expect((await developer!.post(`/api/run-sheets/${id}/issue`, { byBridge: true })).status).toBe(200)
+      const shown = async () => (await developer!.get<Sheet>(`/api/run-sheets/${id}`)).body
+      await until(async () => (await shown()).state === 'returned', 60, 'samples by the bridge')
+      expect(await shown()).toMatchObject({ call: { state: 'returned' }, returns: [{ reads: 400, byBridge: true }] })
+    } finally {
+      bridge.kill()
+    }
+  },
+)

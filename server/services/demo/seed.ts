@@ -12,6 +12,7 @@ import { createRunSheetSchema } from '../../../shared/schemas/run-sheets'
 import type { Actor, App } from '../../app'
 import { anyUser, keepFact, readFact, setFact, takeFact } from '../../database/repositories/people'
 import { findJob } from '../../database/repositories/jobs'
+import { saveBridge } from '../bridges'
 import { grantTime } from '../budget'
 import { startEmbedding } from '../embeddings'
 import { SEEDED_AT } from '../first-steps'
@@ -138,6 +139,7 @@ async function seedMachines(app: App, steward: Actor): Promise<{ alder: string; 
     remark: 'The laboratory swapped an amplifier on the left edge.',
   })
   const juniper = await create('Juniper', note, { kind: 'zephyr', m: 4, t: 4 }, 12, { A: 8.4, B: 12.6 })
+  await saveBridge(app, steward, juniper.id, { kind: 'rehearsal', url: null, isOn: true })
   return { alder: alder.id, juniper: juniper.id }
 }
 

@@ -16,6 +16,7 @@ export async function prepareStates(url: string): Promise<void> {
   await prepareProblems(developer)
   const { small, machine, embedding } = await prepareEmbeddings(developer, steward)
   await prepareRunSheets(developer, reviewer, embedding)
+  await prepareBridges(developer, reviewer, steward, machine, embedding)
   await prepareBroken(developer, steward, small, machine)
   await preparePeople(url, developer, reviewer)
   await created(developer.post('/api/tokens', { name: 'nightly rehearsals', role: 'developer' }))
@@ -180,6 +181,33 @@ async function preparePeople(url: string, developer: Client, reviewer: Client): 
   const draft = sheets.items.find(({ state }) => state === 'draft')!
   const remark = `Is the qubit back, @[${steward.id}]?`
   await created(developer.post(`/api/run-sheets/${draft.id}/remarks`, { remark }))
+}
+
+/** A run sheet that its bridge cannot be sent, and one that the built-in bridge rehearsed. */
+async function prepareBridges(
+  developer: Client,
+  reviewer: Client,
+  steward: Client,
+  machineId: string,
+  embedding: string,
+): Promise<void> {
+  const issued = async (name: string, bridge: object, state: string): Promise<void> => {
+    await created(steward.call('PUT', `/api/machines/${machineId}/bridge`, bridge), 200)
+    const id = await runSheet(developer, embedding, name, [
+      [developer, 'submit', 'For the bridge.'],
+      [reviewer, 'approve', ''],
+    ])
+    await created(developer.post(`/api/run-sheets/${id}/issue`, { byBridge: true }), 200)
+    await until(async () => {
+      const { body } = await developer.get<{ call: { state: string } }>(`/api/run-sheets/${id}`)
+      return body.call.state === state
+    })
+  }
+  await issued('By the built-in bridge', { kind: 'rehearsal' }, 'returned')
+  // No call leaves this machine: the address is not public.
+  await issued('Not taken', { kind: 'own', url: 'https://127.0.0.1/runs' }, 'given up')
+  await created(steward.post(`/api/machines/${machineId}/bridge/secret`))
+  await created(steward.post(`/api/machines/${machineId}/bridge/test`), 200)
 }
 
 /** A new calibration takes a qubit from an embedding that a run sheet builds on. */
