@@ -53,6 +53,8 @@ export const SAMPLES: Record<string, Sample> = {
   'GET /api/invited/{secret}': { status: 404 },
   'POST /api/invited/{secret}': { json: { password: 'a long one, not guessed' }, status: 404 },
   'GET /api/openapi.json': { status: 200 },
+  'GET /api/routes': { status: 200 },
+  'GET /api/routes/{id}': { status: 404 },
   'GET /api/schemas/problem.json': { status: 200 },
   'GET /api/schemas/samples.json': { status: 200 },
   'DELETE /api/session': { status: 200 },

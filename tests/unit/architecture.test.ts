@@ -83,6 +83,8 @@ describe('the house', () => {
       'resets/[secret].get.ts',
       'resets/[secret].post.ts',
       'resets/index.post.ts',
+      'routes/[id].get.ts',
+      'routes/index.get.ts',
       'schemas/problem.json.get.ts',
       'schemas/samples.json.get.ts',
       'session/passkey.post.ts',
