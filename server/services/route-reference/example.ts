@@ -6,6 +6,7 @@ const FORMATS: Record<string, string> = {
   base64url: 'AAAA',
   email: 'name@example.org',
   uuid: '00000000-0000-4000-8000-000000000000',
+  date: '2030-01-31',
   'date-time': '2030-01-31T12:00:00Z',
 }
 

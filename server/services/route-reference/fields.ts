@@ -13,7 +13,13 @@ const TYPES: Record<string, string> = {
   boolean: 'true or false',
   null: 'null',
 }
-const FORMATS: Record<string, string> = { email: 'e-mail address', uuid: 'UUID', 'date-time': 'time, ISO 8601 UTC' }
+const FORMATS: Record<string, string> = {
+  base64url: 'bytes, base64url',
+  date: 'day, ISO 8601',
+  email: 'e-mail address',
+  uuid: 'UUID',
+  'date-time': 'time, ISO 8601 UTC',
+}
 
 const plural = (type: string): string => type.replace(/^(object|number|whole number|list)\b/, '$1s')
 
