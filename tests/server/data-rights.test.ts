@@ -10,7 +10,7 @@ import type { TestApp } from '../support/app'
 import { startTestApp } from '../support/app'
 import { newMember, plainPasswords } from '../support/people'
 
-const SITE = { origin: 'http://localhost', hostname: 'localhost' }
+const SITE = { origin: 'http://localhost', hostname: 'localhost', address: 'http://localhost' }
 const DAY_MS = 24 * 60 * 60 * 1000
 
 let test: TestApp

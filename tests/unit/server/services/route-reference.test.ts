@@ -39,7 +39,9 @@ describe('the reference of the routes', () => {
     expect(typeOf({ anyOf: [{ type: 'string' }, { type: 'null' }] })).toBe('text or null')
     expect(limitsOf({ type: 'integer', minimum: 0, maximum: Number.MAX_SAFE_INTEGER })).toBe('at least 0')
     expect(limitsOf({ anyOf: [{ type: 'string', maxLength: 9 }, { type: 'null' }] })).toBe('at most 9 characters')
-    const shapes = { anyOf: [{ properties: { a: {} } }, { properties: { b: { properties: { c: {} } } } }] }
+    const shapes: Parameters<typeof fieldsOf>[0] = {
+      anyOf: [{ properties: { a: {} } }, { properties: { b: { properties: { c: {} } } } }],
+    }
     expect(fieldsOf(shapes).map(({ name, depth }) => `${depth}${name}`)).toEqual(['0a', '0b', '1c'])
   })
 
