@@ -167,11 +167,12 @@ class RouteReader {
     const set = this.named('setResponseHeader').flatMap((call) =>
       stringsIn(call.arguments[1])[0] === 'content-type' ? stringsIn(call.arguments[2]) : [],
     )
+    const packed = this.named('sendPacked').flatMap((call) => stringsIn(call.arguments[1]))
     const streams = [
       ...(this.named('createEventStream').length > 0 ? ['text/event-stream'] : []),
       ...(this.named('answerWithProgress').length > 0 ? ['application/x-ndjson'] : []),
     ]
-    return [...new Set([...sent, ...set.map((type) => type.split(';')[0]!), ...streams])]
+    return [...new Set([...sent, ...packed, ...set.map((type) => type.split(';')[0]!), ...streams])]
   }
 }
 

@@ -213,6 +213,7 @@ describe('every route', () => {
       (route) => changes(route) && (route.allowed === 'member' || route.allowed.includes('reader')),
     )
     expect(open.map(({ name }) => name).sort()).toEqual([
+      'DELETE /api/account',
       'DELETE /api/account/identity',
       'DELETE /api/account/membership',
       'DELETE /api/account/passkeys/{id}',
@@ -230,6 +231,7 @@ describe('every route', () => {
       'POST /api/run-sheets/{id}/spins',
       'POST /api/tokens',
       'POST /api/workspaces',
+      'POST /api/workspaces/import',
       'PUT /api/account/mails',
       'PUT /api/account/password',
       'PUT /api/session/workspace',

@@ -15,7 +15,7 @@ it('lets the first visitor create the owner with the code on the console, once',
   const code = await until(() => /one-time code: (\S+)/.exec(server!.output())?.[1], 10, 'the code')
   expect(server.output()).toContain(`Espalier is ready: ${server.url}`)
   const visitor = new Client(server.url)
-  const bare = { setupNeeded: true, demo: false, sendsMail: false, workspace: null }
+  const bare = { setupNeeded: true, demo: false, sendsMail: false, workspace: null, provider: null }
   expect((await visitor.get('/api/entrance')).body).toEqual(bare)
   const person = { workspace: 'Test works', name: 'Ann', email: 'Ann@Example.org', password: 'long enough a password' }
   expect((await visitor.post('/api/setup', { ...person, code: 'wrong' })).status).toBe(403)
