@@ -3,6 +3,8 @@ import { keepTries, claimDueCall, updateClaimed } from '../database/repositories
 import type { BridgeCallRow } from '../database/repositories/bridge-calls'
 import { readFact } from '../database/repositories/people'
 import { POST_FACT, postOf } from '../mail/post'
+import type { Rounds } from '../rounds'
+import { keepGoingRound } from '../rounds'
 import { tellOfCall } from '../services/bridge-letters'
 import { sheetToSend } from '../services/bridge-calls'
 import type { SheetToSend } from '../services/bridge-calls'
@@ -126,29 +128,5 @@ export async function sendDueCalls(app: App, stopped: () => boolean = () => fals
 }
 
 /** Sends calls as long as this process lives. */
-export interface Sender {
-  /** Ends after the calls in hand. */
-  stop(): Promise<void>
-}
-
-export function openSender(app: App): Sender {
-  let stopped = false
-  let round: Promise<void> = Promise.resolve()
-  let busy = false
-  const look = async (): Promise<void> => {
-    busy = true
-    await sendDueCalls(app, () => stopped).catch((error: Error) => console.error(`bridge: ${error.message}`))
-    busy = false
-  }
-  const timer = setInterval(() => {
-    if (!busy) round = look()
-  }, LOOK_MS)
-  timer.unref()
-  return {
-    async stop() {
-      stopped = true
-      clearInterval(timer)
-      await round
-    },
-  }
-}
+export const openSender = (app: App): Rounds =>
+  keepGoingRound('bridge', LOOK_MS, (stopped) => sendDueCalls(app, stopped))

@@ -2,6 +2,8 @@ import type { App } from '../app'
 import { claimDueMail, keepWaitingMails, settleMail } from '../database/repositories/mails'
 import type { MailRow } from '../database/repositories/mails'
 import { setFact } from '../database/repositories/people'
+import type { Rounds } from '../rounds'
+import { keepGoingRound } from '../rounds'
 import type { Mailer } from './mailer'
 import { createMailer, MailRefused } from './mailer'
 import type { MailSettings } from './settings'
@@ -69,37 +71,13 @@ export async function deliverDue(app: App, mailer: Mailer, stopped: () => boolea
   }
 }
 
-/** Sends messages as long as this process lives. */
-export interface Post {
-  /** Ends after the message in hand. */
-  stop(): Promise<void>
-}
-
 /** Opens the post of a process that serves pages; without a mail server messages are kept. */
-export async function openPost(app: App, { smtp, site }: MailSettings): Promise<Post> {
+export async function openPost(app: App, { smtp, site }: MailSettings): Promise<Rounds> {
   await setFact(app.db, POST_FACT, JSON.stringify({ site, sends: smtp !== null } satisfies PostFact))
   if (!smtp) {
     await keepWaitingMails(app.db)
     return { stop: async () => undefined }
   }
   const mailer = createMailer(smtp)
-  let stopped = false
-  let round: Promise<void> = Promise.resolve()
-  let busy = false
-  const look = async (): Promise<void> => {
-    busy = true
-    await deliverDue(app, mailer, () => stopped).catch((error: Error) => console.error(`mail: ${error.message}`))
-    busy = false
-  }
-  const timer = setInterval(() => {
-    if (!busy) round = look()
-  }, LOOK_MS)
-  timer.unref()
-  return {
-    async stop() {
-      stopped = true
-      clearInterval(timer)
-      await round
-    },
-  }
+  return keepGoingRound('mail', LOOK_MS, (stopped) => deliverDue(app, mailer, stopped))
 }
