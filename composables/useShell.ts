@@ -15,6 +15,8 @@ export interface RailLink {
   to: string
   /** Shown to these only. */
   roles?: Role[]
+  /** Of what the count is, where it is not of what the page lists: it then stands out. */
+  counted?: string
 }
 
 export interface Shell {
@@ -32,6 +34,7 @@ const LINKS: RailLink[] = [
   { key: 'runSheets', label: 'Run sheets', to: '/run-sheets' },
   { key: 'budget', label: 'Budget', to: '/budget', roles: ['owner', 'reviewer'] },
   { key: 'people', label: 'People', to: '/people' },
+  { key: 'news', label: 'News', to: '/news', counted: 'unread' },
 ]
 
 /** What the frame around every page shows, taken from whoever is signed in. */
@@ -40,7 +43,7 @@ export function useShell(): Shell {
   return {
     personName: computed(() => session.value?.person.name ?? ''),
     roles: computed(() => session.value?.roles ?? []),
-    counts: computed(() => ({ ...session.value?.counts })),
+    counts: computed(() => ({ ...session.value?.counts, news: session.value?.unread || null })),
     machineTime: computed(() => session.value && machineTimeOf(session.value)),
     links: computed(() => (session.value ? LINKS.filter(({ roles }) => !roles || may(...roles)) : [])),
   }

@@ -15,6 +15,7 @@ import { sweepChallenges } from './services/challenges'
 import { sweepConfirmations } from './services/confirmations'
 import { sweepDeletions } from './services/deletions'
 import { KeptUploads } from './services/kept-uploads'
+import { sweepNews } from './services/news'
 import { sweepSessions } from './services/sessions'
 import { sweepWorkspaces } from './services/workspace-deletion'
 import { createCompute } from './workers/compute'
@@ -58,6 +59,7 @@ async function keepSweeping(app: App): Promise<() => void> {
     await sweepAnswers(app)
     await sweepConfirmations(app)
     await sweepChallenges(app)
+    await sweepNews(app)
   }
   await sweep()
   const timer = setInterval(

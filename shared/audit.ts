@@ -60,6 +60,8 @@ export const DEEDS: Readonly<Record<string, Deed | null>> = {
   'POST /api/machines/:id/capacity': null,
   'POST /api/machines/:id/repairs': deed('machine', 'repaired embeddings on'),
   'POST /api/machines': deed('machine', 'added'),
+  'POST /api/news/:id/read': null,
+  'POST /api/news/read': null,
   'DELETE /api/people/:id': deed('person', 'removed'),
   'PATCH /api/people/:id': deed('person', 'changed the roles of'),
   'POST /api/people/:id/reset-link': deed('person', 'made a link for a new password of'),

@@ -47,9 +47,9 @@ const WISHES = { label: 'Choose which messages you get', path: '/account#message
 /** The plain text of a message; links stand on lines of their own, so that every reader finds their ends. */
 function textOf({ kind, parts, action, because }: Letter, site: string): string {
   const blocks = parts.map((part) => {
-    if ('text' in part) return oneLineEach(part.text)
+    if ('text' in part) return lineByLine(part.text)
     if ('quote' in part)
-      return oneLineEach(part.quote)
+      return lineByLine(part.quote)
         .split('\n')
         .map((line) => `> ${line}`.trimEnd())
         .join('\n')
@@ -60,18 +60,19 @@ function textOf({ kind, parts, action, because }: Letter, site: string): string 
   return `${[...blocks, `${action.label}:\n${site}${action.path}`, end].join('\n\n')}\n`
 }
 
-const oneLineEach = (text: string): string =>
+/** Text of several lines without anything unseen in them. */
+export const lineByLine = (text: string): string =>
   text
     .split(/\r\n|\r|\n/)
     .map((line) => line.replace(UNSAFE, ' ').trimEnd())
     .join('\n')
 
 const listedText = ({ text, path, under = [] }: LetterItem, site: string): string =>
-  [`- ${oneLineEach(text)}`, ...[`${site}${path}`, ...under.map(oneLineEach)].map((line) => `  ${line}`)].join('\n')
+  [`- ${lineByLine(text)}`, ...[`${site}${path}`, ...under.map(lineByLine)].map((line) => `  ${line}`)].join('\n')
 
 const ESCAPES: Record<string, string> = { '&': '&amp;', '<': '&lt;', '>': '&gt;', '"': '&quot;', "'": '&#39;' }
 const escapeHtml = (text: string): string => text.replace(/[&<>"']/g, (character) => ESCAPES[character]!)
-const inHtml = (text: string): string => escapeHtml(oneLineEach(text)).replace(/\n/g, '<br>')
+const inHtml = (text: string): string => escapeHtml(lineByLine(text)).replace(/\n/g, '<br>')
 
 /** Colours of the product's light theme; mail programs take neither variables nor style sheets. */
 const STYLE = {

@@ -5,39 +5,55 @@ import type { Actor, App } from '../app'
 import type { Db } from '../database/client'
 import type { MailRow } from '../database/repositories/mails'
 import { addresseesOf, countMails, insertMails, listMails } from '../database/repositories/mails'
+import { insertNews } from '../database/repositories/news'
 import { pageOf, positionOf } from '../database/repositories/pages'
 import { listUnwanted } from '../database/repositories/unwanted-mails'
 import { readFact } from '../database/repositories/people'
 import type { Letter } from '../mail/letter'
 import { writeLetter } from '../mail/letter'
+import { newsOfLetter } from '../mail/news-of-letter'
 import type { PostFact } from '../mail/post'
 import { POST_FACT, postOf } from '../mail/post'
 
+/** What one person is told: where there are several letters, they tell the same, and the first is the one meant for them. */
+export type Told = Letter | readonly [Letter, ...Letter[]]
+
+const lettersOf = (told: Told): readonly [Letter, ...Letter[]] => ('kind' in told ? [told] : told)
+
 /**
- * Writes to people, in the transaction of what they are told: what is rolled back is never told, what is committed is
- * never forgotten. Sending is left to the post. Whoever did it is not told, nor is anybody who left the workspace or wants
- * no messages of that kind.
- * @param letters by user id
- * @returns ids of those who were written to
+ * Tells people something, as news in the product and by mail, in the transaction of what they are told: what is rolled back
+ * is never told, what is committed is never forgotten. Sending is left to the post. Whoever did it is not told, nor is
+ * anybody who left the workspace. The first letter is the news; the mail is the first one of a kind that the person wants.
+ * @param told by user id
  */
 export async function tell(
   app: App,
   tx: Db,
   { workspaceId, by }: { workspaceId: string; by: string | null },
-  letters: ReadonlyMap<string, Letter>,
-): Promise<string[]> {
-  const ids = [...letters.keys()].filter((id) => id !== by)
+  told: ReadonlyMap<string, Told>,
+): Promise<void> {
+  const ids = [...told.keys()].filter((id) => id !== by)
+  const members = await addresseesOf(tx, workspaceId, ids)
   const unwanted = await listUnwanted(tx, workspaceId, ids)
-  const isWanted = (id: string): boolean =>
-    !unwanted.some(({ userId, kind }) => userId === id && kind === letters.get(id)!.kind)
-  const addressees = await addresseesOf(tx, workspaceId, ids.filter(isWanted))
   const post = postOf(await readFact(tx, POST_FACT))
-  await insertMails(
+  const isWanted = (id: string, { kind }: Letter): boolean =>
+    !unwanted.some((one) => one.userId === id && one.kind === kind)
+  const mails = members.flatMap(({ id, email }) => {
+    const letter = lettersOf(told.get(id)!).find((one) => isWanted(id, one))
+    return letter ? [rowOf(app, post, { workspaceId, userId: id, address: email }, letter)] : []
+  })
+  await insertNews(
     tx,
-    addressees.map(({ id, email }) => rowOf(app, post, { workspaceId, userId: id, address: email }, letters.get(id)!)),
+    members.map(({ id }) => newsRow(app, { workspaceId, userId: id }, lettersOf(told.get(id)!)[0])),
   )
-  return addressees.map(({ id }) => id)
+  await insertMails(tx, mails)
 }
+
+const newsRow = (app: App, { userId, workspaceId }: Actor, letter: Letter) => ({
+  ...{ id: randomUUID(), workspaceId, userId, kind: letter.kind },
+  ...newsOfLetter(letter),
+  createdAt: app.now(),
+})
 
 interface Receiver {
   /** Whose outbox shows it; null for none. */

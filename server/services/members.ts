@@ -3,6 +3,7 @@ import type { Role } from '../../shared/schemas/common'
 import type { Actor, App } from '../app'
 import type { Db } from '../database/client'
 import { holdersOf } from '../database/repositories/mails'
+import { deleteNewsOf } from '../database/repositories/news'
 import {
   deleteMembership,
   findRoles,
@@ -55,12 +56,13 @@ export async function changeRoles(app: App, actor: Actor, memberId: string, role
 
 /**
  * Their sessions go on in another workspace of theirs, or end; their tokens for this one end, which would open the workspace
- * again if they came back, and so do reviews that they handed over or that were handed to them.
+ * again if they came back, and so do reviews that they handed over or that were handed to them. Their news of it goes.
  */
 async function remove(app: App, tx: Db, workspaceId: string, userId: string): Promise<void> {
   await requireAnotherOwner(tx, workspaceId, userId)
   await deleteMembership(tx, workspaceId, userId)
   await deleteTokensOf(tx, workspaceId, userId)
+  await deleteNewsOf(tx, { workspaceId, userId })
   await endStandInsOf(tx, workspaceId, userId, { now: app.now(), asEither: true })
   const next = await firstWorkspaceOf(tx, userId)
   if (next) await moveSessions(tx, userId, workspaceId, next)

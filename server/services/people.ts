@@ -24,6 +24,7 @@ import {
 import { awayFor } from '../database/repositories/stand-ins'
 import { budgetTotal } from './budget-view'
 import { sendsMail } from './mail'
+import { unreadNews } from './news'
 import { requireGoodPassword } from './password-rules'
 
 /** Of whoever makes a workspace. */
@@ -56,6 +57,7 @@ export async function sessionView(app: App, actor: Actor, roles: readonly Role[]
     roles: [...roles],
     reviewsFor: await awayFor(app.db, actor.workspaceId, user.id, app.now()),
     counts,
+    ...(await unreadNews(app, actor)),
     budget: await budgetTotal(app, actor.workspaceId),
   }
 }

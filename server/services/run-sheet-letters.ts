@@ -9,6 +9,7 @@ import { aboutRunSheet } from '../database/repositories/run-sheets'
 import type { Letter } from '../mail/letter'
 import type { HandedOver, SheetForLetter, SheetReason } from '../mail/letters'
 import { handedOverLetter, movedLetter, remarkLetter } from '../mail/letters'
+import type { Told } from './mail'
 import { tell } from './mail'
 
 /** Everyone who may review this run sheet now, in the place of somebody away too: nobody reviews their own. */
@@ -75,11 +76,14 @@ export async function tellRemark(
   told.set(row.preparedBy, 'preparer')
   const sheet = await sheetForLetter(tx, row)
   const { name } = await personOf(tx, by)
-  const from = { workspaceId: row.workspaceId, by }
-  const letterOf = (reason: SheetReason): Letter => remarkLetter(sheet, name, remark, reason)
-  const named = await tell(app, tx, from, new Map(mentioned.map((id) => [id, letterOf('mentioned')])))
-  const others = [...told].filter(([id]) => !named.includes(id))
-  await tell(app, tx, from, new Map(others.map(([id, reason]) => [id, letterOf(reason)])))
+  const letters = new Map<string, Told>()
+  for (const [id, reason] of told) letters.set(id, remarkLetter(sheet, name, remark, reason))
+  for (const id of mentioned) {
+    const other = told.get(id)
+    const letter = remarkLetter(sheet, name, remark, 'mentioned')
+    letters.set(id, other ? [letter, remarkLetter(sheet, name, remark, other)] : letter)
+  }
+  await tell(app, tx, { workspaceId: row.workspaceId, by }, letters)
 }
 
 /** What a letter says of a run sheet. */

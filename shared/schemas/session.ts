@@ -42,6 +42,8 @@ export interface SessionView {
   /** Reviewers who are away, in whose place the person reviews now. */
   reviewsFor: Person[]
   counts: { problems: number; machines: number; runSheets: number; people: number }
+  /** Items of news in the workspace that the person has not read. */
+  unread: number
   /** Machine time of the workspace; null where no budget is kept. */
   budget: BudgetBalance | null
 }

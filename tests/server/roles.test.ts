@@ -98,6 +98,9 @@ interface Item {
   state?: string
 }
 
+const ownId = async (client: Client): Promise<string> =>
+  (await client.get<{ person: Item }>('/api/session')).body.person.id
+
 /** Things that no caller of the test depends on, so that they may be deleted. */
 async function thingsOf(owner: Client, developer: Client): Promise<Things> {
   const list = async (path: string): Promise<Item[]> => (await owner.get<{ items: Item[] }>(path)).body.items
@@ -121,8 +124,9 @@ async function thingsOf(owner: Client, developer: Client): Promise<Things> {
   const absence = { forId: reviewer.id, byId: steward.id, startsOn: '2099-02-01', endsOn: '2099-02-02' }
   const standIn = (await owner.post<Item>('/api/stand-ins', absence)).body
   const person = (await list('/api/people')).find(({ name }) => name === 'own spare')!
+  await developer.post(`/api/run-sheets/${runSheet.id}/remarks`, { remark: `Seen by @[${await ownId(owner)}]?` })
   return {
-    ...{ standIn: standIn.id, reviewer: reviewer.id },
+    ...{ standIn: standIn.id, reviewer: reviewer.id, newsItem: (await list('/api/news'))[0]!.id },
     ...{ person: person.id, problem: problemId, machine: machineId, embedding: embedding.id, runSheet: runSheet.id },
     ...{ return: sheet.returns[0]!.id, scan: scan.id, job: scan.jobId, invitation: invited.body.id },
     ...{ token: token.body.id, session: sessions.find(({ isThis }) => isThis)!.id },
@@ -225,6 +229,8 @@ describe('every route', () => {
       'POST /api/account/identity',
       'POST /api/account/passkeys',
       'POST /api/account/passkeys/challenge',
+      'POST /api/news/read',
+      'POST /api/news/{id}/read',
       'POST /api/problems/{id}/energy',
       'POST /api/problems/{id}/lift',
       'POST /api/problems/{id}/presolve',

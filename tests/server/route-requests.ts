@@ -15,6 +15,7 @@ export type Thing =
   | 'passkey'
   | 'standIn'
   | 'reviewer'
+  | 'newsItem'
 export type Things = Record<Thing, string>
 
 /** A request that a route takes, `$problem` and so on standing for ids. */
@@ -174,6 +175,10 @@ export const SAMPLES: Record<string, Sample> = {
   'POST /api/embeddings/{id}/restore': {},
   'DELETE /api/problems/{id}': {},
   'POST /api/problems/{id}/restore': {},
+  'GET /api/news': {},
+  'GET /api/news/unread': {},
+  'POST /api/news/read': { json: {} },
+  'POST /api/news/{id}/read': {},
   'GET /api/invitations': {},
   'POST /api/invitations': { json: { email: 'one.more@example.org', roles: ['reader'] } },
   'POST /api/invitations/{id}/resend': {},
@@ -228,4 +233,5 @@ export const ID_OF: Record<string, Thing> = {
   people: 'person',
   passkeys: 'passkey',
   'stand-ins': 'standIn',
+  news: 'newsItem',
 }

@@ -385,5 +385,19 @@ export const MIGRATIONS = [
       "\nDROP TRIGGER \"audit_entries_only_added\" ON \"audit_entries\";",
       "\nCREATE TRIGGER \"audit_entries_only_added\" BEFORE UPDATE OR DELETE ON \"audit_entries\" FOR EACH ROW EXECUTE FUNCTION \"refuse_change_of_audit_entry\"();\n"
     ]
+  },
+  {
+    "tag": "0018_news",
+    "folderMillis": 1796255421823,
+    "hash": "363a138f1364c3af4bb803a82df0798ef1fda001ad628d255753975d8475c5b5",
+    "bps": true,
+    "sql": [
+      "CREATE TABLE \"news\" (\n\t\"id\" text PRIMARY KEY NOT NULL,\n\t\"workspace_id\" text NOT NULL,\n\t\"user_id\" text NOT NULL,\n\t\"kind\" text NOT NULL,\n\t\"title\" text NOT NULL,\n\t\"text\" text NOT NULL,\n\t\"quote\" text,\n\t\"path\" text NOT NULL,\n\t\"created_at\" timestamp with time zone NOT NULL,\n\t\"read_at\" timestamp with time zone\n);\n",
+      "\nALTER TABLE \"news\" ADD CONSTRAINT \"news_workspace_id_workspaces_id_fk\" FOREIGN KEY (\"workspace_id\") REFERENCES \"public\".\"workspaces\"(\"id\") ON DELETE cascade ON UPDATE no action;",
+      "\nALTER TABLE \"news\" ADD CONSTRAINT \"news_user_id_users_id_fk\" FOREIGN KEY (\"user_id\") REFERENCES \"public\".\"users\"(\"id\") ON DELETE cascade ON UPDATE no action;",
+      "\nCREATE INDEX \"news_user_id_workspace_id_created_at_index\" ON \"news\" USING btree (\"user_id\",\"workspace_id\",\"created_at\");",
+      "\nCREATE INDEX \"news_user_id_workspace_id_index\" ON \"news\" USING btree (\"user_id\",\"workspace_id\") WHERE read_at is null;",
+      "\nCREATE INDEX \"news_created_at_index\" ON \"news\" USING btree (\"created_at\");"
+    ]
   }
 ]

@@ -69,6 +69,7 @@ export const NOT_ARCHIVED = [
   'stand_ins',
   'answered_requests',
   'mails',
+  'news',
   'jobs',
   'bridges',
   'bridge_calls',
