@@ -23,9 +23,12 @@ export interface Deed {
   kind: AuditKind
   /** Done to whoever did it: the address names no other thing. */
   isOwn?: true
+  /** What was made keeps by whom and when itself, so that the activity of a problem and a run sheet tells it from there. */
+  hasRecord?: true
 }
 
 const deed = (kind: AuditKind, what: string): Deed => ({ kind, what })
+const recorded = (kind: AuditKind, what: string): Deed => ({ kind, what, hasRecord: true })
 const own = (what: string): Deed => ({ kind: 'person', what, isOwn: true })
 
 /** Also of reading, where what is read is everything. Null: the route works something out, or changes only what somebody sees of it. */
@@ -46,8 +49,8 @@ export const DEEDS: Readonly<Record<string, Deed | null>> = {
   'DELETE /api/embeddings/:id': deed('embedding', 'deleted'),
   'PATCH /api/embeddings/:id': deed('embedding', 'changed'),
   'POST /api/embeddings/:id/restore': deed('embedding', 'brought back'),
-  'POST /api/embeddings/import': deed('embedding', 'imported'),
-  'POST /api/embeddings': deed('embedding', 'looked for'),
+  'POST /api/embeddings/import': recorded('embedding', 'imported'),
+  'POST /api/embeddings': recorded('embedding', 'looked for'),
   'DELETE /api/invitations/:id': deed('invitation', 'withdrew'),
   'POST /api/invitations/:id/resend': deed('invitation', 'sent again'),
   'POST /api/invitations': deed('invitation', 'made'),
@@ -70,34 +73,34 @@ export const DEEDS: Readonly<Record<string, Deed | null>> = {
   'PUT /api/problems/:id/groups': deed('problem', 'set the constraint groups of'),
   'DELETE /api/problems/:id': deed('problem', 'deleted'),
   'PATCH /api/problems/:id': deed('problem', 'changed'),
-  'POST /api/problems/:id/labels': deed('problem', 'renamed variables of'),
+  'POST /api/problems/:id/labels': recorded('problem', 'renamed variables of'),
   'POST /api/problems/:id/lift': null,
   'POST /api/problems/:id/presolve': null,
   'POST /api/problems/:id/reduced': deed('problem', 'saved the pre-solved form of'),
-  'POST /api/problems/:id/reference': deed('problem', 'looked for the reference optimum of'),
+  'POST /api/problems/:id/reference': recorded('problem', 'looked for the reference optimum of'),
   'POST /api/problems/:id/restore': deed('problem', 'brought back'),
-  'POST /api/problems/:id/versions': deed('problem', 'uploaded a version of'),
-  'POST /api/problems': deed('problem', 'uploaded'),
+  'POST /api/problems/:id/versions': recorded('problem', 'uploaded a version of'),
+  'POST /api/problems': recorded('problem', 'uploaded'),
   'POST /api/problems/rejected': null,
-  'DELETE /api/returns/:id/answer-sheet': deed('samples', 'took back the answer link of'),
-  'POST /api/returns/:id/answer-sheet': deed('samples', 'made an answer link of'),
-  'POST /api/returns/:id/next': deed('samples', 'made the next draft from'),
-  'POST /api/run-sheets/:id/approve': deed('run sheet', 'approved'),
-  'POST /api/run-sheets/:id/duplicate': deed('run sheet', 'copied'),
+  'DELETE /api/returns/:id/answer-sheet': recorded('samples', 'took back the answer link of'),
+  'POST /api/returns/:id/answer-sheet': recorded('samples', 'made an answer link of'),
+  'POST /api/returns/:id/next': recorded('samples', 'made the next draft from'),
+  'POST /api/run-sheets/:id/approve': recorded('run sheet', 'approved'),
+  'POST /api/run-sheets/:id/duplicate': recorded('run sheet', 'copied'),
   'DELETE /api/run-sheets/:id': deed('run sheet', 'deleted'),
   'PATCH /api/run-sheets/:id': deed('run sheet', 'changed'),
-  'POST /api/run-sheets/:id/issue': deed('run sheet', 'issued'),
-  'POST /api/run-sheets/:id/quenches': deed('run sheet', 'made a series of quenches from'),
-  'POST /api/run-sheets/:id/rehearsals': deed('run sheet', 'rehearsed'),
-  'POST /api/run-sheets/:id/remarks': deed('run sheet', 'wrote a remark on'),
+  'POST /api/run-sheets/:id/issue': recorded('run sheet', 'issued'),
+  'POST /api/run-sheets/:id/quenches': recorded('run sheet', 'made a series of quenches from'),
+  'POST /api/run-sheets/:id/rehearsals': recorded('run sheet', 'rehearsed'),
+  'POST /api/run-sheets/:id/remarks': recorded('run sheet', 'wrote a remark on'),
   'POST /api/run-sheets/:id/restore': deed('run sheet', 'brought back'),
-  'POST /api/run-sheets/:id/returns': deed('run sheet', 'loaded samples of'),
-  'POST /api/run-sheets/:id/scans': deed('run sheet', 'scanned strengths of'),
+  'POST /api/run-sheets/:id/returns': recorded('run sheet', 'loaded samples of'),
+  'POST /api/run-sheets/:id/scans': recorded('run sheet', 'scanned strengths of'),
   'POST /api/run-sheets/:id/send': deed('run sheet', 'sent to the bridge'),
-  'POST /api/run-sheets/:id/send-back': deed('run sheet', 'sent back'),
+  'POST /api/run-sheets/:id/send-back': recorded('run sheet', 'sent back'),
   'POST /api/run-sheets/:id/spins': null,
-  'POST /api/run-sheets/:id/submit': deed('run sheet', 'submitted'),
-  'POST /api/run-sheets': deed('run sheet', 'prepared'),
+  'POST /api/run-sheets/:id/submit': recorded('run sheet', 'submitted'),
+  'POST /api/run-sheets': recorded('run sheet', 'prepared'),
   'PUT /api/session/workspace': null,
   'DELETE /api/sessions/:id': own('ended a session of their own'),
   'DELETE /api/sessions': own('ended all other sessions of their own'),
@@ -128,3 +131,8 @@ export const SIGN_INS = {
   'wrong passkey': deed('sign-in', 'was refused at signing in: the passkey did not prove itself'),
 } as const satisfies Record<string, Deed>
 export type SignIn = keyof typeof SIGN_INS
+
+/** Kind and words of what has a record of its own. */
+export const RECORDED: readonly string[] = Object.values(DEEDS).flatMap((told) =>
+  told?.hasRecord ? [`${told.kind} ${told.what}`] : [],
+)

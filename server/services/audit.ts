@@ -5,6 +5,7 @@ import type { AuditEntryView, AuditQuery, AuditView } from '../../shared/schemas
 import type { Actor, App } from '../app'
 import type { AuditScope } from '../database/repositories/audit'
 import {
+  carriersOfThing,
   findTokenName,
   insertAuditEntry,
   labelOfThing,
@@ -16,15 +17,23 @@ import { pageOf, positionOf } from '../database/repositories/pages'
 const DAY_MS = 86_400_000
 const MOST_ROWS = 100_000
 
-/** What a thing is called, asked before it may be gone. */
-export const nameOfThing = (app: App, { kind }: Deed, id: string | null): Promise<string | undefined> =>
-  id === null ? Promise.resolve(undefined) : labelOfThing(app.db, kind, id)
+/** What a thing is called and what it stands on. */
+interface Known {
+  name: string | undefined
+  within: string[]
+}
+
+/** Asked before the thing may be gone, or once it is there. */
+export async function knownOfThing(app: App, { kind }: Deed, id: string | null): Promise<Known> {
+  if (id === null) return { name: undefined, within: [] }
+  return { name: await labelOfThing(app.db, kind, id), within: await carriersOfThing(app.db, kind, id) }
+}
 
 interface Done {
   deed: Deed
   thingId: string | null
-  /** Its name before, where it is known. */
-  name: string | undefined
+  /** What was known of it before, where it may be gone. */
+  known: Known | undefined
   tokenId: string | null
   address: string
 }
@@ -32,6 +41,7 @@ interface Done {
 /** Writes down what somebody did. */
 export async function record(app: App, { userId, workspaceId }: Actor, done: Done): Promise<void> {
   const { deed, thingId, tokenId, address } = done
+  const { name, within } = done.known ?? (await knownOfThing(app, deed, thingId))
   await insertAuditEntry(app.db, {
     id: randomUUID(),
     workspaceId,
@@ -42,7 +52,8 @@ export async function record(app: App, { userId, workspaceId }: Actor, done: Don
     what: deed.what,
     kind: deed.kind,
     thingId,
-    thing: done.name ?? (await nameOfThing(app, deed, thingId)) ?? '',
+    thing: name ?? '',
+    within,
   })
 }
 

@@ -12,7 +12,7 @@ import { record } from './audit'
 export async function noteSignIn(app: App, actor: Actor, how: SignIn, address: string): Promise<void> {
   const deed = SIGN_INS[how]
   try {
-    await record(app, actor, { deed, thingId: null, name: undefined, tokenId: null, address })
+    await record(app, actor, { deed, thingId: null, known: undefined, tokenId: null, address })
   } catch (error) {
     // Nobody is kept from signing in or out because it cannot be written down.
     console.error(`audit trail: ${error instanceof Error ? error.message : String(error)}`)

@@ -3,7 +3,7 @@ import type { Deed } from '../../shared/audit'
 import { DEEDS } from '../../shared/audit'
 import type { Person } from '../../shared/schemas/common'
 import type { Actor, App } from '../app'
-import { nameOfThing, record } from '../services/audit'
+import { knownOfThing, record } from '../services/audit'
 import { addressOf } from './session'
 
 interface Caller extends Actor {
@@ -31,14 +31,14 @@ export async function audited<T>(
   if (!deed) return work()
   const named = deed.isOwn ? null : (event.context.params?.id ?? null)
   // What is deleted has no name afterwards; what is renamed is called by its new one.
-  const name = event.method === 'DELETE' ? await nameOfThing(app, deed, named) : undefined
+  const known = event.method === 'DELETE' ? await knownOfThing(app, deed, named) : undefined
   const answer = await work()
   const thingId = deed.isOwn ? null : (named ?? idIn(answer))
   try {
     await record(app, caller, {
       deed: withStandIn(deed, answer),
       thingId,
-      name,
+      known,
       tokenId: caller.tokenId,
       address: addressOf(event),
     })

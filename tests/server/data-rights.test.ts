@@ -49,9 +49,9 @@ describe('removing an account', () => {
   })
 
   it('takes the name and the addresses out, and leaves what was done', async () => {
-    const made = { deed: DEEDS['POST /api/problems']!, thingId: problemId, name: undefined, tokenId: null }
+    const made = { deed: DEEDS['POST /api/problems']!, thingId: problemId, known: undefined, tokenId: null }
     await record(test.app, leaver, { ...made, address: '192.0.2.7' })
-    const changed = { deed: DEEDS['PATCH /api/people/:id']!, thingId: leaver.userId, name: undefined, tokenId: null }
+    const changed = { deed: DEEDS['PATCH /api/people/:id']!, thingId: leaver.userId, known: undefined, tokenId: null }
     await record(test.app, owner, { ...changed, address: '192.0.2.1' })
     await test.app.database.executeSql(`update problems set created_by = '${leaver.userId}'`)
     await removal(leaver)

@@ -399,5 +399,16 @@ export const MIGRATIONS = [
       "\nCREATE INDEX \"news_user_id_workspace_id_index\" ON \"news\" USING btree (\"user_id\",\"workspace_id\") WHERE read_at is null;",
       "\nCREATE INDEX \"news_created_at_index\" ON \"news\" USING btree (\"created_at\");"
     ]
+  },
+  {
+    "tag": "0019_audit_within",
+    "folderMillis": 1796256789280,
+    "hash": "8dc94296ac231097c5ce2973ec48d55b3dbfe401639787a25021e2db920c3e81",
+    "bps": true,
+    "sql": [
+      "ALTER TABLE \"audit_entries\" ADD COLUMN \"within\" text[] DEFAULT '{}' NOT NULL;",
+      "\nCREATE INDEX \"audit_entries_thing_id_index\" ON \"audit_entries\" USING btree (\"thing_id\");",
+      "\nCREATE INDEX \"audit_entries_within_index\" ON \"audit_entries\" USING gin (\"within\");"
+    ]
   }
 ]

@@ -15,9 +15,7 @@ import {
   workspaces,
 } from '../schema'
 
-export type AuditRow = typeof auditEntries.$inferSelect
-
-export async function insertAuditEntry(db: Db, row: AuditRow): Promise<void> {
+export async function insertAuditEntry(db: Db, row: typeof auditEntries.$inferInsert): Promise<void> {
   await db.insert(auditEntries).values(row)
 }
 
@@ -100,3 +98,21 @@ const LABELS: Record<AuditKind, (db: Db, id: string) => Promise<string | undefin
 
 /** What a thing is called now; undefined where it has no name or is gone. */
 export const labelOfThing = (db: Db, kind: AuditKind, id: string): Promise<string | undefined> => LABELS[kind](db, id)
+
+const onEmbedding = (db: Db) =>
+  db
+    .select({ problem: embeddings.problemId, embedding: embeddings.id, sheet: runSheets.id })
+    .from(embeddings)
+    .leftJoin(runSheets, eq(runSheets.embeddingId, embeddings.id))
+    .$dynamic()
+
+/** What a thing stands on: its problem, embedding and run sheet, as far as it has them. */
+export async function carriersOfThing(db: Db, kind: AuditKind, id: string): Promise<string[]> {
+  if (kind === 'embedding')
+    return (await onEmbedding(db).where(eq(embeddings.id, id)).limit(1)).map(({ problem }) => problem)
+  if (kind === 'run sheet')
+    return (await onEmbedding(db).where(eq(runSheets.id, id))).flatMap(({ problem, embedding }) => [problem, embedding])
+  if (kind !== 'samples') return []
+  const rows = await onEmbedding(db).innerJoin(returns, eq(returns.runSheetId, runSheets.id)).where(eq(returns.id, id))
+  return rows.flatMap(({ problem, embedding, sheet }) => [problem, embedding, ...(sheet ? [sheet] : [])])
+}

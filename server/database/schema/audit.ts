@@ -22,6 +22,12 @@ export const auditEntries = pgTable(
     thingId: text(),
     /** What the thing was called then. */
     thing: text().notNull(),
+    /** What the thing stood on then: problem, embedding, run sheet. It is known of what was deleted since too. */
+    within: text().array().notNull().default([]),
   },
-  (table) => [index().on(table.workspaceId, table.at)],
+  (table) => [
+    index().on(table.workspaceId, table.at),
+    index().on(table.thingId),
+    index('audit_entries_within_index').using('gin', table.within),
+  ],
 )
