@@ -30,6 +30,7 @@ export function useSession() {
     signInByPasskey: (used: UsedPasskey) => enter('/api/session/passkey', { ...used }),
     setUp: (body: Record<string, unknown>) => enter('/api/setup', body),
     join: (secret: string, body: { name: string; password: string }) => enter(`/api/invited/${secret}`, body),
+    joinSignedIn: (secret: string) => enter('/api/account/membership', { secret }),
     async signOut() {
       await api.remove('/api/session')
       // A whole new page, so that nothing of this person stays in memory.

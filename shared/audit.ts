@@ -39,6 +39,8 @@ export const DEEDS: Readonly<Record<string, Deed | null>> = {
   'PUT /api/account/mails': null,
   // Written down by the service, without the address that it came from.
   'DELETE /api/account': null,
+  // Written down in the workspace that was joined.
+  'POST /api/account/membership': null,
   'DELETE /api/account/membership': { kind: 'workspace', what: 'left', isOwn: true },
   'POST /api/account/passkeys/challenge': null,
   'POST /api/account/passkeys': own('added a passkey of their own'),
@@ -125,6 +127,7 @@ export const SIGN_INS = {
   passkey: deed('sign-in', 'signed in with a passkey'),
   provider: deed('sign-in', 'signed in through the identity provider'),
   invitation: deed('sign-in', 'accepted an invitation and signed in'),
+  joined: deed('sign-in', 'accepted an invitation while signed in elsewhere'),
   setup: deed('sign-in', 'set the workspace up and signed in'),
   out: deed('sign-in', 'signed out'),
   'wrong password': deed('sign-in', 'was refused at signing in: wrong password'),

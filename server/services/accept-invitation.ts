@@ -4,7 +4,8 @@ import type { Actor, App } from '../app'
 import type { Db } from '../database/client'
 import type { InvitationRow } from '../database/repositories/invitations'
 import { holdInvitation, updateInvitation } from '../database/repositories/invitations'
-import { findRoles, findUserByEmail, insertMembership } from '../database/repositories/people'
+import { findRoles, findUser, findUserByEmail, insertMembership } from '../database/repositories/people'
+import { setSessionWorkspace } from '../database/repositories/sessions'
 import { endConfirmations } from './confirmations'
 import { requireGoodPassword } from './password-rules'
 import type { Passwords } from './people'
@@ -72,6 +73,30 @@ export async function acceptInvitation(
     const userId = await createAccount(app, tx, { name, email, passwordHash, workspaceId, roles })
     await settle(app, tx, invitation, userId)
     return { userId, workspaceId }
+  })
+}
+
+/**
+ * Joins as whoever is signed in, whose address it has to be, and goes to the workspace: somebody who signs in by passkey
+ * or provider alone has no password to give.
+ */
+export async function acceptSignedIn(
+  app: App,
+  { userId, sessionId }: { userId: string; sessionId: string },
+  secret: string,
+): Promise<Actor> {
+  return app.db.transaction(async (tx) => {
+    const { invitation } = await openInvitation(app, tx, secret)
+    const user = await findUser(tx, userId)
+    if (user?.email !== invitation.email)
+      throw new DomainError(
+        'forbidden',
+        'invitation.address',
+        `The invitation is for ${invitation.email}, and you are signed in with another address. Sign out and open its link again.`,
+      )
+    const joined = await acceptAs(app, tx, invitation, userId)
+    await setSessionWorkspace(tx, sessionId, joined.workspaceId)
+    return joined
   })
 }
 

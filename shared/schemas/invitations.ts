@@ -51,3 +51,6 @@ export const acceptSchema = z.object({
   password: z.string().min(1, 'give a password').max(MAX_PASSWORD_LENGTH),
 })
 export type Accept = z.infer<typeof acceptSchema>
+
+/** The secret of the link that one was sent. */
+export const joinSchema = z.object({ secret: z.string().min(1).max(200) })

@@ -1,13 +1,15 @@
 import { and, eq } from 'drizzle-orm'
 import { afterAll, beforeAll, expect, it } from 'vitest'
 import type { Actor } from '../../server/app'
+import { findUser } from '../../server/database/repositories/people'
 import { invitations, mails, memberships } from '../../server/database/schema'
 import { createMailer } from '../../server/mail/mailer'
 import { deliverDue, openPost } from '../../server/mail/post'
-import { acceptInvitation, invitedView } from '../../server/services/accept-invitation'
+import { acceptInvitation, acceptSignedIn, invitedView } from '../../server/services/accept-invitation'
 import { invitationsOf, invite, resendInvitation, withdrawInvitation } from '../../server/services/invitations'
 import { outboxOf } from '../../server/services/mail'
 import { createWorkspace } from '../../server/services/people'
+import { openSession, sessionCaller } from '../../server/services/sessions'
 import { signIn } from '../../server/services/sign-in'
 import type { TestApp } from '../support/app'
 import { startTestApp } from '../support/app'
@@ -45,6 +47,23 @@ const rolesOf = async ({ userId, workspaceId }: Actor) =>
       .where(and(eq(memberships.userId, userId), eq(memberships.workspaceId, workspaceId)))
   )[0]?.roles
 const gone = { kind: 'not found', code: 'invitation.gone' }
+
+it('lets somebody join who is signed in with the address, without a password, and nobody else', async () => {
+  const { app } = test
+  const user = (await findUser(app.db, elsewhere.userId))!
+  const secret = await invited(user.email)
+  const session = (actor: Actor) => openSession(app, actor, { userAgent: '', address: '192.0.2.1' })
+  const [theirs, another] = [await session(elsewhere), await session(owner)]
+  await expect(acceptSignedIn(app, { ...owner, sessionId: another }, secret)).rejects.toMatchObject({
+    kind: 'forbidden',
+    code: 'invitation.address',
+  })
+  const joined = await acceptSignedIn(app, { ...elsewhere, sessionId: theirs }, secret)
+  expect(joined).toEqual({ userId: elsewhere.userId, workspaceId: owner.workspaceId })
+  expect(await rolesOf(joined)).toEqual(['reader', 'steward'])
+  expect((await sessionCaller(app, theirs, '192.0.2.1')).workspaceId).toBe(owner.workspaceId)
+  await expect(acceptSignedIn(app, { ...elsewhere, sessionId: theirs }, secret)).rejects.toMatchObject(gone)
+})
 
 it('lets a newcomer join once, with the roles of the invitation, and keeps a hash alone', async () => {
   const secret = await invited('nora@example.org')

@@ -220,6 +220,7 @@ describe('every route', () => {
       'DELETE /api/account',
       'DELETE /api/account/identity',
       'DELETE /api/account/membership',
+      'POST /api/account/membership',
       'DELETE /api/account/passkeys/{id}',
       'DELETE /api/sessions',
       'DELETE /api/sessions/{id}',
