@@ -9,15 +9,31 @@ const addressOf = (unreadOnly: boolean): string => `/api/news?limit=${PER_PAGE}$
 export const useNews = (unreadOnly: MaybeRefOrGetter<boolean>) =>
   useResource<NewsView>(() => addressOf(toValue(unreadOnly)))
 
-/** Further pages, and reading: what was read here stays in its place on the page. */
-export function useNewsPages(unreadOnly: MaybeRefOrGetter<boolean>, news: Ref<NewsView | undefined>) {
+/**
+ * Further pages, reading, and what comes meanwhile: what was read here stays in its place on the page, and where further
+ * pages are shown, what is new waits to be asked for.
+ */
+export function useNewsPages(
+  unreadOnly: MaybeRefOrGetter<boolean>,
+  news: Ref<NewsView | undefined>,
+  refresh: () => Promise<unknown>,
+) {
   const pages = useLaterPages(news, (cursor) => `${addressOf(toValue(unreadOnly))}&cursor=${cursor}`)
   const reading = useReadingNews()
   const items = computed(() =>
     pages.items.value.map((item) => ({ ...item, readAt: item.readAt ?? reading.readHere.value.get(item.id) ?? null })),
   )
+  const isBehind = ref(false)
+  const catchUp = async (): Promise<void> => {
+    await refresh()
+    isBehind.value = false
+  }
+  watch(useNewsChanges(), () => {
+    if (pages.items.value.length > (news.value?.items.length ?? 0)) isBehind.value = true
+    else void catchUp()
+  })
   const readAll = () => reading.readAll(items.value)
-  return { ...pages, ...reading, items, readAll }
+  return { ...pages, ...reading, items, readAll, isBehind, catchUp }
 }
 
 /** Marks news as read; the number of what is left is shown around every page. */

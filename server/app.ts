@@ -4,6 +4,7 @@ import type { BlobStore } from './database/repositories/blobs'
 import type { Provider } from './identity/provider'
 import type { Queue } from './jobs/queue'
 import type { KeptUploads } from './services/kept-uploads'
+import type { NewsWatch } from './services/news-watch'
 import type { Compute } from './workers/compute'
 
 /** What every use case is given. Made once per process by `startApp`; services never see an HTTP event. */
@@ -14,6 +15,7 @@ export interface App {
   readonly compute: Compute
   readonly queue: Queue
   readonly uploads: KeptUploads
+  readonly newsWatch: NewsWatch
   readonly outbound: Outbound
   /** Outside identity provider; null where there is none. */
   readonly provider: Provider | null

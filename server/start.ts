@@ -16,6 +16,7 @@ import { sweepConfirmations } from './services/confirmations'
 import { sweepDeletions } from './services/deletions'
 import { KeptUploads } from './services/kept-uploads'
 import { sweepNews } from './services/news'
+import { NewsWatch } from './services/news-watch'
 import { sweepSessions } from './services/sessions'
 import { sweepWorkspaces } from './services/workspace-deletion'
 import { createCompute } from './workers/compute'
@@ -79,9 +80,10 @@ export async function startApp(options: StartOptions): Promise<StartedApp> {
   const compute = createCompute(options.workersFolder, options.threads)
   const queue = await startQueue(database)
   const uploads = new KeptUploads(now)
+  const newsWatch = new NewsWatch(database.db, now)
   const outbound = createOutbound(addressRules(options.privateAddresses ?? ''))
   const provider = options.provider ? createProvider(options.provider) : null
-  const held = { database, db: database.db, blobs, compute, queue, uploads, outbound, provider }
+  const held = { database, db: database.db, blobs, compute, queue, uploads, newsWatch, outbound, provider }
   const app: App = { ...held, now, version: VERSION, demo: options.demo }
   const stopSweeping = await keepSweeping(app)
   const runner = options.concurrency > 0 ? await startRunner(app, options.concurrency) : undefined
@@ -89,6 +91,7 @@ export async function startApp(options: StartOptions): Promise<StartedApp> {
     app,
     async close() {
       stopSweeping()
+      newsWatch.stop()
       if (runner) await runner.stop()
       else await queue.stop()
       await compute.close()

@@ -2,6 +2,7 @@ import { DomainError } from '../../shared/errors'
 import { NEWS_KEPT_DAYS } from '../../shared/schemas/news'
 import type { NewsItem, NewsQuery, NewsView, UnreadNews } from '../../shared/schemas/news'
 import type { Actor, App } from '../app'
+import type { Db } from '../database/client'
 import type { NewsPlace, NewsRow, ThingFolder } from '../database/repositories/news'
 import { countUnread, deleteOldNews, listNews, markAllRead, markRead, thingsThere } from '../database/repositories/news'
 
@@ -30,7 +31,7 @@ function thingAt(path: string): Thing | undefined {
 }
 
 /** Paths of those rows whose things were deleted since. */
-async function goneOf(app: App, rows: readonly NewsRow[]): Promise<Set<string>> {
+async function goneOf(db: Db, rows: readonly NewsRow[]): Promise<Set<string>> {
   const named = rows.flatMap(({ path }) => {
     const thing = thingAt(path)
     return thing ? [{ path, ...thing }] : []
@@ -39,7 +40,7 @@ async function goneOf(app: App, rows: readonly NewsRow[]): Promise<Set<string>> 
   for (const folder of new Set(named.map((one) => one.folder))) {
     const ofFolder = named.filter((one) => one.folder === folder)
     const there = await thingsThere(
-      app.db,
+      db,
       folder,
       ofFolder.map(({ id }) => id),
     )
@@ -54,13 +55,18 @@ const itemOf = ({ id, kind, title, text, quote, path, createdAt, readAt }: NewsR
   readAt: readAt?.toISOString() ?? null,
 })
 
+/** Rows as they are shown. */
+export async function itemsOf(db: Db, rows: readonly NewsRow[]): Promise<NewsItem[]> {
+  const gone = await goneOf(db, rows)
+  return rows.map((row) => itemOf(row, gone.has(row.path)))
+}
+
 /** What somebody is told in the workspace, newest first. */
 export async function newsOf(app: App, actor: Actor, { unread = false, limit, cursor }: NewsQuery): Promise<NewsView> {
   const rows = await listNews(app.db, actor, { unread, limit: limit + 1, after: placeOf(cursor) })
   const shown = rows.slice(0, limit)
-  const gone = await goneOf(app, shown)
   return {
-    items: shown.map((row) => itemOf(row, gone.has(row.path))),
+    items: await itemsOf(app.db, shown),
     nextCursor: rows.length > limit ? cursorOf(shown.at(-1)!) : null,
     ...(await unreadNews(app, actor)),
   }

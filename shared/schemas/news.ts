@@ -1,5 +1,5 @@
 import { z } from 'zod'
-import { flag, pageQuerySchema } from './common'
+import { flag, idSchema, pageQuerySchema } from './common'
 import type { MailKind } from './mail'
 
 /** What an item of news is about: as the message that tells the same. */
@@ -14,6 +14,9 @@ export type NewsQuery = z.infer<typeof newsQuerySchema>
 
 /** What is marked as read: all that was written until then, so that nothing is that nobody has seen. */
 export const readNewsSchema = z.object({ upTo: z.iso.datetime().optional() })
+
+/** `?workspace` of the events: the one that the page shows. */
+export const newsEventsQuerySchema = z.object({ workspace: idSchema.optional() })
 
 /** Something that a person is told in a workspace, in plain text. */
 export interface NewsItem {
@@ -36,6 +39,11 @@ export interface NewsItem {
 /** How many one has not read. */
 export interface UnreadNews {
   unread: number
+}
+
+/** How things stand, as the events tell it; `newest` also where it was read. */
+export interface NewsTold extends UnreadNews {
+  newest: NewsItem | null
 }
 
 export interface NewsView extends UnreadNews {

@@ -1,6 +1,7 @@
 import { afterAll, beforeAll, expect, it } from 'vitest'
 import type { Actor, App } from '../../server/app'
 import { insertMembership } from '../../server/database/repositories/people'
+import { setSessionWorkspace } from '../../server/database/repositories/sessions'
 import { news } from '../../server/database/schema'
 import type { Letter } from '../../server/mail/letter'
 import { importEmbedding } from '../../server/services/embedding-import'
@@ -12,7 +13,9 @@ import { createWorkspace } from '../../server/services/people'
 import { removeAccount } from '../../server/services/person-removal'
 import { addRemark } from '../../server/services/run-sheet-remarks'
 import { createRunSheet, removeRunSheet } from '../../server/services/run-sheets'
+import { leaveSession, openSession } from '../../server/services/sessions'
 import { deleteWorkspaceForGood } from '../../server/services/workspace-deletion'
+import type { NewsTold } from '../../shared/schemas/news'
 import { newsQuerySchema } from '../../shared/schemas/news'
 import { createRunSheetSchema } from '../../shared/schemas/run-sheets'
 import type { TestApp } from '../support/app'
@@ -20,6 +23,7 @@ import { startTestApp } from '../support/app'
 import { emptyFolder } from '../support/folders'
 import { newMember } from '../support/people'
 import { startPostgres } from '../support/postgres'
+import { until } from '../support/server'
 
 const DAY_MS = 86_400_000
 
@@ -218,4 +222,56 @@ it('is kept for a month once read, and for a quarter of a year unread', async ()
   await readNews(daysAgo(29), ann, idOf('40'))
   await sweepNews(at(test.app, new Date(now)))
   expect(await titles(ann)).toEqual(['40', '89'])
+})
+
+const device = { userAgent: 'Firefox/140.0', address: '192.0.2.1' }
+
+/** Follows somebody’s news in the other process. */
+async function follow(actor: Actor) {
+  const sessionId = await openSession(test.app, actor, device)
+  const told: NewsTold[] = []
+  let isOver = false
+  const end = other.app.newsWatch.follow({
+    ...{ ...actor, sessionId },
+    told: (news) => told.push(news),
+    over: () => (isOver = true),
+  })
+  await until(() => told.length > 0, 5, 'the first number')
+  return { sessionId, told, isOver: () => isOver, end }
+}
+
+it('is told within seconds to whoever follows, whichever process writes or reads it', async () => {
+  const [ann, bea] = [await member(), await member()]
+  const [hers, beas] = [await follow(ann), await follow(bea)]
+  expect(hers.told).toEqual([{ unread: 0, newest: null }])
+  await write(ann, { subject: 'One' })
+  await until(() => hers.told.length === 2, 5, 'the news')
+  expect(hers.told[1]).toMatchObject({ unread: 1, newest: { title: 'One', readAt: null } })
+  await write(ann, { subject: 'Two' })
+  await until(() => hers.told.at(-1)!.newest!.title === 'Two', 5, 'more news')
+  await readAllNews(test.app, ann)
+  await until(() => hers.told.at(-1)!.unread === 0, 5, 'that it was read')
+  expect(hers.told.at(-1)!.newest).toMatchObject({ title: 'Two', readAt: expect.any(String) })
+  expect(beas.told).toEqual([{ unread: 0, newest: null }])
+  const before = hers.told.length
+  hers.end()
+  await write(ann)
+  await write(bea)
+  await until(() => beas.told.length === 2, 5, 'her news')
+  expect(hers.told).toHaveLength(before)
+  beas.end()
+})
+
+it('is told no more once a session ended, went elsewhere, or its person left', async () => {
+  const [ann, bea, cyd] = [await member(), await member(), await member()]
+  const followed = [await follow(ann), await follow(bea), await follow(cyd)]
+  await leaveSession(test.app, followed[0]!.sessionId)
+  await setSessionWorkspace(test.app.db, followed[1]!.sessionId, (await alsoIn(bea)).workspaceId)
+  await leaveWorkspace(test.app, cyd)
+  await until(() => followed.every(({ isOver }) => isOver()), 5, 'three ends')
+  for (const actor of [ann, bea]) await write(actor)
+  const last = await follow(await member())
+  expect(followed.map(({ told }) => told.length)).toEqual([1, 1, 1])
+  other.app.newsWatch.stop()
+  expect(last.isOver()).toBe(true)
 })

@@ -174,13 +174,15 @@ function bodyOf({ json, form }: Sample, ids: Record<string, string>): BodyInit |
 
 async function ask(route: Route, caller: Caller | null, ids: Record<string, string>, body?: BodyInit) {
   const sample = SAMPLES[route.name]!
-  const type: Record<string, string> = typeof body === 'string' ? { 'content-type': 'application/json' } : {}
+  const sent: Record<string, string> = typeof body === 'string' ? { 'content-type': 'application/json' } : {}
   const response = await fetch(server.url + addressOf(route, sample, ids), {
     method: route.method,
-    headers: { ...caller?.headers, ...type },
+    headers: { ...caller?.headers, ...sent },
     body,
   })
-  return { status: response.status, type: response.headers.get('content-type') ?? '', text: await response.text() }
+  const type = response.headers.get('content-type') ?? ''
+  if (sample.isEndless && response.ok) await response.body!.cancel()
+  return { status: response.status, type, text: response.bodyUsed ? '' : await response.text() }
 }
 
 /** Runs a few at a time, and gathers what each finds wrong. */

@@ -28,6 +28,8 @@ export interface Sample {
   status?: number
   /** Its sender is in another workspace afterwards, or in none: it is not sent in earnest. */
   endsCaller?: boolean
+  /** Its answer goes on for as long as somebody listens. */
+  isEndless?: boolean
 }
 
 const STATES = { form: 'qubo', states: [] }
@@ -179,6 +181,7 @@ export const SAMPLES: Record<string, Sample> = {
   'POST /api/problems/{id}/restore': {},
   'GET /api/news': {},
   'GET /api/news/unread': {},
+  'GET /api/news/events': { isEndless: true },
   'POST /api/news/read': { json: {} },
   'POST /api/news/{id}/read': {},
   'GET /api/invitations': {},

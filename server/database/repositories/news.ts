@@ -1,8 +1,8 @@
-import { and, count, desc, eq, inArray, isNull, lt, lte, or, sql } from 'drizzle-orm'
+import { and, count, desc, gt, eq, inArray, isNull, lt, lte, or, sql } from 'drizzle-orm'
 import type { PgColumn } from 'drizzle-orm/pg-core'
 import type { Actor } from '../../app'
 import type { Db } from '../client'
-import { embeddings, machines, news, problems, returns, runSheets } from '../schema'
+import { embeddings, machines, memberships, news, problems, returns, runSheets, sessions } from '../schema'
 
 export type NewsRow = typeof news.$inferSelect
 
@@ -40,6 +40,34 @@ export async function countUnread(db: Db, actor: Actor): Promise<number> {
     .from(news)
     .where(and(ofPerson(actor), isUnread))
   return row!.n
+}
+
+/** What a session’s person is told in the workspace that it looks at. */
+export interface NewsStanding {
+  sessionId: string
+  workspaceId: string
+  unread: number
+  newestAt: Date | null
+}
+
+/** How things stand for each of these sessions; those that ended, or whose person left the workspace, are left out. */
+export async function newsStandings(db: Db, sessionIds: readonly string[], now: Date): Promise<NewsStanding[]> {
+  const own = and(eq(news.userId, sessions.userId), eq(news.workspaceId, sessions.workspaceId))
+  const unread = db.select({ n: count() }).from(news).where(and(own, isUnread))
+  const newest = db.select({ at: news.createdAt }).from(news).where(own).orderBy(desc(news.createdAt)).limit(1)
+  return db
+    .select({
+      sessionId: sessions.id,
+      workspaceId: sessions.workspaceId,
+      unread: sql<number>`(${unread})`.mapWith(Number),
+      newestAt: sql<Date | null>`(${newest})`.mapWith(news.createdAt),
+    })
+    .from(sessions)
+    .innerJoin(
+      memberships,
+      and(eq(memberships.userId, sessions.userId), eq(memberships.workspaceId, sessions.workspaceId)),
+    )
+    .where(and(inArray(sessions.id, [...sessionIds]), gt(sessions.expiresAt, now)))
 }
 
 /** What was read before stays read as of then. @returns false where the person has no such item in the workspace */
