@@ -28,7 +28,7 @@ export function useRepairs(machineId: MaybeRefOrGetter<string>, refresh: () => P
 
 /** Embeddings that calibrations of a machine broke. */
 export const useBrokenList = (machineId: MaybeRefOrGetter<string>) =>
-  useResource<BrokenList>(() => `/api/machines/${toValue(machineId)}/broken`)
+  useWholeList<BrokenList>(() => `/api/machines/${toValue(machineId)}/broken`)
 
 /** Repairing those of a machine, followed as long as a repair runs: the list and whatever else a repair changes. */
 export function useBroken(

@@ -2,7 +2,7 @@ import type { Page, Role } from '#shared/schemas/common'
 import type { InvitationView, InvitedView, MadeInvitation } from '#shared/schemas/invitations'
 
 /** Invitations that are open or have expired, for owners. */
-export const useInvitations = () => useResource<Page<InvitationView>>('/api/invitations')
+export const useInvitations = () => useWholeList<Page<InvitationView>>('/api/invitations')
 
 /** Inviting, sending again, withdrawing. */
 export function useInviting() {

@@ -6,7 +6,7 @@ const at = (calibration: MaybeRefOrGetter<number | undefined>): string =>
 
 /** The embeddings that stand on a machine at a calibration. */
 export const useMachineUse = (machineId: MaybeRefOrGetter<string>, calibration: MaybeRefOrGetter<number | undefined>) =>
-  useResource<MachineUse>(() => `/api/machines/${toValue(machineId)}/use${at(calibration)}`)
+  useWholeList<MachineUse>(() => `/api/machines/${toValue(machineId)}/use${at(calibration)}`)
 
 /** What is known of a machine's room, and how a measurement of the longest chains is begun. */
 export async function useCapacityCard(

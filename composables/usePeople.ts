@@ -1,12 +1,16 @@
 import type { Page, Role } from '#shared/schemas/common'
 import type { MemberView } from '#shared/schemas/session'
+import { wholeList } from '~/utils/ui/wholeList'
 import { workspaceHeaders } from '~/utils/team/shownWorkspace'
 
-export const usePeople = () => useResource<Page<MemberView>>('/api/people')
+export const usePeople = () => useWholeList<Page<MemberView>>('/api/people')
 
-/** Members, for whoever may mention them. */
+/** All members, for whoever may mention them: names that are typed out count as those that are chosen. */
 export const useMentionable = () =>
-  useLateLoad(async () => (await $fetch<Page<MemberView>>('/api/people', { headers: workspaceHeaders() })).items)
+  useLateLoad(async () => {
+    const readPage = (address: string) => $fetch<Page<MemberView>>(address, { headers: workspaceHeaders() })
+    return (await wholeList('/api/people', readPage)).items
+  })
 
 /** Changes of who belongs to the workspace, and as what. */
 export function useMembers() {

@@ -1,10 +1,11 @@
+import type { Page } from '#shared/schemas/common'
 import type { ReferenceItem, StartReference } from '#shared/schemas/reference'
 import type { ApiFailure } from './useApi'
 
 /** The looks for the optimum of one version of a problem, and how one is begun at the current version. */
 export async function useReference(problemId: string, version: MaybeRefOrGetter<number>) {
   const api = useApi()
-  const { data, failure, refresh } = await useResource<{ items: ReferenceItem[] }>(
+  const { data, failure, refresh } = await useWholeList<Page<ReferenceItem>>(
     () => `/api/problems/${problemId}/references?version=${toValue(version)}`,
   )
   const busy = ref(false)

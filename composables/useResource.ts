@@ -10,12 +10,20 @@ export interface Resource<T> {
   refresh: () => Promise<void>
 }
 
-/** Loads one thing from the server, during rendering on the server too. */
-export async function useResource<T>(url: MaybeRefOrGetter<string>): Promise<Resource<T>> {
+type ReadOne<T> = (address: string) => Promise<T>
+
+/**
+ * Loads one thing from the server, during rendering on the server too.
+ * @param readAll loads what takes several requests
+ */
+export async function useResource<T>(
+  url: MaybeRefOrGetter<string>,
+  readAll: (address: string, readOne: ReadOne<T>) => Promise<T> = (address, readOne) => readOne(address),
+): Promise<Resource<T>> {
   const fetcher = useRequestFetch() as (url: string, options: { headers: Record<string, string> }) => Promise<T>
   const address = computed(() => toValue(url))
   const { data, error, refresh, status } = await useAsyncData(address, () =>
-    fetcher(address.value, { headers: workspaceHeaders() }),
+    readAll(address.value, (one) => fetcher(one, { headers: workspaceHeaders() })),
   )
   const failure = computed<ApiFailure | null>(() => (error.value ? failureOf(error.value) : null))
   return { data: data as Ref<T | undefined>, failure, status, refresh: () => refresh() }

@@ -1,4 +1,5 @@
 import type { RunSheetScans, ScanRequest } from '#shared/schemas/scans'
+import { wholeList } from '~/utils/ui/wholeList'
 import type { ApiFailure } from './useApi'
 
 /** The strength scans of a run sheet, loaded in the browser only: few look at them each time. */
@@ -11,7 +12,7 @@ export function useScans(runSheetId: MaybeRefOrGetter<string>) {
 
   async function load(): Promise<void> {
     try {
-      scans.value = await $fetch<RunSheetScans>(address())
+      scans.value = await wholeList(address(), (page) => $fetch<RunSheetScans>(page))
       failure.value = null
     } catch (error) {
       failure.value = failureOf(error)

@@ -2,7 +2,7 @@ import type { Page } from '#shared/schemas/common'
 import type { SignedInView } from '#shared/schemas/account'
 
 /** Where one is signed in. */
-export const useSignedIn = () => useResource<Page<SignedInView>>('/api/sessions')
+export const useSignedIn = () => useWholeList<Page<SignedInView>>('/api/sessions')
 
 /** Ends sessions of one's own, then looks again. */
 export function useEndingSessions(refresh: () => Promise<unknown>) {

@@ -2,7 +2,7 @@ import type { Page } from '#shared/schemas/common'
 import type { MakeStandIn, StandInView } from '#shared/schemas/stand-ins'
 
 /** Whose reviews are in whose hands, now and to come. */
-export const useStandIns = () => useResource<Page<StandInView>>('/api/stand-ins')
+export const useStandIns = () => useWholeList<Page<StandInView>>('/api/stand-ins')
 
 /** Handing reviews over, and taking them back. */
 export function useStandInActions() {

@@ -1,8 +1,9 @@
+import type { Page } from '#shared/schemas/common'
 import type { LibrarySummary } from '#shared/schemas/library'
 import type { ApiFailure } from './useApi'
 
 /** Tags of the workspace with how many problems bear each. */
-export const useTagsInUse = () => useResource<LibrarySummary['tags']>('/api/problems/tags')
+export const useTagsInUse = () => useWholeList<Page<LibrarySummary['tags'][number]>>('/api/problems/tags')
 
 /** Adding and taking away tags of problems, one change after the other. */
 export function useTags(refresh: () => Promise<unknown>) {

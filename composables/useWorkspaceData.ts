@@ -1,4 +1,5 @@
 import type { ArchivedMemberView, WorkspaceView } from '#shared/schemas/archives'
+import type { Page } from '#shared/schemas/common'
 import type { UsedPasskey } from '#shared/schemas/passkeys'
 import type { UploadProgress } from './useUploads'
 
@@ -6,7 +7,7 @@ import type { UploadProgress } from './useUploads'
 export const useWorkspaceView = () => useResource<WorkspaceView>('/api/workspaces/current')
 
 /** Members where an imported workspace comes from who are not here yet. */
-export const useArchivedMembers = () => useResource<{ items: ArchivedMemberView[] }>('/api/people/archived')
+export const useArchivedMembers = () => useWholeList<Page<ArchivedMemberView>>('/api/people/archived')
 
 /** Sending the archive of a workspace. */
 export function useImport() {

@@ -1,7 +1,7 @@
+import { pageQuerySchema } from '../../shared/schemas/common'
 import { membersOf } from '../services/people'
 
-/** The people of the workspace with their roles. */
-export default defineRoute('member', async (_event, { app, ...actor }) => ({
-  items: await membersOf(app, actor),
-  nextCursor: null,
-}))
+/** The people of the workspace with their roles, by name. */
+export default defineRoute('member', (event, { app, ...actor }) =>
+  membersOf(app, actor, queryOf(event, pageQuerySchema)),
+)

@@ -1,3 +1,4 @@
+import type { PageQuery } from '../../shared/schemas/common'
 import type { EmbeddingDamage } from '../../shared/schemas/machines'
 import type { BrokenList, BrokenState, BrokenView, RepairView } from '../../shared/schemas/repairs'
 import { OPEN_STATES } from '../../shared/schemas/run-sheets'
@@ -7,6 +8,7 @@ import { replacementsOf } from '../database/repositories/embeddings'
 import { findJobOfSubject } from '../database/repositories/jobs'
 import type { MachineRow } from '../database/repositories/machines'
 import { listBrokenEmbeddings } from '../database/repositories/machines'
+import { pageOf, positionOf } from '../database/repositories/pages'
 import { findReferredProblem, personOf } from '../database/repositories/problems'
 import type { RunSheetRow } from '../database/repositories/run-sheets'
 import { runSheetsOfEmbeddings } from '../database/repositories/run-sheets'
@@ -107,14 +109,28 @@ async function damageOf(app: App, { broken, embedding }: Listed): Promise<Embedd
   return (await damageInForce(app, embedding)) ?? broken.damage
 }
 
+/** Views of some of the broken embeddings of a machine, as far as they are of interest. */
+async function viewsOf(app: App, shown: readonly Listed[], around: Surroundings): Promise<BrokenView[]> {
+  const views: BrokenView[] = []
+  for (const row of shown) views.push(await viewOf(app, row, await damageOf(app, row), around))
+  return views.filter(isCurrent)
+}
+
 /** Embeddings that calibrations of a machine broke and what becomes of them, the latest calibration first. */
-export async function brokenList(app: App, actor: Actor, machineId: string): Promise<BrokenList> {
+export async function brokenEmbeddings(app: App, machine: MachineRow): Promise<BrokenView[]> {
+  const rows = await listBrokenEmbeddings(app.db, machine.id)
+  return viewsOf(app, rows, await surroundingsOf(app, machine, rows))
+}
+
+/** The same a page at a time; what was settled long ago leaves gaps, so that a page may hold less than its limit. */
+export async function brokenList(app: App, actor: Actor, machineId: string, query: PageQuery): Promise<BrokenList> {
   const machine = await machineRow(app, actor, machineId)
+  // Whether a repair stands depends on whether it is broken itself, so all are looked at.
   const rows = await listBrokenEmbeddings(app.db, machineId)
-  const around = await surroundingsOf(app, machine, rows)
-  const items: BrokenView[] = []
-  for (const row of rows) items.push(await viewOf(app, row, await damageOf(app, row), around))
-  return { calibration: machine.calibration, items: items.filter(isCurrent) }
+  const offset = positionOf(query.cursor)
+  const shown = pageOf(rows.slice(offset, offset + query.limit + 1), query.limit, offset)
+  const items = await viewsOf(app, shown.items, await surroundingsOf(app, machine, rows))
+  return { calibration: machine.calibration, items, nextCursor: shown.nextCursor }
 }
 
 /** One embedding that does not hold at the calibration in force; null where it does. */

@@ -1,5 +1,6 @@
 import { randomUUID } from 'node:crypto'
 import { DomainError } from '../../shared/errors'
+import type { Page, PageQuery } from '../../shared/schemas/common'
 import type { InvitationView, Invite, MadeInvitation } from '../../shared/schemas/invitations'
 import type { Actor, App } from '../app'
 import type { Db } from '../database/client'
@@ -10,6 +11,7 @@ import {
   listInvitations,
   updateInvitation,
 } from '../database/repositories/invitations'
+import { readPage } from '../database/repositories/pages'
 import { findRoles, findUser, findUserByEmail, findWorkspace } from '../database/repositories/people'
 import { invitationLetter } from '../mail/letters'
 import { countAttempt } from './attempts'
@@ -57,17 +59,20 @@ export async function invite(app: App, actor: Actor, { email, roles }: Invite): 
 }
 
 /** Invitations that are open or have expired, newest first. */
-export async function invitationsOf(app: App, actor: Actor): Promise<InvitationView[]> {
-  const rows = await listInvitations(app.db, actor.workspaceId)
-  return rows.map(({ invitation, by }) => ({
-    id: invitation.id,
-    email: invitation.email,
-    roles: invitation.roles,
-    by,
-    createdAt: invitation.createdAt.toISOString(),
-    expiresAt: invitation.expiresAt.toISOString(),
-    hasExpired: invitation.expiresAt <= app.now(),
-  }))
+export function invitationsOf(app: App, { workspaceId }: Actor, query: PageQuery): Promise<Page<InvitationView>> {
+  return readPage(
+    query,
+    (place) => listInvitations(app.db, workspaceId, place),
+    ({ invitation, by }) => ({
+      id: invitation.id,
+      email: invitation.email,
+      roles: invitation.roles,
+      by,
+      createdAt: invitation.createdAt.toISOString(),
+      expiresAt: invitation.expiresAt.toISOString(),
+      hasExpired: invitation.expiresAt <= app.now(),
+    }),
+  )
 }
 
 async function requireInvitation(db: Db, actor: Actor, id: string): Promise<InvitationRow> {

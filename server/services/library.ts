@@ -1,9 +1,10 @@
 import { DomainError } from '../../shared/errors'
 import { firstDirection } from '../../shared/library'
+import type { Page, PageQuery } from '../../shared/schemas/common'
 import type { LibraryPage, LibraryQuery, LibrarySummary } from '../../shared/schemas/library'
 import type { Actor, App } from '../app'
 import { countStates, countTags, problemsInOrder, searchLibrary } from '../database/repositories/library'
-import { cursorOf, positionOf } from '../database/repositories/pages'
+import { cursorOf, positionOf, readPage } from '../database/repositories/pages'
 import { contextOf, itemOf } from './problem-items'
 
 /** @throws DomainError for a cursor that no answer gave out */
@@ -35,8 +36,16 @@ export async function libraryPage(app: App, actor: Actor, query: LibraryQuery): 
 }
 
 /** Tags in use, in alphabetical order, with how many problems bear each. */
-export const tagsInUse = (app: App, actor: Actor): Promise<LibrarySummary['tags']> =>
-  countTags(app.db, actor.workspaceId)
+export const tagsInUse = (
+  app: App,
+  { workspaceId }: Actor,
+  query: PageQuery,
+): Promise<Page<LibrarySummary['tags'][number]>> =>
+  readPage(
+    query,
+    ({ limit, offset }) => countTags(app.db, workspaceId).limit(limit).offset(offset),
+    (tag) => tag,
+  )
 
 /** How many problems have come how far, and the tags in use. */
 export async function librarySummary(app: App, actor: Actor): Promise<LibrarySummary> {
@@ -46,7 +55,7 @@ export async function librarySummary(app: App, actor: Actor): Promise<LibrarySum
   return {
     total: states.reduce((sum, { count }) => sum + count, 0),
     states: Object.fromEntries(states.map(({ state, count }) => [state, count])),
-    tags: await tagsInUse(app, actor),
+    tags: await countTags(app.db, actor.workspaceId),
     newest: ids[0] ?? null,
   }
 }

@@ -1,6 +1,7 @@
-import type { MachineUse, MachineUseItem } from '../../shared/schemas/machine-use'
+import type { MachineUse, MachineUseItem, MachineUseQuery } from '../../shared/schemas/machine-use'
 import type { Actor, App } from '../app'
 import { brokenAt, embeddingsUpTo, uploadsOf } from '../database/repositories/machine-use'
+import { readPage } from '../database/repositories/pages'
 import type { RunSheetRow } from '../database/repositories/run-sheets'
 import { runSheetsOfEmbeddings } from '../database/repositories/run-sheets'
 import { calibratedMachine } from './machine-graphs'
@@ -8,9 +9,13 @@ import { calibratedMachine } from './machine-graphs'
 const isOpen = ({ state }: RunSheetRow): boolean => state !== 'returned' && state !== 'closed'
 
 /** The embeddings that stand on a machine at a calibration, with how much of it each takes; newest first. */
-export async function machineUse(app: App, actor: Actor, id: string, number?: number): Promise<MachineUse> {
-  const { calibration } = await calibratedMachine(app, actor, id, number)
-  const rows = await embeddingsUpTo(app.db, id, calibration.number)
+export async function machineUse(app: App, actor: Actor, id: string, query: MachineUseQuery): Promise<MachineUse> {
+  const { calibration } = await calibratedMachine(app, actor, id, query.calibration)
+  const { items: rows, nextCursor } = await readPage(
+    query,
+    (place) => embeddingsUpTo(app.db, id, calibration.number, place),
+    (row) => row,
+  )
   const ids = rows.map(({ embedding }) => embedding.id)
   const broken = await brokenAt(app.db, id, calibration.number)
   const uploads = await uploadsOf(app.db, ids)
@@ -37,5 +42,5 @@ export async function machineUse(app: App, actor: Actor, id: string, number?: nu
       },
     ]
   })
-  return { calibration: calibration.number, workingQubits: calibration.qubits, items }
+  return { calibration: calibration.number, workingQubits: calibration.qubits, items, nextCursor }
 }

@@ -1,6 +1,6 @@
 import { randomBytes, randomUUID, timingSafeEqual } from 'node:crypto'
 import type { z } from 'zod'
-import type { Role } from '../../shared/schemas/common'
+import type { Page, PageQuery, Role } from '../../shared/schemas/common'
 import type { EntranceView, MemberView, SessionView, setupSchema } from '../../shared/schemas/session'
 import { DomainError } from '../../shared/errors'
 import type { Actor, App } from '../app'
@@ -21,6 +21,7 @@ import {
   readFact,
   takeFact,
 } from '../database/repositories/people'
+import { readPage } from '../database/repositories/pages'
 import { awayFor } from '../database/repositories/stand-ins'
 import { budgetTotal } from './budget-view'
 import { sendsMail } from './mail'
@@ -72,9 +73,13 @@ export async function entranceView(app: App): Promise<EntranceView> {
   }
 }
 
-export async function membersOf(app: App, actor: Actor): Promise<MemberView[]> {
-  const rows = await listMembers(app.db, actor.workspaceId)
-  return rows.map((row) => ({ ...row, since: row.since.toISOString() }))
+/** Members of the workspace by name. */
+export function membersOf(app: App, { workspaceId }: Actor, query: PageQuery): Promise<Page<MemberView>> {
+  return readPage(
+    query,
+    ({ limit, offset }) => listMembers(app.db, workspaceId).limit(limit).offset(offset),
+    (row) => ({ ...row, since: row.since.toISOString() }),
+  )
 }
 
 /** On an empty installation: the one-time code that opens the first account; undefined once there is one. */

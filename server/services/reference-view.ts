@@ -1,9 +1,17 @@
 import { csvCell } from '../../shared/csv'
 import { DomainError } from '../../shared/errors'
-import type { ReferenceItem, ReferencePart, ReferenceStatus, ReferenceView } from '../../shared/schemas/reference'
+import type { Page } from '../../shared/schemas/common'
+import type {
+  ReferenceItem,
+  ReferencePart,
+  ReferencesQuery,
+  ReferenceStatus,
+  ReferenceView,
+} from '../../shared/schemas/reference'
 import { optimumMethodSchema } from '../../shared/schemas/reference'
 import type { Actor, App } from '../app'
 import { jobsOfSubjects } from '../database/repositories/jobs'
+import { readPage } from '../database/repositories/pages'
 import { personOf } from '../database/repositories/problems'
 import type { ProblemRow } from '../database/repositories/problems'
 import type { ReferenceRow } from '../database/repositories/reference-optima'
@@ -11,8 +19,6 @@ import { bestReference, listReferences } from '../database/repositories/referenc
 import { problemData, problemRow } from './problems'
 import { signed, signOf } from './sense'
 
-/** Looks shown of one version. */
-const SHOWN = 20
 /** Labels of variables that are up, named in a list. */
 const NAMED = 40
 
@@ -65,21 +71,30 @@ async function itemOf(app: App, row: ReferenceRow, sense: 'min' | 'max', jobId: 
 }
 
 /** Looks for the optimum of one version of a problem, newest first; a running one with its job. */
-export async function referencesOf(app: App, actor: Actor, problemId: string, version?: number) {
-  const problem = await problemRow(app, actor, problemId, version)
-  const rows = await listReferences(app.db, problemId, problem.version, SHOWN)
+export async function referencesOf(
+  app: App,
+  actor: Actor,
+  problemId: string,
+  query: ReferencesQuery,
+): Promise<Page<ReferenceItem>> {
+  const problem = await problemRow(app, actor, problemId, query.version)
+  const { items: rows, nextCursor } = await readPage(
+    query,
+    (place) => listReferences(app.db, problemId, problem.version, place),
+    (row) => row,
+  )
   const jobIds = await jobsOfSubjects(
     app.db,
     rows.map(({ id }) => id),
   )
   const items = await Promise.all(rows.map((row) => itemOf(app, row, problem.sense, jobIds.get(row.id) ?? null)))
-  return { items, nextCursor: null }
+  return { items, nextCursor }
 }
 
 async function requireBest(app: App, problem: ProblemRow): Promise<ReferenceRow> {
   const best = await bestReference(app.db, problem.id, problem.version)
   if (best) return best
-  const [newest] = await listReferences(app.db, problem.id, problem.version, 1)
+  const [newest] = await listReferences(app.db, problem.id, problem.version, { limit: 1, offset: 0 })
   const why: Record<ReferenceRow['status'], string> = {
     running: 'The look for it is under way.',
     cancelled: 'The look for it was cancelled before it had any state.',

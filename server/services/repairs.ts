@@ -6,7 +6,7 @@ import type { Db } from '../database/client'
 import type { EmbeddingRow } from '../database/repositories/embeddings'
 import { lockEmbedding, replacementsOf } from '../database/repositories/embeddings'
 import { findJobOfSubject } from '../database/repositories/jobs'
-import { brokenList, brokenView } from './broken-view'
+import { brokenEmbeddings, brokenView } from './broken-view'
 import { embeddingRow } from './embedding-subject'
 import { startEmbedding } from './embeddings'
 import { machineRow } from './machine-graphs'
@@ -34,8 +34,7 @@ export async function startRepairs(
     for (const row of rows) repairs.push(await repairOne(app, actor, row))
     return { repairs, refused: [] }
   }
-  const { items } = await brokenList(app, actor, machineId)
-  const waiting = items.filter(({ state }) => state === 'to repair')
+  const waiting = (await brokenEmbeddings(app, machine)).filter(({ state }) => state === 'to repair')
   if (waiting.length === 0) throw wrongState('repair.none', `No embedding on ${machine.name} waits for a repair.`)
   return repairAll(
     app,

@@ -1,11 +1,13 @@
 import { randomUUID } from 'node:crypto'
 import { kneeOf } from '../../shared/engine/readout/knee'
 import { DomainError } from '../../shared/errors'
+import type { PageQuery } from '../../shared/schemas/common'
 import type { RunSheetSettings } from '../../shared/schemas/run-sheets'
 import type { ReturnedAtStrength, RunSheetScans, ScanRequest, ScanView } from '../../shared/schemas/scans'
 import type { Actor, App } from '../app'
 import { nextNumber } from '../database/repositories/counters'
 import { insertJob, jobsOfSubjects } from '../database/repositories/jobs'
+import { readPage } from '../database/repositories/pages'
 import { findScan, insertScan, scansOfRunSheet } from '../database/repositories/scans'
 import { returnedOnEmbedding } from '../database/repositories/run-sheets'
 import { proportion } from './proportion'
@@ -107,16 +109,21 @@ export async function scanView(app: App, actor: Actor, id: string): Promise<Scan
 }
 
 /** The scans of a run sheet, newest first, and what the machine returned on its embedding. */
-export async function scansOf(app: App, actor: Actor, runSheetId: string): Promise<RunSheetScans> {
+export async function scansOf(app: App, actor: Actor, runSheetId: string, query: PageQuery): Promise<RunSheetScans> {
   const sheet = await runSheetRow(app, actor, runSheetId)
   const bench = await benchOf(app, actor, sheet)
-  const rows = await scansOfRunSheet(app.db, runSheetId)
+  const { items: rows, nextCursor } = await readPage(
+    query,
+    (place) => scansOfRunSheet(app.db, runSheetId, place),
+    (row) => row,
+  )
   const jobs = await jobsOfSubjects(
     app.db,
     rows.map(({ scan }) => scan.id),
   )
   return {
     items: rows.map((row) => viewOf(row, jobs.get(row.scan.id) ?? null, bench.problem.sense)),
+    nextCursor,
     returned: await returnedOn(app, bench),
   }
 }

@@ -1,8 +1,9 @@
 import { randomUUID } from 'node:crypto'
 import { DomainError } from '../../shared/errors'
-import type { Role } from '../../shared/schemas/common'
+import type { Page, PageQuery, Role } from '../../shared/schemas/common'
 import type { SignedInView } from '../../shared/schemas/account'
 import type { Actor, App } from '../app'
+import { readPage } from '../database/repositories/pages'
 import type { SessionRow } from '../database/repositories/sessions'
 import {
   deleteExpiredSessions,
@@ -73,9 +74,12 @@ export async function sessionCaller(app: App, id: string, address: string): Prom
 }
 
 /** Where a person is signed in, last seen first. */
-export async function sessionsOf(app: App, userId: string, ownId: string): Promise<SignedInView[]> {
-  const rows = await listSessions(app.db, userId, app.now())
-  return rows.map(({ session, workspace }) => viewOf(session, workspace, session.id === ownId))
+export function sessionsOf(app: App, userId: string, ownId: string, query: PageQuery): Promise<Page<SignedInView>> {
+  return readPage(
+    query,
+    (place) => listSessions(app.db, userId, app.now(), place),
+    ({ session, workspace }) => viewOf(session, workspace, session.id === ownId),
+  )
 }
 
 const viewOf = (row: SessionRow, workspace: string, isThis: boolean): SignedInView => ({

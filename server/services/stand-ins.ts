@@ -1,10 +1,11 @@
 import { randomUUID } from 'node:crypto'
 import { DomainError } from '../../shared/errors'
-import type { Person, Role } from '../../shared/schemas/common'
+import type { Page, PageQuery, Person, Role } from '../../shared/schemas/common'
 import type { MakeStandIn, StandInView } from '../../shared/schemas/stand-ins'
 import type { Actor, App } from '../app'
 import type { Db } from '../database/client'
 import { findRoles, lockWorkspace } from '../database/repositories/people'
+import { readPage } from '../database/repositories/pages'
 import { personOf } from '../database/repositories/problems'
 import type { RunSheetRow } from '../database/repositories/run-sheets'
 import {
@@ -31,16 +32,20 @@ const dayOf = (at: Date): string => at.toISOString().slice(0, 10)
 const lastDay = (endsAt: Date): string => dayOf(new Date(endsAt.getTime() - DAY_MS))
 
 /** Whose reviews are in whose hands, now and to come, the earliest first. */
-export async function standInsOf(app: App, { workspaceId }: Actor): Promise<StandInView[]> {
+export function standInsOf(app: App, { workspaceId }: Actor, query: PageQuery): Promise<Page<StandInView>> {
   const now = app.now()
-  return (await listStandIns(app.db, workspaceId, now)).map(({ row, forWhom, by }) => ({
-    id: row.id,
-    for: forWhom,
-    by,
-    startsOn: dayOf(row.startsAt),
-    endsOn: lastDay(row.endsAt),
-    isOn: row.startsAt <= now,
-  }))
+  return readPage(
+    query,
+    (place) => listStandIns(app.db, workspaceId, now, place),
+    ({ row, forWhom, by }) => ({
+      id: row.id,
+      for: forWhom,
+      by,
+      startsOn: dayOf(row.startsAt),
+      endsOn: lastDay(row.endsAt),
+      isOn: row.startsAt <= now,
+    }),
+  )
 }
 
 const refused = (code: string, path: string, message: string): DomainError =>

@@ -1,9 +1,11 @@
 import { randomUUID } from 'node:crypto'
 import type { ArchivedMemberView } from '../../shared/schemas/archives'
+import type { Page, PageQuery } from '../../shared/schemas/common'
 import type { Actor, App } from '../app'
 import type { Db } from '../database/client'
 import { findArchivedPerson, listArchivedMembers, settleArchivedPerson } from '../database/repositories/archived-people'
 import { insertJob } from '../database/repositories/jobs'
+import { readPage } from '../database/repositories/pages'
 import { replacePerson } from '../database/repositories/workspace-rows'
 import { Archive } from './archive/open-archive'
 import { countAttempt } from './attempts'
@@ -30,9 +32,12 @@ export async function startImport(app: App, { workspaceId, userId }: Actor, file
 }
 
 /** Who was a member where the archive comes from and has not come yet. */
-export async function archivedMembers(app: App, { workspaceId }: Actor): Promise<ArchivedMemberView[]> {
-  const rows = await listArchivedMembers(app.db, workspaceId)
-  return rows.map((row) => ({ ...row, email: row.email! }))
+export function archivedMembers(app: App, { workspaceId }: Actor, query: PageQuery): Promise<Page<ArchivedMemberView>> {
+  return readPage(
+    query,
+    (place) => listArchivedMembers(app.db, workspaceId, place),
+    (row) => ({ ...row, email: row.email! }),
+  )
 }
 
 /** Somebody joins whom the archive of the workspace knows by the address that was just shown to be theirs: what they did is theirs again. */

@@ -1,8 +1,11 @@
 import { z } from 'zod'
 import type { CapacityResult, CapacitySettings, ChainLengthPoint } from './machines'
 import { calibrationQuerySchema } from './machines'
-import type { Person, Proportion } from './common'
-import { calibrationNumberSchema, seedSchema } from './common'
+import type { Page, Person, Proportion } from './common'
+import { calibrationNumberSchema, pageQuerySchema, seedSchema } from './common'
+
+export const machineUseQuerySchema = calibrationQuerySchema.extend(pageQuerySchema.shape)
+export type MachineUseQuery = z.infer<typeof machineUseQuerySchema>
 
 export const breaksQuerySchema = calibrationQuerySchema.extend({
   /** Counts rehearsals too, which say nothing about the machine. */
@@ -44,10 +47,9 @@ export interface MachineUseItem {
   madeAt: string
 }
 
-export interface MachineUse {
+export interface MachineUse extends Page<MachineUseItem> {
   calibration: number
   workingQubits: number
-  items: MachineUseItem[]
 }
 
 /** Breaks of one part beside those of its neighbours; see docs/formulas.md, Breaks by part. */

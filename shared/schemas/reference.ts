@@ -1,6 +1,6 @@
 import { z } from 'zod'
 import type { Person, Proportion } from './common'
-import { seedSchema } from './common'
+import { pageQuerySchema, seedSchema } from './common'
 
 /** Ways to an optimum; all but annealing prove it when they come to their end. */
 export const optimumMethodSchema = z.enum(['enumeration', 'tree decomposition', 'integer programme', 'annealing'])
@@ -26,7 +26,8 @@ export const referenceQuerySchema = z.object({
   format: z.enum(['json', 'csv']).default('json'),
 })
 
-export const referencesQuerySchema = referenceQuerySchema.pick({ version: true })
+export const referencesQuerySchema = referenceQuerySchema.pick({ version: true }).extend(pageQuerySchema.shape)
+export type ReferencesQuery = z.infer<typeof referencesQuerySchema>
 
 /** The `detail` of a job that looks for a reference optimum; energies in the problem's own sense. */
 export interface ReferenceProgress {

@@ -1,5 +1,5 @@
 import { z } from 'zod'
-import type { Person } from './common'
+import type { Page, Person } from './common'
 import { idSchema } from './common'
 import type { EmbeddingStatus } from './embeddings'
 import type { EmbeddingDamage } from './machines'
@@ -54,7 +54,6 @@ export interface BrokenView {
   repair: RepairView | null
 }
 
-export interface BrokenList {
+export interface BrokenList extends Page<BrokenView> {
   calibration: number
-  items: BrokenView[]
 }

@@ -1,5 +1,5 @@
 import { z } from 'zod'
-import type { Person, Proportion } from './common'
+import type { Page, Person, Proportion } from './common'
 import { seedSchema } from './common'
 
 const strength = z.number().positive().max(1e9)
@@ -67,8 +67,7 @@ export interface ReturnedAtStrength {
   best: number
 }
 
-export interface RunSheetScans {
-  /** Newest first. */
-  items: ScanView[]
+/** Scans, newest first, and beside each page of them all that the machine returned. */
+export interface RunSheetScans extends Page<ScanView> {
   returned: ReturnedAtStrength[]
 }

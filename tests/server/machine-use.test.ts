@@ -115,7 +115,7 @@ describe('use', () => {
     const { app, actor } = test
     const machineId = await test.machine({ kind: 'chimera', m: 4 })
     const { embeddingId } = await returnedOn(machineId)
-    const use = await machineUse(app, actor, machineId)
+    const use = await machineUse(app, actor, machineId, { limit: 50 })
     expect(use).toMatchObject({ calibration: 1, workingQubits: 128 })
     expect(use.items).toMatchObject([
       { id: embeddingId, calibration: 1, brokenSince: null, returns: 1, reads: 200, openRunSheets: [{ number: 2 }] },
@@ -124,8 +124,10 @@ describe('use', () => {
     const { qubits } = await machineBreaks(app, actor, machineId, { rehearsals: false })
     const defects = { qubits: [qubits[0]!.id], couplers: [] }
     await calibrateMachine(app, actor, machineId, { defects, remark: '' })
-    expect((await machineUse(app, actor, machineId)).items[0]).toMatchObject({ brokenSince: 2 })
-    expect((await machineUse(app, actor, machineId, 1)).items[0]).toMatchObject({ brokenSince: null })
+    expect((await machineUse(app, actor, machineId, { limit: 50 })).items[0]).toMatchObject({ brokenSince: 2 })
+    expect((await machineUse(app, actor, machineId, { calibration: 1, limit: 50 })).items[0]).toMatchObject({
+      brokenSince: null,
+    })
   })
 })
 

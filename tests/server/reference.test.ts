@@ -59,7 +59,7 @@ describe('a problem of 40 variables', () => {
     const annealed = await solved(again, { method: 'annealing' })
     // The newest look proves nothing; the proved value stays the one that counts.
     expect(annealed.view.method).toBe('integer programme')
-    const { items } = await referencesOf(test.app, test.actor, again)
+    const { items } = await referencesOf(test.app, test.actor, again, { limit: 50 })
     expect(items.map(({ status }) => status)).toEqual(['best found', 'proved'])
     expect(items[0]!.energy).toBe(view.energy)
   })
@@ -147,7 +147,7 @@ describe('a problem that takes long', () => {
       kind: 'not acceptable',
       code: 'reference.method',
     })
-    expect((await referencesOf(test.app, test.actor, problemId)).items).toEqual([])
+    expect((await referencesOf(test.app, test.actor, problemId, { limit: 50 })).items).toEqual([])
   })
 })
 

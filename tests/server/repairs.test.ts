@@ -38,7 +38,7 @@ afterAll(() => test.close())
 const lose = (machineId: string, qubits: number[], couplers: [number, number][] = []) =>
   calibrateMachine(test.app, steward, machineId, { defects: { qubits, couplers }, remark: 'swapped a cable' })
 const viewOf = (id: string) => embeddingView(test.app, test.actor, id)
-const listOf = (machineId: string) => brokenList(test.app, test.actor, machineId)
+const listOf = (machineId: string) => brokenList(test.app, test.actor, machineId, { limit: 50 })
 
 async function repaired(machineId: string, embeddingIds?: string[]): Promise<EmbeddingView[]> {
   const { repairs } = await startRepairs(test.app, test.actor, machineId, { embeddingIds })

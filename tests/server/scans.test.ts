@@ -158,7 +158,7 @@ describe('a scan over chain strengths', () => {
   it('goes with its run sheet, and comes back with it', async () => {
     const { sheetId } = await runSheet()
     const { view } = await scanned(sheetId, { strengths: [2, 8], reads: 20, sweeps: 10 })
-    expect((await scansOf(test.app, test.actor, sheetId)).items.map(({ id }) => id)).toEqual([view.id])
+    expect((await scansOf(test.app, test.actor, sheetId, { limit: 50 })).items.map(({ id }) => id)).toEqual([view.id])
     await deleteFor(test.app, 'run sheet', sheetId)
     await expect(scanView(test.app, test.actor, view.id)).rejects.toThrow(/no such scan/)
     await restore(test.app, test.actor, 'run sheet', sheetId)

@@ -1,6 +1,7 @@
-import { and, asc, eq, isNotNull } from 'drizzle-orm'
+import { and, asc, eq, isNotNull, sql } from 'drizzle-orm'
 import type { Db } from '../client'
 import { archivedPeople, users } from '../schema'
+import type { Place } from './pages'
 
 export async function insertPersonWithoutAccount(
   tx: Db,
@@ -14,14 +15,16 @@ export async function insertArchivedPeople(tx: Db, row: typeof archivedPeople.$i
 }
 
 /** Members of the workspace that an archive came from who are not here yet, by name. */
-export async function listArchivedMembers(db: Db, workspaceId: string) {
-  const rows = await db
+export async function listArchivedMembers(db: Db, workspaceId: string, { limit, offset }: Place) {
+  const isMember = sql`cardinality(${archivedPeople.roles}) > 0`
+  return db
     .select({ id: users.id, name: users.name, email: archivedPeople.email, roles: archivedPeople.roles })
     .from(archivedPeople)
     .innerJoin(users, eq(users.id, archivedPeople.userId))
-    .where(and(eq(archivedPeople.workspaceId, workspaceId), isNotNull(archivedPeople.email)))
+    .where(and(eq(archivedPeople.workspaceId, workspaceId), isNotNull(archivedPeople.email), isMember))
     .orderBy(asc(users.name), asc(users.id))
-  return rows.filter(({ roles }) => roles.length > 0)
+    .limit(limit)
+    .offset(offset)
 }
 
 /** Whom an address belonged to in the archive of the workspace. */

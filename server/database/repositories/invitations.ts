@@ -1,6 +1,7 @@
 import { and, desc, eq, gt, isNull } from 'drizzle-orm'
 import type { Db } from '../client'
 import { invitations, users, workspaces } from '../schema'
+import type { Place } from './pages'
 
 export type InvitationRow = typeof invitations.$inferSelect
 
@@ -11,13 +12,15 @@ export async function insertInvitation(tx: Db, row: InvitationRow): Promise<void
 const isOpen = and(isNull(invitations.acceptedAt), isNull(invitations.withdrawnAt))
 
 /** Invitations that were neither accepted nor withdrawn, expired ones among them, newest first, with who invited. */
-export async function listInvitations(db: Db, workspaceId: string) {
+export async function listInvitations(db: Db, workspaceId: string, { limit, offset }: Place) {
   return db
     .select({ invitation: invitations, by: users.name })
     .from(invitations)
     .leftJoin(users, eq(users.id, invitations.invitedBy))
     .where(and(eq(invitations.workspaceId, workspaceId), isOpen))
     .orderBy(desc(invitations.createdAt), invitations.id)
+    .limit(limit)
+    .offset(offset)
 }
 
 /** An open invitation of a workspace, by what is known of it. */

@@ -235,7 +235,7 @@ export async function countStates(db: Db, workspaceId: string): Promise<{ state:
 }
 
 /** Tags in use, and how many problems bear each. */
-export async function countTags(db: Db, workspaceId: string): Promise<{ tag: string; count: number }[]> {
+export function countTags(db: Db, workspaceId: string) {
   const borne = sql<string>`jsonb_array_elements_text(${problems.tags})`
   const each = db
     .select({ tag: borne.as('tag') })

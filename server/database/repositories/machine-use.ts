@@ -1,9 +1,10 @@
 import { and, asc, desc, eq, inArray, isNull, lte, sql } from 'drizzle-orm'
 import type { Db } from '../client'
 import { brokenEmbeddings, embeddings, problems, returns, runSheets, users } from '../schema'
+import type { Place } from './pages'
 
 /** Found embeddings made at a calibration or an earlier one, with their problem and who made them; newest first. */
-export async function embeddingsUpTo(db: Db, machineId: string, calibration: number) {
+export async function embeddingsUpTo(db: Db, machineId: string, calibration: number, { limit, offset }: Place) {
   return db
     .select({
       embedding: embeddings,
@@ -21,7 +22,9 @@ export async function embeddingsUpTo(db: Db, machineId: string, calibration: num
         isNull(embeddings.deletedWith),
       ),
     )
-    .orderBy(desc(embeddings.createdAt), desc(embeddings.number))
+    .orderBy(desc(embeddings.createdAt), desc(embeddings.number), desc(embeddings.id))
+    .limit(limit)
+    .offset(offset)
 }
 
 /** The calibration that first broke each embedding which does not hold at the one given. */

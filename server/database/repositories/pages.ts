@@ -1,4 +1,4 @@
-import type { Page } from '../../../shared/schemas/common'
+import type { Page, PageQuery } from '../../../shared/schemas/common'
 
 /** Cursors are the running position in a list ordered newest first, made opaque. */
 export const cursorOf = (position: number): string => Buffer.from(String(position)).toString('base64url')
@@ -13,4 +13,20 @@ export function positionOf(cursor: string | undefined): number {
 export function pageOf<T>(rows: T[], limit: number, position: number): Page<T> {
   const more = rows.length > limit
   return { items: rows.slice(0, limit), nextCursor: more ? cursorOf(position + limit) : null }
+}
+
+/** Rows of an ordered list. */
+export interface Place {
+  limit: number
+  offset: number
+}
+
+/** A page of a list as it is shown; one row more than it holds is fetched, which tells whether there is another page. */
+export async function readPage<Row, Item>(
+  { limit, cursor }: PageQuery,
+  fetchRows: (place: Place) => PromiseLike<Row[]>,
+  viewOf: (row: Row) => Item,
+): Promise<Page<Item>> {
+  const offset = positionOf(cursor)
+  return pageOf((await fetchRows({ limit: limit + 1, offset })).map(viewOf), limit, offset)
 }

@@ -135,8 +135,9 @@ export async function countWorkspacesOf(db: Db, userId: string): Promise<number>
   return (await db.select({ n: count() }).from(memberships).where(eq(memberships.userId, userId)))[0]!.n
 }
 
-export async function listMembers(db: Db, workspaceId: string) {
-  return db
+/** Members of a workspace by name. */
+export const listMembers = (db: Db, workspaceId: string) =>
+  db
     .select({
       id: users.id,
       name: users.name,
@@ -147,8 +148,7 @@ export async function listMembers(db: Db, workspaceId: string) {
     .from(memberships)
     .innerJoin(users, eq(users.id, memberships.userId))
     .where(eq(memberships.workspaceId, workspaceId))
-    .orderBy(asc(users.name))
-}
+    .orderBy(asc(users.name), asc(users.id))
 
 /** Who people are, members or not. */
 export async function namesOf(db: Db, ids: readonly string[]) {

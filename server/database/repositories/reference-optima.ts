@@ -1,6 +1,7 @@
 import { and, desc, eq, isNotNull, isNull } from 'drizzle-orm'
 import type { Db } from '../client'
 import { problems, referenceOptima } from '../schema'
+import type { Place } from './pages'
 
 export type ReferenceRow = typeof referenceOptima.$inferSelect
 
@@ -28,13 +29,14 @@ export async function updateReference(
 }
 
 /** Looks for the optimum of one version of a problem, newest first. */
-export async function listReferences(db: Db, problemId: string, version: number, limit: number) {
+export async function listReferences(db: Db, problemId: string, version: number, { limit, offset }: Place) {
   return db
     .select()
     .from(referenceOptima)
     .where(and(eq(referenceOptima.problemId, problemId), eq(referenceOptima.problemVersion, version)))
-    .orderBy(desc(referenceOptima.createdAt))
+    .orderBy(desc(referenceOptima.createdAt), desc(referenceOptima.id))
     .limit(limit)
+    .offset(offset)
 }
 
 /**

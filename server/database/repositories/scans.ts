@@ -1,6 +1,7 @@
 import { and, desc, eq, isNull } from 'drizzle-orm'
 import type { Db } from '../client'
 import { scans, users } from '../schema'
+import type { Place } from './pages'
 
 export type ScanRow = typeof scans.$inferSelect
 
@@ -20,10 +21,12 @@ export async function findScan(db: Db, workspaceId: string, id: string) {
 }
 
 /** The scans of a run sheet, newest first. */
-export async function scansOfRunSheet(db: Db, runSheetId: string) {
+export async function scansOfRunSheet(db: Db, runSheetId: string, { limit, offset }: Place) {
   return scansWith(db)
     .where(and(eq(scans.runSheetId, runSheetId), isNull(scans.deletedWith)))
     .orderBy(desc(scans.number))
+    .limit(limit)
+    .offset(offset)
 }
 
 const scansWith = (db: Db) =>

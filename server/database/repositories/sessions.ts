@@ -1,6 +1,7 @@
 import { and, desc, eq, gt, lte, ne } from 'drizzle-orm'
 import type { Db } from '../client'
 import { sessions, workspaces } from '../schema'
+import type { Place } from './pages'
 
 export type SessionRow = typeof sessions.$inferSelect
 
@@ -27,13 +28,15 @@ export async function noteSessionUse(
 }
 
 /** Sessions of a person that have not expired, with the workspace each looks at; last seen first. */
-export async function listSessions(db: Db, userId: string, now: Date) {
+export async function listSessions(db: Db, userId: string, now: Date, { limit, offset }: Place) {
   return db
     .select({ session: sessions, workspace: workspaces.name })
     .from(sessions)
     .innerJoin(workspaces, eq(workspaces.id, sessions.workspaceId))
     .where(and(eq(sessions.userId, userId), gt(sessions.expiresAt, now)))
     .orderBy(desc(sessions.seenAt), sessions.id)
+    .limit(limit)
+    .offset(offset)
 }
 
 /** False when the person has no such session. */

@@ -3,6 +3,7 @@ import { aliasedTable, and, asc, eq, gt, isNull, lt, lte, or, sql } from 'drizzl
 import type { Person } from '../../../shared/schemas/common'
 import type { Db } from '../client'
 import { memberships, standIns, users } from '../schema'
+import type { Place } from './pages'
 
 export type StandInRow = typeof standIns.$inferSelect
 
@@ -43,8 +44,8 @@ function holding(db: Db, workspaceId: string, when: SQL | undefined) {
 }
 
 /** Those that go on or are to come. */
-export const listStandIns = (db: Db, workspaceId: string, now: Date) =>
-  holding(db, workspaceId, gt(standIns.endsAt, now))
+export const listStandIns = (db: Db, workspaceId: string, now: Date, { limit, offset }: Place) =>
+  holding(db, workspaceId, gt(standIns.endsAt, now)).limit(limit).offset(offset)
 
 /** Those that go on now. */
 export const standInsAt = (db: Db, workspaceId: string, now: Date) =>
