@@ -1,3 +1,4 @@
+import { withNames } from '../../shared/mentions'
 import type { Page, PageQuery } from '../../shared/schemas/common'
 import type { ReviewItem } from '../../shared/schemas/reviews'
 import type { CheckView } from '../../shared/schemas/run-sheets'
@@ -21,6 +22,7 @@ async function reviewItem(app: App, actor: Actor, row: RunSheetRow): Promise<Rev
   const view = await runSheetView(app, actor, row.id)
   const [last, before] = await submissionsOf(app.db, row.id)
   const { id, number, name, state, problem, embedding, machine, reads, machineTimeMilliseconds, changedAt } = view
+  const mentioned = view.remarks.flatMap(({ mentions }) => mentions)
   const named = (verdict: CheckView['verdict']) =>
     view.checks.filter((check) => check.verdict === verdict).map(({ what }) => what)
   return {
@@ -28,7 +30,7 @@ async function reviewItem(app: App, actor: Actor, row: RunSheetRow): Promise<Rev
     preparedBy: view.preparedBy,
     isOwn: row.preparedBy === actor.userId,
     submittedAt: (last?.createdAt ?? row.changedAt).toISOString(),
-    remark: last?.text ?? '',
+    remark: withNames(last?.text ?? '', mentioned),
     price: view.machineTime.price,
     budget: view.budget,
     checks: { passed: named('passed').length, cautions: named('caution'), refused: named('refused') },

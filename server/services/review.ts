@@ -1,5 +1,6 @@
 import { randomUUID } from 'node:crypto'
 import { DomainError } from '../../shared/errors'
+import { withNames } from '../../shared/mentions'
 import type { Person } from '../../shared/schemas/common'
 import type { RunSheetState } from '../../shared/schemas/run-sheets'
 import type { Actor, App } from '../app'
@@ -8,6 +9,7 @@ import type { RunSheetRow } from '../database/repositories/run-sheets'
 import { insertRemark, SUBMITTED, updateRunSheet } from '../database/repositories/run-sheets'
 import type { HandedOver } from '../mail/letters'
 import { reserveTime } from './budget'
+import { mentionedMembers } from './mentions'
 import { fingerprintOf, programmeBench, requireProgrammed } from './programming'
 import { tellHandOver } from './run-sheet-letters'
 import { benchOf, runSheetRow, runSheetView } from './run-sheets'
@@ -75,6 +77,8 @@ export async function handOver(
         `RS-${row.number} was changed meanwhile. Look at it as it stands now, then decide again.`,
       )
     if (step === 'approve' || step === 'issue') await reserveTime(app, tx, row, actor.userId)
+    const people = await mentionedMembers(tx, actor, remark)
+    const mentions = people.map((person) => person.id)
     await insertRemark(tx, {
       id: randomUUID(),
       runSheetId: id,
@@ -82,11 +86,13 @@ export async function handOver(
       forUserId: forWhom?.id ?? null,
       what,
       text: remark,
+      mentions,
       settings: step === 'submit' ? row.settings : null,
       createdAt: app.now(),
     })
     await also(tx)
-    await tellHandOver(app, tx, { ...row, ...change }, { step: told, by: actor.userId, forWhom, remark })
+    const said = { step: told, by: actor.userId, forWhom, remark: withNames(remark, people), mentioned: mentions }
+    await tellHandOver(app, tx, { ...row, ...change }, said)
   })
   return { state: to, for: forWhom }
 }

@@ -27,22 +27,34 @@ async function concerned(app: App, tx: Db, row: RunSheetRow, step: HandedOver): 
   return told.set(row.preparedBy, 'preparer')
 }
 
+interface HandOverTold {
+  step: HandedOver
+  by: string
+  forWhom: Person | null
+  remark: string
+  mentioned: readonly string[]
+}
+
 /**
  * Tells those concerned of a hand-over: reviewers of a submission, the preparer of an approval and of a return, preparer
- * and reviewer of an issue.
+ * and reviewer of an issue; and whom its remark mentions. Nobody is told twice: the hand-over says more.
  */
 export async function tellHandOver(
   app: App,
   tx: Db,
   row: RunSheetRow,
-  { step, by, forWhom, remark }: { step: HandedOver; by: string; forWhom: Person | null; remark: string },
+  { step, by, forWhom, remark, mentioned }: HandOverTold,
 ): Promise<void> {
   const sheet = await sheetForLetter(tx, row)
   const person = await personOf(tx, by)
   const name = forWhom ? `${person.name}, for ${forWhom.name},` : person.name
-  const letters = new Map<string, Letter>()
-  for (const [id, reason] of await concerned(app, tx, row, step))
-    letters.set(id, handedOverLetter(sheet, step, name, remark, reason))
+  const told = await concerned(app, tx, row, step)
+  const letters = new Map<string, Told>()
+  for (const id of mentioned) letters.set(id, remarkLetter(sheet, name, remark, 'mentioned'))
+  for (const [id, reason] of told) {
+    const letter = handedOverLetter(sheet, step, name, remark, reason)
+    letters.set(id, mentioned.includes(id) ? [letter, remarkLetter(sheet, name, remark, 'mentioned')] : letter)
+  }
   await tell(app, tx, { workspaceId: row.workspaceId, by }, letters)
 }
 

@@ -58,3 +58,22 @@ it('offers members after an at sign, chosen with keys alone, and sends whom by i
   expect(mentions).toMatchObject([{ name: 'Maud Okafor' }])
   expect(text).toBe(`Please look, @[${mentions[0]!.id}] and say.`)
 })
+
+it('offers them in the remark of a hand-over too', async () => {
+  const reviewer = await Client.signedIn(server.url, 'reviewer')
+  const context = await browser.newContext({ viewport: { width: 1280, height: 900 } })
+  await context.addCookies(reviewer.browserCookies())
+  const theirs = await context.newPage()
+  await theirs.goto(`${server.url}/run-sheets/${sheet}`, { waitUntil: 'networkidle' })
+  const box = theirs.getByRole('region', { name: 'Sign-off' }).getByRole('textbox', { name: 'Remark' })
+  await box.pressSequentially('Fewer reads, @ida')
+  await theirs.getByRole('option').first().waitFor()
+  await theirs.keyboard.press('Enter')
+  await theirs.getByRole('button', { name: 'Send back' }).click()
+  await theirs.getByText('Fewer reads, @Ida Fenn').waitFor()
+  const { remarks } = (
+    await reviewer.get<{ remarks: { what: string; mentions: { name: string }[] }[] }>(`/api/run-sheets/${sheet}`)
+  ).body
+  expect(remarks.at(-1)).toMatchObject({ what: 'sent back', mentions: [{ name: 'Ida Fenn' }] })
+  await context.close()
+})

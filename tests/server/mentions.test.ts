@@ -7,6 +7,8 @@ import { outboxOf } from '../../server/services/mail'
 import { wishMails } from '../../server/services/mail-wishes'
 import { leaveWorkspace } from '../../server/services/members'
 import { createWorkspace } from '../../server/services/people'
+import { handOver } from '../../server/services/review'
+import { reviewQueue } from '../../server/services/review-queue'
 import { addRemark } from '../../server/services/run-sheet-remarks'
 import { createRunSheet, runSheetView } from '../../server/services/run-sheets'
 import { CHOSEN_MAIL_KINDS } from '../../shared/schemas/mail'
@@ -72,6 +74,27 @@ it('honours what somebody does not want', async () => {
   for (const actor of [mia, test.actor]) await wishMails(test.app, actor, but(['run sheet remark']))
   expect(await say(both)).toEqual(['Developer: mention', 'Mia: mention'])
   for (const actor of [mia, test.actor]) await wishMails(test.app, actor, CHOSEN_MAIL_KINDS)
+})
+
+it('tells whom the remark of a hand-over mentions, beside those whom it concerns', async () => {
+  const rita = await newMember(test.app, test.actor, 'Rita', ['reviewer'])
+  const before = (await outbox()).length
+  const text = `@[${mia.userId}] and @[${rita.userId}], look at the gauges.`
+  await handOver(test.app, test.actor, sheetId, 'submit', text)
+  const items = await outbox()
+  const told = items.slice(0, items.length - before)
+  expect(told.map(({ to, kind }) => `${to.name}: ${kind}`).sort()).toEqual([
+    'Mia: mention',
+    'Rita: run sheet handed over',
+  ])
+  for (const message of told) expect(message.text).toContain('> @Mia and @Rita, look at the gauges.')
+  expect(await last()).toMatchObject({ text, mentions: [{ name: 'Mia' }, { name: 'Rita' }] })
+  expect((await reviewQueue(test.app, rita, { limit: 10 })).items[0]!.remark).toBe(
+    '@Mia and @Rita, look at the gauges.',
+  )
+  const stranger = handOver(test.app, rita, sheetId, 'sendBack', '@[nobody], change it.')
+  await expect(stranger).rejects.toMatchObject({ code: 'remark.mentions' })
+  expect((await runSheetView(test.app, writer, sheetId)).state).toBe('in review')
 })
 
 it('shows the name that a person has now, also once they left', async () => {
