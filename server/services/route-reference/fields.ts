@@ -1,3 +1,4 @@
+import { groupDigits } from '../../../shared/engine/digits'
 import type { RouteContent, RouteField } from '../../../shared/schemas/route-reference'
 import type { Content, Schema } from './document'
 import { choicesOf, resolved } from './document'
@@ -43,11 +44,13 @@ export function typeOf(schema: Schema): string {
 const isBound = (value: number | undefined): value is number =>
   value !== undefined && Math.abs(value) < Number.MAX_SAFE_INTEGER
 
+const shown = (value: number): string => (Number.isInteger(value) ? groupDigits(value) : String(value))
+
 function between(least: number | undefined, most: number | undefined, unit = ''): string {
   const [low, high] = [isBound(least) ? least : undefined, isBound(most) ? most : undefined]
-  if (low !== undefined && high !== undefined) return low === high ? `${low}${unit}` : `${low} to ${high}${unit}`
-  if (low !== undefined) return `at least ${low}${unit}`
-  return high === undefined ? '' : `at most ${high}${unit}`
+  if (low !== undefined && high !== undefined) return low === high ? `${shown(low)}${unit}` : `${shown(low)} to ${shown(high)}${unit}`
+  if (low !== undefined) return `at least ${shown(low)}${unit}`
+  return high === undefined ? '' : `at most ${shown(high)}${unit}`
 }
 
 /** What narrows a value beyond its type: choices, range, length, form, default. */
@@ -67,8 +70,8 @@ export function limitsOf(schema: Schema): string {
   return [
     (one.enum ?? []).map((value) => JSON.stringify(value)).join(', '),
     between(one.minimum, one.maximum),
-    isBound(above) ? `above ${above}` : '',
-    isBound(below) ? `below ${below}` : '',
+    isBound(above) ? `above ${shown(above)}` : '',
+    isBound(below) ? `below ${shown(below)}` : '',
     between(one.minLength, one.maxLength, ' characters'),
     between(one.minItems, one.maxItems, ' entries'),
     pattern && pattern !== ID_PATTERN && !(format && FORMATS[format]) ? `matches ${pattern}` : '',
