@@ -24,7 +24,7 @@ READS = 100
 
 
 def ask(method, path, body=None, content_type="application/json", token=DEVELOPER):
-    """The JSON answer. A lost answer is asked for again with the same key, so that nothing is done twice."""
+    """The JSON answer. A lost answer is asked for again with the same key, so that nothing is done twice, and after waiting where asked to."""
     headers = {"Authorization": f"Bearer {token}", "Idempotency-Key": str(uuid.uuid4())}
     if body is not None:
         headers["Content-Type"] = content_type
@@ -35,6 +35,9 @@ def ask(method, path, body=None, content_type="application/json", token=DEVELOPE
             with urllib.request.urlopen(request) as answer:
                 return json.load(answer)
         except urllib.error.HTTPError as refused:
+            if refused.code == 429 and attempt < 3:
+                time.sleep(int(refused.headers["Retry-After"]))
+                continue
             sys.exit(f"{method} {path}: {json.load(refused)['data']['message']}")
         except OSError:
             if attempt == 3:

@@ -140,6 +140,27 @@ async function requestBody(route: Route, components: Record<string, JsonSchema>)
   return Object.keys(content).length > 0 ? { requestBody: { required: true, content } } : {}
 }
 
+const NOT_COUNTED = '/api/health'
+
+/** Of every answer to a request that is counted. */
+const RATE_HEADERS = {
+  RateLimit: {
+    description:
+      'What is left, as in draft-ietf-httpapi-ratelimit-headers: `r` requests now, all of them again in `t` seconds.',
+    schema: { type: 'string', examples: ['"caller";r=1180;t=1'] },
+  },
+  'RateLimit-Policy': {
+    description: 'What is counted: `q` requests in `w` seconds, of the session or token (`caller`) or the `address`.',
+    schema: { type: 'string', examples: ['"caller";q=1200;w=60'] },
+  },
+}
+const RETRY_AFTER = {
+  description: 'Seconds to wait (RFC 9110, section 10.2.3).',
+  schema: { type: 'integer', minimum: 1 },
+}
+const headersNamed = (...names: string[]) =>
+  Object.fromEntries(names.map((name) => [name, { $ref: `#/components/headers/${name}` }]))
+
 const FILE: JsonSchema = { type: 'string' }
 
 function successes(route: Route) {
@@ -154,6 +175,7 @@ function successes(route: Route) {
       String(status),
       {
         description: words[status] ?? ERRORS[status] ?? '',
+        ...(route.path === NOT_COUNTED ? {} : { headers: headersNamed(...Object.keys(RATE_HEADERS)) }),
         ...(Object.keys(content).length > 0 ? { content } : {}),
       },
     ]),
@@ -171,6 +193,7 @@ function errorsOf(route: Route) {
     ...(route.body || route.form ? [400, 413] : []),
     ...(takes || route.takesKey ? [422] : []),
     ...(route.takesKey ? [409] : []),
+    ...(route.path === NOT_COUNTED ? [] : [429]),
     ...named.filter((status) => ERRORS[status]),
   ])
   return Object.fromEntries(
@@ -218,8 +241,16 @@ export async function openApiDocument(root: string) {
         session: { type: 'apiKey', in: 'cookie', name: 'nuxt-session', description: 'From `POST /api/session`.' },
       },
       parameters: { IdempotencyKey: IDEMPOTENCY_KEY },
+      headers: { ...RATE_HEADERS, 'Retry-After': RETRY_AFTER },
       responses: Object.fromEntries(
-        Object.entries(ERRORS).map(([status, description]) => [status, { description, ...error }]),
+        Object.entries(ERRORS).map(([status, description]) => [
+          status,
+          {
+            description,
+            ...(status === '429' ? { headers: headersNamed('Retry-After', ...Object.keys(RATE_HEADERS)) } : {}),
+            ...error,
+          },
+        ]),
       ),
       schemas: sorted({ ...components, Error: ERROR }),
     },

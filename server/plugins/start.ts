@@ -9,6 +9,7 @@ import { setupCode } from '../services/people'
 import { providerSettingsOf } from '../identity/settings'
 import { openPost } from '../mail/post'
 import { mailSettingsOf } from '../mail/settings'
+import { rateSettingsOf } from '../rate-limit/settings'
 import type { StartedApp } from '../start'
 import { dataFolderOf, startApp } from '../start'
 
@@ -70,6 +71,7 @@ async function boot(): Promise<StartedApp> {
   const dataFolder = dataFolderOf(process.env)
   prepareSessions(demo, dataFolder)
   const mail = read(() => mailSettingsOf(process.env, ownAddress()))
+  read(() => rateSettingsOf(process.env))
   const provider = read(() => providerSettingsOf(process.env))
   const started = await startApp({
     databaseUrl: process.env.DATABASE_URL || undefined,

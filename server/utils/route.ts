@@ -13,6 +13,7 @@ import { audited } from './audited'
 import { bearerOf } from './bearer'
 import { toHttpError } from './http'
 import { answeredOnce, keyOf } from './once'
+import { useRateLimiter } from './rates'
 import { addressOf } from './session'
 
 interface Caller extends Actor {
@@ -49,7 +50,10 @@ async function signedInCaller(event: H3Event, app: App): Promise<Caller> {
 
 async function callerOf(event: H3Event, app: App): Promise<Caller> {
   const token = bearerOf(event)
-  return token === undefined ? signedInCaller(event, app) : { ...(await tokenCaller(app, token)), sessionId: null }
+  const caller =
+    token === undefined ? await signedInCaller(event, app) : { ...(await tokenCaller(app, token)), sessionId: null }
+  if (event.context.credential !== undefined) useRateLimiter().accept(event.context.credential)
+  return caller
 }
 
 type Allowed = readonly Role[] | 'member'

@@ -74,7 +74,7 @@ describe('the OpenAPI document', () => {
 
   it('says what is answered, by status and kind', () => {
     const { responses } = paths['/api/problems']!.post!
-    expect(Object.keys(responses)).toEqual(['200', '201', '400', '401', '403', '409', '413', '422'])
+    expect(Object.keys(responses)).toEqual(['200', '201', '400', '401', '403', '409', '413', '422', '429'])
     expect(responses['201']!.content!['application/json']!.schema).toEqual({
       $ref: '#/components/schemas/UploadedProblem',
     })
