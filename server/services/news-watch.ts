@@ -29,6 +29,7 @@ export class NewsWatch {
   private readonly followers = new Set<Follower>()
   private timer: ReturnType<typeof setInterval> | undefined
   private busy = false
+  private stopped = false
 
   constructor(
     private readonly db: Db,
@@ -39,13 +40,19 @@ export class NewsWatch {
   follow(caller: Omit<Follower, 'last'>): () => void {
     const follower = { ...caller, last: '' }
     this.followers.add(follower)
+    if (this.stopped) this.end(follower)
+    else this.begin()
+    return () => this.leave(follower)
+  }
+
+  private begin(): void {
     this.timer ??= setInterval(() => void this.look(), LOOK_MS).unref()
     void this.look()
-    return () => this.leave(follower)
   }
 
   /** Ends what everybody follows: their browsers ask again, then another process. */
   stop(): void {
+    this.stopped = true
     for (const follower of this.followers) this.end(follower)
   }
 

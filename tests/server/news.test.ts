@@ -274,4 +274,7 @@ it('is told no more once a session ended, went elsewhere, or its person left', a
   expect(followed.map(({ told }) => told.length)).toEqual([1, 1, 1])
   other.app.newsWatch.stop()
   expect(last.isOver()).toBe(true)
+  let isOver = false
+  other.app.newsWatch.follow({ ...ann, sessionId: '-', told: () => undefined, over: () => (isOver = true) })
+  expect(isOver).toBe(true)
 })
