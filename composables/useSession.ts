@@ -9,7 +9,12 @@ export function useSession() {
   const api = useApi()
 
   const load = async (): Promise<void> => {
-    session.value = await fetcher<SessionView>('/api/session').catch(() => null)
+    try {
+      session.value = await fetcher<SessionView>('/api/session')
+    } catch (error) {
+      // A server that is busy signs nobody out.
+      if (failureOf(error).status === 401) session.value = null
+    }
   }
   const may = (...roles: Role[]): boolean => session.value?.roles.some((role) => roles.includes(role)) ?? false
 

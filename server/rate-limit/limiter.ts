@@ -60,7 +60,7 @@ export class RateLimiter {
   /** What somebody came with opened a session, or is a token that holds. */
   accept(credential: string): void {
     const digest = this.digest(credential)
-    if (this.good.has(digest)) return
+    this.good.delete(digest)
     this.good.set(digest, true)
     if (this.good.size > MOST_KEYS) this.good.delete(this.good.keys().next().value!)
   }

@@ -48,7 +48,8 @@ const shown = (value: number): string => (Number.isInteger(value) ? groupDigits(
 
 function between(least: number | undefined, most: number | undefined, unit = ''): string {
   const [low, high] = [isBound(least) ? least : undefined, isBound(most) ? most : undefined]
-  if (low !== undefined && high !== undefined) return low === high ? `${shown(low)}${unit}` : `${shown(low)} to ${shown(high)}${unit}`
+  if (low !== undefined && high !== undefined)
+    return low === high ? `${shown(low)}${unit}` : `${shown(low)} to ${shown(high)}${unit}`
   if (low !== undefined) return `at least ${shown(low)}${unit}`
   return high === undefined ? '' : `at most ${shown(high)}${unit}`
 }

@@ -26,7 +26,12 @@ describe('the reference of the routes', () => {
   it('says types and ranges', () => {
     const view = routeView('postEmbeddings')
     const tries = view.takes[0]!.fields.find(({ name }) => name === 'tries')
-    expect(tries).toMatchObject({ type: 'whole number', limits: '1 to 1\u202f000; default 8', required: false, depth: 0 })
+    expect(tries).toMatchObject({
+      type: 'whole number',
+      limits: '1 to 1\u202f000; default 8',
+      required: false,
+      depth: 0,
+    })
     const work = view.takes[0]!.fields.find(({ name }) => name === 'work')
     expect(work).toMatchObject({ type: 'one of', limits: '"repair", "shorten"', depth: 1 })
     expect(view.parameters[0]).toMatchObject({ name: 'Idempotency-Key', place: 'header' })
