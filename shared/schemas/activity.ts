@@ -5,7 +5,7 @@ import type { Page, Person } from './common'
 export interface ActivityItem {
   id: string
   at: string
-  /** Null where the bridge of the machine did it. */
+  /** Null where the bridge of the machine did it, or where nobody is known any more. */
   by: Person | null
   /** The reviewer in whose place it was decided. */
   for: Person | null

@@ -205,7 +205,7 @@ export const SAMPLES: Record<string, Sample> = {
   'POST /api/account/passkeys': { json: { name: 'Phone', challengeId: 'unknown', credential: MADE_PASSKEY } },
   'PATCH /api/account/passkeys/{id}': { json: { name: 'Old phone' } },
   'DELETE /api/account/passkeys/{id}': {},
-  'POST /api/account/membership': { json: { secret: 'unknown' } },
+  'POST /api/account/membership': { json: {} },
   'DELETE /api/account/membership': { endsCaller: true },
   'GET /api/stand-ins': {},
   'POST /api/stand-ins': {
