@@ -1,25 +1,30 @@
 import type { JobView } from '#shared/schemas/jobs'
+import { followEvents } from './eventStream'
 
 const OVER = ['done', 'failed', 'cancelled']
 
-/** Follows a job by server-sent events until it is over; the browser reconnects by itself when the stream breaks. */
+/** Follows a job by server-sent events until it is over. */
 export function useJob(jobId: MaybeRefOrGetter<string | null>, onOver?: () => void) {
   const job = ref<JobView | null>(null)
   const api = useApi()
-  let source: EventSource | null = null
+  let end: (() => void) | null = null
 
   const close = (): void => {
-    source?.close()
-    source = null
+    end?.()
+    end = null
   }
   const follow = (id: string): void => {
     close()
-    source = new EventSource(`/api/jobs/${id}/events`)
-    source.addEventListener('job', (event) => {
-      job.value = JSON.parse(event.data) as JobView
-      if (!OVER.includes(job.value.status)) return
-      close()
-      onOver?.()
+    end = followEvents({
+      url: `/api/jobs/${id}/events`,
+      event: 'job',
+      take(data) {
+        job.value = JSON.parse(data) as JobView
+        if (!OVER.includes(job.value.status)) return
+        close()
+        onOver?.()
+      },
+      isOver: async () => [401, 404].includes((await fetch(`/api/jobs/${id}`)).status),
     })
   }
   onMounted(() =>

@@ -3,6 +3,7 @@ import { getCookie, getHeader, setResponseHeader, setResponseHeaders } from 'h3'
 import { TooManyError } from '../../shared/errors'
 import { groupDigits } from '../../shared/engine/digits'
 import type { Counted } from '../rate-limit/limiter'
+import { digestOf } from '../rate-limit/limiter'
 import { toHttpError } from '../utils/http'
 import { useRateLimiter } from '../utils/rates'
 import { addressOf } from '../utils/session'
@@ -26,8 +27,8 @@ export default defineEventHandler((event) => {
   const path = event.path.split('?')[0]!
   if (!path.startsWith('/api/') || NOT_COUNTED.includes(path) || !isFromOutside(event)) return
   const credential = getHeader(event, 'authorization') ?? getCookie(event, useRuntimeConfig(event).session.name!)
-  event.context.credential = credential
-  const counted = useRateLimiter().count(credential, addressOf(event), Date.now())
+  event.context.callerDigest = credential === undefined ? undefined : digestOf(credential)
+  const counted = useRateLimiter().count(event.context.callerDigest, addressOf(event), Date.now())
   if (!counted) return
   tell(event, counted)
   if (counted.allowed) return

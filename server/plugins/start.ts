@@ -108,17 +108,11 @@ function stopWhenPortIsTaken(error: NodeJS.ErrnoException & { port?: number }): 
     stop(`Port ${error.port} is in use by another program. Stop that one, or choose another port with PORT.`)
 }
 
-/** What browsers follow has no end of its own: the server would wait for it, as for any request that it still answers. */
-function endStreamsOnSignal(started: Promise<StartedApp>): void {
-  const end = async (): Promise<void> => (await started).app.newsWatch.stop()
-  for (const signal of ['SIGTERM', 'SIGINT'] as const) process.once(signal, () => void end().catch(() => undefined))
-}
-
 export default defineNitroPlugin((nitro) => {
   process.on('uncaughtException', stopWhenPortIsTaken)
   const started = boot()
   setApp(started.then(({ app }) => app))
   started.catch((error: Error) => stop(`Espalier could not start: ${error.message}`))
-  endStreamsOnSignal(started)
+  for (const signal of ['SIGTERM', 'SIGINT'] as const) process.once(signal, endEventStreams)
   nitro.hooks.hook('close', async () => (await started).close())
 })

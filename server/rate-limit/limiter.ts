@@ -7,6 +7,9 @@ import type { RateSettings } from './settings'
 /** Some tens of megabytes at most. */
 const MOST_KEYS = 100_000
 
+/** SHA-256 of a token or a session’s cookie. */
+export const digestOf = (credential: string): string => createHash('sha256').update(credential).digest('base64')
+
 /** What a request was counted as. */
 export interface Counted extends Taken {
   policy: 'caller' | 'address'
@@ -43,13 +46,8 @@ export class RateLimiter {
     this.addresses = address === null ? null : new Buckets(address, MOST_KEYS)
   }
 
-  private digest(credential: string): string {
-    return createHash('sha256').update(credential).digest('base64')
-  }
-
-  /** @returns null where this is not limited */
-  count(credential: string | undefined, address: string, now: number): Counted | null {
-    const digest = credential === undefined ? undefined : this.digest(credential)
+  /** @param digest of what the request came with @returns null where this is not limited */
+  count(digest: string | undefined, address: string, now: number): Counted | null {
     const isGood = digest !== undefined && this.good.has(digest)
     const buckets = isGood ? this.callers : this.addresses
     if (!buckets) return null
@@ -58,8 +56,7 @@ export class RateLimiter {
   }
 
   /** What somebody came with opened a session, or is a token that holds. */
-  accept(credential: string): void {
-    const digest = this.digest(credential)
+  accept(digest: string): void {
     this.good.delete(digest)
     this.good.set(digest, true)
     if (this.good.size > MOST_KEYS) this.good.delete(this.good.keys().next().value!)

@@ -52,7 +52,7 @@ async function callerOf(event: H3Event, app: App): Promise<Caller> {
   const token = bearerOf(event)
   const caller =
     token === undefined ? await signedInCaller(event, app) : { ...(await tokenCaller(app, token)), sessionId: null }
-  if (event.context.credential !== undefined) useRateLimiter().accept(event.context.credential)
+  if (event.context.callerDigest !== undefined) useRateLimiter().accept(event.context.callerDigest)
   return caller
 }
 

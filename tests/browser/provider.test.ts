@@ -43,6 +43,8 @@ it('signs in through the provider, goes on to the page that was wanted, and can 
   await page.getByText('Tomas Reyl, reader@brackwater.example').waitFor()
   expect(page.url()).toBe(`${server.url}/account`)
   await page.getByText('Your account is linked since').waitFor()
+  // The page came from the provider: what it shows before its script has run does nothing yet.
+  await page.waitForLoadState('networkidle')
 
   await page.getByRole('button', { name: 'Unlink it' }).click()
   await page.getByRole('dialog').getByRole('button', { name: 'Unlink', exact: true }).click()

@@ -1,8 +1,6 @@
 import { newsEventsQuerySchema } from '../../../shared/schemas/news'
 import { requireShown } from '../../services/workspaces'
 
-const PING_MS = 15_000
-
 /**
  * Server-sent events `news` of how one’s news of the workspace stands: at once, so that nothing is missed by whoever was
  * cut off, then whenever there is more or something was read. The stream ends with the session, and when it goes to
@@ -11,16 +9,12 @@ const PING_MS = 15_000
 export default defineSessionRoute('member', async (event, { app, ...caller }) => {
   const { workspace } = queryOf(event, newsEventsQuerySchema)
   requireShown(caller, workspace)
-  const stream = createEventStream(event)
-  const leave = app.newsWatch.follow({
+  let leave = (): void => {}
+  const stream = openEventStream(event, () => leave())
+  leave = app.newsWatch.follow({
     ...caller,
     told: (news) => void stream.push({ event: 'news', data: JSON.stringify(news) }).catch(() => stream.close()),
     over: () => void stream.close(),
-  })
-  const pinging = setInterval(() => void stream.push({ event: 'ping', data: '' }), PING_MS)
-  stream.onClosed(() => {
-    clearInterval(pinging)
-    leave()
   })
   return stream.send()
 })

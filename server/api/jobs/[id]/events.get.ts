@@ -1,14 +1,13 @@
 import { jobOf } from '../../../services/jobs'
 
 const LOOK_MS = 300
-const PING_MS = 15_000
 const OVER = new Set(['done', 'failed', 'cancelled'])
 
 /** Server-sent events `job` with the job's state whenever it changes; the stream ends with the job. */
 export default defineRoute('member', async (event, { app, ...actor }) => {
   const id = partOf(event, 'id')
   const first = await jobOf(app, actor, id)
-  const stream = createEventStream(event)
+  const stream = openEventStream(event, () => clearInterval(looking))
   let sent = ''
   const look = async (): Promise<void> => {
     const job = sent === '' ? first : await jobOf(app, actor, id)
@@ -26,10 +25,5 @@ export default defineRoute('member', async (event, { app, ...actor }) => {
       .catch(() => stream.close())
       .finally(() => (busy = false))
   }, LOOK_MS)
-  const pinging = setInterval(() => void stream.push({ event: 'ping', data: '' }), PING_MS)
-  stream.onClosed(() => {
-    clearInterval(looking)
-    clearInterval(pinging)
-  })
   return stream.send()
 })
