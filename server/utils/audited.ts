@@ -21,6 +21,16 @@ function withStandIn(deed: Deed, answer: unknown): Deed {
   return away ? { ...deed, what: `${deed.what} (for ${away.name})` } : deed
 }
 
+/** For a route that only tried, and for work that failed once its answer had begun: there is nothing to be told of. */
+export function noteNothingDone(event: H3Event): void {
+  event.context.nothingDone = true
+}
+
+/** For a route whose answer was sent while it worked: what the work came to. */
+export function noteOutcome(event: H3Event, outcome: unknown): void {
+  event.context.outcome = outcome
+}
+
 /** Does the work of a route and, where it changed something, writes down who did it, to what, and from where. */
 export async function audited<T>(
   event: H3Event,
@@ -33,10 +43,12 @@ export async function audited<T>(
   // What is deleted has no name afterwards; what is renamed is called by its new one.
   const known = event.method === 'DELETE' ? await knownOfThing(app, deed, named) : undefined
   const answer = await work()
-  const thingId = deed.isOwn ? null : (named ?? idIn(answer))
+  if (event.context.nothingDone) return answer
+  const outcome: unknown = event.context.outcome ?? answer
+  const thingId = deed.isOwn ? null : (named ?? idIn(outcome))
   try {
     await record(app, caller, {
-      deed: withStandIn(deed, answer),
+      deed: withStandIn(deed, outcome),
       thingId,
       known,
       tokenId: caller.tokenId,

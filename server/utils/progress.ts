@@ -1,6 +1,7 @@
 import type { H3Event } from 'h3'
 import { getHeader } from 'h3'
 import { DomainError } from '../../shared/errors'
+import { noteNothingDone, noteOutcome } from './audited'
 import { toHttpError } from './http'
 
 const LINES = 'application/x-ndjson'
@@ -40,8 +41,11 @@ export async function answerWithProgress<P, T>(
   // The headers go at once, so that the client knows that its file has arrived.
   response.flushHeaders()
   try {
-    write({ done: await work({ tell: (progress) => write({ progress }), signal: gone.signal }) })
+    const done = await work({ tell: (progress) => write({ progress }), signal: gone.signal })
+    noteOutcome(event, done)
+    write({ done })
   } catch (error) {
+    noteNothingDone(event)
     write(failureLine(error))
   }
   response.end()

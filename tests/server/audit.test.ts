@@ -4,7 +4,9 @@ import { afterAll, beforeAll, expect, it } from 'vitest'
 import type { Actor } from '../../server/app'
 import { auditFile, auditTrail } from '../../server/services/audit'
 import { removeProblem } from '../../server/services/problems'
-import { audited } from '../../server/utils/audited'
+import { audited, noteNothingDone } from '../../server/utils/audited'
+import { answerWithProgress } from '../../server/utils/progress'
+import { DomainError } from '../../shared/errors'
 import { auditQuerySchema } from '../../shared/schemas/audit'
 import type { TestApp } from '../support/app'
 import { startTestApp } from '../support/app'
@@ -73,6 +75,25 @@ it('is filtered by person, kind and day, and told page by page and as a file', a
   expect(first.people.map(({ name }) => name)).toEqual(['Developer', 'Olga'])
   const file = await auditFile(test.app, owner, auditQuerySchema.parse({ limit: 1 }))
   expect(file.trim().split('\n')).toHaveLength(4)
+})
+
+it('tells what came of work whose answer was sent meanwhile, and nothing of what failed then or was only tried', async () => {
+  const before = (await trail()).length
+  const response = { on() {}, writeHead() {}, flushHeaders() {}, write: () => true, end() {} }
+  const upload = (work: () => Promise<unknown>) => {
+    const event = eventOf('POST', '/api/problems')
+    event.node.req.headers.accept = 'application/x-ndjson'
+    Object.assign(event.node, { res: response })
+    return audited(event, { app: test.app, tokenId: null, ...test.actor }, () => answerWithProgress(event, work))
+  }
+  const refused = new DomainError('not acceptable', 'problem.lines', 'Line 1 holds no number.')
+  await upload(() => Promise.reject(refused))
+  const tried = eventOf('POST', '/api/problems')
+  await audited(tried, { app: test.app, tokenId: null, ...test.actor }, () => noteNothingDone(tried))
+  expect(await trail()).toHaveLength(before)
+  const id = await test.problem('e f 1\n')
+  await upload(async () => ({ id }))
+  expect((await trail())[0]).toMatchObject({ what: 'uploaded', thing: { id } })
 })
 
 it('is only ever added to, and is another workspace’s own', async () => {

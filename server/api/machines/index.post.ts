@@ -19,6 +19,7 @@ export default defineRoute(['steward', 'owner'], async (event, { app, ...actor }
   }
   const upload = await readUpload(event, GRAPH_FILE_LIMITS.sentBytes, GRAPH_FILE_LIMITS.sheetBytes)
   const options = parse(machineUploadSchema, upload.fields, 'The upload’s fields cannot be accepted')
+  if (options.dryRun) noteNothingDone(event)
   const file = requireFile(upload)
   return answerWithProgress<{ bytes: number; of: number }, unknown>(event, async ({ tell, signal }) => {
     const onProgress = (bytes: number): void => tell({ bytes, of: file.bytes.byteLength })

@@ -7,6 +7,7 @@ import { nextDraft } from '../../../services/next-draft'
  */
 export default defineRoute(['developer', 'owner'], async (event, { app, ...actor }) => {
   const made = await nextDraft(app, actor, partOf(event, 'id'), await bodyOf(event, nextDraftSchema))
-  if (made.id !== null) setResponseStatus(event, 201)
+  if (made.id === null) noteNothingDone(event)
+  else setResponseStatus(event, 201)
   return made
 })

@@ -10,6 +10,7 @@ import { uploadVersion } from '../../../../services/version-upload'
 export default defineRoute(['developer', 'owner'], async (event, { app, ...actor }) => {
   const upload = await readUpload(event, PROBLEM_FILE_LIMITS.sentBytes)
   const options = parse(uploadVersionSchema, upload.fields, 'The upload’s fields cannot be accepted')
+  if (options.dryRun) noteNothingDone(event)
   const file = uploadedFile(app, actor, upload.file, options.kept)
   return answerWithProgress<{ bytes: number; of: number }, unknown>(event, async ({ tell, signal }) => {
     const onProgress = (bytes: number): void => tell({ bytes, of: file.bytes.byteLength })
