@@ -169,7 +169,7 @@ class RouteReader {
     )
     const packed = this.named('sendPacked').flatMap((call) => stringsIn(call.arguments[1]))
     const streams = [
-      ...(this.named('createEventStream').length > 0 ? ['text/event-stream'] : []),
+      ...(this.named('openEventStream').length > 0 ? ['text/event-stream'] : []),
       ...(this.named('answerWithProgress').length > 0 ? ['application/x-ndjson'] : []),
     ]
     return [...new Set([...sent, ...packed, ...set.map((type) => type.split(';')[0]!), ...streams])]
