@@ -4,13 +4,14 @@ import type { MailRow } from '../database/repositories/mails'
 import { setFact } from '../database/repositories/people'
 import type { Rounds } from '../rounds'
 import { keepGoingRound } from '../rounds'
+import { createMailer } from './create-mailer'
 import type { Mailer } from './mailer'
-import { createMailer, MailRefused } from './mailer'
+import { MailRefused } from './mailer'
 import type { MailSettings } from './settings'
 
 /**
  * How mail leaves this installation, kept in the database: a worker process that ends a job writes messages too, and knows
- * neither the address of the product nor whether there is a mail server.
+ * neither the address of the product nor whether anything takes mail.
  */
 export const POST_FACT = 'post'
 
@@ -59,7 +60,8 @@ async function attempt(app: App, mailer: Mailer, mail: MailRow): Promise<void> {
 
 /**
  * Sends every message that is due, one after the other. A message is sent at least once: where the process ends between
- * the server's yes and our note of it, it goes again, with the same Message-ID.
+ * the other side's yes and our note of it, it goes again, with the same Message-ID or, to a hosted service, with the same
+ * idempotency key.
  * @param stopped asked before each message
  */
 export async function deliverDue(app: App, mailer: Mailer, stopped: () => boolean = () => false): Promise<void> {
@@ -71,13 +73,13 @@ export async function deliverDue(app: App, mailer: Mailer, stopped: () => boolea
   }
 }
 
-/** Opens the post of a process that serves pages; without a mail server messages are kept. */
-export async function openPost(app: App, { smtp, site }: MailSettings): Promise<Rounds> {
-  await setFact(app.db, POST_FACT, JSON.stringify({ site, sends: smtp !== null } satisfies PostFact))
-  if (!smtp) {
+/** Opens the post of a process that serves pages; where nothing takes mail, messages are kept. */
+export async function openPost(app: App, { route, site }: MailSettings): Promise<Rounds> {
+  await setFact(app.db, POST_FACT, JSON.stringify({ site, sends: route !== null } satisfies PostFact))
+  if (!route) {
     await keepWaitingMails(app.db)
     return { stop: async () => undefined }
   }
-  const mailer = createMailer(smtp)
+  const mailer = createMailer(route)
   return keepGoingRound('mail', LOOK_MS, (stopped) => deliverDue(app, mailer, stopped))
 }

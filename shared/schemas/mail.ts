@@ -34,7 +34,7 @@ export interface MailWishes {
 }
 
 /**
- * waiting: to be sent, or tried again; sent: taken by the mail server; kept: there is no mail server, read it in the
+ * waiting: to be sent, or tried again; sent: taken by the mail server or service; kept: there is neither, read it in the
  * product; given up: the server refused it for good.
  */
 export const MAIL_STATES = ['waiting', 'sent', 'kept', 'given up'] as const
@@ -56,7 +56,7 @@ export interface MailView {
   attempts: number
   /** When it is tried next; null when it is not. */
   nextAttemptAt: string | null
-  /** What the mail server said at the last attempt that failed. */
+  /** What the mail server or service said at the last attempt that failed. */
   reason: string | null
   createdAt: string
   sentAt: string | null

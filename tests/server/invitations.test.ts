@@ -3,7 +3,7 @@ import { afterAll, beforeAll, expect, it } from 'vitest'
 import type { Actor } from '../../server/app'
 import { findUser } from '../../server/database/repositories/people'
 import { invitations, mails, memberships } from '../../server/database/schema'
-import { createMailer } from '../../server/mail/mailer'
+import { createMailer } from '../../server/mail/create-mailer'
 import { deliverDue, openPost } from '../../server/mail/post'
 import { acceptInvitation, acceptSignedIn, invitedView } from '../../server/services/accept-invitation'
 import { invitationsOf, invite, resendInvitation, withdrawInvitation } from '../../server/services/invitations'
@@ -27,7 +27,7 @@ beforeAll(async () => {
   owner = await newMember(test.app, test.actor, 'Olga', ['owner'])
   const workspaceId = await test.app.db.transaction((tx) => createWorkspace(test.app, tx, 'Elsewhere'))
   elsewhere = await newMember(test.app, { userId: '', workspaceId }, 'Else', ['owner'])
-  await (await openPost(test.app, { smtp: null, site: SITE })).stop()
+  await (await openPost(test.app, { route: null, site: SITE })).stop()
 })
 afterAll(() => test?.close())
 
@@ -124,10 +124,10 @@ it('refuses a second invitation of the same address, and more than sixty an hour
 it('sends the link by mail where there is a server, shows it in no outbox, and forgets it once it is sent', async () => {
   const server = await startMailServer()
   const from = 'Espalier <espalier@example.org>'
-  await (await openPost(test.app, { smtp: { url: server.url, from }, site: SITE })).stop()
+  await (await openPost(test.app, { route: { by: 'smtp', url: server.url, from }, site: SITE })).stop()
   const made = await invite(test.app, elsewhere, { email: 'quin@example.org', roles: ['reader'] })
   expect(made.link).toBeNull()
-  await deliverDue(test.app, createMailer({ url: server.url, from }))
+  await deliverDue(test.app, createMailer({ by: 'smtp', url: server.url, from }))
   const { mail, to } = server.taken[0]!
   expect(to).toEqual(['quin@example.org'])
   expect(mail.text).toContain('You get this because Else gave this address')

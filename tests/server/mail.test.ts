@@ -1,8 +1,8 @@
 import { afterAll, beforeAll, beforeEach, describe, expect, it } from 'vitest'
 import type { Actor, App } from '../../server/app'
+import { createMailer } from '../../server/mail/create-mailer'
 import type { Letter } from '../../server/mail/letter'
 import type { Mailer } from '../../server/mail/mailer'
-import { createMailer } from '../../server/mail/mailer'
 import { deliverDue, openPost } from '../../server/mail/post'
 import { importEmbedding } from '../../server/services/embedding-import'
 import { outboxOf, tell } from '../../server/services/mail'
@@ -32,9 +32,9 @@ beforeAll(async () => {
   reviewer = await newMember(test.app, test.actor, 'Reviewer', ['reviewer'])
   ann = await newMember(test.app, test.actor, 'Ann', ['reader'])
   server = await startMailServer()
-  mailer = createMailer({ url: server.url, from: FROM })
+  mailer = createMailer({ by: 'smtp', url: server.url, from: FROM })
   // Tells the database that there is a mail server; the looks themselves are the test's.
-  await (await openPost(test.app, { smtp: { url: server.url, from: FROM }, site: SITE })).stop()
+  await (await openPost(test.app, { route: { by: 'smtp', url: server.url, from: FROM }, site: SITE })).stop()
 })
 afterAll(async () => {
   await server.close()
@@ -161,7 +161,7 @@ describe('a mail server', () => {
 
   it('that cannot be reached is tried for two days, then given up', async () => {
     const gone = await startMailServer()
-    const lost = createMailer({ url: gone.url, from: FROM })
+    const lost = createMailer({ by: 'smtp', url: gone.url, from: FROM })
     await gone.close()
     await write()
     let minutes = 0
@@ -204,7 +204,7 @@ describe('a mail server', () => {
 
   it('gets what waited for it after a restart, by the process itself', async () => {
     await write({ subject: 'After the restart' })
-    const post = await openPost(test.app, { smtp: { url: server.url, from: FROM }, site: SITE })
+    const post = await openPost(test.app, { route: { by: 'smtp', url: server.url, from: FROM }, site: SITE })
     await until(() => server.taken.length === 1, 20, 'the message')
     await post.stop()
     expect(server.taken[0]!.mail.subject).toBe('After the restart')
@@ -213,7 +213,7 @@ describe('a mail server', () => {
 
   it('that is no longer there leaves messages to be read in the product', async () => {
     await write({ subject: 'Waits' })
-    await openPost(test.app, { smtp: null, site: SITE })
+    await openPost(test.app, { route: null, site: SITE })
     await write({ subject: 'Kept at once' })
     expect((await outbox('kept')).slice(0, 2).map(({ subject, attempts }) => [subject, attempts])).toEqual([
       ['Kept at once', 0],
@@ -221,7 +221,7 @@ describe('a mail server', () => {
     ])
     await deliverDue(test.app, mailer)
     expect(server.taken).toEqual([])
-    await (await openPost(test.app, { smtp: { url: server.url, from: FROM }, site: SITE })).stop()
+    await (await openPost(test.app, { route: { by: 'smtp', url: server.url, from: FROM }, site: SITE })).stop()
     // Old news is not sent when there is a server again.
     await deliverDue(at(10_000), mailer)
     expect(server.taken).toEqual([])

@@ -1,7 +1,7 @@
 import { afterAll, beforeAll, beforeEach, expect, it } from 'vitest'
 import type { Actor } from '../../server/app'
 import { confirmations, mails, users } from '../../server/database/schema'
-import { createMailer } from '../../server/mail/mailer'
+import { createMailer } from '../../server/mail/create-mailer'
 import { deliverDue, openPost } from '../../server/mail/post'
 import { acceptInvitation } from '../../server/services/accept-invitation'
 import { sweepConfirmations } from '../../server/services/confirmations'
@@ -30,7 +30,7 @@ let owner: Actor
 let people = 0
 
 const withMail = async (sends: boolean) =>
-  (await openPost(test.app, { smtp: sends ? { url: server.url, from } : null, site: SITE })).stop()
+  (await openPost(test.app, { route: sends ? { by: 'smtp', url: server.url, from } : null, site: SITE })).stop()
 
 beforeAll(async () => {
   test = await startTestApp(1)
@@ -60,7 +60,7 @@ async function ask(email: string, network = '192.0.2.1'): Promise<void> {
 /** What was sent meanwhile: to whom, what about, and the secret of its link. */
 async function delivered() {
   server.taken.length = 0
-  await deliverDue(test.app, createMailer({ url: server.url, from }))
+  await deliverDue(test.app, createMailer({ by: 'smtp', url: server.url, from }))
   return server.taken.map(({ mail, to }) => ({
     to: to[0],
     subject: mail.subject,

@@ -12,7 +12,7 @@ export const MAIL_MARKS: Record<MailState, MarkKind> = {
 
 /** What became of a message, in a sentence. */
 export function mailStanding({ state, attempts, reason, sentAt, nextAttemptAt }: MailView): string {
-  if (state === 'sent') return `Taken by the mail server ${formatDateTime(sentAt)}, at attempt ${attempts}.`
+  if (state === 'sent') return `Taken for delivery ${formatDateTime(sentAt)}, at attempt ${attempts}.`
   if (state === 'kept') return 'There is no mail server: it was not sent, and can be read here.'
   const said = reason ? ` The last one: ${reason}` : ''
   if (state === 'given up') return `Given up after ${formatCount(attempts, 'attempt')}.${said}`

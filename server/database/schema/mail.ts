@@ -21,7 +21,7 @@ export const mails = pgTable(
     attempts: integer().notNull().default(0),
     /** When it is tried next; null when it is not. */
     nextAttemptAt: moment(),
-    /** What the mail server said at the last attempt that failed. */
+    /** What the mail server or service said at the last attempt that failed. */
     reason: text(),
     createdAt: createdAt(),
     sentAt: moment(),
