@@ -4,6 +4,7 @@ import type { z } from 'zod'
 import type { ErrorKind, Issue } from '../../shared/errors'
 import { DomainError } from '../../shared/errors'
 import { idSchema } from '../../shared/schemas/common'
+import { issueWords } from './issue-words'
 
 const STATUS: Record<ErrorKind, number> = {
   unreadable: 400,
@@ -40,7 +41,7 @@ export function toHttpError(error: DomainError) {
 
 /** Parses unknown input with a schema; the error names every field that was wrong. */
 export function parse<T extends z.ZodType>(schema: T, input: unknown, what: string): z.infer<T> {
-  const result = schema.safeParse(input)
+  const result = schema.safeParse(input, { error: issueWords })
   if (result.success) return result.data
   const issues: Issue[] = result.error.issues.map((issue) => ({ path: issue.path.join('.'), message: issue.message }))
   const first = issues[0]!
