@@ -15,7 +15,7 @@ import {
 import type { Configuration } from 'openid-client'
 import { DomainError } from '../../shared/errors'
 import { emailSchema } from '../../shared/schemas/session'
-import { textSchema } from '../../shared/schemas/common'
+import { lineSchema } from '../../shared/schemas/common'
 import type { ProviderSettings } from './settings'
 import { isPlain } from './settings'
 
@@ -82,7 +82,7 @@ interface Claims {
 
 function whoOf({ sub, email, email_verified: isVerified, name }: Claims): Who {
   const address = isVerified === true ? emailSchema.safeParse(email) : undefined
-  const called = textSchema(80).min(1).safeParse(name)
+  const called = lineSchema(80).min(1).safeParse(name)
   return { subject: sub, email: address?.data ?? null, name: called.data ?? null }
 }
 

@@ -3,6 +3,7 @@ import type { FileReading } from '../../shared/engine/formats/format'
 import type { Problem } from '../../shared/engine/problem/problem'
 import type { StructureReport } from '../../shared/engine/problem/structure'
 import { DomainError } from '../../shared/errors'
+import { nameFrom } from '../../shared/schemas/common'
 import type { ProblemSource } from '../../shared/schemas/problem-versions'
 import type { UploadedProblem, UploadProblem } from '../../shared/schemas/problems'
 import type { Actor, App } from '../app'
@@ -77,7 +78,7 @@ export async function readProblemUpload(
   watch: ReadingWatch = {},
 ): Promise<ReadUpload> {
   const { format, form, convention, sense } = options
-  const name = options.name ?? nameFrom(file.name)
+  const name = options.name ?? nameOf(file.name)
   const key = JSON.stringify({ format, form, convention, sense })
   const known = app.uploads.reading(file, key)
   if (known) return { ...known, view: { ...known.view, name } }
@@ -165,4 +166,4 @@ async function saveProblem(app: App, actor: Actor, upload: ReadUpload): Promise<
   return { ...view, kept: null, id, number }
 }
 
-const nameFrom = (fileName: string): string => fileName.replace(/\.[^.]*$/, '').slice(0, 120) || 'Unnamed problem'
+const nameOf = (fileName: string): string => nameFrom(fileName.replace(/\.[^.]*$/, '')) || 'Unnamed problem'

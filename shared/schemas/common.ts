@@ -13,7 +13,26 @@ const isStorable = (text: string): boolean => !/\0|\p{Cs}/u.test(text)
 /** Free text of at most `length` characters, without white space around it. */
 export const textSchema = (length: number) =>
   z.string().trim().max(length, `at most ${length} characters`).refine(isStorable, 'a character cannot be stored')
-export const nameSchema = textSchema(120).min(1, 'give a name')
+
+/** Line breaks and other control characters, and those that turn the direction of what stands after a name. */
+const BREAKS_LINE = /[\p{Cc}\p{Zl}\p{Zp}\u202a-\u202e\u2066-\u2069]/u
+const isInvisible = (text: string): boolean => text !== '' && /^[\p{Cf}\p{Z}]+$/u.test(text)
+
+/** What something or somebody is called: one line that leaves the text around it as it is. */
+export const lineSchema = (length: number) =>
+  textSchema(length)
+    .refine((text) => !BREAKS_LINE.test(text), 'a name is one line, without control characters')
+    .refine((text) => !isInvisible(text), 'a name has something that can be seen')
+
+const MAX_NAME_LENGTH = 120
+export const nameSchema = lineSchema(MAX_NAME_LENGTH).min(1, 'give a name')
+
+/** As much of a text from elsewhere as can be a name; empty where nothing can. */
+export function nameFrom(text: string): string {
+  const line = text.replace(new RegExp(BREAKS_LINE, 'gu'), '').slice(0, MAX_NAME_LENGTH)
+  const name = line.replace(/\p{Cs}/gu, '').trim()
+  return isInvisible(name) ? '' : name
+}
 
 /** Calibrations are counted in the database's 32-bit integers. */
 export const calibrationNumberSchema = z

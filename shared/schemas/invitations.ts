@@ -1,7 +1,7 @@
 import { z } from 'zod'
 import { MAX_PASSWORD_LENGTH } from '../password-rules'
 import type { Role } from './common'
-import { roleSchema, textSchema } from './common'
+import { lineSchema, roleSchema } from './common'
 import { emailSchema } from './session'
 
 /** At least one role; named twice, it counts once. */
@@ -47,7 +47,7 @@ export interface InvitedView {
 
 export const acceptSchema = z.object({
   /** Of a new account; not looked at where there is one. */
-  name: textSchema(80).default(''),
+  name: lineSchema(80).default(''),
   password: z.string().min(1, 'give a password').max(MAX_PASSWORD_LENGTH),
 })
 export type Accept = z.infer<typeof acceptSchema>

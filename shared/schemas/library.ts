@@ -2,10 +2,10 @@ import { z } from 'zod'
 import type { ProblemState } from '../library'
 import { DIRECTIONS, LIBRARY_FIELDS, plainTag, PROBLEM_STATES, TAG_LIMITS } from '../library'
 import type { Page } from './common'
-import { textSchema } from './common'
+import { lineSchema, textSchema } from './common'
 import type { ProblemItem } from './problems'
 
-const tagSchema = textSchema(TAG_LIMITS.length).transform(plainTag).pipe(z.string().min(1, 'a tag is empty'))
+const tagSchema = lineSchema(TAG_LIMITS.length).transform(plainTag).pipe(z.string().min(1, 'a tag is empty'))
 
 const tagsSchema = z.array(tagSchema).max(TAG_LIMITS.count, `at most ${TAG_LIMITS.count} tags`)
 

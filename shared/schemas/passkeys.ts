@@ -1,7 +1,7 @@
 import { z } from 'zod'
 import { MAX_PASSWORD_LENGTH } from '../password-rules'
 import type { Page } from './common'
-import { textSchema } from './common'
+import { lineSchema } from './common'
 
 /** Bytes as browsers write them into JSON. */
 const bytesSchema = (characters: number) => z.base64url('this is not base64url').max(characters)
@@ -25,7 +25,7 @@ export const usedPasskeySchema = z.object({
 })
 export type UsedPasskey = z.infer<typeof usedPasskeySchema>
 
-const passkeyNameSchema = textSchema(60).min(1, 'give it a name')
+const passkeyNameSchema = lineSchema(60).min(1, 'give it a name')
 
 /** A passkey that was made, with what the person calls it. */
 export const newPasskeySchema = z.object({

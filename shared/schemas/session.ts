@@ -2,7 +2,7 @@ import { z } from 'zod'
 import { MAX_PASSWORD_LENGTH } from '../password-rules'
 import type { BudgetBalance } from './budget'
 import type { Person, Role } from './common'
-import { idSchema, textSchema } from './common'
+import { idSchema, lineSchema } from './common'
 
 export const emailSchema = z
   .string()
@@ -22,13 +22,13 @@ export const signInSchema = z.object({
 /** First account of a new installation; the code is printed on the server's console. */
 export const setupSchema = z.object({
   code: z.string().trim().min(1, 'copy the code from the server’s console').max(40),
-  workspace: textSchema(80).min(1, 'give the workspace a name'),
-  name: textSchema(80).min(1, 'give your name'),
+  workspace: lineSchema(80).min(1, 'give the workspace a name'),
+  name: lineSchema(80).min(1, 'give your name'),
   email: emailSchema,
   password: newPasswordSchema,
 })
 
-export const foundWorkspaceSchema = z.object({ name: textSchema(80).min(1, 'give the workspace a name') })
+export const foundWorkspaceSchema = z.object({ name: lineSchema(80).min(1, 'give the workspace a name') })
 
 export const goToWorkspaceSchema = z.object({ workspaceId: idSchema })
 

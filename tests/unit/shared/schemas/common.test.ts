@@ -1,5 +1,5 @@
 import { expect, test } from 'vitest'
-import { calibrationNumberSchema, idSchema, nameSchema, textSchema } from '../../../../shared/schemas/common'
+import { calibrationNumberSchema, idSchema, nameFrom, nameSchema, textSchema } from '../../../../shared/schemas/common'
 
 const accepts = (schema: { safeParse(input: unknown): { success: boolean } }, input: unknown): boolean =>
   schema.safeParse(input).success
@@ -16,6 +16,33 @@ test.each([
 test('whole characters of every plane are taken', () => {
   expect(nameSchema.parse(' Kai 😀 ')).toBe('Kai 😀')
   expect(textSchema(10).parse('')).toBe('')
+})
+
+test.each([
+  ['a line break', 'Ada\nBo'],
+  ['a tabulator', 'Ada\tBo'],
+  ['a separator of lines', 'Ada\u2028Bo'],
+  ['an override of the direction of writing', 'Ada \u202eoB'],
+  ['an isolate that is left open', 'Ada \u2067Bo'],
+  ['nothing that can be seen', '\u200b\u00ad'],
+])('a name with %s is refused', (_what, text) => {
+  expect(accepts(nameSchema, text)).toBe(false)
+})
+
+test('names from right to left, with marks of their own and joined signs, are taken; text may have lines', () => {
+  for (const name of ['שרה כהן', 'می\u200cخواهم', '\u200fا.\u200f', '👩\u200d🚀', 'a b'])
+    expect(accepts(nameSchema, name)).toBe(true)
+  expect(accepts(textSchema(10), 'a\nb')).toBe(true)
+})
+
+test.each([
+  [' berths ', 'berths'],
+  ['a\u202ecsv\n', 'acsv'],
+  [`${'a'.repeat(119)}😀`, 'a'.repeat(119)],
+  ['\u200b', ''],
+])('a name is made of %j', (text, name) => {
+  expect(nameFrom(text)).toBe(name)
+  if (name) expect(nameSchema.parse(name)).toBe(name)
 })
 
 test('an id holds nothing that a query could stumble over', () => {
