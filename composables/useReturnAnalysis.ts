@@ -7,6 +7,7 @@ type Chosen = NextDraft['items']
 /** The analysis of a return, fetched once the page is there, and the next draft that its advice leads to. */
 export function useReturnAnalysis(id: MaybeRefOrGetter<string>, decode: MaybeRefOrGetter<Decoding>) {
   const api = useApi()
+  const { load } = useSession()
   const gap = ref(0)
   const url = computed(() => `/api/returns/${toValue(id)}/analysis?decode=${toValue(decode)}&gap=${gap.value}`)
   const { data, error, status, refresh } = useAsyncData(
@@ -42,6 +43,7 @@ export function useReturnAnalysis(id: MaybeRefOrGetter<string>, decode: MaybeRef
   const make = async (items: Chosen): Promise<NextDraftView | null> => {
     isDrafting.value = true
     const made = await post(items, false)
+    if (made) await load()
     isDrafting.value = false
     return made
   }

@@ -138,9 +138,10 @@ export function programmeBench(bench: Programmable, settings: RunSheetSettings):
 /** The programmed values, or a refusal saying which range they leave. */
 export function requireProgrammed({ result }: Programming): Programmed {
   if (result.programmed) return result.programmed
-  const words = result.excesses.map(
-    (excess) => `${excess.count} values of ${excess.range} outside ${excess.limits[0]} to ${excess.limits[1]}`,
-  )
+  const words = result.excesses.map(({ count, range, limits }) => {
+    const [low, high] = limits.map((limit) => String(limit).replace('-', '−'))
+    return `${count} ${count === 1 ? 'value' : 'values'} of ${range} outside ${low} to ${high}`
+  })
   throw new DomainError(
     'not acceptable',
     'programme.ranges',
