@@ -11,8 +11,8 @@ export const grantSchema = z.object({
   /** Machine time in seconds, to the microsecond; below 0 takes back what is not reserved or spent. */
   seconds: z
     .number()
-    .min(-MOST_SECONDS)
-    .max(MOST_SECONDS)
+    .min(-MOST_SECONDS, 'at most a hundred years at once')
+    .max(MOST_SECONDS, 'at most a hundred years at once')
     .refine((seconds) => Math.round(seconds * 1e6) !== 0, 'give a number of seconds other than 0'),
   /** The machine that it is for; null or left out: any machine. */
   machineId: idSchema.nullable().default(null),
