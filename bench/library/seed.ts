@@ -12,13 +12,20 @@ export interface Running {
   stop(): Promise<void>
 }
 
-/** Starts the built server on a data folder. @throws Error when it does not become healthy */
+/** Starts the built server on a data folder, without limits on requests where none are given. @throws Error when it does not become healthy */
 export async function serve(
   entry: string,
   folder: string,
   port: number,
+  settings: Record<string, string> = {},
 ): Promise<Running & { output(): string; pid: number }> {
-  const env = { HOST: '127.0.0.1', PORT: String(port), DATA_DIR: folder, NUXT_SESSION_PASSWORD: 'x'.repeat(40) }
+  const env = {
+    HOST: '127.0.0.1',
+    PORT: String(port),
+    DATA_DIR: folder,
+    NUXT_SESSION_PASSWORD: 'x'.repeat(40),
+    ...settings,
+  }
   const started = startProcess(entry, env)
   const url = `http://127.0.0.1:${port}`
   const isHealthy = () => {

@@ -1,3 +1,5 @@
+import { UseOrder } from './use-order'
+
 const MINUTE_MS = 60_000
 
 /** What a request met. */
@@ -26,8 +28,7 @@ const HAIR = 1e-6
  * the quota and what flowed in meanwhile gets through. Full ones are forgotten.
  */
 export class Buckets {
-  /** The key used last comes last. */
-  private readonly buckets = new Map<string, Bucket>()
+  private readonly buckets = new UseOrder<Bucket>()
 
   /**
    * @param perMinute quota, at least 1
@@ -64,10 +65,11 @@ export class Buckets {
   }
 
   private keep(key: string, bucket: Bucket): void {
-    this.buckets.delete(key)
     this.buckets.set(key, bucket)
-    for (const oldest of this.buckets.keys()) {
-      if (this.takenAt(oldest, bucket.at) > 0 && this.buckets.size <= this.mostKeys) break
+    for (;;) {
+      const oldest = this.buckets.oldest()
+      if (oldest === undefined) return
+      if (this.takenAt(oldest, bucket.at) > 0 && this.buckets.size <= this.mostKeys) return
       this.buckets.delete(oldest)
     }
   }

@@ -3,6 +3,7 @@ import { isIPv6 } from 'node:net'
 import type { Taken } from './buckets'
 import { Buckets } from './buckets'
 import type { RateSettings } from './settings'
+import { UseOrder } from './use-order'
 
 /** Some tens of megabytes at most. */
 const MOST_KEYS = 100_000
@@ -39,7 +40,7 @@ export class RateLimiter {
   private readonly callers: Buckets | null
   private readonly addresses: Buckets | null
   /** Digests of what was found to be good; those used last are kept. */
-  private readonly good = new Map<string, true>()
+  private readonly good = new UseOrder<object>()
 
   constructor({ caller, address }: RateSettings) {
     this.callers = caller === null ? null : new Buckets(caller, MOST_KEYS)
@@ -48,7 +49,7 @@ export class RateLimiter {
 
   /** @param digest of what the request came with @returns null where this is not limited */
   count(digest: string | undefined, address: string, now: number): Counted | null {
-    const isGood = digest !== undefined && this.good.has(digest)
+    const isGood = digest !== undefined && this.good.get(digest) !== undefined
     const buckets = isGood ? this.callers : this.addresses
     if (!buckets) return null
     const key = isGood ? digest : networkOf(address)
@@ -57,8 +58,7 @@ export class RateLimiter {
 
   /** What somebody came with opened a session, or is a token that holds. */
   accept(digest: string): void {
-    this.good.delete(digest)
-    this.good.set(digest, true)
-    if (this.good.size > MOST_KEYS) this.good.delete(this.good.keys().next().value!)
+    this.good.set(digest, {})
+    if (this.good.size > MOST_KEYS) this.good.delete(this.good.oldest()!)
   }
 }
