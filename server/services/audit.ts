@@ -1,6 +1,6 @@
 import { randomUUID } from 'node:crypto'
 import type { Deed } from '../../shared/audit'
-import { csvCell } from '../../shared/csv'
+import { csvCell, csvWords } from '../../shared/csv'
 import type { AuditEntryView, AuditQuery, AuditView } from '../../shared/schemas/audit'
 import type { Actor, App } from '../app'
 import type { AuditScope } from '../database/repositories/audit'
@@ -85,8 +85,8 @@ const entryView = ({ entry, by }: Awaited<ReturnType<typeof listAuditEntries>>[n
 })
 
 function line({ at, by, token, address, what, kind, thing }: AuditEntryView): string {
-  const cells = [at, by.name, by.id, token ?? '', address, what, kind, thing.label, thing.id ?? '']
-  return `${cells.map((cell) => csvCell(cell)).join(',')}\n`
+  const who = [csvWords(by.name), by.id, csvWords(token ?? ''), csvCell(address)]
+  return `${[at, ...who, csvCell(what), kind, csvWords(thing.label), thing.id ?? ''].join(',')}\n`
 }
 
 /** The same as CSV, without pages. */

@@ -1,6 +1,6 @@
 import type { BUDGET_ACCOUNTS } from '../../shared/budget'
 import { BUDGET_MOVES, RESERVATION_DAYS } from '../../shared/budget'
-import { csvCell } from '../../shared/csv'
+import { csvWords } from '../../shared/csv'
 import type { BudgetBalance, BudgetEntryView, BudgetView } from '../../shared/schemas/budget'
 import type { Page, PageQuery } from '../../shared/schemas/common'
 import type { Actor, App } from '../app'
@@ -112,9 +112,10 @@ const HEAD = 'number,at,move,from,to,seconds,machine,run sheet,problem,by,remark
 
 function line(entry: BudgetEntryView): string {
   const { number, at, move, from, to, seconds, pool, runSheet, problem, by, remark, availableSeconds } = entry
-  const cells = [number, at, move, from, to, seconds, pool?.name ?? 'any', runSheet && `RS-${runSheet.number}`]
-  const rest = [problem?.name, by?.name, remark, availableSeconds]
-  return `${[...cells, ...rest].map((cell) => csvCell(String(cell ?? ''))).join(',')}\n`
+  const words = [problem?.name, by?.name, remark].map((text) => csvWords(text ?? ''))
+  const machine = csvWords(pool?.name ?? 'any')
+  const about = runSheet ? `RS-${runSheet.number}` : ''
+  return `${[number, at, move, from, to, seconds, machine, about, ...words, availableSeconds].join(',')}\n`
 }
 
 /** The whole ledger as CSV, newest first; seconds to the microsecond. */
