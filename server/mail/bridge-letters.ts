@@ -4,7 +4,7 @@ import type { SheetForLetter } from './letters'
 
 /** What came of a run sheet that was sent to a bridge. */
 export interface CallTold {
-  what: 'given up' | 'refused' | 'returned'
+  what: 'given up' | 'refused' | 'rehearsed' | 'returned'
   /** Why it failed, or what the bridge said. */
   said: string | null
 }
@@ -15,6 +15,10 @@ const WORDS: Record<CallTold['what'], { subject: string; sentence: string }> = {
     sentence: 'could not be handed to the bridge of the machine, and is not tried any more. It can be sent again.',
   },
   refused: { subject: 'was refused by the bridge', sentence: 'was refused by the bridge of the machine.' },
+  rehearsed: {
+    subject: 'has a rehearsal back',
+    sentence: 'went to the built-in bridge, which rehearsed it. The machine has not run it.',
+  },
   returned: { subject: 'has samples back', sentence: 'was run by the bridge of the machine; its samples are here.' },
 }
 

@@ -83,7 +83,7 @@ export async function takeSamples(
       async note(tx, returnId) {
         if (!(await answerCall(tx, call.id, { state: 'returned', returnId, returnedDigest: digest })))
           throw closed('returned')
-        await tellOfCall(app, tx, call, { what: 'returned', said: null })
+        await tellOfCall(app, tx, call, { what: call.kind === 'rehearsal' ? 'rehearsed' : 'returned', said: null })
       },
     })
     return { id, reads }

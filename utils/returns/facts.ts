@@ -57,7 +57,12 @@ export function returnFacts(samples: ReturnView): Fact[] {
       name: 'the number of ties',
     })
   if (rehearsal)
-    facts.push({ label: 'Made by', value: 'rehearsal', word: true, note: `${formatDuration(seconds)} of computing` })
+    facts.push({
+      label: 'Made by',
+      value: 'rehearsal',
+      word: true,
+      note: seconds === null ? '' : `${formatDuration(seconds)} of computing`,
+    })
   else
     facts.push({
       label: 'Made by',

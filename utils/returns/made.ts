@@ -83,7 +83,9 @@ function rehearsalRows(samples: ReturnView): MadeRow[] {
     },
     { label: 'Seed', value: number(made.seed) },
     ...(made.byBridge ? [{ label: 'Sent by', value: 'the built-in bridge' }] : []),
-    { label: 'Took', value: formatDuration(seconds), note: 'of computing, not machine time' },
+    ...(seconds === null
+      ? []
+      : [{ label: 'Took', value: formatDuration(seconds), note: 'of computing, not machine time' }]),
   ]
 }
 
