@@ -25,7 +25,8 @@ function pauseOf(name: string | undefined, headers: Record<string, string> | nul
 
 function failureOf(error: Partial<ErrorResponse>, seconds: number): Error {
   const { statusCode, name, message } = error
-  if (!statusCode) return new Error(`the mail service gave no answer that can be read within ${seconds} s`)
+  if (!statusCode)
+    return new Error(`the mail service could not be reached, or gave no answer that can be read within ${seconds} s`)
   const words = `the mail service answered ${statusCode} ${name}: ${message}`
   return isFinal(error) ? new MailRefused(words) : new Error(words)
 }

@@ -324,3 +324,17 @@ describe('every route', () => {
     ).toEqual([])
   })
 })
+
+it.each([
+  ['GET', '/api/problem'],
+  ['POST', '/api/problems/x/nothing?page=1'],
+  ['DELETE', '/api/problems'],
+])('says that there is no route for %s %s, to whoever asks', async (method, path) => {
+  for (const headers of [{}, own[0]!.headers]) {
+    const response = await fetch(server.url + path, { method, headers, redirect: 'manual' })
+    expect(response.status).toBe(404)
+    expect(response.headers.get('content-type')).toContain('application/json')
+    const message = `There is no ${method} ${path.split('?')[0]}. All routes are at /reference.`
+    expect(((await response.json()) as { data: unknown }).data).toEqual({ code: 'route.none', message })
+  }
+})

@@ -24,7 +24,7 @@ describe('mailStanding', () => {
       'Tried 2 times; next 3 Dec, 14:21. The last one: 451 not now',
     )
     expect(mailStanding(mail({ state: 'sent', attempts: 1, sentAt: '2026-12-03T14:20:02.000Z' }))).toBe(
-      'Taken by the mail server 3 Dec, 14:20, at attempt 1.',
+      'Taken for delivery 3 Dec, 14:20, at attempt 1.',
     )
     expect(mailStanding(mail({ state: 'given up', attempts: 1, reason: '550 nobody' }))).toBe(
       'Given up after 1 attempt. The last one: 550 nobody',
