@@ -1,0 +1,169 @@
+/**
+ * What exporting and importing a workspace takes (`npm run bench:archive`, options in options.ts): the built server packs
+ * workspaces with so many megabytes of samples and takes them in again in another installation, over HTTP. Each step has a
+ * server process of its own, so that the most memory it ever held (Linux: VmHWM of its status) is that of the step. What is
+ * asked is whether that grows with the workspace.
+ */
+import { execFileSync } from 'node:child_process'
+import {
+  createWriteStream,
+  existsSync,
+  mkdirSync,
+  mkdtempSync,
+  openAsBlob,
+  readFileSync,
+  rmSync,
+  statSync,
+  writeFileSync,
+} from 'node:fs'
+import { cpus, loadavg, tmpdir } from 'node:os'
+import { join } from 'node:path'
+import { Readable } from 'node:stream'
+import { pipeline } from 'node:stream/promises'
+import type { ReadableStream } from 'node:stream/web'
+import { Client } from '../../tests/support/client'
+import { OWNER, serve, setUp } from '../library/seed'
+import { bringIn, fill } from './fill'
+import { readOptions, USAGE } from './options'
+
+const ENTRY = join(process.cwd(), '.output', 'server', 'index.mjs')
+const PORT = 4876
+const PATIENCE_SECONDS = 1200
+
+interface Step {
+  readonly seconds: number
+  /** Most memory of the server before the step and with it, MiB. */
+  readonly before: number
+  readonly peak: number
+}
+
+interface Row {
+  readonly megabytes: number
+  readonly sets: number
+  readonly archiveMegabytes: number
+  readonly export: Step
+  /** Of `import` until the archive was received and queued, s. */
+  readonly receivedSeconds: number
+  readonly import: Step
+}
+
+const peakOf = (pid: number): number =>
+  Number(/VmHWM:\s+(\d+) kB/.exec(readFileSync(`/proc/${pid}/status`, 'utf8'))![1]) / 1024
+
+async function measured(dataFolder: string, work: (client: Client) => Promise<void>): Promise<Step> {
+  const server = await serve(ENTRY, dataFolder, PORT)
+  try {
+    const client = new Client(server.url)
+    await client.post('/api/session', OWNER)
+    const before = peakOf(server.pid)
+    const start = performance.now()
+    await work(client)
+    return { seconds: (performance.now() - start) / 1000, before, peak: peakOf(server.pid) }
+  } finally {
+    await server.stop()
+  }
+}
+
+/** An installation with its first account, and what is brought into its workspace. */
+async function prepare(dataFolder: string, bring: (client: Client) => Promise<void>): Promise<void> {
+  const server = await serve(ENTRY, dataFolder, PORT)
+  try {
+    await setUp(server)
+    const client = new Client(server.url)
+    await client.post('/api/session', OWNER)
+    await bring(client)
+  } finally {
+    await server.stop()
+  }
+}
+
+async function download(client: Client, path: string): Promise<void> {
+  const cookie = client.browserCookies().map(({ name, value }) => `${name}=${value}`)
+  const answer = await fetch(`${client.url}/api/workspaces/export`, { headers: { cookie: cookie.join('; ') } })
+  if (!answer.ok) throw new Error(`the export was answered ${answer.status}`)
+  await pipeline(Readable.fromWeb(answer.body as ReadableStream), createWriteStream(path))
+}
+
+/** @returns seconds until the archive was received */
+async function takeIn(client: Client, path: string): Promise<number> {
+  const form = new FormData()
+  form.append('file', await openAsBlob(path), 'workspace.zip')
+  const start = performance.now()
+  const { status, body, text } = await client.post<{ jobId: string }>('/api/workspaces/import', form)
+  if (status !== 202) throw new Error(`the import was answered ${status}: ${text}`)
+  const received = (performance.now() - start) / 1000
+  const job = await client.finished(body.jobId, PATIENCE_SECONDS)
+  if (job.status !== 'done') throw new Error(`the import ended as ${job.status}: ${job.message}`)
+  return received
+}
+
+async function measure(megabytes: number, reads: number): Promise<Row> {
+  const folder = mkdtempSync(join(tmpdir(), 'espalier-bench-'))
+  const [from, to, archive] = [join(folder, 'from'), join(folder, 'to'), join(folder, 'workspace.zip')]
+  try {
+    await prepare(from, (client) => bringIn(client, join(folder, 'files')))
+    await prepare(to, () => Promise.resolve())
+    const sets = await fill(from, { bytes: megabytes * 1e6, reads })
+    console.error(`${megabytes} MB of samples stored`)
+    const exported = await measured(from, (client) => download(client, archive))
+    rmSync(from, { recursive: true })
+    let receivedSeconds = 0
+    const imported = await measured(to, async (client) => {
+      receivedSeconds = await takeIn(client, archive)
+    })
+    const archiveMegabytes = statSync(archive).size / 1e6
+    return { megabytes, sets, archiveMegabytes, export: exported, receivedSeconds, import: imported }
+  } finally {
+    rmSync(folder, { recursive: true })
+  }
+}
+
+const stepCells = ({ seconds, before, peak }: Step): string[] => [
+  seconds.toFixed(1),
+  before.toFixed(0),
+  peak.toFixed(0),
+]
+
+function tableOf(rows: readonly Row[]): string {
+  const head = ['MB', 'sets', 'ZIP MB', 'export s', 'before MiB', 'peak MiB', 'import s', 'before MiB', 'peak MiB']
+  const lines = rows.map((row) => [
+    ...[String(row.megabytes), String(row.sets), row.archiveMegabytes.toFixed(0)],
+    ...stepCells(row.export),
+    ...stepCells(row.import),
+  ])
+  return [head, ...lines].map((line) => line.map((cell) => cell.padStart(12)).join('')).join('\n')
+}
+
+const commit = (): string => {
+  try {
+    return execFileSync('git', ['rev-parse', '--short', 'HEAD'], { encoding: 'utf8' }).trim()
+  } catch {
+    return 'unknown'
+  }
+}
+
+async function main(): Promise<void> {
+  const { sizes, reads, json, keep } = readOptions(process.argv.slice(2))
+  if (!existsSync(ENTRY)) throw new Error('There is no built server: run npm run build first.')
+  const before = loadavg()[0]!
+  const rows: Row[] = []
+  for (const megabytes of sizes) rows.push(await measure(megabytes, reads))
+  const processor = `${cpus().length} × ${cpus()[0]?.model ?? 'unknown'}`
+  const date = new Date().toISOString()
+  const report = { bench: 'archive', date, commit: commit(), processor, loadBefore: before, reads, rows }
+  console.log(
+    json
+      ? JSON.stringify(report)
+      : `\n${tableOf(rows)}\n\nSets of ${reads} reads of 2,048 qubits; ${processor}; load ${before.toFixed(1)}.`,
+  )
+  if (!keep) return
+  const path = join('bench', 'results', `${date.slice(0, 10)}-${report.commit}-archive.json`)
+  mkdirSync(join('bench', 'results'), { recursive: true })
+  writeFileSync(path, `${JSON.stringify(report, null, 1)}\n`)
+  console.error(`Kept in ${path}.`)
+}
+
+await main().catch((error: unknown) => {
+  console.error(error instanceof TypeError || error instanceof RangeError ? `${error.message}\n\n${USAGE}` : error)
+  process.exitCode = 1
+})
