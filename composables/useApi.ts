@@ -17,6 +17,10 @@ const OFFLINE: ApiFailure = {
   issues: [],
 }
 
+/** A page is shown to who is signed in, so that whoever reads this was: going to the sign-in page would lose what they typed. */
+const SIGNED_OUT =
+  'You are signed out, here or because it was long ago. Sign in again in another tab, then try again here.'
+
 /** Reads the server's error object out of whatever a request threw. */
 export function failureOf(error: unknown): ApiFailure {
   const { statusCode, data } = (error ?? {}) as Partial<FetchError<{ data?: Partial<ApiFailure>; message?: string }>>
@@ -26,7 +30,8 @@ export function failureOf(error: unknown): ApiFailure {
     status: statusCode,
     code: detail?.code ?? 'unknown',
     message:
-      detail?.message ?? 'The server could not do this. Try again; if it happens again, tell the workspace owner.',
+      (detail?.code === 'session.none' ? SIGNED_OUT : detail?.message) ??
+      'The server could not do this. Try again; if it happens again, tell the workspace owner.',
     issues: detail?.issues ?? [],
   }
 }
