@@ -41,7 +41,7 @@ export const DEEDS: Readonly<Record<string, Deed | null>> = {
   'DELETE /api/account': null,
   // Written down in the workspace that was joined.
   'POST /api/account/membership': null,
-  'DELETE /api/account/membership': { kind: 'workspace', what: 'left', isOwn: true },
+  'DELETE /api/account/membership': { kind: 'workspace', what: 'left the workspace', isOwn: true },
   'POST /api/account/passkeys/challenge': null,
   'POST /api/account/passkeys': own('added a passkey of their own'),
   'DELETE /api/account/passkeys/:id': own('removed a passkey of their own'),

@@ -17,7 +17,8 @@ export function pathOfThing({ kind, thing }: Pick<AuditEntryView, 'kind' | 'thin
 
 /** What comes after the words of the deed: the kind where the label does not say it. */
 export function thingText({ kind, thing }: Pick<AuditEntryView, 'kind' | 'thing'>): string {
-  if (kind === 'budget' || kind === 'sign-in' || (kind === 'person' && !thing.label)) return ''
+  if (kind === 'budget' || kind === 'sign-in') return ''
+  if ((kind === 'person' || kind === 'workspace') && !thing.label) return ''
   return thing.label || `a ${kind}`
 }
 
