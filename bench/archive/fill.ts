@@ -40,11 +40,8 @@ function samplesOf(reads: number): Uint8Array {
   })
 }
 
-/**
- * Further sets of samples beside the first, until there are so many bytes of them. No server may run on the folder meanwhile.
- * @returns how many
- */
-export async function fill(dataFolder: string, { bytes, reads }: { bytes: number; reads: number }): Promise<number> {
+/** Further sets of samples beside the first, until there are so many bytes. No server may run on the folder meanwhile. */
+export async function fill({ dataFolder, bytes, reads }: { dataFolder: string; bytes: number; reads: number }) {
   const database = await openDatabase({ dataFolder })
   const blobs = createBlobStore(database, () => new Date())
   const [first] = await database.db.select().from(returns)
@@ -59,5 +56,4 @@ export async function fill(dataFolder: string, { bytes, reads }: { bytes: number
     })
   }
   await database.close()
-  return sets
 }
