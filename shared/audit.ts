@@ -130,6 +130,7 @@ export const SIGN_INS = {
   joined: deed('sign-in', 'accepted an invitation while signed in elsewhere'),
   setup: deed('sign-in', 'set the workspace up and signed in'),
   out: deed('sign-in', 'signed out'),
+  'new password': deed('sign-in', 'chose a new password by a link, which ended all sessions'),
   'wrong password': deed('sign-in', 'was refused at signing in: wrong password'),
   'wrong passkey': deed('sign-in', 'was refused at signing in: the passkey did not prove itself'),
 } as const satisfies Record<string, Deed>

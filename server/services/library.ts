@@ -1,4 +1,3 @@
-import { DomainError } from '../../shared/errors'
 import { firstDirection } from '../../shared/library'
 import type { Page, PageQuery } from '../../shared/schemas/common'
 import type { LibraryPage, LibraryQuery, LibrarySummary } from '../../shared/schemas/library'
@@ -7,20 +6,10 @@ import { countStates, countTags, problemsInOrder, searchLibrary } from '../datab
 import { cursorOf, positionOf, readPage } from '../database/repositories/pages'
 import { contextOf, itemOf } from './problem-items'
 
-/** @throws DomainError for a cursor that no answer gave out */
-function startOf(cursor: string | undefined): number {
-  const start = positionOf(cursor)
-  if (cursor && cursorOf(start) !== cursor)
-    throw new DomainError('not acceptable', 'library.cursor', 'The cursor is not one that a list of problems gave.', [
-      { path: 'cursor', message: 'take nextCursor or previousCursor of the answer before' },
-    ])
-  return start
-}
-
 /** A page of the problems that match, sorted in the database. Pages are counted by position: what changes meanwhile may shift them. */
 export async function libraryPage(app: App, actor: Actor, query: LibraryQuery): Promise<LibraryPage> {
   const { sort, limit } = query
-  const start = startOf(query.cursor)
+  const start = positionOf(query.cursor)
   const direction = query.direction ?? firstDirection(sort)
   const place = { sort, direction, limit, offset: start }
   const { ids, total } = await searchLibrary(app.db, actor.workspaceId, query, place)

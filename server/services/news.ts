@@ -5,6 +5,7 @@ import type { Actor, App } from '../app'
 import type { Db } from '../database/client'
 import type { NewsPlace, NewsRow, ThingFolder } from '../database/repositories/news'
 import { countUnread, deleteOldNews, listNews, markAllRead, markRead, thingsThere } from '../database/repositories/news'
+import { noSuchCursor } from '../database/repositories/pages'
 
 const DAY_MS = 24 * 60 * 60 * 1000
 
@@ -12,10 +13,12 @@ const DAY_MS = 24 * 60 * 60 * 1000
 const cursorOf = ({ createdAt, id }: NewsRow): string =>
   Buffer.from(`${createdAt.getTime()} ${id}`).toString('base64url')
 
-/** The place that a cursor stands for; none without one or when it is not one of ours. */
+/** The place that a cursor stands for; none without one. */
 function placeOf(cursor: string | undefined): NewsPlace | undefined {
-  const [, time, id] = /^(\d{1,15}) ([\w-]{1,64})$/.exec(Buffer.from(cursor ?? '', 'base64url').toString()) ?? []
-  return time && id ? { at: new Date(Number(time)), id } : undefined
+  if (!cursor) return undefined
+  const [, time, id] = /^(\d{1,15}) ([\w-]{1,64})$/.exec(Buffer.from(cursor, 'base64url').toString()) ?? []
+  if (!time || !id) throw noSuchCursor()
+  return { at: new Date(Number(time)), id }
 }
 
 interface Thing {

@@ -11,6 +11,7 @@ import { sendsMail, writePrivately, writeSecretLink } from './mail'
 import { requireGoodPassword } from './password-rules'
 import type { Passwords } from './people'
 import { signInAttempts } from './sign-in'
+import { noteNewPassword } from './sign-in-trail'
 
 const PER_ADDRESS = { most: 5, withinMinutes: 60 }
 const PER_NETWORK = { most: 30, withinMinutes: 60 }
@@ -93,11 +94,19 @@ export async function resetView(app: App, secret: string): Promise<ResetView> {
   })
 }
 
-/** Sets the new password, signs the person out everywhere, and ends their other links. */
-export async function resetPassword(app: App, passwords: Passwords, secret: string, password: string): Promise<void> {
+/**
+ * Sets the new password, signs the person out everywhere, and ends their other links.
+ * @param network address that the request comes from
+ */
+export async function resetPassword(
+  app: App,
+  passwords: Passwords,
+  { secret, password }: { secret: string; password: string },
+  network: string,
+): Promise<void> {
   requireGoodPassword(password, await resetView(app, secret))
   const passwordHash = await passwords.hash(password)
-  await app.db.transaction(async (tx) => {
+  const userId = await app.db.transaction(async (tx) => {
     const { user } = await requireConfirmation(app, tx, 'password', secret)
     await updateUser(tx, user.id, { passwordHash })
     await deleteSessionsOf(tx, user.id)
@@ -105,5 +114,7 @@ export async function resetPassword(app: App, passwords: Passwords, secret: stri
     // Whoever had to ask may have used up their attempts.
     await deleteAttempts(tx, signInAttempts(user.email))
     await writePrivately(app, tx, { userId: user.id, address: user.email }, passwordChangedLetter('by a link'))
+    return user.id
   })
+  await noteNewPassword(app, userId, network)
 }

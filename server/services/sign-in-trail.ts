@@ -19,14 +19,17 @@ export async function noteSignIn(app: App, actor: Actor, how: SignIn, address: s
   }
 }
 
-/** A refusal is told in the workspace that signing in would have opened; that of somebody unknown is told nowhere. */
-async function noteRefusal(app: App, userId: string | undefined, how: SignIn, address: string): Promise<void> {
+/** Told in the workspace that signing in would open; of somebody unknown it is told nowhere. */
+async function noteOutside(app: App, userId: string | undefined, how: SignIn, address: string): Promise<void> {
   const workspaceId = userId && (await firstWorkspaceOf(app.db, userId))
   if (workspaceId) await noteSignIn(app, { userId, workspaceId }, how, address)
 }
 
 export const noteRefusedPassword = async (app: App, email: string, address: string): Promise<void> =>
-  noteRefusal(app, (await findUserByEmail(app.db, email))?.id, 'wrong password', address)
+  noteOutside(app, (await findUserByEmail(app.db, email))?.id, 'wrong password', address)
+
+export const noteNewPassword = (app: App, userId: string, address: string): Promise<void> =>
+  noteOutside(app, userId, 'new password', address)
 
 export const noteRefusedPasskey = async (app: App, credentialId: string, address: string): Promise<void> =>
-  noteRefusal(app, (await findPasskey(app.db, credentialId))?.user.id, 'wrong passkey', address)
+  noteOutside(app, (await findPasskey(app.db, credentialId))?.user.id, 'wrong passkey', address)

@@ -134,7 +134,7 @@ describe('the library', () => {
   })
 
   it('refuses a cursor that is none, and takes one beyond the end for an empty page', async () => {
-    await expect(ask({ cursor: 'garbage' })).rejects.toMatchObject({ code: 'library.cursor' })
+    await expect(ask({ cursor: 'garbage' })).rejects.toMatchObject({ code: 'list.cursor' })
     const beyond = await ask({ cursor: Buffer.from('100000').toString('base64url') })
     expect(beyond).toMatchObject({ items: [], total: PROBLEMS, nextCursor: null })
   })

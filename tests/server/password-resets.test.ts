@@ -50,6 +50,9 @@ async function member() {
   return { userId, email: `${name.toLowerCase()}@works.example.org` }
 }
 
+const reset = (secret: string, password: string): Promise<void> =>
+  resetPassword(test.app, passwords, { secret, password }, '192.0.2.1')
+
 async function ask(email: string, network = '192.0.2.1'): Promise<void> {
   const work: Promise<void>[] = []
   await askReset(test.app, { email }, network, (later) => work.push(later))
@@ -83,15 +86,14 @@ it('changes a password once, by a link that goes to the address, and signs out e
   const [first, second] = await delivered()
   expect(first).toMatchObject({ to: email, subject: 'A new password for Espalier' })
   expect(await resetView(test.app, first!.secret)).toMatchObject({ email })
-  await expect(resetPassword(test.app, passwords, first!.secret, 'short')).rejects.toMatchObject({
+  await expect(reset(first!.secret, 'short')).rejects.toMatchObject({
     code: 'password.weak',
   })
-  await resetPassword(test.app, passwords, first!.secret, GOOD)
+  await reset(first!.secret, GOOD)
   await expect(sessionCaller(test.app, sessionId, '192.0.2.1')).rejects.toMatchObject({ code: 'session.ended' })
   await expect(enter(email, OTHER)).rejects.toMatchObject({ code: 'session.refused' })
   expect(await enter(email, GOOD)).toMatchObject({ userId })
-  for (const { secret } of [first!, second!])
-    await expect(resetPassword(test.app, passwords, secret, OTHER)).rejects.toMatchObject(gone)
+  for (const { secret } of [first!, second!]) await expect(reset(secret, OTHER)).rejects.toMatchObject(gone)
   expect(await delivered()).toMatchObject([{ to: email, subject: 'Your password for Espalier was changed' }])
 })
 
@@ -125,9 +127,7 @@ it('uses a link once, also when it is used twice at the same time', async () => 
   const { email } = await member()
   await ask(email)
   const { secret } = (await delivered())[0]!
-  const outcomes = await Promise.allSettled(
-    [GOOD, OTHER].map((password) => resetPassword(test.app, passwords, secret, password)),
-  )
+  const outcomes = await Promise.allSettled([GOOD, OTHER].map((password) => reset(secret, password)))
   expect(outcomes.map(({ status }) => status).sort()).toEqual(['fulfilled', 'rejected'])
 })
 
@@ -143,7 +143,7 @@ it('lets an owner hand on a link where no mail is sent, for a member of this wor
   const link = (await invite(test.app, elsewhere, { email, roles: ['reader'] })).link!
   const given = { name: '', password: OTHER }
   await acceptInvitation(test.app, passwords, link.split('/').at(-1)!, given, '192.0.2.1')
-  await expect(resetPassword(test.app, passwords, secret, GOOD)).rejects.toMatchObject(gone)
+  await expect(reset(secret, GOOD)).rejects.toMatchObject(gone)
   await expect(makeResetLink(test.app, owner, userId)).rejects.toMatchObject({ code: 'reset.elsewhere' })
   expect(await test.app.db.select().from(mails)).not.toContainEqual(expect.objectContaining({ state: 'kept' }))
 })

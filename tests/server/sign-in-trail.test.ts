@@ -43,6 +43,19 @@ it('tells who signed in and out, and whose sign-in was refused', async () => {
   ])
 })
 
+it('tells of a password that was chosen by a link', async () => {
+  const { items } = (await owner.get<{ items: { id: string; name: string }[] }>('/api/people')).body
+  const reader = items.find(({ name }) => name === 'Tomas Reyl')!
+  const { link } = (await owner.post<{ link: string }>(`/api/people/${reader.id}/reset-link`)).body
+  const chosen = { password: 'quay lantern moss gravel' }
+  expect((await new Client(server.url).post(`/api/resets/${link.split('/').at(-1)}`, chosen)).status).toBe(200)
+  expect((await entries())[0]).toEqual([
+    'Tomas Reyl',
+    'chose a new password by a link, which ended all sessions',
+    '127.0.0.1',
+  ])
+})
+
 it('tells of an invitation that was accepted', async () => {
   const invitation = { email: 'nell@example.org', roles: ['reader'] }
   const { link } = (await owner.post<{ link: string }>('/api/invitations', invitation)).body

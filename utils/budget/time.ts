@@ -35,8 +35,13 @@ export const moveMark = (move: BudgetMove): MarkKind => MOVES[move].mark
 
 /** The strip of facts of the budget. */
 export function budgetFacts(total: BudgetBalance, holds: number): Fact[] {
-  const share = (seconds: number) =>
-    total.grantedSeconds > 0 ? `${formatPercent(seconds / total.grantedSeconds, { significant: 2 })} of it` : undefined
+  const share = (seconds: number) => {
+    if (total.grantedSeconds <= 0) return undefined
+    const part = seconds / total.grantedSeconds
+    // Rounded it would say that nothing is missing.
+    if (part > 0.99 && part < 1) return `over ${formatPercent(0.99, { significant: 2 })} of it`
+    return `${formatPercent(part, { significant: 2 })} of it`
+  }
   return [
     { label: 'Granted', value: machineTime(total.grantedSeconds) },
     { label: 'Spent', value: machineTime(total.spentSeconds), note: share(total.spentSeconds) },

@@ -1,12 +1,27 @@
+import { DomainError } from '../../../shared/errors'
 import type { Page, PageQuery } from '../../../shared/schemas/common'
 
 /** Cursors are the running position in a list ordered newest first, made opaque. */
 export const cursorOf = (position: number): string => Buffer.from(String(position)).toString('base64url')
 
-/** The position that a cursor stands for; 0 without one or when it is not one of ours. */
+/** For a cursor that no answer gave out. */
+export const noSuchCursor = (): DomainError =>
+  new DomainError(
+    'not acceptable',
+    'list.cursor',
+    'The cursor is not one that this list gave. Take nextCursor of the answer before, or leave it out for the first page.',
+    [{ path: 'cursor', message: 'take nextCursor of the answer before' }],
+  )
+
+/**
+ * The position that a cursor stands for; 0 without one.
+ * @throws DomainError not acceptable for one that is none of ours
+ */
 export function positionOf(cursor: string | undefined): number {
-  const position = Number(Buffer.from(cursor ?? '', 'base64url').toString())
-  return Number.isSafeInteger(position) && position > 0 ? position : 0
+  if (!cursor) return 0
+  const position = Number(Buffer.from(cursor, 'base64url').toString())
+  if (!Number.isSafeInteger(position) || position < 0 || cursorOf(position) !== cursor) throw noSuchCursor()
+  return position
 }
 
 /** Makes a page from `limit + 1` rows fetched. */

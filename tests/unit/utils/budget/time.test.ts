@@ -43,6 +43,12 @@ it('writes machine time in a fitting unit, and with a minus where more was spent
   expect(machineTime(3725)).toBe(`1${THIN_SPACE}h 2${THIN_SPACE}min`)
 })
 
+it('does not round away that something is spent or held', () => {
+  const total = { grantedSeconds: 1000, spentSeconds: 1, reservedSeconds: 1, availableSeconds: 998 }
+  const notes = budgetFacts(total, 1).map(({ note }) => note)
+  expect(notes.at(-1)).toBe(`over 99${THIN_SPACE}% of it`)
+})
+
 it('says when the budget is overspent', () => {
   const total = { grantedSeconds: 1, spentSeconds: 1.5, reservedSeconds: 0, availableSeconds: -0.5 }
   expect(budgetFacts(total, 0).map(({ note }) => note)).toEqual([
