@@ -346,7 +346,7 @@ describe('the built-in bridge', () => {
     expect(sheet).toMatchObject({ state: 'issued', call: { kind: 'rehearsal', state: 'returned', isResendable: true } })
     expect(sheet.returns).toMatchObject([{ source: 'rehearsal', byBridge: true, reads: 50, best: -1 }])
     expect(await lettersOf('The machine has not run it.')).toHaveLength(1)
-    expect(await lettersOf('has samples back')).toHaveLength(0)
+    expect(await lettersOf(`RS-${sheet.number} has samples back`)).toHaveLength(0)
     // A machine's own bridge takes its place, and what it sends are samples.
     await save({ kind: 'own', url: bridge.url })
     await sendByBridge(app, test.actor, id)

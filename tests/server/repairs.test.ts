@@ -227,7 +227,7 @@ describe('run sheets on a broken embedding', () => {
     const { app, actor } = test
     const first = await triangle()
     const second = await importEmbedding(app, actor, { ...first, chains: { a: [0], b: [1], c: [3, 4] } })
-    await through(first.id, 'Ferries\r\nBcc: all@works.example.org', 'submit', 'approve')
+    await through(first.id, 'Ferries Bcc: all@works.example.org', 'submit', 'approve')
     const since = new Set(
       (await outboxOf(app, actor, outboxQuerySchema.parse({ limit: 200 }))).items.map(({ id }) => id),
     )

@@ -86,10 +86,14 @@ async function contentsOf(zip: ZipFile, entries: ReadonlyMap<string, Entry>, pat
   if (!entry) throw notReadable(`${path} is missing`)
   if (entry.uncompressedSize > limit) throw notReadable(`${path} is too large`)
   try {
-    // The reader refuses an entry that unpacks to another size than it says.
-    const chunks: Buffer[] = []
-    for await (const chunk of await zip.openReadStreamPromise(entry)) chunks.push(chunk as Buffer)
-    return Buffer.concat(chunks)
+    // The reader refuses an entry that unpacks to another size than it says, so that it fits and is filled.
+    const bytes = new Uint8Array(entry.uncompressedSize)
+    let at = 0
+    for await (const chunk of await zip.openReadStreamPromise(entry)) {
+      bytes.set(chunk as Buffer, at)
+      at += (chunk as Buffer).length
+    }
+    return bytes
   } catch (error) {
     throw notReadable(`${path} does not unpack (${error instanceof Error ? error.message : String(error)})`)
   }
