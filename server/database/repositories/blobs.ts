@@ -92,13 +92,17 @@ export function createBlobStore(database: Database, now: () => Date): BlobStore 
   }
   return {
     write: (bytes) => store(bytes.byteLength, async (from, to) => bytes.subarray(from, to)),
-    writeFile: (path) =>
-      withFile(path, 'r', async (file) =>
+    writeFile(path) {
+      // One buffer for all parts: one for each would be garbage that lives long, as much of it as the file has bytes.
+      const buffer = new Uint8Array(CHUNK_BYTES)
+      return withFile(path, 'r', async (file) =>
         store((await file.stat()).size, async (from, to) => {
-          const { buffer } = await file.read(new Uint8Array(to - from), 0, to - from, from)
-          return buffer
+          const { bytesRead } = await file.read(buffer, 0, to - from, from)
+          if (bytesRead < to - from) throw new Error(`${path} ended at ${from + bytesRead} bytes`)
+          return buffer.subarray(0, bytesRead)
         }),
-      ),
+      )
+    },
     async adopt(tx, id) {
       await tx.update(blobs).set({ adopted: true }).where(eq(blobs.id, id))
     },
