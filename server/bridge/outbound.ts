@@ -22,8 +22,6 @@ export interface OutboundAnswer {
 
 /** Sends calls to addresses that people typed. */
 export interface Outbound {
-  /** Why a URL may not be called, as far as it can be told without looking a name up; null where nothing speaks against it. */
-  refusalOf(url: string): OutboundRefused | null
   /**
    * @throws OutboundRefused where the address may not be called; any other error where it may work another time
    */
@@ -87,18 +85,13 @@ async function beginningOf(answer: IncomingMessage): Promise<string> {
  * @param callMs how long a call may take
  */
 export function createOutbound(rules: AddressRules, callMs = CALL_MS): Outbound {
-  const refusalOf = (text: string): OutboundRefused | null => {
-    const { hostname, protocol } = new URL(text)
-    const host = hostname.replace(/^\[|\]$/g, '')
-    return isIP(host) ? wrongIn(host, [host], rules, protocol === 'http:') : null
-  }
   return {
-    refusalOf,
     async post(text, headers, body) {
       const url = new URL(text)
       const isPlain = url.protocol === 'http:'
-      // Where the host is an address no name is looked up, and the guard of look-ups not asked.
-      const wrong = refusalOf(text)
+      const host = url.hostname.replace(/^\[|\]$/g, '')
+      // Where the host is an address no name is looked up.
+      const wrong = isIP(host) ? wrongIn(host, [host], rules, isPlain) : null
       if (wrong) throw wrong
       const signal = AbortSignal.timeout(callMs)
       try {
