@@ -1,11 +1,11 @@
 import { parseArgs } from 'node:util'
+import type { ReportOptions } from '../report'
+import { whole } from '../report'
 
-export interface ArchiveOptions {
+export interface ArchiveOptions extends ReportOptions {
   /** Of the samples in the workspace, MB. */
   readonly sizes: readonly number[]
   readonly reads: number
-  readonly json: boolean
-  readonly keep: boolean
 }
 
 /** An archive may have 1 GiB, and samples are not made smaller by packing. */
@@ -16,13 +16,6 @@ export const USAGE = `npm run bench:archive -- [options]
   --reads N      reads of each set of samples, of 2,048 qubits (20000)
   --json         print JSON only
   --keep         write bench/results/<date>-<commit>-archive.json as well`
-
-function whole(name: string, text: string, most: number): number {
-  const value = Number(text)
-  if (!Number.isSafeInteger(value) || value < 1 || value > most)
-    throw new RangeError(`--${name} takes whole numbers from 1 to ${most}, not ${text}`)
-  return value
-}
 
 /** @throws TypeError or RangeError for options that do not exist or are out of range */
 export function readOptions(args: readonly string[]): ArchiveOptions {

@@ -4,31 +4,20 @@
  * server process of its own, so that the most memory it ever held (Linux: VmHWM of its status) is that of the step. What is
  * asked is whether that grows with the workspace.
  */
-import { execFileSync } from 'node:child_process'
 import { once } from 'node:events'
-import {
-  createWriteStream,
-  existsSync,
-  mkdirSync,
-  mkdtempSync,
-  openAsBlob,
-  readFileSync,
-  rmSync,
-  statSync,
-  writeFileSync,
-} from 'node:fs'
+import { createWriteStream, mkdtempSync, openAsBlob, rmSync, statSync } from 'node:fs'
 import type { IncomingMessage } from 'node:http'
 import { get } from 'node:http'
-import { cpus, loadavg, tmpdir } from 'node:os'
+import { tmpdir } from 'node:os'
 import { join } from 'node:path'
 import { pipeline } from 'node:stream/promises'
 import { isMainThread, Worker, workerData } from 'node:worker_threads'
-import { Client } from '../../tests/support/client'
-import { OWNER, serve, setUp } from '../library/seed'
+import type { Client } from '../../tests/support/client'
+import { cookieOf, ownerOf, peakOf, serve, setUp } from '../built-server'
+import { failed, report } from '../report'
 import { bringIn, fill } from './fill'
 import { readOptions, USAGE } from './options'
 
-const ENTRY = join(process.cwd(), '.output', 'server', 'index.mjs')
 const PORT = 4876
 const PATIENCE_SECONDS = 1200
 
@@ -48,14 +37,10 @@ interface Row {
   readonly import: Step
 }
 
-const peakOf = (pid: number): number =>
-  Number(/VmHWM:\s+(\d+) kB/.exec(readFileSync(`/proc/${pid}/status`, 'utf8'))![1]) / 1024
-
 async function measured(dataFolder: string, work: (client: Client) => Promise<void>): Promise<Step> {
-  const server = await serve(ENTRY, dataFolder, PORT)
+  const server = await serve(dataFolder, PORT)
   try {
-    const client = new Client(server.url)
-    await client.post('/api/session', OWNER)
+    const client = await ownerOf(server)
     const before = peakOf(server.pid)
     const start = performance.now()
     await work(client)
@@ -67,11 +52,10 @@ async function measured(dataFolder: string, work: (client: Client) => Promise<vo
 
 /** An installation with its first account, and what is brought into its workspace. */
 async function prepare(dataFolder: string, bring: (client: Client) => Promise<void>): Promise<void> {
-  const server = await serve(ENTRY, dataFolder, PORT)
+  const server = await serve(dataFolder, PORT)
   try {
     await setUp(server)
-    const client = new Client(server.url)
-    await client.post('/api/session', OWNER)
+    const client = await ownerOf(server)
     await bring(client)
   } finally {
     await server.stop()
@@ -80,8 +64,7 @@ async function prepare(dataFolder: string, bring: (client: Client) => Promise<vo
 
 /** By a plain request: `fetch` gets slower with every chunk, and would be what is measured. */
 async function download(client: Client, path: string): Promise<void> {
-  const cookie = client.browserCookies().map(({ name, value }) => `${name}=${value}`)
-  const asked = get(`${client.url}/api/workspaces/export`, { headers: { cookie: cookie.join('; ') } })
+  const asked = get(`${client.url}/api/workspaces/export`, { headers: { cookie: cookieOf(client) } })
   const [answer] = (await once(asked, 'response')) as [IncomingMessage]
   if (answer.statusCode !== 200) throw new Error(`the export was answered ${answer.statusCode}`)
   await pipeline(answer, createWriteStream(path))
@@ -152,38 +135,20 @@ function tableOf(rows: readonly Row[]): string {
   return [head, ...lines].map((line) => line.map((cell) => cell.padStart(12)).join('')).join('\n')
 }
 
-const commit = (): string => {
-  try {
-    return execFileSync('git', ['rev-parse', '--short', 'HEAD'], { encoding: 'utf8' }).trim()
-  } catch {
-    return 'unknown'
-  }
-}
-
 async function main(): Promise<void> {
-  const { sizes, reads, json, keep } = readOptions(process.argv.slice(2))
-  if (!existsSync(ENTRY)) throw new Error('There is no built server: run npm run build first.')
-  const before = loadavg()[0]!
-  const rows: Row[] = []
-  for (const megabytes of sizes) rows.push(await measure(megabytes, reads))
-  const processor = `${cpus().length} × ${cpus()[0]?.model ?? 'unknown'}`
-  const date = new Date().toISOString()
-  const report = { bench: 'archive', date, commit: commit(), processor, loadBefore: before, reads, rows }
-  console.log(
-    json
-      ? JSON.stringify(report)
-      : `\n${tableOf(rows)}\n\nSets of ${reads} reads of 2,048 qubits; ${processor}; load ${before.toFixed(1)}.`,
+  const { sizes, reads, ...options } = readOptions(process.argv.slice(2))
+  const measureAll = async () => {
+    const rows: Row[] = []
+    for (const megabytes of sizes) rows.push(await measure(megabytes, reads))
+    return { reads, rows }
+  }
+  await report(
+    'archive',
+    options,
+    measureAll,
+    ({ rows }) => `${tableOf(rows)}\n\nSets of ${reads} reads of 2,048 qubits`,
   )
-  if (!keep) return
-  const path = join('bench', 'results', `${date.slice(0, 10)}-${report.commit}-archive.json`)
-  mkdirSync(join('bench', 'results'), { recursive: true })
-  writeFileSync(path, `${JSON.stringify(report, null, 1)}\n`)
-  console.error(`Kept in ${path}.`)
 }
 
 if (!isMainThread) await fill(workerData as Filling)
-else
-  await main().catch((error: unknown) => {
-    console.error(error instanceof TypeError || error instanceof RangeError ? `${error.message}\n\n${USAGE}` : error)
-    process.exitCode = 1
-  })
+else await main().catch(failed(USAGE))

@@ -1,10 +1,10 @@
 import { parseArgs } from 'node:util'
+import type { ReportOptions } from '../report'
+import { whole } from '../report'
 
-export interface LibraryOptions {
+export interface LibraryOptions extends ReportOptions {
   readonly problems: number
   readonly rounds: number
-  readonly json: boolean
-  readonly keep: boolean
 }
 
 export const USAGE = `npm run bench:library -- [options]
@@ -12,13 +12,6 @@ export const USAGE = `npm run bench:library -- [options]
   --rounds N     times that every request and page is measured (15)
   --json         print JSON only
   --keep         write bench/results/<date>-<commit>-library.json as well`
-
-function whole(name: string, text: string): number {
-  const value = Number(text)
-  if (!Number.isSafeInteger(value) || value < 1)
-    throw new RangeError(`--${name} must be a whole number above 0, not ${text}`)
-  return value
-}
 
 /** @throws TypeError or RangeError for options that do not exist or are out of range */
 export function readOptions(args: readonly string[]): LibraryOptions {

@@ -3,18 +3,18 @@
  * the built server over HTTP, and in a browser the time until the page of the library shows its rows, and until it shows
  * others after a click on a heading. All of it at the number of problems given, in every state of the work.
  */
-import { execFileSync } from 'node:child_process'
-import { existsSync, mkdirSync, mkdtempSync, rmSync, writeFileSync } from 'node:fs'
-import { cpus, loadavg, tmpdir } from 'node:os'
+import { mkdtempSync, rmSync } from 'node:fs'
+import { tmpdir } from 'node:os'
 import { join } from 'node:path'
 import { launch } from '../../tests/support/browser'
-import { Client } from '../../tests/support/client'
+import type { Client } from '../../tests/support/client'
+import { ownerOf, serve, setUp } from '../built-server'
+import { failed, report } from '../report'
 import type { LibraryOptions } from './options'
 import { readOptions, USAGE } from './options'
 import { REQUESTS } from './requests'
-import { fill, OWNER, serve, setUp } from './seed'
+import { fill } from './seed'
 
-const ENTRY = join(process.cwd(), '.output', 'server', 'index.mjs')
 const PORT = 4870
 const ROWS = 100
 const VIEWPORT = { width: 1280, height: 900 }
@@ -84,17 +84,15 @@ async function measurePages(client: Client, url: string, rounds: number): Promis
 }
 
 async function measureAll({ problems, rounds }: LibraryOptions): Promise<Row[]> {
-  if (!existsSync(ENTRY)) throw new Error('There is no built server: run npm run build first.')
   const folder = mkdtempSync(join(tmpdir(), 'espalier-bench-'))
   try {
-    const empty = await serve(ENTRY, folder, PORT)
+    const empty = await serve(folder, PORT)
     await setUp(empty).finally(() => empty.stop())
     await fill(folder, problems)
     console.error(`${problems} problems seeded`)
-    const server = await serve(ENTRY, folder, PORT)
+    const server = await serve(folder, PORT)
     try {
-      const client = new Client(server.url)
-      await client.post('/api/session', OWNER)
+      const client = await ownerOf(server)
       return [...(await measureRequests(client, rounds)), ...(await measurePages(client, server.url, rounds))]
     } finally {
       await server.stop()
@@ -114,35 +112,15 @@ function tableOf(rows: readonly Row[]): string {
     .join('\n')
 }
 
-const commit = (): string => {
-  try {
-    return execFileSync('git', ['rev-parse', '--short', 'HEAD'], { encoding: 'utf8' }).trim()
-  } catch {
-    return 'unknown'
-  }
-}
-
 async function main(): Promise<void> {
   const options = readOptions(process.argv.slice(2))
-  const [before, processors] = [loadavg()[0]!, cpus().length]
-  const rows = await measureAll(options)
   const { problems, rounds } = options
-  const processor = `${processors} × ${cpus()[0]?.model ?? 'unknown'}`
-  const date = new Date().toISOString()
-  const report = { bench: 'library', date, commit: commit(), processor, loadBefore: before, problems, rounds, rows }
-  console.log(
-    options.json ? JSON.stringify(report) : `\n${tableOf(rows)}\n\nMilliseconds at ${problems} problems; ${processor}.`,
+  await report(
+    'library',
+    options,
+    async () => ({ problems, rounds, rows: await measureAll(options) }),
+    ({ rows }) => `${tableOf(rows)}\n\nMilliseconds at ${problems} problems`,
   )
-  if (before > processors)
-    console.error(`The machine was busy (load ${before.toFixed(1)} on ${processors} processors): measure again.`)
-  if (!options.keep) return
-  const path = join('bench', 'results', `${date.slice(0, 10)}-${report.commit}-library.json`)
-  mkdirSync(join('bench', 'results'), { recursive: true })
-  writeFileSync(path, `${JSON.stringify(report, null, 1)}\n`)
-  console.error(`Kept in ${path}.`)
 }
 
-await main().catch((error: unknown) => {
-  console.error(error instanceof TypeError || error instanceof RangeError ? `${error.message}\n\n${USAGE}` : error)
-  process.exitCode = 1
-})
+await main().catch(failed(USAGE))

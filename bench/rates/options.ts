@@ -1,10 +1,10 @@
 import { parseArgs } from 'node:util'
+import type { ReportOptions } from '../report'
+import { whole } from '../report'
 
-export interface RatesOptions {
+export interface RatesOptions extends ReportOptions {
   readonly rounds: number
   readonly requests: number
-  readonly json: boolean
-  readonly keep: boolean
 }
 
 export const USAGE = `npm run bench:rates -- [options]
@@ -12,13 +12,6 @@ export const USAGE = `npm run bench:rates -- [options]
   --requests N   requests to a server in a round (200)
   --json         print JSON only
   --keep         write bench/results/<date>-<commit>-rates.json as well`
-
-function whole(name: string, text: string): number {
-  const value = Number(text)
-  if (!Number.isSafeInteger(value) || value < 1)
-    throw new RangeError(`--${name} must be a whole number above 0, not ${text}`)
-  return value
-}
 
 /** @throws TypeError or RangeError for options that do not exist or are out of range */
 export function readOptions(args: readonly string[]): RatesOptions {

@@ -3,12 +3,11 @@
  * with limits and without, in one run and in turn, so that what else the machine does meets both; and the counting by itself
  * in this process. A second server without limits says how far two alike come apart. Times of servers are of Linux.
  */
-import { execFileSync } from 'node:child_process'
-import { cpSync, existsSync, mkdirSync, mkdtempSync, rmSync, writeFileSync } from 'node:fs'
-import { cpus, loadavg, tmpdir } from 'node:os'
+import { cpSync, mkdtempSync, rmSync } from 'node:fs'
+import { tmpdir } from 'node:os'
 import { join } from 'node:path'
-import { Client } from '../../tests/support/client'
-import { OWNER, serve, setUp } from '../library/seed'
+import { cookieOf, ownerOf, serve, setUp } from '../built-server'
+import { failed, report } from '../report'
 import type { CountingRow } from './counting'
 import { measureCounting } from './counting'
 import type { RatesOptions } from './options'
@@ -16,7 +15,6 @@ import { readOptions, USAGE } from './options'
 import type { Times } from './requests'
 import { timesOf } from './requests'
 
-const ENTRY = join(process.cwd(), '.output', 'server', 'index.mjs')
 const PORT = 4872
 /** So high that nothing is refused; without limits for comparison, twice. */
 const SERVERS = [
@@ -47,18 +45,15 @@ const ratios = (of: readonly Times[], to: readonly Times[]): Times =>
 
 async function startAll(folder: string): Promise<Server[]> {
   const origin = join(folder, 'origin')
-  const first = await serve(ENTRY, origin, PORT)
+  const first = await serve(origin, PORT)
   await setUp(first).finally(() => first.stop())
   const servers: Server[] = []
   for (const [k, { limit }] of SERVERS.entries()) {
     const own = join(folder, String(k))
     cpSync(origin, own, { recursive: true })
     const limits = { RATE_LIMIT: limit, RATE_LIMIT_ADDRESS: limit }
-    const server = await serve(ENTRY, own, PORT + k, limits)
-    const client = new Client(server.url)
-    await client.post('/api/session', OWNER)
-    const cookie = client.browserCookies().map(({ name, value }) => `${name}=${value}`)
-    servers.push({ ...server, cookie: cookie.join('; ') })
+    const server = await serve(own, PORT + k, limits)
+    servers.push({ ...server, cookie: cookieOf(await ownerOf(server)) })
   }
   return servers
 }
@@ -90,7 +85,6 @@ async function measureRoute(
 }
 
 async function measureAll(options: RatesOptions): Promise<{ requests: RequestRow[]; counting: CountingRow[] }> {
-  if (!existsSync(ENTRY)) throw new Error('There is no built server: run npm run build first.')
   const folder = mkdtempSync(join(tmpdir(), 'espalier-bench-'))
   let servers: Server[] = []
   try {
@@ -135,36 +129,15 @@ function tableOf({
     .join('\n')
 }
 
-const commit = (): string => {
-  try {
-    return execFileSync('git', ['rev-parse', '--short', 'HEAD'], { encoding: 'utf8' }).trim()
-  } catch {
-    return 'unknown'
-  }
-}
-
 async function main(): Promise<void> {
   const options = readOptions(process.argv.slice(2))
-  const [before, processors] = [loadavg()[0]!, cpus().length]
-  const measured = await measureAll(options)
   const { rounds, requests } = options
-  const processor = `${processors} × ${cpus()[0]?.model ?? 'unknown'}`
-  const date = new Date().toISOString()
-  const size = { rounds, requestsPerRound: requests }
-  const report = { bench: 'rates', date, commit: commit(), processor, loadBefore: before, ...size, ...measured }
-  console.log(
-    options.json
-      ? JSON.stringify(report)
-      : `\n${tableOf(measured)}\n\nMedians of ${rounds} rounds of ${requests} requests; ${processor}; load ${before.toFixed(1)}.`,
+  await report(
+    'rates',
+    options,
+    async () => ({ rounds, requestsPerRound: requests, ...(await measureAll(options)) }),
+    (measured) => `${tableOf(measured)}\n\nMedians of ${rounds} rounds of ${requests} requests`,
   )
-  if (!options.keep) return
-  const path = join('bench', 'results', `${date.slice(0, 10)}-${report.commit}-rates.json`)
-  mkdirSync(join('bench', 'results'), { recursive: true })
-  writeFileSync(path, `${JSON.stringify(report, null, 1)}\n`)
-  console.error(`Kept in ${path}.`)
 }
 
-await main().catch((error: unknown) => {
-  console.error(error instanceof TypeError || error instanceof RangeError ? `${error.message}\n\n${USAGE}` : error)
-  process.exitCode = 1
-})
+await main().catch(failed(USAGE))

@@ -1,11 +1,11 @@
 import { parseArgs } from 'node:util'
+import type { ReportOptions } from '../report'
+import { whole } from '../report'
 
-export interface ReturnsOptions {
+export interface ReturnsOptions extends ReportOptions {
   readonly reads: number
   readonly cells: number
   readonly rounds: number
-  readonly json: boolean
-  readonly keep: boolean
 }
 
 export const USAGE = `npm run bench:returns -- [options]
@@ -14,13 +14,6 @@ export const USAGE = `npm run bench:returns -- [options]
   --rounds N     times that each file is uploaded (3)
   --json         print JSON only
   --keep         write bench/results/<date>-<commit>-returns.json as well`
-
-function whole(name: string, text: string): number {
-  const value = Number(text)
-  if (!Number.isSafeInteger(value) || value < 1)
-    throw new RangeError(`--${name} must be a whole number above 0, not ${text}`)
-  return value
-}
 
 /** @throws TypeError or RangeError for options that do not exist or are out of range */
 export function readOptions(args: readonly string[]): ReturnsOptions {

@@ -3,19 +3,18 @@
  * formats, uploaded to the built server over HTTP until it has read, checked, decoded and stored them, with the most memory
  * that its process took since it started; and how long the page's first request then takes.
  */
-import { execFileSync } from 'node:child_process'
-import { existsSync, mkdirSync, mkdtempSync, openAsBlob, readFileSync, rmSync, statSync, writeFileSync } from 'node:fs'
-import { cpus, loadavg, tmpdir } from 'node:os'
+import { mkdtempSync, openAsBlob, rmSync, statSync } from 'node:fs'
+import { tmpdir } from 'node:os'
 import { join } from 'node:path'
-import { Client } from '../../tests/support/client'
-import { OWNER, serve, setUp } from '../library/seed'
+import type { Client } from '../../tests/support/client'
+import { ownerOf, peakOf, serve, setUp } from '../built-server'
+import { failed, report } from '../report'
 import { setUpCase, rowsOf } from './case'
 import { writeFiles } from './files'
 import type { ReturnsOptions } from './options'
 import { readOptions, USAGE } from './options'
 
 const PORT = 4871
-const ENTRY = join(process.cwd(), '.output', 'server', 'index.mjs')
 
 interface Row {
   readonly file: string
@@ -27,10 +26,6 @@ interface Row {
   /** Seconds of the first request for what the page shows. */
   readonly view: number
 }
-
-/** The most memory that a process has held, MiB (Linux: VmHWM of its status). */
-const peakOf = (pid: number): number =>
-  Number(/VmHWM:\s+(\d+) kB/.exec(readFileSync(`/proc/${pid}/status`, 'utf8'))![1]) / 1024
 
 async function measureFile(
   { client, pid, runSheetId }: { client: Client; pid: number; runSheetId: string },
@@ -61,13 +56,11 @@ async function measureFile(
 }
 
 async function measureAll({ reads, cells, rounds }: ReturnsOptions): Promise<Row[]> {
-  if (!existsSync(ENTRY)) throw new Error('there is no build: run `npm run build` first')
   const folder = mkdtempSync(join(tmpdir(), 'espalier-bench-'))
-  const server = await serve(ENTRY, join(folder, 'data'), PORT)
+  const server = await serve(join(folder, 'data'), PORT)
   try {
     await setUp(server)
-    const client = new Client(server.url)
-    await client.post('/api/session', OWNER)
+    const client = await ownerOf(server)
     const given = await setUpCase(client, cells)
     const files = writeFiles(folder, given.qubits, rowsOf(given, reads))
     // The server closed idle connections meanwhile; that has to be noticed before one is used again.
@@ -96,36 +89,16 @@ function tableOf(rows: readonly Row[]): string {
     .join('\n')
 }
 
-const commit = (): string => {
-  try {
-    return execFileSync('git', ['rev-parse', '--short', 'HEAD'], { encoding: 'utf8' }).trim()
-  } catch {
-    return 'unknown'
-  }
-}
-
 async function main(): Promise<void> {
   const options = readOptions(process.argv.slice(2))
-  const [before, processors] = [loadavg()[0]!, cpus().length]
-  const rows = await measureAll(options)
   const { reads, cells, rounds } = options
-  const processor = `${processors} × ${cpus()[0]?.model ?? 'unknown'}`
-  const date = new Date().toISOString()
   const size = { reads, qubits: 8 * cells * cells, rounds }
-  const report = { bench: 'returns', date, commit: commit(), processor, loadBefore: before, ...size, rows }
-  console.log(
-    options.json
-      ? JSON.stringify(report)
-      : `\n${tableOf(rows)}\n\n${reads} reads of ${size.qubits} qubits; ${processor}; load ${before.toFixed(1)}.`,
+  await report(
+    'returns',
+    options,
+    async () => ({ ...size, rows: await measureAll(options) }),
+    ({ rows }) => `${tableOf(rows)}\n\n${reads} reads of ${size.qubits} qubits`,
   )
-  if (!options.keep) return
-  const path = join('bench', 'results', `${date.slice(0, 10)}-${report.commit}-returns.json`)
-  mkdirSync(join('bench', 'results'), { recursive: true })
-  writeFileSync(path, `${JSON.stringify(report, null, 1)}\n`)
-  console.error(`Kept in ${path}.`)
 }
 
-await main().catch((error: unknown) => {
-  console.error(error instanceof RangeError ? `${error.message}\n\n${USAGE}` : error)
-  process.exitCode = 1
-})
+await main().catch(failed(USAGE))

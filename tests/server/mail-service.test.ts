@@ -12,6 +12,7 @@ import type { MailView } from '../../shared/schemas/mail'
 import { outboxQuerySchema } from '../../shared/schemas/mail'
 import type { TestApp } from '../support/app'
 import { startTestApp } from '../support/app'
+import { dyingAfter } from '../support/mailers'
 import type { MailService } from '../support/mail-service'
 import { startMailService } from '../support/mail-service'
 import { newMember } from '../support/people'
@@ -98,13 +99,7 @@ it('gets a message as text and as HTML, for one person, and is asked once', asyn
 
 it('delivers a message once, although it is sent again where the process ended before it noted the answer', async () => {
   await write()
-  const dying: Mailer = {
-    async send(mail) {
-      await mailer.send(mail)
-      await new Promise(() => undefined)
-    },
-  }
-  void deliverDue(test.app, dying)
+  void deliverDue(test.app, dyingAfter(mailer))
   await until(() => service.taken.length === 1)
   await deliverDue(at(1.1), mailer)
   expect(await newest()).toMatchObject({ state: 'sent', attempts: 2 })

@@ -13,6 +13,7 @@ import { outboxQuerySchema } from '../../shared/schemas/mail'
 import { createRunSheetSchema } from '../../shared/schemas/run-sheets'
 import type { TestApp } from '../support/app'
 import { startTestApp } from '../support/app'
+import { dyingAfter } from '../support/mailers'
 import type { MailServer } from '../support/mail-server'
 import { startMailServer } from '../support/mail-server'
 import { newMember } from '../support/people'
@@ -186,13 +187,7 @@ describe('a mail server', () => {
 
   it('gets a message again, recognisably, where the process ended before it noted the answer', async () => {
     await write()
-    const dying: Mailer = {
-      async send(mail) {
-        await mailer.send(mail)
-        await new Promise(() => undefined)
-      },
-    }
-    void deliverDue(test.app, dying)
+    void deliverDue(test.app, dyingAfter(mailer))
     await until(() => server.taken.length === 1)
     await deliverDue(test.app, mailer)
     expect(server.taken).toHaveLength(1)
