@@ -55,10 +55,24 @@ function chunksInServer({ db }: Database): ChunkStore {
   }
 }
 
+/**
+ * Bytes as the embedded engine asks for them, and without a copy: a plain blob makes one when it is asked, which outlives
+ * hundreds of others in a process with a large heap.
+ */
+class BytesBlob extends Blob {
+  constructor(private readonly held: ArrayBuffer) {
+    super()
+  }
+
+  override arrayBuffer(): Promise<ArrayBuffer> {
+    return Promise.resolve(this.held)
+  }
+}
+
 function chunksInPglite(pglite: PGlite): ChunkStore {
   return {
     async write(blobId, part, data) {
-      const blob = new Blob([encodeCopyRows([[blobId, part, data]])])
+      const blob = new BytesBlob(encodeCopyRows([[blobId, part, data]]).buffer)
       await pglite.query(`copy blob_chunks (blob_id, part, data) from '/dev/blob' (format binary)`, [], { blob })
     },
     async read(blobId, part) {
@@ -93,7 +107,6 @@ export function createBlobStore(database: Database, now: () => Date): BlobStore 
   return {
     write: (bytes) => store(bytes.byteLength, async (from, to) => bytes.subarray(from, to)),
     writeFile(path) {
-      // One buffer for all parts: one for each would be garbage that lives long, as much of it as the file has bytes.
       const buffer = new Uint8Array(CHUNK_BYTES)
       return withFile(path, 'r', async (file) =>
         store((await file.stat()).size, async (from, to) => {
